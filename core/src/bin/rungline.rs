@@ -1,0 +1,3 @@
+//! `rungline answer FILE…`, `rungline recheck FILE…`.
+
+fn main() {}

@@ -1,0 +1,1 @@
+//! CODATA constants.

@@ -1,0 +1,1 @@
+//! The elements: symbols, names, observed ground levels.

@@ -1,0 +1,1 @@
+//! Numerical tools free of the physics that uses them.

@@ -1,0 +1,5 @@
+//! Typed quantities: half-integers held exactly, and the reading of what a person types.
+
+mod half_integer;
+
+pub use half_integer::TwiceJ;

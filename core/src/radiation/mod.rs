@@ -1,0 +1,1 @@
+//! Selection rules and relative strengths.

@@ -1,0 +1,1 @@
+//! The sheet: the document, its questions and their answers.

@@ -1,0 +1,1 @@
+//! Splitting of levels and lines in a magnetic field.

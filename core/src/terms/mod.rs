@@ -1,0 +1,1 @@
+//! LS, jj and jK coupling; Hund; Landé.

@@ -1,0 +1,1 @@
+//! Shared by the native checks: reading vectors, comparing, reporting.

@@ -1,0 +1,3 @@
+//! `cargo site`.
+
+fn main() {}

@@ -1,0 +1,1 @@
+//! The browser's door: translates and nothing else.
