@@ -1,1 +1,84 @@
-//! Shared by the native checks: reading vectors, comparing, reporting.
+//! Shared by the native checks: where the vectors are, how closely two numbers agree, and the
+//! validation report, which is written from what the checks measured.
+
+use std::fs;
+use std::path::{Path, PathBuf};
+use std::sync::Mutex;
+
+use serde::{Deserialize, Serialize};
+
+/// The folder `tests/` of the repository.
+pub fn folder() -> PathBuf {
+    PathBuf::from(env!("CARGO_MANIFEST_DIR"))
+}
+
+/// The text of a file under `tests/vectors`.
+pub fn vector(name: &str) -> String {
+    let path = folder().join("vectors").join(name);
+    fs::read_to_string(&path).unwrap_or_else(|error| panic!("{}: {error}", path.display()))
+}
+
+/// The JSON of a file under `tests/vectors`.
+pub fn vector_json(name: &str) -> serde_json::Value {
+    serde_json::from_str(&vector(name)).unwrap_or_else(|error| panic!("{name}: {error}"))
+}
+
+/// |a − b| / |b|, or |a − b| where b is zero.
+pub fn relative_error(a: f64, b: f64) -> f64 {
+    if b == 0.0 { (a - b).abs() } else { ((a - b) / b).abs() }
+}
+
+/// One line of the validation report.
+#[derive(Clone, Debug, Serialize, Deserialize)]
+pub struct Row {
+    /// What was compared: "6j symbols".
+    pub quantity: String,
+    /// How many cases.
+    pub cases: usize,
+    /// The worst deviation found.
+    pub worst: f64,
+    /// What was allowed; 0 for counts and names that must be equal.
+    pub tolerance: f64,
+    /// Relative, absolute, or "cases that differ".
+    pub measure: String,
+    /// Where the reference comes from.
+    pub source: String,
+}
+
+static WRITING: Mutex<()> = Mutex::new(());
+
+/// Checks one row against its tolerance and puts it into `tests/reports/validation.md`.
+///
+/// `name` is the row's own, stable: a later run replaces the row.
+pub fn report(name: &str, row: Row) {
+    let (worst, tolerance, quantity) = (row.worst, row.tolerance, row.quantity.clone());
+    {
+        let _guard = WRITING.lock().unwrap_or_else(|poisoned| poisoned.into_inner());
+        let parts = folder().join("reports").join("parts");
+        fs::create_dir_all(&parts).expect("the report's folder can be made");
+        let text = serde_json::to_string_pretty(&row).expect("a row is plain data");
+        fs::write(parts.join(format!("{name}.json")), text + "\n").expect("the report can be written");
+        assemble(&parts);
+    }
+    assert!(row.cases > 0, "{quantity}: no case was checked");
+    assert!(worst <= tolerance, "{quantity}: worst {worst:e}, allowed {tolerance:e}");
+}
+
+fn assemble(parts: &Path) {
+    let mut names: Vec<PathBuf> =
+        fs::read_dir(parts).expect("the parts are there").filter_map(|entry| Some(entry.ok()?.path())).collect();
+    names.sort();
+    let mut text = String::from(
+        "# Validation\n\nWritten by the native tests from what they measured; do not edit.\n\n\
+         | quantity | cases | worst | allowed | measure | source |\n|---|---|---|---|---|---|\n",
+    );
+    for path in names {
+        let part = fs::read_to_string(&path).expect("a part can be read");
+        let row: Row = serde_json::from_str(&part).expect("a part is a row");
+        text.push_str(&format!(
+            "| {} | {} | {:.1e} | {:.1e} | {} | {} |\n",
+            row.quantity, row.cases, row.worst, row.tolerance, row.measure, row.source
+        ));
+    }
+    fs::write(parts.join("..").join("validation.md"), text).expect("the report can be written");
+}
