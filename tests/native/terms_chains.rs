@@ -56,7 +56,9 @@ fn chains_are_written_as_in_the_trade() {
     // The order in the sheet does not matter: shells couple in the order n, ℓ.
     let chromium = [shell(4, 1, 1), shell(4, 0, 1), shell(3, 2, 5)];
     let octet_p = Term { two_s: 7, l: 1 };
-    let found = chains::chain(&chromium, octet_p, None, 10).unwrap().unwrap();
+    let found = chains::chain(&chromium, octet_p, None, 10)
+        .unwrap()
+        .unwrap();
     assert_eq!(found.to_string(), "3d5(6S) 4s (7S) 4p 8P");
     let quartet_d = Term { two_s: 3, l: 2 };
     let listed = chains::chains_of(&iron, quartet_d, 10).unwrap();

@@ -23,12 +23,17 @@ fn shells(text: &str) -> Vec<Subshell> {
 }
 
 fn by_two_j(levels: &[(TwiceJ, u128)]) -> BTreeMap<String, u128> {
-    levels.iter().map(|(j, n)| (j.doubled().to_string(), *n)).collect()
+    levels
+        .iter()
+        .map(|(j, n)| (j.doubled().to_string(), *n))
+        .collect()
 }
 
 fn expected(value: &Value) -> BTreeMap<String, u128> {
     let pairs = value.as_object().unwrap().iter();
-    pairs.map(|(j, n)| (j.clone(), n.as_u64().unwrap().into())).collect()
+    pairs
+        .map(|(j, n)| (j.clone(), n.as_u64().unwrap().into()))
+        .collect()
 }
 
 #[test]
@@ -38,9 +43,21 @@ fn ls_terms_agree_with_the_enumeration_of_microstates() {
     assert_eq!(cases.len(), 48);
     for (name, case) in cases {
         let all = ls::terms(&shells(name)).unwrap();
-        assert_eq!(all.states, u128::from(case["microstates"].as_u64().unwrap()), "{name}");
-        assert_eq!(all.n_terms(), u128::from(case["n_terms"].as_u64().unwrap()), "{name}");
-        assert_eq!(all.n_levels(), u128::from(case["n_levels"].as_u64().unwrap()), "{name}");
+        assert_eq!(
+            all.states,
+            u128::from(case["microstates"].as_u64().unwrap()),
+            "{name}"
+        );
+        assert_eq!(
+            all.n_terms(),
+            u128::from(case["n_terms"].as_u64().unwrap()),
+            "{name}"
+        );
+        assert_eq!(
+            all.n_levels(),
+            u128::from(case["n_levels"].as_u64().unwrap()),
+            "{name}"
+        );
         assert_eq!(
             by_two_j(&all.levels_by_j()),
             expected(&case["levels_by_twoJ"]),
@@ -51,7 +68,12 @@ fn ls_terms_agree_with_the_enumeration_of_microstates() {
             .iter()
             .map(|t| {
                 let term = t.term;
-                (term.multiplicity().into(), term.l.into(), term.to_string(), t.times)
+                (
+                    term.multiplicity().into(),
+                    term.l.into(),
+                    term.to_string(),
+                    t.times,
+                )
             })
             .collect();
         let theirs: Vec<(u64, u64, String, u128)> = case["terms"]
@@ -114,7 +136,11 @@ fn jj_levels_agree_with_the_enumeration_of_microstates() {
                 .unwrap();
             let electrons: u32 = found.subshells.iter().map(|s| s.electrons).sum();
             assert_eq!(electrons, shells[0].electrons());
-            assert_eq!(by_two_j(&found.levels), expected(&sub["twoJ"]), "{name} {found}");
+            assert_eq!(
+                by_two_j(&found.levels),
+                expected(&sub["twoJ"]),
+                "{name} {found}"
+            );
         }
     }
     report(
@@ -162,7 +188,12 @@ fn numbers_quoted_in_the_literature_come_out() {
     assert_eq!((f7.n_terms(), f7.n_levels(), f7.states), (119, 327, 3432));
     let d5 = ls::terms(&shells("d5")).unwrap();
     assert_eq!((d5.n_terms(), d5.n_levels(), d5.states), (16, 37, 252));
-    let p3: Vec<String> = ls::terms(&shells("p3")).unwrap().terms.iter().map(|t| t.term.to_string()).collect();
+    let p3: Vec<String> = ls::terms(&shells("p3"))
+        .unwrap()
+        .terms
+        .iter()
+        .map(|t| t.term.to_string())
+        .collect();
     assert_eq!(p3, ["4S", "2D", "2P"]);
 }
 
@@ -170,7 +201,11 @@ fn numbers_quoted_in_the_literature_come_out() {
 fn sum_rules_hold(shells: &[Subshell]) {
     let name: Vec<String> = shells.iter().map(ToString::to_string).collect();
     let all = ls::terms(shells).unwrap();
-    let in_terms: u128 = all.terms.iter().map(|t| t.times * u128::from(t.term.states())).sum();
+    let in_terms: u128 = all
+        .terms
+        .iter()
+        .map(|t| t.times * u128::from(t.term.states()))
+        .sum();
     assert_eq!(in_terms, all.states, "{name:?}");
     let levels = all.levels_by_j();
     let in_levels: u128 = levels
@@ -180,7 +215,11 @@ fn sum_rules_hold(shells: &[Subshell]) {
     assert_eq!(in_levels, all.states, "{name:?}");
     let count: u128 = levels.iter().map(|l| l.1).sum();
     assert_eq!(count, all.n_levels(), "{name:?}");
-    assert_eq!(jj::levels_by_j(shells).unwrap(), levels, "jj and LS, {name:?}");
+    assert_eq!(
+        jj::levels_by_j(shells).unwrap(),
+        levels,
+        "jj and LS, {name:?}"
+    );
     let cells: u128 = grid::grid(shells).unwrap().counts.iter().flatten().sum();
     assert_eq!(cells, all.states, "{name:?}");
     if let Some(pairs) = jk::pairs(shells, 0).unwrap() {
@@ -212,7 +251,10 @@ struct Numbers(u64);
 
 impl Numbers {
     fn below(&mut self, bound: u32) -> u32 {
-        self.0 = self.0.wrapping_mul(6_364_136_223_846_793_005).wrapping_add(1_442_695_040_888_963_407);
+        self.0 = self
+            .0
+            .wrapping_mul(6_364_136_223_846_793_005)
+            .wrapping_add(1_442_695_040_888_963_407);
         u32::try_from((self.0 >> 33) % u64::from(bound)).unwrap()
     }
 }
@@ -226,8 +268,13 @@ fn states_add_up_for_five_hundred_mixtures() {
         let mut mixture = Vec::new();
         for i in 0..count {
             // Rarely g, h, i; each shell with an n of its own.
-            let l = if numbers.below(8) == 0 { 4 + numbers.below(3) } else { numbers.below(4) };
-            let orbital = Orbital::new(u8::try_from(l + 1 + i).unwrap(), u8::try_from(l).unwrap()).unwrap();
+            let l = if numbers.below(8) == 0 {
+                4 + numbers.below(3)
+            } else {
+                numbers.below(4)
+            };
+            let orbital =
+                Orbital::new(u8::try_from(l + 1 + i).unwrap(), u8::try_from(l).unwrap()).unwrap();
             let electrons = 1 + numbers.below(orbital.capacity());
             mixture.push(Subshell::new(orbital, electrons).unwrap());
         }
@@ -245,7 +292,10 @@ fn the_grid_of_p2_is_the_textbook_one() {
     // Condon & Shortley 1935, ch. VII (from memory): p2 has M_L = 2 … −2, M_S = 1 … −1.
     let p2 = grid::grid(&shells("p2")).unwrap();
     assert_eq!(p2.m_l, [2, 1, 0, -1, -2]);
-    assert_eq!(p2.m_s.iter().map(|m| m.doubled()).collect::<Vec<_>>(), [2, 0, -2]);
+    assert_eq!(
+        p2.m_s.iter().map(|m| m.doubled()).collect::<Vec<_>>(),
+        [2, 0, -2]
+    );
     assert_eq!(
         p2.counts,
         [[0, 1, 0], [1, 2, 1], [1, 3, 1], [1, 2, 1], [0, 1, 0]]
@@ -269,20 +319,37 @@ fn closed_shells_have_one_state() {
 fn what_is_too_large_is_refused_and_the_rest_is_quick() {
     let wide = |l: u8, n: u32| Subshell::new(Orbital::new(50, l).unwrap(), n).unwrap();
     let half = wide(49, 99);
-    assert_eq!(ls::terms(&[half]).map(drop).unwrap_err().code, "too-many-states");
-    assert_eq!(jj::levels_by_j(&[half]).unwrap_err().code, "too-many-states");
+    assert_eq!(
+        ls::terms(&[half]).map(drop).unwrap_err().code,
+        "too-many-states"
+    );
+    assert_eq!(
+        jj::levels_by_j(&[half]).unwrap_err().code,
+        "too-many-states"
+    );
     assert_eq!(grid::grid(&[half]).unwrap_err().code, "too-many-states");
     let every: Vec<Subshell> = (1..=50)
         .flat_map(|n| (0..n).map(move |l| Subshell::new(Orbital::new(n, l).unwrap(), 1).unwrap()))
         .collect();
-    assert_eq!(ls::terms(&every).map(drop).unwrap_err().code, "too-many-states");
-    assert_eq!(jj::configurations(&every, 10).unwrap_err().code, "too-many-states");
     assert_eq!(
-        ls::terms(&[wide(49, 12), wide(48, 10)]).map(drop).unwrap_err().code,
+        ls::terms(&every).map(drop).unwrap_err().code,
+        "too-many-states"
+    );
+    assert_eq!(
+        jj::configurations(&every, 10).unwrap_err().code,
+        "too-many-states"
+    );
+    assert_eq!(
+        ls::terms(&[wide(49, 12), wide(48, 10)])
+            .map(drop)
+            .unwrap_err()
+            .code,
         "counting-too-long"
     );
     // Fifty open s shells: 2^50 states, 26 terms.
-    let spins: Vec<Subshell> = (1..=50).map(|n| Subshell::new(Orbital::new(n, 0).unwrap(), 1).unwrap()).collect();
+    let spins: Vec<Subshell> = (1..=50)
+        .map(|n| Subshell::new(Orbital::new(n, 0).unwrap(), 1).unwrap())
+        .collect();
     assert_eq!(ls::terms(&spins).unwrap().terms.len(), 26);
     sum_rules_hold(&spins);
     sum_rules_hold(&[wide(49, 190)]);
@@ -314,5 +381,8 @@ fn jk_names_of_neon_like_excited_levels() {
     assert_eq!(listed, 10);
     // A single shell, or an outer shell of two electrons, has no pair names.
     assert_eq!(jk::pairs(&excited[1..], 10).unwrap(), None);
-    assert_eq!(jk::pairs(&[excited[0], Subshell::new(orbital(3, 1), 2).unwrap()], 10).unwrap(), None);
+    assert_eq!(
+        jk::pairs(&[excited[0], Subshell::new(orbital(3, 1), 2).unwrap()], 10).unwrap(),
+        None
+    );
 }

@@ -24,7 +24,8 @@ fn lowest_terms_of_d_and_ground_levels_of_f() {
         assert_eq!(hund::ground(&[shell(3, 2, n)]).term.to_string(), term);
     }
     let f = [
-        "2F5/2", "3H4", "4I9/2", "5I4", "6H5/2", "7F0", "8S7/2", "7F6", "6H15/2", "5I8", "4I15/2", "3H6", "2F7/2",
+        "2F5/2", "3H4", "4I9/2", "5I4", "6H5/2", "7F0", "8S7/2", "7F6", "6H15/2", "5I8", "4I15/2",
+        "3H6", "2F7/2",
     ];
     for (n, name) in (1..).zip(f) {
         assert_eq!(level(&[shell(4, 3, n)]), name);
@@ -34,7 +35,9 @@ fn lowest_terms_of_d_and_ground_levels_of_f() {
     for (n, name) in (1..).zip(p) {
         assert_eq!(level(&[shell(2, 1, n)]), name);
     }
-    let d = ["2D3/2", "3F2", "4F3/2", "5D0", "6S5/2", "5D4", "4F9/2", "3F4", "2D5/2"];
+    let d = [
+        "2D3/2", "3F2", "4F3/2", "5D0", "6S5/2", "5D4", "4F9/2", "3F4", "2D5/2",
+    ];
     for (n, name) in (1..).zip(d) {
         assert_eq!(level(&[shell(3, 2, n)]), name);
     }
@@ -124,15 +127,30 @@ fn lande_factors_of_common_levels() {
         let g = lande::ls(term, j).unwrap();
         // With g_s = 2, g = 1 + spin part, so the whole is 1 + (g_s − 1)(g₂ − 1).
         let expected = 1.0 + (lande::G_S - 1.0) * (with_two - 1.0);
-        assert!((g - expected).abs() < 2e-15, "{name}: {g} against {expected}");
+        assert!(
+            (g - expected).abs() < 2e-15,
+            "{name}: {g} against {expected}"
+        );
     }
     // ²S1/2 carries the electron's g itself (CODATA 2022, 2.00231930436092).
     let g = lande::ls(Term { two_s: 1, l: 0 }, TwiceJ::from_doubled(1)).unwrap();
     assert_eq!(g.to_bits(), 2.002_319_304_360_92_f64.to_bits());
-    assert_eq!(lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(0)), None);
-    assert_eq!(lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(6)), None);
-    assert_eq!(lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(1)), None);
-    assert_eq!(lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(-2)), None);
+    assert_eq!(
+        lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(0)),
+        None
+    );
+    assert_eq!(
+        lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(6)),
+        None
+    );
+    assert_eq!(
+        lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(1)),
+        None
+    );
+    assert_eq!(
+        lande::ls(Term { two_s: 2, l: 1 }, TwiceJ::from_doubled(-2)),
+        None
+    );
 }
 
 #[test]
@@ -158,7 +176,8 @@ fn weighted_sum_of_g_is_the_same_in_every_coupling() {
             }
             for outer in [1, 3] {
                 let g_outer = lande::electron(1, j_of(outer)).unwrap();
-                in_jj += lande::coupled(g_parent.unwrap(), j_of(parent), g_outer, j_of(outer), j).unwrap_or(0.0);
+                in_jj += lande::coupled(g_parent.unwrap(), j_of(parent), g_outer, j_of(outer), j)
+                    .unwrap_or(0.0);
             }
         }
         assert!((in_ls - in_jk).abs() < 1e-14, "J = {j}: {in_ls} {in_jk}");
@@ -170,7 +189,19 @@ fn weighted_sum_of_g_is_the_same_in_every_coupling() {
 fn moments_of_lanthanide_ions() {
     // μ_eff of trivalent lanthanides to two decimals, and spin-only √(n(n+2)), as in the usual
     // tables (from memory; computed there with g_s = 2, which moves none of these by more than 0.02).
-    let table = [(1, 2.54), (2, 3.58), (3, 3.62), (5, 0.85), (7, 7.94), (8, 9.72), (9, 10.65), (10, 10.61), (11, 9.58), (12, 7.56), (13, 4.54)];
+    let table = [
+        (1, 2.54),
+        (2, 3.58),
+        (3, 3.62),
+        (5, 0.85),
+        (7, 7.94),
+        (8, 9.72),
+        (9, 10.65),
+        (10, 10.61),
+        (11, 9.58),
+        (12, 7.56),
+        (13, 4.54),
+    ];
     for (n, moment) in table {
         let ground = hund::ground(&[shell(4, 3, n)]);
         let j = ground.j.unwrap();

@@ -110,9 +110,18 @@ pub fn chains_of(subshells: &[Subshell], term: Term, limit: usize) -> Result<Cha
 /// its index is past `limit`.
 ///
 /// Errors: as [`chains`].
-pub fn chain(subshells: &[Subshell], term: Term, index: Option<u128>, limit: usize) -> Result<Option<Chain>, Problem> {
-    let wanted = usize::try_from(index.unwrap_or(1)).ok().filter(|k| (1..=limit).contains(k));
-    let Some(wanted) = wanted else { return Ok(None) };
+pub fn chain(
+    subshells: &[Subshell],
+    term: Term,
+    index: Option<u128>,
+    limit: usize,
+) -> Result<Option<Chain>, Problem> {
+    let wanted = usize::try_from(index.unwrap_or(1))
+        .ok()
+        .filter(|k| (1..=limit).contains(k));
+    let Some(wanted) = wanted else {
+        return Ok(None);
+    };
     let listed = chains_of(subshells, term, wanted)?.listed;
     Ok(listed.into_iter().nth(wanted - 1))
 }
@@ -135,7 +144,10 @@ impl TermSet {
 
     fn place(&self, term: Term) -> Option<usize> {
         let l = usize::try_from(term.l).ok().filter(|&l| l < self.l_count)?;
-        usize::try_from(term.two_s).ok()?.checked_mul(self.l_count)?.checked_add(l)
+        usize::try_from(term.two_s)
+            .ok()?
+            .checked_mul(self.l_count)?
+            .checked_add(l)
     }
 
     fn insert(&mut self, term: Term) {
@@ -145,7 +157,10 @@ impl TermSet {
     }
 
     fn contains(&self, term: Term) -> bool {
-        self.place(term).and_then(|i| self.members.get(i)).copied().unwrap_or(false)
+        self.place(term)
+            .and_then(|i| self.members.get(i))
+            .copied()
+            .unwrap_or(false)
     }
 
     fn iter(&self) -> impl Iterator<Item = Term> {
@@ -177,8 +192,12 @@ impl Search {
     fn largest(&self) -> Term {
         let mut largest = Term::SINGLET_S;
         for (_, terms) in &self.own {
-            largest.two_s = largest.two_s.saturating_add(terms.iter().map(|t| t.term.two_s).max().unwrap_or(0));
-            largest.l = largest.l.saturating_add(terms.iter().map(|t| t.term.l).max().unwrap_or(0));
+            largest.two_s = largest
+                .two_s
+                .saturating_add(terms.iter().map(|t| t.term.two_s).max().unwrap_or(0));
+            largest.l = largest
+                .l
+                .saturating_add(terms.iter().map(|t| t.term.l).max().unwrap_or(0));
         }
         largest
     }
@@ -227,7 +246,9 @@ impl Search {
         let reaching = self.reaching(wanted)?;
         let mut found = Vec::new();
         let mut links = Vec::new();
-        let starts_well = reaching.first().is_some_and(|set| set.contains(Term::SINGLET_S));
+        let starts_well = reaching
+            .first()
+            .is_some_and(|set| set.contains(Term::SINGLET_S));
         if starts_well {
             self.extend(Term::SINGLET_S, &reaching, &mut links, &mut found, limit);
         }

@@ -2,7 +2,7 @@
 //! 1935, ch. VII; Cowan 1981, §4-16).
 //!
 //! 1. The largest multiplicity. 2. Of those, the largest L. 3. Of its levels the smallest J for a
-//! shell less than half full, the largest J for one more than half full.
+//!    shell less than half full, the largest J for one more than half full.
 //!
 //! The first two are meant for one open shell and are common practice for several. The third
 //! follows from the sign of the spin–orbit splitting, which is one shell's matter: it is applied
@@ -66,7 +66,9 @@ pub fn ground(subshells: &[Subshell]) -> Ground {
         let unpaired = shell.electrons().min(holes);
         let beyond_half = shell.electrons() % orbitals;
         term.two_s = term.two_s.saturating_add(unpaired);
-        term.l = term.l.saturating_add(beyond_half.saturating_mul(orbitals - beyond_half) / 2);
+        term.l = term
+            .l
+            .saturating_add(beyond_half.saturating_mul(orbitals - beyond_half) / 2);
     }
     let third_rule = third_rule(term, &open);
     let j = match third_rule {
@@ -89,7 +91,9 @@ fn third_rule(term: Term, open: &[Subshell]) -> ThirdRule {
     let mut orbital_shells = open.iter().filter(|s| s.orbital().l() > 0);
     match (orbital_shells.next(), orbital_shells.next()) {
         // A half-filled shell has L = 0, so only the two unequal cases are left.
-        (Some(shell), None) if shell.electrons() < shell.orbital().capacity() / 2 => ThirdRule::LessThanHalf,
+        (Some(shell), None) if shell.electrons() < shell.orbital().capacity() / 2 => {
+            ThirdRule::LessThanHalf
+        }
         (Some(_), None) => ThirdRule::MoreThanHalf,
         _ => ThirdRule::Undecided,
     }

@@ -42,7 +42,10 @@ pub struct JjConfigurations {
 impl JjConfiguration {
     /// Number of its levels.
     pub fn n_levels(&self) -> u128 {
-        self.levels.iter().map(|&(_, n)| n).fold(0, u128::saturating_add)
+        self.levels
+            .iter()
+            .map(|&(_, n)| n)
+            .fold(0, u128::saturating_add)
     }
 }
 
@@ -135,7 +138,9 @@ pub fn configurations(subshells: &[Subshell], limit: usize) -> Result<JjConfigur
         let mut parts = Vec::new();
         let mut weights = vec![1_u128];
         for (choice, &at) in choices.iter().zip(&turn) {
-            let Some((held, own)) = choice.get(at) else { continue };
+            let Some((held, own)) = choice.get(at) else {
+                continue;
+            };
             steps = steps.saturating_add((weights.len() as u128).saturating_mul(own.len() as u128));
             if steps > MAX_STEPS {
                 return Err(too_long(subshells));
@@ -206,7 +211,10 @@ fn divided(shell: Subshell) -> Vec<(Vec<JSubshell>, Vec<u128>)> {
                     electrons,
                 })
                 .collect();
-            (held, convolve(&one_j(lower_size, lower), &one_j(upper_size, upper)))
+            (
+                held,
+                convolve(&one_j(lower_size, lower), &one_j(upper_size, upper)),
+            )
         })
         .collect()
 }
@@ -214,7 +222,9 @@ fn divided(shell: Subshell) -> Vec<(Vec<JSubshell>, Vec<u128>)> {
 /// Antisymmetric states of n electrons in 2j + 1 = `size` orbitals by projection.
 fn one_j(size: u32, electrons: u32) -> Vec<u128> {
     let particles = electrons.min(size.saturating_sub(electrons));
-    gaussian_binomials(size, particles).pop().unwrap_or_default()
+    gaussian_binomials(size, particles)
+        .pop()
+        .unwrap_or_default()
 }
 
 /// Sum of two symmetric counts whose middles coincide.

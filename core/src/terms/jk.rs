@@ -30,7 +30,12 @@ impl fmt::Display for Pair {
         let mark = |odd: bool| if odd { "*" } else { "" };
         let Level { term, index, j } = self.parent;
         let letter = total_letter(term.l);
-        write!(f, "({}{letter}{}{j}", term.multiplicity(), mark(self.parent_is_odd))?;
+        write!(
+            f,
+            "({}{letter}{}{j}",
+            term.multiplicity(),
+            mark(self.parent_is_odd)
+        )?;
         if let Some(index) = index {
             write!(f, " #{index}")?;
         }

@@ -91,7 +91,10 @@ fn split_index(text: &str) -> Result<(&str, Option<u128>), Problem> {
     };
     let before = text.get(..at).unwrap_or_default();
     let digits = text.get(at + 1..).unwrap_or_default().trim();
-    let number = digits.bytes().all(|b| b.is_ascii_digit()).then(|| digits.parse::<u128>());
+    let number = digits
+        .bytes()
+        .all(|b| b.is_ascii_digit())
+        .then(|| digits.parse::<u128>());
     match number {
         Some(Ok(k)) if k > 0 => Ok((before, Some(k))),
         _ => Err(Problem::new(
@@ -109,7 +112,9 @@ fn split_index(text: &str) -> Result<(&str, Option<u128>), Problem> {
 fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, bool), Problem> {
     let end = start + written.len();
     let fault = |code, message: String, from: usize| Problem::new(code, message, from, end);
-    let letter_at = written.find(|c| plain_digit(c).is_none()).unwrap_or(written.len());
+    let letter_at = written
+        .find(|c| plain_digit(c).is_none())
+        .unwrap_or(written.len());
     let multiplicity = whole_number(written.get(..letter_at).unwrap_or_default());
     let rest = written.get(letter_at..).unwrap_or_default();
     let multiplicity = match multiplicity {
@@ -117,7 +122,9 @@ fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, b
         _ => {
             return Err(fault(
                 "level-without-term",
-                format!("\"{written}\" is not a term with J: it has to begin with the multiplicity."),
+                format!(
+                    "\"{written}\" is not a term with J: it has to begin with the multiplicity."
+                ),
                 start,
             )
             .bound(format!(
@@ -172,7 +179,9 @@ fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, b
 fn read_letter(text: &str) -> Option<(u32, &str)> {
     if let Some(inside) = text.strip_prefix('[') {
         let (number, after) = inside.split_once(']')?;
-        return whole_number(number).filter(|l| (21..=MAX_L).contains(l)).map(|l| (l, after));
+        return whole_number(number)
+            .filter(|l| (21..=MAX_L).contains(l))
+            .map(|l| (l, after));
     }
     let letter = text.chars().next().filter(char::is_ascii_uppercase)?;
     let l = l_of_letter(letter.to_ascii_lowercase())?;
@@ -184,7 +193,10 @@ fn plain_digit(c: char) -> Option<u32> {
     const RAISED: [char; 10] = ['⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹'];
     let found = match c {
         '₀'..='₉' => Some(u32::from(c) - u32::from('₀')),
-        _ => RAISED.iter().position(|&r| r == c).and_then(|i| u32::try_from(i).ok()),
+        _ => RAISED
+            .iter()
+            .position(|&r| r == c)
+            .and_then(|i| u32::try_from(i).ok()),
     };
     found.or_else(|| c.to_digit(10))
 }
@@ -193,8 +205,9 @@ fn whole_number(text: &str) -> Option<u32> {
     if text.is_empty() {
         return None;
     }
-    text.chars()
-        .try_fold(0_u32, |n, c| n.checked_mul(10)?.checked_add(plain_digit(c)?))
+    text.chars().try_fold(0_u32, |n, c| {
+        n.checked_mul(10)?.checked_add(plain_digit(c)?)
+    })
 }
 
 /// `2`, `3/2`, also with a raised or lowered slash.
@@ -220,12 +233,22 @@ mod tests {
 
     #[test]
     fn names_are_read_back_as_they_were_made() {
-        for text in ["3p 2P1/2", "3d3 2D5/2 #2", "3d6 4s2 5D4", "4f7 5d2 11[21]26", "1S0", "3p 4S3/2"] {
+        for text in [
+            "3p 2P1/2",
+            "3d3 2D5/2 #2",
+            "3d6 4s2 5D4",
+            "4f7 5d2 11[21]26",
+            "1S0",
+            "3p 4S3/2",
+        ] {
             let label = parse(text).unwrap();
             assert_eq!(format(label.configuration, &label.level), text);
         }
         let label = parse(" 3d6 4s2   5D4 ").unwrap();
-        assert_eq!((label.configuration, label.configuration_start), ("3d6 4s2", 1));
+        assert_eq!(
+            (label.configuration, label.configuration_start),
+            ("3d6 4s2", 1)
+        );
         assert_eq!(label.level_start, 11);
     }
 

@@ -71,7 +71,10 @@ pub(super) fn from_weights(weights: &Weights) -> Vec<LsTerm> {
 impl LsTerms {
     /// Number of terms, each repeat counted.
     pub fn n_terms(&self) -> u128 {
-        self.terms.iter().map(|t| t.times).fold(0, u128::saturating_add)
+        self.terms
+            .iter()
+            .map(|t| t.times)
+            .fold(0, u128::saturating_add)
     }
 
     /// Number of levels.
@@ -94,10 +97,20 @@ impl LsTerms {
     /// Number of levels of each J, J rising.
     pub fn levels_by_j(&self) -> Vec<(TwiceJ, u128)> {
         let mut counts: Vec<(TwiceJ, u128)> = Vec::new();
-        let highest = self.terms.iter().filter_map(|t| t.term.levels().last()).max();
-        let Some(highest) = highest else { return counts };
+        let highest = self
+            .terms
+            .iter()
+            .filter_map(|t| t.term.levels().last())
+            .max();
+        let Some(highest) = highest else {
+            return counts;
+        };
         let lowest = highest.doubled().rem_euclid(2);
-        counts.extend((lowest..=highest.doubled()).step_by(2).map(|j| (TwiceJ::from_doubled(j), 0)));
+        counts.extend(
+            (lowest..=highest.doubled())
+                .step_by(2)
+                .map(|j| (TwiceJ::from_doubled(j), 0)),
+        );
         for t in &self.terms {
             for j in t.term.levels() {
                 let place = usize::try_from(j.doubled() / 2).ok();

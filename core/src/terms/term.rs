@@ -48,17 +48,21 @@ impl Term {
 
     /// How many levels it has: the smaller of 2S + 1 and 2L + 1.
     pub fn level_count(self) -> u32 {
-        self.multiplicity().min(self.l.saturating_mul(2).saturating_add(1))
+        self.multiplicity()
+            .min(self.l.saturating_mul(2).saturating_add(1))
     }
 
     /// How many states it has: (2S + 1)(2L + 1).
     pub fn states(self) -> u64 {
-        u64::from(self.multiplicity()).saturating_mul(u64::from(self.l).saturating_mul(2).saturating_add(1))
+        u64::from(self.multiplicity())
+            .saturating_mul(u64::from(self.l).saturating_mul(2).saturating_add(1))
     }
 
     /// Terms that two terms couple to, in the order of [`Term`]: |S₁ − S₂| … S₁ + S₂, |L₁ − L₂| … L₁ + L₂.
     pub fn coupled_to(self, other: Term) -> impl Iterator<Item = Term> {
-        let spins = (self.two_s.abs_diff(other.two_s)..=self.two_s.saturating_add(other.two_s)).rev().step_by(2);
+        let spins = (self.two_s.abs_diff(other.two_s)..=self.two_s.saturating_add(other.two_s))
+            .rev()
+            .step_by(2);
         spins.flat_map(move |two_s| {
             (self.l.abs_diff(other.l)..=self.l.saturating_add(other.l))
                 .rev()

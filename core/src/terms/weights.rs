@@ -72,8 +72,15 @@ pub fn gaussian_binomials(size: u32, most: u32) -> Vec<Vec<u128>> {
             if let Some(kept) = usize::try_from(a).ok().and_then(|a| previous.get(a)) {
                 add_shifted(&mut row, kept, 0);
             }
-            if let Some(joined) = a.checked_sub(1).and_then(|b| previous.get(usize::try_from(b).ok()?)) {
-                add_shifted(&mut row, joined, usize::try_from(m - a).unwrap_or(usize::MAX));
+            if let Some(joined) = a
+                .checked_sub(1)
+                .and_then(|b| previous.get(usize::try_from(b).ok()?))
+            {
+                add_shifted(
+                    &mut row,
+                    joined,
+                    usize::try_from(m - a).unwrap_or(usize::MAX),
+                );
             }
             rows.push(row);
         }
@@ -110,14 +117,18 @@ pub struct Weights {
 impl Weights {
     /// Nothing but closed shells: one state with M_L = M_S = 0.
     pub fn closed() -> Self {
-        Weights { rows: vec![vec![1]] }
+        Weights {
+            rows: vec![vec![1]],
+        }
     }
 
     /// One subshell. Antisymmetric states of spin up and of spin down are chosen independently;
     /// a shell more than half full is counted by its holes, which have the same projections.
     pub fn of_subshell(shell: Subshell) -> Self {
         let capacity = shell.orbital().capacity();
-        let particles = shell.electrons().min(capacity.saturating_sub(shell.electrons()));
+        let particles = shell
+            .electrons()
+            .min(capacity.saturating_sub(shell.electrons()));
         let orbitals = capacity / 2;
         let one_spin = gaussian_binomials(orbitals, particles);
         let rows: Vec<Vec<u128>> = one_spin
@@ -229,7 +240,9 @@ fn centred(row: Vec<u128>, width: usize) -> Vec<u128> {
 /// Particles or holes of a shell, and the M_L columns they reach.
 fn particles_and_columns(shell: Subshell) -> (u128, u128) {
     let capacity = shell.orbital().capacity();
-    let particles = shell.electrons().min(capacity.saturating_sub(shell.electrons()));
+    let particles = shell
+        .electrons()
+        .min(capacity.saturating_sub(shell.electrons()));
     let orbitals = u128::from(capacity / 2);
     let up = u128::from(particles.div_ceil(2));
     let down = u128::from(particles / 2);
