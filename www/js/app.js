@@ -1,0 +1,409 @@
+// Wires the page together.
+
+import { sameSheet } from "./address.js";
+import { makeAnnouncer } from "./announce.js";
+import { makeChoice } from "./choice.js";
+import { element, setText, wordButton } from "./dom.js";
+import { Engine } from "./engine.js";
+import { FaultTiming, Fields, faultNode, faultWords, wayButton } from "./fields.js";
+import { acceptDrops, fileFaults, fileName, saveFile, textOf } from "./files.js";
+import { Head, headWords } from "./head.js";
+import { Keeper } from "./keeper.js";
+import { listen } from "./keys.js";
+import { Notes } from "./notes.js";
+import { openPanel } from "./opening.js";
+import { valueAt } from "./pointer.js";
+import { Questions, WORDS } from "./questions.js";
+import { questionFields } from "./question-fields.js";
+import { RecordRung } from "./record.js";
+import { QuestionRung, ladderList, panicNode } from "./rungs.js";
+import { Settings, settingsPanel } from "./settings.js";
+import { SheetStore } from "./sheet.js";
+import { compileCore, showCannotStart, workerStarter } from "./startup.js";
+import { Storage } from "./storage.js";
+import { ViewState } from "./view-state.js";
+
+const byId = (id) => document.getElementById(id);
+
+async function start() {
+  // The core compiles while the page is put together.
+  const compiling = compileCore();
+  compiling.catch(() => {});
+  const startWorker = workerStarter();
+
+  const notes = new Notes(byId("notes"));
+  const storage = new Storage((trouble) => showStorageTrouble(notes, trouble));
+  const settings = new Settings(storage);
+  const view = new ViewState(storage);
+  const store = new SheetStore();
+  const examples = RUNGLINE_EXAMPLES;
+  const keeper = new Keeper({ store, storage, notes, first: examples[0] });
+  const announcer = makeAnnouncer(byId("announcements"));
+  keeper.begin();
+
+  const engine = new Engine(startWorker, await compiling);
+  const questions = new Questions(engine, store);
+  await questions.begin();
+
+  new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, questions }).begin();
+  byId("cannot-start").remove();
+}
+
+function showStorageTrouble(notes, trouble) {
+  if (trouble === null) notes.remove("storage");
+  else {
+    notes.put("storage", {
+      text: trouble === "full"
+        ? "The browser's storage is full: this sheet is not kept when the page closes. Save it as a file; all else works."
+        : "The browser refuses its storage to this page: the sheet is not kept when the page closes. Save it as a file; all else works.",
+    });
+  }
+}
+
+class Page {
+  #charts = new Map();
+
+  constructor(parts) {
+    Object.assign(this, parts);
+    this.timing = new FaultTiming(() => this.showReading());
+    this.fields = new Fields(this.store, this.settings, this.timing);
+    this.panels = { open: byId("open-panel"), settings: byId("settings-panel") };
+    this.stopButton = wordButton("Stop", () => this.stop(), { class: "word stop", hidden: true });
+  }
+
+  begin() {
+    this.head = new Head({
+      store: this.store, fields: this.fields, settings: this.settings, view: this.view,
+      chart: (charge) => this.chart(charge),
+      toFirstFault: () => this.toFirstFault(),
+    });
+    this.words = headWords({
+      open: () => this.togglePanel("open"),
+      save: () => this.saveSheet(),
+      undo: () => this.undo(),
+      redo: () => this.redo(),
+      settings: () => this.togglePanel("settings"),
+    });
+    openPanel(this.panels.open, this.examples, {
+      choose: () => byId("file").click(),
+      replace: (sheet, label) => this.replace(sheet, label),
+    });
+    this.panels.settings.append(element("h2", { text: "Settings" }), settingsPanel(this.settings, () => this.keeper.clear()));
+    this.makeRungs();
+    this.makeFootBar();
+    byId("version").textContent = `Rungline ${this.questions.about.version}, constants CODATA ${this.questions.about.codata}.`;
+    byId("file").addEventListener("change", ({ target }) => {
+      const [file] = target.files;
+      if (file) this.openFile(file);
+      target.value = "";
+    });
+    acceptDrops((file) => this.openFile(file), (fault) => this.refuseFile(fault));
+    listen({
+      undo: () => this.undo(), redo: () => this.redo(), save: () => this.saveSheet(),
+      open: () => this.togglePanel("open", true), escape: () => this.escape(),
+    });
+    this.store.subscribe((change) => this.changed(change));
+    this.questions.subscribe((what) => (what === "reading" ? this.showReading() : this.showQuestion(what)));
+    this.settings.subscribe(() => this.showAll());
+    this.changed({ kind: "load" });
+    measureHead();
+  }
+
+  makeRungs() {
+    const context = {
+      settings: this.settings, store: this.store, choice: makeChoice(),
+      setField: (path, value, label) => this.put(path, value, label),
+      announce: (text) => this.announcer.now(text),
+      chart: (charge) => this.chart(charge),
+    };
+    const act = {
+      takeWay: (name, way) => this.takeQuestionWay(name, way),
+      start: (name) => this.questions.ask(name, true).then(() => this.showQuestion(name)),
+      again: (name) => this.questions.ask(name),
+      stop: () => this.stop(),
+      save: () => this.saveSheet(),
+    };
+    this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
+      name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,
+      open: index === 0,
+      fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label)),
+    }));
+    this.record = new RecordRung({
+      numeral: this.rungs.length + 1, view: this.view, store: this.store, fields: this.fields,
+      act: { saveSheet: () => this.saveSheet(), saveRecord: () => this.saveRecord(), open: () => byId("file").click() },
+    });
+    byId("ladder").append(...this.rungs.map(({ rung }) => rung.node), this.record.rung.node);
+  }
+
+  makeFootBar() {
+    const list = element("div", { class: "ladder-list", id: "ladder-list", hidden: true },
+      ladderList([...this.rungs.map(({ name }) => ({ name, question: WORDS[name] })), { name: "record", question: "Record" }], (name) => {
+        fold(false);
+        const rung = this.rungOf(name);
+        rung.unfold(true);
+        rung.node.scrollIntoView();
+        rung.focus();
+      }));
+    const fold = (open) => {
+      list.hidden = !open;
+      ladder.setAttribute("aria-expanded", String(open));
+    };
+    const ladder = wordButton("Ladder", () => fold(list.hidden), { "aria-expanded": "false", "aria-controls": "ladder-list" });
+    this.foldLadder = () => {
+      const was = !list.hidden;
+      fold(false);
+      return was;
+    };
+    this.footUndo = wordButton("Undo", () => this.undo());
+    byId("foot-bar").append(list, ladder, this.footUndo, this.stopButton);
+  }
+
+  rungOf(name) {
+    return name === "record" ? this.record.rung : this.rungs.find((rung) => rung.name === name).rung;
+  }
+
+  changed(change) {
+    if (change.kind === "typing") this.announcer.hold();
+    else {
+      this.timing.rest();
+      if (change.kind !== "step") this.head.reset();
+    }
+    this.head.arrange();
+    this.fields.refill();
+    this.record.changed();
+    this.showWords();
+    this.showTitle();
+    this.questions.refresh();
+  }
+
+  showWords() {
+    for (const [button, label, what] of [
+      [this.words.undo, this.store.undoLabel, "Undo"], [this.footUndo, this.store.undoLabel, "Undo"], [this.words.redo, this.store.redoLabel, "Redo"],
+    ]) {
+      // Disabled buttons would lose the focus of whoever has just pressed them.
+      button.setAttribute("aria-disabled", String(label === null));
+      button.title = label === null ? `Nothing to ${what.toLowerCase()}` : `${what}: ${label}`;
+    }
+  }
+
+  showTitle() {
+    const { title, note } = this.store.sheet;
+    const example = this.examples.some((sheet) => sameSheet(sheet, this.store.sheet));
+    const block = byId("title-block");
+    block.replaceChildren(
+      ...(typeof title === "string" && title.trim() !== "" ? [element("p", { class: "title", text: title })] : []),
+      ...(typeof note === "string" && note.trim() !== "" ? [element("p", { class: "note", text: note })] : []),
+      ...(example ? [element("p", { class: "note", text: "This is an example: type over it. Others, and an empty sheet, are under Open." })] : []));
+    block.hidden = block.childElementCount === 0;
+  }
+
+  shownFaults() {
+    return this.questions.reading === null ? [] : this.timing.shown(this.questions.reading.faults);
+  }
+
+  showReading() {
+    const { broken, reading } = this.questions;
+    if (broken === null) this.notes.remove("broken");
+    else this.notes.put("broken", { kind: "fault", lasting: true, more: panicNode(broken, () => this.questions.refresh(), () => this.saveSheet()) });
+    if (reading === null) return;
+    const faults = this.shownFaults();
+    this.fields.read(reading);
+    this.head.read(reading, faults);
+    this.showElsewhere(faults);
+    for (const rung of this.rungs) rung.show(faults.length);
+    this.announcer.later("faults", this.newFaultWords(faults));
+    this.showStop();
+  }
+
+  newFaultWords(faults) {
+    const words = faults.map((fault) => `Fault${this.fields.labelOf(fault.path) ? ` in ${this.fields.labelOf(fault.path)}` : ""}: ${faultWords(fault)}`).join(" ");
+    if (words === this.spokenFaults) return "";
+    this.spokenFaults = words;
+    return words;
+  }
+
+  // Faults of the sheet whose place has no field on the page.
+  showElsewhere(faults) {
+    const elsewhere = faults.filter((fault) => !this.fields.has(fault.path));
+    const key = JSON.stringify(elsewhere);
+    if (this.elsewhere === key) return;
+    this.elsewhere = key;
+    if (elsewhere.length === 0) {
+      this.notes.remove("elsewhere");
+      return;
+    }
+    this.notes.put("elsewhere", {
+      kind: "fault", lasting: true,
+      more: element("div", {}, ...elsewhere.slice(0, 20).flatMap((fault) => {
+        const value = valueAt(this.store.sheet, fault.path);
+        return [
+          faultNode(fault, typeof value === "string" ? value : ""),
+          element("p", { class: "bound", text: fault.path ? `At ${fault.path}.` : "In the sheet as a whole." }),
+          element("div", { class: "ways" },
+            ...fault.ways.map((way) => wayButton(way, () => this.fields.takeWay(fault, way))),
+            ...(fault.path ? [wayButton({ label: "Take it out" }, () => this.put(fault.path, undefined, `Take out ${fault.path}`))] : [])),
+        ];
+      }), elsewhere.length > 20 ? element("p", { text: `… and ${elsewhere.length - 20} more.` }) : null),
+    });
+  }
+
+  showQuestion(name) {
+    this.rungs.find((rung) => rung.name === name)?.show(this.shownFaults().length);
+    this.showStop();
+    this.fields.read(this.questions.reading);
+  }
+
+  showStop() {
+    this.stopButton.hidden = !this.questions.running;
+  }
+
+  showAll() {
+    if (this.questions.reading !== null) this.showReading();
+  }
+
+  toFirstFault() {
+    const [fault] = this.shownFaults();
+    if (fault === undefined) return;
+    if (/^\/(species|configurations)/.test(fault.path)) this.head.unfold(true, false);
+    else if (/^\/(field|line)/.test(fault.path)) this.rungs.find((rung) => rung.name === "splitting")?.rung.unfold(true);
+    else if (/^\/(title|note)$/.test(fault.path)) this.record.rung.unfold(true);
+    this.head.makeRoom(fault.path);
+    if (!this.fields.focus(fault.path)) document.querySelector('[data-note="elsewhere"] button')?.focus();
+  }
+
+  put(path, value, label) {
+    this.head.makeRoom(path);
+    this.store.put([[path, value]], label);
+  }
+
+  takeQuestionWay(name, way) {
+    this.put(way.path, way.value, way.label);
+    this.rungOf(name).unfold(true);
+    if (!this.fields.focus(way.path)) this.rungOf(name).focus();
+  }
+
+  replace(sheet, label) {
+    this.head.reset();
+    this.store.replace(sheet, label);
+    this.head.reset();
+    this.togglePanel("open", false);
+    this.announcer.now(`${label}. Undo brings back what was here.`);
+  }
+
+  async openFile(file) {
+    const { text, fault } = await textOf(file);
+    if (fault) {
+      this.refuseFile(fault);
+      return;
+    }
+    const result = await this.engine.request("open", "open", [text]);
+    if (result.text === undefined) {
+      if (result.panic) this.notes.put("file", { kind: "fault", more: panicNode(result.panic, () => this.openFile(file), () => this.saveSheet()) });
+      return;
+    }
+    const message = JSON.parse(result.text);
+    if (message.faults) {
+      this.notes.put("file", { kind: "fault", more: fileFaults(file.name, message.faults, text) });
+      return;
+    }
+    this.notes.remove("file");
+    this.replace(message.sheet, `Open "${file.name}"`);
+    if (message.record) this.record.verdict(file.name, message.record);
+  }
+
+  refuseFile(fault) {
+    this.notes.put("file", { kind: "fault", text: `${fault.message} ${fault.bound}` });
+  }
+
+  async saveSheet() {
+    await this.saveBy("save", ".rungline.json");
+  }
+
+  async saveRecord() {
+    await this.saveBy("record", ".record.json");
+  }
+
+  async saveBy(door, ending) {
+    const { sheet } = this.store;
+    const result = await this.engine.request(door, door, [sheet]);
+    if (typeof result.text !== "string") {
+      // The sheet itself needs no core to be saved.
+      if (door === "save") saveFile(fileName(sheet, ending), JSON.stringify(sheet, null, 2), this.notes);
+      else this.notes.put("saved", { kind: "fault", text: "The record could not be made: the calculation ended. Your sheet is safe." });
+      return;
+    }
+    const message = door === "record" ? parsed(result.text) : null;
+    if (message?.faults) this.notes.put("saved", { kind: "fault", text: "A record needs a sheet without faults.", buttons: [["To the first fault", () => this.toFirstFault()]] });
+    else saveFile(fileName(sheet, ending), result.text, this.notes);
+  }
+
+  undo() {
+    const label = this.store.undo();
+    this.announcer.now(label === null ? "Nothing to undo." : `Undone: ${label}.`);
+  }
+
+  redo() {
+    const label = this.store.redo();
+    this.announcer.now(label === null ? "Nothing to redo." : `Redone: ${label}.`);
+  }
+
+  stop() {
+    this.questions.stop();
+    this.announcer.now("Stopped.");
+  }
+
+  escape() {
+    if (this.questions.running) {
+      this.stop();
+      return true;
+    }
+    if (this.foldLadder()) return true;
+    const open = Object.keys(this.panels).find((name) => !this.panels[name].hidden);
+    if (open === undefined) return false;
+    this.togglePanel(open, false);
+    this.words[open].focus();
+    return true;
+  }
+
+  togglePanel(name, open = this.panels[name].hidden) {
+    for (const [other, panel] of Object.entries(this.panels)) {
+      const shown = other === name && open;
+      panel.hidden = !shown;
+      this.words[other].setAttribute("aria-expanded", String(shown));
+    }
+    if (!open) return;
+    window.scrollTo({ top: 0 });
+    this.panels[name].querySelector("button, select, a")?.focus();
+  }
+
+  chart(charge) {
+    if (!this.#charts.has(charge)) {
+      this.#charts.set(charge, this.engine.request(`chart:${charge}`, "chart", [charge]).then((result) => {
+        if (result.text !== undefined) return JSON.parse(result.text);
+        this.#charts.delete(charge);
+        return null;
+      }));
+    }
+    return this.#charts.get(charge);
+  }
+}
+
+function parsed(text) {
+  try {
+    return JSON.parse(text);
+  } catch {
+    return null;
+  }
+}
+
+// Focus must never land under the head: what scrolls into view stops below it.
+function measureHead() {
+  const line = document.querySelector(".atom-line");
+  const measure = () => {
+    document.documentElement.style.scrollPaddingTop = `${line.getBoundingClientRect().height + 8}px`;
+  };
+  new ResizeObserver(measure).observe(line);
+  measure();
+}
+
+start().catch(showCannotStart);
