@@ -11,6 +11,7 @@ import { Head, headWords } from "./head.js";
 import { Keeper } from "./keeper.js";
 import { listen } from "./keys.js";
 import { Notes } from "./notes.js";
+import { keepOffline } from "./offline.js";
 import { openPanel } from "./opening.js";
 import { valueAt } from "./pointer.js";
 import { Questions, WORDS } from "./questions.js";
@@ -47,6 +48,18 @@ async function start() {
 
   new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, questions }).begin();
   byId("cannot-start").remove();
+  keepForOffline(notes);
+}
+
+function keepForOffline(notes) {
+  const take = keepOffline((state) => {
+    if (state === "waiting") {
+      notes.put("version", {
+        text: "A newer version of this page is here and waits. It starts when every tab with this one is closed, or now; your sheet is kept either way.",
+        buttons: [["Start it now", () => take()]], lasting: true,
+      });
+    }
+  });
 }
 
 function showStorageTrouble(notes, trouble) {
@@ -91,7 +104,7 @@ class Page {
     this.panels.settings.append(element("h2", { text: "Settings" }), settingsPanel(this.settings, () => this.keeper.clear()));
     this.makeRungs();
     this.makeFootBar();
-    byId("version").textContent = `Rungline ${this.questions.about.version}, constants CODATA ${this.questions.about.codata}.`;
+    byId("version").textContent = `Rungline ${this.questions.about.version}, constants CODATA ${this.questions.about.codata}.${RUNGLINE_PROFILE === "quick" ? " This is a quick build: slower than the one that is shipped." : ""}`;
     byId("file").addEventListener("change", ({ target }) => {
       const [file] = target.files;
       if (file) this.openFile(file);

@@ -1,5 +1,7 @@
 // Starts the core, or says which part of the browser is missing.
 
+import { scriptAddress } from "./trusted.js";
+
 /** Why the page cannot start; `reason` names the text in index.html that says what to do. */
 export class CannotStart extends Error {
   constructor(reason, detail = "") {
@@ -8,9 +10,6 @@ export class CannotStart extends Error {
     this.detail = detail;
   }
 }
-
-// Scripts may only be made from text through this policy, and only the worker is.
-const policy = globalThis.trustedTypes?.createPolicy("rungline", { createScriptURL: (url) => url });
 
 /** The compiled core: embedded in the one file, or beside the page of the site. */
 export async function compileCore() {
@@ -27,7 +26,7 @@ export async function compileCore() {
 export function workerStarter() {
   if (typeof Worker !== "function") throw new CannotStart("no-worker");
   const url = URL.createObjectURL(new Blob([RUNGLINE_WORKER_SOURCE], { type: "text/javascript" }));
-  const trusted = policy ? policy.createScriptURL(url) : url;
+  const trusted = scriptAddress(url);
   return () => {
     try {
       return new Worker(trusted);
