@@ -1,1 +1,8 @@
-//! Selection rules and relative strengths.
+//! Which lines there are, by which multipole, and how strong they are within their multiplet.
+
+mod multipole;
+mod rule;
+pub mod selection;
+
+pub use multipole::Multipole;
+pub use rule::Rule;

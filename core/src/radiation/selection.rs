@@ -1,0 +1,401 @@
+//! For every pair of levels and every multipole: allowed, or refused by which rule.
+//!
+//! The rules are asked in a fixed order, rigorous ones first (parity, change of J, sum of J), then
+//! those of pure configurations (one electron moves, its ℓ), of pure LS coupling (S, L, one term
+//! for M1) and of unmixed coupling chains (other shells keep their terms). The first that refuses
+//! decides. What none refuses is allowed; its strength may still vanish by accident.
+
+use super::{Multipole, Rule};
+use crate::configuration::{Orbital, Subshell};
+use crate::problem::Problem;
+use crate::quantity::TwiceJ;
+use crate::terms::chains::Chain;
+use crate::terms::{Term, is_odd};
+use std::collections::BTreeMap;
+
+/// A term of a configuration: one kind of it, where it occurs more than once.
+#[derive(Clone, Copy, Debug)]
+pub struct TermOf<'a> {
+    /// The term.
+    pub term: Term,
+    /// Its running index, where it occurs more than once.
+    pub index: Option<u128>,
+    /// How its shells couple; without it the rules on the shells' own terms are not asked.
+    pub chain: Option<&'a Chain>,
+}
+
+/// What is said about one pair of levels and one multipole.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Verdict {
+    /// The radiation.
+    pub multipole: Multipole,
+    /// The rule that refuses; none if the transition is allowed.
+    pub refused_by: Option<Rule>,
+}
+
+/// How two configurations differ.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Jump {
+    /// They are one configuration.
+    None,
+    /// One electron is elsewhere.
+    One {
+        /// Its orbital in the upper configuration.
+        upper: Orbital,
+        /// Its orbital in the lower configuration.
+        lower: Orbital,
+    },
+    /// So many electrons are elsewhere.
+    Several(u32),
+}
+
+/// Two configurations between which transitions are judged.
+#[derive(Clone, Debug)]
+pub struct Between {
+    upper_is_odd: bool,
+    lower_is_odd: bool,
+    jump: Jump,
+    /// Every orbital of either, in the order n, ℓ.
+    orbitals: Vec<Orbital>,
+}
+
+/// The number of pairs of different levels: of two configurations with that many levels, or of one.
+pub fn pair_count(upper_levels: u128, lower_levels: Option<u128>) -> u128 {
+    match lower_levels {
+        Some(lower) => upper_levels.saturating_mul(lower),
+        None if upper_levels.is_multiple_of(2) => {
+            (upper_levels / 2).saturating_mul(upper_levels.saturating_sub(1))
+        }
+        None => (upper_levels / 2).saturating_mul(upper_levels),
+    }
+}
+
+impl Between {
+    /// Compares two configurations with all their subshells, full ones too.
+    ///
+    /// Errors: `electron-count-differs`.
+    pub fn new(upper: &[Subshell], lower: &[Subshell]) -> Result<Self, Problem> {
+        let mut occupations: BTreeMap<Orbital, (u32, u32)> = BTreeMap::new();
+        for s in upper {
+            occupations.entry(s.orbital()).or_default().0 += s.electrons();
+        }
+        for s in lower {
+            occupations.entry(s.orbital()).or_default().1 += s.electrons();
+        }
+        let (mut left, mut joined) = (0_u32, 0_u32);
+        let mut jump = (None, None);
+        for (&orbital, &(above, below)) in &occupations {
+            left = left.saturating_add(above.saturating_sub(below));
+            joined = joined.saturating_add(below.saturating_sub(above));
+            if above > below {
+                jump.0 = Some(orbital);
+            }
+            if below > above {
+                jump.1 = Some(orbital);
+            }
+        }
+        if left != joined {
+            let count = |shells: &[Subshell]| shells.iter().map(|s| s.electrons()).sum::<u32>();
+            return Err(Problem::new(
+                "electron-count-differs",
+                format!(
+                    "one configuration has {} electrons and the other {}.",
+                    count(upper),
+                    count(lower)
+                ),
+                0,
+                0,
+            )
+            .bound("two configurations of the same atom or ion"));
+        }
+        Ok(Between {
+            upper_is_odd: is_odd(upper),
+            lower_is_odd: is_odd(lower),
+            jump: match (left, jump) {
+                (0, _) => Jump::None,
+                (1, (Some(upper), Some(lower))) => Jump::One { upper, lower },
+                _ => Jump::Several(left),
+            },
+            orbitals: occupations.into_keys().collect(),
+        })
+    }
+
+    /// How they differ.
+    pub fn jump(&self) -> Jump {
+        self.jump
+    }
+
+    /// The verdict on each multipole for one pair of levels.
+    pub fn verdicts(
+        &self,
+        upper: &TermOf,
+        upper_j: TwiceJ,
+        lower: &TermOf,
+        lower_j: TwiceJ,
+    ) -> [Verdict; 3] {
+        Multipole::ALL.map(|multipole| Verdict {
+            multipole,
+            refused_by: self
+                .level_rule(multipole, upper_j, lower_j)
+                .or_else(|| self.same_level(upper, upper_j, lower, lower_j))
+                .or_else(|| self.term_rule(multipole, upper, lower)),
+        })
+    }
+
+    /// The rigorous rule that refuses, if one does. It depends on parity and J alone.
+    pub fn level_rule(&self, multipole: Multipole, upper: TwiceJ, lower: TwiceJ) -> Option<Rule> {
+        if (self.upper_is_odd != self.lower_is_odd) != multipole.changes_parity() {
+            return Some(Rule::Parity {
+                multipole,
+                upper_is_odd: self.upper_is_odd,
+                lower_is_odd: self.lower_is_odd,
+            });
+        }
+        let twice_rank = 2 * multipole.rank();
+        if upper.doubled().abs_diff(lower.doubled()) > twice_rank {
+            return Some(Rule::JChange {
+                multipole,
+                upper,
+                lower,
+            });
+        }
+        let sum = i64::from(upper.doubled()) + i64::from(lower.doubled());
+        (sum < i64::from(twice_rank)).then_some(Rule::JSum {
+            multipole,
+            upper,
+            lower,
+        })
+    }
+
+    fn same_level(
+        &self,
+        upper: &TermOf,
+        upper_j: TwiceJ,
+        lower: &TermOf,
+        lower_j: TwiceJ,
+    ) -> Option<Rule> {
+        (self.jump == Jump::None && same_term(upper, lower) && upper_j == lower_j)
+            .then_some(Rule::SameLevel)
+    }
+
+    /// The approximate rule that refuses, if one does. It depends on the terms, not on J, so that it
+    /// is asked once for all levels of two terms.
+    pub fn term_rule(&self, multipole: Multipole, upper: &TermOf, lower: &TermOf) -> Option<Rule> {
+        self.jump_rule(multipole)
+            .or_else(|| coupling_rule(multipole, upper, lower))
+            .or_else(|| {
+                (multipole == Multipole::M1 && !same_term(upper, lower)).then_some(
+                    Rule::OtherTerm {
+                        upper: upper.term,
+                        lower: lower.term,
+                    },
+                )
+            })
+            .or_else(|| self.chain_rule(multipole, upper.chain?, lower.chain?))
+    }
+
+    /// One electron moves, and its ℓ fits: |ℓ − ℓ′| ≤ k ≤ ℓ + ℓ′ with ℓ + ℓ′ + k even.
+    fn jump_rule(&self, multipole: Multipole) -> Option<Rule> {
+        match self.jump {
+            Jump::None => None,
+            Jump::Several(moved) => Some(Rule::SeveralElectrons { moved }),
+            Jump::One { upper, lower } if multipole == Multipole::M1 => {
+                Some(Rule::OrbitalKept { upper, lower })
+            }
+            Jump::One { upper, lower } => {
+                let (a, b) = (u32::from(upper.l()), u32::from(lower.l()));
+                let rank = multipole.rank();
+                let fits =
+                    a.abs_diff(b) <= rank && rank <= a + b && (a + b + rank).is_multiple_of(2);
+                (!fits).then_some(Rule::OrbitalStep {
+                    multipole,
+                    upper,
+                    lower,
+                })
+            }
+        }
+    }
+
+    /// Rules of unmixed chains: the operator acts on one electron, so every shell that does not take
+    /// part keeps its own term, and what the shells up to some point couple to changes by no more
+    /// than the part of the operator that acts there.
+    fn chain_rule(&self, multipole: Multipole, upper: &Chain, lower: &Chain) -> Option<Rule> {
+        let rank = multipole.rank();
+        let upper = self.along(upper);
+        let lower = self.along(lower);
+        match self.jump {
+            Jump::Several(_) => None,
+            Jump::One {
+                upper: from,
+                lower: to,
+            } => {
+                let first = from.min(to);
+                let last = from.max(to);
+                self.first_refusal(&upper, &lower, |orbital| {
+                    let own = if orbital == from || orbital == to {
+                        Change::OneElectron(orbital.l().into())
+                    } else {
+                        Change::Nothing
+                    };
+                    let coupled = if orbital < first {
+                        Change::Nothing
+                    } else if orbital < last {
+                        Change::OneElectron(first.l().into())
+                    } else {
+                        Change::Orbital(rank)
+                    };
+                    (own, coupled)
+                })
+            }
+            Jump::None if multipole == Multipole::M1 => None,
+            Jump::None => {
+                // Any one open shell may be the active one; refused only if none of them can be.
+                let mut refusal = None;
+                let open = upper.iter().filter(|p| p.is_open).map(|p| p.orbital);
+                for active in open {
+                    let refused = self.first_refusal(&upper, &lower, |orbital| {
+                        let own = if orbital == active {
+                            Change::Orbital(rank)
+                        } else {
+                            Change::Nothing
+                        };
+                        let coupled = if orbital < active {
+                            Change::Nothing
+                        } else {
+                            Change::Orbital(rank)
+                        };
+                        (own, coupled)
+                    });
+                    match refused {
+                        None => return None,
+                        Some(_) => refusal = refusal.or(refused),
+                    }
+                }
+                refusal
+            }
+        }
+    }
+
+    /// The chain over all orbitals of both configurations: shells without a link of their own are
+    /// closed or empty, have ¹S and change nothing.
+    fn along(&self, chain: &Chain) -> Vec<Place> {
+        let mut links = chain.links.iter().peekable();
+        let mut coupled = Term::SINGLET_S;
+        self.orbitals
+            .iter()
+            .map(|&orbital| {
+                let link = links.next_if(|link| link.shell.orbital() == orbital);
+                coupled = link.map_or(coupled, |link| link.coupled);
+                Place {
+                    orbital,
+                    is_open: link.is_some(),
+                    own: link.map_or(Term::SINGLET_S, |link| link.own),
+                    own_index: link.and_then(|link| link.own_index).unwrap_or(1),
+                    electrons: link.map_or(0, |link| link.shell.electrons()),
+                    coupled,
+                }
+            })
+            .collect()
+    }
+
+    fn first_refusal(
+        &self,
+        upper: &[Place],
+        lower: &[Place],
+        change: impl Fn(Orbital) -> (Change, Change),
+    ) -> Option<Rule> {
+        upper.iter().zip(lower).find_map(|(a, b)| {
+            let (own, coupled) = change(a.orbital);
+            let same_kind = a.own == b.own && a.own_index == b.own_index;
+            match own {
+                Change::Nothing if !same_kind => {
+                    return Some(Rule::Spectator {
+                        orbital: a.orbital,
+                        upper: a.own,
+                        lower: b.own,
+                    });
+                }
+                _ if !own.allows(a.own, b.own) => {
+                    let shell = Subshell::new(a.orbital, a.electrons.max(b.electrons).max(1))?;
+                    return Some(Rule::Parent {
+                        shell,
+                        upper: a.own,
+                        lower: b.own,
+                    });
+                }
+                _ => {}
+            }
+            (!coupled.allows(a.coupled, b.coupled)).then_some(Rule::Coupling {
+                up_to: a.orbital,
+                upper: a.coupled,
+                lower: b.coupled,
+            })
+        })
+    }
+}
+
+/// A shell in a chain.
+struct Place {
+    orbital: Orbital,
+    is_open: bool,
+    own: Term,
+    own_index: u128,
+    electrons: u32,
+    coupled: Term,
+}
+
+/// What acts on a part of the atom.
+#[derive(Clone, Copy)]
+enum Change {
+    /// Nothing: it stays as it is.
+    Nothing,
+    /// One electron of this ℓ is taken or added.
+    OneElectron(u32),
+    /// An orbital operator of this rank.
+    Orbital(u32),
+}
+
+impl Change {
+    /// Whether it can lead from one term to the other, by the triangle rules.
+    fn allows(self, a: Term, b: Term) -> bool {
+        let triangle = |rank: u32| a.l.abs_diff(b.l) <= rank && rank <= a.l.saturating_add(b.l);
+        match self {
+            Change::Nothing => a == b,
+            Change::OneElectron(l) => a.two_s.abs_diff(b.two_s) == 1 && triangle(l),
+            Change::Orbital(rank) => a.two_s == b.two_s && triangle(rank),
+        }
+    }
+}
+
+/// One and the same term of one configuration, given that the configurations are the same.
+fn same_term(upper: &TermOf, lower: &TermOf) -> bool {
+    upper.term == lower.term && upper.index == lower.index
+}
+
+/// ΔS = 0; |ΔL| ≤ k ≤ L + L′.
+fn coupling_rule(multipole: Multipole, upper: &TermOf, lower: &TermOf) -> Option<Rule> {
+    let (a, b) = (upper.term, lower.term);
+    if a.two_s != b.two_s {
+        return Some(Rule::Spin {
+            upper: a.spin(),
+            lower: b.spin(),
+        });
+    }
+    // L + S has no rank in L alone: within one term M1 needs S or L, which J's own rules see to.
+    if multipole == Multipole::M1 {
+        return None;
+    }
+    let rank = multipole.rank();
+    if a.l.abs_diff(b.l) > rank {
+        return Some(Rule::LChange {
+            multipole,
+            upper: a.l,
+            lower: b.l,
+        });
+    }
+    (a.l.saturating_add(b.l) < rank).then_some(Rule::LSum {
+        multipole,
+        upper: a.l,
+        lower: b.l,
+    })
+}

@@ -1,0 +1,395 @@
+//! The linear Zeeman pattern of a line: field so weak that J stays good, E = E₀ + g μ_B B M
+//! (Condon & Shortley 1935, ch. XVI; Cowan 1981, ch. 17).
+//!
+//! Each pair of states M, M′ is a component at (g M − g′ M′) μ_B B with the strength
+//! (J 1 J′; −M q M′)², q = M − M′: π for q = 0, σ± for q = ±1. These sum to 1 over the line and to
+//! ⅓ for each polarisation.
+//!
+//! Seen at an angle θ between field and line of sight the intensities are weighted by (3/2) sin²θ
+//! for π and (3/4)(1 + cos²θ) for σ, so that the whole line stays 1. This holds for E1 and for M1; the
+//! two differ in the direction of the electric vector ([`Light`]), since in M1 the magnetic vector
+//! takes the part that the electric one has in E1.
+
+use super::wigner_eckart::dipole_share;
+use crate::problem::Problem;
+use crate::quantity::TwiceJ;
+use crate::radiation::Multipole;
+
+/// μ_B/hc in cm⁻¹/T, CODATA 2022.
+const MU_B_CM: f64 = 0.466_864_477_19;
+
+/// c in GHz per cm⁻¹, exact.
+const GHZ_PER_CM: f64 = 29.979_245_8;
+
+/// The most components that one line may have.
+pub const MAX_COMPONENTS: i64 = 20_000;
+
+/// Largest |g|, in magnitude far above that of any level of an atom.
+pub const MAX_G: f64 = 1.0e3;
+
+/// Largest flux density, in tesla.
+pub const MAX_TESLA: f64 = 1.0e6;
+
+/// A level in the field.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SplitLevel {
+    /// J.
+    pub j: TwiceJ,
+    /// g; its value does not matter for J = 0.
+    pub g: f64,
+}
+
+/// π, σ+ or σ−, by M_upper − M_lower = 0, +1, −1.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Polarisation {
+    /// M_upper − M_lower = −1.
+    SigmaMinus,
+    /// M_upper = M_lower.
+    Pi,
+    /// M_upper − M_lower = +1.
+    SigmaPlus,
+}
+
+impl Polarisation {
+    /// ASCII: `pi`, `sigma+`, `sigma-`.
+    pub fn name(self) -> &'static str {
+        match self {
+            Polarisation::SigmaMinus => "sigma-",
+            Polarisation::Pi => "pi",
+            Polarisation::SigmaPlus => "sigma+",
+        }
+    }
+
+    /// The weight of this polarisation at the angle θ between field and line of sight, given cos²θ.
+    fn weight(self, cos_squared: f64) -> f64 {
+        match self {
+            Polarisation::Pi => 1.5 * (1.0 - cos_squared),
+            Polarisation::SigmaPlus | Polarisation::SigmaMinus => 0.75 * (1.0 + cos_squared),
+        }
+    }
+}
+
+/// The state of polarisation of the light that is seen.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Light {
+    /// Nothing is sent in this direction.
+    Dark,
+    /// Linear; the electric vector lies in the plane of field and line of sight, or across it.
+    Linear {
+        /// In that plane (along the field when seen at 90°).
+        in_field_plane: bool,
+    },
+    /// Circular, seen along the field.
+    Circular,
+    /// Elliptic, with the ratio of the short to the long axis, |cos θ|.
+    Elliptic {
+        /// Short axis over long axis.
+        axis_ratio: f64,
+        /// The long axis lies in the plane of field and line of sight.
+        long_axis_in_field_plane: bool,
+    },
+}
+
+/// One component.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Component {
+    /// π, σ+ or σ−.
+    pub polarisation: Polarisation,
+    /// M of the upper level.
+    pub m_upper: TwiceJ,
+    /// M of the lower level.
+    pub m_lower: TwiceJ,
+    /// Offset from the line in units of μ_B B (Lorentz units): g M − g′ M′.
+    pub lorentz: f64,
+    /// Strength over all directions, 1 for the line.
+    pub strength: f64,
+}
+
+/// Components that coincide.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Position {
+    /// π, σ+ or σ−.
+    pub polarisation: Polarisation,
+    /// Offset in units of μ_B B.
+    pub lorentz: f64,
+    /// Their strength together.
+    pub strength: f64,
+    /// How many there are.
+    pub components: u32,
+}
+
+/// The pattern of a line.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Pattern {
+    /// The radiation.
+    pub multipole: Multipole,
+    /// By polarisation (σ−, π, σ+), then by rising M of the upper level.
+    pub components: Vec<Component>,
+}
+
+/// The pattern of a dipole line between two levels.
+///
+/// Errors: `pattern-quadrupole` for E2; `pattern-no-line` where J and J′ forbid the line;
+/// `pattern-negative-j`; `pattern-too-large` above 20 000 components; `g-out-of-range`.
+pub fn pattern(
+    upper: SplitLevel,
+    lower: SplitLevel,
+    multipole: Multipole,
+) -> Result<Pattern, Problem> {
+    check(upper, lower, multipole)?;
+    let (a, b) = (upper.j.doubled(), lower.j.doubled());
+    let mut components = Vec::new();
+    for (polarisation, q) in [
+        (Polarisation::SigmaMinus, -2),
+        (Polarisation::Pi, 0),
+        (Polarisation::SigmaPlus, 2),
+    ] {
+        for m in (-a..=a).step_by(2) {
+            let n = m - q;
+            let strength = dipole_share(a, m, b, n);
+            if strength > 0.0 {
+                let (m_upper, m_lower) = (TwiceJ::from_doubled(m), TwiceJ::from_doubled(n));
+                components.push(Component {
+                    polarisation,
+                    m_upper,
+                    m_lower,
+                    lorentz: energy(upper, m_upper) - energy(lower, m_lower),
+                    strength,
+                });
+            }
+        }
+    }
+    Ok(Pattern {
+        multipole,
+        components,
+    })
+}
+
+/// g M, the energy of a state in units of μ_B B.
+pub fn energy(level: SplitLevel, m: TwiceJ) -> f64 {
+    if level.j.doubled() == 0 {
+        return 0.0;
+    }
+    level.g * m.value()
+}
+
+/// The states of a level: M falling from J with their energies in units of μ_B B.
+///
+/// Errors: `pattern-negative-j`, `pattern-too-large`, `g-out-of-range`.
+pub fn states(level: SplitLevel) -> Result<Vec<(TwiceJ, f64)>, Problem> {
+    check_level(level)?;
+    let two_j = level.j.doubled();
+    let projections = (-two_j..=two_j).rev().step_by(2).map(TwiceJ::from_doubled);
+    Ok(projections.map(|m| (m, energy(level, m))).collect())
+}
+
+fn check_level(level: SplitLevel) -> Result<(), Problem> {
+    let j = level.j;
+    if j.doubled() < 0 {
+        return Err(
+            Problem::new("pattern-negative-j", format!("J = {j} is negative."), 0, 0)
+                .bound("J = 0, 1/2, 1 …"),
+        );
+    }
+    if i64::from(j.doubled()) + 1 > MAX_COMPONENTS / 3 {
+        return Err(Problem::new(
+            "pattern-too-large",
+            format!("J = {j} has too many states."),
+            0,
+            0,
+        )
+        .bound(format!("at most {MAX_COMPONENTS} components")));
+    }
+    // No range contains a NaN.
+    if j.doubled() > 0 && !(-MAX_G..=MAX_G).contains(&level.g) {
+        return Err(Problem::new(
+            "g-out-of-range",
+            format!("g = {} is out of range.", level.g),
+            0,
+            0,
+        )
+        .bound(format!("|g| at most {MAX_G}")));
+    }
+    Ok(())
+}
+
+fn check(upper: SplitLevel, lower: SplitLevel, multipole: Multipole) -> Result<(), Problem> {
+    if multipole == Multipole::E2 {
+        return Err(Problem::new(
+            "pattern-quadrupole",
+            "the pattern of an E2 line has five polarisations and its own directions; it is not computed.",
+            0,
+            0,
+        )
+        .bound("E1 and M1 lines"));
+    }
+    check_level(upper)?;
+    check_level(lower)?;
+    let (a, b) = (upper.j.doubled(), lower.j.doubled());
+    if (a - b).abs() > 2 || (a - b) % 2 != 0 || a + b < 2 {
+        return Err(Problem::new(
+            "pattern-no-line",
+            format!(
+                "there is no {multipole} line from J = {} to J = {}.",
+                upper.j, lower.j
+            ),
+            0,
+            0,
+        )
+        .bound("J changes by 0 or 1, not from 0 to 0"));
+    }
+    Ok(())
+}
+
+impl Component {
+    /// What is seen of it at the angle between field and line of sight, in degrees, without polariser.
+    pub fn seen(&self, angle_degrees: f64) -> f64 {
+        self.strength * self.polarisation.weight(cos_squared(angle_degrees))
+    }
+
+    /// What is seen along the field.
+    pub fn along(&self) -> f64 {
+        self.strength * self.polarisation.weight(1.0)
+    }
+
+    /// What is seen across the field.
+    pub fn across(&self) -> f64 {
+        self.strength * self.polarisation.weight(0.0)
+    }
+}
+
+/// cos²θ for an angle in degrees, exact at multiples of 90°; an angle that is no number is taken as 90°.
+fn cos_squared(angle_degrees: f64) -> f64 {
+    if !angle_degrees.is_finite() {
+        return 0.0;
+    }
+    let folded = (angle_degrees % 180.0).abs();
+    if folded == 90.0 {
+        return 0.0;
+    }
+    let cosine = libm::cos(folded * (core::f64::consts::PI / 180.0));
+    cosine * cosine
+}
+
+/// The polarisation of the light of one component at the angle between field and line of sight.
+///
+/// E1: π has its electric vector in the plane of field and line of sight, σ is elliptic with its
+/// long axis across that plane, circular along the field, linear across it. M1: electric and
+/// magnetic vector change roles, so the same holds with the two directions exchanged.
+pub fn light(multipole: Multipole, polarisation: Polarisation, angle_degrees: f64) -> Light {
+    let cos_squared = cos_squared(angle_degrees);
+    let electric = multipole != Multipole::M1;
+    match polarisation {
+        Polarisation::Pi if cos_squared == 1.0 => Light::Dark,
+        Polarisation::Pi => Light::Linear {
+            in_field_plane: electric,
+        },
+        _ if cos_squared == 1.0 => Light::Circular,
+        _ if cos_squared == 0.0 => Light::Linear {
+            in_field_plane: !electric,
+        },
+        _ => Light::Elliptic {
+            axis_ratio: libm::sqrt(cos_squared),
+            long_axis_in_field_plane: !electric,
+        },
+    }
+}
+
+impl Pattern {
+    /// Components that coincide taken together, by polarisation, then by rising offset. Offsets are
+    /// equal within 10⁻⁹ μ_B B, far below what g is known to.
+    pub fn positions(&self) -> Vec<Position> {
+        let mut sorted = self.components.clone();
+        sorted.sort_by(|a, b| {
+            let order = a.polarisation.cmp(&b.polarisation);
+            order.then(a.lorentz.total_cmp(&b.lorentz))
+        });
+        let mut positions: Vec<Position> = Vec::new();
+        for c in sorted {
+            match positions.last_mut() {
+                Some(last)
+                    if last.polarisation == c.polarisation && c.lorentz - last.lorentz <= 1e-9 =>
+                {
+                    last.strength += c.strength;
+                    last.components = last.components.saturating_add(1);
+                }
+                _ => positions.push(Position {
+                    polarisation: c.polarisation,
+                    lorentz: c.lorentz,
+                    strength: c.strength,
+                    components: 1,
+                }),
+            }
+        }
+        positions
+    }
+
+    /// Whether it is the normal triplet: one place for each polarisation.
+    pub fn is_triplet(&self) -> bool {
+        self.positions().len() == 3
+    }
+}
+
+/// An offset in the units of the bench.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Offset {
+    /// In cm⁻¹.
+    pub wavenumber: f64,
+    /// In GHz.
+    pub frequency: f64,
+    /// In pm, positive to longer wavelengths; nothing without a wavelength, or where the offset
+    /// exceeds the line's own wavenumber.
+    pub wavelength: Option<f64>,
+}
+
+/// The offset of a component in a field, with the line's vacuum wavelength in nm if it is known:
+/// Δσ = x μ_B B/hc; Δν = c Δσ; Δλ = −λ² Δσ / (1 + λ Δσ), exact.
+///
+/// Errors: `field-out-of-range` above 10⁶ T or below zero; `wavelength-out-of-range` unless it is
+/// within 10⁻³ … 10⁹ nm.
+pub fn offset(lorentz: f64, tesla: f64, wavelength_nm: Option<f64>) -> Result<Offset, Problem> {
+    check_field(tesla)?;
+    let wavenumber = lorentz * MU_B_CM * tesla;
+    let wavelength = match wavelength_nm {
+        Some(nm) => pm_offset(checked_wavelength(nm)?, wavenumber),
+        None => None,
+    };
+    Ok(Offset {
+        wavenumber,
+        frequency: wavenumber * GHZ_PER_CM,
+        wavelength,
+    })
+}
+
+fn check_field(tesla: f64) -> Result<(), Problem> {
+    if (0.0..=MAX_TESLA).contains(&tesla) {
+        return Ok(());
+    }
+    Err(Problem::new(
+        "field-out-of-range",
+        format!("a field of {tesla} T is out of range."),
+        0,
+        0,
+    )
+    .bound("0 to 1000000 T"))
+}
+
+fn checked_wavelength(nm: f64) -> Result<f64, Problem> {
+    if (1.0e-3..=1.0e9).contains(&nm) {
+        return Ok(nm);
+    }
+    Err(Problem::new(
+        "wavelength-out-of-range",
+        format!("a wavelength of {nm} nm is out of range."),
+        0,
+        0,
+    )
+    .bound("0.001 to 1000000000 nm"))
+}
+
+/// Δλ in pm of a line at `nm` shifted by `wavenumber` cm⁻¹.
+fn pm_offset(nm: f64, wavenumber: f64) -> Option<f64> {
+    // λ Δσ without unit: 1 nm·cm⁻¹ = 10⁻⁷.
+    let relative = nm * wavenumber * 1.0e-7;
+    (relative > -1.0).then(|| -1.0e3 * nm * relative / (1.0 + relative))
+}
