@@ -267,7 +267,9 @@ class Page {
   }
 
   showStop() {
-    this.stopButton.hidden = !this.questions.running;
+    const { running } = this.questions;
+    this.stopButton.hidden = !running;
+    byId("foot-bar").classList.toggle("running", running);
   }
 
   showAll() {
@@ -285,8 +287,9 @@ class Page {
   }
 
   put(path, value, label) {
+    const changes = this.head.changes(path, value);
     this.head.makeRoom(path);
-    this.store.put([[path, value]], label);
+    this.store.put(changes, label);
   }
 
   takeQuestionWay(name, way) {
@@ -409,13 +412,21 @@ function parsed(text) {
   }
 }
 
-// Focus must never land under the head: what scrolls into view stops below it.
+// Focus must never land under the head, nor in the words that have scrolled away above it: what
+// scrolls into view stops below the head, and a key's focus brings the words back.
 function measureHead() {
+  const words = byId("words");
+  document.addEventListener("focusin", ({ target }) => {
+    byId("head").classList.toggle("by-keyboard", words.contains(target) && target.matches(":focus-visible"));
+  });
   const line = document.querySelector(".atom-line");
   const measure = () => {
     document.documentElement.style.scrollPaddingTop = `${line.getBoundingClientRect().height + 8}px`;
+    byId("head").style.setProperty("--words-height", `${words.getBoundingClientRect().height}px`);
   };
-  new ResizeObserver(measure).observe(line);
+  const observer = new ResizeObserver(measure);
+  observer.observe(line);
+  observer.observe(words);
   measure();
 }
 

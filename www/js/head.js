@@ -95,6 +95,16 @@ export class Head {
     this.arrange();
   }
 
+  /** The changes that put a value there: configurations before it that were left empty are written out. */
+  changes(path, value) {
+    const match = /^\/configurations\/(\d+)$/.exec(path);
+    const list = Array.isArray(this.#store.sheet.configurations) ? this.#store.sheet.configurations : [];
+    if (match === null || value === undefined || Number(match[1]) <= list.length) return [[path, value]];
+    const defaults = this.#reading?.defaults?.configurations ?? [];
+    const before = defaults.slice(list.length, Number(match[1])).map((text, index) => [`/configurations/${list.length + index}`, text]);
+    return [...before, [path, value]];
+  }
+
   /** Another sheet: fields that were only added for typing go. */
   reset() {
     this.#extra = 0;
@@ -130,6 +140,10 @@ export class Head {
   #addConfiguration() {
     const index = this.#configurations.children.length;
     this.#extra = index + 1;
+    const first = this.#reading?.defaults?.configurations?.[0];
+    if (index === 1 && this.#store.text("/configurations/0") === "" && first) {
+      this.#store.put([["/configurations/0", first]], `Write out ${first}`);
+    }
     this.arrange();
     this.#fields.focus(`/configurations/${index}`);
   }

@@ -55,6 +55,8 @@ function set(container, keys, value) {
     const index = Math.min(Number(key), list.length);
     if (now === undefined) list.splice(index, 1);
     else list[index] = now;
+    // Entries that were emptied before the one behind them went say nothing any more.
+    while (now === undefined && list.at(-1) === "") list.pop();
     return list.length === 0 ? undefined : list;
   }
   const group = {};

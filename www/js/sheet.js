@@ -1,6 +1,6 @@
 // The store: one sheet, and every step that led to it.
 
-import { valueAt, withKeyRenamed, withValue } from "./pointer.js";
+import { keysOf, pointerOf, valueAt, withKeyRenamed, withValue } from "./pointer.js";
 
 /** Steps that are kept; the oldest goes first. */
 export const MAX_STEPS = 500;
@@ -52,7 +52,7 @@ export class SheetStore {
 
   /** A keystroke: the field's whole new text. */
   type(pointer, text, label) {
-    const next = withValue(this.#sheet, pointer, text === "" ? undefined : text);
+    const next = withValue(this.#sheet, pointer, text === "" ? emptied(this.#sheet, pointer) : text);
     const now = this.#now();
     const continues = this.#typing !== null && this.#typing.pointer === pointer
       && now - this.#typing.at < TYPING_REST_MS && this.#position === this.#steps.length;
@@ -142,6 +142,13 @@ export class SheetStore {
   #tell(change) {
     for (const listener of this.#listeners) listener(change);
   }
+}
+
+// What an emptied field leaves: nothing, but in a list the later entries stay where they are.
+function emptied(sheet, pointer) {
+  const keys = keysOf(pointer);
+  const list = valueAt(sheet, pointerOf(keys.slice(0, -1)));
+  return Array.isArray(list) && Number(keys.at(-1)) < list.length - 1 ? "" : undefined;
 }
 
 // The top-level entries that differ: as they were and as they are.
