@@ -1,1 +1,14 @@
-//! Angular momentum algebra.
+//! Angular momentum algebra: 3j, 6j and 9j symbols, states of equivalent electrons, parentage.
+//!
+//! Angular momenta are doubled integers throughout, phases those of Condon and Shortley.
+
+mod nine_j;
+mod racah_sum;
+mod six_j;
+mod three_j;
+mod triad;
+
+pub use nine_j::{NINE_J_CAPACITY, try_wigner_9j, wigner_9j};
+pub use six_j::{try_wigner_6j, wigner_6j};
+pub use three_j::{try_wigner_3j, wigner_3j};
+pub use triad::CAPACITY;

@@ -1,1 +1,5 @@
 //! Numerical tools free of the physics that uses them.
+
+pub mod binomial;
+pub mod natural;
+pub mod symmetric;
