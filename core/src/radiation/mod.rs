@@ -3,6 +3,7 @@
 mod multipole;
 mod rule;
 pub mod selection;
+pub mod strengths;
 
 pub use multipole::Multipole;
 pub use rule::Rule;
