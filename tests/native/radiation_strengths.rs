@@ -3,7 +3,9 @@
 
 use rungline_core::quantity::TwiceJ;
 use rungline_core::radiation::Multipole;
-use rungline_core::radiation::strengths::{Multiplet, between, magnetic_dipole, orbital_share, within};
+use rungline_core::radiation::strengths::{
+    Multiplet, between, magnetic_dipole, orbital_share, within,
+};
 use rungline_core::terms::Term;
 use rungline_tests::{Row, relative_error, report, vector_json};
 
@@ -43,12 +45,26 @@ fn published_multiplets() {
         (
             term(3, 1),
             term(3, 1),
-            &[(4, 4, 15), (4, 2, 5), (2, 4, 5), (2, 2, 3), (2, 0, 4), (0, 2, 4)],
+            &[
+                (4, 4, 15),
+                (4, 2, 5),
+                (2, 4, 5),
+                (2, 2, 3),
+                (2, 0, 4),
+                (0, 2, 4),
+            ],
         ),
         (
             term(3, 2),
             term(3, 1),
-            &[(6, 4, 84), (4, 4, 15), (2, 4, 1), (4, 2, 45), (2, 2, 15), (2, 0, 20)],
+            &[
+                (6, 4, 84),
+                (4, 4, 15),
+                (2, 4, 1),
+                (4, 2, 45),
+                (2, 2, 15),
+                (2, 0, 20),
+            ],
         ),
         (term(1, 2), term(1, 1), &[(4, 2, 1)]),
     ];
@@ -58,7 +74,10 @@ fn published_multiplets() {
         let total: u32 = lines.iter().map(|l| l.2).sum();
         for &(j, k, published) in lines {
             let expected = f64::from(published) / f64::from(total);
-            assert!(relative_error(of(&multiplet, j, k), expected) < 4e-15, "{upper}{j} – {lower}{k}");
+            assert!(
+                relative_error(of(&multiplet, j, k), expected) < 4e-15,
+                "{upper}{j} – {lower}{k}"
+            );
             // Emission and absorption: the same strength with the terms exchanged.
             let turned = between(Multipole::E1, lower, upper);
             assert!(relative_error(of(&turned, k, j), expected) < 4e-15);
@@ -91,7 +110,8 @@ fn strengths_agree_with_levels_written_out_in_products() {
         }
         assert_eq!(ours, theirs.len(), "{upper} – {lower}, rank {rank}");
         for line in theirs {
-            let j = |i: usize| TwiceJ::from_doubled(i32::try_from(line[i].as_i64().unwrap()).unwrap());
+            let j =
+                |i: usize| TwiceJ::from_doubled(i32::try_from(line[i].as_i64().unwrap()).unwrap());
             let share = orbital_share(rank, upper, j(0), lower, j(1));
             worst = worst.max(relative_error(share, line[2].as_f64().unwrap()));
             lines += 1;
@@ -105,7 +125,9 @@ fn strengths_agree_with_levels_written_out_in_products() {
             worst,
             tolerance: 2e-13,
             measure: "relative".into(),
-            source: "products of states with Clebsch-Gordan coefficients of sympy 1.14.0 (BSD-3-Clause)".into(),
+            source:
+                "products of states with Clebsch-Gordan coefficients of sympy 1.14.0 (BSD-3-Clause)"
+                    .into(),
         },
     );
 }
@@ -117,7 +139,8 @@ fn sums_over_a_level_are_proportional_to_its_weight() {
         for multiplicity in 1..=8 {
             for l in 0..=6_u32 {
                 for k in l.saturating_sub(2)..=l + 2 {
-                    let multiplet = between(multipole, term(multiplicity, l), term(multiplicity, k));
+                    let multiplet =
+                        between(multipole, term(multiplicity, l), term(multiplicity, k));
                     let rank = multipole.rank();
                     if l.abs_diff(k) > rank || l + k < rank {
                         assert!(multiplet.lines.is_empty());
@@ -140,7 +163,11 @@ fn other_spins_and_other_j_have_no_strength() {
     assert_eq!(orbital_share(1, term(3, 1), j(2), term(1, 0), j(0)), 0.0);
     assert_eq!(orbital_share(1, term(3, 1), j(1), term(3, 0), j(2)), 0.0);
     assert_eq!(orbital_share(1, term(3, 1), j(-2), term(3, 0), j(2)), 0.0);
-    assert!(between(Multipole::M1, term(3, 1), term(3, 1)).lines.is_empty());
+    assert!(
+        between(Multipole::M1, term(3, 1), term(3, 1))
+            .lines
+            .is_empty()
+    );
     assert!(within(Multipole::E1, term(3, 1)).lines.is_empty());
     assert!(within(Multipole::M1, term(1, 1)).lines.is_empty());
     assert!(within(Multipole::E2, term(3, 0)).lines.is_empty());
@@ -158,7 +185,12 @@ fn fine_structure_lines_within_a_term() {
     // (own determinant code). 2p2 with F² = 47 000, ζ = 120: the ³P levels are pure to 1e-4, so
     // strengths agree to about that.
     let vectors = vector_json("transition_checks.json");
-    let case = vectors["M1E2"].as_array().unwrap().iter().find(|c| c["name"] == "p2").unwrap();
+    let case = vectors["M1E2"]
+        .as_array()
+        .unwrap()
+        .iter()
+        .find(|c| c["name"] == "p2")
+        .unwrap();
     let strength = |lower: u64, upper: u64, key: &str| -> f64 {
         let lines = case["lines"].as_array().unwrap().iter();
         let mut found = lines.filter(|l| l["lower"] == lower && l["upper"] == upper);
@@ -194,11 +226,16 @@ fn magnetic_dipole_is_the_off_diagonal_part_of_the_g_formula() {
             for j in t.levels() {
                 let x = j.value() * (j.value() + 1.0);
                 // ⟨L² + g_s² S² + 2 g_s L·S⟩ with 2 L·S = J² − L² − S².
-                let square = l * (l + 1.0) + G_S * G_S * s * (s + 1.0) + G_S * (x - l * (l + 1.0) - s * (s + 1.0));
+                let square = l * (l + 1.0)
+                    + G_S * G_S * s * (s + 1.0)
+                    + G_S * (x - l * (l + 1.0) - s * (s + 1.0));
                 let weight = j.value() * 2.0 + 1.0;
                 let diagonal = ls(t, j).map_or(0.0, |g| g * g * x * weight);
                 let others: f64 = t.levels().map(|k| magnetic_dipole(t, j, k)).sum();
-                assert!(((diagonal + others) / (square * weight) - 1.0).abs() < 1e-13, "{t}{j}");
+                assert!(
+                    ((diagonal + others) / (square * weight) - 1.0).abs() < 1e-13,
+                    "{t}{j}"
+                );
             }
         }
     }

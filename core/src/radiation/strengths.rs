@@ -132,7 +132,11 @@ pub fn within(multipole: Multipole, term: Term) -> Multiplet {
                 Multipole::M1 => magnetic_dipole(term, upper, lower),
                 Multipole::E2 => orbital_share(2, term, upper, term, lower),
             };
-            lines.push(Line { upper, lower, relative });
+            lines.push(Line {
+                upper,
+                lower,
+                relative,
+            });
         }
     }
     lines.retain(|line| line.relative > 0.0);
@@ -153,7 +157,11 @@ fn sums(term: Term, lines: &[Line], end: impl Fn(&Line) -> TwiceJ) -> Vec<LevelS
     term.levels()
         .map(|j| LevelSum {
             j,
-            sum: lines.iter().filter(|line| end(line) == j).map(|line| line.relative).sum(),
+            sum: lines
+                .iter()
+                .filter(|line| end(line) == j)
+                .map(|line| line.relative)
+                .sum(),
             expected: j.degeneracy() as f64 / states,
         })
         .collect()
