@@ -1,5 +1,17 @@
 //! Orbitals, subshells and configurations: reading, counting, filling.
 
+mod completion;
+pub mod filling;
+mod occupation;
 mod orbital;
+pub mod species;
+mod species_text;
+mod text;
+mod text_faults;
+mod written;
 
+pub use completion::{CompletedCore, MAX_N_FILLING, Reading, complete};
+pub use occupation::{Configuration, NOBLE_GASES, closed_core, join};
 pub use orbital::{MAX_N, Orbital, Subshell, l_of_letter, orbital_letter, total_letter};
+pub use species::Species;
+pub use written::{Written, WrittenCore, WrittenSubshell, parse};

@@ -1,0 +1,46 @@
+//! Characters that stand for the same sign in typed text.
+
+/// Hyphen-minus, minus sign, en dash and the hyphens that editors put in their place.
+pub fn is_minus(c: char) -> bool {
+    matches!(
+        c,
+        '-' | '\u{2212}' | '\u{2013}' | '\u{2010}' | '\u{2011}' | '\u{FE63}' | '\u{FF0D}'
+    )
+}
+
+/// The digit that a superscript digit stands for.
+pub fn superscript_digit(c: char) -> Option<char> {
+    Some(match c {
+        '⁰' => '0',
+        '¹' => '1',
+        '²' => '2',
+        '³' => '3',
+        '⁴' => '4',
+        '⁵' => '5',
+        '⁶' => '6',
+        '⁷' => '7',
+        '⁸' => '8',
+        '⁹' => '9',
+        _ => return None,
+    })
+}
+
+/// The sign that a superscript sign stands for.
+pub fn superscript_sign(c: char) -> Option<char> {
+    match c {
+        '⁺' => Some('+'),
+        '⁻' => Some('-'),
+        _ => None,
+    }
+}
+
+/// A character in words for a message: itself where it can be seen, else its number.
+pub fn shown(c: char) -> String {
+    let invisible = c.is_control()
+        || matches!(c, '\u{200B}'..='\u{200F}' | '\u{202A}'..='\u{202E}' | '\u{2060}'..='\u{206F}' | '\u{FEFF}' | '\u{FE00}'..='\u{FE0F}' | '\u{00AD}');
+    if invisible {
+        format!("U+{:04X}, an invisible character", u32::from(c))
+    } else {
+        format!("“{c}”")
+    }
+}
