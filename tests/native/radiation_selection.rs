@@ -105,6 +105,9 @@ fn lines_of_the_laboratory_and_the_sky() {
         ("3p 4p 1P1", "3p 4p 1S0", M1, Some("other-term")),
         ("3s 4p2 4P1/2", "3s 4p2 4P3/2", M1, None),
         ("3d2 4s 4F9/2", "3d2 4s 4F7/2", M1, None),
+        // J(J+1) = S(S+1) − L(L+1): the matrix element of L within equal S, L, J is zero.
+        ("3d4 4s 4p 7D2", "3d4 4s 5s 7D2", E1, Some("vanishing")),
+        ("3d4 4s 4p 7D3", "3d4 4s 5s 7D3", E1, None),
     ];
     for (upper, lower, multipole, code) in cases {
         let rule = judge(upper, lower, multipole);

@@ -113,6 +113,15 @@ pub enum Rule {
         /// Its term in the lower level.
         lower: Term,
     },
+    /// The strength vanishes between these two levels, though their terms are linked.
+    Vanishing {
+        /// Of which radiation.
+        multipole: Multipole,
+        /// J of the upper level.
+        upper: TwiceJ,
+        /// J of the lower level.
+        lower: TwiceJ,
+    },
     /// What the shells up to one couple to changes more than the operator can change it.
     Coupling {
         /// The last of those shells.
@@ -141,6 +150,7 @@ impl Rule {
             Rule::OtherTerm { .. } => "other-term",
             Rule::Spectator { .. } => "spectator",
             Rule::Parent { .. } => "parent",
+            Rule::Vanishing { .. } => "vanishing",
             Rule::Coupling { .. } => "coupling",
         }
     }
@@ -302,6 +312,16 @@ impl fmt::Display for Rule {
                     f,
                     "the {} shell would go from {upper} to {lower}, which its one active electron cannot do",
                     shell.orbital()
+                )
+            }
+            Rule::Vanishing {
+                multipole,
+                upper,
+                lower,
+            } => {
+                write!(
+                    f,
+                    "the 6j symbol of J = {upper} and {lower} is zero, so that this {multipole} line has no strength in pure LS coupling"
                 )
             }
             Rule::Coupling {

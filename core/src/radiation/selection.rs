@@ -3,8 +3,9 @@
 //! The rules are asked in a fixed order, rigorous ones first (parity, change of J, sum of J), then
 //! those of pure configurations (one electron moves, its ℓ), of pure LS coupling (S, L, one term
 //! for M1) and of unmixed coupling chains (other shells keep their terms). The first that refuses
-//! decides. What none refuses is allowed; its strength may still vanish by accident.
+//! decides. At last the strength itself is asked, whose 6j symbol may vanish between two J.
 
+use super::strengths::orbital_share;
 use super::{Multipole, Rule};
 use crate::configuration::{Orbital, Subshell};
 use crate::problem::Problem;
@@ -138,7 +139,8 @@ impl Between {
             refused_by: self
                 .level_rule(multipole, upper_j, lower_j)
                 .or_else(|| self.same_level(upper, upper_j, lower, lower_j))
-                .or_else(|| self.term_rule(multipole, upper, lower)),
+                .or_else(|| self.term_rule(multipole, upper, lower))
+                .or_else(|| strength_rule(multipole, upper.term, upper_j, lower.term, lower_j)),
         })
     }
 
@@ -332,6 +334,24 @@ impl Between {
             })
         })
     }
+}
+
+/// Refuses a line that every other rule allows and whose strength is zero all the same, as of
+/// ⁷D₂ – ⁷D₂ by E1. M1 has none of that kind.
+pub fn strength_rule(
+    multipole: Multipole,
+    upper: Term,
+    upper_j: TwiceJ,
+    lower: Term,
+    lower_j: TwiceJ,
+) -> Option<Rule> {
+    let vanishes = multipole != Multipole::M1
+        && orbital_share(multipole.rank(), upper, upper_j, lower, lower_j) == 0.0;
+    vanishes.then_some(Rule::Vanishing {
+        multipole,
+        upper: upper_j,
+        lower: lower_j,
+    })
 }
 
 /// A shell in a chain.

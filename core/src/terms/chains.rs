@@ -12,8 +12,8 @@ use crate::configuration::Subshell;
 use crate::problem::Problem;
 use std::fmt;
 
-/// The most couplings of two terms that are tried for one listing, about a quarter of a second.
-pub const MAX_COUPLINGS: u64 = 100_000_000;
+/// The most couplings of two terms that are tried for one listing, about a tenth of a second.
+pub const MAX_COUPLINGS: u64 = 30_000_000;
 
 /// One open shell with its own term, and the term of everything up to it.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
