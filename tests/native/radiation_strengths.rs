@@ -1,6 +1,7 @@
 //! Relative strengths within multiplets against published tables, against levels written out in
 //! products, and against a diagonalised configuration.
 
+use rungline_core::constants::ELECTRON_G;
 use rungline_core::quantity::TwiceJ;
 use rungline_core::radiation::Multipole;
 use rungline_core::radiation::strengths::{
@@ -218,7 +219,8 @@ fn fine_structure_lines_within_a_term() {
 fn magnetic_dipole_is_the_off_diagonal_part_of_the_g_formula() {
     // Σ_J′ S(J, J′) = (2J+1)⟨(L + g_s S)²⟩ with the diagonal part g²J(J+1)(2J+1): a rule that the
     // closed form has to fulfil together with the Landé factor.
-    use rungline_core::terms::lande::{G_S, ls};
+    use rungline_core::terms::lande::ls;
+    const G_S: f64 = ELECTRON_G.value;
     for multiplicity in 2..=8 {
         for l in 1..=6 {
             let t = term(multiplicity, l);

@@ -1,8 +1,11 @@
 //! Hund's rules and Landé factors against published lists.
 
 use rungline_core::configuration::{Orbital, Subshell};
+use rungline_core::constants::ELECTRON_G;
 use rungline_core::quantity::TwiceJ;
 use rungline_core::terms::{Term, hund, lande, ls};
+
+const G_S: f64 = ELECTRON_G.value;
 
 fn shell(n: u8, l: u8, electrons: u32) -> Subshell {
     Subshell::new(Orbital::new(n, l).unwrap(), electrons).unwrap()
@@ -126,7 +129,7 @@ fn lande_factors_of_common_levels() {
         assert_eq!(format!("{term}{j}"), name);
         let g = lande::ls(term, j).unwrap();
         // With g_s = 2, g = 1 + spin part, so the whole is 1 + (g_s − 1)(g₂ − 1).
-        let expected = 1.0 + (lande::G_S - 1.0) * (with_two - 1.0);
+        let expected = 1.0 + (G_S - 1.0) * (with_two - 1.0);
         assert!(
             (g - expected).abs() < 2e-15,
             "{name}: {g} against {expected}"

@@ -11,9 +11,9 @@
 
 use super::Multipole;
 use crate::angular::wigner_6j;
+use crate::constants::ELECTRON_G;
 use crate::quantity::TwiceJ;
 use crate::terms::Term;
-use crate::terms::lande::G_S;
 
 /// One line of a multiplet.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -87,7 +87,8 @@ pub fn magnetic_dipole(term: Term, j: TwiceJ, other: TwiceJ) -> f64 {
         * (two_j + two_l - two_s)
         * (two_j + two_s - two_l)
         * (two_l + two_s + 2.0 - two_j);
-    (G_S - 1.0) * (G_S - 1.0) * product / (32.0 * two_j)
+    let excess = ELECTRON_G.value - 1.0;
+    excess * excess * product / (32.0 * two_j)
 }
 
 /// The multiplet of two different terms by E1 or E2; no lines where L or S forbid it, and for M1,

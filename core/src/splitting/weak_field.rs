@@ -11,14 +11,12 @@
 //! takes the part that the electric one has in E1.
 
 use super::wigner_eckart::dipole_share;
+use crate::constants::BOHR_MAGNETON_WAVENUMBER;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::radiation::Multipole;
 
-/// μ_B/hc in cm⁻¹/T, CODATA 2022.
-const MU_B_CM: f64 = 0.466_864_477_19;
-
-/// c in GHz per cm⁻¹, exact.
+/// c in GHz per cm⁻¹, exact: 10⁻⁷ of its value in m/s.
 const GHZ_PER_CM: f64 = 29.979_245_8;
 
 /// The most components that one line may have.
@@ -349,7 +347,7 @@ pub struct Offset {
 /// within 10⁻³ … 10⁹ nm.
 pub fn offset(lorentz: f64, tesla: f64, wavelength_nm: Option<f64>) -> Result<Offset, Problem> {
     check_field(tesla)?;
-    let wavenumber = lorentz * MU_B_CM * tesla;
+    let wavenumber = lorentz * BOHR_MAGNETON_WAVENUMBER.value * tesla;
     let wavelength = match wavelength_nm {
         Some(nm) => pm_offset(checked_wavelength(nm)?, wavenumber),
         None => None,

@@ -6,10 +6,11 @@
 //! g of a spin is g_s, which is not quite 2.
 
 use super::term::Term;
+use crate::constants::ELECTRON_G;
 use crate::quantity::TwiceJ;
 
-/// Electron g factor, CODATA 2022, its size (the sign belongs to the moment).
-pub const G_S: f64 = 2.00231930436092;
+/// g_s of CODATA 2022.
+const G_S: f64 = ELECTRON_G.value;
 
 /// 4 j(j + 1), exact.
 fn four_square(j: TwiceJ) -> f64 {
