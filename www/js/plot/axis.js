@@ -1,0 +1,55 @@
+// Scales and axes: ticks outside, the title with its unit at the end.
+
+import { trueMinus } from "../digits.js";
+import { LABEL, labelWidth } from "./pen.js";
+
+const TICK = 5;
+
+/** A linear scale from [from, to] to pixels [left, right]. */
+export function linearScale(from, to, left, right) {
+  const span = to - from || 1;
+  const scale = (value) => left + ((value - from) / span) * (right - left);
+  scale.invert = (pixel) => from + ((pixel - left) / (right - left || 1)) * span;
+  return scale;
+}
+
+/** Round values between `from` and `to`, about `wanted` of them, with the decimals they need. */
+export function ticks(from, to, wanted) {
+  const span = to - from;
+  if (!(span > 0) || !Number.isFinite(span)) return { values: [from], decimals: 0 };
+  const rough = span / Math.max(wanted, 1);
+  const power = 10 ** Math.floor(Math.log10(rough));
+  const step = [1, 2, 5, 10].map((factor) => factor * power).find((size) => size >= rough * 0.999999);
+  const decimals = Math.max(0, -Math.floor(Math.log10(step) + 1e-9));
+  const first = Math.ceil(from / step - 1e-9);
+  const count = Math.floor(to / step + 1e-9) - first;
+  // Multiples of the step, not sums of it: sums drift.
+  return { values: Array.from({ length: count + 1 }, (_, i) => (first + i) * step), decimals };
+}
+
+/** A horizontal axis at `y`, with the title (runs) beneath. */
+export function bottomAxis(pen, { scale, from, to, left, right, y, title }) {
+  const { values, decimals } = ticks(from, to, Math.max(2, (right - left) / 90));
+  pen.line(left, y, right, y, { stroke: "edge" });
+  for (const value of values) {
+    const x = scale(value);
+    pen.line(x, y, x, y + TICK, { stroke: "edge" });
+    pen.text(x, y + TICK + LABEL + 1, tickText(value, decimals), { anchor: "middle", fill: "quiet" });
+  }
+  pen.text((left + right) / 2, y + TICK + 2 * LABEL + 9, title, { anchor: "middle", fill: "quiet" });
+}
+
+/** The height that `bottomAxis` takes beneath its line. */
+export const BOTTOM_AXIS = TICK + 2 * LABEL + 16;
+
+/** A tick's number; with enough decimals for its step. */
+export function tickText(value, decimals) {
+  if (value !== 0 && (Math.abs(value) < 1e-6 || Math.abs(value) >= 1e7)) return trueMinus(value.toExponential(1).replace("e+", "e"));
+  const text = value.toFixed(Math.min(decimals, 12));
+  return trueMinus(Number(text) === 0 ? text.replace("-", "") : text);
+}
+
+/** True when a label of this width at x keeps clear of the one before it. */
+export function clearOf(last, x, label) {
+  return x - labelWidth(label) / 2 > last + 4;
+}

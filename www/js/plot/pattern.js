@@ -1,0 +1,126 @@
+// The pattern of a line in a weak field: π plain bars above the axis; σ⁺ below with a filled triangle
+// that points to higher energy, σ⁻ below with a hollow one that points to lower.
+
+import { trueMinus } from "../digits.js";
+import { BOTTOM_AXIS, bottomAxis, linearScale, tickText } from "./axis.js";
+import { unitOf } from "../spoken.js";
+
+/** The units in which offsets are shown: key in the answer, unit, and which way energy grows. */
+export const OFFSET_UNITS = {
+  lorentz: { unit: "mu_B B", label: "μ_B B", energy: 1 },
+  offset: { unit: "cm-1", label: "cm⁻¹", energy: 1 },
+  ghz: { unit: "GHz", label: "GHz", energy: 1 },
+  pm: { unit: "pm", label: "pm", energy: -1 },
+};
+/** How the field is looked at: key in the answer and words. */
+export const VIEWS = { seen: "as in the sheet", across: "across the field", along: "along the field", strength: "over all directions" };
+/** Signs of the polarisations. */
+export const SIGNS = {
+  pi: { runs: [{ text: "π" }], plain: "π", speech: "pi", colour: "s1" },
+  "sigma+": { runs: [{ text: "σ" }, { up: "+" }], plain: "σ⁺", speech: "sigma plus", colour: "s2" },
+  "sigma-": { runs: [{ text: "σ" }, { up: "\u2212" }], plain: "σ⁻", speech: "sigma minus", colour: "s3" },
+};
+
+const LEFT = 52;
+const RIGHT = 20;
+const TOP = 44;
+const TRIANGLE = 7;
+// Offsets closer than this part of the pattern's width are one component to the eye and in fact.
+const SAME = 1e-9;
+
+/** Components that fall on one place and polarisation, together. */
+export function placesOf(components, unit, view) {
+  const extent = Math.max(...components.map((component) => Math.abs(component[unit] ?? 0)), 0);
+  const places = [];
+  for (const component of components) {
+    const x = component[unit];
+    if (x === null || x === undefined) continue;
+    const place = places.find((other) => other.polarisation === component.polarisation && Math.abs(other.x - x) <= SAME * extent);
+    if (place) {
+      place.strength += component[view];
+      place.members.push(component);
+    } else places.push({ polarisation: component.polarisation, x, strength: component[view], members: [component] });
+  }
+  return places.sort((a, b) => a.x - b.x || a.polarisation.localeCompare(b.polarisation));
+}
+
+/** The layout of a pattern for `picture`. `kindOf` key → kind of number. */
+export function patternLayout({ components, unit, view, kindOf }) {
+  const places = placesOf(components, unit, view);
+  const seen = places.filter((place) => place.strength > 0);
+  const strongest = Math.max(...seen.map((place) => place.strength), 0) || 1;
+  const reach = Math.max(...places.map((place) => Math.abs(place.x)), 0) || 1;
+  const { energy } = OFFSET_UNITS[unit];
+  return (width, [from, to]) => {
+    const height = Math.round(Math.min(Math.max((width * 7) / 16, 300), 420));
+    const bottom = height - BOTTOM_AXIS;
+    const axis = TOP + (bottom - TOP - 12) / 2;
+    const tall = axis - TOP - 10;
+    const whole = 2.3 * reach;
+    const low = -whole / 2 + from * whole;
+    const high = -whole / 2 + to * whole;
+    const scale = linearScale(low, high, LEFT, width - RIGHT);
+    const shown = seen.filter((place) => place.x >= low && place.x <= high);
+    const ends = (place) => axis + (place.polarisation === "pi" ? -1 : 1) * (place.strength / strongest) * tall;
+    return {
+      height,
+      marks: seen.map((place) => {
+        const x = scale(place.x);
+        const end = ends(place);
+        const wing = place.polarisation === "pi" ? 3 : TRIANGLE;
+        return {
+          x: x - wing, w: 2 * wing, y: Math.min(axis, end) - (place.polarisation === "pi" ? 0 : -2), h: Math.abs(end - axis) + (place.polarisation === "pi" ? 0 : TRIANGLE),
+          part: (place.x + whole / 2) / whole, id: null, reading: readingOf(place, unit, view, kindOf),
+        };
+      }),
+      draw(pen) {
+        pen.text(LEFT, 16, "Relative strength", { fill: "quiet" });
+        for (const [y, sign] of [[TOP + 10, 1], [axis + tall, -1]]) {
+          pen.line(LEFT - 5, y, LEFT, y, { stroke: "edge" });
+          pen.text(LEFT - 8, y + 4, tickText(strongest, strongest < 0.1 ? 3 : 2), { anchor: "end", fill: "quiet" });
+          pen.line(LEFT, y, LEFT, y + sign * tall, { stroke: "edge" });
+        }
+        pen.text(LEFT - 8, axis + 4, "0", { anchor: "end", fill: "quiet" });
+        pen.line(LEFT - 5, axis, width - RIGHT, axis, { stroke: "edge" });
+        for (const place of shown) bar(pen, place, scale(place.x), axis, ends(place), energy);
+        labels(pen, shown, scale, ends);
+        const title = [{ text: "Offset from the line without field (" }, ...unitOf(OFFSET_UNITS[unit].unit).runs, { text: ")" }];
+        bottomAxis(pen, { scale, from: low, to: high, left: LEFT, right: width - RIGHT, y: bottom, title: width < 420 ? [{ text: "Offset (" }, ...title.slice(1)] : title });
+      },
+    };
+  };
+}
+
+function bar(pen, place, x, axis, end, energy) {
+  const { colour } = SIGNS[place.polarisation];
+  pen.line(x, axis, x, end, { stroke: colour, width: 3 });
+  if (place.polarisation === "pi") return;
+  const towards = (place.polarisation === "sigma+" ? 1 : -1) * energy;
+  const tip = [x + towards * TRIANGLE, end + TRIANGLE / 2];
+  const base = [[x - towards * TRIANGLE * 0.6, end - TRIANGLE / 2], [x - towards * TRIANGLE * 0.6, end + 1.5 * TRIANGLE]];
+  pen.polygon([tip, ...base], place.polarisation === "sigma+" ? { fill: colour, stroke: colour } : { fill: "sheet", stroke: colour, width: 1.5 });
+}
+
+// Each polarisation is named once, at its strongest bar.
+function labels(pen, shown, scale, ends) {
+  for (const [polarisation, sign] of Object.entries(SIGNS)) {
+    const own = shown.filter((place) => place.polarisation === polarisation);
+    if (own.length === 0) continue;
+    const strongest = own.reduce((best, place) => (place.strength > best.strength * (1 + 1e-9) ? place : best));
+    const end = ends(strongest);
+    pen.text(scale(strongest.x), polarisation === "pi" ? end - 7 : end + TRIANGLE * 1.5 + 16, sign.runs, { anchor: "middle", fill: sign.colour, weight: 600 });
+  }
+}
+
+function readingOf(place, unit, view, kindOf) {
+  const { unit: unitName } = OFFSET_UNITS[unit];
+  const jumps = place.members.map((member) => `M ${trueMinus(member.M_lower)} to ${trueMinus(member.M_upper)}`).join(", ");
+  return [
+    { sign: { runs: SIGNS[place.polarisation].runs, plain: SIGNS[place.polarisation].plain, speech: SIGNS[place.polarisation].speech } },
+    `, ${jumps}: offset `,
+    { number: { text: String(place.x), unit: unitName, kind: kindOf(unit) } },
+    "; strength ",
+    { number: { text: String(place.strength), unit: null, kind: kindOf(view) } },
+    ` ${VIEWS[view]}.`,
+  ];
+}

@@ -1,0 +1,98 @@
+// Draws only those rows of a long table that can be seen.
+
+import { element } from "./dom.js";
+
+// Rows drawn beyond each edge, so that a short scroll shows no gap.
+const SPARE = 12;
+// Until a row has been measured.
+const USUAL_HEIGHT = 32;
+
+/** Keeps the visible rows of `body` drawn while `region` scrolls. */
+export function rowWindow({ region, body, table, columns, rows, makeRow, plain }) {
+  let count = 0;
+  let height = USUAL_HEIGHT;
+  let first = -1;
+  let last = -1;
+  let pointed = -1;
+  const above = spacer(columns.length);
+  const below = spacer(columns.length);
+  region.classList.add("windowed");
+  body.before(above.node);
+  body.after(below.node);
+  table.prepend(widths(columns, rows, plain));
+  // A caption has to be the first child of its table.
+  table.prepend(table.querySelector("caption"));
+
+  const draw = (anew = false) => {
+    const view = region.clientHeight || 600;
+    const from = Math.max(0, Math.floor(region.scrollTop / height) - SPARE);
+    const to = Math.min(count, Math.ceil((region.scrollTop + view) / height) + SPARE);
+    if (!anew && from === first && to === last) return;
+    const held = body.contains(document.activeElement) ? document.activeElement.dataset.place : undefined;
+    [first, last] = [from, to];
+    body.replaceChildren(...Array.from({ length: to - from }, (_, i) => makeRow(from + i)));
+    above.set(from * height);
+    below.set((count - to) * height);
+    if (pointed >= 0) body.querySelector(`tr[data-place="${pointed}"]`)?.classList.add("found");
+    // The focused row may have been scrolled away: its table keeps the focus then.
+    if (held !== undefined) (body.querySelector(`tr[data-place="${held}"]`) ?? region).focus({ preventScroll: true });
+  };
+  const measure = () => {
+    const row = body.querySelector("tr");
+    const found = row?.getBoundingClientRect().height;
+    if (found && Math.abs(found - height) > 0.1) {
+      height = found;
+      draw(true);
+    }
+  };
+  region.addEventListener("scroll", () => draw(), { passive: true });
+  new ResizeObserver(() => {
+    measure();
+    draw();
+  }).observe(region);
+
+  return {
+    reset(rowCount) {
+      count = rowCount;
+      pointed = -1;
+      draw(true);
+    },
+    /** Scrolls so that the row can be seen. */
+    show(place) {
+      const head = table.tHead.getBoundingClientRect().height;
+      const top = place * height;
+      const room = region.clientHeight - head - height;
+      if (top < region.scrollTop) region.scrollTop = top;
+      else if (top > region.scrollTop + room) region.scrollTop = top - Math.max(room, 0) + height;
+      draw();
+    },
+    /** Marks the row that was searched for; none for −1. */
+    point(place) {
+      pointed = place;
+      draw(true);
+    },
+  };
+}
+
+function spacer(columns) {
+  const cell = element("td", { colspan: columns });
+  const node = element("tbody", { class: "spacer", "aria-hidden": "true" }, element("tr", {}, cell));
+  return {
+    node,
+    set(height) {
+      node.hidden = height <= 0;
+      cell.style.height = `${Math.max(height, 0)}px`;
+    },
+  };
+}
+
+// Columns keep their widths while rows come and go.
+function widths(columns, rows, plain) {
+  return element("colgroup", {}, ...columns.map((column) => {
+    let longest = [...column.name].length + (column.unit ? column.unit.length + 3 : 0) + 3;
+    for (const row of rows) longest = Math.max(longest, plain(row, column).length);
+    const col = element("col");
+    col.style.width = `${Math.min(longest, 40) + 3}ch`;
+    return col;
+  }));
+}

@@ -1,0 +1,177 @@
+// Which lines? Every pair of levels, allowed or refused, by which multipole and by which rule.
+
+import { element } from "../dom.js";
+import { multipletLayout } from "../plot/multiplet.js";
+import { picture } from "../plot/picture.js";
+import { richPlain, richRuns } from "../rich.js";
+import { dataTable } from "../table.js";
+import { check, fold, select } from "./fold.js";
+import { kindOf, workingNode } from "./working.js";
+
+/** Above this many multiplets the list is cut, and says so; the table still has every line. */
+const LISTED = 2000;
+const ARROW = " – ";
+
+/** Evidence and working of an answer to "lines". */
+export function render(answer, context) {
+  return { evidence: new Lines(answer, context).node, working: workingNode(answer, context.settings) };
+}
+
+/** The shared-choice id of a line or of a refused pair. */
+export function lineId({ lower, upper, multipole }) {
+  return `line:${lower}/${upper}/${multipole}`;
+}
+
+class Lines {
+  #answer;
+  #context;
+  #tableBox = element("div", { class: "lines-table" });
+  #shown = null;
+
+  constructor(answer, context) {
+    this.#answer = answer;
+    this.#context = context;
+    const { lines, refused, multiplets } = answer;
+    const multipoles = [...new Set(lines.map((line) => line.multipole))].sort();
+    const listed = (multiplets ?? []).filter((one) => one.lines !== 0).slice(0, LISTED);
+    this.multipole = select(context, "lines:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], () => this.#fill());
+    this.multiplet = select(context, "lines:multiplet", "Multiplet", [["", "all"], ...listed.map((one) => [`${one.name}|${one.multipole}`, `${one.name}, ${one.multipole}`])], () => {
+      this.#fill();
+      this.#redraw();
+    });
+    this.dotted = check(context, "lines:refused", "Show refused pairs, dotted", () => this.#redraw());
+    this.#fill();
+    this.node = element("div", { class: "evidence-parts" },
+      element("div", { class: "choices" }, this.multipole.node, this.multiplet.node, this.dotted.node),
+      multiplets?.length > listed.length ? element("p", { class: "note", text: `The list has the first ${listed.length} multiplets with lines.` }) : null,
+      element("div", { class: "table-and-picture" }, this.#tableBox, this.#picture()),
+      element("div", { class: "parts" },
+        refused?.length ? fold(context, "lines:refused-table", [`Refused pairs and the rules that refuse them (${refused.length})`], () => this.#refusedTable()) : null,
+        multiplets?.length ? fold(context, "lines:sums", ["Sum rules of each multiplet"], () => this.#sums()) : null));
+    context.choice.subscribe(() => this.#redraw());
+  }
+
+  #fill() {
+    const wanted = this.multipole.value();
+    const [name, multipole] = this.multiplet.value().split("|");
+    const rows = this.#answer.lines.filter((line) => (wanted === "" || line.multipole === wanted)
+      && (name === "" || (line.multiplet === name && line.multipole === multipole)));
+    this.#tableBox.replaceChildren(rows.length === 0 && this.#answer.lines.length > 0
+      ? element("p", { text: `No line passes both choices; ${this.#answer.lines.length} stand outside them.` })
+      : linesTable(rows, this.#answer, this.#context));
+  }
+
+  #picture() {
+    const first = this.#pictured();
+    if (first === null) return null;
+    this.#shown = picture({
+      context: this.#context, zoomable: false, name: first.name, layout: multipletLayout(first),
+      rest: "Links are allowed lines, thicker when stronger: E1 whole, M1 dashed, E2 dash and dot. Refused pairs are dotted.",
+      tableNear: () => this.#tableBox.querySelector(".table-region")?.focus(),
+    });
+    return this.#shown.node;
+  }
+
+  #redraw() {
+    if (this.#shown === null) return;
+    const now = this.#pictured();
+    this.#shown.redraw({ layout: multipletLayout(now), name: now.name });
+  }
+
+  /** The term pair to draw: that of the chosen line, else of the chosen multiplet, else the fullest. */
+  #pictured() {
+    const { lines, refused = [], multiplets = [] } = this.#answer;
+    const chosen = this.#context.choice.get();
+    const picked = chosen?.startsWith("line:") ? [...lines, ...refused].find((one) => lineId(one) === chosen) : null;
+    const [name, multipole] = this.multiplet.value().split("|");
+    const listed = multiplets.find((one) => one.name === name && one.multipole === multipole)
+      ?? multiplets.reduce((best, one) => (best === null || one.lines > best.lines ? one : best), null);
+    const sample = picked ?? lines.find((line) => line.multiplet === listed?.name && line.multipole === listed?.multipole) ?? lines[0] ?? refused[0];
+    return sample === undefined ? null : this.#pair(termOf(sample.upper, sample.upper_J), termOf(sample.lower, sample.lower_J));
+  }
+
+  #pair(upperTerm, lowerTerm) {
+    const { lines, refused = [] } = this.#answer;
+    const within = (one) => termOf(one.upper, one.upper_J) === upperTerm && termOf(one.lower, one.lower_J) === lowerTerm;
+    const [allowed, forbidden] = [lines.filter(within), refused.filter(within)];
+    const all = [...allowed, ...forbidden];
+    const side = (which) => {
+      const levels = new Map(all.map((one) => [one[`${which}_J`], one]));
+      const [sample] = levels.values();
+      const term = lastTerm(sample[`${which}_rich`]);
+      return {
+        odd: term?.odd ?? false,
+        runs: term ? richRuns([{ term: { ...term, J: null } }]) : [{ text: which === "upper" ? upperTerm : lowerTerm }],
+        levels: [...levels].map(([J, one]) => ({ J, label: one[which], runs: term ? richRuns([{ term: { ...lastTerm(one[`${which}_rich`]) } }]) : [{ text: J }] })),
+      };
+    };
+    const kind = kindOf(this.#answer, "lines.relative");
+    const links = allowed.map((line) => ({
+      upperJ: line.upper_J, lowerJ: line.lower_J, strength: line.relative, multipole: line.multipole, id: lineId(line),
+      reading: [...line.upper_rich, ARROW, ...line.lower_rich, `, ${line.multipole}: `,
+        ...(line.relative === null || line.relative === undefined ? ["no relative strength"] : ["relative strength ", { number: { text: String(line.relative), unit: null, kind } }])],
+    }));
+    const dots = this.dotted.value() ? forbidden.map((pair) => ({
+      upperJ: pair.upper_J, lowerJ: pair.lower_J, id: lineId(pair),
+      reading: [...pair.upper_rich, ARROW, ...pair.lower_rich, `, ${pair.multipole}, refused: ${pair.rule}`],
+    })) : [];
+    return { upper: side("upper"), lower: side("lower"), links, refused: dots, name: ["Multiplet ", ...all[0].lower_rich.slice(0, -1), ` ${lowerTerm}${ARROW}${upperTerm}`.trimStart()] };
+  }
+
+  #refusedTable() {
+    const { refused } = this.#answer;
+    return dataTable({
+      caption: "Refused pairs", rows: refused, context: this.#context, file: "refused pairs",
+      columns: [
+        { name: "upper", type: "text", value: (row) => row.upper, rich: (row) => row.upper_rich },
+        { name: "lower", type: "text", value: (row) => row.lower, rich: (row) => row.lower_rich },
+        { name: "multipole", type: "text", value: (row) => row.multipole },
+        { name: "standing", type: "text", value: (row) => (row.rigorous ? "rigorous" : "approximate") },
+        { name: "rule", type: "text", value: (row) => row.rule },
+      ],
+      identify: lineId,
+    });
+  }
+
+  #sums() {
+    const rows = this.#answer.multiplets.flatMap((one) => ["lower", "upper"].flatMap((side) => (one[`${side}_sums`] ?? []).map((sum) => ({ ...sum, side, one }))));
+    return dataTable({
+      caption: "Strengths summed over the lines that share a level, against 2J\u00a0+\u00a01", rows, context: this.#context, file: "sum rules",
+      columns: [
+        { name: "multiplet", type: "text", value: (row) => `${row.one.name}, ${row.one.multipole}` },
+        { name: "level", type: "text", value: (row) => row.side },
+        { name: "J", type: "half", value: (row) => row.J },
+        { name: "sum", type: "number", kind: kindOf(this.#answer, "multiplets.sum"), value: (row) => row.sum },
+        { name: "expected", type: "number", kind: "exact", value: (row) => row.expected },
+      ],
+    });
+  }
+}
+
+function linesTable(rows, answer, context) {
+  const missing = "needs energies, which are not computed yet";
+  const known = (key) => rows.some((row) => row[key] !== null && row[key] !== undefined);
+  const number = (key, name, unit) => known(key) && { name, unit, type: "number", kind: kindOf(answer, `lines.${key}`), value: (row) => row[key], reason: missing };
+  return dataTable({
+    caption: `${rows.length} ${rows.length === 1 ? "line" : "lines"} allowed`, rows, context, file: "lines",
+    columns: [
+      { name: "upper", type: "text", value: (row) => row.upper, rich: (row) => row.upper_rich },
+      { name: "lower", type: "text", value: (row) => row.lower, rich: (row) => row.lower_rich },
+      { name: "multipole", type: "text", value: (row) => row.multipole },
+      { name: "relative strength", type: "number", kind: kindOf(answer, "lines.relative"), value: (row) => row.relative, reason: "only lines of one multiplet are compared" },
+      { name: "multiplet", type: "text", value: (row) => row.multiplet },
+      number("wavenumber", "wavenumber", "cm-1"), number("vacuum_nm", "in vacuum", "nm"), number("air_nm", "in air", "nm"), number("S", "S"), number("gf", "gf"), number("A", "A"),
+    ].filter(Boolean),
+    identify: lineId,
+  });
+}
+
+// A level's label without its J, and without the number of a repeat, which goes with the term.
+function termOf(label, J) {
+  const [, name, index] = /^(.*?)( #\d+)?$/.exec(label);
+  return (name.endsWith(J) ? name.slice(0, -J.length) : name) + (index ?? "");
+}
+
+function lastTerm(rich) {
+  return rich?.findLast?.((item) => item.term)?.term ?? null;
+}

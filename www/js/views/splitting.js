@@ -1,0 +1,96 @@
+// How does it split? The weak-field pattern of one line, its components and its states.
+
+import { element } from "../dom.js";
+import { fanLayout } from "../plot/fan.js";
+import { OFFSET_UNITS, SIGNS, VIEWS, patternLayout } from "../plot/pattern.js";
+import { picture } from "../plot/picture.js";
+import { richNode, richPlain, richRuns, richSpeech } from "../rich.js";
+import { dataTable } from "../table.js";
+import { fold, select } from "./fold.js";
+import { kindOf, workingNode } from "./working.js";
+
+/** Evidence and working of an answer to "splitting". */
+export function render(answer, context) {
+  return { evidence: evidence(answer, context), working: workingNode(answer, context.settings) };
+}
+
+function evidence(answer, context) {
+  const { components, line, field } = answer;
+  if (!components?.length) return statesTable(answer, context);
+  const kind = (key) => kindOf(answer, `components.${key}`);
+  const lineName = [...line.upper_rich, " to ", ...line.lower_rich];
+  const units = Object.entries(OFFSET_UNITS).filter(([key]) => components.some((component) => component[key] !== null && component[key] !== undefined));
+  const unit = select(context, "splitting:unit", "Offsets in", units.map(([key, { label }]) => [key, label]), () => redraw());
+  const views = Object.entries(VIEWS).filter(([key]) => components.some((component) => component[key] !== null && component[key] !== undefined));
+  const view = select(context, "splitting:view", "Strength seen", views.map(([key, text]) => [key, key === "seen" ? `as in the sheet (${viewWords(field)})` : text]), () => redraw());
+  const layout = () => patternLayout({ components, unit: unit.value(), view: view.value(), kindOf: kind });
+  const name = () => ["Pattern of ", ...lineName, ` in ${field.text}, ${view.value() === "seen" ? viewWords(field) : VIEWS[view.value()]}`];
+  const near = element("div", {}, componentsTable(answer, context));
+  const shown = picture({
+    context, name: name(), layout: layout(),
+    rest: "Walk over the components with the arrow keys or point at them.",
+    tableNear: () => near.querySelector(".table-region").focus(),
+  });
+  function redraw() {
+    shown.redraw({ layout: layout(), name: name() });
+  }
+  return element("div", { class: "evidence-parts" },
+    element("div", { class: "choices" }, unit.node, view.node),
+    element("div", { class: "table-and-picture picture-first" }, near, shown.node),
+    answer.states?.length ? element("div", { class: "parts" },
+      fold(context, "splitting:states", ["Both levels in the field"], () => [fan(answer, context, lineName), statesTable(answer, context)])) : null);
+}
+
+function viewWords(field) {
+  if (field.angle_degrees === null || field.angle_degrees === undefined) return field.view ?? "across";
+  if (field.angle_degrees === 90) return "across the field";
+  if (field.angle_degrees === 0) return "along the field";
+  return `at ${field.angle_degrees}° to the field`;
+}
+
+function componentsTable(answer, context) {
+  const { components, line, field } = answer;
+  const kind = (key) => kindOf(answer, `components.${key}`);
+  const sign = ({ polarisation }) => [{ sign: SIGNS[polarisation] }];
+  return dataTable({
+    caption: ["Components of ", ...line.upper_rich, " to ", ...line.lower_rich, ` in ${field.text}: ${answer.pattern}`],
+    rows: components, context, file: `pattern ${line.upper} to ${line.lower} ${field.text}`,
+    columns: [
+      { name: "polarisation", type: "text", value: (row) => SIGNS[row.polarisation].plain, rich: sign },
+      { name: "M upper", type: "half", value: (row) => row.M_upper },
+      { name: "M lower", type: "half", value: (row) => row.M_lower },
+      { name: "offset", unit: "mu_B B", type: "number", kind: kind("lorentz"), value: (row) => row.lorentz },
+      { name: "offset", unit: "cm-1", type: "number", kind: kind("offset"), value: (row) => row.offset },
+      { name: "offset", unit: "GHz", type: "number", kind: kind("ghz"), value: (row) => row.ghz },
+      { name: "offset", unit: "pm", type: "number", kind: kind("pm"), value: (row) => row.pm, reason: "needs the wavelength of the line" },
+      { name: "strength", type: "number", kind: kind("strength"), value: (row) => row.strength },
+      { name: "across", type: "number", kind: kind("across"), value: (row) => row.across },
+      { name: "along", type: "number", kind: kind("along"), value: (row) => row.along },
+      { name: `seen ${viewWords(field)}`, type: "number", kind: kind("seen"), value: (row) => row.seen },
+    ],
+  });
+}
+
+function statesTable(answer, context) {
+  return dataTable({
+    caption: `States in ${answer.field.text}`, rows: answer.states ?? [], context, file: `states in ${answer.field.text}`,
+    columns: [
+      { name: "level", type: "text", value: (row) => row.level ?? row.configuration },
+      { name: "M", type: "half", value: (row) => row.M },
+      { name: "energy from the level", unit: "cm-1", type: "number", kind: kindOf(answer, "states.energy"), value: (row) => row.energy },
+    ],
+  });
+}
+
+function fan(answer, context, lineName) {
+  const { line, states, components, field } = answer;
+  const side = (label, rich) => ({ runs: richRuns(rich), plain: richPlain(rich), speech: richSpeech(rich), states: states.filter((state) => (state.level ?? "") === label) });
+  const [upper, lower] = [side(line.upper, line.upper_rich), side(line.lower, line.lower_rich)];
+  if (upper.states.length === 0 || lower.states.length === 0) return element("p", { class: "note" }, richNode(["These levels have no states of their own in the answer."]));
+  return picture({
+    context, zoomable: false, name: ["States of ", ...lineName, ` in ${field.text}`],
+    rest: "Each level fans out from its place without field; links are the components.",
+    layout: fanLayout({ upper, lower, components, fieldText: field.text, kind: kindOf(answer, "states.energy") }),
+    table: () => statesTable(answer, context),
+  }).node;
+}

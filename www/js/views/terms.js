@@ -1,0 +1,182 @@
+// Tables of terms, levels and other couplings of one configuration.
+
+import { halfText, halfValue } from "../digits.js";
+import { element } from "../dom.js";
+import { dataTable } from "../table.js";
+import { richPlain } from "../rich.js";
+import { kindOf } from "./working.js";
+
+/** The shared-choice id of a term. */
+export function termId(entry, term, index) {
+  return `term:${entry.configuration.text}/${term}#${index ?? 1}`;
+}
+
+/** The chosen term of this configuration as {L, S, id}, or null; a chosen level chooses its term. */
+export function chosenTerm(entry, chosen) {
+  if (chosen === null) return null;
+  for (const row of termRows(entry)) if (termId(entry, row.term, row.index) === chosen) return { L: row.L, S: (row.multiplicity - 1) / 2, id: chosen };
+  if (!chosen.startsWith("level:")) return null;
+  const level = (entry.levels ?? []).find((one) => `level:${one.label}` === chosen);
+  return level ? chosenTerm(entry, termId(entry, level.term, level.index)) : null;
+}
+
+/** One row for each kind of each term, where kinds can be told apart; one for each term otherwise. */
+export function termRows(entry) {
+  return (entry.terms ?? []).flatMap((term) => {
+    const kinds = term.kinds?.length ? term.kinds : [{ index: null }];
+    return kinds.map((kind) => ({ ...kind, term: term.term, multiplicity: term.multiplicity, L: term.L, odd: term.odd, times: term.times, J: term.J, index: kind.index ?? null }));
+  });
+}
+
+/** A term's symbol as rich text. */
+export function termRich({ term, multiplicity, odd, index = null }) {
+  return [{ term: { multiplicity, letter: term.replace(/^\d+/, ""), odd, J: null, index } }];
+}
+
+function captionOf(entry, ...after) {
+  return [...after, { configuration: entry.configuration }];
+}
+
+/** The table of terms. */
+export function termsTable(entry, context) {
+  const rows = termRows(entry);
+  const has = (key) => rows.some((row) => row[key] !== null && row[key] !== undefined);
+  const group = "only for repeated terms of one open d or f shell";
+  const columns = [
+    { name: "term", type: "text", value: (row) => richPlain(termRich(row)), rich: termRich },
+    { name: "times", type: "number", value: (row) => row.times },
+    { name: "J", type: "text", value: (row) => row.J.join(", ") },
+    has("seniority") && { name: "seniority", type: "number", value: (row) => row.seniority, reason: group },
+    has("W") && { name: "W", type: "text", value: (row) => (row.W ? `(${row.W.join(" ")})` : null), reason: group },
+    has("U") && { name: "U", type: "text", value: (row) => (row.U ? `(${row.U.join(" ")})` : null), reason: "only for f shells" },
+  ].filter(Boolean);
+  const counted = `${entry.n_terms} ${entry.n_terms === 1 ? "term" : "terms"}, ${entry.n_levels} ${entry.n_levels === 1 ? "level" : "levels"}, ${entry.states} states`;
+  return dataTable({
+    caption: [...captionOf(entry, "Terms of "), `: ${counted}`], columns, rows,
+    identify: (row) => termId(entry, row.term, row.index), context, file: `terms ${entry.configuration.text}`,
+  });
+}
+
+/** What each term is made of: its parents with one electron less, or its coupling chains. */
+export function parentageTable(entry, context) {
+  const rows = termRows(entry).flatMap((row) => (row.parents ?? []).map((parent) => ({ ...row, parent })));
+  if (rows.length === 0) return null;
+  return dataTable({
+    caption: captionOf(entry, "Parents, with one electron less, of the terms of "), rows, context, file: `parents ${entry.configuration.text}`,
+    columns: [
+      { name: "term", type: "text", value: (row) => richPlain(termRich(row)), rich: termRich },
+      { name: "parent", type: "text", value: (row) => row.parent.text, rich: (row) => row.parent.rich },
+      { name: "weight", type: "number", kind: "exact", value: (row) => row.parent.weight },
+    ],
+    identify: (row) => termId(entry, row.term, row.index),
+  });
+}
+
+/** How terms of several open shells come about. */
+export function chainsTable(entry, context) {
+  const rows = (entry.terms ?? []).flatMap((term) => (term.chains ?? []).map((chain) => ({ ...term, index: null, chain })));
+  if (rows.length === 0) return null;
+  return dataTable({
+    caption: captionOf(entry, "Ways to couple the open shells of "), rows, context, file: `coupling ${entry.configuration.text}`,
+    columns: [
+      { name: "term", type: "text", value: (row) => row.term, rich: termRich },
+      { name: "coupled from", type: "text", value: (row) => richPlain(row.chain), rich: (row) => row.chain },
+    ],
+    identify: (row) => termId(entry, row.term, null),
+  });
+}
+
+/** The table of levels with g_J. */
+export function levelsTable(entry, context, answer) {
+  const rows = entry.levels ?? [];
+  const none = "a level with J = 0 has no magnetic moment";
+  const table = dataTable({
+    caption: [...captionOf(entry, "Levels of "), " in LS coupling"], rows, context, file: `levels ${entry.configuration.text}`,
+    columns: [
+      { name: "level", type: "text", value: (row) => row.label, rich: (row) => row.rich },
+      { name: "J", type: "half", value: (row) => row.J },
+      { name: "parity", type: "text", value: (row) => row.parity },
+      { name: "g_J", head: [{ sign: { runs: [{ text: "g" }, { down: "J" }], plain: "g_J", speech: "g J", latex: "$g_J$" } }], type: "number", kind: kindOf(answer, "levels.g") ?? rows[0]?.g_kind, value: (row) => row.g, reason: none },
+      { name: "mu_eff", head: [{ sign: { runs: [{ text: "μ" }, { down: "eff" }], plain: "mu_eff", speech: "mu effective", latex: "$\\mu_\\mathrm{eff}$" } }], unit: "mu_B", type: "number", kind: kindOf(answer, "levels.mu_eff") ?? rows[0]?.g_kind, value: (row) => row.mu_eff, reason: none },
+    ],
+    identify: (row) => `level:${row.label}`,
+  });
+  const missing = (entry.levels_total ?? rows.length) - rows.length;
+  return missing > 0 ? [table, element("p", { class: "note", text: `The first ${rows.length} of ${entry.levels_total} levels are listed; the table of levels by J counts them all.` })] : table;
+}
+
+/** How many levels have each J. */
+export function levelsByJTable(counts, caption, context, file) {
+  const rows = Object.entries(counts ?? {}).map(([J, count]) => ({ J, count: Number(count) })).sort((a, b) => halfValue(a.J) - halfValue(b.J));
+  return dataTable({
+    caption, rows, context, file,
+    columns: [
+      { name: "J", type: "half", value: (row) => row.J },
+      { name: "levels", type: "number", value: (row) => row.count },
+      { name: "states", type: "number", value: (row) => row.count * (2 * halfValue(row.J) + 1) },
+    ],
+  });
+}
+
+/** The jj distributions of the electrons over nlj. */
+export function jjTable(entry, context) {
+  const sum = (levels) => Object.entries(levels).sort(([a], [b]) => halfValue(a) - halfValue(b)).map(([J, count]) => (Number(count) === 1 ? J : `${J} (${count}×)`)).join(", ");
+  return dataTable({
+    caption: [...captionOf(entry, "Levels of "), " in jj coupling"], rows: entry.jj, context, file: `jj ${entry.configuration.text}`,
+    columns: [
+      { name: "subshells", type: "text", value: (row) => richPlain(row.name), rich: (row) => row.name },
+      { name: "levels", type: "number", value: (row) => row.n_levels },
+      { name: "J", type: "text", value: (row) => sum(row.levels) },
+    ],
+  });
+}
+
+/** Pair-coupling names of the levels of an outer electron on a parent level. */
+export function jKTable(entry, context) {
+  return dataTable({
+    caption: [...captionOf(entry, "Levels of "), " in jK (pair) coupling"], rows: entry.jK, context, file: `jK ${entry.configuration.text}`,
+    columns: [
+      { name: "name", type: "text", value: (row) => richPlain(row.name), rich: (row) => row.name },
+      { name: "parent", type: "text", value: (row) => richPlain(row.parent), rich: (row) => row.parent },
+      { name: "K", type: "half", value: (row) => row.K },
+      { name: "J", type: "text", value: (row) => row.J.join(", ") },
+    ],
+  });
+}
+
+/** How the terms are read off the grid: each takes one state from every cell of its block. */
+export function readOffTable(entry, context) {
+  const rows = [];
+  let left = typeof entry.states === "number" ? entry.states : null;
+  const terms = [...(entry.terms ?? [])].sort((a, b) => b.multiplicity - a.multiplicity || b.L - a.L);
+  for (const term of terms) {
+    const each = term.multiplicity * (2 * term.L + 1);
+    left = left === null ? null : left - each * term.times;
+    rows.push({ ...term, index: null, each, left });
+  }
+  return dataTable({
+    caption: captionOf(entry, "Terms read off the grid of "), rows, context, file: `read-off ${entry.configuration.text}`,
+    columns: [
+      { name: "corner M_S", type: "half", value: (row) => halfText((row.multiplicity - 1) / 2) },
+      { name: "corner M_L", type: "number", value: (row) => row.L },
+      { name: "term", type: "text", value: (row) => row.term, rich: termRich },
+      { name: "times", type: "number", value: (row) => row.times },
+      { name: "states of one", type: "number", value: (row) => row.each },
+      { name: "states left", type: "number", value: (row) => row.left, reason: "too many states to count here" },
+    ],
+    identify: (row) => termId(entry, row.term, 1),
+  });
+}
+
+/** The grid's counts as a table. */
+export function gridTable(entry, context) {
+  const { grid } = entry;
+  return dataTable({
+    caption: [...captionOf(entry, "Microstates of the open shells of "), " by M_L and M_S"], context, file: `grid ${entry.configuration.text}`,
+    rows: grid.M_L.map((M_L, r) => ({ M_L, counts: grid.counts[r] })),
+    columns: [
+      { name: "M_L", type: "number", value: (row) => Number(row.M_L) },
+      ...grid.M_S.map((M_S, c) => ({ name: `M_S ${M_S.replace("-", "\u2212")}`, type: "number", value: (row) => Number(row.counts[c]) })),
+    ],
+  });
+}
