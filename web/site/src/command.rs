@@ -1,7 +1,7 @@
 //! Other programs: found on the path, started in a clean environment, ended after a time limit.
 
 use std::ffi::OsStr;
-use std::io::Read;
+use std::io::{BufRead, BufReader, Read};
 use std::path::{Path, PathBuf};
 use std::process::{Child, Command, ExitStatus, Stdio};
 use std::thread::JoinHandle;
@@ -14,7 +14,6 @@ const MISLEADING: &[&str] = &[
     "CARGO",
     "CARGO_BUILD_TARGET",
     "CARGO_ENCODED_RUSTFLAGS",
-    "CARGO_TARGET_DIR",
     "DYLD_FALLBACK_LIBRARY_PATH",
     "LD_LIBRARY_PATH",
     "RUSTC",
@@ -104,6 +103,21 @@ pub fn capture(command: &mut Command, limit: Duration) -> Outcome<String> {
     Err(format!("{tail}\n{} failed.", said(command)))
 }
 
+/// Runs to the end with its output shown as it comes; says whether it succeeded, and what it printed.
+pub fn stream(command: &mut Command, limit: Duration) -> Outcome<(bool, String)> {
+    command
+        .stdin(Stdio::null())
+        .stdout(Stdio::piped())
+        .stderr(Stdio::piped());
+    let mut child = spawn(command)?;
+    let output = child.stdout.take().map(show);
+    let errors = child.stderr.take().map(show);
+    let ended = wait(&mut child, limit, command);
+    let output = collect(output);
+    let errors = collect(errors);
+    Ok((ended?.success(), output + &errors))
+}
+
 /// The command as one would type it.
 pub fn said(command: &Command) -> String {
     std::iter::once(command.get_program())
@@ -148,6 +162,24 @@ fn drain(mut pipe: impl Read + Send + 'static) -> JoinHandle<String> {
         // What was read before an error is still worth showing.
         let _ = pipe.read_to_end(&mut bytes);
         String::from_utf8_lossy(&bytes).into_owned()
+    })
+}
+
+fn show(pipe: impl Read + Send + 'static) -> JoinHandle<String> {
+    std::thread::spawn(move || {
+        let mut all = String::new();
+        let mut lines = BufReader::new(pipe);
+        let mut line = Vec::new();
+        while lines
+            .read_until(b'\n', &mut line)
+            .is_ok_and(|read| read > 0)
+        {
+            let text = String::from_utf8_lossy(&line);
+            print!("{text}");
+            all.push_str(&text);
+            line.clear();
+        }
+        all
     })
 }
 

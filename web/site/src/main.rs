@@ -1,7 +1,9 @@
 //! `cargo site`: sets up what is missing, builds both forms of the page, serves them, runs every test.
 
 mod assemble;
+mod browsers;
 mod budget;
+mod checks;
 mod command;
 mod digest;
 mod node;
@@ -25,6 +27,9 @@ type Outcome<T> = Result<T, String>;
 const USAGE: &str = "\
 cargo site [--quick]                build both forms of the page and serve the site on 127.0.0.1
 cargo site build [--quick]          build them without serving
+cargo site test [--quick]           run every check
+cargo site test [--quick] KIND [X]  run one kind (format, lints, native, wasm, page), of the last
+                                    three only what has X in its name
 
 --quick is for development: the page says so, and it is larger and slower than the full build.";
 
@@ -66,6 +71,13 @@ fn run(arguments: &[String]) -> Outcome<()> {
             serve::serve(&paths.site)
         }
         ["build"] => build(&paths, profile),
+        ["test"] => checks::run(&paths, profile, None, ""),
+        ["test", kind] if checks::KINDS.contains(kind) => {
+            checks::run(&paths, profile, Some(*kind), "")
+        }
+        ["test", kind, filter] if checks::KINDS.contains(kind) => {
+            checks::run(&paths, profile, Some(*kind), filter)
+        }
         _ => Err(format!(
             "I do not know what “{}” is.\n{USAGE}",
             words.join(" ")

@@ -67,4 +67,9 @@ impl Node {
         command.arg(paths.page_tests.join("node_modules").join(script));
         command
     }
+
+    /// Node itself.
+    pub fn program(&self) -> Command {
+        program("node")
+    }
 }

@@ -89,7 +89,8 @@ pub fn find_or_install() -> Outcome<(Target, String)> {
     ))
 }
 
-fn library_is_there(rustc: &str) -> bool {
+/// Has this compiler the library of the browser's target?
+pub fn library_is_there(rustc: &str) -> bool {
     capture(
         program(rustc).args(["--print", "target-libdir", "--target", TRIPLE]),
         Duration::from_secs(30),

@@ -128,7 +128,8 @@ pub fn optimise(paths: &Paths, node: &Node, from: &Path, to: &Path) -> Outcome<(
     .map(drop)
 }
 
-fn cargo_profile(profile: Profile) -> &'static str {
+/// The profile of `Cargo.toml` that this build compiles with.
+pub fn cargo_profile(profile: Profile) -> &'static str {
     match profile {
         Profile::Full => "shipped",
         Profile::Quick => "quick",
