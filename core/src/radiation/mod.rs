@@ -1,5 +1,6 @@
 //! Which lines there are, by which multipole, and how strong they are within their multiplet.
 
+mod chain_rules;
 mod multipole;
 mod rule;
 pub mod selection;

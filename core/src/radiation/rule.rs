@@ -122,6 +122,15 @@ pub enum Rule {
         /// J of the lower level.
         lower: TwiceJ,
     },
+    /// In a half-filled shell an E2 line changes the seniority by two.
+    Seniority {
+        /// The shell.
+        shell: Subshell,
+        /// Seniority of its term in the upper level.
+        upper: u32,
+        /// Seniority of its term in the lower level.
+        lower: u32,
+    },
     /// What the shells up to one couple to changes more than the operator can change it.
     Coupling {
         /// The last of those shells.
@@ -151,6 +160,7 @@ impl Rule {
             Rule::Spectator { .. } => "spectator",
             Rule::Parent { .. } => "parent",
             Rule::Vanishing { .. } => "vanishing",
+            Rule::Seniority { .. } => "seniority",
             Rule::Coupling { .. } => "coupling",
         }
     }
@@ -322,6 +332,17 @@ impl fmt::Display for Rule {
                 write!(
                     f,
                     "the 6j symbol of J = {upper} and {lower} is zero, so that this {multipole} line has no strength in pure LS coupling"
+                )
+            }
+            Rule::Seniority {
+                shell,
+                upper,
+                lower,
+            } => {
+                write!(
+                    f,
+                    "the half-filled {} shell would go from seniority {upper} to {lower}, and E2 changes it by 2 there",
+                    shell.orbital()
                 )
             }
             Rule::Coupling {

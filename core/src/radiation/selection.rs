@@ -5,6 +5,7 @@
 //! for M1) and of unmixed coupling chains (other shells keep their terms). The first that refuses
 //! decides. At last the strength itself is asked, whose 6j symbol may vanish between two J.
 
+use super::chain_rules::Shells;
 use super::strengths::orbital_share;
 use super::{Multipole, Rule};
 use crate::configuration::{Orbital, Subshell};
@@ -56,8 +57,7 @@ pub struct Between {
     upper_is_odd: bool,
     lower_is_odd: bool,
     jump: Jump,
-    /// Every orbital of either, in the order n, ℓ.
-    orbitals: Vec<Orbital>,
+    shells: Shells,
 }
 
 /// The number of pairs of different levels: of two configurations with that many levels, or of one.
@@ -117,7 +117,10 @@ impl Between {
                 (1, (Some(upper), Some(lower))) => Jump::One { upper, lower },
                 _ => Jump::Several(left),
             },
-            orbitals: occupations.into_keys().collect(),
+            shells: Shells::new(
+                occupations.into_keys().collect(),
+                if left == 0 { upper } else { &[] },
+            ),
         })
     }
 
@@ -193,7 +196,10 @@ impl Between {
                     },
                 )
             })
-            .or_else(|| self.chain_rule(multipole, upper.chain?, lower.chain?))
+            .or_else(|| {
+                let (upper, lower) = (upper.chain?, lower.chain?);
+                self.shells.refusal(self.jump, multipole, upper, lower)
+            })
     }
 
     /// One electron moves, and its ℓ fits: |ℓ − ℓ′| ≤ k ≤ ℓ + ℓ′ with ℓ + ℓ′ + k even.
@@ -217,123 +223,6 @@ impl Between {
             }
         }
     }
-
-    /// Rules of unmixed chains: the operator acts on one electron, so every shell that does not take
-    /// part keeps its own term, and what the shells up to some point couple to changes by no more
-    /// than the part of the operator that acts there.
-    fn chain_rule(&self, multipole: Multipole, upper: &Chain, lower: &Chain) -> Option<Rule> {
-        let rank = multipole.rank();
-        let upper = self.along(upper);
-        let lower = self.along(lower);
-        match self.jump {
-            Jump::Several(_) => None,
-            Jump::One {
-                upper: from,
-                lower: to,
-            } => {
-                let first = from.min(to);
-                let last = from.max(to);
-                self.first_refusal(&upper, &lower, |orbital| {
-                    let own = if orbital == from || orbital == to {
-                        Change::OneElectron(orbital.l().into())
-                    } else {
-                        Change::Nothing
-                    };
-                    let coupled = if orbital < first {
-                        Change::Nothing
-                    } else if orbital < last {
-                        Change::OneElectron(first.l().into())
-                    } else {
-                        Change::Orbital(rank)
-                    };
-                    (own, coupled)
-                })
-            }
-            Jump::None if multipole == Multipole::M1 => None,
-            Jump::None => {
-                // Any one open shell may be the active one; refused only if none of them can be.
-                let mut refusal = None;
-                let open = upper.iter().filter(|p| p.is_open).map(|p| p.orbital);
-                for active in open {
-                    let refused = self.first_refusal(&upper, &lower, |orbital| {
-                        let own = if orbital == active {
-                            Change::Orbital(rank)
-                        } else {
-                            Change::Nothing
-                        };
-                        let coupled = if orbital < active {
-                            Change::Nothing
-                        } else {
-                            Change::Orbital(rank)
-                        };
-                        (own, coupled)
-                    });
-                    match refused {
-                        None => return None,
-                        Some(_) => refusal = refusal.or(refused),
-                    }
-                }
-                refusal
-            }
-        }
-    }
-
-    /// The chain over all orbitals of both configurations: shells without a link of their own are
-    /// closed or empty, have ¹S and change nothing.
-    fn along(&self, chain: &Chain) -> Vec<Place> {
-        let mut links = chain.links.iter().peekable();
-        let mut coupled = Term::SINGLET_S;
-        self.orbitals
-            .iter()
-            .map(|&orbital| {
-                let link = links.next_if(|link| link.shell.orbital() == orbital);
-                coupled = link.map_or(coupled, |link| link.coupled);
-                Place {
-                    orbital,
-                    is_open: link.is_some(),
-                    own: link.map_or(Term::SINGLET_S, |link| link.own),
-                    own_index: link.and_then(|link| link.own_index).unwrap_or(1),
-                    electrons: link.map_or(0, |link| link.shell.electrons()),
-                    coupled,
-                }
-            })
-            .collect()
-    }
-
-    fn first_refusal(
-        &self,
-        upper: &[Place],
-        lower: &[Place],
-        change: impl Fn(Orbital) -> (Change, Change),
-    ) -> Option<Rule> {
-        upper.iter().zip(lower).find_map(|(a, b)| {
-            let (own, coupled) = change(a.orbital);
-            let same_kind = a.own == b.own && a.own_index == b.own_index;
-            match own {
-                Change::Nothing if !same_kind => {
-                    return Some(Rule::Spectator {
-                        orbital: a.orbital,
-                        upper: a.own,
-                        lower: b.own,
-                    });
-                }
-                _ if !own.allows(a.own, b.own) => {
-                    let shell = Subshell::new(a.orbital, a.electrons.max(b.electrons).max(1))?;
-                    return Some(Rule::Parent {
-                        shell,
-                        upper: a.own,
-                        lower: b.own,
-                    });
-                }
-                _ => {}
-            }
-            (!coupled.allows(a.coupled, b.coupled)).then_some(Rule::Coupling {
-                up_to: a.orbital,
-                upper: a.coupled,
-                lower: b.coupled,
-            })
-        })
-    }
 }
 
 /// Refuses a line that every other rule allows and whose strength is zero all the same, as of
@@ -352,39 +241,6 @@ pub fn strength_rule(
         upper: upper_j,
         lower: lower_j,
     })
-}
-
-/// A shell in a chain.
-struct Place {
-    orbital: Orbital,
-    is_open: bool,
-    own: Term,
-    own_index: u128,
-    electrons: u32,
-    coupled: Term,
-}
-
-/// What acts on a part of the atom.
-#[derive(Clone, Copy)]
-enum Change {
-    /// Nothing: it stays as it is.
-    Nothing,
-    /// One electron of this ℓ is taken or added.
-    OneElectron(u32),
-    /// An orbital operator of this rank.
-    Orbital(u32),
-}
-
-impl Change {
-    /// Whether it can lead from one term to the other, by the triangle rules.
-    fn allows(self, a: Term, b: Term) -> bool {
-        let triangle = |rank: u32| a.l.abs_diff(b.l) <= rank && rank <= a.l.saturating_add(b.l);
-        match self {
-            Change::Nothing => a == b,
-            Change::OneElectron(l) => a.two_s.abs_diff(b.two_s) == 1 && triangle(l),
-            Change::Orbital(rank) => a.two_s == b.two_s && triangle(rank),
-        }
-    }
 }
 
 /// One and the same term of one configuration, given that the configurations are the same.

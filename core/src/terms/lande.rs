@@ -9,8 +9,8 @@ use super::term::Term;
 use crate::constants::ELECTRON_G;
 use crate::quantity::TwiceJ;
 
-/// g_s of CODATA 2022.
-const G_S: f64 = ELECTRON_G.value;
+/// g_s, the g factor of the electron's spin, counted positive (CODATA 2022).
+pub const G_S: f64 = ELECTRON_G.value;
 
 /// 4 j(j + 1), exact.
 fn four_square(j: TwiceJ) -> f64 {

@@ -12,6 +12,7 @@ pub mod jk;
 pub mod label;
 pub mod lande;
 pub mod ls;
+pub mod seniority;
 mod term;
 mod weights;
 
