@@ -1,9 +1,11 @@
 //! Orbitals, subshells and configurations: reading, counting, filling.
 
+pub mod chart;
 mod completion;
 pub mod filling;
 mod occupation;
 mod orbital;
+pub mod shells;
 pub mod species;
 mod species_text;
 mod text;

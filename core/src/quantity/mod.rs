@@ -1,6 +1,12 @@
 //! Typed quantities: half-integers held exactly, and the reading of what a person types.
 
 mod half_integer;
+mod number;
+pub mod parse;
 pub(crate) mod signs;
+mod unit;
 
 pub use half_integer::TwiceJ;
+pub use number::{LONGEST, number};
+pub use parse::{MAX_ANGULAR_MOMENTUM, Quantity, half_integer, quantity};
+pub use unit::{Dimension, Unit};
