@@ -2,7 +2,7 @@
 
 import { element, freshId } from "./dom.js";
 import { valueAt } from "./pointer.js";
-import { richNode, richPlain } from "./rich.js";
+import { richNode } from "./rich.js";
 
 /** A fault is shown after typing has rested this long, or on leaving the field. */
 const FAULT_REST_MS = 400;
@@ -102,8 +102,9 @@ export class Fields {
     return this.#fields.has(path);
   }
 
+  /** Focuses the field at a path, or the first one inside the group at that path. */
   focus(path) {
-    const field = this.#fields.get(path);
+    const field = this.#fields.get(path) ?? [...this.#fields.values()].find((other) => other.path.startsWith(`${path}/`));
     field?.input.focus();
     return field !== undefined;
   }
@@ -197,11 +198,6 @@ export function wayButton(way, take) {
 /** The fault in words. */
 export function faultWords(fault) {
   return [fault.message, fault.bound].filter(Boolean).join(" ");
-}
-
-/** The sentence of what a question needs. */
-export function needsWords(needs) {
-  return needs ? richPlain(needs) : "Something is missing";
 }
 
 // A cut through a pair of units leaves half a character: it is dropped.

@@ -90,9 +90,18 @@ export class Layers {
       element("ul", {}, ...limits.map((text) => element("li", { text }))));
     const place = focusPlace(this.#evidence) ?? focusPlace(this.#workingBody);
     this.#release();
-    const { evidence, working } = this.#render(answer, this.#viewContext());
-    this.#evidenceBody.replaceChildren(evidence);
-    this.#workingBody.replaceChildren(working);
+    try {
+      const { evidence, working } = this.#render(answer, this.#viewContext());
+      this.#evidenceBody.replaceChildren(evidence);
+      this.#workingBody.replaceChildren(working);
+    } catch (error) {
+      // The sentence and the limits stand; what cannot be drawn says so where it would have been.
+      this.#evidenceBody.replaceChildren(element("div", { class: "fault" },
+        element("p", { class: "sentence", text: "The evidence could not be drawn; your sheet is safe." }),
+        element("p", { class: "key", text: String(error) })));
+      this.#workingBody.replaceChildren();
+      console.error(error);
+    }
     if (place !== null) place();
   }
 

@@ -8,11 +8,7 @@ export function questionFields(name, fields, questions, put) {
 }
 
 function splittingFields(fields, questions, put) {
-  const levels = () => {
-    const states = questions.entries.get("states")?.answer;
-    const each = states?.by_configuration ?? (states ? [states] : []);
-    return each.flatMap((entry) => (entry.levels ?? []).map((level) => level.label)).slice(0, 200);
-  };
+  const levels = () => questions.reading?.levels ?? [];
   const level = (path, label) => fields.make(path, {
     label, hint: "such as 3p 2P1/2", suggestions: levels,
   });

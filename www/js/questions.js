@@ -140,7 +140,7 @@ export class Questions {
  * The state of a rung: {kind, words}. `shownFaults` is how many faults are on show; a fault that
  * is still held back because somebody is typing only makes the answer old.
  */
-export function rungState(entry, shownFaults, plain) {
+export function rungState(entry, shownFaults) {
   if (entry.run?.shown) {
     const seconds = entry.run.estimate?.seconds;
     return { kind: "running", words: seconds ? `running, about ${duration(seconds)}` : "running" };
@@ -151,7 +151,7 @@ export function rungState(entry, shownFaults, plain) {
   if (entry.status === "fault" && shownFaults > 0) {
     return { kind: "fault", words: `${shownFaults} ${shownFaults === 1 ? "fault" : "faults"}` };
   }
-  if (entry.status === "lacks") return { kind: "lacks", words: plain(entry.needs ?? ["something is missing"]) };
+  if (entry.status === "lacks") return { kind: "lacks", words: `needs ${entry.needs}` };
   if (entry.answer !== null && (entry.fresh || entry.run !== null)) return { kind: "answered", words: "answered" };
   if (entry.answer !== null) return { kind: "stale", words: "from before your change" };
   return { kind: "ready", words: "open to ask" };

@@ -3,7 +3,7 @@
 import { element, setText, wordButton } from "./dom.js";
 import { Layers } from "./layers.js";
 import { WORDS, duration, estimateWords, rungState } from "./questions.js";
-import { richNode, richPlain } from "./rich.js";
+import { richNode } from "./rich.js";
 import * as lines from "./views/lines.js";
 import * as splitting from "./views/splitting.js";
 import * as states from "./views/states.js";
@@ -94,7 +94,7 @@ export class QuestionRung {
     const entry = this.#questions.entries.get(this.name);
     // The rung is folded once while it is being made.
     if (entry === undefined || this.#layers === undefined) return;
-    const state = rungState(entry, shownFaults, richPlain);
+    const state = rungState(entry, shownFaults);
     const old = entry.answer !== null && state.kind !== "answered";
     this.rung.state(state);
     this.rung.short(entry.answer?.say ?? null, this.#context.settings.values);
@@ -122,7 +122,7 @@ export class QuestionRung {
     this.#needs.dataset.shown = key;
     this.#needs.replaceChildren();
     if (!lacking) return;
-    this.#needs.append(element("p", {}, entry.needs ? richNode(entry.needs, this.#context.settings.values) : "Something is missing."));
+    this.#needs.append(element("p", { text: `Needs ${entry.needs}.` }));
     if (entry.way) {
       this.#needs.append(element("button", {
         type: "button", class: "action", text: entry.way.label,
