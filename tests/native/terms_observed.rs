@@ -78,3 +78,39 @@ fn exceptions_to_hund_are_the_known_ones() {
         "missing {missing:?}, more {more:?}"
     );
 }
+
+#[test]
+fn what_the_exceptions_are() {
+    // Judged one by one. Of 98 rows, 88 have a single open shell, and in all of these the tabulated J is
+    // Hund's: the levels are those of highly charged ions near jj coupling, calculated or extrapolated,
+    // and named after their leading LS component. The lowest level of np3 there is (p1/2)2 p3/2, half
+    // of it 2P, so 85 of them read "2P3/2" for Hund's "4S3/2". The rest has several open shells:
+    // Ce I (1G4) is measured and real, Ce II and the 5f2 6d ion semi-empirical and credible, the
+    // 4f13 5p2 and 4f11 5p5 ions calculated, again close to jj coupling.
+    let exceptions = rows(&vector("hund_exceptions.csv"));
+    let single: Vec<_> = exceptions
+        .iter()
+        .filter(|r| r["class"] == "single open shell")
+        .collect();
+    assert_eq!((exceptions.len(), single.len()), (98, 88));
+    let mut np3 = 0;
+    for row in single {
+        let shells = shells(&row["shells"]);
+        let open: Vec<&Subshell> = shells.iter().filter(|s| s.is_open()).collect();
+        let ground = hund::ground(&shells);
+        assert_eq!(ground.j.unwrap().to_string(), row["tabulated_J"], "{row:?}");
+        assert_ne!(
+            ground.term.to_string(),
+            row["tabulated_term"].trim_end_matches('*')
+        );
+        let p3 = open.len() == 1 && open[0].orbital().l() == 1 && open[0].electrons() == 3;
+        np3 += u32::from(p3 && row["tabulated_term"] == "2P*");
+    }
+    assert_eq!(np3, 85);
+    let measured: Vec<_> = exceptions
+        .iter()
+        .filter(|r| r["theoretical"] == "0" && r["semi_empirical"] == "0")
+        .map(|r| format!("{}{}", r["symbol"], r["charge"]))
+        .collect();
+    assert_eq!(measured, ["Ce0"]);
+}

@@ -97,14 +97,22 @@ fn split_index(text: &str) -> Result<(&str, Option<u128>), Problem> {
         .then(|| digits.parse::<u128>());
     match number {
         Some(Ok(k)) if k > 0 => Ok((before, Some(k))),
-        _ => Err(Problem::new(
-            "level-bad-index",
-            format!("\"#{digits}\" does not number a repeated term."),
-            at,
-            text.len(),
-        )
-        .bound("# and a whole number from 1")
-        .way("Use #1", format!("{before}#1"))),
+        _ => {
+            let fault = Problem::new(
+                "level-bad-index",
+                format!("\"#{digits}\" does not number a repeated term."),
+                at,
+                text.len(),
+            )
+            .bound("# and a whole number from 1");
+            // A way out only where the rest can be read.
+            let rest_is_read = !before.contains('#') && parse(before).is_ok();
+            Err(if rest_is_read {
+                fault.way("Use #1", format!("{before}#1"))
+            } else {
+                fault
+            })
+        }
     }
 }
 
