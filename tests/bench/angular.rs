@@ -5,6 +5,8 @@
 use std::hint::black_box;
 use std::time::Instant;
 
+use rungline_core::angular::equivalent::classify;
+use rungline_core::angular::parentage::parents;
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
 
 /// Arguments that no selection rule forbids, repeating from run to run.
@@ -82,4 +84,27 @@ fn main() {
         "j <= 5",
         2.0 * cases.len() as f64 / seconds / 1e6
     );
+    for (name, l, electrons) in [
+        ("terms of d5", 2, 5),
+        ("terms of f7", 3, 7),
+        ("terms of f9", 3, 9),
+    ] {
+        let seconds = best(200, || {
+            black_box(classify(black_box(l), black_box(electrons)).is_ok());
+        });
+        println!("{name:<32} {:>10.1} microseconds", seconds * 1e6);
+    }
+    // Tables are kept, so only the first call works; each needs those of fewer electrons.
+    for (name, l, electrons) in [
+        ("parents of d5", 2, 5),
+        ("parents of f7", 3, 7),
+        ("parents of f8, after f7", 3, 8),
+    ] {
+        let start = Instant::now();
+        black_box(parents(l, electrons).is_ok());
+        println!(
+            "{name:<32} {:>10.3} milliseconds, first call",
+            start.elapsed().as_secs_f64() * 1e3
+        );
+    }
 }

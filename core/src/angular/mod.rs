@@ -2,7 +2,9 @@
 //!
 //! Angular momenta are doubled integers throughout, phases those of Condon and Shortley.
 
+pub mod equivalent;
 mod nine_j;
+pub mod parentage;
 mod racah_sum;
 mod six_j;
 mod three_j;
