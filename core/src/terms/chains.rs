@@ -209,9 +209,18 @@ impl Search {
         let mut last = TermSet::new(largest);
         last.insert(wanted);
         let mut sets = vec![last];
-        for (_, terms) in self.own.iter().rev() {
+        for (place, (_, terms)) in self.own.iter().enumerate().rev() {
             let mut earlier = TermSet::new(largest);
-            for later in sets.last().into_iter().flat_map(TermSet::iter) {
+            let Some(later) = sets.last() else { break };
+            if place == 0 {
+                // Nothing comes before the first shell: its own term has to be the coupled one.
+                if terms.iter().any(|own| later.contains(own.term)) {
+                    earlier.insert(Term::SINGLET_S);
+                }
+                sets.push(earlier);
+                break;
+            }
+            for later in later.iter() {
                 for own in terms {
                     for term in later.coupled_to(own.term) {
                         self.couplings = self.couplings.saturating_add(1);

@@ -100,8 +100,12 @@ pub fn levels_by_j(subshells: &[Subshell]) -> Result<Vec<(TwiceJ, u128)>, Proble
     for &shell in subshells.iter().filter(|s| s.is_open()) {
         let mut whole: Vec<u128> = Vec::new();
         for (lower, upper) in divisions(shell) {
-            let part = convolve(&one_j(sizes(shell).0, lower), &one_j(sizes(shell).1, upper));
-            steps = steps.saturating_add((part.len() as u128).saturating_mul(part.len() as u128));
+            let (below, above) = (one_j(sizes(shell).0, lower), one_j(sizes(shell).1, upper));
+            steps = steps.saturating_add((below.len() as u128).saturating_mul(above.len() as u128));
+            if steps > MAX_STEPS {
+                return Err(too_long(subshells));
+            }
+            let part = convolve(&below, &above);
             whole = added(whole, part);
         }
         steps = steps.saturating_add((weights.len() as u128).saturating_mul(whole.len() as u128));
@@ -122,9 +126,10 @@ pub fn count(subshells: &[Subshell]) -> u128 {
         .fold(1, u128::saturating_mul)
 }
 
-/// The jj configurations with their levels, at most `limit` of them.
+/// The jj configurations with their levels, at most `limit` of them, and not more than 10⁸ steps
+/// find.
 ///
-/// Errors: `too-many-states`; `counting-too-long` when those asked for take more than 10⁸ steps.
+/// Errors: `too-many-states`; `counting-too-long` when one alone takes more steps.
 pub fn configurations(subshells: &[Subshell], limit: usize) -> Result<JjConfigurations, Problem> {
     states(subshells)?;
     let open = super::open_shells(subshells);
@@ -134,7 +139,7 @@ pub fn configurations(subshells: &[Subshell], limit: usize) -> Result<JjConfigur
     let mut steps: u128 = 0;
     // An odometer over the divisions of each shell, the last shell turning fastest.
     let mut turn = vec![0_usize; choices.len()];
-    while listed.len() < limit {
+    while listed.len() < limit && steps <= MAX_STEPS {
         let mut parts = Vec::new();
         let mut weights = vec![1_u128];
         for (choice, &at) in choices.iter().zip(&turn) {
@@ -142,7 +147,7 @@ pub fn configurations(subshells: &[Subshell], limit: usize) -> Result<JjConfigur
                 continue;
             };
             steps = steps.saturating_add((weights.len() as u128).saturating_mul(own.len() as u128));
-            if steps > MAX_STEPS {
+            if steps > MAX_STEPS && listed.is_empty() {
                 return Err(too_long(subshells));
             }
             parts.extend(held.iter().copied());
