@@ -13,10 +13,11 @@ export const DRAW_ALL = 500;
 /**
  * A table.
  *
- * `columns`: [{name, head, unit, kind, type, value, rich, reason, sort}]
+ * `columns`: [{name, head, unit, kind, type, value, rich, long, reason, sort}]
  *   name   plain heading, used in copies; `head` is its rich text when that differs
  *   type   "text" | "half" (half-integers) | "number"
  *   value  row → text or number, null when unknown; `rich` row → rich text to show for it
+ *   long   true for columns of sentences, which may take several lines
  *   reason why a value can be unknown: text, or row → text
  *   kind   one kind for the column, or row → kind where they differ
  * `identify`: row → id of the shared choice, or null for rows that cannot be chosen.
@@ -300,9 +301,9 @@ class DataTable {
   }
 }
 
-function columnClass({ type, rich }) {
+function columnClass({ type, long = false }) {
   if (type === "number" || type === "half") return `${type}-column`;
-  return rich ? "rich-column" : null;
+  return long ? "long-column" : "text-column";
 }
 
 function sortKey(value, type) {

@@ -29,7 +29,7 @@ export function ticks(from, to, wanted) {
 
 /** A horizontal axis at `y`, with the title (runs) beneath. */
 export function bottomAxis(pen, { scale, from, to, left, right, y, title }) {
-  const { values, decimals } = ticks(from, to, Math.max(2, (right - left) / 90));
+  const { values, decimals } = ticks(from, to, Math.max(2, (right - left) / 64));
   pen.line(left, y, right, y, { stroke: "edge" });
   for (const value of values) {
     const x = scale(value);

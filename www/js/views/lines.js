@@ -127,7 +127,7 @@ class Lines {
         { name: "lower", type: "text", value: (row) => row.lower, rich: (row) => row.lower_rich },
         { name: "multipole", type: "text", value: (row) => row.multipole },
         { name: "standing", type: "text", value: (row) => (row.rigorous ? "rigorous" : "approximate") },
-        { name: "rule", type: "text", value: (row) => row.rule },
+        { name: "rule", type: "text", long: true, value: (row) => row.rule },
       ],
       identify: lineId,
     });
@@ -157,8 +157,8 @@ function linesTable(rows, answer, context) {
     columns: [
       { name: "upper", type: "text", value: (row) => row.upper, rich: (row) => row.upper_rich },
       { name: "lower", type: "text", value: (row) => row.lower, rich: (row) => row.lower_rich },
-      { name: "multipole", type: "text", value: (row) => row.multipole },
       { name: "relative strength", type: "number", kind: kindOf(answer, "lines.relative"), value: (row) => row.relative, reason: "only lines of one multiplet are compared" },
+      { name: "multipole", type: "text", value: (row) => row.multipole },
       { name: "multiplet", type: "text", value: (row) => row.multiplet },
       number("wavenumber", "wavenumber", "cm-1"), number("vacuum_nm", "in vacuum", "nm"), number("air_nm", "in air", "nm"), number("S", "S"), number("gf", "gf"), number("A", "A"),
     ].filter(Boolean),

@@ -62,7 +62,7 @@ export function groundNode(entry, context) {
     caption: ["Hund’s rules for ", { configuration: entry.configuration }], rows: hund.steps.map((step, i) => ({ ...step, i: i + 1 })), context, file: `hund ${entry.configuration.text}`,
     columns: [
       { name: "step", type: "number", value: (row) => row.i },
-      { name: "rule", type: "text", value: (row) => row.rule },
+      { name: "rule", type: "text", long: true, value: (row) => row.rule },
       { name: "leaves", type: "text", value: (row) => row.i, rich: (row) => row.kept },
     ],
   }) : null;
