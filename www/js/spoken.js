@@ -13,7 +13,7 @@ export function spokenMultiplicity(multiplicity) {
 
 /** "three halves" for "3/2", "minus one half" for "-1/2", "2" for "2". */
 export function spokenHalf(text) {
-  const match = /^([+-\u2212]?)(\d+)\/2$/.exec(text);
+  const match = /^([-+\u2212]?)(\d+)\/2$/.exec(text);
   const sign = /^[-\u2212]/.test(text) ? "minus " : "";
   if (match === null) return sign + text.replace(/^[-+\u2212]/, "");
   const numerator = Number(match[2]);
