@@ -124,7 +124,7 @@ class Page {
 
   makeRungs() {
     const context = {
-      settings: this.settings, store: this.store, choice: makeChoice(),
+      settings: this.settings, store: this.store, view: this.view, choice: makeChoice(),
       setField: (path, value, label) => this.put(path, value, label),
       announce: (text) => this.announcer.now(text),
       chart: (charge) => this.chart(charge),

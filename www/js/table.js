@@ -16,7 +16,7 @@ export const DRAW_ALL = 500;
  * `columns`: [{name, head, unit, kind, type, value, rich, long, reason, sort}]
  *   name   plain heading, used in copies; `head` is its rich text when that differs
  *   type   "text" | "half" (half-integers) | "number"
- *   value  row → text or number, null when unknown; `rich` row → rich text to show for it
+ *   value  row → text or number as it is copied, null when unknown; `rich` row → rich text to show
  *   long   true for columns of sentences, which may take several lines
  *   reason why a value can be unknown: text, or row → text
  *   kind   one kind for the column, or row → kind where they differ
@@ -204,8 +204,7 @@ class DataTable {
 
   #plain(row, column) {
     const value = column.value(row);
-    if (value === null || value === undefined) return "–";
-    return column.rich ? richPlain(column.rich(row)) : fullDigits(value);
+    return value === null || value === undefined ? "–" : fullDigits(value);
   }
 
   /** Everything in the table as it is copied: all rows, in the order shown. */

@@ -34,8 +34,7 @@ export function multipletLayout({ upper, lower, links, refused }) {
       height,
       marks: drawn.map((link) => {
         const [x1, y1, x2, y2] = ends(link);
-        // The mark sits at a third of the link: halfway, links cross.
-        const [mx, my] = [x1 + (x2 - x1) / 3, y1 + (y2 - y1) / 3];
+        const [mx, my] = along(x1, y1, x2, y2, link.refused);
         return { x: mx - 8, y: my - 8, w: 16, h: 16, id: link.id, reading: link.reading };
       }),
       draw(pen) {
@@ -49,7 +48,7 @@ export function multipletLayout({ upper, lower, links, refused }) {
         }
         for (const link of drawn.filter((one) => !one.refused)) {
           const [x1, y1, x2, y2] = ends(link);
-          pen.circle(x1 + (x2 - x1) / 3, y1 + (y2 - y1) / 3, 3.5, { fill: "sheet", stroke: "ink" });
+          pen.circle(...along(x1, y1, x2, y2, false), 3.5, { fill: "sheet", stroke: "ink" });
         }
         for (const [side, y] of [[upper, UPPER], [lower, low]]) {
           pen.text(8, y + 5, side.runs, { weight: 600 });
@@ -72,6 +71,12 @@ export function multipletLayout({ upper, lower, links, refused }) {
       },
     };
   };
+}
+
+// Where a link's mark sits: off the middle, where links cross, and refused ones apart from allowed.
+function along(x1, y1, x2, y2, refused) {
+  const part = refused ? 0.6 : 1 / 3;
+  return [x1 + (x2 - x1) * part, y1 + (y2 - y1) * part];
 }
 
 function spreadOf(links) {

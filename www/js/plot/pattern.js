@@ -44,8 +44,8 @@ export function placesOf(components, unit, view) {
   return places.sort((a, b) => a.x - b.x || a.polarisation.localeCompare(b.polarisation));
 }
 
-/** The layout of a pattern for `picture`. `kindOf` key → kind of number. */
-export function patternLayout({ components, unit, view, kindOf }) {
+/** The layout of a pattern for `picture`. `viewWords` says the view; `kindOf` key → kind. */
+export function patternLayout({ components, unit, view, viewWords, kindOf }) {
   const places = placesOf(components, unit, view);
   const seen = places.filter((place) => place.strength > 0);
   const strongest = Math.max(...seen.map((place) => place.strength), 0) || 1;
@@ -70,7 +70,7 @@ export function patternLayout({ components, unit, view, kindOf }) {
         const wing = place.polarisation === "pi" ? 3 : TRIANGLE;
         return {
           x: x - wing, w: 2 * wing, y: Math.min(axis, end) - (place.polarisation === "pi" ? 0 : -2), h: Math.abs(end - axis) + (place.polarisation === "pi" ? 0 : TRIANGLE),
-          part: (place.x + whole / 2) / whole, id: null, reading: readingOf(place, unit, view, kindOf),
+          part: (place.x + whole / 2) / whole, id: null, reading: readingOf(place, unit, { view, viewWords, kindOf }),
         };
       }),
       draw(pen) {
@@ -112,15 +112,14 @@ function labels(pen, shown, scale, ends) {
   }
 }
 
-function readingOf(place, unit, view, kindOf) {
+function readingOf(place, unit, { view, viewWords, kindOf }) {
   const { unit: unitName } = OFFSET_UNITS[unit];
   const jumps = place.members.map((member) => `M ${trueMinus(member.M_lower)} to ${trueMinus(member.M_upper)}`).join(", ");
   return [
     { sign: { runs: SIGNS[place.polarisation].runs, plain: SIGNS[place.polarisation].plain, speech: SIGNS[place.polarisation].speech } },
     `, ${jumps}: offset `,
     { number: { text: String(place.x), unit: unitName, kind: kindOf(unit) } },
-    "; strength ",
+    `; strength ${viewWords} `,
     { number: { text: String(place.strength), unit: null, kind: kindOf(view) } },
-    ` ${VIEWS[view]}.`,
   ];
 }

@@ -66,9 +66,10 @@ function cellButton(cell, tint, pick, settings) {
   const words = tint === "open" ? openRuns(cell) : term ? describe({ term: { ...term, J: null, odd: false, index: null } }).runs : [{ text: "–" }];
   const said = [`${cell.name}, ${cell.Z}`, richSpeech(cell.rich), cell.ground ? `ground level ${richSpeech(cell.ground)}` : "ground level not known", SOURCES[cell.source] ?? cell.source].join(", ");
   return element("button", {
-    type: "button", class: `cell tint-${group || "none"}`, "aria-label": `${cell.symbol}: ${said}`, "data-symbol": cell.symbol, tabindex: "-1",
+    type: "button", class: `cell tint-${group || "none"}`, "data-symbol": cell.symbol, tabindex: "-1",
     on: { click: () => pick(cell.symbol) },
-  }, element("span", { class: "cell-symbol", text: cell.symbol }), element("span", { class: "cell-words" }, ...runNodes(words)));
+  }, element("span", { class: "cell-symbol", text: cell.symbol }), element("span", { class: "cell-words" }, ...runNodes(words)),
+    element("span", { class: "heard-only", text: ` ${said}` }));
 }
 
 // The letter of the open shell, or of the block where all are closed.

@@ -134,11 +134,12 @@ class Lines {
   }
 
   #sums() {
+    const names = multipletNames(this.#answer);
     const rows = this.#answer.multiplets.flatMap((one) => ["lower", "upper"].flatMap((side) => (one[`${side}_sums`] ?? []).map((sum) => ({ ...sum, side, one }))));
     return dataTable({
       caption: "Strengths summed over the lines that share a level, against 2J\u00a0+\u00a01", rows, context: this.#context, file: "sum rules",
       columns: [
-        { name: "multiplet", type: "text", value: (row) => `${row.one.name}, ${row.one.multipole}` },
+        { name: "multiplet", type: "text", value: (row) => `${row.one.name}, ${row.one.multipole}`, rich: (row) => [...(names.get(row.one.name) ?? [row.one.name]), `, ${row.one.multipole}`] },
         { name: "level", type: "text", value: (row) => row.side },
         { name: "J", type: "half", value: (row) => row.J },
         { name: "sum", type: "number", kind: kindOf(this.#answer, "multiplets.sum"), value: (row) => row.sum },
@@ -149,6 +150,7 @@ class Lines {
 }
 
 function linesTable(rows, answer, context) {
+  const names = multipletNames(answer);
   const missing = "needs energies, which are not computed yet";
   const known = (key) => rows.some((row) => row[key] !== null && row[key] !== undefined);
   const number = (key, name, unit) => known(key) && { name, unit, type: "number", kind: kindOf(answer, `lines.${key}`), value: (row) => row[key], reason: missing };
@@ -159,11 +161,16 @@ function linesTable(rows, answer, context) {
       { name: "lower", type: "text", value: (row) => row.lower, rich: (row) => row.lower_rich },
       { name: "relative strength", type: "number", kind: kindOf(answer, "lines.relative"), value: (row) => row.relative, reason: "only lines of one multiplet are compared" },
       { name: "multipole", type: "text", value: (row) => row.multipole },
-      { name: "multiplet", type: "text", value: (row) => row.multiplet },
+      { name: "multiplet", type: "text", value: (row) => row.multiplet, rich: (row) => names.get(row.multiplet) ?? row.multiplet },
       number("wavenumber", "wavenumber", "cm-1"), number("vacuum_nm", "in vacuum", "nm"), number("air_nm", "in air", "nm"), number("S", "S"), number("gf", "gf"), number("A", "A"),
     ].filter(Boolean),
     identify: lineId,
   });
+}
+
+/** Each multiplet's name as rich text. */
+function multipletNames({ multiplets = [] }) {
+  return new Map(multiplets.filter((one) => one.lower_rich?.length).map((one) => [one.name, [...one.lower_rich, ARROW, ...one.upper_rich]]));
 }
 
 // A level's label without its J, and without the number of a repeat, which goes with the term.

@@ -1,7 +1,7 @@
 // Shells, subshells and their one-electron states; the bare shell; how an atom fills.
 
 import { element } from "../dom.js";
-import { richNode } from "../rich.js";
+import { richNode, richPlain } from "../rich.js";
 import { dataTable } from "../table.js";
 
 function range(values) {
@@ -63,7 +63,7 @@ export function groundNode(entry, context) {
     columns: [
       { name: "step", type: "number", value: (row) => row.i },
       { name: "rule", type: "text", long: true, value: (row) => row.rule },
-      { name: "leaves", type: "text", value: (row) => row.i, rich: (row) => row.kept },
+      { name: "leaves", type: "text", value: (row) => richPlain(row.kept), rich: (row) => row.kept },
     ],
   }) : null;
   const verdict = !observed

@@ -23,8 +23,9 @@ function evidence(answer, context) {
   const unit = select(context, "splitting:unit", "Offsets in", units.map(([key, { label }]) => [key, label]), () => redraw());
   const views = Object.entries(VIEWS).filter(([key]) => components.some((component) => component[key] !== null && component[key] !== undefined));
   const view = select(context, "splitting:view", "Strength seen", views.map(([key, text]) => [key, key === "seen" ? `as in the sheet (${viewWords(field)})` : text]), () => redraw());
-  const layout = () => patternLayout({ components, unit: unit.value(), view: view.value(), kindOf: kind });
-  const name = () => ["Pattern of ", ...lineName, ` in ${field.text}, ${view.value() === "seen" ? viewWords(field) : VIEWS[view.value()]}`];
+  const words = () => (view.value() === "seen" ? viewWords(field) : VIEWS[view.value()]);
+  const layout = () => patternLayout({ components, unit: unit.value(), view: view.value(), viewWords: words(), kindOf: kind });
+  const name = () => ["Pattern of ", ...lineName, ` in ${field.text}, ${words()}`];
   const near = element("div", {}, componentsTable(answer, context));
   const shown = picture({
     context, name: name(), layout: layout(),
