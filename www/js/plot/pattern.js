@@ -101,14 +101,21 @@ function bar(pen, place, x, axis, end, energy) {
   pen.polygon([tip, ...base], place.polarisation === "sigma+" ? { fill: colour, stroke: colour } : { fill: "sheet", stroke: colour, width: 1.5 });
 }
 
-// Each polarisation is named once, at its strongest bar.
+// Each polarisation is named once, at its strongest bar; σ⁺ and σ⁻ step aside from each other.
 function labels(pen, shown, scale, ends) {
-  for (const [polarisation, sign] of Object.entries(SIGNS)) {
+  const at = {};
+  for (const polarisation of Object.keys(SIGNS)) {
     const own = shown.filter((place) => place.polarisation === polarisation);
-    if (own.length === 0) continue;
-    const strongest = own.reduce((best, place) => (place.strength > best.strength * (1 + 1e-9) ? place : best));
-    const end = ends(strongest);
-    pen.text(scale(strongest.x), polarisation === "pi" ? end - 7 : end + TRIANGLE * 1.5 + 16, sign.runs, { anchor: "middle", fill: sign.colour, weight: 600 });
+    if (own.length > 0) at[polarisation] = own.reduce((best, place) => (place.strength > best.strength * (1 + 1e-9) ? place : best));
+  }
+  const [plus, minus] = [at["sigma+"], at["sigma-"]];
+  const near = plus && minus && Math.abs(scale(plus.x) - scale(minus.x)) < 26;
+  const side = near ? Math.sign(scale(plus.x) - scale(minus.x)) || 1 : 0;
+  for (const [polarisation, place] of Object.entries(at)) {
+    const sign = SIGNS[polarisation];
+    const aside = { pi: 0, "sigma+": 13 * side, "sigma-": -13 * side }[polarisation];
+    const y = polarisation === "pi" ? ends(place) - 7 : ends(place) + TRIANGLE * 1.5 + 16;
+    pen.text(scale(place.x) + aside, y, sign.runs, { anchor: "middle", fill: sign.colour, weight: 600 });
   }
 }
 

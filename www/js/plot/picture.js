@@ -177,8 +177,10 @@ class Picture {
     if (this.#ring === null) return;
     const chosen = this.#context.choice?.get() ?? null;
     const ring = (mark, kind) => svgElement("rect", { class: kind, x: mark.x - 3, y: mark.y - 3, width: mark.w + 6, height: mark.h + 6 });
-    const rings = chosen === null ? [] : this.#marks.filter((mark) => mark.id === chosen).map((mark) => ring(mark, "ring-chosen"));
-    if (this.#at >= 0 && document.activeElement === this.#stage) rings.push(ring(this.#marks[this.#at], "ring-cursor"));
+    const [from, to] = this.#view;
+    const inView = (mark) => mark.part === undefined || (mark.part >= from && mark.part <= to);
+    const rings = chosen === null ? [] : this.#marks.filter((mark) => mark.id === chosen && inView(mark)).map((mark) => ring(mark, "ring-chosen"));
+    if (this.#at >= 0 && document.activeElement === this.#stage && inView(this.#marks[this.#at])) rings.push(ring(this.#marks[this.#at], "ring-cursor"));
     this.#ring.replaceChildren(...rings);
   }
 

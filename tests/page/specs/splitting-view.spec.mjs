@@ -1,0 +1,92 @@
+// How does it split?, read and worked on the page. D₁ has four components and D₂ six (standard; for
+// instance Condon & Shortley 1935, Zeeman effect of the sodium D lines).
+
+import assert from "node:assert/strict";
+import { everyDoor } from "../driver/door.mjs";
+
+const line = (upper) => `v=1&species=Na&configurations.0=3s&configurations.1=3p&field.flux_density=0.5+T&field.view=across&line.upper=3p+${upper}&line.lower=3s+2S1/2`;
+
+/** Keeps what the page saves as files. */
+function listen() {
+  window.files = [];
+  const make = URL.createObjectURL;
+  URL.createObjectURL = (blob) => {
+    blob.text().then((text) => window.files.push({ type: blob.type, size: blob.size, text: blob.type === "image/svg+xml" ? text : "" }));
+    return make.call(URL, blob);
+  };
+}
+
+for (const [upper, components] of [["2P1/2", 4], ["2P3/2", 6]]) {
+  everyDoor(`3p–3s from ${upper} has ${components} components in table and picture`, async (door) => {
+    await door.unfold("splitting");
+    await door.until(() => document.querySelector("#splitting .stage svg"));
+    assert.equal(await door.evaluate(() => document.querySelector("#splitting table").tBodies[0].rows.length), components);
+    const bars = await door.evaluate(() => document.querySelectorAll('#splitting .stage svg[role=img] line[stroke-width="3"]').length);
+    assert.equal(bars, components);
+    // σ⁺ filled, σ⁻ hollow: as many of each.
+    const fills = await door.evaluate(() => [...document.querySelectorAll("#splitting .stage polygon")].map((each) => each.getAttribute("fill") === "var(--sheet)"));
+    assert.equal(fills.filter(Boolean).length, fills.length / 2);
+    assert.deepEqual(door.troubles, []);
+  }, { fragment: line(upper) });
+}
+
+everyDoor("the cursor tells value, unit and kind, in the unit that is chosen", async (door) => {
+  await door.unfold("splitting");
+  await door.until(() => document.querySelector("#splitting .stage svg"));
+  await door.page.focus("#splitting .stage");
+  await door.press("End");
+  assert.match(await door.text("#splitting .reading"), /^σ\+, M .+: offset 1\.\d+\sμB\sB\s(computed|exact); strength .+ 0\.\d+\s(computed|exact)/);
+  await door.evaluate(() => {
+    const box = document.querySelector('#splitting select[aria-label="Offsets in"]');
+    box.value = "ghz";
+    box.dispatchEvent(new Event("change"));
+  });
+  await door.page.focus("#splitting .stage");
+  await door.press("Home", "End");
+  // 4/3 μ_B B/h at 0.5 T is about 9.3 GHz for the outer component of D₁.
+  assert.match(await door.text("#splitting .reading"), /offset 9\.3\d*\sGHz/);
+}, { fragment: line("2P1/2") });
+
+everyDoor("the plus key zooms, 0 shows all again", async (door) => {
+  await door.unfold("splitting");
+  await door.until(() => document.querySelector("#splitting .stage svg"));
+  const bars = () => door.evaluate(() => document.querySelectorAll('#splitting .stage svg[role=img] line[stroke-width="3"]').length);
+  await door.page.focus("#splitting .stage");
+  await door.press("End", "+", "+", "+");
+  assert.ok((await bars()) < 6);
+  await door.press("0");
+  assert.equal(await bars(), 6);
+}, { fragment: line("2P3/2") });
+
+everyDoor("the picture is saved as an SVG that stands by itself, and as PNG", async (door) => {
+  await door.unfold("splitting");
+  await door.until(() => document.querySelector("#splitting .stage svg"));
+  await door.evaluate(() => [...document.querySelectorAll("#splitting .picture-tools button")].find((each) => each.textContent === "Save SVG").click());
+  const svg = await door.until(() => window.files.find((file) => file.type === "image/svg+xml"));
+  assert.match(svg.text, /^<\?xml version="1\.0" encoding="UTF-8"\?>\n<svg xmlns="http:\/\/www\.w3\.org\/2000\/svg"/);
+  assert.match(svg.text, /<title>Pattern of 3p 2P3\/2 to 3s 2S1\/2/);
+  assert.equal(/style=|class=|var\(|href=|url\(/.test(svg.text), false);
+  const parsed = await door.evaluate((text) => new DOMParser().parseFromString(text, "image/svg+xml").querySelectorAll("parsererror, polygon").length, svg.text.replace(/^<\?xml[^>]*>\n/, ""));
+  assert.equal(parsed, 4);
+  await door.evaluate(() => [...document.querySelectorAll("#splitting .picture-tools button")].find((each) => each.textContent === "Save PNG").click());
+  const png = await door.until(() => window.files.find((file) => file.type === "image/png"));
+  assert.ok(png.size > 2000);
+  assert.deepEqual(door.troubles, []);
+}, { fragment: line("2P3/2"), before: listen });
+
+everyDoor("a stronger field moves the offsets in cm⁻¹", async (door) => {
+  await door.unfold("splitting");
+  const largest = () => door.evaluate(() => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[4].textContent.replace("\u2212", "-")))));
+  await door.until(() => document.querySelector("#splitting table"));
+  const before = await largest();
+  await door.evaluate(() => document.querySelector("#splitting").scrollIntoView());
+  await door.type("Field", "1 T");
+  await door.until((old) => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[4].textContent.replace("\u2212", "-")))) > 1.9 * old, before);
+}, { fragment: line("2P3/2") });
+
+everyDoor("the splitting is free of what axe finds", async (door) => {
+  await door.unfold("splitting");
+  await door.evaluate(() => { for (const part of document.querySelectorAll("#splitting .part")) part.open = true; });
+  assert.deepEqual(await door.axe(), []);
+  assert.equal(await door.scrollsSideways(), false);
+}, { width: 360, dark: true, fragment: line("2P3/2"), doors: ["file"] });
