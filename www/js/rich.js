@@ -116,29 +116,33 @@ function describeJj({ subshells, J = null }) {
     runs.push({ text: (i > 0 ? "\u00a0" : "") + label }, electrons === 1 ? { down: j } : { up: String(electrons), down: j });
   });
   if (many) runs.push({ text: ")" }, { down: J });
-  const inner = subshells.map(({ label, j, electrons }) => `${label}${j}${electrons === 1 ? "" : `^${electrons}`}`).join(" ");
+  const inner = subshells.map(({ label, j, electrons }) => `${label}(${j})${electrons === 1 ? "" : electrons}`).join(" ");
   const spoken = subshells.map(({ label, j, electrons }) => `${spokenSubshell(label, 1)} ${spokenHalf(j)}${electrons === 1 ? "" : ` times ${electrons}`}`);
   const set = subshells.map(({ label, j, electrons }) => `${label}_{${j}}${electrons === 1 ? "" : `^{${electrons}}`}`).join("\\,");
   return {
     runs: runs.filter((run) => run.text !== ""), kind: "jj",
-    plain: many ? `(${inner})${J}` : inner,
+    plain: many ? `${inner} J=${J}` : inner,
     speech: spoken.join(", ") + (many ? `, J ${spokenHalf(J)}` : ""),
     latex: many ? `$(\\mathrm{${set}})_{${J}}$` : `$\\mathrm{${set}}$`,
   };
 }
 
+// The parent is left out where it has been named before, as in "(²P₃₂) 4s ²[3/2]°".
 function describePair({ parent, multiplicity, K, odd = false, J = null }, settings) {
+  const named = parent !== null && parent.length > 0;
   const after = odd && J !== null ? [{ up: "o", down: J }] : odd ? [{ up: "o" }] : J !== null ? [{ down: J }] : [];
+  const own = `${spokenMultiplicity(multiplicity)} K ${spokenHalf(K)}${J === null ? "" : `, J ${spokenHalf(J)}`}${odd ? ", odd" : ""}`;
   return {
     kind: "pair",
-    runs: [{ text: "(" }, ...richRuns(parent, settings), { text: ")\u00a0" }, { up: String(multiplicity) }, { text: `[${K}]` }, ...after],
-    plain: `(${richPlain(parent)}) ${multiplicity}[${K}]${J ?? ""}`,
-    speech: `parent ${richSpeech(parent, settings)}, ${spokenMultiplicity(multiplicity)} K ${spokenHalf(K)}${J === null ? "" : `, J ${spokenHalf(J)}`}${odd ? ", odd" : ""}`,
-    latex: `(${richLatex(parent)}) $^{${multiplicity}}[${K}]${odd ? "^{\\mathrm{o}}" : ""}${J === null ? "" : `_{${J}}`}$`,
+    runs: [...(named ? [{ text: "(" }, ...richRuns(parent, settings), { text: ")\u00a0" }] : []), { up: String(multiplicity) }, { text: `[${K}]` }, ...after],
+    plain: `${named ? `(${richPlain(parent)}) ` : ""}${multiplicity}[${K}]${J ?? ""}`,
+    speech: named ? `parent ${richSpeech(parent, settings)}, ${own}` : own,
+    latex: `${named ? `(${richLatex(parent)}) ` : ""}$^{${multiplicity}}[${K}]${odd ? "^{\\mathrm{o}}" : ""}${J === null ? "" : `_{${J}}`}$`,
   };
 }
 
-function describeSpecies({ symbol, stage = null, mass_number = null }) {
+function describeSpecies({ symbol, stage: written = null, mass_number = null }) {
+  const stage = written || null;
   if (symbol === "*") return { runs: [{ text: "any atom" }], plain: "*", speech: "any atom", latex: "any atom", kind: "species" };
   const runs = mass_number === null ? [] : [{ up: String(mass_number) }];
   runs.push({ text: stage === null ? symbol : `${symbol}\u00a0${stage}` });

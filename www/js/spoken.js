@@ -1,6 +1,7 @@
 // How the names of the trade are said aloud.
 
 const MULTIPLICITIES = [null, "singlet", "doublet", "triplet", "quartet", "quintet", "sextet", "septet", "octet", "nonet", "decet"];
+const MU_B = { runs: [{ text: "μ" }, { down: "B" }], speech: "Bohr magnetons", latex: "$\\mu_\\mathrm{B}$" };
 const ONES = ["zero", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve", "thirteen",
   "fourteen", "fifteen", "sixteen", "seventeen", "eighteen", "nineteen"];
 const TENS = [null, null, "twenty", "thirty", "forty", "fifty", "sixty", "seventy", "eighty", "ninety"];
@@ -58,7 +59,8 @@ export const UNITS = {
   nm: { runs: [{ text: "nm" }], speech: "nanometres" },
   pm: { runs: [{ text: "pm" }], speech: "picometres" },
   T: { runs: [{ text: "T" }], speech: "tesla" },
-  mu_B: { runs: [{ text: "μ" }, { down: "B" }], speech: "Bohr magnetons", latex: "$\\mu_\\mathrm{B}$" },
+  mu_B: MU_B,
+  "μ_B": MU_B,
   "mu_B B": { runs: [{ text: "μ" }, { down: "B" }, { text: "\u00a0B" }], speech: "Bohr magnetons times B", latex: "$\\mu_\\mathrm{B} B$" },
   "°": { runs: [{ text: "°" }], speech: "degrees", latex: "$^\\circ$" },
   "%": { runs: [{ text: "%" }], speech: "per cent", latex: "\\%" },

@@ -27,7 +27,7 @@ export function gridLayout({ grid, chosen, idOf }) {
       width: Math.max(width, needed),
       height,
       marks: rows.flatMap((row, r) => columns.map((column, c) => {
-        const count = Number(grid.counts[row.i][column.i]);
+        const count = grid.counts[row.i][column.i];
         const [x, y] = at(r, c);
         return {
           x: x + 3, y: y + 3, w: cell - 6, h: tall - 6,
@@ -44,10 +44,10 @@ export function gridLayout({ grid, chosen, idOf }) {
         rows.forEach((row, r) => pen.text(LEFT - 8, TOP + (r + 0.5) * tall + 5, trueMinus(row.value), { anchor: "end", fill: "quiet" }));
         rows.forEach((row, r) => columns.forEach((column, c) => {
           const [x, y] = at(r, c);
-          const count = Number(grid.counts[row.i][column.i]);
+          const count = grid.counts[row.i][column.i];
           const inside = term !== null && Math.abs(row.value) <= term.L && Math.abs(column.value) <= term.S;
           pen.rect(x, y, cell, tall, { stroke: "hair", fill: inside ? "wash-chosen" : "sheet" });
-          pen.text(x + cell / 2, y + tall / 2 + 5, count === 0 ? "·" : String(count), { anchor: "middle", fill: count === 0 ? "quiet" : "ink", size: cell < 30 && count > 999 ? 10 : LABEL });
+          pen.text(x + cell / 2, y + tall / 2 + 5, count === 0 ? "·" : String(count), { anchor: "middle", fill: count === 0 ? "quiet" : "ink", size: Math.min(LABEL, (1.6 * cell) / Math.max(String(count).length, 1)) });
         }));
         if (term !== null) frame(pen, rows, columns, term, at, cell, tall);
       },

@@ -6,7 +6,6 @@ import { describe, richPlain, richSpeech, runNodes } from "../rich.js";
 import { dataTable } from "../table.js";
 
 const TINTS = { open: "open shell", term: "ground term" };
-const SOURCES = { measured: "measured", "semi-empirical": "semi-empirical", theoretical: "theoretical", rule: "by the filling rule" };
 let lastTint = "open";
 
 /**
@@ -61,15 +60,23 @@ function fillLadder(box, cells, tint, pick, settings) {
 }
 
 function cellButton(cell, tint, pick, settings) {
+  // The charge leaves this atom no electron.
+  if (cell.rich === undefined) return bareCell(cell);
   const term = cell.ground?.find((item) => item.term)?.term ?? null;
   const group = tint === "open" ? openGroup(cell) : term ? term.letter : "";
   const words = tint === "open" ? openRuns(cell) : term ? describe({ term: { ...term, J: null, odd: false, index: null } }).runs : [{ text: "–" }];
-  const said = [`${cell.name}, ${cell.Z}`, richSpeech(cell.rich), cell.ground ? `ground level ${richSpeech(cell.ground)}` : "ground level not known", SOURCES[cell.source] ?? cell.source].join(", ");
+  const said = [`${cell.name}, ${cell.Z}`, richSpeech(cell.rich), cell.ground ? `ground level ${richSpeech(cell.ground)}` : "ground level not known", cell.source].join(", ");
   return element("button", {
     type: "button", class: `cell tint-${group || "none"}`, "data-symbol": cell.symbol, tabindex: "-1",
     on: { click: () => pick(cell.symbol) },
   }, element("span", { class: "cell-symbol", text: cell.symbol }), element("span", { class: "cell-words" }, ...runNodes(words)),
     element("span", { class: "heard-only", text: ` ${said}` }));
+}
+
+function bareCell(cell) {
+  return element("button", { type: "button", class: "cell tint-none", "data-symbol": cell.symbol, tabindex: "-1", "aria-disabled": "true" },
+    element("span", { class: "cell-symbol", text: cell.symbol }), element("span", { class: "cell-words", text: "–" }),
+    element("span", { class: "heard-only", text: ` ${cell.name}, ${cell.Z}: no electron is left at this charge` }));
 }
 
 // The letter of the open shell, or of the block where all are closed.
@@ -80,7 +87,7 @@ function openGroup(cell) {
 
 // The first open subshell, or the outermost one of an atom whose shells are all closed.
 function openRuns(cell) {
-  const closed = cell.rich?.find((item) => item.configuration)?.configuration.subshells.at(-1);
+  const closed = cell.rich.find((item) => item.configuration)?.configuration.subshells.at(-1);
   const match = /^\d+([a-z])(\d*)/.exec(cell.open) ?? (closed ? /^\d+([a-z])(\d*)/.exec(`${closed.label}${closed.electrons}`) : null);
   if (match === null) return [{ text: "–" }];
   const [, letter, electrons] = match;
@@ -134,9 +141,9 @@ function chartTable(chart, settings, announce) {
       { name: "Z", type: "number", value: (cell) => cell.Z },
       { name: "symbol", type: "text", value: (cell) => cell.symbol },
       { name: "name", type: "text", value: (cell) => cell.name },
-      { name: "configuration", type: "text", value: (cell) => cell.configuration, rich: (cell) => cell.rich },
-      { name: "ground level", type: "text", value: (cell) => (cell.ground ? richPlain(cell.ground) : null), rich: (cell) => cell.ground, reason: "not known" },
-      { name: "source", type: "text", value: (cell) => SOURCES[cell.source] ?? cell.source },
+      { name: "configuration", type: "text", value: (cell) => cell.configuration ?? null, rich: (cell) => cell.rich, reason: "no electron is left" },
+      { name: "ground level", type: "text", value: (cell) => (cell.ground ? richPlain(cell.ground) : null), rich: (cell) => cell.ground, reason: "no electron is left" },
+      { name: "source", type: "text", value: (cell) => cell.source ?? null, reason: "no electron is left" },
     ],
   });
 }

@@ -25,11 +25,13 @@ export function lineId({ lower, upper, multipole }) {
 class Lines {
   #answer;
   #context;
+  #levels;
   #tableBox = element("div", { class: "lines-table" });
   #shown = null;
 
   constructor(answer, context) {
     this.#answer = answer;
+    this.#levels = levelsOf(answer);
     this.#context = context;
     const { lines, refused, multiplets } = answer;
     const multipoles = [...new Set(lines.map((line) => line.multipole))].sort();
@@ -58,7 +60,7 @@ class Lines {
       && (name === "" || (line.multiplet === name && line.multipole === multipole)));
     this.#tableBox.replaceChildren(rows.length === 0 && this.#answer.lines.length > 0
       ? element("p", { text: `No line passes both choices; ${this.#answer.lines.length} stand outside them.` })
-      : linesTable(rows, this.#answer, this.#context));
+      : linesTable(rows, this.#answer, this.#levels, this.#context));
   }
 
   #picture() {
@@ -87,35 +89,32 @@ class Lines {
     const listed = multiplets.find((one) => one.name === name && one.multipole === multipole)
       ?? multiplets.reduce((best, one) => (best === null || one.lines > best.lines ? one : best), null);
     const sample = picked ?? lines.find((line) => line.multiplet === listed?.name && line.multipole === listed?.multipole) ?? lines[0] ?? refused[0];
-    return sample === undefined ? null : this.#pair(termOf(sample.upper, sample.upper_J), termOf(sample.lower, sample.lower_J));
+    return sample === undefined ? null : this.#pair(this.#levels.get(sample.upper), this.#levels.get(sample.lower));
   }
 
-  #pair(upperTerm, lowerTerm) {
+  #pair(upper, lower) {
     const { lines, refused = [] } = this.#answer;
-    const within = (one) => termOf(one.upper, one.upper_J) === upperTerm && termOf(one.lower, one.lower_J) === lowerTerm;
+    const within = (one) => this.#levels.get(one.upper).key === upper.key && this.#levels.get(one.lower).key === lower.key;
     const [allowed, forbidden] = [lines.filter(within), refused.filter(within)];
-    const all = [...allowed, ...forbidden];
-    const side = (which) => {
-      const levels = new Map(all.map((one) => [one[`${which}_J`], one]));
-      const [sample] = levels.values();
-      const term = lastTerm(sample[`${which}_rich`]);
+    const side = (which, sample) => {
+      const labels = new Set([...allowed, ...forbidden].map((one) => one[which]));
+      const runs = (term) => richRuns([{ term }]);
       return {
-        odd: term?.odd ?? false,
-        runs: term ? richRuns([{ term: { ...term, J: null } }]) : [{ text: which === "upper" ? upperTerm : lowerTerm }],
-        levels: [...levels].map(([J, one]) => ({ J, label: one[which], runs: term ? richRuns([{ term: { ...lastTerm(one[`${which}_rich`]) } }]) : [{ text: J }] })),
+        odd: sample.term.odd,
+        runs: runs({ ...sample.term, J: null }),
+        levels: [...labels].map((label) => this.#levels.get(label)).map(({ J, label, term }) => ({ J, label, runs: runs({ ...term, index: null }) })),
       };
     };
     const kind = kindOf(this.#answer, "lines.relative");
+    const names = (one) => [...this.#levels.get(one.upper).rich, ARROW, ...this.#levels.get(one.lower).rich, `, ${one.multipole}`];
     const links = allowed.map((line) => ({
       upperJ: line.upper_J, lowerJ: line.lower_J, strength: line.relative, multipole: line.multipole, id: lineId(line),
-      reading: [...line.upper_rich, ARROW, ...line.lower_rich, `, ${line.multipole}: `,
-        ...(line.relative === null || line.relative === undefined ? ["no relative strength"] : ["relative strength ", { number: { text: String(line.relative), unit: null, kind } }])],
+      reading: [...names(line), ": relative strength ", { number: { text: String(line.relative), unit: null, kind } }],
     }));
     const dots = this.dotted.value() ? forbidden.map((pair) => ({
-      upperJ: pair.upper_J, lowerJ: pair.lower_J, id: lineId(pair),
-      reading: [...pair.upper_rich, ARROW, ...pair.lower_rich, `, ${pair.multipole}, refused: ${pair.rule}`],
+      upperJ: pair.upper_J, lowerJ: pair.lower_J, id: lineId(pair), reading: [...names(pair), `, refused: ${pair.rule}`],
     })) : [];
-    return { upper: side("upper"), lower: side("lower"), links, refused: dots, name: ["Multiplet ", ...all[0].lower_rich.slice(0, -1), ` ${lowerTerm}${ARROW}${upperTerm}`.trimStart()] };
+    return { upper: side("upper", upper), lower: side("lower", lower), links, refused: dots, name: ["Multiplet ", ...lower.termRich, ARROW, ...upper.termRich] };
   }
 
   #refusedTable() {
@@ -123,8 +122,7 @@ class Lines {
     return dataTable({
       caption: "Refused pairs", rows: refused, context: this.#context, file: "refused pairs",
       columns: [
-        { name: "upper", type: "text", value: (row) => row.upper, rich: (row) => row.upper_rich },
-        { name: "lower", type: "text", value: (row) => row.lower, rich: (row) => row.lower_rich },
+        ...levelColumns(this.#levels),
         { name: "multipole", type: "text", value: (row) => row.multipole },
         { name: "standing", type: "text", value: (row) => (row.rigorous ? "rigorous" : "approximate") },
         { name: "rule", type: "text", long: true, value: (row) => row.rule },
@@ -149,7 +147,7 @@ class Lines {
   }
 }
 
-function linesTable(rows, answer, context) {
+function linesTable(rows, answer, levels, context) {
   const names = multipletNames(answer);
   const missing = "needs energies, which are not computed yet";
   const known = (key) => rows.some((row) => row[key] !== null && row[key] !== undefined);
@@ -157,8 +155,7 @@ function linesTable(rows, answer, context) {
   return dataTable({
     caption: `${rows.length} ${rows.length === 1 ? "line" : "lines"} allowed`, rows, context, file: "lines",
     columns: [
-      { name: "upper", type: "text", value: (row) => row.upper, rich: (row) => row.upper_rich },
-      { name: "lower", type: "text", value: (row) => row.lower, rich: (row) => row.lower_rich },
+      ...levelColumns(levels),
       { name: "relative strength", type: "number", kind: kindOf(answer, "lines.relative"), value: (row) => row.relative, reason: "only lines of one multiplet are compared" },
       { name: "multipole", type: "text", value: (row) => row.multipole },
       { name: "multiplet", type: "text", value: (row) => row.multiplet, rich: (row) => names.get(row.multiplet) ?? row.multiplet },
@@ -173,12 +170,15 @@ function multipletNames({ multiplets = [] }) {
   return new Map(multiplets.filter((one) => one.lower_rich?.length).map((one) => [one.name, [...one.lower_rich, ARROW, ...one.upper_rich]]));
 }
 
-// A level's label without its J, and without the number of a repeat, which goes with the term.
-function termOf(label, J) {
-  const [, name, index] = /^(.*?)( #\d+)?$/.exec(label);
-  return (name.endsWith(J) ? name.slice(0, -J.length) : name) + (index ?? "");
+/** Label → {label, rich, J, term, termRich, key}; `key` is the same for all levels of one term. */
+function levelsOf({ levels }) {
+  return new Map(levels.map(({ label, rich, J, configuration, term: name }) => {
+    const { term } = rich.findLast((item) => item.term);
+    const termRich = rich.map((item) => (item.term ? { term: { ...item.term, J: null } } : item));
+    return [label, { label, rich, J, term, termRich, key: `${configuration} ${name} ${term.index ?? ""}` }];
+  }));
 }
 
-function lastTerm(rich) {
-  return rich?.findLast?.((item) => item.term)?.term ?? null;
+function levelColumns(levels) {
+  return ["upper", "lower"].map((side) => ({ name: side, type: "text", value: (row) => row[side], rich: (row) => levels.get(row[side]).rich }));
 }

@@ -29,10 +29,10 @@ function section(entry, { answer, context, several, first }) {
     element("div", { class: "table-and-picture" }, termsTable(entry, context), gridPicture(entry, context)),
     facts(entry, context),
     element("div", { class: "parts" },
-      entry.levels?.length ? part("levels", `Levels and their g factors (${entry.levels_total ?? entry.levels.length})`, () => levelsTable(entry, context, answer)) : null,
+      entry.levels?.length ? part("levels", `Levels and their g factors (${entry.n_levels})`, () => levelsTable(entry, context, answer)) : null,
       part("by-j", "Levels counted by J", () => levelsByJTable(entry.levels_by_J, ["Levels of ", ...configuration, " by J"], context, `levels by J ${entry.configuration.text}`)),
       entry.grid ? part("read-off", "How the terms are read off the grid", () => readOffTable(entry, context)) : null,
-      termRows(entry).some((row) => row.parents?.length) ? part("parents", "Parents of each term", () => parentageTable(entry, context)) : null,
+      termRows(entry).some((row) => row.parents?.length) ? part("parents", "Parents of each term", () => parentageTable(entry, context, answer)) : null,
       entry.terms?.some((term) => term.chains?.length) ? part("chains", "How the terms come about", () => chainsTable(entry, context)) : null,
       entry.ground?.hund ? part("hund", "Ground level: Hund’s rules and observation", () => groundNode(entry, context)) : null,
       entry.shells?.length ? part("shells", "Shells and subshells", () => shellsTable(entry, context)) : null,
@@ -47,7 +47,7 @@ function section(entry, { answer, context, several, first }) {
       entry.completed_core ? ["Filled core", [`${entry.completed_core}, completed from the electron count`]] : null,
       ["Configuration", [{ typed: "as typed", observed: "the observed ground configuration", rule: "by the filling rule" }[entry.source_of_configuration] ?? ""]],
       ["Parity", [entry.parity]],
-      mu !== undefined && mu !== null ? ["Spin-only moment", [{ number: { text: String(mu), unit: "mu_B", kind: entry.spin_only.kind ?? kindOf(answer, "spin_only.mu") } }]] : null,
+      mu !== undefined && mu !== null ? ["Spin-only moment", [{ number: { text: String(mu), unit: "mu_B", kind: kindOf(answer, "spin_only") } }]] : null,
     ].filter((item) => item !== null && item[1][0]);
     return element("dl", { class: "facts" }, ...items.map(([name, rich]) => element("div", { class: "pair-line" },
       element("dt", { text: name }), element("dd", {}, richNode(rich, context.settings)))));

@@ -17,7 +17,9 @@ export function chosenTerm(entry, chosen) {
   for (const row of termRows(entry)) if (termId(entry, row.term, row.index) === chosen) return { L: row.L, S: (row.multiplicity - 1) / 2, id: chosen };
   if (!chosen.startsWith("level:")) return null;
   const level = (entry.levels ?? []).find((one) => `level:${one.label}` === chosen);
-  return level ? chosenTerm(entry, termId(entry, level.term, level.index)) : null;
+  if (!level) return null;
+  // Where the kinds of a term cannot be told apart, all its levels point at the one row.
+  return chosenTerm(entry, termId(entry, level.term, level.index)) ?? chosenTerm(entry, termId(entry, level.term, null));
 }
 
 /** One row for each kind of each term, where kinds can be told apart; one for each term otherwise. */
@@ -58,7 +60,7 @@ export function termsTable(entry, context) {
 }
 
 /** What each term is made of: its parents with one electron less, or its coupling chains. */
-export function parentageTable(entry, context) {
+export function parentageTable(entry, context, answer) {
   const rows = termRows(entry).flatMap((row) => (row.parents ?? []).map((parent) => ({ ...row, parent })));
   if (rows.length === 0) return null;
   return dataTable({
@@ -66,7 +68,7 @@ export function parentageTable(entry, context) {
     columns: [
       { name: "term", type: "text", value: (row) => richPlain(termRich(row)), rich: termRich },
       { name: "parent", type: "text", value: (row) => row.parent.text, rich: (row) => row.parent.rich },
-      { name: "weight", type: "number", kind: "exact", value: (row) => row.parent.weight },
+      { name: "weight", type: "number", kind: kindOf(answer, "terms.kinds.weight"), value: (row) => row.parent.weight },
     ],
     identify: (row) => termId(entry, row.term, row.index),
   });
@@ -96,31 +98,31 @@ export function levelsTable(entry, context, answer) {
       { name: "level", type: "text", value: (row) => row.label, rich: (row) => row.rich },
       { name: "J", type: "half", value: (row) => row.J },
       { name: "parity", type: "text", value: (row) => row.parity },
-      { name: "g_J", head: [{ sign: { runs: [{ text: "g" }, { down: "J" }], plain: "g_J", speech: "g J", latex: "$g_J$" } }], type: "number", kind: kindOf(answer, "levels.g") ?? rows[0]?.g_kind, value: (row) => row.g, reason: none },
-      { name: "mu_eff", head: [{ sign: { runs: [{ text: "μ" }, { down: "eff" }], plain: "mu_eff", speech: "mu effective", latex: "$\\mu_\\mathrm{eff}$" } }], unit: "mu_B", type: "number", kind: kindOf(answer, "levels.mu_eff") ?? rows[0]?.g_kind, value: (row) => row.mu_eff, reason: none },
+      { name: "g_J", head: [{ sign: { runs: [{ text: "g" }, { down: "J" }], plain: "g_J", speech: "g J", latex: "$g_J$" } }], type: "number", kind: kindOf(answer, "levels.g"), value: (row) => row.g, reason: none },
+      { name: "mu_eff", head: [{ sign: { runs: [{ text: "μ" }, { down: "eff" }], plain: "mu_eff", speech: "mu effective", latex: "$\\mu_\\mathrm{eff}$" } }], unit: "mu_B", type: "number", kind: kindOf(answer, "levels.mu_eff"), value: (row) => row.mu_eff, reason: none },
     ],
     identify: (row) => `level:${row.label}`,
   });
-  const missing = (entry.levels_total ?? rows.length) - rows.length;
-  return missing > 0 ? [table, element("p", { class: "note", text: `The first ${rows.length} of ${entry.levels_total} levels are listed; the table of levels by J counts them all.` })] : table;
+  const all = String(entry.n_levels) === String(rows.length);
+  return all ? table : [table, element("p", { class: "note", text: `The first ${rows.length} of ${entry.n_levels} levels are listed; the table of levels by J counts them all.` })];
 }
 
 /** How many levels have each J. */
 export function levelsByJTable(counts, caption, context, file) {
-  const rows = Object.entries(counts ?? {}).map(([J, count]) => ({ J, count: Number(count) })).sort((a, b) => halfValue(a.J) - halfValue(b.J));
+  const rows = Object.entries(counts ?? {}).map(([J, count]) => ({ J, count })).sort((a, b) => halfValue(a.J) - halfValue(b.J));
   return dataTable({
     caption, rows, context, file,
     columns: [
       { name: "J", type: "half", value: (row) => row.J },
       { name: "levels", type: "number", value: (row) => row.count },
-      { name: "states", type: "number", value: (row) => row.count * (2 * halfValue(row.J) + 1) },
+      { name: "states", type: "number", value: (row) => (typeof row.count === "number" ? row.count * (2 * halfValue(row.J) + 1) : String(BigInt(row.count) * BigInt(2 * halfValue(row.J) + 1))) },
     ],
   });
 }
 
 /** The jj distributions of the electrons over nlj. */
 export function jjTable(entry, context) {
-  const sum = (levels) => Object.entries(levels).sort(([a], [b]) => halfValue(a) - halfValue(b)).map(([J, count]) => (Number(count) === 1 ? J : `${J} (${count}×)`)).join(", ");
+  const sum = (levels) => Object.entries(levels).sort(([a], [b]) => halfValue(a) - halfValue(b)).map(([J, count]) => (count === 1 ? J : `${J} (${count}×)`)).join(", ");
   return dataTable({
     caption: [...captionOf(entry, "Levels of "), " in jj coupling"], rows: entry.jj, context, file: `jj ${entry.configuration.text}`,
     columns: [
@@ -147,12 +149,12 @@ export function jKTable(entry, context) {
 /** How the terms are read off the grid: each takes one state from every cell of its block. */
 export function readOffTable(entry, context) {
   const rows = [];
-  let left = typeof entry.states === "number" ? entry.states : null;
+  let left = BigInt(entry.states);
   const terms = [...(entry.terms ?? [])].sort((a, b) => b.multiplicity - a.multiplicity || b.L - a.L);
   for (const term of terms) {
     const each = term.multiplicity * (2 * term.L + 1);
-    left = left === null ? null : left - each * term.times;
-    rows.push({ ...term, index: null, each, left });
+    left -= BigInt(each) * BigInt(term.times);
+    rows.push({ ...term, index: null, each, left: countValue(left) });
   }
   return dataTable({
     caption: captionOf(entry, "Terms read off the grid of "), rows, context, file: `read-off ${entry.configuration.text}`,
@@ -162,7 +164,7 @@ export function readOffTable(entry, context) {
       { name: "term", type: "text", value: (row) => row.term, rich: termRich },
       { name: "times", type: "number", value: (row) => row.times },
       { name: "states of one", type: "number", value: (row) => row.each },
-      { name: "states left", type: "number", value: (row) => row.left, reason: "too many states to count here" },
+      { name: "states left", type: "number", value: (row) => row.left },
     ],
     identify: (row) => termId(entry, row.term, 1),
   });
@@ -176,7 +178,12 @@ export function gridTable(entry, context) {
     rows: grid.M_L.map((M_L, r) => ({ M_L, counts: grid.counts[r] })),
     columns: [
       { name: "M_L", type: "number", value: (row) => Number(row.M_L) },
-      ...grid.M_S.map((M_S, c) => ({ name: `M_S ${M_S.replace("-", "\u2212")}`, type: "number", value: (row) => Number(row.counts[c]) })),
+      ...grid.M_S.map((M_S, c) => ({ name: `M_S ${M_S.replace("-", "\u2212")}`, type: "number", value: (row) => row.counts[c] })),
     ],
   });
+}
+
+// Counts above 2⁵³ are text, as the core writes them.
+function countValue(count) {
+  return count <= BigInt(Number.MAX_SAFE_INTEGER) ? Number(count) : String(count);
 }
