@@ -220,7 +220,10 @@ impl Shell {
             return None;
         }
         let passed = (determinant & (from - 1)).count_ones() + (without & (to - 1)).count_ones();
-        Some((if passed.is_multiple_of(2) { 1.0 } else { -1.0 }, without | to))
+        Some((
+            if passed.is_multiple_of(2) { 1.0 } else { -1.0 },
+            without | to,
+        ))
     }
 
     /// Matrix of Σ amplitude(m → m′, same or other spin) a†a from one sector to another.

@@ -25,7 +25,11 @@ pub fn vector_json(name: &str) -> serde_json::Value {
 
 /// |a − b| / |b|, or |a − b| where b is zero.
 pub fn relative_error(a: f64, b: f64) -> f64 {
-    if b == 0.0 { (a - b).abs() } else { ((a - b) / b).abs() }
+    if b == 0.0 {
+        (a - b).abs()
+    } else {
+        ((a - b) / b).abs()
+    }
 }
 
 /// One line of the validation report.
@@ -53,20 +57,28 @@ static WRITING: Mutex<()> = Mutex::new(());
 pub fn report(name: &str, row: Row) {
     let (worst, tolerance, quantity) = (row.worst, row.tolerance, row.quantity.clone());
     {
-        let _guard = WRITING.lock().unwrap_or_else(|poisoned| poisoned.into_inner());
+        let _guard = WRITING
+            .lock()
+            .unwrap_or_else(|poisoned| poisoned.into_inner());
         let parts = folder().join("reports").join("parts");
         fs::create_dir_all(&parts).expect("the report's folder can be made");
         let text = serde_json::to_string_pretty(&row).expect("a row is plain data");
-        fs::write(parts.join(format!("{name}.json")), text + "\n").expect("the report can be written");
+        fs::write(parts.join(format!("{name}.json")), text + "\n")
+            .expect("the report can be written");
         assemble(&parts);
     }
     assert!(row.cases > 0, "{quantity}: no case was checked");
-    assert!(worst <= tolerance, "{quantity}: worst {worst:e}, allowed {tolerance:e}");
+    assert!(
+        worst <= tolerance,
+        "{quantity}: worst {worst:e}, allowed {tolerance:e}"
+    );
 }
 
 fn assemble(parts: &Path) {
-    let mut names: Vec<PathBuf> =
-        fs::read_dir(parts).expect("the parts are there").filter_map(|entry| Some(entry.ok()?.path())).collect();
+    let mut names: Vec<PathBuf> = fs::read_dir(parts)
+        .expect("the parts are there")
+        .filter_map(|entry| Some(entry.ok()?.path()))
+        .collect();
     names.sort();
     let mut text = String::from(
         "# Validation\n\nWritten by the native tests from what they measured; do not edit.\n\n\

@@ -1,1 +1,256 @@
-//! The sheet: the document, its questions and their answers.
+//! The sheet: the one document a person writes, its questions, its answers, its record.
+//!
+//! Every answer is a pure function of the sheet and the same bytes on every computer. The doors
+//! (`web`, the command `rungline`) call the functions of this module and translate nothing but
+//! their own calling conventions.
+
+mod answer;
+mod chart;
+mod document;
+mod formula;
+mod ground;
+mod json;
+mod lines;
+mod reading;
+mod record;
+mod rich;
+mod schema;
+mod shells;
+mod splitting;
+mod states;
+
+use serde::Serialize;
+
+use crate::problem::Problem;
+
+pub use chart::chart;
+pub use document::Document;
+pub use json::{Json, MAX_BYTES};
+pub use reading::reading;
+pub use record::{Recheck, recheck_text};
+
+/// The program's version, as records carry it.
+pub const VERSION: &str = env!("CARGO_PKG_VERSION");
+
+/// A question that a sheet can ask.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Question {
+    /// Which states does the configuration allow, and which lies lowest?
+    States,
+    /// Which lines are allowed, and how strong are they beside each other?
+    Lines,
+    /// How does the line split in the field?
+    Splitting,
+}
+
+impl Question {
+    /// All questions in the order of work.
+    pub const ALL: [Question; 3] = [Question::States, Question::Lines, Question::Splitting];
+
+    /// Its key among the answers.
+    pub fn name(self) -> &'static str {
+        match self {
+            Question::States => "states",
+            Question::Lines => "lines",
+            Question::Splitting => "splitting",
+        }
+    }
+
+    fn named(name: &str) -> Option<Question> {
+        Question::ALL.into_iter().find(|q| q.name() == name)
+    }
+}
+
+/// The answer of a checked sheet to one question, as JSON text.
+///
+/// # Errors
+/// What the question lacks, as a fault.
+pub fn answer(document: &Document, question: Question) -> Result<String, Vec<Problem>> {
+    let text = match question {
+        Question::States => states::answer(document).map(|a| to_json(&a)),
+        Question::Lines => lines::answer(document).map(|a| to_json(&a)),
+        Question::Splitting => splitting::answer(document).map(|a| to_json(&a)),
+    };
+    text.map_err(|problem| vec![problem])
+}
+
+/// Every answer that the document allows, or the one asked for: `{"states":{…}}`.
+fn answers(document: &Document, question: Option<Question>) -> Result<String, Vec<Problem>> {
+    if !document.faults.is_empty() {
+        return Err(document.faults.clone());
+    }
+    let asked = match question {
+        Some(question) => vec![question],
+        None => Question::ALL
+            .into_iter()
+            .filter(|q| document.lacks(*q).is_none())
+            .collect(),
+    };
+    if asked.is_empty() {
+        // What the first question lacks is the most useful thing to say.
+        return answer(document, Question::States);
+    }
+    let mut parts = Vec::new();
+    for question in asked {
+        parts.push(format!(
+            "\"{}\":{}",
+            question.name(),
+            answer(document, question)?
+        ));
+    }
+    Ok(format!("{{{}}}", parts.join(",")))
+}
+
+/// The line that `rungline answer` prints for the text of a sheet.
+///
+/// # Errors
+/// Every fault of the text, in the order of the input.
+pub fn answer_text(text: &str, question: Option<Question>) -> Result<String, Vec<Problem>> {
+    let json = json::read(text).map_err(|p| vec![p])?;
+    let json = record::sheet_of(json);
+    let document = Document::read(&json);
+    Ok(format!(
+        "{{\"rungline\":1,\"answers\":{}}}",
+        answers(&document, question)?
+    ))
+}
+
+/// Whether a text is one complete JSON value.
+pub fn is_json(text: &str) -> bool {
+    json::read(text).is_ok()
+}
+
+/// The answer to one question for the page: `{"answer":{…}}` or `{"faults":[…]}`.
+pub fn answer_message(sheet: &Json, question: &str) -> String {
+    let result = match Question::named(question) {
+        Some(question) => {
+            let document = Document::read(sheet);
+            if document.faults.is_empty() {
+                answer(&document, question)
+            } else {
+                Err(document.faults)
+            }
+        }
+        None => Err(vec![
+            Problem::new(
+                "unknown-question",
+                format!("There is no question \"{question}\"."),
+                0,
+                0,
+            )
+            .bound("The questions are states, lines and splitting."),
+        ]),
+    };
+    match result {
+        Ok(text) => format!("{{\"answer\":{text}}}"),
+        Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
+    }
+}
+
+/// Seconds and megabytes that an answer will take, for the page to decide whether to ask first.
+pub fn estimate_message(sheet: &Json, question: &str) -> String {
+    #[derive(Serialize)]
+    struct Estimate {
+        seconds: f64,
+        megabytes: f64,
+    }
+    let document = Document::read(sheet);
+    let rows = match Question::named(question) {
+        Some(Question::States) => states::rows(&document),
+        Some(Question::Lines) => lines::rows(&document),
+        Some(Question::Splitting) | None => 0.0,
+    };
+    // Measured in a browser: about 2 µs and 600 bytes for each row of an answer.
+    to_json(&Estimate {
+        seconds: 0.002 + rows * 2e-6,
+        megabytes: 4.0 + rows * 6e-4,
+    })
+}
+
+/// The version, the year of the constants and the questions of this build.
+pub fn about() -> String {
+    #[derive(Serialize)]
+    struct About {
+        version: &'static str,
+        codata: u16,
+        questions: Vec<&'static str>,
+    }
+    to_json(&About {
+        version: VERSION,
+        codata: crate::constants::CODATA_YEAR,
+        questions: Question::ALL.iter().map(|q| q.name()).collect(),
+    })
+}
+
+/// What a file holds: `{"sheet":…,"record":null|{…}}` or `{"faults":[…]}`.
+///
+/// A sheet with faults still opens: its fields show them.
+pub fn open_message(text: &str) -> String {
+    #[derive(Serialize)]
+    struct Opened<'a> {
+        sheet: &'a Json,
+        record: Option<Recheck>,
+    }
+    match json::read(text) {
+        Err(problem) => format!("{{\"faults\":{}}}", faults_json(&[problem])),
+        Ok(json) => match record::open(&json) {
+            Ok((sheet, record)) => to_json(&Opened { sheet, record }),
+            Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
+        },
+    }
+}
+
+/// The record of a sheet for the page: `{"record":"text"}` or `{"faults":[…]}`.
+pub fn record_message(sheet: &Json) -> String {
+    #[derive(Serialize)]
+    struct Recorded {
+        record: String,
+    }
+    match record::record(sheet) {
+        Ok(record) => to_json(&Recorded { record }),
+        Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
+    }
+}
+
+/// A sheet as its file holds it: indented JSON that a person can read and edit.
+pub fn pretty(sheet: &Json) -> String {
+    let mut text = serde_json::to_string_pretty(sheet).unwrap_or_default();
+    text.push('\n');
+    text
+}
+
+/// Faults as a JSON array.
+pub fn faults_json(faults: &[Problem]) -> String {
+    to_json(&faults)
+}
+
+/// The line of a stream that stands in a faulted sheet's place.
+pub fn fault_line(faults: &[Problem]) -> String {
+    format!("{{\"fault\":{}}}", faults_json(faults))
+}
+
+/// A fault as the command prints it.
+pub fn fault_words(fault: &Problem) -> String {
+    let mut text = String::new();
+    if !fault.path.is_empty() {
+        text.push_str(&fault.path);
+        text.push(' ');
+    }
+    if fault.end > fault.start {
+        text.push_str(&format!("({}–{}) ", fault.start, fault.end));
+    }
+    text.push_str(&fault.message);
+    if let Some(bound) = &fault.bound {
+        text.push(' ');
+        text.push_str(bound);
+    }
+    for way in &fault.ways {
+        text.push_str(&format!(" [{}]", way.label));
+    }
+    text
+}
+
+/// JSON text of a value that serialises without fail: no maps with odd keys, no foreign types.
+fn to_json<T: Serialize + ?Sized>(value: &T) -> String {
+    serde_json::to_string(value).unwrap_or_default()
+}

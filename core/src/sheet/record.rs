@@ -1,0 +1,169 @@
+//! The record: a sheet with its answers, recomputed and compared by anyone.
+
+use serde::Serialize;
+
+use crate::problem::Problem;
+
+use super::document::Document;
+use super::json::{self, Json};
+use super::{Question, VERSION, answers, to_json};
+
+/// What rechecking a record found.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+pub struct Recheck {
+    reproduces: bool,
+    /// The version that wrote the record.
+    version: Option<String>,
+    /// The version that rechecked it.
+    rechecked_by: &'static str,
+    moved: Vec<Moved>,
+}
+
+/// One value that is not what the record says.
+#[derive(Clone, Debug, PartialEq, Serialize)]
+struct Moved {
+    /// JSON pointer into the record's answers.
+    name: String,
+    was: Option<Json>,
+    now: Option<Json>,
+}
+
+impl Recheck {
+    /// Whether every value came out the same.
+    pub fn reproduces(&self) -> bool {
+        self.reproduces
+    }
+
+    /// As the command prints it.
+    pub fn to_json(&self) -> String {
+        to_json(self)
+    }
+}
+
+/// Rechecks the text of a record.
+///
+/// # Errors
+/// The faults of the text, or that it holds no record.
+pub fn recheck_text(text: &str) -> Result<Recheck, Vec<Problem>> {
+    let json = json::read(text).map_err(|p| vec![p])?;
+    match open(&json)? {
+        (_, Some(recheck)) => Ok(recheck),
+        (_, None) => Err(vec![
+            Problem::new(
+                "not-a-record",
+                "This file is a sheet, not a record: it has no answers.",
+                0,
+                0,
+            )
+            .bound("A record has the keys \"sheet\" and \"answers\"."),
+        ]),
+    }
+}
+
+/// The sheet of a file, and the recheck if the file is a record.
+pub fn open(json: &Json) -> Result<(&Json, Option<Recheck>), Vec<Problem>> {
+    let (Some(sheet), Some(recorded)) = (json.get("sheet"), json.get("answers")) else {
+        return Ok((json, None));
+    };
+    let document = Document::read(sheet);
+    if !document.faults.is_empty() {
+        let faults = document.faults.iter().cloned().map(|mut fault| {
+            fault.path = format!("/sheet{}", fault.path);
+            fault
+        });
+        return Err(faults.collect());
+    }
+    let mut moved = Vec::new();
+    if let Json::Object(entries) = recorded {
+        for (name, was) in entries {
+            let now = Question::named(name)
+                .and_then(|question| super::answer(&document, question).ok())
+                .and_then(|text| json::read_own(&text));
+            compare(&format!("/{name}"), Some(was), now.as_ref(), &mut moved);
+        }
+    }
+    let version = json
+        .get("version")
+        .and_then(Json::as_text)
+        .map(str::to_owned);
+    Ok((
+        sheet,
+        Some(Recheck {
+            reproduces: moved.is_empty(),
+            version,
+            rechecked_by: VERSION,
+            moved,
+        }),
+    ))
+}
+
+/// The sheet that a value holds: itself, or the one inside a record.
+pub fn sheet_of(json: Json) -> Json {
+    match (json.get("sheet"), json.get("answers")) {
+        (Some(sheet), Some(_)) => sheet.clone(),
+        _ => json,
+    }
+}
+
+fn compare(name: &str, was: Option<&Json>, now: Option<&Json>, moved: &mut Vec<Moved>) {
+    match (was, now) {
+        (Some(Json::Object(a)), Some(Json::Object(b))) => {
+            for (key, value) in a {
+                let other = b.iter().find(|(k, _)| k == key).map(|(_, v)| v);
+                compare(
+                    &super::schema::pointer(name, key),
+                    Some(value),
+                    other,
+                    moved,
+                );
+            }
+            for (key, value) in b.iter().filter(|(key, _)| !a.iter().any(|(k, _)| k == key)) {
+                compare(&super::schema::pointer(name, key), None, Some(value), moved);
+            }
+        }
+        (Some(Json::List(a)), Some(Json::List(b))) => {
+            for index in 0..a.len().max(b.len()) {
+                compare(
+                    &format!("{name}/{index}"),
+                    a.get(index),
+                    b.get(index),
+                    moved,
+                );
+            }
+        }
+        (was, now) if was == now => {}
+        (was, now) => moved.push(Moved {
+            name: name.to_owned(),
+            was: was.cloned(),
+            now: now.cloned(),
+        }),
+    }
+}
+
+/// The text of the record of a sheet: the sheet indented for a person, each answer on a line.
+pub fn record(sheet: &Json) -> Result<String, Vec<Problem>> {
+    let document = Document::read(sheet);
+    let answers = answers(&document, None)?;
+    let mut cautions = Vec::new();
+    if let Some(Json::Object(entries)) = json::read_own(&answers) {
+        for (_, answer) in entries {
+            if let Some(Json::List(texts)) = answer.get("cautions") {
+                for caution in texts.iter().filter_map(Json::as_text) {
+                    if !cautions.iter().any(|c| c == caution) {
+                        cautions.push(caution.to_owned());
+                    }
+                }
+            }
+        }
+    }
+    let indented = super::pretty(sheet).trim_end().replace('\n', "\n  ");
+    let parts = [
+        "\"rungline\": 1".to_owned(),
+        format!("\"version\": {}", to_json(VERSION)),
+        format!("\"codata\": {}", crate::constants::CODATA_YEAR),
+        format!("\"sheet\": {indented}"),
+        format!("\"cautions\": {}", to_json(&cautions)),
+        format!("\"answers\": {answers}"),
+    ];
+    Ok(format!("{{\n  {}\n}}\n", parts.join(",\n  ")))
+}

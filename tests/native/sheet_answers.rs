@@ -1,0 +1,290 @@
+//! Sheets through the whole core: keys that outside checks read, examples, records, streams.
+
+use std::io::Write;
+use std::process::{Command, Stdio};
+
+use rungline_core::sheet::{self, Question};
+use serde_json::{Value, json};
+
+fn answer(sheet: Value, question: &str) -> Value {
+    let json = serde_json::from_value(sheet).unwrap();
+    let message: Value = serde_json::from_str(&sheet::answer_message(&json, question)).unwrap();
+    assert!(message.get("faults").is_none(), "{message}");
+    message["answer"].clone()
+}
+
+fn examples() -> Vec<(String, String)> {
+    let mut files: Vec<_> = std::fs::read_dir(rungline_tests::folder().join("examples"))
+        .unwrap()
+        .map(|entry| entry.unwrap().path())
+        .collect();
+    files.sort();
+    files
+        .into_iter()
+        .map(|p| (p.display().to_string(), std::fs::read_to_string(p).unwrap()))
+        .collect()
+}
+
+#[test]
+fn iron_has_the_keys_and_numbers_of_its_ground_configuration() {
+    // d6: 16 terms, 34 levels, 210 states (electron–hole twin of d4; any textbook). Ground level ⁵D₄:
+    // mendeleev 1.3.0 (MIT), as in the table that ships.
+    for configurations in [
+        json!([]),
+        json!(["3d6 4s2"]),
+        json!(["[Ar] 3d⁶4s²"]),
+        json!(["3d6.4s2"]),
+    ] {
+        let states = answer(
+            json!({"rungline": 1, "species": "iron", "configurations": configurations}),
+            "states",
+        );
+        assert_eq!(states["states"], 210);
+        assert_eq!(states["parity"], "even");
+        assert_eq!(states["n_terms"], 16);
+        assert_eq!(states["n_levels"], 34);
+        assert_eq!(states["terms"][0]["term"], "5D");
+        assert_eq!(states["terms"][0]["J"], json!(["0", "1", "2", "3", "4"]));
+        let by_j = states["levels_by_J"].as_object().unwrap();
+        assert_eq!(by_j.values().map(|n| n.as_u64().unwrap()).sum::<u64>(), 34);
+        let degeneracy = |j: &String| 2 * j.parse::<u64>().unwrap() + 1;
+        assert_eq!(
+            by_j.iter()
+                .map(|(j, n)| degeneracy(j) * n.as_u64().unwrap())
+                .sum::<u64>(),
+            210
+        );
+        assert_eq!(states["levels_by_J"], states["jj_levels_by_J"]);
+        let ground = &states["ground"];
+        assert_eq!(
+            (&ground["term"], &ground["J"], &ground["by"]),
+            (&json!("5D"), &json!("4"), &json!("measured"))
+        );
+        assert_eq!(ground["differs_from_hund"], false);
+        let shells = states["shells"].as_array().unwrap();
+        assert_eq!(
+            shells
+                .iter()
+                .map(|s| s["letter"].as_str().unwrap())
+                .collect::<String>(),
+            "KLMN"
+        );
+        assert_eq!(shells[2]["subshells"][2]["label"], "3d");
+        assert_eq!(shells[2]["subshells"][2]["electrons"], 6);
+        assert_eq!(shells[2]["subshells"][2]["capacity"], 10);
+    }
+}
+
+#[test]
+fn cerium_is_observed_where_hund_names_another_term() {
+    // hund_exceptions.csv: Ce I 4f 5d 6s2, tabulated ¹G*₄, Hund ³H*.
+    let states = answer(json!({"rungline": 1, "species": "Ce"}), "states");
+    assert_eq!(states["ground"]["term"], "1G");
+    assert_eq!(states["ground"]["differs_from_hund"], true);
+    assert_eq!(states["ground"]["hund"]["term"], "3H");
+}
+
+#[test]
+fn counts_beyond_doubles_are_text() {
+    let states = answer(
+        json!({"rungline": 1, "species": "*", "configurations": ["4f7 5f7 5d5 6d5 4p3 5p3 6p3 7p3"]}),
+        "states",
+    );
+    assert!(states["states"].is_string(), "{}", states["states"]);
+}
+
+#[test]
+fn the_sodium_lines_split_into_four_and_six() {
+    // Common practice, no source: D1 shows 4 components, D2 shows 6.
+    for (j, components) in [("1/2", 4), ("3/2", 6)] {
+        let splitting = answer(
+            json!({"rungline": 1, "species": "Na I", "configurations": ["3s", "3p"],
+                   "line": {"upper": format!("3p 2P{j}"), "lower": "3s 2S1/2", "wavelength": "589 nm"},
+                   "field": {"flux_density": "0.5 T", "view": "across"}}),
+            "splitting",
+        );
+        let rows = splitting["components"].as_array().unwrap();
+        assert_eq!(rows.len(), components);
+        for key in ["strength", "seen", "along", "across"] {
+            let total: f64 = rows.iter().map(|row| row[key].as_f64().unwrap()).sum();
+            assert!((total - 1.0).abs() < 1e-14, "{key} adds up to {total}");
+        }
+        let balance: f64 = rows
+            .iter()
+            .map(|row| row["offset"].as_f64().unwrap() * row["strength"].as_f64().unwrap())
+            .sum();
+        assert!(balance.abs() < 1e-14, "the pattern keeps its centre");
+    }
+}
+
+#[test]
+fn pairs_are_allowed_or_refused_and_never_both() {
+    let lines = answer(
+        json!({"rungline": 1, "species": "C", "configurations": ["2p2", "2p 3s"]}),
+        "lines",
+    );
+    let key = |row: &Value| format!("{} {}", row["upper"], row["lower"]);
+    let allowed: std::collections::BTreeSet<String> =
+        lines["lines"].as_array().unwrap().iter().map(key).collect();
+    let refused: std::collections::BTreeSet<String> = lines["refused"]
+        .as_array()
+        .unwrap()
+        .iter()
+        .map(key)
+        .collect();
+    assert!(allowed.is_disjoint(&refused));
+    // 5 levels and 4 levels: 9 · 8 / 2 pairs.
+    assert_eq!(allowed.len() + refused.len(), 36);
+    for multiplet in lines["multiplets"].as_array().unwrap() {
+        assert!(
+            (multiplet["sum"].as_f64().unwrap() - 1.0).abs() < 1e-13,
+            "{multiplet}"
+        );
+    }
+}
+
+#[test]
+fn every_example_is_answered_and_its_record_reproduces() {
+    let examples = examples();
+    assert!(examples.len() > 10, "a first visit and ten more");
+    for (name, text) in examples {
+        let line =
+            sheet::answer_text(&text, None).unwrap_or_else(|faults| panic!("{name}: {faults:?}"));
+        assert!(
+            !line.contains("NaN") && !line.contains("null,null,null,null,null,null,null"),
+            "{name}"
+        );
+        let sheet = serde_json::from_str(&text).unwrap();
+        let message: Value = serde_json::from_str(&sheet::record_message(&sheet)).unwrap();
+        let record = message["record"]
+            .as_str()
+            .unwrap_or_else(|| panic!("{name}: {message}"));
+        assert!(sheet::recheck_text(record).unwrap().reproduces(), "{name}");
+        assert!(
+            text.contains("Invented scenario"),
+            "{name} says that it is invented"
+        );
+    }
+}
+
+#[test]
+fn a_record_that_was_tampered_with_names_what_moved() {
+    let sheet = serde_json::from_value(json!({"rungline": 1, "species": "Fe"})).unwrap();
+    let message: Value = serde_json::from_str(&sheet::record_message(&sheet)).unwrap();
+    let record = message["record"]
+        .as_str()
+        .unwrap()
+        .replace("\"n_terms\":16", "\"n_terms\":17");
+    let check: Value =
+        serde_json::from_str(&sheet::recheck_text(&record).unwrap().to_json()).unwrap();
+    assert_eq!(check["reproduces"], false);
+    assert!(
+        check["moved"]
+            .as_array()
+            .unwrap()
+            .iter()
+            .any(|m| m["name"] == "/states/n_terms" && m["was"] == 17 && m["now"] == 16)
+    );
+}
+
+fn command(arguments: &[&str], input: &str) -> (i32, String, String) {
+    let binary = std::env::var("RUNGLINE_BINARY")
+        .map(std::path::PathBuf::from)
+        .unwrap_or_else(|_| {
+            let status = Command::new(env!("CARGO"))
+                .args([
+                    "build",
+                    "--quiet",
+                    "--package",
+                    "rungline-core",
+                    "--bin",
+                    "rungline",
+                ])
+                .status()
+                .unwrap();
+            assert!(status.success(), "the command builds");
+            let test = std::env::current_exe().unwrap();
+            test.parent().unwrap().parent().unwrap().join("rungline")
+        });
+    let mut child = Command::new(binary)
+        .args(arguments)
+        .stdin(Stdio::piped())
+        .stdout(Stdio::piped())
+        .stderr(Stdio::piped())
+        .spawn()
+        .unwrap();
+    // A command that refuses its arguments ends without reading.
+    let _ = child.stdin.take().unwrap().write_all(input.as_bytes());
+    let output = child.wait_with_output().unwrap();
+    let text = |bytes: Vec<u8>| String::from_utf8(bytes).unwrap();
+    (
+        output.status.code().unwrap(),
+        text(output.stdout),
+        text(output.stderr),
+    )
+}
+
+#[test]
+fn the_command_answers_streams_faults_and_records() {
+    let good = r#"{"rungline":1,"species":"Fe"}"#;
+    let bad = r#"{"rungline":1,"species":"Xx"}"#;
+    let (code, out, err) = command(&["answer", "-", "--question", "states"], good);
+    assert_eq!((code, err.as_str()), (0, ""));
+    assert!(out.starts_with(r#"{"rungline":1,"answers":{"states":{"#));
+    assert_eq!(out.lines().count(), 1);
+
+    let (code, out, err) = command(&["answer", "-", "--json"], bad);
+    assert_eq!((code, out.as_str()), (2, ""), "a fault writes nothing");
+    let faults: Value = serde_json::from_str(&err).unwrap();
+    assert_eq!(faults[0]["path"], "/species");
+
+    let (code, out, _) = command(&["answer", "-"], &format!("{good}\n{bad}\n{good}\n"));
+    assert_eq!(code, 2);
+    let kinds: Vec<bool> = out
+        .lines()
+        .map(|line| line.starts_with("{\"fault\":"))
+        .collect();
+    assert_eq!(kinds, [false, true, false]);
+
+    let (code, out, _) = command(
+        &["answer", "-"],
+        &format!("{{\n{}\n}}\n", r#""rungline":1,"species":"Fe""#),
+    );
+    assert_eq!(
+        (code, out.lines().count()),
+        (0, 1),
+        "a sheet may span lines"
+    );
+
+    let (code, _, err) = command(&["answer", "-", "--question", "colour"], good);
+    assert_eq!(code, 2);
+    assert!(err.contains("colour"));
+
+    let folder = std::env::temp_dir().join(format!("rungline-{}", std::process::id()));
+    std::fs::create_dir_all(&folder).unwrap();
+    let record = sheet::record_message(&serde_json::from_str(good).unwrap());
+    let record: Value = serde_json::from_str(&record).unwrap();
+    let (kept, moved) = (folder.join("kept.json"), folder.join("moved.json"));
+    std::fs::write(&kept, record["record"].as_str().unwrap()).unwrap();
+    std::fs::write(
+        &moved,
+        record["record"]
+            .as_str()
+            .unwrap()
+            .replace("\"n_levels\":34", "\"n_levels\":35"),
+    )
+    .unwrap();
+    assert_eq!(command(&["recheck", kept.to_str().unwrap()], "").0, 0);
+    let (code, out, _) = command(&["recheck", moved.to_str().unwrap()], "");
+    assert_eq!(code, 1);
+    assert!(out.contains("/states/n_levels"));
+    std::fs::remove_dir_all(folder).unwrap();
+}
+
+#[test]
+fn questions_keep_their_names() {
+    assert_eq!(
+        Question::ALL.map(Question::name),
+        ["states", "lines", "splitting"]
+    );
+}
