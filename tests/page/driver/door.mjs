@@ -136,7 +136,14 @@ export class Door {
   async until(work, ...parameters) {
     const begun = performance.now();
     for (;;) {
-      const value = await this.page.evaluate(work, ...parameters);
+      // A node does not travel from every browser: that it is there is what counts.
+      const value = await this.page.evaluateHandle(work, ...parameters)
+        .then((handle) => handle.evaluate((found) => (found instanceof Node ? true : found)))
+        .catch((error) => {
+          // While the page loads again there is nowhere to run it: the next turn finds the new page.
+          if (!/context|navigat|frame|realm/i.test(error.message)) throw error;
+          return null;
+        });
       if (value) return value;
       if (performance.now() - begun > PATIENCE_MS) {
         const seen = await this.page.evaluate(() => document.body.innerText.slice(0, 1500));
