@@ -87,6 +87,12 @@ function systemPreferences({ dark = false, reducedMotion = false, forcedColors =
   };
 }
 
+// The place comes along: an error that is logged as a thing has no words everywhere.
+function wordsOf(message) {
+  const { url = "", lineNumber = 0 } = message.location() ?? {};
+  return `${message.text()} (${url.slice(0, 80)}:${lineNumber})`;
+}
+
 /** One fresh profile with one page of Rungline open in it. */
 export class Door {
   constructor(browser, door, context, options) {
@@ -105,7 +111,7 @@ export class Door {
     this.page = tab;
     tab.on("pageerror", (error) => this.troubles.push(String(error)));
     tab.on("console", (message) => {
-      if (message.type() === "error") this.troubles.push(message.text());
+      if (message.type() === "error") this.troubles.push(wordsOf(message));
     });
     await tab.setViewport({ width: Math.round(width / zoom), height: Math.round(height / zoom), deviceScaleFactor: zoom });
     if (this.browser === "chromium") {
