@@ -6,12 +6,14 @@
 //! (Racah, Phys. Rev. 62, 438 (1942), eqs. 44; Cowan 1981, §11-5).
 
 use super::selection::Jump;
+use super::shell_operator::{Own, ShellOperator};
 use super::{Multipole, Rule};
 use crate::angular::wigner_6j;
 use crate::configuration::{Orbital, Subshell};
 use crate::terms::Term;
 use crate::terms::chains::Chain;
 use crate::terms::seniority::Seniorities;
+use std::sync::OnceLock;
 
 /// The shells of two configurations.
 #[derive(Clone, Debug)]
@@ -20,19 +22,26 @@ pub(super) struct Shells {
     orbitals: Vec<Orbital>,
     /// Half-filled shells, where the two configurations are one.
     half_filled: Vec<Seniorities>,
+    /// The shells that may be active: of the one configuration, or the two between which an electron
+    /// moves, each with that electron.
+    may_act: Vec<Subshell>,
+    /// Their parentage, made when it is first asked for.
+    operators: OnceLock<Vec<ShellOperator>>,
 }
 
 impl Shells {
-    /// `common` are the subshells if the two configurations are one. A half-filled shell too large
-    /// to be counted is left without its rule.
-    pub(super) fn new(orbitals: Vec<Orbital>, common: &[Subshell]) -> Self {
+    /// `common` are the subshells if the two configurations are one, `active` those between which
+    /// an electron moves, each with it. A shell too large to be counted is left without its rules.
+    pub(super) fn new(orbitals: Vec<Orbital>, common: &[Subshell], active: &[Subshell]) -> Self {
         let half = common
             .iter()
             .filter(|s| 2 * s.electrons() == s.orbital().capacity());
-        let half_filled = half.filter_map(|&s| Seniorities::of(s).ok()).collect();
+        let open = common.iter().filter(|s| s.is_open()).chain(active);
         Shells {
             orbitals,
-            half_filled,
+            half_filled: half.filter_map(|&s| Seniorities::of(s).ok()).collect(),
+            may_act: open.copied().collect(),
+            operators: OnceLock::new(),
         }
     }
 
@@ -69,6 +78,14 @@ impl Shells {
                         Change::Orbital(rank)
                     },
                 })
+                .or_else(|| {
+                    let shell = self.without_parent(from, &upper, &lower)?;
+                    self.parent_rule(shell, &upper, &lower)
+                })
+                .or_else(|| {
+                    let shell = self.without_parent(to, &lower, &upper)?;
+                    self.parent_rule(shell, &upper, &lower)
+                })
             }
             Jump::None => {
                 // Any one open shell may be the active one; refused only if none of them can be.
@@ -86,7 +103,10 @@ impl Shells {
                             Change::Orbital(rank)
                         },
                     });
-                    match refused.or_else(|| self.seniority_rule(active, &upper, &lower)) {
+                    let refused = refused
+                        .or_else(|| self.seniority_rule(active, &upper, &lower))
+                        .or_else(|| self.operator_rule(active, rank, &upper, &lower));
+                    match refused {
                         None => return None,
                         refused => refusal = refusal.or(refused),
                     }
@@ -112,6 +132,54 @@ impl Shells {
             shell: half_filled.shell(),
             upper,
             lower,
+        })
+    }
+
+    fn operator(&self, orbital: Orbital) -> Option<&ShellOperator> {
+        let made = || {
+            self.may_act
+                .iter()
+                .filter_map(|&s| ShellOperator::of(s))
+                .collect()
+        };
+        let operators: &Vec<ShellOperator> = self.operators.get_or_init(made);
+        operators.iter().find(|o| o.shell().orbital() == orbital)
+    }
+
+    /// The shell, if its term with the electron, in `with`, does not have that without it as a parent.
+    fn without_parent(
+        &self,
+        orbital: Orbital,
+        with: &[Place],
+        without: &[Place],
+    ) -> Option<Subshell> {
+        let operator = self.operator(orbital)?;
+        let (child, parent) = (own(with, orbital)?, own(without, orbital)?);
+        (!operator.has_parent(child, parent)).then_some(operator.shell())
+    }
+
+    fn parent_rule(&self, shell: Subshell, upper: &[Place], lower: &[Place]) -> Option<Rule> {
+        Some(Rule::Parent {
+            shell,
+            upper: own(upper, shell.orbital())?.term,
+            lower: own(lower, shell.orbital())?.term,
+        })
+    }
+
+    /// The operator on the one active shell links its two terms.
+    fn operator_rule(
+        &self,
+        orbital: Orbital,
+        rank: u32,
+        upper: &[Place],
+        lower: &[Place],
+    ) -> Option<Rule> {
+        let operator = self.operator(orbital)?;
+        let (above, below) = (own(upper, orbital)?, own(lower, orbital)?);
+        (!operator.links(above, below, rank)).then_some(Rule::Unlinked {
+            shell: operator.shell(),
+            upper: above.term,
+            lower: below.term,
         })
     }
 
@@ -151,6 +219,15 @@ struct Place {
     before: Term,
     /// What it and they couple to.
     coupled: Term,
+}
+
+/// The own term of one shell.
+fn own(places: &[Place], orbital: Orbital) -> Option<Own> {
+    let place = places.iter().find(|p| p.orbital == orbital)?;
+    Some(Own {
+        term: place.own,
+        index: place.own_index,
+    })
 }
 
 /// What acts at one shell.

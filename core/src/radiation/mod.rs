@@ -4,6 +4,7 @@ mod chain_rules;
 mod multipole;
 mod rule;
 pub mod selection;
+mod shell_operator;
 pub mod strengths;
 
 pub use multipole::Multipole;

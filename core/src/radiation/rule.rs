@@ -122,6 +122,15 @@ pub enum Rule {
         /// J of the lower level.
         lower: TwiceJ,
     },
+    /// The operator has no matrix element between two terms of the one active shell.
+    Unlinked {
+        /// The active shell.
+        shell: Subshell,
+        /// Its term in the upper level.
+        upper: Term,
+        /// Its term in the lower level.
+        lower: Term,
+    },
     /// In a half-filled shell an E2 line changes the seniority by two.
     Seniority {
         /// The shell.
@@ -160,6 +169,7 @@ impl Rule {
             Rule::Spectator { .. } => "spectator",
             Rule::Parent { .. } => "parent",
             Rule::Vanishing { .. } => "vanishing",
+            Rule::Unlinked { .. } => "unlinked",
             Rule::Seniority { .. } => "seniority",
             Rule::Coupling { .. } => "coupling",
         }
@@ -332,6 +342,17 @@ impl fmt::Display for Rule {
                 write!(
                     f,
                     "the 6j symbol of J = {upper} and {lower} is zero, so that this {multipole} line has no strength in pure LS coupling"
+                )
+            }
+            Rule::Unlinked {
+                shell,
+                upper,
+                lower,
+            } => {
+                write!(
+                    f,
+                    "no electron of the {} shell links these terms {upper} and {lower} of it: the matrix element is zero",
+                    shell.orbital()
                 )
             }
             Rule::Seniority {

@@ -109,6 +109,15 @@ impl Between {
             )
             .bound("two configurations of the same atom or ion"));
         }
+        let shell =
+            |shells: &[Subshell], orbital| shells.iter().copied().find(|s| s.orbital() == orbital);
+        let active: Vec<Subshell> = match (left, jump) {
+            (1, (Some(from), Some(to))) => shell(upper, from)
+                .into_iter()
+                .chain(shell(lower, to))
+                .collect(),
+            _ => Vec::new(),
+        };
         Ok(Between {
             upper_is_odd: is_odd(upper),
             lower_is_odd: is_odd(lower),
@@ -120,6 +129,7 @@ impl Between {
             shells: Shells::new(
                 occupations.into_keys().collect(),
                 if left == 0 { upper } else { &[] },
+                &active,
             ),
         })
     }

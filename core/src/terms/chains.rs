@@ -49,7 +49,8 @@ pub struct Chains {
 }
 
 /// `3d6(5D) 4s 6D`, with more shells `3d5(6S) 4s (7S) 4p 8P`: a shell's own term follows it in brackets
-/// unless it holds one electron, the term coupled so far stands in brackets before the next shell.
+/// unless it holds one electron, the term coupled so far stands in brackets before the next shell. A
+/// single shell has its index at the end, `3d3 2D #2`.
 impl fmt::Display for Chain {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         for (i, link) in self.links.iter().enumerate() {
@@ -68,7 +69,15 @@ impl fmt::Display for Chain {
             }
         }
         let gap = if self.links.is_empty() { "" } else { " " };
-        write!(f, "{gap}{}", self.term)
+        write!(f, "{gap}{}", self.term)?;
+        match self.links.as_slice() {
+            [
+                Link {
+                    own_index: Some(k), ..
+                },
+            ] => write!(f, " #{k}"),
+            _ => Ok(()),
+        }
     }
 }
 

@@ -56,22 +56,32 @@ impl Seniorities {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::angular::equivalent::classify;
     use crate::configuration::Orbital;
 
     #[test]
-    fn seniorities_of_p3_and_d3() {
-        // Racah 1943 (from memory).
-        let shell =
-            |l, n| Seniorities::of(Subshell::new(Orbital::new(9, l).unwrap(), n).unwrap()).unwrap();
-        let term = |two_s, l| Term { two_s, l };
-        let p3 = shell(1, 3);
-        assert_eq!(p3.of_term(term(3, 0), 1), Some(3));
-        assert_eq!(p3.of_term(term(1, 1), 1), Some(1));
-        assert_eq!(p3.of_term(term(1, 2), 1), Some(3));
-        assert_eq!(p3.of_term(term(1, 2), 2), None);
-        let d7 = shell(2, 7);
-        assert_eq!(d7.of_term(term(1, 2), 1), Some(1));
-        assert_eq!(d7.of_term(term(1, 2), 2), Some(3));
-        assert_eq!(shell(2, 4).of_term(Term::SINGLET_S, 1), Some(0));
+    fn seniorities_agree_with_the_classification_of_equivalent_electrons() {
+        for l in 0..=4_u8 {
+            let orbital = Orbital::new(9, l).unwrap();
+            for n in 1..orbital.capacity() {
+                let seniorities = Seniorities::of(Subshell::new(orbital, n).unwrap()).unwrap();
+                let classified = classify(l, n).unwrap();
+                let counted = ls::terms(&[seniorities.shell()]).unwrap();
+                assert_eq!(classified.len() as u128, counted.n_terms());
+                for term in classified {
+                    let own = Term {
+                        two_s: u32::try_from(term.two_s).unwrap(),
+                        l: term.l_total,
+                    };
+                    let index = u128::from(term.index);
+                    assert_eq!(counted.times(own), u128::from(term.times));
+                    assert_eq!(
+                        seniorities.of_term(own, index),
+                        Some(term.seniority),
+                        "{own} #{index}"
+                    );
+                }
+            }
+        }
     }
 }
