@@ -4,6 +4,7 @@ use rungline_core::configuration::{Orbital, Subshell};
 use rungline_core::constants::ELECTRON_G;
 use rungline_core::quantity::TwiceJ;
 use rungline_core::terms::{Term, hund, lande, ls};
+use rungline_tests::{Row, report, vector_json};
 
 const G_S: f64 = ELECTRON_G.value;
 
@@ -186,6 +187,59 @@ fn weighted_sum_of_g_is_the_same_in_every_coupling() {
         assert!((in_ls - in_jk).abs() < 1e-14, "J = {j}: {in_ls} {in_jk}");
         assert!((in_ls - in_jj).abs() < 1e-14, "J = {j}: {in_ls} {in_jj}");
     }
+}
+
+#[test]
+fn sum_of_g_is_that_of_diagonalised_configurations() {
+    // Source: vectors/slater_condon_checks.json, g of every level of configurations diagonalised in
+    // intermediate coupling (own determinant code, g_s = 2). By the g-sum rule Σ g over the levels of one
+    // J is that of LS coupling, whatever the interactions.
+    let vectors = vector_json("slater_condon_checks.json");
+    let (mut sums, mut worst) = (0, 0.0_f64);
+    for case in vectors["cases"].as_array().unwrap() {
+        let number = |value: &serde_json::Value| u32::try_from(value.as_u64().unwrap()).unwrap();
+        let open: Vec<Subshell> = (1..)
+            .zip(case["shells"].as_array().unwrap())
+            .map(|(n, s)| {
+                let l = u8::try_from(number(&s["l"])).unwrap();
+                shell(n + l, l, number(&s["occ"]))
+            })
+            .collect();
+        let all = ls::terms(&open).unwrap();
+        let levels = case["levels"].as_array().unwrap();
+        assert_eq!(all.n_levels(), levels.len() as u128, "{}", case["name"]);
+        for (j, count) in all.levels_by_j() {
+            let of_j: Vec<Option<f64>> = levels
+                .iter()
+                .filter(|l| l["twoJ"].as_i64() == Some(j.doubled().into()))
+                .map(|l| l["g"].as_f64())
+                .collect();
+            assert_eq!(of_j.len() as u128, count);
+            // None for J = 0, and where levels of equal energy cannot be told apart.
+            let Some(theirs) = of_j.into_iter().sum::<Option<f64>>() else {
+                continue;
+            };
+            let ours: f64 = all
+                .terms
+                .iter()
+                .filter_map(|t| Some((t.times, lande::ls(t.term, j)?)))
+                .map(|(times, g)| times as f64 * (1.0 + (g - 1.0) / (G_S - 1.0)))
+                .sum();
+            worst = worst.max((ours - theirs).abs() / theirs.abs().max(1.0));
+            sums += 1;
+        }
+    }
+    report(
+        "terms-g-sums",
+        Row {
+            quantity: "sums of g over the levels of one J".into(),
+            cases: sums,
+            worst,
+            tolerance: 1e-11,
+            measure: "relative".into(),
+            source: "configurations diagonalised in determinants (own work)".into(),
+        },
+    );
 }
 
 #[test]
