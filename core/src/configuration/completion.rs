@@ -81,7 +81,7 @@ pub fn complete(written: &Written, species: &Species) -> Result<Reading, Vec<Pro
 /// The typed core and subshells.
 #[derive(Clone)]
 struct Parts {
-    core: Option<Configuration>,
+    core: Option<&'static Configuration>,
     typed: Vec<Subshell>,
 }
 
@@ -117,7 +117,7 @@ impl Parts {
             let configuration = Configuration::new(added)?;
             let noble_gas = super::NOBLE_GASES
                 .iter()
-                .find(|&&z| closed_core(z).is_some_and(|core| core == configuration))
+                .find(|&&z| closed_core(z).is_some_and(|core| *core == configuration))
                 .and_then(|&z| symbol(z));
             completed_core = Some(CompletedCore {
                 configuration,
@@ -400,7 +400,7 @@ fn offer_with(parts: &Parts, added: Vec<Subshell>, offer: &mut impl FnMut(&Parts
         }
         _ => offer(
             &Parts {
-                core: parts.core.clone(),
+                core: parts.core,
                 typed,
             },
             None,

@@ -2,11 +2,13 @@
 
 pub mod chart;
 mod completion;
+mod core_faults;
 pub mod filling;
 mod occupation;
 mod orbital;
 pub mod shells;
 pub mod species;
+mod species_faults;
 mod species_text;
 mod text;
 mod text_faults;

@@ -1,9 +1,10 @@
 //! A complete configuration: which subshells hold how many electrons.
 
 use std::fmt;
+use std::sync::LazyLock;
 
 use super::orbital::{Orbital, Subshell};
-use crate::elements::{observed_ground, symbol};
+use crate::elements::{HEAVIEST, observed_ground, symbol};
 
 /// Atomic numbers of the noble gases, whose symbols abbreviate a core.
 pub const NOBLE_GASES: [u8; 7] = [2, 10, 18, 36, 54, 86, 118];
@@ -81,8 +82,10 @@ impl Configuration {
 
     /// The subshells outside the noble-gas core: `3d6 4s2` for iron.
     pub fn valence(&self) -> Vec<Subshell> {
-        let core = self.noble_core().and_then(closed_core).unwrap_or_default();
-        self.without(&core)
+        match self.noble_core().and_then(closed_core) {
+            Some(core) => self.without(core),
+            None => self.subshells.clone(),
+        }
     }
 
     /// The subshells that another configuration does not hold equally.
@@ -136,8 +139,13 @@ pub(super) fn observed_configuration(z: u8, charge: i32) -> Option<Configuration
 }
 
 /// The ground configuration of a neutral atom without open subshells, which `[symbol]` may stand for.
-pub fn closed_core(z: u8) -> Option<Configuration> {
-    observed_configuration(z, 0).filter(|core| core.open().is_empty())
+pub fn closed_core(z: u8) -> Option<&'static Configuration> {
+    // Asked for several times at every keystroke: decoded once.
+    static CORES: LazyLock<Vec<Option<Configuration>>> = LazyLock::new(|| {
+        let closed = |z| observed_configuration(z, 0).filter(|core| core.open().is_empty());
+        (0..=HEAVIEST).map(closed).collect()
+    });
+    CORES.get(usize::from(z))?.as_ref()
 }
 
 /// C(n, k), or nothing past 2¹²⁸.

@@ -1,20 +1,9 @@
 //! The reading of a species' text.
 
 use super::species::{Species, roman, roman_value};
-use crate::elements::{by_name, by_symbol, name, nearest, symbol};
+use super::species_faults::{self as faults, Piece, plain};
+use crate::elements::{by_name, by_symbol};
 use crate::problem::Problem;
-use crate::quantity::signs::{is_minus, shown, superscript_digit, superscript_sign};
-
-/// The most characters a species may have.
-const LONGEST: usize = 80;
-
-/// A piece of the text: its bytes and its characters with like signs made one.
-#[derive(Clone, Debug)]
-struct Piece {
-    start: usize,
-    end: usize,
-    text: String,
-}
 
 pub(super) struct Reader<'a> {
     text: &'a str,
@@ -35,7 +24,7 @@ impl<'a> Reader<'a> {
     }
 
     pub(super) fn read(mut self) -> Result<Species, Vec<Problem>> {
-        if let Some(problem) = self.size_problem() {
+        if let Some(problem) = faults::size(self.text) {
             return Err(vec![problem]);
         }
         self.take_characters();
@@ -50,15 +39,7 @@ impl<'a> Reader<'a> {
         self.skip_spaces();
         let letters = self.letters();
         if letters.text.is_empty() {
-            let problem = Problem::new(
-                "species-without-element",
-                format!("“{}” names no element.", self.text.trim()),
-                letters.start,
-                self.text.len(),
-            );
-            return Err(vec![problem.bound(
-                "symbols and English names of the elements 1 to 118, or * for any atom",
-            )]);
+            return Err(vec![faults::without_element(self.text, letters.start)]);
         }
         let (element, named_mass, attached) = self.element(&letters);
         if mass.is_none() {
@@ -85,87 +66,23 @@ impl<'a> Reader<'a> {
         }
     }
 
-    fn size_problem(&self) -> Option<Problem> {
-        if self.text.trim().is_empty() {
-            let problem = Problem::new("species-empty", "No species is given.", 0, self.text.len());
-            return Some(problem.way("Use any atom", "*"));
-        }
-        let length = self.text.chars().count();
-        (length > LONGEST).then(|| {
-            Problem::new(
-                "species-too-long",
-                format!("The species has {length} characters."),
-                0,
-                self.text.len(),
-            )
-            .bound(format!("a species has at most {LONGEST} characters"))
-            .way("Use any atom", "*")
-        })
-    }
-
     /// Makes like signs one; each run of characters that cannot occur is a fault.
     fn take_characters(&mut self) {
-        let mut unexpected: Option<(usize, usize, String)> = None;
+        let mut unexpected: Option<(usize, usize)> = None;
         for (byte, c) in self.text.char_indices() {
-            let plain = if c.is_whitespace() {
-                Some(' ')
-            } else if is_minus(c) {
-                Some('-')
-            } else if c.is_ascii_alphanumeric() || "+()^{}*".contains(c) {
-                Some(c)
-            } else {
-                superscript_digit(c).or_else(|| superscript_sign(c))
-            };
-            match plain {
-                Some(plain) => {
+            let end = byte + c.len_utf8();
+            match (plain(c), unexpected) {
+                (Some(plain), run) => {
                     self.characters.push((byte, plain));
-                    self.report_unexpected(unexpected.take());
+                    let fault = run.map(|(start, end)| faults::unexpected(self.text, start, end));
+                    self.problems.extend(fault);
+                    unexpected = None;
                 }
-                None => {
-                    let end = byte + c.len_utf8();
-                    match &mut unexpected {
-                        Some((_, last, words)) => {
-                            *last = end;
-                            if words.len() < 60 {
-                                words.push_str(", ");
-                                words.push_str(&shown(c));
-                            }
-                        }
-                        None => unexpected = Some((byte, end, shown(c))),
-                    }
-                }
+                (None, run) => unexpected = Some((run.map_or(byte, |(start, _)| start), end)),
             }
         }
-        self.report_unexpected(unexpected);
-    }
-
-    fn report_unexpected(&mut self, run: Option<(usize, usize, String)>) {
-        if let Some((start, end, words)) = run {
-            let kept: String = self
-                .text
-                .chars()
-                .filter(|&c| {
-                    c.is_whitespace()
-                        || is_minus(c)
-                        || c.is_ascii_alphanumeric()
-                        || "+()^{}*".contains(c)
-                        || superscript_digit(c).is_some()
-                        || superscript_sign(c).is_some()
-                })
-                .collect();
-            let mut problem = Problem::new(
-                "species-unexpected-character",
-                format!("A species has no {words}."),
-                start,
-                end,
-            )
-            .bound("Latin letters, digits, + and - in the form Fe II, Fe 2+ or 57Fe");
-            let kept = kept.trim();
-            if !kept.is_empty() {
-                problem = problem.way(format!("Use {kept}"), kept);
-            }
-            self.problems.push(problem);
-        }
+        let fault = unexpected.map(|(start, end)| faults::unexpected(self.text, start, end));
+        self.problems.extend(fault);
     }
 
     fn peek(&self) -> Option<char> {
@@ -217,28 +134,13 @@ impl<'a> Reader<'a> {
         self.take_while(|c| c.is_ascii_alphabetic())
     }
 
-    /// The whole text with a piece of it replaced.
-    fn with(&self, piece: &Piece, replacement: &str) -> String {
-        let before = self.text.get(..piece.start).unwrap_or("");
-        let after = self.text.get(piece.end..).unwrap_or("");
-        format!("{before}{replacement}{after}").trim().to_string()
-    }
-
     fn any_atom(mut self) -> Result<Species, Vec<Problem>> {
         self.position += 1;
         self.skip_spaces();
         if self.peek().is_none() {
             return Ok(Species::ANY);
         }
-        Err(vec![
-            Problem::new(
-                "species-any-atom-with-more",
-                "Any atom, *, has no charge and no isotope.",
-                self.byte(),
-                self.text.len(),
-            )
-            .way("Use *", "*"),
-        ])
+        Err(vec![faults::any_atom_with_more(self.text, self.byte())])
     }
 
     /// The element, the mass number that D and T stand for, and a Roman numeral written right after
@@ -262,43 +164,15 @@ impl<'a> Reader<'a> {
         let attached = attached_stage(letters);
         match (loose, attached) {
             (Some(z), Some((other, stage))) => {
-                let (one, two) = (
-                    symbol(z).unwrap_or_default(),
-                    symbol(other).unwrap_or_default(),
-                );
-                let numeral = &stage.text;
-                self.problems.push(
-                    Problem::new(
-                        "species-ambiguous",
-                        format!("“{word}” may be {one} or {two} {numeral}."),
-                        letters.start,
-                        letters.end,
-                    )
-                    .way(format!("Use {one}"), self.with(letters, one))
-                    .way(
-                        format!("Use {two} {numeral}"),
-                        self.with(letters, &format!("{two} {numeral}")),
-                    ),
-                );
+                self.problems
+                    .push(faults::ambiguous(self.text, letters, z, other, &stage.text));
                 (None, None, None)
             }
             (Some(z), None) => (Some(z), None, None),
             (None, Some((z, stage))) => (Some(z), None, Some(stage)),
             (None, None) => {
-                let mut problem = Problem::new(
-                    "element-unknown",
-                    format!("There is no element “{}”.", clipped(word)),
-                    letters.start,
-                    letters.end,
-                )
-                .bound("symbols and English names of the elements 1 to 118, or * for any atom");
-                for z in nearest(word, 3) {
-                    let (near, called) =
-                        (symbol(z).unwrap_or_default(), name(z).unwrap_or_default());
-                    problem =
-                        problem.way(format!("Use {near}, {called}"), self.with(letters, near));
-                }
-                self.problems.push(problem);
+                self.problems
+                    .push(faults::element_unknown(self.text, letters));
                 (None, None, None)
             }
         }
@@ -329,26 +203,8 @@ impl<'a> Reader<'a> {
             .ok()
             .filter(|a| (u16::from(z)..=largest).contains(a));
         if mass.is_none() {
-            let symbol = symbol(z).unwrap_or_default();
-            let bare = match element_with(self.text, piece) {
-                Some(text) => text,
-                None => symbol.to_string(),
-            };
-            self.problems.push(
-                Problem::new(
-                    "mass-number-out-of-range",
-                    format!(
-                        "{} cannot be a mass number of {symbol}.",
-                        clipped(&piece.text)
-                    ),
-                    piece.start,
-                    piece.end,
-                )
-                .bound(format!(
-                    "mass numbers of {symbol} from {z} to {largest} are taken"
-                ))
-                .way(format!("Use {bare} without a mass number"), bare),
-            );
+            self.problems
+                .push(faults::mass_out_of_range(self.text, piece, z, largest));
         }
         mass
     }
@@ -376,7 +232,8 @@ impl<'a> Reader<'a> {
             .collect();
         if !inner.is_empty() && inner.chars().all(|c| c.is_ascii_alphabetic()) {
             if bracketed && roman_value(&inner).is_some() {
-                self.oxidation_number(&piece, &inner);
+                self.problems
+                    .push(faults::oxidation_number(self.text, &piece, &inner));
                 return None;
             }
             return self.stage(
@@ -390,59 +247,13 @@ impl<'a> Reader<'a> {
         self.charge(&piece, &inner, element)
     }
 
-    /// `iron(II)` is the ion Fe²⁺ in chemistry, while Fe II is the spectrum of Fe⁺: ask.
-    fn oxidation_number(&mut self, piece: &Piece, numeral: &str) {
-        let before = self
-            .text
-            .get(..piece.start)
-            .unwrap_or("")
-            .trim()
-            .to_string();
-        let value = roman_value(numeral).unwrap_or(1);
-        let upper = numeral.to_ascii_uppercase();
-        self.problems.push(
-            Problem::new(
-                "stage-in-parentheses",
-                format!("({upper}) may be a charge of {value}+ or the spectrum {upper}."),
-                piece.start,
-                piece.end,
-            )
-            .way(
-                format!("Use {before} {value}+"),
-                format!("{before} {value}+"),
-            )
-            .way(format!("Use {before} {upper}"), format!("{before} {upper}")),
-        );
-    }
-
     /// The charge of a Roman numeral: one less than its value.
     fn stage(&mut self, piece: &Piece, element: Option<u8>) -> Option<i32> {
         let value = roman_value(&piece.text);
         let usual = value.and_then(roman);
         if usual.as_deref() != Some(piece.text.to_ascii_uppercase().as_str()) {
-            let mut problem = Problem::new(
-                "stage-not-roman",
-                format!("“{}” is not a Roman numeral.", clipped(&piece.text)),
-                piece.start,
-                piece.end,
-            )
-            .bound("I is the neutral atom, II has lost one electron, and so on");
-            let attached = self
-                .text
-                .get(..piece.start)
-                .is_some_and(|t| t.ends_with(|c: char| c.is_ascii_alphabetic()));
-            let gap = if attached { " " } else { "" };
-            for numeral in usual
-                .into_iter()
-                .chain([String::from("I"), String::from("II")])
-                .take(2)
-            {
-                problem = problem.way(
-                    format!("Use {numeral}"),
-                    self.with(piece, &format!("{gap}{numeral}")),
-                );
-            }
-            self.problems.push(problem);
+            self.problems
+                .push(faults::stage_not_roman(self.text, piece, usual));
             return None;
         }
         let charge = i64::from(value?) - 1;
@@ -456,22 +267,14 @@ impl<'a> Reader<'a> {
         let digits_together = inner.starts_with(&digits) || inner.ends_with(&digits);
         let one_kind = signs.chars().all(|c| c == '+') || signs.chars().all(|c| c == '-');
         if signs.is_empty() {
-            self.charge_without_sign(piece, &digits);
+            self.problems.push(faults::charge_without_sign(
+                self.text, piece, &digits, element,
+            ));
             return None;
         }
         if !one_kind || !digits_together || (!digits.is_empty() && signs.len() > 1) {
-            let before = self.text.get(..piece.start).unwrap_or("").trim_end();
-            self.problems.push(
-                Problem::new(
-                    "charge-unreadable",
-                    format!("“{}” is not a charge.", clipped(&piece.text)),
-                    piece.start,
-                    piece.end,
-                )
-                .bound("a charge is written 2+, + or II")
-                .way(format!("Use {before}"), before)
-                .way(format!("Use {before} 2+"), format!("{before} 2+")),
-            );
+            self.problems
+                .push(faults::charge_unreadable(self.text, piece));
             return None;
         }
         let size = if digits.is_empty() {
@@ -483,88 +286,15 @@ impl<'a> Reader<'a> {
         self.within_bounds(charge, piece, element)
     }
 
-    fn charge_without_sign(&mut self, piece: &Piece, digits: &str) {
-        let before = self.text.get(..piece.start).unwrap_or("").trim_end();
-        let mut problem = Problem::new(
-            "charge-without-sign",
-            format!("{} may be a charge or a spectrum.", clipped(digits)),
-            piece.start,
-            piece.end,
-        )
-        .bound("a charge has a sign (2+), a spectrum a Roman numeral (II)")
-        .way(
-            format!("Use {before} {digits}+"),
-            format!("{before} {digits}+"),
-        );
-        if let Some(numeral) = digits.parse().ok().and_then(roman) {
-            problem = problem.way(
-                format!("Use {before} {numeral}"),
-                format!("{before} {numeral}"),
-            );
-        }
-        self.problems.push(problem);
-    }
-
     fn within_bounds(&mut self, charge: i64, piece: &Piece, element: Option<u8>) -> Option<i32> {
-        let z = i64::from(element?);
-        if (-1..z).contains(&charge) {
+        let z = element?;
+        if (-1..i64::from(z)).contains(&charge) {
             return i32::try_from(charge).ok();
         }
-        let symbol = element.and_then(symbol).unwrap_or_default();
-        let called = element.and_then(name).unwrap_or_default();
-        let before = self.text.get(..piece.start).unwrap_or("").trim_end();
-        let (code, message, bound) = if charge < 0 {
-            (
-                "charge-too-negative",
-                format!(
-                    "{symbol} {}- has more than one electron too many.",
-                    clipped(&charge.unsigned_abs().to_string())
-                ),
-                "ions are counted down to a single negative charge".to_string(),
-            )
-        } else if charge == z {
-            (
-                "charge-leaves-no-electron",
-                format!("{symbol} {charge}+ is the bare nucleus and has no electron."),
-                format!(
-                    "{called} has {z} electrons, so the highest charge with one left is {}+",
-                    z - 1
-                ),
-            )
-        } else {
-            (
-                "charge-above-z",
-                format!("{symbol} cannot have a charge of {charge}+."),
-                format!(
-                    "{called} has {z} electrons, so the highest charge with one left is {}+",
-                    z - 1
-                ),
-            )
-        };
-        let highest = if charge < 0 { -1 } else { z - 1 };
-        let (label, text) = match highest {
-            -1 => ("-".to_string(), format!("{before}-")),
-            0 => (" I".to_string(), format!("{before} I")),
-            n => (format!(" {n}+"), format!("{before} {n}+")),
-        };
-        let mut problem = Problem::new(code, message, piece.start, piece.end).bound(bound);
-        problem = problem.way(format!("Use {symbol}{label}"), text);
-        if charge > 0 && z > 1 {
-            problem = problem.way(format!("Use {symbol} I"), format!("{before} I"));
-        }
-        self.problems.push(problem);
+        self.problems
+            .push(faults::charge_out_of_range(self.text, piece, z, charge));
         None
     }
-}
-
-/// The text without its mass number.
-fn element_with(text: &str, mass: &Piece) -> Option<String> {
-    let before = text
-        .get(..mass.start)?
-        .trim_end()
-        .trim_end_matches(is_minus);
-    let after = text.get(mass.end..)?;
-    Some(format!("{before}{after}").trim().to_string())
 }
 
 fn capitalised(word: &str) -> String {
@@ -595,12 +325,4 @@ fn attached_stage(letters: &Piece) -> Option<(u8, Piece)> {
             )
         })
     })
-}
-
-fn clipped(text: &str) -> String {
-    if text.chars().count() <= 24 {
-        text.to_string()
-    } else {
-        text.chars().take(20).chain(['…']).collect()
-    }
 }

@@ -1,5 +1,6 @@
 //! The reading of a configuration's text, item by item; every fault is kept and reading goes on.
 
+use super::core_faults;
 use super::occupation::closed_core;
 use super::orbital::{MAX_N, Orbital, Subshell, l_of_letter};
 use super::text_faults as faults;
@@ -56,7 +57,7 @@ impl<'a> Reader<'a> {
         let other_items = self.core.is_some() || !self.subshells.is_empty();
         if let (Some(n), true) = (self.bare_shell, other_items) {
             self.problems
-                .push(faults::bare_shell_with_more(self.text, n));
+                .push(core_faults::bare_shell_with_more(self.text, n));
         }
         if self.problems.is_empty() && !other_items && self.bare_shell.is_none() {
             self.problems.push(faults::empty(self.text));
@@ -143,7 +144,7 @@ impl<'a> Reader<'a> {
         let stop = self.byte();
         if !closed {
             self.problems
-                .push(faults::core_not_closed(self.text, start, stop, &name));
+                .push(core_faults::core_not_closed(self.text, start, stop, &name));
             return;
         }
         let mut letters = name.chars();
@@ -170,14 +171,14 @@ impl<'a> Reader<'a> {
                 }
                 Some(_) => self
                     .problems
-                    .push(faults::core_repeated(self.text, start, stop, symbol)),
+                    .push(core_faults::core_repeated(self.text, start, stop, symbol)),
             },
             (Some(z), _, _) => self
                 .problems
-                .push(faults::core_open(self.text, start, stop, z)),
+                .push(core_faults::core_open(self.text, start, stop, z)),
             (None, _, _) => self
                 .problems
-                .push(faults::core_unknown(self.text, start, stop, &name)),
+                .push(core_faults::core_unknown(self.text, start, stop, &name)),
         }
     }
 
@@ -196,7 +197,7 @@ impl<'a> Reader<'a> {
             return;
         }
         self.position = end;
-        self.problems.push(faults::word(
+        self.problems.push(core_faults::word(
             self.text,
             self.byte_at(start),
             self.byte_at(end),
@@ -215,13 +216,15 @@ impl<'a> Reader<'a> {
         let digits = self.digits();
         let n = digits.parse::<u32>().unwrap_or(u32::MAX);
         let problem = match u8::try_from(n).ok().filter(|n| (1..=MAX_N).contains(n)) {
-            _ if digits.is_empty() => faults::shell_without_number(self.text, start, self.byte()),
+            _ if digits.is_empty() => {
+                core_faults::shell_without_number(self.text, start, self.byte())
+            }
             None => faults::n_out_of_range(self.text, start, self.byte(), digits, "n="),
             Some(n) if self.bare_shell.is_none() => {
                 self.bare_shell = Some(n);
                 return true;
             }
-            Some(n) => faults::bare_shell_with_more(self.text, n),
+            Some(n) => core_faults::bare_shell_with_more(self.text, n),
         };
         self.problems.push(problem);
         true
@@ -259,8 +262,7 @@ impl<'a> Reader<'a> {
         let letter_end = self.position;
         let n = n_digits.parse::<u32>().unwrap_or(u32::MAX);
         let orbital = l.and_then(|l| Orbital::new(u8::try_from(n).ok()?, l));
-        let capacity = l.map_or(0, |l| 2 * (2 * u32::from(l) + 1));
-        let count = self.electrons(start, capacity);
+        let count = self.electrons(start);
         let (from, to) = (self.byte_at(start), self.byte());
         let letter = self
             .text
@@ -333,7 +335,7 @@ impl<'a> Reader<'a> {
     }
 
     /// The electrons after an orbital: nothing for one, digits, superscripts, `^6`, `^{6}`, `(6)`.
-    fn electrons(&mut self, item: usize, capacity: u32) -> Count {
+    fn electrons(&mut self, item: usize) -> Count {
         let start = self.position;
         if self.peek().is_some_and(|c| superscript_digit(c).is_some()) {
             let end = self.run_end(start, |c| superscript_digit(c).is_some());
@@ -385,7 +387,7 @@ impl<'a> Reader<'a> {
         }
         if self.peek().is_some_and(|c| c.is_ascii_digit()) {
             let digits = self.digits();
-            let taken = self.shared_digits(start, digits, capacity);
+            let taken = self.shared_digits(start, digits);
             self.position = start + taken;
             if taken == 0 {
                 return Count::Electrons(1);
@@ -397,7 +399,7 @@ impl<'a> Reader<'a> {
 
     /// How many of the digits after a letter are electrons, the rest being the n of an orbital whose
     /// letter follows at once. The position is behind the digits.
-    fn shared_digits(&self, start: usize, digits: &str, capacity: u32) -> usize {
+    fn shared_digits(&self, start: usize, digits: &str) -> usize {
         let l = match self.peek() {
             Some('[') if self.bracketed_number(self.position) => {
                 let end = self.run_end(self.position + 1, |c| c.is_ascii_digit());
@@ -408,27 +410,9 @@ impl<'a> Reader<'a> {
             Some(c) if c.is_ascii_alphabetic() => l_of_letter(c.to_ascii_lowercase()),
             _ => return self.position - start,
         };
-        let fits = |taken: usize| {
-            let (head, tail) = (
-                digits.get(..taken).unwrap_or(""),
-                digits.get(taken..).unwrap_or("0"),
-            );
-            let electrons_fit = head.is_empty()
-                || (!head.starts_with('0') && head.parse::<u32>().is_ok_and(|e| e <= capacity));
-            let n_fits = !tail.starts_with('0')
-                && tail
-                    .parse::<u8>()
-                    .is_ok_and(|n| l.is_none_or(|l| Orbital::new(n, l).is_some()));
-            electrons_fit && n_fits
-        };
-        let one = digits.len().saturating_sub(1);
-        let two = digits.len().saturating_sub(2);
-        match (fits(one), digits.len() >= 2 && fits(two)) {
-            (false, true) => two,
-            // 0 cannot be an n: the last two digits are.
-            (false, false) if digits.ends_with('0') => two,
-            _ => one,
-        }
+        // 0 is no n, and ℓ ≥ 9 needs an n of two digits.
+        let two = digits.ends_with('0') || l.is_some_and(|l| l >= 9);
+        digits.len().saturating_sub(if two { 2 } else { 1 })
     }
 
     /// `3d6.5`: a mark and digits that no orbital's letter follows.

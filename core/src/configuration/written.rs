@@ -44,8 +44,8 @@ pub struct Written {
 /// Reads a configuration: `3d6 4s2`, `[Ar] 3d6 4s2`, `3d⁶4s²`, `3d6.4s2`, `1s22s22p6`, `3d^6`, `3d(6)`,
 /// `4f7 5d 6s2`, `22[21]3`, `n=5`.
 ///
-/// Where digits stand between two letters, the last one is the next subshell's n: `2p63s` is
-/// 2p6 3s. Names of orbitals: s p d f g h i k l m n o q r t u v w x y z, then `[21]`, `[22]` ….
+/// Where digits stand between two letters, the last one is the next subshell's n (`2p63s` is 2p6 3s),
+/// the last two where it is 0 or where ℓ ≥ 9 needs it. Names of orbitals: s p d f g h i k l m n o q r t u v w x y z, then `[21]`, `[22]` ….
 ///
 /// All faults, in the order of the text; places are bytes of `text`. Bounds: 400 characters,
 /// n = 1…50, ℓ < n, 1…2(2ℓ + 1) electrons.

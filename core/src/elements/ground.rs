@@ -98,7 +98,7 @@ pub fn observed_ground(z: u8, charge: i32) -> Option<ObservedGround> {
         .checked_sub(charge)
         .filter(|n| (1..=i32::from(z)).contains(n))?;
     let mut lines = DATA.lines();
-    let codes: Vec<&'static str> = lines.next()?.split(' ').collect();
+    let codes = lines.next()?;
     let wanted = electrons.to_string();
     // Every sequence has its four lines, so the place is known.
     let mut own = lines.skip(usize::try_from(electrons - 1).ok()?.checked_mul(4)?);
@@ -125,7 +125,7 @@ pub fn observed_ground(z: u8, charge: i32) -> Option<ObservedGround> {
         },
         references: references
             .split(',')
-            .filter_map(|number| codes.get(number.parse::<usize>().ok()?).copied())
+            .filter_map(|number| codes.split(' ').nth(number.parse().ok()?))
             .collect(),
     })
 }

@@ -1,6 +1,7 @@
 //! Typed quantities: half-integers held exactly, and the reading of what a person types.
 
 mod half_integer;
+mod half_integer_text;
 mod number;
 pub mod parse;
 pub(crate) mod signs;
@@ -8,5 +9,6 @@ mod unit;
 
 pub use half_integer::TwiceJ;
 pub use number::{LONGEST, number};
-pub use parse::{MAX_ANGULAR_MOMENTUM, Quantity, half_integer, quantity};
+pub use half_integer_text::MAX_ANGULAR_MOMENTUM;
+pub use parse::{Quantity, half_integer, quantity};
 pub use unit::{Dimension, Unit};

@@ -1,6 +1,6 @@
 //! Numbers as people type them.
 
-use super::signs::{is_minus, superscript_digit, superscript_sign};
+use super::signs::{clipped, is_minus, superscript_digit, superscript_sign};
 use crate::problem::Problem;
 
 /// The most characters a number or quantity may have.
@@ -365,14 +365,6 @@ pub(super) fn with(text: &str, start: usize, end: usize, replacement: &str) -> S
         text.get(end..).unwrap_or(""),
     );
     format!("{before}{replacement}{after}").trim().to_string()
-}
-
-pub(super) fn clipped(text: &str) -> String {
-    if text.chars().count() <= 40 {
-        text.to_string()
-    } else {
-        text.chars().take(36).chain(['…']).collect()
-    }
 }
 
 #[cfg(test)]

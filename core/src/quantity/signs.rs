@@ -34,13 +34,28 @@ pub fn superscript_sign(c: char) -> Option<char> {
     }
 }
 
+/// Whether a character leaves no mark of its own or turns the direction of what follows.
+fn is_invisible(c: char) -> bool {
+    c.is_control()
+        || matches!(c, '\u{200B}'..='\u{200F}' | '\u{202A}'..='\u{202E}' | '\u{2060}'..='\u{206F}')
+        || matches!(c, '\u{FEFF}' | '\u{FE00}'..='\u{FE0F}' | '\u{00AD}')
+}
+
 /// A character in words for a message: itself where it can be seen, else its number.
 pub fn shown(c: char) -> String {
-    let invisible = c.is_control()
-        || matches!(c, '\u{200B}'..='\u{200F}' | '\u{202A}'..='\u{202E}' | '\u{2060}'..='\u{206F}' | '\u{FEFF}' | '\u{FE00}'..='\u{FE0F}' | '\u{00AD}');
-    if invisible {
+    if is_invisible(c) {
         format!("U+{:04X}, an invisible character", u32::from(c))
     } else {
         format!("“{c}”")
+    }
+}
+
+/// A typed text for a message: at most 40 characters, invisible ones as �.
+pub fn clipped(text: &str) -> String {
+    let visible = |c: char| if is_invisible(c) { '\u{FFFD}' } else { c };
+    if text.chars().count() <= 40 {
+        text.chars().map(visible).collect()
+    } else {
+        text.chars().take(36).map(visible).chain(['…']).collect()
     }
 }
