@@ -8,7 +8,7 @@ pub(crate) mod signs;
 mod unit;
 
 pub use half_integer::TwiceJ;
-pub use number::{LONGEST, number};
 pub use half_integer_text::MAX_ANGULAR_MOMENTUM;
+pub use number::{LONGEST, number};
 pub use parse::{Quantity, half_integer, quantity};
 pub use unit::{Dimension, Unit};
