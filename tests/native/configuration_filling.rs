@@ -8,8 +8,13 @@ use rungline_tests::{Row, report, vector};
 
 fn rows(name: &str) -> Vec<BTreeMap<String, String>> {
     let text = vector(name);
-    let mut reader = csv::ReaderBuilder::new().comment(Some(b'#')).from_reader(text.as_bytes());
-    reader.deserialize().map(|row| row.expect("a row of the table")).collect()
+    let mut reader = csv::ReaderBuilder::new()
+        .comment(Some(b'#'))
+        .from_reader(text.as_bytes());
+    reader
+        .deserialize()
+        .map(|row| row.expect("a row of the table"))
+        .collect()
 }
 
 #[test]
@@ -19,7 +24,11 @@ fn neutral_atoms_have_the_tabulated_configuration() {
     let mut differing = Vec::new();
     for row in &rows {
         let z: u8 = row["Z"].parse().unwrap();
-        let species = Species { element: Some(z), charge: 0, mass_number: None };
+        let species = Species {
+            element: Some(z),
+            charge: 0,
+            mass_number: None,
+        };
         let tabulated = complete(&parse(&row["config_full"]).unwrap(), &species).unwrap();
         assert_eq!(tabulated.completed_core, None);
         if *ground(z, 0).unwrap().configuration() != tabulated.configuration {
@@ -45,7 +54,9 @@ fn neutral_atoms_have_the_tabulated_configuration() {
 fn the_rule_fails_for_the_known_exceptions() {
     // Neutral atoms whose ground configuration is not that of the order n + ℓ, then n: standard list,
     // from memory.
-    let known = [24, 29, 41, 42, 44, 45, 46, 47, 57, 58, 64, 78, 79, 89, 90, 91, 92, 93, 96, 103];
+    let known = [
+        24, 29, 41, 42, 44, 45, 46, 47, 57, 58, 64, 78, 79, 89, 90, 91, 92, 93, 96, 103,
+    ];
     let found: Vec<u8> = (1..=118u8)
         .filter(|&z| {
             let ground = ground(z, 0).unwrap();
@@ -66,7 +77,11 @@ fn cations_lose_the_highest_n_first() {
             let text = rule(z, 2).unwrap().valence_text();
             let tabulated = ground(z, 2).unwrap();
             let agrees = !tabulated.differs;
-            assert!(agrees, "{}: rule {text}, table {}", row["symbol"], row["shells"]);
+            assert!(
+                agrees,
+                "{}: rule {text}, table {}",
+                row["symbol"], row["shells"]
+            );
         }
     }
 }
@@ -77,14 +92,25 @@ fn the_tabulated_text_is_a_configuration_of_the_trade() {
     for row in rows("ground_levels_all_ions.csv") {
         let z: u8 = row["Z"].parse().unwrap();
         let charge: i32 = row["charge"].parse().unwrap();
-        let species = Species { element: Some(z), charge, mass_number: None };
+        let species = Species {
+            element: Some(z),
+            charge,
+            mass_number: None,
+        };
         let reading = complete(&parse(&row["shells"]).unwrap(), &species)
             .unwrap_or_else(|problems| panic!("{row:?} {problems:?}"));
-        assert_eq!(&reading.configuration, ground(z, charge).unwrap().configuration(), "{row:?}");
+        assert_eq!(
+            &reading.configuration,
+            ground(z, charge).unwrap().configuration(),
+            "{row:?}"
+        );
         assert_eq!(reading.completed_core, None);
         // And so do the subshells outside the noble gas, with the core left to be completed where
         // its electrons fill in order.
         let short = parse(&reading.configuration.short_text()).unwrap();
-        assert_eq!(complete(&short, &species).unwrap().configuration, reading.configuration);
+        assert_eq!(
+            complete(&short, &species).unwrap().configuration,
+            reading.configuration
+        );
     }
 }

@@ -3,7 +3,9 @@
 use proptest::collection::{btree_map, vec};
 use proptest::prelude::*;
 use rungline_core::configuration::filling::{filling_order, ground};
-use rungline_core::configuration::{Configuration, Orbital, Species, Subshell, complete, parse, species};
+use rungline_core::configuration::{
+    Configuration, Orbital, Species, Subshell, complete, parse, species,
+};
 use rungline_core::problem::Problem;
 use rungline_core::quantity::{Dimension, half_integer, number, quantity};
 
@@ -24,24 +26,78 @@ fn any_configuration() -> impl Strategy<Value = Configuration> {
 /// Texts made of what configurations, species and quantities are made of, and of what they are not.
 fn odd_text() -> impl Strategy<Value = String> {
     let part = prop_oneof![
-        Just("3d"), Just("4s2"), Just("[Ar]"), Just("["), Just("]"), Just("[21]"), Just("22"), Just("99999999999"), Just("0"),
-        Just("⁶"), Just("⁻"), Just("^"), Just("{"), Just("}"), Just("("), Just(")"), Just("-"), Just("−"), Just("."), Just(","),
-        Just(" "), Just("\u{A0}"), Just("n="), Just("n"), Just("="), Just("Fe"), Just("II"), Just("+"), Just("*"), Just("e"),
-        Just("×10"), Just("T"), Just("cm-1"), Just("/2"), Just("🙂"), Just("👩\u{200D}🚀"), Just("א"), Just("\u{202E}"), Just("\u{301}"),
-        Just("ſ"), Just("K"), Just("İ"), Just("ß"), Just("\0"), Just("j"), Just("1/"), Just("°C"), Just("Å"),
+        Just("3d"),
+        Just("4s2"),
+        Just("[Ar]"),
+        Just("["),
+        Just("]"),
+        Just("[21]"),
+        Just("22"),
+        Just("99999999999"),
+        Just("0"),
+        Just("⁶"),
+        Just("⁻"),
+        Just("^"),
+        Just("{"),
+        Just("}"),
+        Just("("),
+        Just(")"),
+        Just("-"),
+        Just("−"),
+        Just("."),
+        Just(","),
+        Just(" "),
+        Just("\u{A0}"),
+        Just("n="),
+        Just("n"),
+        Just("="),
+        Just("Fe"),
+        Just("II"),
+        Just("+"),
+        Just("*"),
+        Just("e"),
+        Just("×10"),
+        Just("T"),
+        Just("cm-1"),
+        Just("/2"),
+        Just("🙂"),
+        Just("👩\u{200D}🚀"),
+        Just("א"),
+        Just("\u{202E}"),
+        Just("\u{301}"),
+        Just("ſ"),
+        Just("K"),
+        Just("İ"),
+        Just("ß"),
+        Just("\0"),
+        Just("j"),
+        Just("1/"),
+        Just("°C"),
+        Just("Å"),
     ];
     vec(part, 0..20).prop_map(|parts| parts.concat())
 }
 
 fn well_placed(text: &str, problems: &[Problem]) {
     for problem in problems {
-        assert!(text.get(problem.start..problem.end).is_some(), "{text:?}: {problem:?}");
-        assert!(!problem.message.is_empty() && problem.message.chars().count() < 400, "{text:?}: {problem:?}");
+        assert!(
+            text.get(problem.start..problem.end).is_some(),
+            "{text:?}: {problem:?}"
+        );
+        assert!(
+            !problem.message.is_empty() && problem.message.chars().count() < 400,
+            "{text:?}: {problem:?}"
+        );
         assert!(!problem.ways.is_empty(), "a way out: {text:?}: {problem:?}");
         let in_utf16 = problem.clone().in_utf16(text);
         assert!(in_utf16.end <= text.encode_utf16().count());
     }
-    assert!(problems.windows(2).all(|pair| pair[0].start <= pair[1].start), "{text:?}: {problems:?}");
+    assert!(
+        problems
+            .windows(2)
+            .all(|pair| pair[0].start <= pair[1].start),
+        "{text:?}: {problems:?}"
+    );
 }
 
 fn read_everything(text: &str) {

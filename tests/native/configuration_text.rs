@@ -8,16 +8,25 @@ fn problems(text: &str) -> Vec<Problem> {
 }
 
 fn codes(text: &str) -> Vec<(&'static str, &str)> {
-    problems(text).iter().map(|p| (p.code, text.get(p.start..p.end).expect("whole characters"))).collect()
+    problems(text)
+        .iter()
+        .map(|p| (p.code, text.get(p.start..p.end).expect("whole characters")))
+        .collect()
 }
 
 fn ways(text: &str) -> Vec<String> {
-    problems(text).iter().flat_map(|p| p.ways.iter().map(|w| w.replacement.clone())).collect()
+    problems(text)
+        .iter()
+        .flat_map(|p| p.ways.iter().map(|w| w.replacement.clone()))
+        .collect()
 }
 
 fn read(species_text: &str, text: &str) -> String {
     let species = species::parse(species_text).expect(species_text);
-    complete(&parse(text).expect(text), &species).expect(text).configuration.short_text()
+    complete(&parse(text).expect(text), &species)
+        .expect(text)
+        .configuration
+        .short_text()
 }
 
 fn count_problem(species_text: &str, text: &str) -> Problem {
@@ -67,7 +76,11 @@ fn letters_skip_j_and_those_already_used() {
     for (l, letter) in "spdfghiklmnoqrtuvwxyz".chars().enumerate() {
         let text = format!("{}{letter}", l + 1);
         let written = parse(&text).unwrap();
-        assert_eq!(usize::from(written.subshells[0].subshell.orbital().l()), l, "{text}");
+        assert_eq!(
+            usize::from(written.subshells[0].subshell.orbital().l()),
+            l,
+            "{text}"
+        );
     }
 }
 
@@ -76,12 +89,20 @@ fn a_core_is_completed_and_named() {
     let completed = |species_text: &str, text: &str| {
         let species = species::parse(species_text).unwrap();
         let reading = complete(&parse(text).unwrap(), &species).unwrap();
-        reading.completed_core.map(|core| (core.to_string(), core.noble_gas.is_some()))
+        reading
+            .completed_core
+            .map(|core| (core.to_string(), core.noble_gas.is_some()))
     };
     assert_eq!(completed("Fe", "3d6 4s2"), Some(("[Ar]".into(), true)));
     assert_eq!(completed("Na", "3p"), Some(("[Ne]".into(), true)));
-    assert_eq!(completed("Ga", "4p"), Some(("1s2 2s2 2p6 3s2 3p6 3d10 4s2".into(), false)));
-    assert_eq!(completed("Fe 16+", "2p5 3s"), Some(("1s2 2s2".into(), false)));
+    assert_eq!(
+        completed("Ga", "4p"),
+        Some(("1s2 2s2 2p6 3s2 3p6 3d10 4s2".into(), false))
+    );
+    assert_eq!(
+        completed("Fe 16+", "2p5 3s"),
+        Some(("1s2 2s2".into(), false))
+    );
     assert_eq!(completed("Fe", "[Ar] 3d6 4s2"), None);
     assert_eq!(completed("H", "2p"), None);
     // Any atom: nothing is added.
@@ -93,7 +114,12 @@ fn the_usual_mistakes_have_their_own_codes() {
     for (text, code, place, way) in [
         ("2p7", "subshell-over-capacity", "2p7", "2p6"),
         ("4f15", "subshell-over-capacity", "4f15", "4f14"),
-        ("3d99999999999999999999", "subshell-over-capacity", "3d99999999999999999999", "3d10"),
+        (
+            "3d99999999999999999999",
+            "subshell-over-capacity",
+            "3d99999999999999999999",
+            "3d10",
+        ),
         ("2d", "l-not-below-n", "2d", "3d"),
         ("2d6", "l-not-below-n", "2d", "3d6"),
         ("1p", "l-not-below-n", "1p", "2p"),
@@ -142,9 +168,37 @@ fn the_usual_mistakes_have_their_own_codes() {
 #[test]
 fn every_way_out_of_a_single_fault_can_be_read() {
     for text in [
-        "2p7", "2d", "1p", "3f", "3d6 3d2", "3d6 4s2 3d2", "4s2 3d6 3d2", " 3d6 3d2 4s", "3j2", "4f15", "3d-1", "3d6.5",
-        "1e9s2", "3d0 4s2", "d6 4s2", "51s", "n=51", "[Xx] 3d6", "[Fe] 3d6", "[Ar][Kr]3d6", "[Ar 3d6", "Ar 3d6", "3D6",
-        "3d6 4", "3d6(5D)4s2", "", "🙂", "1s22s22p73s", "2d6 4s", "1s22d6", "3d⁶3d²",
+        "2p7",
+        "2d",
+        "1p",
+        "3f",
+        "3d6 3d2",
+        "3d6 4s2 3d2",
+        "4s2 3d6 3d2",
+        " 3d6 3d2 4s",
+        "3j2",
+        "4f15",
+        "3d-1",
+        "3d6.5",
+        "1e9s2",
+        "3d0 4s2",
+        "d6 4s2",
+        "51s",
+        "n=51",
+        "[Xx] 3d6",
+        "[Fe] 3d6",
+        "[Ar][Kr]3d6",
+        "[Ar 3d6",
+        "Ar 3d6",
+        "3D6",
+        "3d6 4",
+        "3d6(5D)4s2",
+        "",
+        "🙂",
+        "1s22s22p73s",
+        "2d6 4s",
+        "1s22d6",
+        "3d⁶3d²",
     ] {
         for way in ways(text) {
             assert!(parse(&way).is_ok(), "{text:?} → {way:?}: {:?}", parse(&way));
@@ -170,15 +224,30 @@ fn all_faults_are_found_in_the_order_of_the_text() {
 
 #[test]
 fn places_hold_behind_an_emoji_a_superscript_and_right_to_left_text() {
-    for (before, units) in [("🙂 ", 3), ("3d⁶ ", 4), ("אב ", 3), ("👩\u{200D}🚀3d⁶ אב ", 12)] {
+    for (before, units) in [
+        ("🙂 ", 3),
+        ("3d⁶ ", 4),
+        ("אב ", 3),
+        ("👩\u{200D}🚀3d⁶ אב ", 12),
+    ] {
         let text = format!("{before}2p7");
         let all = problems(&text);
-        let fault = all.iter().find(|p| p.code == "subshell-over-capacity").unwrap();
-        assert_eq!((fault.start, fault.end), (before.len(), text.len()), "{text}");
+        let fault = all
+            .iter()
+            .find(|p| p.code == "subshell-over-capacity")
+            .unwrap();
+        assert_eq!(
+            (fault.start, fault.end),
+            (before.len(), text.len()),
+            "{text}"
+        );
         let in_utf16 = fault.clone().in_utf16(&text);
         assert_eq!((in_utf16.start, in_utf16.end), (units, units + 3), "{text}");
         let utf16: Vec<u16> = text.encode_utf16().collect();
-        assert_eq!(String::from_utf16(&utf16[in_utf16.start..in_utf16.end]).unwrap(), "2p7");
+        assert_eq!(
+            String::from_utf16(&utf16[in_utf16.start..in_utf16.end]).unwrap(),
+            "2p7"
+        );
     }
 }
 
@@ -189,7 +258,10 @@ fn long_texts_are_refused_with_the_bound() {
     let found = problems(&long);
     assert_eq!(found.len(), 1);
     assert_eq!(found[0].code, "configuration-too-long");
-    assert_eq!(found[0].bound.as_deref(), Some("a configuration has at most 400 characters"));
+    assert_eq!(
+        found[0].bound.as_deref(),
+        Some("a configuration has at most 400 characters")
+    );
     let found = species::parse(&"Fe".repeat(5000)).unwrap_err();
     assert_eq!(found[0].code, "species-too-long");
 }
@@ -198,7 +270,10 @@ fn long_texts_are_refused_with_the_bound() {
 fn electrons_are_counted_against_the_charge() {
     let few = count_problem("Fe", "[Ar] 3d6 4s");
     assert_eq!(few.code, "too-few-electrons");
-    assert_eq!(few.bound.as_deref(), Some("Fe I has 26 electrons; as written it fits Fe II"));
+    assert_eq!(
+        few.bound.as_deref(),
+        Some("Fe I has 26 electrons; as written it fits Fe II")
+    );
     assert_eq!(few.ways[0].replacement, "[Ar] 3d6 4s2");
     let many = count_problem("Fe II", "[Ar] 3d6 4s2");
     assert_eq!(many.code, "too-many-electrons");
@@ -213,11 +288,22 @@ fn electrons_are_counted_against_the_charge() {
     let helium = count_problem("He", "2p");
     assert!(helium.ways.iter().any(|way| way.replacement == "1s 2p"));
     for (species_text, text) in [
-        ("Fe", "[Ar] 3d6 4s"), ("Fe II", "[Ar] 3d6 4s2"), ("Fe", "3d5 4s2"), ("Hg 5+", "5d7"), ("He", "2p"), ("H-", "1s"),
-        ("Fe", "1s"), ("H", "[Og] 8s"), ("Og", "1s"), ("Li", "[Xe]"),
+        ("Fe", "[Ar] 3d6 4s"),
+        ("Fe II", "[Ar] 3d6 4s2"),
+        ("Fe", "3d5 4s2"),
+        ("Hg 5+", "5d7"),
+        ("He", "2p"),
+        ("H-", "1s"),
+        ("Fe", "1s"),
+        ("H", "[Og] 8s"),
+        ("Og", "1s"),
+        ("Li", "[Xe]"),
     ] {
         let problem = count_problem(species_text, text);
-        assert!(!problem.ways.is_empty() || text.starts_with('['), "{species_text} {text} offers a way out");
+        assert!(
+            !problem.ways.is_empty() || text.starts_with('['),
+            "{species_text} {text} offers a way out"
+        );
         for way in problem.ways {
             read(species_text, &way.replacement);
         }
@@ -229,8 +315,14 @@ fn other_faults_of_completion() {
     let species = species::parse("Fe").unwrap();
     let fails = |text: &str| complete(&parse(text).unwrap(), &species).unwrap_err();
     let doubled = fails("[Ar] 3p5 3d7 4s2");
-    assert_eq!((doubled[0].code, doubled[0].start, doubled[0].end), ("subshell-in-core", 5, 8));
-    assert_eq!(read("Fe", &doubled[0].ways[0].replacement), "[Ne] 3s2 3p5 3d7 4s2");
+    assert_eq!(
+        (doubled[0].code, doubled[0].start, doubled[0].end),
+        ("subshell-in-core", 5, 8)
+    );
+    assert_eq!(
+        read("Fe", &doubled[0].ways[0].replacement),
+        "[Ne] 3s2 3p5 3d7 4s2"
+    );
     let high = fails("3d6 4s 35s");
     assert_eq!((high[0].code, high[0].start), ("n-above-filling", 7));
     assert_eq!(read("Fe", &high[0].ways[0].replacement), "[Ar] 3d6 4s 30s");
@@ -279,7 +371,8 @@ fn species_are_read_as_the_trade_writes_them() {
         ("*", "*"),
         (" * ", "*"),
     ] {
-        let species = species::parse(text).unwrap_or_else(|problems| panic!("{text}: {problems:?}"));
+        let species =
+            species::parse(text).unwrap_or_else(|problems| panic!("{text}: {problems:?}"));
         assert_eq!(species.to_string(), reading, "{text}");
         assert_eq!(species::parse(&species.to_string()), Ok(species));
     }
@@ -295,7 +388,12 @@ fn faults_of_species_name_bound_and_way() {
         ("Xx II", "element-unknown", "Xx", "Xe II"),
         ("irom", "element-unknown", "irom", "Fe"),
         ("Fe 30+", "charge-above-z", "30+", "Fe 25+"),
-        ("Fe 99999999999999999999+", "charge-above-z", "99999999999999999999+", "Fe 25+"),
+        (
+            "Fe 99999999999999999999+",
+            "charge-above-z",
+            "99999999999999999999+",
+            "Fe 25+",
+        ),
         ("Fe 26+", "charge-leaves-no-electron", "26+", "Fe 25+"),
         ("Fe XXVII", "charge-leaves-no-electron", "XXVII", "Fe 25+"),
         ("H+", "charge-leaves-no-electron", "+", "H I"),
@@ -312,26 +410,51 @@ fn faults_of_species_name_bound_and_way() {
         ("* II", "species-any-atom-with-more", "II", "*"),
         ("", "species-empty", "", "*"),
         ("🙂Fe", "species-unexpected-character", "🙂", "Fe"),
-        ("\u{202E}Fe", "species-unexpected-character", "\u{202E}", "Fe"),
+        (
+            "\u{202E}Fe",
+            "species-unexpected-character",
+            "\u{202E}",
+            "Fe",
+        ),
         ("אב Fe", "species-unexpected-character", "אב", "Fe"),
         ("57", "species-without-element", "", "*"),
     ] {
         let problems = species::parse(text).expect_err(text);
         assert_eq!(problems.len(), 1, "{text}: {problems:?}");
         let problem = &problems[0];
-        assert_eq!((problem.code, text.get(problem.start..problem.end)), (code, Some(place)), "{text}");
-        assert_eq!(problem.ways.first().map(|way| way.replacement.as_str()), Some(way), "{text}");
+        assert_eq!(
+            (problem.code, text.get(problem.start..problem.end)),
+            (code, Some(place)),
+            "{text}"
+        );
+        assert_eq!(
+            problem.ways.first().map(|way| way.replacement.as_str()),
+            Some(way),
+            "{text}"
+        );
         assert!(problem.bound.is_some(), "{text} states its bound");
         for way in &problem.ways {
-            assert!(species::parse(&way.replacement).is_ok(), "{text} → {}", way.replacement);
+            assert!(
+                species::parse(&way.replacement).is_ok(),
+                "{text} → {}",
+                way.replacement
+            );
         }
     }
 }
 
 #[test]
 fn several_faults_of_a_species_are_all_found() {
-    let found: Vec<&str> = species::parse("900Fe 30+").unwrap_err().iter().map(|p| p.code).collect();
+    let found: Vec<&str> = species::parse("900Fe 30+")
+        .unwrap_err()
+        .iter()
+        .map(|p| p.code)
+        .collect();
     assert_eq!(found, ["mass-number-out-of-range", "charge-above-z"]);
-    let found: Vec<&str> = species::parse("Xx IIII").unwrap_err().iter().map(|p| p.code).collect();
+    let found: Vec<&str> = species::parse("Xx IIII")
+        .unwrap_err()
+        .iter()
+        .map(|p| p.code)
+        .collect();
     assert_eq!(found, ["element-unknown", "stage-not-roman"]);
 }

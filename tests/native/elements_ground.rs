@@ -12,8 +12,13 @@ type Listing = BTreeMap<(u8, u8), u32>;
 
 fn rows(name: &str) -> Vec<BTreeMap<String, String>> {
     let text = vector(name);
-    let mut reader = csv::ReaderBuilder::new().comment(Some(b'#')).from_reader(text.as_bytes());
-    reader.deserialize().map(|row| row.expect("a row of the table")).collect()
+    let mut reader = csv::ReaderBuilder::new()
+        .comment(Some(b'#'))
+        .from_reader(text.as_bytes());
+    reader
+        .deserialize()
+        .map(|row| row.expect("a row of the table"))
+        .collect()
 }
 
 /// Writes out `[Ar].3d6.4s2`, with cores taken from the same file.
@@ -26,7 +31,10 @@ fn listing(shells: &str, cores: &BTreeMap<String, Listing>) -> Listing {
             let letter = word.find(|c: char| c.is_ascii_alphabetic()).unwrap();
             let l = "spdf".find(&word[letter..=letter]).unwrap();
             let electrons = word[letter + 1..].parse().unwrap_or(1);
-            all.insert((word[..letter].parse().unwrap(), u8::try_from(l).unwrap()), electrons);
+            all.insert(
+                (word[..letter].parse().unwrap(), u8::try_from(l).unwrap()),
+                electrons,
+            );
         }
     }
     all
@@ -51,8 +59,15 @@ fn all_entries_are_decoded_as_tabulated() {
             ("1", "0") => Status::SemiEmpirical,
             _ => Status::Theoretical,
         };
-        let decoded: Listing = ground.subshells.iter().map(|&(n, l, e)| ((n, l), e)).collect();
-        let term = ground.level.term.map_or(String::new(), |term| term.to_string());
+        let decoded: Listing = ground
+            .subshells
+            .iter()
+            .map(|&(n, l, e)| ((n, l), e))
+            .collect();
+        let term = ground
+            .level
+            .term
+            .map_or(String::new(), |term| term.to_string());
         let j = ground.level.j.map_or(String::new(), |j| j.to_string());
         // The other program gives J only beside a term.
         let j_agrees = if row["term"].is_empty() {
@@ -62,7 +77,9 @@ fn all_entries_are_decoded_as_tabulated() {
             j == row["J"]
         };
         let electrons: u32 = decoded.values().sum();
-        let odd = decoded.iter().fold(false, |odd, ((_, l), e)| odd ^ (u32::from(*l) * e % 2 == 1));
+        let odd = decoded
+            .iter()
+            .fold(false, |odd, ((_, l), e)| odd ^ (u32::from(*l) * e % 2 == 1));
         let agrees = ground.written == row["shells"]
             && decoded == listing(&row["shells"], &cores)
             && i64::from(electrons) == i64::from(z) - i64::from(charge)
@@ -95,14 +112,19 @@ fn all_entries_are_decoded_as_tabulated() {
 #[test]
 fn nothing_is_added_but_heavy_neutral_atoms() {
     let rows = rows("ground_levels_all_ions.csv");
-    let tabulated: Vec<(u8, i32)> =
-        rows.iter().map(|row| (row["Z"].parse().unwrap(), row["charge"].parse().unwrap())).collect();
+    let tabulated: Vec<(u8, i32)> = rows
+        .iter()
+        .map(|row| (row["Z"].parse().unwrap(), row["charge"].parse().unwrap()))
+        .collect();
     let mut added = Vec::new();
     for z in 1..=HEAVIEST {
         for charge in -1..=i32::from(z) {
             if observed_ground(z, charge).is_some() && !tabulated.contains(&(z, charge)) {
                 added.push((z, charge));
-                assert_eq!(observed_ground(z, charge).unwrap().status, Status::Extrapolated);
+                assert_eq!(
+                    observed_ground(z, charge).unwrap().status,
+                    Status::Extrapolated
+                );
             }
         }
     }
@@ -119,9 +141,16 @@ fn doubtful_entries_say_so() {
         let ground = observed_ground(z, 0).unwrap();
         assert!(ground.status_text().contains("doubtful"));
         let row = rows.iter().find(|row| row["Z"] == z.to_string()).unwrap();
-        let second: Vec<u32> =
-            row["pyscf_spdf_electrons"].split(' ').map(|n| n.parse().unwrap()).collect();
-        let own: u32 = ground.subshells.iter().filter(|s| s.1 == 2).map(|s| s.2).sum();
+        let second: Vec<u32> = row["pyscf_spdf_electrons"]
+            .split(' ')
+            .map(|n| n.parse().unwrap())
+            .collect();
+        let own: u32 = ground
+            .subshells
+            .iter()
+            .filter(|s| s.1 == 2)
+            .map(|s| s.2)
+            .sum();
         assert_eq!(second[2], d_electrons);
         assert_eq!(own, d_electrons + 1);
     }

@@ -26,11 +26,24 @@ fn every_constant_is_the_published_one() {
     let mut worst: f64 = 0.0;
     for constant in ALL {
         let entry = &list["constants"][constant.name];
-        let number = |key: &str| entry[key].as_str().unwrap_or_else(|| panic!("{}", constant.name)).parse::<f64>().unwrap();
+        let number = |key: &str| {
+            entry[key]
+                .as_str()
+                .unwrap_or_else(|| panic!("{}", constant.name))
+                .parse::<f64>()
+                .unwrap()
+        };
         let scale = scale(constant.name);
         // g_s is counted positive here.
-        worst = worst.max(relative_error(constant.value, number("value").abs() * scale));
-        assert!(relative_error(constant.uncertainty, number("uncertainty") * scale) < 1e-12, "{}", constant.name);
+        worst = worst.max(relative_error(
+            constant.value,
+            number("value").abs() * scale,
+        ));
+        assert!(
+            relative_error(constant.uncertainty, number("uncertainty") * scale) < 1e-12,
+            "{}",
+            constant.name
+        );
     }
     report(
         "constants",
@@ -51,13 +64,36 @@ fn derived_constants_follow_from_the_others() {
     // μ_B/hc and μ_B/h, R∞ = E_h/2hc, k/hc: definitions.
     let hc = c::PLANCK.value * c::SPEED_OF_LIGHT.value * 100.0;
     for (value, expected, tolerance) in [
-        (c::BOHR_MAGNETON.value / hc, c::BOHR_MAGNETON_WAVENUMBER.value, 1e-10),
-        (c::BOHR_MAGNETON.value / c::PLANCK.value / 1e9, c::BOHR_MAGNETON_FREQUENCY.value, 1e-10),
+        (
+            c::BOHR_MAGNETON.value / hc,
+            c::BOHR_MAGNETON_WAVENUMBER.value,
+            1e-10,
+        ),
+        (
+            c::BOHR_MAGNETON.value / c::PLANCK.value / 1e9,
+            c::BOHR_MAGNETON_FREQUENCY.value,
+            1e-10,
+        ),
         (c::HARTREE_WAVENUMBER.value / 2.0, c::RYDBERG.value, 1e-12),
-        (c::BOLTZMANN.value / hc, c::BOLTZMANN_WAVENUMBER.value, 1e-15),
-        (c::ELEMENTARY_CHARGE.value / hc, c::ELECTRON_VOLT_WAVENUMBER.value, 1e-15),
-        (c::ELECTRON_MASS.value / c::ATOMIC_MASS.value, c::ELECTRON_MASS_U.value, 1e-9),
+        (
+            c::BOLTZMANN.value / hc,
+            c::BOLTZMANN_WAVENUMBER.value,
+            1e-15,
+        ),
+        (
+            c::ELEMENTARY_CHARGE.value / hc,
+            c::ELECTRON_VOLT_WAVENUMBER.value,
+            1e-15,
+        ),
+        (
+            c::ELECTRON_MASS.value / c::ATOMIC_MASS.value,
+            c::ELECTRON_MASS_U.value,
+            1e-9,
+        ),
     ] {
-        assert!(relative_error(value, expected) < tolerance, "{value} {expected}");
+        assert!(
+            relative_error(value, expected) < tolerance,
+            "{value} {expected}"
+        );
     }
 }
