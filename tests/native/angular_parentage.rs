@@ -1,5 +1,7 @@
 //! Coefficients of fractional parentage: sum rules, antisymmetry, and published values.
 
+use std::collections::HashMap;
+
 use rungline_core::angular::equivalent::EquivalentTerm;
 use rungline_core::angular::parentage::{Parentage, parents};
 use rungline_core::angular::wigner_6j;
@@ -73,43 +75,57 @@ fn columns_share_what_is_left_of_the_subshell() {
     }
 }
 
+/// 6j symbols by their arguments: the same few return again and again.
+#[derive(Default)]
+struct Symbols(HashMap<[i32; 6], f64>);
+
+impl Symbols {
+    fn get(&mut self, two_j: [i32; 6]) -> f64 {
+        let [a, b, c, d, e, f] = two_j;
+        *self
+            .0
+            .entry(two_j)
+            .or_insert_with(|| wigner_6j(a, b, c, d, e, f))
+    }
+}
+
 /// ⟨(p₁ ℓ)SL|P|(p₂ ℓ)SL⟩ for the exchange of the last two electrons, from the table below.
-fn exchange(below: &Parentage, one: usize, two: usize, child: &EquivalentTerm) -> f64 {
-    let l = i32::from(below.l());
+fn exchange(
+    symbols: &mut Symbols,
+    below: &Parentage,
+    one: usize,
+    two: usize,
+    child: &EquivalentTerm,
+) -> f64 {
+    let two_l = 2 * i32::from(below.l());
     let (first, second) = (&below.children()[one], &below.children()[two]);
-    let (l1, l2, total) = (
-        first.l_total as i32,
-        second.l_total as i32,
-        child.l_total as i32,
-    );
+    let doubled = |term: &EquivalentTerm| 2 * term.l_total as i32;
+    let rows = below.row(one).iter().zip(below.row(two));
     let mut sum = 0.0;
-    for (place, grandparent) in below.parents().iter().enumerate() {
-        let product = below.coefficient(one, place) * below.coefficient(two, place);
-        if product != 0.0 {
-            sum += product
-                * wigner_6j(
+    for (grandparent, (c1, c2)) in below.parents().iter().zip(rows) {
+        if c1 * c2 != 0.0 {
+            sum += c1
+                * c2
+                * symbols.get([
                     1,
                     grandparent.two_s,
                     first.two_s,
                     1,
                     child.two_s,
                     second.two_s,
-                )
-                * wigner_6j(
-                    2 * l,
-                    2 * grandparent.l_total as i32,
-                    2 * l1,
-                    2 * l,
-                    2 * total,
-                    2 * l2,
-                );
+                ])
+                * symbols.get([
+                    two_l,
+                    doubled(grandparent),
+                    doubled(first),
+                    two_l,
+                    doubled(child),
+                    doubled(second),
+                ]);
         }
     }
-    let sign = if ((first.two_s + second.two_s) / 2 + 1 + l1 + l2) % 2 == 0 {
-        1.0
-    } else {
-        -1.0
-    };
+    let exponent = (first.two_s + second.two_s) / 2 + 1 + (doubled(first) + doubled(second)) / 2;
+    let sign = if exponent % 2 == 0 { 1.0 } else { -1.0 };
     sign * sum * (degeneracy(first) * degeneracy(second)).sqrt()
 }
 
@@ -117,25 +133,52 @@ fn exchange(below: &Parentage, one: usize, two: usize, child: &EquivalentTerm) -
 /// if the relation to the holes has all its signs.
 #[test]
 fn states_are_antisymmetric_in_the_last_two_electrons() {
+    let mut symbols = Symbols::default();
     let (mut worst, mut cases) = (0.0_f64, 0);
     for (l, electrons) in all_shells().filter(|&(_, electrons)| electrons >= 2) {
         let table = parents(l, electrons).expect("within bounds");
         let below = parents(l, electrons - 1).expect("within bounds");
-        for (row, child) in table.children().iter().enumerate() {
-            let coefficients = table.row(row);
-            for (one, &expected) in coefficients.iter().enumerate() {
-                let parent = &table.parents()[one];
-                if (parent.two_s - child.two_s).abs() != 1 {
-                    assert_eq!(expected, 0.0);
-                    continue;
+        let mut row = 0;
+        let same = |one: &EquivalentTerm, other: &EquivalentTerm| {
+            (one.two_s, one.l_total) == (other.two_s, other.l_total)
+        };
+        for children in table.children().chunk_by(same) {
+            let child = &children[0];
+            let couples = |parent: &EquivalentTerm| {
+                (parent.two_s - child.two_s).abs() == 1
+                    && parent.l_total.abs_diff(child.l_total) <= u32::from(l)
+                    && parent.l_total + child.l_total >= u32::from(l)
+            };
+            let places: Vec<usize> = (0..table.parents().len())
+                .filter(|&p| couples(&table.parents()[p]))
+                .collect();
+            let swap = |(one, two): (usize, usize)| {
+                exchange(&mut symbols, &below, places[one], places[two], child)
+            };
+            let pairs = (0..places.len()).flat_map(|one| (0..=one).map(move |two| (one, two)));
+            let lower: Vec<f64> = pairs.map(swap).collect();
+            let element = |one: usize, two: usize| {
+                lower[one.max(two) * (one.max(two) + 1) / 2 + one.min(two)]
+            };
+            for row in row..row + children.len() {
+                let coefficients = table.row(row);
+                let outside = (0..coefficients.len()).filter(|place| !places.contains(place));
+                assert!(
+                    outside
+                        .map(|place| coefficients[place])
+                        .all(|value| value == 0.0)
+                );
+                for (one, &place) in places.iter().enumerate() {
+                    let image: f64 = places
+                        .iter()
+                        .enumerate()
+                        .map(|(two, &other)| coefficients[other] * element(one, two))
+                        .sum();
+                    worst = worst.max((image + coefficients[place]).abs());
+                    cases += 1;
                 }
-                let image: f64 = (coefficients.iter().enumerate())
-                    .filter(|&(_, &value)| value != 0.0)
-                    .map(|(two, value)| value * exchange(&below, one, two, child))
-                    .sum();
-                worst = worst.max((image + expected).abs());
-                cases += 1;
             }
+            row += children.len();
         }
     }
     report(

@@ -124,20 +124,27 @@ impl Case {
         let (lowered, first, last) = (index(self.lowered), index(first), index(last));
         let middle = |top: usize| width(triangle.choose(top, top / 2));
         let terms = last.checked_sub(first)?.checked_add(1)?;
-        if middle(x) + middle(y) + middle(z) + width(terms as u64) > 127
-            || middle(x) + middle(y) > 64
-        {
+        let bits = middle(x) + middle(y) + middle(z) + width(terms as u64);
+        if bits > 127 || middle(x) + middle(y) > 64 {
             return None;
         }
         // C(n, k) = C(n, n−k) lets the falling places of y and z rise with k.
         let along_y = triangle.along_row(y, (y + first).checked_sub(lowered)?);
         let along_z = triangle.along_row(z, (z + first).checked_sub(raised)?);
-        let mut sum = 0_i128;
-        for (&c1, (&c2, &c3)) in triangle
+        let entries = triangle
             .along_row(x, first)
             .zip(along_y.zip(along_z))
-            .take(terms)
-        {
+            .take(terms);
+        if bits <= 63 {
+            let mut sum = 0_i64;
+            for (&c1, (&c2, &c3)) in entries {
+                // t₀ − (t₁ − (t₂ − …)) from the other end: change the sign, then add.
+                sum = (c1 * c2 * c3) as i64 - sum;
+            }
+            return Some(i128::from(if last & 1 == 1 { -sum } else { sum }));
+        }
+        let mut sum = 0_i128;
+        for (&c1, (&c2, &c3)) in entries {
             sum = (u128::from(c1 * c2) * u128::from(c3)) as i128 - sum;
         }
         Some(if last & 1 == 1 { -sum } else { sum })

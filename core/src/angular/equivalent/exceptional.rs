@@ -6,6 +6,8 @@
 //!
 //! Source: Racah, Phys. Rev. 76, 1352 (1949); Weyl's character formula.
 
+use std::sync::LazyLock;
+
 /// No weight of up to seven f electrons passes this in either direction.
 const REACH: i32 = 4;
 const WIDTH: i32 = 2 * REACH + 1;
@@ -15,6 +17,9 @@ const HALF_SUM: (i32, i32) = (3, 2);
 
 /// m of the positive roots: what the division by Weyl's denominator takes out, one after another.
 const ROOT_HEIGHTS: [usize; 6] = [1, 1, 2, 3, 4, 5];
+
+/// (x, y) and how often it occurs.
+type Weight = (i32, i32, i64);
 
 /// How often each weight occurs.
 #[derive(Clone)]
@@ -52,7 +57,7 @@ impl Character {
     }
 
     /// The weights that occur.
-    fn weights(&self) -> impl Iterator<Item = (i32, i32, i64)> + '_ {
+    fn weights(&self) -> impl Iterator<Item = Weight> + '_ {
         (-REACH..=REACH)
             .flat_map(|x| (-REACH..=REACH).map(move |y| (x, y)))
             .zip(&self.counts)
@@ -60,9 +65,9 @@ impl Character {
             .map(|((x, y), &count)| (x, y, count))
     }
 
-    fn add_product(&mut self, left: &Character, right: &Character, sign: i64) {
-        for (x1, y1, first) in left.weights() {
-            for (x2, y2, second) in right.weights() {
+    fn add_product(&mut self, left: &[Weight], right: &[Weight], sign: i64) {
+        for &(x1, y1, first) in left {
+            for &(x2, y2, second) in right {
                 self.add(x1 + x2, y1 + y2, sign * first * second);
             }
         }
@@ -116,7 +121,7 @@ fn twelve_casimirs([u1, u2]: [i32; 2]) -> i32 {
 /// Those of f^N with spin S have the Young diagram of columns a = N/2 + S and b = N/2 − S, whose
 /// character is e_a e_b − e_(a+1) e_(b−1) in elementary symmetric functions (Jacobi–Trudi).
 fn rotation_character(seniority: u32, two_s: i32) -> Character {
-    let elementary = elementary_characters();
+    let elementary = &*ELEMENTARY;
     let at = |k: i32| usize::try_from(k).ok().and_then(|k| elementary.get(k));
     let mut character = Character::zero();
     let mut add = |a: i32, b: i32, sign: i64| {
@@ -134,7 +139,9 @@ fn rotation_character(seniority: u32, two_s: i32) -> Character {
 }
 
 /// e₀ … e₇: k electrons of one spin in the seven f orbitals.
-fn elementary_characters() -> Vec<Character> {
+static ELEMENTARY: LazyLock<Vec<Vec<Weight>>> = LazyLock::new(elementary_characters);
+
+fn elementary_characters() -> Vec<Vec<Weight>> {
     let mut found = vec![Character::zero(); 8];
     if let Some(empty) = found.first_mut() {
         empty.add(0, 0, 1);
@@ -151,6 +158,9 @@ fn elementary_characters() -> Vec<Character> {
         }
     }
     found
+        .iter()
+        .map(|character| character.weights().collect())
+        .collect()
 }
 
 /// The images of a weight under the Weyl group of G₂, each with its sign.

@@ -6,6 +6,7 @@ use crate::angular::wigner_6j;
 use crate::numerics::symmetric::eigensystem;
 use crate::problem::Problem;
 use nalgebra::{DMatrix, DVector};
+use std::sync::OnceLock;
 
 /// Below this a coefficient is zero: of those that are not, the smallest is 8·10⁻⁵ (in f⁷).
 const ZERO: f64 = 1e-10;
@@ -32,8 +33,8 @@ pub(super) fn coefficients(
                     .is_some_and(|parent| couples(parent, first, previous.l()))
             })
             .collect();
-        let projector = exchange.antisymmetriser(first, &places);
-        let rows = resolve(range(&projector, same.len()), same, &places, previous)?;
+        let basis = exchange.antisymmetric(first, &places, same.len());
+        let rows = resolve(basis, same, &places, previous)?;
         for row in &rows {
             let mut full = vec![0.0; parents.len()];
             for (&place, &value) in places.iter().zip(row.iter()) {
@@ -62,39 +63,151 @@ fn couples(parent: &EquivalentTerm, child: &EquivalentTerm, l: u8) -> bool {
 /// X_s = −(−1)^(S₁+S₂) √[(2S₁+1)(2S₂+1)] {½ S₀ S₁; ½ S S₂}: recoupling by Edmonds (1957) eq. 6.1.5.
 struct Exchange<'a> {
     previous: &'a Parentage,
-    l: i32,
-    /// X_ℓ without its root, by L₀, then L₁−L₀+ℓ, L₂−L₀+ℓ, L−L₁+ℓ.
-    orbital: Vec<f64>,
+    orbital: &'static OrbitalFactors,
+    /// For each parent its grandparents: place, 2S₀, L₀ and coefficient, without those that vanish.
+    lines: Vec<Vec<(usize, i32, u32, f64)>>,
 }
 
 impl<'a> Exchange<'a> {
     fn new(previous: &'a Parentage) -> Self {
-        let l = i32::from(previous.l());
-        let largest = previous
-            .parents()
-            .iter()
-            .map(|term| term.l_total)
-            .max()
-            .unwrap_or(0);
-        let mut orbital = Vec::new();
-        for l0 in 0..=i32::try_from(largest).unwrap_or(0) {
+        let lines = (0..previous.children().len())
+            .map(|parent| {
+                let coefficients = previous.row(parent).iter().copied();
+                (0..)
+                    .zip(previous.parents().iter().zip(coefficients))
+                    .filter(|&(_, (_, coefficient))| coefficient != 0.0)
+                    .map(|(place, (term, coefficient))| {
+                        (place, term.two_s, term.l_total, coefficient)
+                    })
+                    .collect()
+            })
+            .collect();
+        Exchange {
+            previous,
+            orbital: OrbitalFactors::of(previous.l()),
+            lines,
+        }
+    }
+
+    /// An orthonormal basis of the states of S L that are antisymmetric in all N electrons.
+    ///
+    /// It is the range of the projector A = (1 − (N−1) P)/N, whose rank is known. Of A only the
+    /// diagonal is computed and, one after another, the column that reaches farthest out of the
+    /// span of those before it.
+    fn antisymmetric(
+        &self,
+        child: &EquivalentTerm,
+        places: &[usize],
+        rank: usize,
+    ) -> Vec<DVector<f64>> {
+        let spin = SpinFactors::new(child.two_s);
+        let element = |left: usize, right: usize| self.projector(child, &spin, left, right);
+        let diagonal: Vec<f64> = places.iter().map(|&place| element(place, place)).collect();
+        let mut basis: Vec<DVector<f64>> = Vec::with_capacity(rank);
+        for _ in 0..rank {
+            let mut best: Option<(usize, f64)> = None;
+            for (row, &whole) in diagonal.iter().enumerate() {
+                let within: f64 = basis
+                    .iter()
+                    .filter_map(|vector| vector.get(row))
+                    .map(|part| part * part)
+                    .sum();
+                // A clear lead, so that rounding does not choose between equals.
+                if best.is_none_or(|(_, largest)| whole - within > largest + ZERO) {
+                    best = Some((row, whole - within));
+                }
+            }
+            let Some(&pivot) = best.and_then(|(row, _)| places.get(row)) else {
+                break;
+            };
+            let column = places.iter().map(|&place| element(place, pivot));
+            let mut chosen = DVector::from_iterator(places.len(), column);
+            // Twice: the first pass leaves the rounding of what it took away.
+            for _ in 0..2 {
+                for earlier in &basis {
+                    let overlap = earlier.dot(&chosen);
+                    chosen.axpy(-overlap, earlier, 1.0);
+                }
+                let length = chosen.norm();
+                if length < ZERO {
+                    return basis;
+                }
+                chosen /= length;
+            }
+            basis.push(chosen);
+        }
+        basis
+    }
+
+    /// One element of (1 − (N−1) P)/N.
+    fn projector(
+        &self,
+        child: &EquivalentTerm,
+        spin: &SpinFactors,
+        left: usize,
+        right: usize,
+    ) -> f64 {
+        let parents = self.previous.children();
+        let (Some(one), Some(two), Some(line)) =
+            (parents.get(left), parents.get(right), self.lines.get(left))
+        else {
+            return 0.0;
+        };
+        let others = self.previous.row(right);
+        let mut sum = 0.0;
+        for &(place, two_s0, l0, c1) in line {
+            let c2 = others.get(place).copied().unwrap_or(0.0);
+            if c2 != 0.0 {
+                let orbital = self.orbital.at(l0, one.l_total, two.l_total, child.l_total);
+                sum += c1 * c2 * spin.at(two_s0, one.two_s, two.two_s) * orbital;
+            }
+        }
+        let before = f64::from(self.previous.electrons());
+        let root = (f64::from(2 * one.l_total + 1) * f64::from(2 * two.l_total + 1)).sqrt();
+        (f64::from(u8::from(left == right)) - before * sum * root) / (before + 1.0)
+    }
+}
+
+/// (−1)^(L₁+L₂) {ℓ L₀ L₁; ℓ L L₂} for every L₀ of ℓ^N, ℓ ≤ 3.
+struct OrbitalFactors {
+    l: i32,
+    /// By L₀, then L₁−L₀+ℓ, L₂−L₀+ℓ, L−L₁+ℓ.
+    values: Vec<f64>,
+}
+
+static ORBITAL_FACTORS: [OnceLock<OrbitalFactors>; 4] = [const { OnceLock::new() }; 4];
+
+impl OrbitalFactors {
+    /// Those of ℓ, kept; of ℓ = 3 for any ℓ above.
+    fn of(l: u8) -> &'static Self {
+        let [s, p, d, f] = &ORBITAL_FACTORS;
+        let place = match l {
+            0 => s,
+            1 => p,
+            2 => d,
+            _ => f,
+        };
+        place.get_or_init(|| Self::compute(i32::from(l.min(3))))
+    }
+
+    fn compute(l: i32) -> Self {
+        // The largest L of any ℓ^N: m = ℓ, ℓ−1, … 1 each taken twice.
+        let largest = l * (l + 1);
+        let mut values = Vec::new();
+        for l0 in 0..=largest {
             for l1 in l0 - l..=l0 + l {
                 for l2 in l0 - l..=l0 + l {
                     for total in l1 - l..=l1 + l {
                         let value = wigner_6j(2 * l, 2 * l0, 2 * l1, 2 * l, 2 * total, 2 * l2);
-                        orbital.push(signed(l1 + l2, value));
+                        values.push(signed(l1 + l2, value));
                     }
                 }
             }
         }
-        Exchange {
-            previous,
-            l,
-            orbital,
-        }
+        OrbitalFactors { l, values }
     }
 
-    fn orbital(&self, l0: u32, l1: u32, l2: u32, total: u32) -> f64 {
+    fn at(&self, l0: u32, l1: u32, l2: u32, total: u32) -> f64 {
         let [l0, l1, l2, total] =
             [l0, l1, l2, total].map(|value| i32::try_from(value).unwrap_or(0));
         let width = 2 * self.l + 1;
@@ -103,115 +216,48 @@ impl<'a> Exchange<'a> {
             + self.l;
         usize::try_from(place)
             .ok()
-            .and_then(|place| self.orbital.get(place))
+            .and_then(|place| self.values.get(place))
             .copied()
             .unwrap_or(0.0)
     }
+}
 
-    /// (1 − (N−1) P)/N between the parents at `places`, coupled to the child's S L: the projector
-    /// on what is antisymmetric in all N electrons.
-    fn antisymmetriser(&self, child: &EquivalentTerm, places: &[usize]) -> DMatrix<f64> {
-        let (parents, grandparents) = (self.previous.children(), self.previous.parents());
-        let before = f64::from(self.previous.electrons());
-        let spin = |s0: i32, s1: i32, s2: i32| {
+/// −(−1)^(S₁+S₂) √[(2S₁+1)(2S₂+1)] {½ S₀ S₁; ½ S S₂} for one S: S₁ and S₂ differ from it by ½, S₀
+/// by 0 or 1.
+struct SpinFactors {
+    two_s: i32,
+    values: [f64; 12],
+}
+
+impl SpinFactors {
+    fn new(two_s: i32) -> Self {
+        let mut values = [0.0; 12];
+        for (place, value) in (0..).zip(&mut values) {
+            let (s0, s1, s2) = (
+                two_s - 2 + place / 4 * 2,
+                two_s - 1 + place / 2 % 2 * 2,
+                two_s - 1 + place % 2 * 2,
+            );
             let root = (f64::from(s1 + 1) * f64::from(s2 + 1)).sqrt();
-            signed(
-                (s1 + s2) / 2 + 1,
-                root * wigner_6j(1, s0, s1, 1, child.two_s, s2),
-            )
-        };
-        // S₀, S₁, S₂ differ from S by whole numbers 0 or ±2 (doubled ±1 for S₁ and S₂).
-        let mut spins = Vec::with_capacity(12);
-        for s0 in [child.two_s - 2, child.two_s, child.two_s + 2] {
-            for s1 in [child.two_s - 1, child.two_s + 1] {
-                for s2 in [child.two_s - 1, child.two_s + 1] {
-                    spins.push(spin(s0, s1, s2));
-                }
-            }
+            *value = signed((s1 + s2) / 2 + 1, root * wigner_6j(1, s0, s1, 1, two_s, s2));
         }
-        let spin = |s0: i32, s1: i32, s2: i32| {
-            let place = ((s0 - child.two_s + 2) / 2 * 2 + (s1 - child.two_s + 1) / 2) * 2
-                + (s2 - child.two_s + 1) / 2;
-            usize::try_from(place)
-                .ok()
-                .and_then(|place| spins.get(place))
-                .copied()
-                .unwrap_or(0.0)
-        };
-        let mut matrix = DMatrix::identity(places.len(), places.len());
-        for (row, &left) in places.iter().enumerate() {
-            for (column, &right) in places.iter().enumerate().take(row + 1) {
-                let (Some(one), Some(two)) = (parents.get(left), parents.get(right)) else {
-                    continue;
-                };
-                let rows = self.previous.row(left).iter().zip(self.previous.row(right));
-                let mut sum = 0.0;
-                for (grandparent, (&c1, &c2)) in grandparents.iter().zip(rows) {
-                    if c1 != 0.0 && c2 != 0.0 {
-                        sum += c1
-                            * c2
-                            * spin(grandparent.two_s, one.two_s, two.two_s)
-                            * self.orbital(
-                                grandparent.l_total,
-                                one.l_total,
-                                two.l_total,
-                                child.l_total,
-                            );
-                    }
-                }
-                let root = (f64::from(2 * one.l_total + 1) * f64::from(2 * two.l_total + 1)).sqrt();
-                let unit = f64::from(u8::from(row == column));
-                let value = (unit - before * sum * root) / (before + 1.0);
-                for place in [(row, column), (column, row)] {
-                    if let Some(entry) = matrix.get_mut(place) {
-                        *entry = value;
-                    }
-                }
-            }
-        }
-        matrix
+        SpinFactors { two_s, values }
+    }
+
+    fn at(&self, s0: i32, s1: i32, s2: i32) -> f64 {
+        let place = (s0 - self.two_s + 2) / 2 * 4
+            + (s1 - self.two_s + 1) / 2 * 2
+            + (s2 - self.two_s + 1) / 2;
+        usize::try_from(place)
+            .ok()
+            .and_then(|place| self.values.get(place))
+            .copied()
+            .unwrap_or(0.0)
     }
 }
 
 fn signed(exponent: i32, value: f64) -> f64 {
     if exponent & 1 == 0 { value } else { -value }
-}
-
-/// An orthonormal basis of the range of a projector of known rank: the columns that reach farthest
-/// out of the span of those taken before, made orthogonal twice.
-fn range(projector: &DMatrix<f64>, rank: usize) -> Vec<DVector<f64>> {
-    let mut columns: Vec<DVector<f64>> = projector
-        .column_iter()
-        .map(|column| column.into_owned())
-        .collect();
-    let mut basis: Vec<DVector<f64>> = Vec::with_capacity(rank);
-    for _ in 0..rank {
-        let mut best: Option<&DVector<f64>> = None;
-        for column in &columns {
-            // A clear lead, so that rounding does not choose between equals.
-            if best.is_none_or(|best| column.norm_squared() > best.norm_squared() + ZERO) {
-                best = Some(column);
-            }
-        }
-        let Some(mut chosen) = best.cloned() else {
-            break;
-        };
-        for earlier in &basis {
-            let overlap = earlier.dot(&chosen);
-            chosen.axpy(-overlap, earlier, 1.0);
-        }
-        let length = chosen.norm();
-        if length < ZERO {
-            break;
-        }
-        chosen /= length;
-        for column in &mut columns {
-            let overlap = chosen.dot(column);
-            column.axpy(-overlap, &chosen, 1.0);
-        }
-        basis.push(chosen);
-    }
-    basis
 }
 
 /// The basis turned so that each vector is one of the terms: by R(2ℓ+1) first, then by G₂ among
@@ -307,30 +353,26 @@ fn turn(
 /// reach for itself, with a positive coefficient.
 fn fix_basis(rows: &mut [DVector<f64>]) {
     let width = rows.first().map_or(0, |row| row.len());
-    let mut left = rows.to_vec();
     let mut fixed: Vec<DVector<f64>> = Vec::with_capacity(rows.len());
     for place in 0..width {
         if fixed.len() == rows.len() {
             break;
         }
-        // The projection of this parent on what is left of the span.
+        // The projection of this parent on the span, less what is fixed already.
         let mut chosen = DVector::zeros(width);
-        for row in &left {
+        for row in rows.iter() {
             chosen.axpy(row.get(place).copied().unwrap_or(0.0), row, 1.0);
         }
+        for _ in 0..2 {
+            for earlier in &fixed {
+                let overlap = earlier.dot(&chosen);
+                chosen.axpy(-overlap, earlier, 1.0);
+            }
+        }
         let length = chosen.norm();
-        if length < ZERO.sqrt() {
-            continue;
-        }
-        chosen /= length;
-        for row in &mut left {
-            let overlap = chosen.dot(row);
-            row.axpy(-overlap, &chosen, 1.0);
-        }
-        left = range(&DMatrix::from_columns(&left), left.len().saturating_sub(1));
-        fixed.push(chosen);
-        if left.is_empty() {
-            break;
+        if length > ZERO.sqrt() {
+            chosen /= length;
+            fixed.push(chosen);
         }
     }
     for (row, chosen) in rows.iter_mut().zip(fixed) {
