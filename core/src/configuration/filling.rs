@@ -2,7 +2,7 @@
 
 use std::cmp::Reverse;
 
-use super::occupation::{Configuration, observed_configuration};
+use super::occupation::{Configuration, configuration_of};
 use super::orbital::{Orbital, Subshell};
 use crate::elements::{HEAVIEST, ObservedGround, observed_ground};
 
@@ -129,9 +129,10 @@ pub fn ground(z: u8, charge: i32) -> Option<Ground> {
 }
 
 fn tabulated(z: u8, charge: i32) -> Option<Observed> {
+    let entry = observed_ground(z, charge)?;
     Some(Observed {
-        configuration: observed_configuration(z, charge)?,
-        entry: observed_ground(z, charge)?,
+        configuration: configuration_of(&entry)?,
+        entry,
     })
 }
 
@@ -211,7 +212,7 @@ mod tests {
     }
 
     #[test]
-    fn the_observed_configuration_wins() {
+    fn the_configuration_of_wins() {
         let chromium = ground(24, 0).unwrap();
         assert!(chromium.differs);
         assert_eq!(chromium.used, Used::Observed);

@@ -4,7 +4,7 @@ use std::fmt;
 use std::sync::LazyLock;
 
 use super::orbital::{Orbital, Subshell};
-use crate::elements::{HEAVIEST, observed_ground, symbol};
+use crate::elements::{HEAVIEST, ObservedGround, observed_ground, symbol};
 
 /// Atomic numbers of the noble gases, whose symbols abbreviate a core.
 pub const NOBLE_GASES: [u8; 7] = [2, 10, 18, 36, 54, 86, 118];
@@ -127,9 +127,8 @@ pub fn join(subshells: &[Subshell]) -> String {
         .join(" ")
 }
 
-/// The tabulated ground configuration of a neutral atom or ion.
-pub(super) fn observed_configuration(z: u8, charge: i32) -> Option<Configuration> {
-    let ground = observed_ground(z, charge)?;
+/// The configuration of a table's entry.
+pub(super) fn configuration_of(ground: &ObservedGround) -> Option<Configuration> {
     let subshells = ground
         .subshells
         .iter()
@@ -142,7 +141,8 @@ pub(super) fn observed_configuration(z: u8, charge: i32) -> Option<Configuration
 pub fn closed_core(z: u8) -> Option<&'static Configuration> {
     // Asked for several times at every keystroke: decoded once.
     static CORES: LazyLock<Vec<Option<Configuration>>> = LazyLock::new(|| {
-        let closed = |z| observed_configuration(z, 0).filter(|core| core.open().is_empty());
+        let closed =
+            |z| configuration_of(&observed_ground(z, 0)?).filter(|core| core.open().is_empty());
         (0..=HEAVIEST).map(closed).collect()
     });
     CORES.get(usize::from(z))?.as_ref()
@@ -167,7 +167,7 @@ mod tests {
 
     #[test]
     fn iron_reads_as_usual() {
-        let iron = observed_configuration(26, 0).unwrap();
+        let iron = configuration_of(&observed_ground(26, 0).unwrap()).unwrap();
         assert_eq!(iron.to_string(), "1s2 2s2 2p6 3s2 3p6 3d6 4s2");
         assert_eq!(iron.short_text(), "[Ar] 3d6 4s2");
         assert_eq!(iron.valence_text(), "3d6 4s2");

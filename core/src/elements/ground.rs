@@ -4,11 +4,27 @@
 //! `core/data/NOTICE`. `core/data/generate.py` describes the format of the data file.
 
 use std::fmt;
+use std::sync::LazyLock;
 
 use super::level::{LevelSymbol, read_level};
 use super::names::by_symbol;
 
 const DATA: &str = include_str!("../../data/ground_levels.txt");
+
+/// The lines of the data, found once: they are looked up at every keystroke.
+struct Table {
+    codes: Vec<&'static str>,
+    runs: Vec<&'static str>,
+}
+
+static TABLE: LazyLock<Table> = LazyLock::new(|| {
+    let mut lines = DATA.lines();
+    let codes = lines.next().unwrap_or("").split(' ').collect();
+    Table {
+        codes,
+        runs: lines.collect(),
+    }
+});
 
 /// Letters of ℓ that occur in ground configurations.
 const LETTERS: &str = "spdf";
@@ -97,11 +113,10 @@ pub fn observed_ground(z: u8, charge: i32) -> Option<ObservedGround> {
     let electrons = i32::from(z)
         .checked_sub(charge)
         .filter(|n| (1..=i32::from(z)).contains(n))?;
-    let mut lines = DATA.lines();
-    let codes = lines.next()?;
     let wanted = electrons.to_string();
     // Every sequence has its four lines, so the place is known.
-    let mut own = lines.skip(usize::try_from(electrons - 1).ok()?.checked_mul(4)?);
+    let first = usize::try_from(electrons - 1).ok()?.checked_mul(4)?;
+    let mut own = TABLE.runs.get(first..)?.iter();
     let mut track = |name: &str| -> Option<&'static str> {
         let mut parts = own.next()?.split('|');
         (parts.next()? == wanted && parts.next()? == name).then_some(())?;
@@ -125,7 +140,7 @@ pub fn observed_ground(z: u8, charge: i32) -> Option<ObservedGround> {
         },
         references: references
             .split(',')
-            .filter_map(|number| codes.split(' ').nth(number.parse().ok()?))
+            .filter_map(|number| TABLE.codes.get(number.parse::<usize>().ok()?).copied())
             .collect(),
     })
 }
