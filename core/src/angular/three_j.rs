@@ -239,6 +239,43 @@ mod tests {
         }
     }
 
+    /// In 64 bits, in 128 bits and in digits, up to where 128 bits no longer suffice.
+    #[test]
+    fn all_routes_give_the_same_integer() {
+        let (mut narrow, mut middle, mut wide) = (0, 0, 0);
+        for two_j in 20..64 {
+            for two_m1 in (-two_j..=two_j).step_by(2) {
+                for two_j3 in [two_j & !1, (2 * two_j - 6).min(66)] {
+                    let two_m2 = -two_m1 / 3 * 2 + two_j % 2;
+                    let m = [two_m1, two_m2, -two_m1 - two_m2];
+                    let Some(case) = Case::of([two_j, two_j, two_j3], m) else {
+                        continue;
+                    };
+                    let (negative, magnitude) = case.wide_sum();
+                    match case
+                        .triad
+                        .is_small()
+                        .then(|| case.small_sum(triangle()))
+                        .flatten()
+                    {
+                        Some(small) => {
+                            assert_eq!(magnitude, Natural::from_u128(small.unsigned_abs()));
+                            assert!(small == 0 || negative == (small < 0));
+                            let digits = 128 - small.unsigned_abs().leading_zeros();
+                            *(if digits < 60 {
+                                &mut narrow
+                            } else {
+                                &mut middle
+                            }) += 1;
+                        }
+                        None => wide += 1,
+                    }
+                }
+            }
+        }
+        assert!(narrow > 50 && wide > 50, "{narrow} {middle} {wide}");
+    }
+
     #[test]
     fn a_zero_argument_gives_the_closed_form() {
         for two_j in [1, 2, 7, 40, 121] {
