@@ -4,6 +4,7 @@ use std::collections::HashMap;
 
 use rungline_core::angular::equivalent::EquivalentTerm;
 use rungline_core::angular::parentage::{Parentage, parents};
+use rungline_core::angular::unit_tensors::unit_tensor;
 use rungline_core::angular::wigner_6j;
 use rungline_tests::{Row, report};
 
@@ -332,4 +333,105 @@ fn a_closed_pair_leads_to_seniority_one_alone() {
             "{from_closed:?} {expected}"
         );
     }
+}
+
+/// The total spin and orbital angular momentum are multiples of unit tensors:
+/// S = √(3/2) √(2ℓ+1) W^(10) and L = √[2 ℓ(ℓ+1)(2ℓ+1)] W^(01), diagonal with
+/// √[S(S+1)(2S+1)(2L+1)] and √[L(L+1)(2L+1)(2S+1)].
+#[test]
+fn unit_tensors_of_rank_one_are_the_total_angular_momenta() {
+    for (l, electrons) in [
+        (1_u8, 2),
+        (1, 4),
+        (2, 3),
+        (2, 5),
+        (2, 7),
+        (3, 3),
+        (3, 5),
+        (3, 8),
+        (3, 12),
+    ] {
+        let two_l = f64::from(2 * l);
+        let spin = unit_tensor(l, electrons, 1, 0).expect("within bounds");
+        let orbital = unit_tensor(l, electrons, 0, 1).expect("within bounds");
+        let for_spin = (1.5 * (two_l + 1.0)).sqrt();
+        let for_orbital = (two_l * (two_l + 2.0) / 2.0 * (two_l + 1.0)).sqrt();
+        for (row, term) in spin.terms().iter().enumerate() {
+            let (s, total) = (f64::from(term.two_s) / 2.0, f64::from(term.l_total));
+            for column in 0..spin.terms().len() {
+                let diagonal = f64::from(u8::from(row == column));
+                let expected =
+                    (s * (s + 1.0) * (2.0 * s + 1.0) * (2.0 * total + 1.0)).sqrt() * diagonal;
+                assert!(
+                    (for_spin * spin.element(row, column) - expected).abs() < 1e-12,
+                    "{l} {electrons} {term:?}"
+                );
+                let expected = (total * (total + 1.0) * (2.0 * total + 1.0) * (2.0 * s + 1.0))
+                    .sqrt()
+                    * diagonal;
+                assert!(
+                    (for_orbital * orbital.element(row, column) - expected).abs() < 1e-12,
+                    "{l} {electrons}"
+                );
+            }
+        }
+    }
+}
+
+/// G(R) = Σ_k odd (2k+1) U^k·U^k/(2ℓ−1) and G(G₂) = [3 U¹·U¹ + 11 U⁵·U⁵]/4 (Racah 1949) between
+/// states built from parents: diagonal, with the eigenvalues of the labels.
+#[test]
+fn casimir_operators_of_unit_tensors_are_diagonal_in_the_terms() {
+    let (mut worst, mut cases) = (0.0_f64, 0);
+    for (l, electrons) in [(2_u8, 3), (2, 5), (2, 7), (3, 3), (3, 5), (3, 8)] {
+        let odd: Vec<(u8, _)> = (1..2 * l)
+            .step_by(2)
+            .map(|k| (k, unit_tensor(l, electrons, 0, k).expect("within bounds")))
+            .collect();
+        let terms = odd[0].1.terms();
+        for (row, one) in terms.iter().enumerate() {
+            for (column, two) in terms.iter().enumerate() {
+                if (one.two_s, one.l_total) != (two.two_s, two.l_total) {
+                    continue;
+                }
+                // ⟨U^k·U^k⟩ = Σ |⟨‖U^k‖⟩|²/(2L+1) and U^k = √[2/(2S+1)] W^(0k).
+                let square = |k: u8| -> f64 {
+                    let tensor = &odd.iter().find(|found| found.0 == k).expect("odd").1;
+                    let sum: f64 = (0..terms.len())
+                        .map(|between| {
+                            let sign = if (one.l_total + terms[between].l_total) % 2 == 0 {
+                                1.0
+                            } else {
+                                -1.0
+                            };
+                            sign * tensor.element(row, between) * tensor.element(between, column)
+                        })
+                        .sum();
+                    2.0 * sum / degeneracy(one)
+                };
+                let diagonal = f64::from(u8::from(row == column));
+                let rotation: f64 = odd
+                    .iter()
+                    .map(|&(k, _)| f64::from(2 * k + 1) * square(k) / f64::from(2 * l - 1))
+                    .sum();
+                worst = worst.max((rotation - diagonal * one.rotation_casimir.expect("R")).abs());
+                if l == 3 {
+                    let exceptional = (3.0 * square(1) + 11.0 * square(5)) / 4.0;
+                    worst = worst.max((exceptional - diagonal * one.g2_casimir.expect("G2")).abs());
+                }
+                cases += 1;
+            }
+        }
+    }
+    report(
+        "parentage_casimirs",
+        Row {
+            quantity: "Casimir operators between states built from parents, d and f".into(),
+            cases,
+            worst,
+            tolerance: 1e-12,
+            measure: "absolute".into(),
+            source: "Racah, Phys. Rev. 76, 1352 (1949)".into(),
+        },
+    );
 }

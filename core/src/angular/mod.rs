@@ -9,6 +9,7 @@ mod racah_sum;
 mod six_j;
 mod three_j;
 mod triad;
+pub mod unit_tensors;
 
 pub use nine_j::{NINE_J_CAPACITY, try_wigner_9j, wigner_9j};
 pub use six_j::{try_wigner_6j, wigner_6j};

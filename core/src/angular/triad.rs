@@ -3,6 +3,7 @@
 use crate::numerics::binomial::{LARGEST_ROW, Triangle, binomial};
 use crate::numerics::natural::{Natural, Scaled};
 use crate::problem::Problem;
+use crate::quantity::TwiceJ;
 
 /// The largest doubled angular momentum up to which 3j and 6j symbols are computed: j = 2000.
 ///
@@ -83,20 +84,20 @@ pub(super) fn signed_root(negative: bool, magnitude: &Natural, square: Scaled) -
     if negative { -value } else { value }
 }
 
-/// The fault of arguments beyond the capacity.
+/// The fault of arguments beyond the capacity, both doubled.
 pub(super) fn beyond(symbol: &str, largest: i32, capacity: i32) -> Problem {
+    let (largest, capacity) = (
+        TwiceJ::from_doubled(largest),
+        TwiceJ::from_doubled(capacity),
+    );
     Problem::new(
         "angular-momentum-too-large",
-        format!(
-            "The {symbol} symbol of j = {}/2 is beyond what is computed exactly.",
-            largest
-        ),
+        format!("The {symbol} symbol with j = {largest} is beyond what is computed exactly."),
         0,
         0,
     )
     .bound(format!(
-        "{symbol} symbols are computed up to j = {}",
-        capacity / 2
+        "{symbol} symbols are computed up to j = {capacity}"
     ))
 }
 
