@@ -87,7 +87,7 @@ class Lines {
     const picked = chosen?.startsWith("line:") ? [...lines, ...refused].find((one) => lineId(one) === chosen) : null;
     const [name, multipole] = this.multiplet.value().split("|");
     const listed = multiplets.find((one) => one.name === name && one.multipole === multipole)
-      ?? multiplets.reduce((best, one) => (best === null || one.lines > best.lines ? one : best), null);
+      ?? multiplets.reduce((best, one) => (best === null || weightOf(one) > weightOf(best) ? one : best), null);
     const sample = picked ?? lines.find((line) => line.multiplet === listed?.name && line.multipole === listed?.multipole) ?? lines[0] ?? refused[0];
     return sample === undefined ? null : this.#pair(this.#levels.get(sample.upper), this.#levels.get(sample.lower));
   }
@@ -135,7 +135,7 @@ class Lines {
     const names = multipletNames(this.#answer);
     const rows = this.#answer.multiplets.flatMap((one) => ["lower", "upper"].flatMap((side) => (one[`${side}_sums`] ?? []).map((sum) => ({ ...sum, side, one }))));
     return dataTable({
-      caption: "Strengths summed over the lines that share a level, against 2J\u00a0+\u00a01", rows, context: this.#context, file: "sum rules",
+      caption: "Strengths summed over the lines that share a level, and what the sum rule expects", rows, context: this.#context, file: "sum rules",
       columns: [
         { name: "multiplet", type: "text", value: (row) => `${row.one.name}, ${row.one.multipole}`, rich: (row) => [...(names.get(row.one.name) ?? [row.one.name]), `, ${row.one.multipole}`] },
         { name: "level", type: "text", value: (row) => row.side },
@@ -168,6 +168,11 @@ function linesTable(rows, answer, levels, context) {
 /** Each multiplet's name as rich text. */
 function multipletNames({ multiplets = [] }) {
   return new Map(multiplets.filter((one) => one.lower_rich?.length).map((one) => [one.name, [...one.lower_rich, ARROW, ...one.upper_rich]]));
+}
+
+// The multiplet shown first: an E1 one if there is any, and the fullest.
+function weightOf({ multipole, lines }) {
+  return lines + (multipole === "E1" ? 1e9 : 0);
 }
 
 /** Label → {label, rich, J, term, termRich, key}; `key` is the same for all levels of one term. */

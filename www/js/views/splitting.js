@@ -16,7 +16,6 @@ export function render(answer, context) {
 
 function evidence(answer, context) {
   const { components, line, field } = answer;
-  if (!components?.length) return statesTable(answer, context);
   const kind = (key) => kindOf(answer, `components.${key}`);
   const lineName = [...line.upper_rich, " to ", ...line.lower_rich];
   const units = Object.entries(OFFSET_UNITS).filter(([key]) => components.some((component) => component[key] !== null && component[key] !== undefined));
@@ -26,13 +25,18 @@ function evidence(answer, context) {
   const words = () => (view.value() === "seen" ? viewWords(field) : VIEWS[view.value()]);
   const layout = () => patternLayout({ components, unit: unit.value(), view: view.value(), viewWords: words(), kindOf: kind });
   const name = () => ["Pattern of ", ...lineName, ` in ${field.text}, ${words()}`];
-  const near = element("div", {}, componentsTable(answer, context));
+  const near = element("div", {});
   const shown = picture({
     context, name: name(), layout: layout(),
     rest: "Walk over the components with the arrow keys or point at them.",
     tableNear: () => near.querySelector(".table-region").focus(),
   });
+  fillTable();
+  function fillTable() {
+    near.replaceChildren(componentsTable(answer, context, unit.value(), view.value()));
+  }
   function redraw() {
+    fillTable();
     shown.redraw({ layout: layout(), name: name() });
   }
   return element("div", { class: "evidence-parts" },
@@ -49,25 +53,26 @@ function viewWords(field) {
   return `at ${field.angle_degrees}° to the field`;
 }
 
-function componentsTable(answer, context) {
+// What was chosen for the picture stands first among the offsets and the strengths.
+function componentsTable(answer, context, unit, view) {
   const { components, line, field } = answer;
-  const kind = (key) => kindOf(answer, `components.${key}`);
-  const sign = ({ polarisation }) => [{ sign: SIGNS[polarisation] }];
+  const column = (key, name, unitName = null) => ({
+    name, unit: unitName, type: "number", kind: kindOf(answer, `components.${key}`), value: (row) => row[key],
+    reason: "needs the wavelength of the line",
+  });
+  const firstOf = (keys, key) => [key, ...keys.filter((other) => other !== key)];
+  const names = { strength: "over all directions", across: "across", along: "along", seen: `seen ${viewWords(field)}` };
   return dataTable({
     caption: ["Components of ", ...line.upper_rich, " to ", ...line.lower_rich, ` in ${field.text}: ${answer.pattern}`],
     rows: components, context, file: `pattern ${line.upper} to ${line.lower} ${field.text}`,
     columns: [
-      { name: "polarisation", type: "text", value: (row) => SIGNS[row.polarisation].plain, rich: sign },
+      { name: "polarisation", type: "text", value: (row) => SIGNS[row.polarisation].plain, rich: (row) => [{ sign: SIGNS[row.polarisation] }] },
       { name: "M upper", type: "half", value: (row) => row.M_upper },
       { name: "M lower", type: "half", value: (row) => row.M_lower },
-      { name: "offset", unit: "mu_B B", type: "number", kind: kind("lorentz"), value: (row) => row.lorentz },
-      { name: "offset", unit: "cm-1", type: "number", kind: kind("offset"), value: (row) => row.offset },
-      { name: "offset", unit: "GHz", type: "number", kind: kind("ghz"), value: (row) => row.ghz },
-      { name: "offset", unit: "pm", type: "number", kind: kind("pm"), value: (row) => row.pm, reason: "needs the wavelength of the line" },
-      { name: "strength", type: "number", kind: kind("strength"), value: (row) => row.strength },
-      { name: "across", type: "number", kind: kind("across"), value: (row) => row.across },
-      { name: "along", type: "number", kind: kind("along"), value: (row) => row.along },
-      { name: `seen ${viewWords(field)}`, type: "number", kind: kind("seen"), value: (row) => row.seen },
+      column(unit, "offset", OFFSET_UNITS[unit].unit),
+      column(view, `strength, ${names[view]}`),
+      ...firstOf(Object.keys(OFFSET_UNITS), unit).slice(1).map((key) => column(key, "offset", OFFSET_UNITS[key].unit)),
+      ...firstOf(Object.keys(names), view).slice(1).map((key) => column(key, `strength, ${names[key]}`)),
     ],
   });
 }
@@ -76,7 +81,7 @@ function statesTable(answer, context) {
   return dataTable({
     caption: `States in ${answer.field.text}`, rows: answer.states ?? [], context, file: `states in ${answer.field.text}`,
     columns: [
-      { name: "level", type: "text", value: (row) => row.level ?? row.configuration },
+      { name: "level", type: "text", value: (row) => row.level, rich: (row) => (row.level === answer.line.upper ? answer.line.upper_rich : answer.line.lower_rich) },
       { name: "M", type: "half", value: (row) => row.M },
       { name: "energy from the level", unit: "cm-1", type: "number", kind: kindOf(answer, "states.energy"), value: (row) => row.energy },
     ],
@@ -85,7 +90,7 @@ function statesTable(answer, context) {
 
 function fan(answer, context, lineName) {
   const { line, states, components, field } = answer;
-  const side = (label, rich) => ({ runs: richRuns(rich), plain: richPlain(rich), speech: richSpeech(rich), states: states.filter((state) => (state.level ?? "") === label) });
+  const side = (label, rich) => ({ runs: richRuns(rich), plain: richPlain(rich), speech: richSpeech(rich), states: states.filter((state) => state.level === label) });
   const [upper, lower] = [side(line.upper, line.upper_rich), side(line.lower, line.lower_rich)];
   if (upper.states.length === 0 || lower.states.length === 0) return element("p", { class: "note" }, richNode(["These levels have no states of their own in the answer."]));
   return picture({

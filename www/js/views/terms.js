@@ -46,8 +46,8 @@ export function termsTable(entry, context) {
   const group = "only for repeated terms of one open d or f shell";
   const columns = [
     { name: "term", type: "text", value: (row) => richPlain(termRich(row)), rich: termRich },
-    { name: "times", type: "number", value: (row) => row.times },
     { name: "J", type: "text", value: (row) => row.J.join(", ") },
+    { name: "times", type: "number", value: (row) => row.times },
     has("seniority") && { name: "seniority", type: "number", value: (row) => row.seniority, reason: group },
     has("W") && { name: "W", type: "text", value: (row) => (row.W ? `(${row.W.join(" ")})` : null), reason: group },
     has("U") && { name: "U", type: "text", value: (row) => (row.U ? `(${row.U.join(" ")})` : null), reason: "only for f shells" },

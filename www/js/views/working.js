@@ -8,8 +8,8 @@ import { richNode } from "../rich.js";
 export function workingNode(answer, settings) {
   return element("div", { class: "steps" }, ...(answer.working ?? []).map((step) => element("div", { class: "step" },
     element("h4", { text: step.title }),
-    step.formula ? formulaNode(step.formula) : null,
-    step.numbers ? formulaNode(step.numbers) : null,
+    step.formula ? formulaNode(step.formula, settings) : null,
+    step.numbers ? formulaNode(step.numbers, settings) : null,
     step.result ? element("p", { class: "result" }, richNode(step.result, settings)) : null,
     step.source ? element("p", { class: "note", text: `Source: ${step.source}` }) : null)));
 }
