@@ -61,7 +61,7 @@ class DataTable {
     const many = this.#rows.length > DRAW_ALL;
     const captionId = freshId("caption");
     const table = element("table", { class: `data${many ? " many" : ""}`, "aria-rowcount": many ? this.#rows.length + 1 : null },
-      element("caption", { id: captionId }, richNode(this.#caption, this.#context.settings)),
+      element("caption", { id: captionId }, element("span", { class: "caption-line" }, richNode(this.#caption, this.#context.settings))),
       element("thead", {}, element("tr", { "aria-rowindex": many ? 1 : null }, ...this.#columns.map((column, i) => this.#head(column, i)))),
       this.#body);
     this.#region = element("div", { class: "table-region", tabindex: "0", role: "region", "aria-labelledby": captionId }, table);

@@ -46,7 +46,7 @@ class Lines {
     this.node = element("div", { class: "evidence-parts" },
       element("div", { class: "choices" }, this.multipole.node, this.multiplet.node, this.dotted.node),
       multiplets?.length > listed.length ? element("p", { class: "note", text: `The list has the first ${listed.length} multiplets with lines.` }) : null,
-      element("div", { class: "table-and-picture" }, this.#tableBox, this.#picture()),
+      element("div", { class: "table-and-picture picture-stays" }, this.#tableBox, this.#picture()),
       element("div", { class: "parts" },
         refused?.length ? fold(context, "lines:refused-table", [`Refused pairs and the rules that refuse them (${refused.length})`], () => this.#refusedTable()) : null,
         multiplets?.length ? fold(context, "lines:sums", ["Sum rules of each multiplet"], () => this.#sums()) : null));

@@ -61,7 +61,7 @@ function componentsTable(answer, context, unit, view) {
     reason: "needs the wavelength of the line",
   });
   const firstOf = (keys, key) => [key, ...keys.filter((other) => other !== key)];
-  const names = { strength: "over all directions", across: "across", along: "along", seen: `seen ${viewWords(field)}` };
+  const names = { strength: "over all directions", across: "across", along: "along", seen: "as seen" };
   return dataTable({
     caption: ["Components of ", ...line.upper_rich, " to ", ...line.lower_rich, ` in ${field.text}: ${answer.pattern}`],
     rows: components, context, file: `pattern ${line.upper} to ${line.lower} ${field.text}`,
