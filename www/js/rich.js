@@ -95,9 +95,9 @@ function describeTerm({ multiplicity, letter, odd = false, J = null, index = nul
 }
 
 function describeConfiguration({ core = null, subshells = [] }) {
-  const runs = core === null ? [] : [{ text: `[${core}]${subshells.length ? "\u00a0" : ""}` }];
+  const runs = core === null ? [] : [{ text: `[${core}]${subshells.length ? " " : ""}` }];
   subshells.forEach(({ label, electrons }, i) => {
-    runs.push({ text: (i > 0 ? "\u00a0" : "") + label });
+    runs.push({ text: (i > 0 ? " " : "") + label });
     if (electrons !== 1) runs.push({ up: String(electrons) });
   });
   const names = subshells.map(({ label, electrons }) => label + (electrons === 1 ? "" : electrons));
@@ -113,7 +113,7 @@ function describeJj({ subshells, J = null }) {
   const many = J !== null;
   const runs = [{ text: many ? "(" : "" }];
   subshells.forEach(({ label, j, electrons }, i) => {
-    runs.push({ text: (i > 0 ? "\u00a0" : "") + label }, electrons === 1 ? { down: j } : { up: String(electrons), down: j });
+    runs.push({ text: (i > 0 ? " " : "") + label }, electrons === 1 ? { down: j } : { up: String(electrons), down: j });
   });
   if (many) runs.push({ text: ")" }, { down: J });
   const inner = subshells.map(({ label, j, electrons }) => `${label}(${j})${electrons === 1 ? "" : electrons}`).join(" ");

@@ -58,9 +58,9 @@ test("thirty terms are said as the trade says them, and seen with every part", (
 
 const OTHERS = [
   [{ configuration: { core: null, subshells: [{ label: "3d", electrons: 6 }] } }, "3 d 6", "3d6", "3d|6"],
-  [{ configuration: { core: "Ar", subshells: [{ label: "3d", electrons: 6 }, { label: "4s", electrons: 2 }] } }, "Ar core, 3 d 6, 4 s 2", "[Ar] 3d6 4s2", "[Ar]\u00a0|3d|6|\u00a04s|2"],
+  [{ configuration: { core: "Ar", subshells: [{ label: "3d", electrons: 6 }, { label: "4s", electrons: 2 }] } }, "Ar core, 3 d 6, 4 s 2", "[Ar] 3d6 4s2", "[Ar] |3d|6| 4s|2"],
   [{ configuration: { core: null, subshells: [{ label: "3p", electrons: 1 }] } }, "3 p", "3p", "3p"],
-  [{ configuration: { core: "Xe", subshells: [{ label: "4f", electrons: 14 }, { label: "5d", electrons: 1 }] } }, "Xe core, 4 f 14, 5 d", "[Xe] 4f14 5d", "[Xe]\u00a0|4f|14|\u00a05d"],
+  [{ configuration: { core: "Xe", subshells: [{ label: "4f", electrons: 14 }, { label: "5d", electrons: 1 }] } }, "Xe core, 4 f 14, 5 d", "[Xe] 4f14 5d", "[Xe] |4f|14| 5d"],
   [{ configuration: { core: "He", subshells: [] } }, "He core", "[He]", "[He]"],
   [{ configuration: { core: null, subshells: [{ label: "30[21]", electrons: 2 }] } }, "30 21 2", "30[21]2", "30[21]|2"],
   [{ species: { symbol: "Fe", charge: 0, stage: "I", mass_number: null } }, "Fe 1", "Fe I", "Fe\u00a0I"],
@@ -69,7 +69,7 @@ const OTHERS = [
   [{ species: { symbol: "*", charge: 0, stage: "", mass_number: null } }, "any atom", "*", "any atom"],
   [{ jj: { subshells: [{ label: "3d", j: "3/2", electrons: 4 }], J: null } }, "3 d three halves times 4", "3d(3/2)4", "3d|4/3/2"],
   [{ jj: { subshells: [{ label: "3d", j: "3/2", electrons: 4 }, { label: "3d", j: "5/2", electrons: 2 }], J: "4" } },
-    "3 d three halves times 4, 3 d five halves times 2, J 4", "3d(3/2)4 3d(5/2)2 J=4", "(|3d|4/3/2|\u00a03d|2/5/2|)|4"],
+    "3 d three halves times 4, 3 d five halves times 2, J 4", "3d(3/2)4 3d(5/2)2 J=4", "(|3d|4/3/2| 3d|2/5/2|)|4"],
   [{ jj: { subshells: [{ label: "6p", j: "1/2", electrons: 1 }], J: "1/2" } }, "6 p one half, J one half", "6p(1/2) J=1/2", "(|6p|1/2|)|1/2"],
   [{ pair: { parent: [{ term: { multiplicity: 2, letter: "P", odd: true, J: "3/2", index: null } }], multiplicity: 2, K: "3/2", odd: true, J: "2" } },
     "parent doublet P three halves, odd, doublet K three halves, J 2, odd", "(2P3/2) 2[3/2]2", "(|2|P|o/3/2|)\u00a0|2|[3/2]|o/2"],
@@ -86,7 +86,7 @@ const OTHERS = [
   [{ number: { text: "7.5", unit: "furlong", kind: null } }, "7.5 furlong", "7.5 furlong", "7.5|\u00a0|furlong"],
   ["plain words", "plain words", "plain words", "plain words"],
   [{ sign: { runs: [{ text: "σ" }, { up: "+" }], plain: "σ⁺", speech: "sigma plus" } }, "sigma plus", "σ⁺", "σ|+"],
-  [{ configuration: { core: null, subshells: [{ label: "1s", electrons: 2 }, { label: "2p", electrons: 3 }] } }, "1 s 2, 2 p 3", "1s2 2p3", "1s|2|\u00a02p|3"],
+  [{ configuration: { core: null, subshells: [{ label: "1s", electrons: 2 }, { label: "2p", electrons: 3 }] } }, "1 s 2, 2 p 3", "1s2 2p3", "1s|2| 2p|3"],
   [{ species: { symbol: "U", charge: 2, stage: "III", mass_number: 238 } }, "238 U 3", "238U III", "238|U\u00a0III"],
   [{ number: { text: "1e-30", unit: null, kind: null } }, "1.00000\u00a0×\u00a010^minus 30", "1e-30", "1.00000\u00a0×\u00a010|\u221230"],
 ];

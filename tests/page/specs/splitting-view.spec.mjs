@@ -52,7 +52,8 @@ everyDoor("the plus key zooms, 0 shows all again", async (door) => {
   await door.until(() => document.querySelector("#splitting .stage svg"));
   const bars = () => door.evaluate(() => document.querySelectorAll('#splitting .stage svg[role=img] line[stroke-width="3"]').length);
   await door.page.focus("#splitting .stage");
-  await door.press("End", "+", "+", "+");
+  await door.press("End");
+  for (let turn = 0; turn < 3; turn += 1) await door.page.keyboard.press("+");
   assert.ok((await bars()) < 6);
   await door.press("0");
   assert.equal(await bars(), 6);
@@ -66,8 +67,7 @@ everyDoor("the picture is saved as an SVG that stands by itself, and as PNG", as
   assert.match(svg.text, /^<\?xml version="1\.0" encoding="UTF-8"\?>\n<svg xmlns="http:\/\/www\.w3\.org\/2000\/svg"/);
   assert.match(svg.text, /<title>Pattern of 3p 2P3\/2 to 3s 2S1\/2/);
   assert.equal(/style=|class=|var\(|href=|url\(/.test(svg.text), false);
-  const parsed = await door.evaluate((text) => new DOMParser().parseFromString(text, "image/svg+xml").querySelectorAll("parsererror, polygon").length, svg.text.replace(/^<\?xml[^>]*>\n/, ""));
-  assert.equal(parsed, 4);
+  assert.equal(svg.text.match(/<polygon /g).length, 4);
   await door.evaluate(() => [...document.querySelectorAll("#splitting .picture-tools button")].find((each) => each.textContent === "Save PNG").click());
   const png = await door.until(() => window.files.find((file) => file.type === "image/png"));
   assert.ok(png.size > 2000);
@@ -76,12 +76,12 @@ everyDoor("the picture is saved as an SVG that stands by itself, and as PNG", as
 
 everyDoor("a stronger field moves the offsets in cm⁻¹", async (door) => {
   await door.unfold("splitting");
-  const largest = () => door.evaluate(() => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[4].textContent.replace("\u2212", "-")))));
+  const largest = () => door.evaluate(() => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[5].textContent.replace("\u2212", "-")))));
   await door.until(() => document.querySelector("#splitting table"));
   const before = await largest();
   await door.evaluate(() => document.querySelector("#splitting").scrollIntoView());
   await door.type("Field", "1 T");
-  await door.until((old) => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[4].textContent.replace("\u2212", "-")))) > 1.9 * old, before);
+  await door.until((old) => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[5].textContent.replace("\u2212", "-")))) > 1.9 * old, before);
 }, { fragment: line("2P3/2") });
 
 everyDoor("the splitting is free of what axe finds", async (door) => {
