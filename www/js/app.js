@@ -6,7 +6,8 @@ import { makeChoice } from "./choice.js";
 import { element, setText, wordButton } from "./dom.js";
 import { Engine } from "./engine.js";
 import { FaultTiming, Fields, faultNode, faultWords, wayButton } from "./fields.js";
-import { acceptDrops, fileFaults, fileName, saveFile, textOf } from "./files.js";
+import { acceptDrops } from "./files.js";
+import { Filing } from "./filing.js";
 import { Head, headWords } from "./head.js";
 import { Keeper } from "./keeper.js";
 import { listen } from "./keys.js";
@@ -81,6 +82,12 @@ class Page {
     this.timing = new FaultTiming(() => this.showReading());
     this.fields = new Fields(this.store, this.settings, this.timing);
     this.panels = { open: byId("open-panel"), settings: byId("settings-panel") };
+    this.filing = new Filing({
+      engine: this.engine, store: this.store, notes: this.notes,
+      replace: (sheet, label) => this.replace(sheet, label),
+      verdict: (name, record) => this.record.verdict(name, record),
+      toFirstFault: () => this.toFirstFault(),
+    });
     this.stopButton = wordButton("Stop", () => this.stop(), { class: "word stop", hidden: true });
   }
 
@@ -92,7 +99,7 @@ class Page {
     });
     this.words = headWords({
       open: () => this.togglePanel("open"),
-      save: () => this.saveSheet(),
+      save: () => this.filing.saveSheet(),
       undo: () => this.undo(),
       redo: () => this.redo(),
       settings: () => this.togglePanel("settings"),
@@ -107,12 +114,12 @@ class Page {
     byId("version").textContent = `Rungline ${this.questions.about.version}, constants CODATA ${this.questions.about.codata}.${RUNGLINE_PROFILE === "quick" ? " This is a quick build: slower than the one that is shipped." : ""}`;
     byId("file").addEventListener("change", ({ target }) => {
       const [file] = target.files;
-      if (file) this.openFile(file);
+      if (file) this.filing.open(file);
       target.value = "";
     });
-    acceptDrops((file) => this.openFile(file), (fault) => this.refuseFile(fault));
+    acceptDrops((file) => this.filing.open(file), (fault) => this.filing.refuse(fault));
     listen({
-      undo: () => this.undo(), redo: () => this.redo(), save: () => this.saveSheet(),
+      undo: () => this.undo(), redo: () => this.redo(), save: () => this.filing.saveSheet(),
       open: () => this.togglePanel("open", true), escape: () => this.escape(),
     });
     this.store.subscribe((change) => this.changed(change));
@@ -134,7 +141,7 @@ class Page {
       start: (name) => this.questions.ask(name, true).then(() => this.showQuestion(name)),
       again: (name) => this.questions.ask(name),
       stop: () => this.stop(),
-      save: () => this.saveSheet(),
+      save: () => this.filing.saveSheet(),
     };
     this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
       name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,
@@ -143,7 +150,7 @@ class Page {
     }));
     this.record = new RecordRung({
       numeral: this.rungs.length + 1, view: this.view, store: this.store, fields: this.fields,
-      act: { saveSheet: () => this.saveSheet(), saveRecord: () => this.saveRecord(), open: () => byId("file").click() },
+      act: { saveSheet: () => this.filing.saveSheet(), saveRecord: () => this.filing.saveRecord(), open: () => byId("file").click() },
     });
     byId("ladder").append(...this.rungs.map(({ rung }) => rung.node), this.record.rung.node);
   }
@@ -217,7 +224,7 @@ class Page {
   showReading() {
     const { broken, reading } = this.questions;
     if (broken === null) this.notes.remove("broken");
-    else this.notes.put("broken", { kind: "fault", lasting: true, more: panicNode(broken, () => this.questions.refresh(), () => this.saveSheet()) });
+    else this.notes.put("broken", { kind: "fault", lasting: true, more: panicNode(broken, () => this.questions.refresh(), () => this.filing.saveSheet()) });
     if (reading === null) return;
     const faults = this.shownFaults();
     this.fields.read(reading);
@@ -306,53 +313,6 @@ class Page {
     this.announcer.now(`${label}. Undo brings back what was here.`);
   }
 
-  async openFile(file) {
-    const { text, fault } = await textOf(file);
-    if (fault) {
-      this.refuseFile(fault);
-      return;
-    }
-    const result = await this.engine.request("open", "open", [text]);
-    if (result.text === undefined) {
-      if (result.panic) this.notes.put("file", { kind: "fault", more: panicNode(result.panic, () => this.openFile(file), () => this.saveSheet()) });
-      return;
-    }
-    const message = JSON.parse(result.text);
-    if (message.faults) {
-      this.notes.put("file", { kind: "fault", more: fileFaults(file.name, message.faults, text) });
-      return;
-    }
-    this.notes.remove("file");
-    this.replace(message.sheet, `Open "${file.name}"`);
-    if (message.record) this.record.verdict(file.name, message.record);
-  }
-
-  refuseFile(fault) {
-    this.notes.put("file", { kind: "fault", text: `${fault.message} ${fault.bound}` });
-  }
-
-  async saveSheet() {
-    await this.saveBy("save", ".rungline.json");
-  }
-
-  async saveRecord() {
-    await this.saveBy("record", ".record.json");
-  }
-
-  async saveBy(door, ending) {
-    const { sheet } = this.store;
-    const result = await this.engine.request(door, door, [sheet]);
-    if (typeof result.text !== "string") {
-      // The sheet itself needs no core to be saved.
-      if (door === "save") saveFile(fileName(sheet, ending), JSON.stringify(sheet, null, 2), this.notes);
-      else this.notes.put("saved", { kind: "fault", text: "The record could not be made: the calculation ended. Your sheet is safe." });
-      return;
-    }
-    const message = door === "record" ? parsed(result.text) : null;
-    if (message?.faults) this.notes.put("saved", { kind: "fault", text: "A record needs a sheet without faults.", buttons: [["To the first fault", () => this.toFirstFault()]] });
-    else saveFile(fileName(sheet, ending), result.text, this.notes);
-  }
-
   undo() {
     const label = this.store.undo();
     this.announcer.now(label === null ? "Nothing to undo." : `Undone: ${label}.`);
@@ -401,14 +361,6 @@ class Page {
       }));
     }
     return this.#charts.get(charge);
-  }
-}
-
-function parsed(text) {
-  try {
-    return JSON.parse(text);
-  } catch {
-    return null;
   }
 }
 

@@ -1,0 +1,83 @@
+// Opens files into the sheet and saves the sheet and its record, through the core.
+
+import { fileFaults, fileName, saveFile, textOf } from "./files.js";
+import { panicNode } from "./rungs.js";
+
+const NO_SHEET = {
+  message: "This file is JSON, but not a sheet.", path: "", start: 0, end: 0,
+  bound: "A sheet is one JSON object, in braces, with at least \"rungline\": 1.", ways: [],
+};
+
+export class Filing {
+  #engine;
+  #store;
+  #notes;
+  #replace;
+  #verdict;
+  #toFirstFault;
+
+  constructor({ engine, store, notes, replace, verdict, toFirstFault }) {
+    this.#engine = engine;
+    this.#store = store;
+    this.#notes = notes;
+    this.#replace = replace;
+    this.#verdict = verdict;
+    this.#toFirstFault = toFirstFault;
+  }
+
+  /** Opens a sheet or a record; whatever is wrong with the file, the sheet on the page stays. */
+  async open(file) {
+    const { text, fault } = await textOf(file);
+    if (fault) {
+      this.refuse(fault);
+      return;
+    }
+    const result = await this.#engine.request("open", "open", [text]);
+    if (result.text === undefined) {
+      if (result.panic) {
+        this.#notes.put("file", { kind: "fault", more: panicNode(result.panic, () => this.open(file), () => this.saveSheet()) });
+      }
+      return;
+    }
+    const message = JSON.parse(result.text);
+    const faults = message.faults ?? (isGroup(message.sheet) ? null : [NO_SHEET]);
+    if (faults !== null) {
+      this.#notes.put("file", { kind: "fault", more: fileFaults(file.name, faults, text) });
+      return;
+    }
+    this.#notes.remove("file");
+    this.#replace(message.sheet, `Open "${file.name}"`);
+    if (message.record) this.#verdict(file.name, message.record);
+  }
+
+  refuse(fault) {
+    this.#notes.put("file", { kind: "fault", text: `${fault.message} ${fault.bound}` });
+  }
+
+  async saveSheet() {
+    const { sheet } = this.#store;
+    const result = await this.#engine.request("save", "save", [sheet]);
+    // The sheet itself needs no core to be saved.
+    saveFile(fileName(sheet, ".rungline.json"), result.text ?? JSON.stringify(sheet, null, 2), this.#notes);
+  }
+
+  async saveRecord() {
+    const { sheet } = this.#store;
+    const result = await this.#engine.request("record", "record", [sheet]);
+    if (result.text === undefined) {
+      this.#notes.put("saved", { kind: "fault", text: "The record could not be made: the calculation ended. Your sheet is safe." });
+      return;
+    }
+    const { record, faults } = JSON.parse(result.text);
+    if (faults) {
+      this.#notes.put("saved", {
+        kind: "fault", text: "A record needs a sheet without faults.",
+        buttons: [["To the first fault", () => this.#toFirstFault()]],
+      });
+    } else saveFile(fileName(sheet, ".record.json"), record, this.#notes);
+  }
+}
+
+function isGroup(value) {
+  return value !== null && typeof value === "object" && !Array.isArray(value);
+}
