@@ -110,6 +110,7 @@ export class Layers {
     const { choice, settings, ...rest } = this.#context;
     return {
       ...rest,
+      view: this.#view,
       settings: settings.values,
       sheet: this.#context.store.sheet,
       choice: {
