@@ -19,11 +19,16 @@ const KEYS = [
     ["Arrows", "from mark to mark; with Shift ten at once"],
     ["Home, End", "first or last mark"],
     ["+ − 0", "larger, smaller, whole"],
-    ["Enter", "choose the mark"],
-    ["Esc", "leave the choice"],
+    ["Enter or Space", "choose the mark"],
+    ["Esc", "leave the mark"],
   ]],
-  ["Table in focus", [
-    ["Arrows, Home, End", "scroll; first or last row"],
+  ["Row of a table in focus", [
+    ["Up, Down, Home, End", "from row to row; first or last row"],
+    ["Enter or Space", "choose the row"],
+  ]],
+  ["Chart of the elements in focus", [
+    ["Arrows, Home, End", "from element to element"],
+    ["Enter or Space", "take the element"],
   ]],
 ];
 
