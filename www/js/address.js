@@ -5,6 +5,9 @@
 
 /** The longest address; beyond it the sheet is shared as a file. */
 export const MAX_ADDRESS = 4000;
+/** What comes first in an address and what last, so that the atom can be read at its start. */
+const FIRST = ["species", "configurations"];
+const LAST = ["title", "note"];
 /** No sheet of version 1 is deeper. */
 const MAX_DEPTH = 8;
 
@@ -13,10 +16,7 @@ export function toAddress(sheet) {
   const parts = [];
   const add = (path, value) => {
     if (value !== null && typeof value === "object" && Object.keys(value).length > 0 && path.length < MAX_DEPTH) {
-      for (const [key, item] of Object.entries(value)) {
-        if (path.length === 0 && key === "rungline") continue;
-        add([...path, key], item);
-      }
+      for (const [key, item] of path.length === 0 ? inOrder(value) : Object.entries(value)) add([...path, key], item);
     } else if (path.length > 0) {
       const text = typeof value === "string" ? value.replace(/^~/, "~~") : `~${JSON.stringify(value)}`;
       parts.push(`${path.map(escapeKey).join(".")}=${escapeText(text)}`);
@@ -73,6 +73,11 @@ export function fromAddress(fragment) {
 export function sameSheet(one, other) {
   const address = toAddress(one);
   return address !== null ? address === toAddress(other) : JSON.stringify(one) === JSON.stringify(other);
+}
+
+function inOrder(sheet) {
+  const middle = Object.keys(sheet).filter((key) => key !== "rungline" && !FIRST.includes(key) && !LAST.includes(key));
+  return [...FIRST, ...middle, ...LAST].filter((key) => Object.hasOwn(sheet, key)).map((key) => [key, sheet[key]]);
 }
 
 function unreadable(part) {

@@ -270,7 +270,7 @@ class Page {
   showQuestion(name) {
     this.rungs.find((rung) => rung.name === name)?.show(this.shownFaults().length);
     this.showStop();
-    this.fields.read(this.questions.reading);
+    if (this.questions.reading !== null) this.fields.read(this.questions.reading);
   }
 
   showStop() {

@@ -61,9 +61,14 @@ export class Engine {
   #abandon() {
     const request = this.#running;
     request.resolve({ superseded: true });
-    if (performance.now() - request.since < AWAIT_MS) return;
-    this.#running = null;
-    this.#fresh();
+    const end = () => {
+      if (this.#running !== request) return;
+      this.#running = null;
+      this.#fresh();
+    };
+    const left = AWAIT_MS - (performance.now() - request.since);
+    if (left > 0) setTimeout(end, left);
+    else end();
   }
 
   #next() {

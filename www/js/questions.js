@@ -35,7 +35,7 @@ export class Questions {
     for (const name of this.about.questions.filter((question) => Object.hasOwn(WORDS, question))) {
       this.entries.set(name, {
         name, status: null, needs: null, way: null, answer: null, fresh: false,
-        run: null, waits: null, panic: null, stopped: false,
+        run: null, waits: null, panic: null, stopped: false, unread: true,
       });
     }
   }
@@ -54,7 +54,11 @@ export class Questions {
     this.#turn += 1;
     const turn = this.#turn;
     this.#engine.supersede("answer:");
-    for (const entry of this.entries.values()) this.#endRun(entry);
+    for (const entry of this.entries.values()) {
+      this.#endRun(entry);
+      entry.unread = true;
+      this.#tell(entry.name);
+    }
     const result = await this.#engine.request("read", "read", [this.#store.sheet]);
     if (turn !== this.#turn || result.superseded || result.stopped) return;
     if (result.panic !== undefined) {
@@ -69,7 +73,7 @@ export class Questions {
       if (entry === undefined) continue;
       Object.assign(entry, {
         status: question.status, needs: question.needs, way: question.way,
-        fresh: false, waits: null, panic: null, stopped: false,
+        fresh: false, waits: null, panic: null, stopped: false, unread: false,
       });
       if (question.status === "lacks") entry.answer = null;
     }
@@ -155,6 +159,11 @@ export function rungState(entry, shownFaults) {
   if (entry.answer !== null && (entry.fresh || entry.run !== null)) return { kind: "answered", words: "answered" };
   if (entry.answer !== null) return { kind: "stale", words: "from before your change" };
   return { kind: "ready", words: "open to ask" };
+}
+
+/** Whether the rung is about to change: the newest sheet has not been read or answered yet. */
+export function isSettling(entry) {
+  return entry.unread || entry.run !== null;
 }
 
 /** "12 s" or "3 min". */

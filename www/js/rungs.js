@@ -2,7 +2,7 @@
 
 import { element, setText, wordButton } from "./dom.js";
 import { Layers } from "./layers.js";
-import { WORDS, duration, estimateWords, rungState } from "./questions.js";
+import { WORDS, duration, estimateWords, isSettling, rungState } from "./questions.js";
 import { richNode } from "./rich.js";
 import * as lines from "./views/lines.js";
 import * as splitting from "./views/splitting.js";
@@ -97,6 +97,7 @@ export class QuestionRung {
     const state = rungState(entry, shownFaults);
     const old = entry.answer !== null && state.kind !== "answered";
     this.rung.state(state);
+    this.rung.node.dataset.settling = String(isSettling(entry));
     this.rung.short(entry.answer?.say ?? null, this.#context.settings.values);
     this.#showNeeds(entry);
     this.#showRun(entry, state);

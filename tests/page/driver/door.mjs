@@ -214,7 +214,7 @@ export class Door {
   sentence(question) {
     return this.until((name) => {
       const rung = document.getElementById(name);
-      return rung?.dataset.state === "answered" && rung.querySelector(".say").textContent;
+      return rung?.dataset.state === "answered" && rung.dataset.settling === "false" && rung.querySelector(".say").textContent;
     }, question);
   }
 

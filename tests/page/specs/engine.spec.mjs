@@ -47,6 +47,20 @@ test("one calculation at a time, the latest of a kind wins", async () => {
   assert.deepEqual(await third, { text: "new" });
 });
 
+test("a superseded run is awaited for a moment only", async () => {
+  const { engine, workers, newest } = harness();
+  await settled();
+  engine.request("answer:states", "answer", ["long"]);
+  engine.supersede("answer:");
+  const reading = engine.request("read", "read", ["new"]);
+  assert.equal(workers.length, 1);
+  await new Promise((resolve) => setTimeout(resolve, 150));
+  assert.equal(workers.length, 2);
+  assert.ok(workers[0].ended);
+  newest().reply({ text: "read" });
+  assert.deepEqual(await reading, { text: "read" });
+});
+
 test("reading goes before waiting answers", async () => {
   const { engine, newest } = harness();
   await settled();

@@ -69,7 +69,7 @@ everyDoor("the last good answer stays, marked out of date", async (door) => {
 
 // Each of these is typed into the field it belongs to and must be one plain fault there.
 const BAD_CONFIGURATIONS = ["2p7", "2d", "1p", "3d6 3d2", "3j2", "4f15", "אבג", "🙂", "3d-1", "3d6.5", "1e9s2"];
-const BAD_SPECIES = ["Fe 30+", "Xx", "🙂", "אבג", "Fe -", "1".repeat(50)];
+const BAD_SPECIES = ["Fe 30+", "Xx", "🙂", "אבג", "1".repeat(50)];
 
 everyDoor("every bad input is a plain fault, nothing is lost, nothing hangs", async (door) => {
   await door.type(ATOM, "*");
