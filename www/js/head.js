@@ -36,7 +36,7 @@ export class Head {
     this.#editor.append(
       element("h2", { class: "heard-only", text: "Atom and configurations" }),
       element("div", { class: "field-row" },
-        element("div", { class: "species" },
+        element("div", { class: "species-box" },
           fields.make("/species", {
             label: "Atom or ion",
             hint: "such as Fe, iron, Fe 2+, 57Fe II; * is any atom with these shells",

@@ -27,9 +27,9 @@ export class Layers {
     this.#context = context;
     this.#view = view;
     const heading = (text) => element("h3", { id: `${name}-${text.toLowerCase()}`, text });
-    this.#evidence = element("section", { class: "evidence", tabindex: "-1", "aria-labelledby": `${name}-evidence` }, heading("Evidence"), this.#evidenceBody);
+    this.#evidence = element("section", { class: "evidence", tabindex: "-1", "aria-labelledby": `${name}-evidence ${name}-name` }, heading("Evidence"), this.#evidenceBody);
     this.#working = element("details", { class: "working fold" }, element("summary", {}, heading("Working")), this.#workingBody);
-    this.#limits = element("section", { class: "limits", "aria-labelledby": `${name}-limits` });
+    this.#limits = element("section", { class: "limits", "aria-labelledby": `${name}-limits ${name}-name` });
     this.#working.open = view.get(`working:${name}`) ?? false;
     this.#working.addEventListener("toggle", () => view.set(`working:${name}`, this.#working.open));
     this.#say.addEventListener("copy", (event) => this.#copy(event));

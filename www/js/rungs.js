@@ -25,13 +25,13 @@ export class Rung {
     this.onUnfold = onUnfold;
     this.#button = element("button", { type: "button", class: "rung-button", "aria-controls": `${name}-hang` },
       element("span", { class: "numeral", "aria-hidden": "true", text: String(numeral) }),
-      element("span", { class: "question", text: question }),
+      element("span", { class: "question", id: `${name}-name`, text: question }),
       this.#words, this.#short);
     this.#button.addEventListener("click", () => this.unfold(!this.open));
     this.hang = element("div", { class: "hang", id: `${name}-hang` });
-    this.node = element("section", { class: "rung", id: name, "aria-labelledby": `${name}-question` },
+    this.node = element("section", { class: "rung", id: name, "aria-labelledby": `${name}-name` },
       element("div", { class: "stroke", "aria-hidden": "true" }, this.#first, element("span", { class: "gap" }), element("span", { class: "second" })),
-      element("h2", { id: `${name}-question`, class: "rung-head" }, this.#button),
+      element("h2", { class: "rung-head" }, this.#button),
       this.hang);
     this.unfold(view.get(`rung:${name}`) ?? open);
     this.state({ kind: "ready", words: "open to ask" });
