@@ -115,11 +115,13 @@ export class Door {
     });
     await tab.setViewport({ width: Math.round(width / zoom), height: Math.round(height / zoom), deviceScaleFactor: zoom });
     if (this.browser === "chromium") {
-      await tab.emulateMediaFeatures([
+      // By the protocol itself: puppeteer's own call refuses forced-colors.
+      const protocol = await tab.createCDPSession();
+      await protocol.send("Emulation.setEmulatedMedia", { features: [
         { name: "prefers-color-scheme", value: options.dark ? "dark" : "light" },
         { name: "prefers-reduced-motion", value: options.reducedMotion ? "reduce" : "no-preference" },
-        ...(options.forcedColors ? [{ name: "forced-colors", value: "active" }] : []),
-      ]);
+        { name: "forced-colors", value: options.forcedColors ? "active" : "none" },
+      ] });
     }
     if (before) await tab.evaluateOnNewDocument(before);
     this.address = options.address ?? (await addressOf(this.door));
