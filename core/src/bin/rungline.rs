@@ -84,11 +84,13 @@ fn job(arguments: &[String]) -> Result<Job, String> {
                 let name = words.next().ok_or("--question needs a name")?;
                 command = Command::Answer(Some(question(name)?));
             }
-            (other, Command::Answer(_)) if other.starts_with("--question=") => {
-                command = Command::Answer(Some(question(&other["--question=".len()..])?));
-            }
-            (other, _) if other.starts_with("--") => {
-                return Err(format!("there is no option \"{other}\" here"));
+            (other, command_now) if other.starts_with("--") => {
+                match (other.strip_prefix("--question="), command_now) {
+                    (Some(name), Command::Answer(_)) => {
+                        command = Command::Answer(Some(question(name)?))
+                    }
+                    _ => return Err(format!("there is no option \"{other}\" here")),
+                }
             }
             (file, _) => files.push(file.to_owned()),
         }

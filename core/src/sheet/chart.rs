@@ -6,7 +6,7 @@ use crate::configuration::{chart as place, filling};
 use crate::elements;
 use crate::terms::hund;
 
-use super::document::Named;
+use super::entry::Named;
 use super::ground::observed_rich;
 use super::rich::{Piece, Rich, TermName};
 use super::to_json;

@@ -1,125 +1,15 @@
 //! A sheet as it was read: typed values, every fault, and what each question still lacks.
 
-use serde::Serialize;
-
-use crate::configuration::{
-    self, Configuration, Reading, Species, Subshell, Written, filling, join,
-};
-use crate::elements;
+use crate::configuration::{self, Species, filling};
 use crate::problem::Problem;
 use crate::quantity::{self, Dimension};
 use crate::terms::{self, Level, label, ls};
 
 use super::Question;
+use super::entry::{Content, Entry, Named, content};
 use super::json::Json;
-use super::rich::{Piece, Rich, SubshellName};
+use super::rich::{Piece, Rich};
 use super::schema;
-
-/// A configuration as the sheet names it.
-#[derive(Clone, Debug)]
-pub struct Named {
-    /// All subshells.
-    pub configuration: Configuration,
-    /// The noble gas or typed core that stands in brackets.
-    pub core: Option<String>,
-    /// The subshells beyond it, or all that were typed.
-    pub beyond: Vec<Subshell>,
-    /// The core that was added to the typed text.
-    pub completed: Option<String>,
-}
-
-impl Named {
-    /// A configuration that nobody typed: the largest noble-gas core in brackets.
-    pub fn untyped(configuration: Configuration) -> Named {
-        Named {
-            core: configuration
-                .noble_core()
-                .and_then(elements::symbol)
-                .map(str::to_owned),
-            beyond: configuration.valence(),
-            configuration,
-            completed: None,
-        }
-    }
-
-    /// A typed configuration made whole: the typed subshells name its levels.
-    fn typed(written: &Written, reading: Reading) -> Named {
-        if written.core.is_none() && reading.completed_core.is_none() {
-            return Named::untyped(reading.configuration);
-        }
-        let mut beyond: Vec<Subshell> = written.subshells.iter().map(|s| s.subshell).collect();
-        beyond.sort_unstable();
-        if beyond.is_empty() {
-            return Named::untyped(reading.configuration);
-        }
-        let noble = reading
-            .completed_core
-            .as_ref()
-            .and_then(|core| core.noble_gas);
-        Named {
-            core: written
-                .core
-                .map(|core| core.symbol)
-                .or(noble)
-                .map(str::to_owned),
-            beyond,
-            completed: reading.completed_core.map(|core| core.to_string()),
-            configuration: reading.configuration,
-        }
-    }
-
-    /// How its levels are named: `3d6 4s2`.
-    pub fn label(&self) -> String {
-        join(&self.beyond)
-    }
-
-    /// With the core in brackets.
-    pub fn rich(&self) -> Rich {
-        piece(self.core.clone(), &self.beyond)
-    }
-
-    /// Only what names its levels.
-    pub fn short_rich(&self) -> Rich {
-        piece(None, &self.beyond)
-    }
-}
-
-/// What stands in one configuration field.
-#[derive(Clone, Debug)]
-pub enum Content {
-    /// Electrons in subshells.
-    Configuration(Named),
-    /// `n=5`: a shell without electrons.
-    BareShell(u8),
-}
-
-/// One configuration of the sheet.
-#[derive(Clone, Debug)]
-pub struct Entry {
-    /// Its place in the sheet; empty for the ground configuration that an empty list stands for.
-    pub path: String,
-    /// How its levels are named.
-    pub label: String,
-    /// Typed, observed or by the filling rule.
-    pub source: &'static str,
-    /// What was read.
-    pub content: Content,
-}
-
-impl Entry {
-    /// The configuration with its name, unless it is a bare shell.
-    pub fn named(&self) -> Option<&Named> {
-        match &self.content {
-            Content::Configuration(named) => Some(named),
-            Content::BareShell(_) => None,
-        }
-    }
-
-    /// The configuration, unless it is a bare shell.
-    pub fn configuration(&self) -> Option<&Configuration> {
-        self.named().map(|named| &named.configuration)
-    }
-}
 
 /// A level of one of the sheet's configurations.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -139,48 +29,6 @@ pub struct Field {
     pub text: String,
     /// Angle between field and line of sight.
     pub angle_degrees: f64,
-}
-
-/// What a question lacks, and a usual value that would do.
-#[derive(Clone, Debug)]
-pub struct Lack {
-    /// `needs-a-field`
-    pub code: &'static str,
-    /// "a field"
-    pub needs: String,
-    /// A usual value that would do.
-    pub way: Option<Way>,
-}
-
-/// A usual value for what is lacking.
-#[derive(Clone, Debug, Serialize)]
-pub struct Way {
-    /// What the button says.
-    pub label: String,
-    /// Where the value goes.
-    pub path: String,
-    /// The value.
-    pub value: Json,
-}
-
-impl Lack {
-    /// As a fault, for a question that was asked all the same.
-    pub fn problem(&self) -> Problem {
-        let problem = Problem::new(
-            self.code,
-            format!("This question needs {}.", self.needs),
-            0,
-            0,
-        );
-        let Some(way) = &self.way else { return problem };
-        let replacement = match &way.value {
-            Json::Text(text) => text.clone(),
-            other => serde_json::to_string(other).unwrap_or_default(),
-        };
-        problem
-            .at(way.path.clone())
-            .way(way.label.clone(), replacement)
-    }
 }
 
 /// A sheet as it was read.
@@ -245,7 +93,7 @@ impl Document {
         document
     }
 
-    fn has_fault_at(&self, path: &str) -> bool {
+    pub(super) fn has_fault_at(&self, path: &str) -> bool {
         self.faults
             .iter()
             .any(|fault| fault.path == path || fault.path.starts_with(&format!("{path}/")))
@@ -488,116 +336,6 @@ impl Document {
         }
     }
 
-    /// The level that a label names: `3p 2P1/2`. Nothing while some configuration is faulted.
-    fn level(&self, text: &str) -> Result<Option<LevelOf>, Vec<Problem>> {
-        let parsed = label::parse(text).map_err(|p| vec![p])?;
-        if self.has_fault_at("/configurations")
-            || self.has_fault_at("/species")
-            || self.entries.is_empty()
-        {
-            return Ok(None);
-        }
-        let written = match configuration::parse(parsed.configuration) {
-            Ok(written) => written,
-            Err(problems) => {
-                return Err(problems
-                    .into_iter()
-                    .map(|mut p| {
-                        p.start += parsed.configuration_start;
-                        p.end += parsed.configuration_start;
-                        p.ways.clear();
-                        p
-                    })
-                    .collect());
-            }
-        };
-        let species = self.species.unwrap_or(Species::ANY);
-        let wanted = configuration::complete(&written, &species)
-            .ok()
-            .map(|r| r.configuration);
-        let end = parsed.configuration_start + parsed.configuration.len();
-        let Some(entry) = self.entries.iter().position(|e| {
-            e.label == parsed.configuration
-                || (wanted.is_some() && e.configuration() == wanted.as_ref())
-        }) else {
-            let mut problem = Problem::new(
-                "level-of-no-configuration",
-                format!("This sheet has no configuration {}.", parsed.configuration),
-                parsed.configuration_start,
-                end,
-            )
-            .bound(format!("Its configurations: {}.", self.labels().join(", ")));
-            for other in self.labels().into_iter().take(3) {
-                problem = problem.way(format!("Use {other}"), label::format(&other, &parsed.level));
-            }
-            return Err(vec![problem]);
-        };
-        let Some(configuration) = self.entries.get(entry).and_then(Entry::configuration) else {
-            return Ok(None);
-        };
-        let all = ls::terms(configuration.subshells()).map_err(|p| vec![p])?;
-        if all.has(&parsed.level) {
-            return Ok(Some(LevelOf {
-                entry,
-                level: parsed.level,
-            }));
-        }
-        let times = all.times(parsed.level.term);
-        let name = self
-            .entries
-            .get(entry)
-            .map(|e| e.label.clone())
-            .unwrap_or_default();
-        let message = match (times, parsed.level.index) {
-            (0, _) => format!("{name} has no term {}.", parsed.level.term),
-            (1, Some(_)) => format!("{name} has the term {} only once.", parsed.level.term),
-            (_, None) => format!(
-                "{name} has the term {} {times} times: which one?",
-                parsed.level.term
-            ),
-            (_, Some(index)) => format!("{name} has no {} number {index}.", parsed.level.term),
-        };
-        let mut problem = Problem::new("level-unknown", message, parsed.level_start, text.len());
-        problem = match times {
-            0 => {
-                let known: Vec<String> = all
-                    .terms
-                    .iter()
-                    .take(12)
-                    .map(|t| t.term.to_string())
-                    .collect();
-                problem.bound(format!("Its terms: {}.", known.join(", ")))
-            }
-            1 => problem.way(
-                "Leave the number out",
-                label::format(
-                    &name,
-                    &Level {
-                        index: None,
-                        ..parsed.level
-                    },
-                ),
-            ),
-            _ => problem
-                .bound(format!("Write #1 to #{times} behind it."))
-                .way(
-                    "Use number 1",
-                    label::format(
-                        &name,
-                        &Level {
-                            index: Some(1),
-                            ..parsed.level
-                        },
-                    ),
-                ),
-        };
-        Err(vec![problem])
-    }
-
-    fn labels(&self) -> Vec<String> {
-        self.entries.iter().map(|e| e.label.clone()).collect()
-    }
-
     /// How the atom or ion fills its subshells, by rule and as tabulated.
     pub fn filled(&self) -> Option<filling::Ground> {
         let species = self.species.as_ref()?;
@@ -628,8 +366,8 @@ impl Document {
     }
 
     /// What the question lacks, or nothing when it can be answered.
-    pub fn lacks(&self, question: Question) -> Option<Lack> {
-        super::reading::lack(self, question)
+    pub fn lacks(&self, question: Question) -> Option<super::lack::Lack> {
+        super::lack::lack(self, question)
     }
 
     /// The levels of one entry, at most `limit`.
@@ -675,20 +413,6 @@ impl Document {
 
 /// The strongest static field in which a sheet is answered, in tesla.
 pub const MAX_TESLA: f64 = 1000.0;
-
-/// What a configuration field holds, complete.
-fn content(written: &Written, species: &Species) -> Result<Content, Vec<Problem>> {
-    if let Some(n) = written.bare_shell {
-        return Ok(Content::BareShell(n));
-    }
-    configuration::complete(written, species)
-        .map(|reading| Content::Configuration(Named::typed(written, reading)))
-}
-
-fn piece(core: Option<String>, subshells: &[Subshell]) -> Rich {
-    let subshells: Vec<SubshellName> = subshells.iter().copied().map(SubshellName::from).collect();
-    Rich::new().with(Piece::Configuration { core, subshells })
-}
 
 /// Sorts faults by where their path stands in the sheet, then by place in the text.
 fn sort_by_place(faults: &mut [Problem], json: &Json) {

@@ -252,7 +252,7 @@ pub fn filling(document: &Document) -> Option<Filling> {
     let filled = document.filled()?;
     let named = |configuration: &Configuration, status| Named {
         text: configuration.short_text(),
-        rich: super::document::Named::untyped(configuration.clone()).rich(),
+        rich: super::entry::Named::untyped(configuration.clone()).rich(),
         status,
     };
     let observed = filled.observed.as_ref();

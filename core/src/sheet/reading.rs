@@ -2,14 +2,15 @@
 
 use serde::Serialize;
 
-use crate::configuration::{Orbital, Subshell};
 use crate::problem::Problem;
 use crate::terms::label;
 
-use super::document::{Content, Document, Entry, Lack, LevelOf, Named, Way};
+use super::document::Document;
+use super::entry::{Content, Entry};
 use super::json::Json;
+use super::lack::Way;
 use super::rich::{Kind, Rich};
-use super::{Question, lines, to_json};
+use super::{Question, to_json};
 
 #[derive(Serialize)]
 struct Reading<'a> {
@@ -214,151 +215,4 @@ fn described(species: &crate::configuration::Species) -> String {
         charge if charge > 0 => format!("{name} with charge {charge}+"),
         charge => format!("{name} with charge {}−", charge.unsigned_abs()),
     }
-}
-
-fn text(value: &str) -> Json {
-    Json::Text(value.to_owned())
-}
-
-/// What a question lacks in this document.
-pub fn lack(document: &Document, question: Question) -> Option<Lack> {
-    let first = document.entries.first();
-    let Some(first) = first else {
-        return Some(Lack {
-            code: "needs-an-atom",
-            needs: "an atom or a configuration".to_owned(),
-            way: Some(Way {
-                label: "Put in Fe".to_owned(),
-                path: "/species".to_owned(),
-                value: text("Fe"),
-            }),
-        });
-    };
-    match question {
-        Question::States => None,
-        Question::Lines => {
-            let pairs = lines::pairs(document);
-            if pairs == 0 {
-                return Some(second_configuration(
-                    document,
-                    first,
-                    "a second configuration",
-                ));
-            }
-            (pairs > lines::MAX_PAIRS).then(|| Lack {
-                code: "needs-fewer-pairs",
-                needs: format!(
-                    "fewer configurations or fewer open shells: these have {pairs} pairs of levels, and at most {} are listed",
-                    lines::MAX_PAIRS
-                ),
-                way: None,
-            })
-        }
-        Question::Splitting => {
-            if document.line.is_none() {
-                return Some(match lines::first_allowed(document) {
-                    Some((upper, lower)) => line_lack(document, &upper, &lower),
-                    None => second_configuration(
-                        document,
-                        first,
-                        "a line, and so a second configuration",
-                    ),
-                });
-            }
-            document.field.is_none().then(|| Lack {
-                code: "needs-a-field",
-                needs: "a field".to_owned(),
-                way: Some(Way {
-                    label: "Put in 0.5 T".to_owned(),
-                    path: "/field".to_owned(),
-                    value: Json::Object(vec![
-                        ("flux_density".to_owned(), text("0.5 T")),
-                        ("view".to_owned(), text("across")),
-                    ]),
-                }),
-            })
-        }
-    }
-}
-
-fn line_lack(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Lack {
-    let (upper, lower) = (document.level_label(upper), document.level_label(lower));
-    Lack {
-        code: "needs-a-line",
-        needs: "a line: an upper and a lower level".to_owned(),
-        way: Some(Way {
-            label: format!("Put in {lower} to {upper}"),
-            path: "/line".to_owned(),
-            value: Json::Object(vec![
-                ("upper".to_owned(), text(&upper)),
-                ("lower".to_owned(), text(&lower)),
-            ]),
-        }),
-    }
-}
-
-fn second_configuration(document: &Document, first: &Entry, needs: &str) -> Lack {
-    let proposal = first
-        .configuration()
-        .and_then(excited)
-        .unwrap_or_else(|| "2p".to_owned());
-    // A ground configuration that an empty field stands for has to be written out beside the second.
-    let typed = !first.path.is_empty();
-    let value = if typed {
-        text(&proposal)
-    } else {
-        Json::List(vec![text(&first.label), text(&proposal)])
-    };
-    let path = if typed {
-        format!("/configurations/{}", document.entries.len())
-    } else {
-        "/configurations".to_owned()
-    };
-    let way = Some(Way {
-        label: format!("Put in {proposal}"),
-        path,
-        value,
-    });
-    Lack {
-        code: "needs-a-configuration",
-        needs: needs.to_owned(),
-        way,
-    }
-}
-
-/// The configuration with its outermost electron raised to the next ℓ that an electric dipole reaches.
-fn excited(configuration: &crate::configuration::Configuration) -> Option<String> {
-    let outermost = configuration
-        .subshells()
-        .iter()
-        .max_by_key(|s| (s.orbital().n(), s.orbital().l()))
-        .copied()?;
-    let (n, l) = (outermost.orbital().n(), outermost.orbital().l());
-    let taken: Vec<Orbital> = configuration
-        .subshells()
-        .iter()
-        .map(|s| s.orbital())
-        .collect();
-    let target = [
-        (n, l.checked_add(1)?),
-        (n.checked_add(1)?, l.saturating_sub(1)),
-        (n.checked_add(1)?, l.checked_add(1)?),
-    ]
-    .into_iter()
-    .filter(|(_, other)| other.abs_diff(l) == 1)
-    .filter_map(|(n, l)| Orbital::new(n, l))
-    .find(|orbital| !taken.contains(orbital))?;
-    let mut subshells: Vec<Subshell> = configuration
-        .subshells()
-        .iter()
-        .copied()
-        .filter(|s| s.orbital() != outermost.orbital())
-        .collect();
-    subshells.extend(Subshell::new(
-        outermost.orbital(),
-        outermost.electrons().checked_sub(1)?,
-    ));
-    subshells.push(Subshell::new(target, 1)?);
-    let raised = crate::configuration::Configuration::new(subshells)?;
-    Some(Named::untyped(raised).label())
 }

@@ -11,7 +11,7 @@ use crate::terms::lande;
 use super::answer::{Around, Working};
 use super::document::{Document, Field, LevelOf};
 use super::formula::{Formula, name, number, operator, row, sub, sup};
-use super::lines;
+use super::pairs;
 use super::rich::{Kind, Rich};
 
 /// The answer.
@@ -193,7 +193,7 @@ fn g(of: &LevelOf) -> Option<f64> {
 
 /// E1 where it is allowed, else M1; otherwise the rule that refuses.
 fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Multipole, Problem> {
-    let verdicts = lines::judge(document, upper, lower)?;
+    let verdicts = pairs::judge(document, upper, lower)?;
     for wanted in [Multipole::E1, Multipole::M1] {
         if verdicts
             .iter()

@@ -1,0 +1,127 @@
+//! A configuration of the sheet, and how it is named.
+
+use crate::configuration::{self, Configuration, Reading, Species, Subshell, Written, join};
+use crate::elements;
+use crate::problem::Problem;
+
+use super::rich::{Piece, Rich, SubshellName};
+
+/// A configuration as the sheet names it.
+#[derive(Clone, Debug)]
+pub struct Named {
+    /// All subshells.
+    pub configuration: Configuration,
+    /// The noble gas or typed core that stands in brackets.
+    pub core: Option<String>,
+    /// The subshells beyond it, or all that were typed.
+    pub beyond: Vec<Subshell>,
+    /// The core that was added to the typed text.
+    pub completed: Option<String>,
+}
+
+impl Named {
+    /// A configuration that nobody typed: the largest noble-gas core in brackets.
+    pub fn untyped(configuration: Configuration) -> Named {
+        Named {
+            core: configuration
+                .noble_core()
+                .and_then(elements::symbol)
+                .map(str::to_owned),
+            beyond: configuration.valence(),
+            configuration,
+            completed: None,
+        }
+    }
+
+    /// A typed configuration made whole: the typed subshells name its levels.
+    fn typed(written: &Written, reading: Reading) -> Named {
+        if written.core.is_none() && reading.completed_core.is_none() {
+            return Named::untyped(reading.configuration);
+        }
+        let mut beyond: Vec<Subshell> = written.subshells.iter().map(|s| s.subshell).collect();
+        beyond.sort_unstable();
+        if beyond.is_empty() {
+            return Named::untyped(reading.configuration);
+        }
+        let noble = reading
+            .completed_core
+            .as_ref()
+            .and_then(|core| core.noble_gas);
+        Named {
+            core: written
+                .core
+                .map(|core| core.symbol)
+                .or(noble)
+                .map(str::to_owned),
+            beyond,
+            completed: reading.completed_core.map(|core| core.to_string()),
+            configuration: reading.configuration,
+        }
+    }
+
+    /// How its levels are named: `3d6 4s2`.
+    pub fn label(&self) -> String {
+        join(&self.beyond)
+    }
+
+    /// With the core in brackets.
+    pub fn rich(&self) -> Rich {
+        piece(self.core.clone(), &self.beyond)
+    }
+
+    /// Only what names its levels.
+    pub fn short_rich(&self) -> Rich {
+        piece(None, &self.beyond)
+    }
+}
+
+/// What stands in one configuration field.
+#[derive(Clone, Debug)]
+pub enum Content {
+    /// Electrons in subshells.
+    Configuration(Named),
+    /// `n=5`: a shell without electrons.
+    BareShell(u8),
+}
+
+/// One configuration of the sheet.
+#[derive(Clone, Debug)]
+pub struct Entry {
+    /// Its place in the sheet; empty for the ground configuration that an empty list stands for.
+    pub path: String,
+    /// How its levels are named.
+    pub label: String,
+    /// Typed, observed or by the filling rule.
+    pub source: &'static str,
+    /// What was read.
+    pub content: Content,
+}
+
+impl Entry {
+    /// The configuration with its name, unless it is a bare shell.
+    pub fn named(&self) -> Option<&Named> {
+        match &self.content {
+            Content::Configuration(named) => Some(named),
+            Content::BareShell(_) => None,
+        }
+    }
+
+    /// The configuration, unless it is a bare shell.
+    pub fn configuration(&self) -> Option<&Configuration> {
+        self.named().map(|named| &named.configuration)
+    }
+}
+
+/// What a configuration field holds, complete.
+pub fn content(written: &Written, species: &Species) -> Result<Content, Vec<Problem>> {
+    if let Some(n) = written.bare_shell {
+        return Ok(Content::BareShell(n));
+    }
+    configuration::complete(written, species)
+        .map(|reading| Content::Configuration(Named::typed(written, reading)))
+}
+
+fn piece(core: Option<String>, subshells: &[Subshell]) -> Rich {
+    let subshells: Vec<SubshellName> = subshells.iter().copied().map(SubshellName::from).collect();
+    Rich::new().with(Piece::Configuration { core, subshells })
+}

@@ -1,0 +1,201 @@
+//! What a question lacks, and a usual value that would do.
+
+use serde::Serialize;
+
+use crate::configuration::{Configuration, Orbital, Subshell};
+use crate::problem::Problem;
+
+use super::Question;
+use super::document::{Document, LevelOf};
+use super::entry::{Entry, Named};
+use super::json::Json;
+use super::pairs;
+
+/// What a question lacks, and a usual value that would do.
+#[derive(Clone, Debug)]
+pub struct Lack {
+    /// `needs-a-field`
+    pub code: &'static str,
+    /// "a field"
+    pub needs: String,
+    /// A usual value that would do.
+    pub way: Option<Way>,
+}
+
+/// A usual value for what is lacking.
+#[derive(Clone, Debug, Serialize)]
+pub struct Way {
+    /// What the button says.
+    pub label: String,
+    /// Where the value goes.
+    pub path: String,
+    /// The value.
+    pub value: Json,
+}
+
+impl Lack {
+    /// As a fault, for a question that was asked all the same.
+    pub fn problem(&self) -> Problem {
+        let problem = Problem::new(
+            self.code,
+            format!("This question needs {}.", self.needs),
+            0,
+            0,
+        );
+        let Some(way) = &self.way else { return problem };
+        let replacement = match &way.value {
+            Json::Text(text) => text.clone(),
+            other => serde_json::to_string(other).unwrap_or_default(),
+        };
+        problem
+            .at(way.path.clone())
+            .way(way.label.clone(), replacement)
+    }
+}
+
+fn text(value: &str) -> Json {
+    Json::Text(value.to_owned())
+}
+
+/// What a question lacks in this document.
+pub fn lack(document: &Document, question: Question) -> Option<Lack> {
+    let first = document.entries.first();
+    let Some(first) = first else {
+        return Some(Lack {
+            code: "needs-an-atom",
+            needs: "an atom or a configuration".to_owned(),
+            way: Some(Way {
+                label: "Put in Fe".to_owned(),
+                path: "/species".to_owned(),
+                value: text("Fe"),
+            }),
+        });
+    };
+    match question {
+        Question::States => None,
+        Question::Lines => {
+            let pairs = pairs::pairs(document);
+            if pairs == 0 {
+                return Some(second_configuration(
+                    document,
+                    first,
+                    "a second configuration",
+                ));
+            }
+            (pairs > pairs::MAX_PAIRS).then(|| Lack {
+                code: "needs-fewer-pairs",
+                needs: format!(
+                    "fewer configurations or fewer open shells: these have {pairs} pairs of levels, and at most {} are listed",
+                    pairs::MAX_PAIRS
+                ),
+                way: None,
+            })
+        }
+        Question::Splitting => {
+            if document.line.is_none() {
+                return Some(match pairs::first_allowed(document) {
+                    Some((upper, lower)) => line_lack(document, &upper, &lower),
+                    None => second_configuration(
+                        document,
+                        first,
+                        "a line, and so a second configuration",
+                    ),
+                });
+            }
+            document.field.is_none().then(|| Lack {
+                code: "needs-a-field",
+                needs: "a field".to_owned(),
+                way: Some(Way {
+                    label: "Put in 0.5 T".to_owned(),
+                    path: "/field".to_owned(),
+                    value: Json::Object(vec![
+                        ("flux_density".to_owned(), text("0.5 T")),
+                        ("view".to_owned(), text("across")),
+                    ]),
+                }),
+            })
+        }
+    }
+}
+
+fn line_lack(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Lack {
+    let (upper, lower) = (document.level_label(upper), document.level_label(lower));
+    Lack {
+        code: "needs-a-line",
+        needs: "a line: an upper and a lower level".to_owned(),
+        way: Some(Way {
+            label: format!("Put in {lower} to {upper}"),
+            path: "/line".to_owned(),
+            value: Json::Object(vec![
+                ("upper".to_owned(), text(&upper)),
+                ("lower".to_owned(), text(&lower)),
+            ]),
+        }),
+    }
+}
+
+fn second_configuration(document: &Document, first: &Entry, needs: &str) -> Lack {
+    let proposal = first
+        .configuration()
+        .and_then(excited)
+        .unwrap_or_else(|| "2p".to_owned());
+    // A ground configuration that an empty field stands for has to be written out beside the second.
+    let typed = !first.path.is_empty();
+    let value = if typed {
+        text(&proposal)
+    } else {
+        Json::List(vec![text(&first.label), text(&proposal)])
+    };
+    let path = if typed {
+        format!("/configurations/{}", document.entries.len())
+    } else {
+        "/configurations".to_owned()
+    };
+    let way = Some(Way {
+        label: format!("Put in {proposal}"),
+        path,
+        value,
+    });
+    Lack {
+        code: "needs-a-configuration",
+        needs: needs.to_owned(),
+        way,
+    }
+}
+
+/// The configuration with its outermost electron raised to the next ℓ that an electric dipole reaches.
+fn excited(configuration: &Configuration) -> Option<String> {
+    let outermost = configuration
+        .subshells()
+        .iter()
+        .max_by_key(|s| (s.orbital().n(), s.orbital().l()))
+        .copied()?;
+    let (n, l) = (outermost.orbital().n(), outermost.orbital().l());
+    let taken: Vec<Orbital> = configuration
+        .subshells()
+        .iter()
+        .map(|s| s.orbital())
+        .collect();
+    let target = [
+        (n, l.checked_add(1)?),
+        (n.checked_add(1)?, l.saturating_sub(1)),
+        (n.checked_add(1)?, l.checked_add(1)?),
+    ]
+    .into_iter()
+    .filter(|(_, other)| other.abs_diff(l) == 1)
+    .filter_map(|(n, l)| Orbital::new(n, l))
+    .find(|orbital| !taken.contains(orbital))?;
+    let mut subshells: Vec<Subshell> = configuration
+        .subshells()
+        .iter()
+        .copied()
+        .filter(|s| s.orbital() != outermost.orbital())
+        .collect();
+    subshells.extend(Subshell::new(
+        outermost.orbital(),
+        outermost.electrons().checked_sub(1)?,
+    ));
+    subshells.push(Subshell::new(target, 1)?);
+    let raised = Configuration::new(subshells)?;
+    Some(Named::untyped(raised).label())
+}
