@@ -1,0 +1,83 @@
+//! The command: answers, streams, faults, records, exit codes.
+
+use std::io::Write;
+use std::process::{Command, Stdio};
+
+use rungline_core::sheet;
+use serde_json::Value;
+
+fn command(arguments: &[&str], input: &str) -> (i32, String, String) {
+    let mut child = Command::new(env!("CARGO_BIN_EXE_rungline"))
+        .args(arguments)
+        .stdin(Stdio::piped())
+        .stdout(Stdio::piped())
+        .stderr(Stdio::piped())
+        .spawn()
+        .unwrap();
+    // A command that refuses its arguments ends without reading.
+    let _ = child.stdin.take().unwrap().write_all(input.as_bytes());
+    let output = child.wait_with_output().unwrap();
+    let text = |bytes: Vec<u8>| String::from_utf8(bytes).unwrap();
+    (
+        output.status.code().unwrap(),
+        text(output.stdout),
+        text(output.stderr),
+    )
+}
+
+#[test]
+fn the_command_answers_streams_faults_and_records() {
+    let good = r#"{"rungline":1,"species":"Fe"}"#;
+    let bad = r#"{"rungline":1,"species":"Xx"}"#;
+    let (code, out, err) = command(&["answer", "-", "--question", "states"], good);
+    assert_eq!((code, err.as_str()), (0, ""));
+    assert!(out.starts_with(r#"{"rungline":1,"answers":{"states":{"#));
+    assert_eq!(out.lines().count(), 1);
+
+    let (code, out, err) = command(&["answer", "-", "--json"], bad);
+    assert_eq!((code, out.as_str()), (2, ""), "a fault writes nothing");
+    let faults: Value = serde_json::from_str(&err).unwrap();
+    assert_eq!(faults[0]["path"], "/species");
+
+    let (code, out, _) = command(&["answer", "-"], &format!("{good}\n{bad}\n{good}\n"));
+    assert_eq!(code, 2);
+    let kinds: Vec<bool> = out
+        .lines()
+        .map(|line| line.starts_with("{\"fault\":"))
+        .collect();
+    assert_eq!(kinds, [false, true, false]);
+
+    let (code, out, _) = command(
+        &["answer", "-"],
+        &format!("{{\n{}\n}}\n", r#""rungline":1,"species":"Fe""#),
+    );
+    assert_eq!(
+        (code, out.lines().count()),
+        (0, 1),
+        "a sheet may span lines"
+    );
+
+    let (code, _, err) = command(&["answer", "-", "--question", "colour"], good);
+    assert_eq!(code, 2);
+    assert!(err.contains("colour"));
+
+    let folder = std::env::temp_dir().join(format!("rungline-{}", std::process::id()));
+    std::fs::create_dir_all(&folder).unwrap();
+    let record = sheet::record_message(&serde_json::from_str(good).unwrap());
+    let record: Value = serde_json::from_str(&record).unwrap();
+    let (kept, moved) = (folder.join("kept.json"), folder.join("moved.json"));
+    std::fs::write(&kept, record["record"].as_str().unwrap()).unwrap();
+    std::fs::write(
+        &moved,
+        record["record"]
+            .as_str()
+            .unwrap()
+            .replace("\"n_levels\":34", "\"n_levels\":35"),
+    )
+    .unwrap();
+    assert_eq!(command(&["recheck", kept.to_str().unwrap()], "").0, 0);
+    let (code, out, _) = command(&["recheck", moved.to_str().unwrap()], "");
+    assert_eq!(code, 1);
+    assert!(out.contains("/states/n_levels"));
+    std::fs::remove_dir_all(folder).unwrap();
+}
