@@ -57,8 +57,10 @@ export function mathTree(tree, digits = ALL_DIGITS) {
   }
 }
 
+// What only looks like a number, such as −3/2 or −M, stays as it is, with a true minus.
 function number(text, digits) {
-  const runs = numberRuns(String(text).replace("\u2212", "-"), digits);
+  const ascii = String(text).replace("\u2212", "-");
+  const runs = Number.isFinite(Number(ascii)) ? numberRuns(ascii, digits) : [{ text: ascii.replaceAll("-", "\u2212") }];
   const [base, power] = runs.map((run) => mathElement("mn", {}, run.text ?? run.up));
   return power === undefined ? base : mathElement("msup", {}, base, power);
 }

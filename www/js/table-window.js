@@ -4,6 +4,8 @@ import { element } from "./dom.js";
 
 // Rows drawn beyond each edge, so that a short scroll shows no gap.
 const SPARE = 12;
+// How wide typeset text is, as part of the same text spelled out.
+const NARROW = 0.85;
 // Until a row has been measured.
 const USUAL_HEIGHT = 32;
 
@@ -89,10 +91,11 @@ function spacer(columns) {
 // Columns keep their widths while rows come and go.
 function widths(columns, rows, plain) {
   return element("colgroup", {}, ...columns.map((column) => {
-    let longest = [...column.name].length + (column.unit ? column.unit.length + 3 : 0) + 3;
+    // Heads break after 14 characters; raised and lowered parts are narrower than their letters.
+    let longest = Math.min([...column.name].length, 14) / NARROW;
     for (const row of rows) longest = Math.max(longest, plain(row, column).length);
     const col = element("col");
-    col.style.width = `${Math.min(longest, 40) + 3}ch`;
+    col.style.width = `${(Math.min(longest, 60) * (column.rich ? NARROW : 1) + 5).toFixed(1)}ch`;
     return col;
   }));
 }

@@ -7,18 +7,18 @@ import { LABEL } from "./pen.js";
 const LEFT = 96;
 const RIGHT = 16;
 const RUNG = 28;
-const UPPER = 64;
+const UPPER = 84;
 const THICKEST = 9;
 
 /**
- * The layout for `picture`. `upper` and `lower` are {rich (runs), levels: [{J, label, runs}]}; `links`
+ * The layout for `picture`. `title` is runs; `upper` and `lower` are {rich (runs), levels: [{J, label, runs}]}; `links`
  * [{upperJ, lowerJ, strength, multipole, id, reading}]; `refused` [{upperJ, lowerJ, id, reading}].
  */
-export function multipletLayout({ upper, lower, links, refused }) {
+export function multipletLayout({ title, upper, lower, links, refused }) {
   const values = [...new Set([...upper.levels, ...lower.levels].map((level) => halfValue(level.J)))].sort((a, b) => a - b);
   const strongest = Math.max(...links.map((link) => link.strength ?? 0), 0) || 1;
   return (width) => {
-    const height = Math.round(Math.min(Math.max((width * 7) / 16, 280), 400));
+    const height = Math.round(Math.min(Math.max((width * 7) / 16, 300), 400));
     const low = height - 84;
     const step = (width - LEFT - RIGHT) / values.length;
     const x = (J) => LEFT + (values.indexOf(halfValue(J)) + 0.5) * step;
@@ -38,6 +38,7 @@ export function multipletLayout({ upper, lower, links, refused }) {
         return { x: mx - 8, y: my - 8, w: 16, h: 16, id: link.id, reading: link.reading };
       }),
       draw(pen) {
+        pen.text(8, 20, title, { fill: "quiet" });
         for (const link of drawn) {
           const [x1, y1, x2, y2] = ends(link);
           if (link.refused) pen.line(x1, y1, x2, y2, { stroke: "quiet", width: 1.5, dash: "2 5" });

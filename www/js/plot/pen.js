@@ -11,6 +11,9 @@ const FACE = 'system-ui, "Segoe UI", Roboto, "Noto Sans", "DejaVu Sans", sans-se
 const SMALL = 0.72;
 const RISE = 0.38;
 const DROP = 0.22;
+// Further apart where one stands above the other.
+const STACK_RISE = 0.48;
+const STACK_DROP = 0.3;
 
 /** Draws into an SVG group. `colour` turns a token into a paint. */
 export class SvgPen {
@@ -141,10 +144,11 @@ function parts(label) {
   const runs = typeof label === "string" ? [{ text: label }] : label;
   return runs.flatMap((run) => {
     if (run.text !== undefined) return [{ text: run.text, shift: 0, small: false }];
-    const up = run.up === undefined ? [] : [{ text: run.up, shift: -RISE, small: true }];
-    const down = run.down === undefined ? [] : [{ text: run.down, shift: DROP, small: true }];
+    const stacked = run.up !== undefined && run.down !== undefined;
+    const up = run.up === undefined ? [] : [{ text: run.up, shift: stacked ? -STACK_RISE : -RISE, small: true }];
+    const down = run.down === undefined ? [] : [{ text: run.down, shift: stacked ? STACK_DROP : DROP, small: true }];
     // Stacked: the lower part starts under the upper one, so the pen steps back by its width.
-    if (up.length > 0 && down.length > 0) down[0].back = [...run.up].length * 0.58 * SMALL;
+    if (stacked) down[0].back = [...run.up].length * 0.58 * SMALL;
     return [...up, ...down];
   });
 }

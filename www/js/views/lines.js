@@ -114,7 +114,8 @@ class Lines {
     const dots = this.dotted.value() ? forbidden.map((pair) => ({
       upperJ: pair.upper_J, lowerJ: pair.lower_J, id: lineId(pair), reading: [...names(pair), `, refused: ${pair.rule}`],
     })) : [];
-    return { upper: side("upper", upper), lower: side("lower", lower), links, refused: dots, name: ["Multiplet ", ...lower.termRich, ARROW, ...upper.termRich] };
+    const name = [...lower.termRich, ARROW, ...upper.termRich];
+    return { upper: side("upper", upper), lower: side("lower", lower), links, refused: dots, title: richRuns(name), name: ["Multiplet ", ...name] };
   }
 
   #refusedTable() {
