@@ -49,3 +49,9 @@ everyDoor("the chart's data are in a table too", async (door) => {
   assert.match(iron, /26Feiron/);
   assert.equal(await door.evaluate(() => document.querySelectorAll(".chart table tbody tr").length), 118);
 }, { fragment: "v=1&species=Fe" });
+
+everyDoor("at 320 px the ladder still fits the page", async (door) => {
+  await openChart(door);
+  assert.equal(await door.scrollsSideways(), false);
+  assert.ok(await door.evaluate(() => [...document.querySelectorAll(".ladder-cells .cell")].every((cell) => cell.getBoundingClientRect().width >= 24)));
+}, { width: 320, fragment: "v=1&species=Fe" });
