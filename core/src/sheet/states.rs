@@ -159,10 +159,19 @@ struct GridTable {
 
 #[derive(Clone, Debug, Serialize)]
 struct JjRow {
+    /// g of each j subshell, the same for every level of j^n.
+    factors: Vec<JjFactor>,
     name: Rich,
     text: String,
     levels: ByJ,
     n_levels: Count,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct JjFactor {
+    label: String,
+    j: TwiceJ,
+    g: Option<f64>,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -174,6 +183,8 @@ struct PairRow {
     k: TwiceJ,
     #[serde(rename = "J")]
     j: Vec<TwiceJ>,
+    /// g of each J, on a parent in pure LS coupling.
+    g: Vec<Option<f64>>,
 }
 
 /// About how many rows the answer has, for the estimate.
@@ -217,6 +228,8 @@ pub fn answer(document: &Document) -> Result<States, Problem> {
         ("grid", Kind::Exact),
         ("jj", Kind::Exact),
         ("jK", Kind::Exact),
+        ("jK.g", Kind::Computed),
+        ("jj.factors", Kind::Computed),
         ("shells", Kind::Exact),
         ("spin_only", Kind::Computed),
     ]
@@ -460,7 +473,17 @@ fn jj_row(scheme: &jj::JjConfiguration) -> JjRow {
         .iter()
         .map(|s| (s.orbital.to_string(), s.j, s.electrons))
         .collect();
+    let factors = scheme
+        .subshells
+        .iter()
+        .map(|s| JjFactor {
+            label: format!("{}{}", s.orbital, s.j),
+            j: s.j,
+            g: lande::electron(s.orbital.l().into(), s.j),
+        })
+        .collect();
     JjRow {
+        factors,
         name: Rich::new().with(Piece::Jj { subshells, j: None }),
         text: scheme.to_string(),
         levels: ByJ(scheme.levels.clone()),
@@ -492,11 +515,15 @@ fn pair_row(pair: &jk::Pair, outer: &Subshell) -> PairRow {
             odd: pair.is_odd,
             j: None,
         });
+    let g_parent = lande::ls(pair.parent.term, pair.parent.j);
+    let l = outer.orbital().l().into();
+    let factor = |j: &TwiceJ| lande::pair(g_parent, pair.parent.j, l, pair.k, *j);
     PairRow {
         name,
         text: pair.to_string(),
         parent,
         k: pair.k,
+        g: pair.j.iter().map(factor).collect(),
         j: pair.j.clone(),
     }
 }
