@@ -9,9 +9,6 @@ import { element } from "./dom.js";
 import { ALL_DIGITS, fullDigits, numberRuns } from "./digits.js";
 import { spokenHalf, spokenLetter, spokenMultiplicity, spokenSubshell, stageNumber, unitOf } from "./spoken.js";
 
-/** The words for the kinds of number. */
-export const KINDS = ["exact", "computed", "fitted", "entered", "measured"];
-
 /** Sight, speech, copy and LaTeX of one item. */
 export function describe(item, settings = {}) {
   if (typeof item === "string") return { runs: [{ text: item }], plain: item, speech: item, latex: latexText(item), kind: "text" };

@@ -90,3 +90,37 @@ everyDoor("the splitting is free of what axe finds", async (door) => {
   assert.deepEqual(await door.axe(), []);
   assert.equal(await door.scrollsSideways(), false);
 }, { width: 360, dark: true, fragment: line("2P3/2"), doors: ["file"] });
+
+everyDoor("two fingers enlarge the picture, one finger scrolls the page, a drag of the mouse enlarges a part [Chromium's protocol sends touches]", async (door) => {
+  await door.unfold("splitting");
+  await door.until(() => document.querySelector("#splitting .stage svg"));
+  const bars = () => door.evaluate(() => document.querySelectorAll('#splitting .stage svg[role=img] line[stroke-width="3"]').length);
+  const middle = async () => {
+    await door.evaluate(() => document.querySelector("#splitting .stage").scrollIntoView({ block: "center" }));
+    const { x, y, width, height } = await (await door.page.$("#splitting .stage")).boundingBox();
+    return [x + width / 2, y + height / 2];
+  };
+  const session = await door.page.createCDPSession();
+  const touch = (type, points) => session.send("Input.dispatchTouchEvent", { type, touchPoints: points.map(([x, y], id) => ({ x, y, id })) });
+  let [x, y] = await middle();
+  await touch("touchStart", [[x - 40, y], [x + 40, y]]);
+  for (let step = 1; step <= 8; step += 1) await touch("touchMove", [[x - 40 - 15 * step, y], [x + 40 + 15 * step, y]]);
+  await touch("touchEnd", []);
+  assert.ok((await bars()) < 6);
+  assert.equal(await door.evaluate(() => window.visualViewport.scale), 1);
+
+  const before = await door.evaluate(() => window.scrollY);
+  await touch("touchStart", [[x, y]]);
+  for (let step = 1; step <= 8; step += 1) await touch("touchMove", [[x, y - 20 * step]]);
+  await touch("touchEnd", []);
+  await door.until((old) => window.scrollY > old + 40, before);
+
+  await door.click("Whole picture");
+  assert.equal(await bars(), 6);
+  [x, y] = await middle();
+  await door.page.mouse.move(x + 30, y - 20);
+  await door.page.mouse.down();
+  await door.page.mouse.move(x + 200, y - 20, { steps: 6 });
+  await door.page.mouse.up();
+  assert.ok((await bars()) < 6);
+}, { fragment: line("2P3/2"), width: 820, browsers: ["chromium"] });

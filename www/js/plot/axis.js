@@ -1,16 +1,14 @@
 // Scales and axes: ticks outside, the title with its unit at the end.
 
 import { trueMinus } from "../digits.js";
-import { LABEL, labelWidth } from "./pen.js";
+import { LABEL } from "./pen.js";
 
 const TICK = 5;
 
 /** A linear scale from [from, to] to pixels [left, right]. */
 export function linearScale(from, to, left, right) {
   const span = to - from || 1;
-  const scale = (value) => left + ((value - from) / span) * (right - left);
-  scale.invert = (pixel) => from + ((pixel - left) / (right - left || 1)) * span;
-  return scale;
+  return (value) => left + ((value - from) / span) * (right - left);
 }
 
 /** Round values between `from` and `to`, about `wanted` of them, with the decimals they need. */
@@ -47,9 +45,4 @@ export function tickText(value, decimals) {
   if (value !== 0 && (Math.abs(value) < 1e-6 || Math.abs(value) >= 1e7)) return trueMinus(value.toExponential(1).replace("e+", "e"));
   const text = value.toFixed(Math.min(decimals, 12));
   return trueMinus(Number(text) === 0 ? text.replace("-", "") : text);
-}
-
-/** True when a label of this width at x keeps clear of the one before it. */
-export function clearOf(last, x, label) {
-  return x - labelWidth(label) / 2 > last + 4;
 }

@@ -9,6 +9,11 @@ const TOP = 48;
 const LEAST_CELL = 26;
 const MOST_CELL = 44;
 
+/** The signs of the grid's two directions, as rich text. */
+export const M_L = { sign: { runs: [{ text: "M" }, { down: "L" }], plain: "M_L", speech: "M L", latex: "$M_L$" } };
+/** See M_L. */
+export const M_S = { sign: { runs: [{ text: "M" }, { down: "S" }], plain: "M_S", speech: "M S", latex: "$M_S$" } };
+
 /**
  * The layout for `picture`. `grid` is {M_L, M_S, counts}; `chosen()` the chosen term {L, S} or null;
  * `idOf(L, S)` the shared-choice id of the term whose corner a cell is, or null.
@@ -32,14 +37,13 @@ export function gridLayout({ grid, chosen, idOf }) {
         return {
           x: x + 3, y: y + 3, w: cell - 6, h: tall - 6,
           id: row.value >= 0 && column.value >= 0 ? idOf(row.value, column.value) : null,
-          reading: [{ sign: { runs: [{ text: "M" }, { down: "L" }], plain: "M_L", speech: "M L" } }, ` ${trueMinus(row.value)}, `,
-            { sign: { runs: [{ text: "M" }, { down: "S" }], plain: "M_S", speech: "M S" } }, ` ${trueMinus(column.text)}: ${count} ${count === 1 ? "microstate" : "microstates"}`],
+          reading: [M_L, ` ${trueMinus(row.value)}, `, M_S, ` ${trueMinus(column.text)}: ${count} ${count === 1 ? "microstate" : "microstates"}`],
         };
       })),
       draw(pen) {
         const term = chosen();
-        pen.text(LEFT + (columns.length * cell) / 2, 14, [{ text: "M" }, { down: "S" }], { anchor: "middle", fill: "quiet" });
-        pen.text(LEFT - 8, 14, [{ text: "M" }, { down: "L" }], { anchor: "end", fill: "quiet" });
+        pen.text(LEFT + (columns.length * cell) / 2, 14, M_S.sign.runs, { anchor: "middle", fill: "quiet" });
+        pen.text(LEFT - 8, 14, M_L.sign.runs, { anchor: "end", fill: "quiet" });
         columns.forEach((column, c) => pen.text(LEFT + (c + 0.5) * cell, TOP - 8, trueMinus(column.text), { anchor: "middle", fill: "quiet", size: column.text.length > 3 && cell < 32 ? 11 : LABEL }));
         rows.forEach((row, r) => pen.text(LEFT - 8, TOP + (r + 0.5) * tall + 5, trueMinus(row.value), { anchor: "end", fill: "quiet" }));
         rows.forEach((row, r) => columns.forEach((column, c) => {

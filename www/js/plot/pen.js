@@ -134,11 +134,6 @@ export class CanvasPen {
   }
 }
 
-/** About how wide a label is, in pixels; enough for keeping labels apart. */
-export function labelWidth(label, size = LABEL) {
-  return parts(label).reduce((sum, part) => sum + [...part.text].length * size * 0.58 * (part.small ? SMALL : 1) - (part.back ?? 0) * size, 0);
-}
-
 // A label's pieces: {text, shift (in sizes, downwards), small, back (how far to step back)}.
 function parts(label) {
   const runs = typeof label === "string" ? [{ text: label }] : label;

@@ -20,6 +20,7 @@ const MOST_ZOOM = 200;
  * `layout(width, view)` → {height, marks, draw(pen), width?}; `view` is the part of the horizontal extent that
  *   is shown, [0, 1] unzoomed, or ignored when `zoomable` is false.
  *   A mark: {x, y, w, h (its box, for ring and touch), reading: rich text, id: shared choice or null}.
+ * `rest`: rich text of the reading line while nobody is on a mark.
  * `walk(index, key, marks)` → next index, for pictures that are walked in two directions.
  * `table`: node shown by "Show as table", or null when the table stands beside the picture already;
  * then `tableNear` is a function that brings it into view.
@@ -158,7 +159,7 @@ class Picture {
 
   // What the line says while nobody is on a mark.
   #rest() {
-    this.#reading.replaceChildren(element("span", { class: "note", text: this.#options.rest ?? "" }));
+    this.#reading.replaceChildren(element("span", { class: "note" }, richNode(this.#options.rest ?? [], this.#context.settings)));
   }
 
   #choose(index) {
@@ -177,17 +178,21 @@ class Picture {
     if (this.#ring === null) return;
     const chosen = this.#context.choice?.get() ?? null;
     const ring = (mark, kind) => svgElement("rect", { class: kind, x: mark.x - 3, y: mark.y - 3, width: mark.w + 6, height: mark.h + 6 });
-    const [from, to] = this.#view;
-    const inView = (mark) => mark.part === undefined || (mark.part >= from && mark.part <= to);
-    const rings = chosen === null ? [] : this.#marks.filter((mark) => mark.id === chosen && inView(mark)).map((mark) => ring(mark, "ring-chosen"));
-    if (this.#at >= 0 && document.activeElement === this.#stage && inView(this.#marks[this.#at])) rings.push(ring(this.#marks[this.#at], "ring-cursor"));
+    const rings = chosen === null ? [] : this.#marks.filter((mark) => mark.id === chosen && this.#seen(mark)).map((mark) => ring(mark, "ring-chosen"));
+    if (this.#at >= 0 && document.activeElement === this.#stage && this.#seen(this.#marks[this.#at])) rings.push(ring(this.#marks[this.#at], "ring-cursor"));
     this.#ring.replaceChildren(...rings);
+  }
+
+  // Is the mark in the part of the picture that is shown?
+  #seen({ part }) {
+    return part === undefined || (part >= this.#view[0] && part <= this.#view[1]);
   }
 
   #nearest(x, y) {
     let best = -1;
     let least = 24;
     this.#marks.forEach((mark, i) => {
+      if (!this.#seen(mark)) return;
       const dx = Math.max(mark.x - x, 0, x - mark.x - mark.w);
       const dy = Math.max(mark.y - y, 0, y - mark.y - mark.h);
       // Among marks that all hold the point, the one whose middle is nearest.

@@ -32,7 +32,7 @@ export function select(context, key, label, options, act) {
     view.set(key, box.value);
     act(box.value);
   });
-  return { node: element("label", { class: "choose" }, element("span", { text: label }), box), value: () => box.value, set: (value) => { box.value = value; } };
+  return { node: element("label", { class: "choose" }, element("span", { text: label }), box), value: () => box.value };
 }
 
 /** A yes-or-no choice, remembered: {node, value()}. */

@@ -1,7 +1,7 @@
 // Which states? Terms, levels, shells and the ground level of each configuration.
 
 import { element } from "../dom.js";
-import { gridLayout, gridWalk } from "../plot/grid.js";
+import { M_L, M_S, gridLayout, gridWalk } from "../plot/grid.js";
 import { picture } from "../plot/picture.js";
 import { richNode } from "../rich.js";
 import { bareShellTable, fillingNode, groundNode, shellsTable } from "./occupancy.js";
@@ -59,8 +59,8 @@ function gridPicture(entry, context) {
   const byCorner = new Map(termRows(entry).map((row) => [`${row.L}|${(row.multiplicity - 1) / 2}`, termId(entry, row.term, row.index)]).reverse());
   const shown = picture({
     context,
-    name: ["M_L by M_S grid of ", { configuration: entry.configuration }],
-    rest: "Microstates by M_L and M_S. Choose a term to see the cells it takes; Enter on a corner cell chooses its term.",
+    name: [M_L, " by ", M_S, " grid of ", { configuration: entry.configuration }],
+    rest: ["Microstates by ", M_L, " and ", M_S, ". Choose a term to see the cells it takes; Enter on a corner cell chooses its term."],
     zoomable: false,
     walk: gridWalk(entry.grid.M_S.length),
     layout: gridLayout({

@@ -1,7 +1,8 @@
 // Tables of terms, levels and other couplings of one configuration.
 
-import { halfText, halfValue } from "../digits.js";
+import { halfText, halfValue, trueMinus } from "../digits.js";
 import { element } from "../dom.js";
+import { M_L, M_S } from "../plot/grid.js";
 import { dataTable } from "../table.js";
 import { richPlain } from "../rich.js";
 import { kindOf } from "./working.js";
@@ -159,8 +160,8 @@ export function readOffTable(entry, context) {
   return dataTable({
     caption: captionOf(entry, "Terms read off the grid of "), rows, context, file: `read-off ${entry.configuration.text}`,
     columns: [
-      { name: "corner M_S", type: "half", value: (row) => halfText((row.multiplicity - 1) / 2) },
-      { name: "corner M_L", type: "number", value: (row) => row.L },
+      { name: "corner M_S", head: ["corner ", M_S], type: "half", value: (row) => halfText((row.multiplicity - 1) / 2) },
+      { name: "corner M_L", head: ["corner ", M_L], type: "number", value: (row) => row.L },
       { name: "term", type: "text", value: (row) => row.term, rich: termRich },
       { name: "times", type: "number", value: (row) => row.times },
       { name: "states of one", type: "number", value: (row) => row.each },
@@ -174,11 +175,11 @@ export function readOffTable(entry, context) {
 export function gridTable(entry, context) {
   const { grid } = entry;
   return dataTable({
-    caption: [...captionOf(entry, "Microstates of the open shells of "), " by M_L and M_S"], context, file: `grid ${entry.configuration.text}`,
-    rows: grid.M_L.map((M_L, r) => ({ M_L, counts: grid.counts[r] })),
+    caption: [...captionOf(entry, "Microstates of the open shells of "), " by ", M_L, " and ", M_S], context, file: `grid ${entry.configuration.text}`,
+    rows: grid.M_L.map((value, r) => ({ value, counts: grid.counts[r] })),
     columns: [
-      { name: "M_L", type: "number", value: (row) => Number(row.M_L) },
-      ...grid.M_S.map((M_S, c) => ({ name: `M_S ${M_S.replace("-", "\u2212")}`, type: "number", value: (row) => row.counts[c] })),
+      { name: "M_L", head: [M_L], type: "number", value: (row) => row.value },
+      ...grid.M_S.map((value, c) => ({ name: `M_S ${value}`, head: [M_S, ` ${trueMinus(value)}`], type: "number", value: (row) => row.counts[c] })),
     ],
   });
 }
