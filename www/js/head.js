@@ -45,15 +45,16 @@ export class Head {
         element("div", { class: "configurations-box" }, this.#configurations, this.#add)),
       this.#chartFold,
     );
-    this.unfold(view.get("editor") ?? true, false);
+    // On a phone the fields would push the answer off the first screen.
+    this.unfold(view.get("editor") ?? window.innerWidth >= 600, false);
     this.arrange();
   }
 
-  /** Folds the editor in or out. */
+  /** Folds the editor in or out; `move` when somebody asked for it. */
   unfold(open, move = true) {
     this.#editor.hidden = !open;
     this.#button.setAttribute("aria-expanded", String(open));
-    this.#view.set("editor", open);
+    if (move) this.#view.set("editor", open);
     if (open && move) {
       window.scrollTo({ top: 0 });
       this.#fields.focus("/species");

@@ -175,6 +175,10 @@ export class Door {
   /** Empties the field with this label and types the text into it, key by key. */
   async type(label, text) {
     const input = await this.field(label);
+    // On a phone the atom's fields are folded in until somebody opens them.
+    await input.evaluate((node) => {
+      if (node.closest("#editor[hidden]")) document.getElementById("atom").click();
+    });
     await input.focus();
     await input.evaluate((node) => node.select());
     if (text === "") await this.page.keyboard.press("Backspace");

@@ -14,7 +14,7 @@ async function show(door, example) {
   await door.evaluate((fragment) => { location.hash = fragment; }, toAddress(example));
   await door.until((title) => document.querySelector("#title-block .title")?.textContent === title, example.title);
   await door.evaluate(() => {
-    for (const button of document.querySelectorAll('.rung-button[aria-expanded="false"]')) button.click();
+    for (const button of document.querySelectorAll('.rung-button[aria-expanded="false"], #atom[aria-expanded="false"]')) button.click();
   });
   await door.sentence("states");
   await door.until(() => [...document.querySelectorAll(".rung:not(#record)")].every((rung) => rung.dataset.state === "lacks"
@@ -66,6 +66,12 @@ for (const [what, options] of [
   }, options);
 }
 
+everyDoor("on a phone the first visit shows the answer's sentence on the first screen", async (door) => {
+  await door.sentence("states");
+  const bottom = await door.evaluate(() => document.querySelector("#states .say").getBoundingClientRect().bottom);
+  assert.ok(bottom < 740 - 44, `${bottom} px`);
+}, { width: 360, height: 740 });
+
 for (const width of [360, 820, 1400]) {
   everyDoor(`the head stays and is at most 56 px once scrolled, ${width} px`, async (door) => {
     await show(door, EXAMPLES[1]);
@@ -80,6 +86,7 @@ for (const width of [360, 820, 1400]) {
 
 everyDoor("what can be touched in the frame is at least 44 px", async (door) => {
   await show(door, EXAMPLES[1]);
+  await door.evaluate(() => document.querySelector('#atom[aria-expanded="false"]')?.click());
   const small = await door.evaluate(() => [...document.querySelectorAll(".head button, #editor button, #editor input, #editor select, #editor summary, .rung-button, .question-fields input, .hang > .actions button, .foot-bar button, .copy-say")]
     .filter((node) => node.checkVisibility())
     .map((node) => [node.textContent || node.id, node.getBoundingClientRect()])
