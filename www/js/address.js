@@ -88,7 +88,8 @@ function unreadable(part) {
 }
 
 function escapeText(text) {
-  return encodeURIComponent(text).replace(/%20/g, "+").replace(/%2C/g, ",").replace(/%2F/g, "/")
+  // Half a character, as an interrupted input method may leave it, has no place in an address.
+  return encodeURIComponent(text.replace(/\p{Surrogate}/gu, "\uFFFD")).replace(/%20/g, "+").replace(/%2C/g, ",").replace(/%2F/g, "/")
     .replace(/%3A/g, ":").replace(/%5B/g, "[").replace(/%5D/g, "]").replace(/%3D/g, "=").replace(/%40/g, "@");
 }
 

@@ -169,7 +169,7 @@ function numberNode({ unit = null, kind = null }, said) {
   const node = element("span", { class: "number", "data-plain": said.plain },
     element("span", { class: `digits${kind ? ` kind-${kind}` : ""}` }, ...runNodes(said.digits)));
   if (unit !== null) node.append("\u00a0", unitNode(unit));
-  if (kind !== null) node.append("\u00a0", element("span", { class: "kind-word", text: kind }));
+  if (kind !== null) node.append(" ", element("span", { class: "kind-word", text: kind }));
   return node;
 }
 

@@ -136,6 +136,10 @@ test("addresses are readable and bounded", () => {
   assert.equal(toAddress({ rungline: 1, note: "x".repeat(MAX_ADDRESS) }), null);
 });
 
+test("half a character does not keep the rest from the address", () => {
+  assert.equal(fromAddress(toAddress({ rungline: 1, species: "a\uD83D", title: "\uDE42 🙂" })).sheet.title, "\uFFFD 🙂");
+});
+
 test("an address that cannot be read is a plain fault", () => {
   for (const bad of ["#v=2&species=Fe", "#v=1&species", "#v=1&species=%E0%A4%A", "#v=1&=x", "#v=1&a=~{", "#v=1&a=1&a=2", "#v=1&a=1&a.b=2", `#v=1&${"a.".repeat(20)}a=1`, `#v=1&a=${"x".repeat(5000)}`]) {
     const { fault } = fromAddress(bad);
