@@ -132,12 +132,12 @@ pub fn between(
     ))
 }
 
-/// The first allowed line, E1 before M1; what the question on splitting proposes.
+/// The first allowed line, E1 before M1 before E2; what the question on splitting proposes.
 pub fn first_allowed(document: &Document) -> Option<(LevelOf, LevelOf)> {
     if pairs(document) > MAX_PAIRS {
         return None;
     }
-    for multipole in [Multipole::E1, Multipole::M1] {
+    for multipole in Multipole::ALL {
         for (lower_entry, upper_entry) in pairs_of_entries(document) {
             let Some(Ok(between)) = between(document, lower_entry, upper_entry) else {
                 continue;

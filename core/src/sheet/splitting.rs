@@ -191,10 +191,10 @@ fn g(of: &LevelOf) -> Option<f64> {
     lande::ls(of.level.term, of.level.j)
 }
 
-/// E1 where it is allowed, else M1; otherwise the rule that refuses.
+/// The strongest multipole that is allowed: E1, M1, E2; otherwise the rule that refuses.
 fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Multipole, Problem> {
     let verdicts = pairs::judge(document, upper, lower)?;
-    for wanted in [Multipole::E1, Multipole::M1] {
+    for wanted in Multipole::ALL {
         if verdicts
             .iter()
             .any(|(m, rule)| *m == wanted && rule.is_none())
@@ -202,8 +202,8 @@ fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Mu
             return Ok(wanted);
         }
     }
-    // An approximate rule does not stop a line that is seen; parity tells which dipole it is.
-    for wanted in [Multipole::E1, Multipole::M1] {
+    // An approximate rule does not stop a line that is seen; parity and J tell which multipole it is.
+    for wanted in Multipole::ALL {
         if verdicts
             .iter()
             .any(|(m, rule)| *m == wanted && rule.is_some_and(|r| !r.is_rigorous()))
@@ -218,7 +218,7 @@ fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Mu
     Err(Problem::new(
         "line-refused",
         format!(
-            "There is no dipole line between {} and {}.",
+            "There is no line between {} and {}.",
             document.level_label(lower),
             document.level_label(upper)
         ),
@@ -312,7 +312,7 @@ fn working(line: &LineOf, field: &Field, components: &[ComponentRow]) -> Vec<Wor
             operator("="),
             sup(
                 Formula::ThreeJ(
-                    [["J", "1", "J′"], ["−M", "q", "M′"]].map(|r| r.map(str::to_owned)),
+                    [["J", "k", "J′"], ["−M", "q", "M′"]].map(|r| r.map(str::to_owned)),
                 ),
                 number(2),
             ),

@@ -477,7 +477,7 @@ fn jj_row(scheme: &jj::JjConfiguration) -> JjRow {
         .subshells
         .iter()
         .map(|s| JjFactor {
-            label: format!("{}{}", s.orbital, s.j),
+            label: s.orbital.to_string(),
             j: s.j,
             g: lande::electron(s.orbital.l().into(), s.j),
         })

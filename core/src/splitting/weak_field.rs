@@ -2,15 +2,13 @@
 //! (Condon & Shortley 1935, ch. XVI; Cowan 1981, ch. 17).
 //!
 //! Each pair of states M, M′ is a component at (g M − g′ M′) μ_B B with the strength
-//! (J 1 J′; −M q M′)², q = M − M′: π for q = 0, σ± for q = ±1. These sum to 1 over the line and to
-//! ⅓ for each polarisation.
+//! (J k J′; −M q M′)², q = M − M′ and k the rank: π for q = 0, σ± for q = ±1, and for quadrupoles
+//! q = ±2. These sum to 1 over the line and to 1/(2k + 1) for each q.
 //!
-//! Seen at an angle θ between field and line of sight the intensities are weighted by (3/2) sin²θ
-//! for π and (3/4)(1 + cos²θ) for σ, so that the whole line stays 1. This holds for E1 and for M1; the
-//! two differ in the direction of the electric vector ([`Light`]), since in M1 the magnetic vector
-//! takes the part that the electric one has in E1.
+//! Seen at an angle to the field each q is weighted by its own directions, so that the whole line
+//! stays 1. E1 and M1 are seen alike without a polariser.
 
-use super::wigner_eckart::dipole_share;
+use super::wigner_eckart::{dipole_share, quadrupole_share};
 use crate::constants::BOHR_MAGNETON_WAVENUMBER;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
@@ -37,61 +35,66 @@ pub struct SplitLevel {
     pub g: f64,
 }
 
-/// π, σ+ or σ−, by M_upper − M_lower = 0, +1, −1.
+/// π, σ+ or σ−, by M_upper − M_lower = 0, +1, −1; E2 has ±2 besides.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub enum Polarisation {
+    /// M_upper − M_lower = −2, E2 only.
+    MinusTwo,
     /// M_upper − M_lower = −1.
     SigmaMinus,
     /// M_upper = M_lower.
     Pi,
     /// M_upper − M_lower = +1.
     SigmaPlus,
+    /// M_upper − M_lower = +2, E2 only.
+    PlusTwo,
 }
 
 impl Polarisation {
-    /// ASCII: `pi`, `sigma+`, `sigma-`.
+    /// ASCII: `pi`, `sigma+`, `sigma-`, for E2 also `delta-M+2`, `delta-M-2`.
     pub fn name(self) -> &'static str {
         match self {
+            Polarisation::MinusTwo => "delta-M-2",
+            Polarisation::PlusTwo => "delta-M+2",
             Polarisation::SigmaMinus => "sigma-",
             Polarisation::Pi => "pi",
             Polarisation::SigmaPlus => "sigma+",
         }
     }
 
-    /// The weight of this polarisation at the angle θ between field and line of sight, given cos²θ.
-    fn weight(self, cos_squared: f64) -> f64 {
+    /// M_upper − M_lower.
+    pub fn change_of_m(self) -> i32 {
         match self {
-            Polarisation::Pi => 1.5 * (1.0 - cos_squared),
-            Polarisation::SigmaPlus | Polarisation::SigmaMinus => 0.75 * (1.0 + cos_squared),
+            Polarisation::MinusTwo => -2,
+            Polarisation::SigmaMinus => -1,
+            Polarisation::Pi => 0,
+            Polarisation::SigmaPlus => 1,
+            Polarisation::PlusTwo => 2,
         }
     }
-}
 
-/// The state of polarisation of the light that is seen.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Light {
-    /// Nothing is sent in this direction.
-    Dark,
-    /// Linear; the electric vector lies in the plane of field and line of sight, or across it.
-    Linear {
-        /// In that plane (along the field when seen at 90°).
-        in_field_plane: bool,
-    },
-    /// Circular, seen along the field.
-    Circular,
-    /// Elliptic, with the ratio of the short to the long axis, |cos θ|.
-    Elliptic {
-        /// Short axis over long axis.
-        axis_ratio: f64,
-        /// The long axis lies in the plane of field and line of sight.
-        long_axis_in_field_plane: bool,
-    },
+    /// The intensity at the angle θ between field and line of sight, given c = cos²θ, its mean over
+    /// all directions being 1.
+    ///
+    /// Dipole: (3/2) sin²θ and (3/4)(1 + cos²θ). Quadrupole, for |ΔM| = 0, 1, 2: (15/2) sin²θ cos²θ,
+    /// (5/4)(1 − 3 cos²θ + 4 cos⁴θ), (5/4)(1 − cos⁴θ) (the squared vector spherical harmonics of
+    /// l = 1 and 2; Jackson, *Classical Electrodynamics*, table 9.1).
+    fn weight(self, rank: u32, c: f64) -> f64 {
+        match (rank, self.change_of_m().abs()) {
+            (1, 0) => 1.5 * (1.0 - c),
+            (1, 1) => 0.75 * (1.0 + c),
+            (2, 0) => 7.5 * (1.0 - c) * c,
+            (2, 1) => 1.25 * (1.0 - 3.0 * c + 4.0 * c * c),
+            (2, 2) => 1.25 * (1.0 - c * c),
+            _ => 0.0,
+        }
+    }
 }
 
 /// One component.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Component {
-    /// π, σ+ or σ−.
+    /// By M_upper − M_lower.
     pub polarisation: Polarisation,
     /// M of the upper level.
     pub m_upper: TwiceJ,
@@ -101,6 +104,8 @@ pub struct Component {
     pub lorentz: f64,
     /// Strength over all directions, 1 for the line.
     pub strength: f64,
+    /// Rank of the radiation, which decides how it is seen.
+    rank: u32,
 }
 
 /// Components that coincide.
@@ -121,13 +126,13 @@ pub struct Position {
 pub struct Pattern {
     /// The radiation.
     pub multipole: Multipole,
-    /// By polarisation (σ−, π, σ+), then by rising M of the upper level.
+    /// By rising M_upper − M_lower, then by rising M of the upper level.
     pub components: Vec<Component>,
 }
 
-/// The pattern of a dipole line between two levels.
+/// The pattern of a line between two levels.
 ///
-/// Errors: `pattern-quadrupole` for E2; `pattern-no-line` where J and J′ forbid the line;
+/// Errors: `pattern-no-line` where J and J′ forbid the line;
 /// `pattern-negative-j`; `pattern-too-large` above 20 000 components; `g-out-of-range`.
 pub fn pattern(
     upper: SplitLevel,
@@ -136,15 +141,21 @@ pub fn pattern(
 ) -> Result<Pattern, Problem> {
     check(upper, lower, multipole)?;
     let (a, b) = (upper.j.doubled(), lower.j.doubled());
+    let rank = multipole.rank();
     let mut components = Vec::new();
-    for (polarisation, q) in [
-        (Polarisation::SigmaMinus, -2),
-        (Polarisation::Pi, 0),
-        (Polarisation::SigmaPlus, 2),
+    for polarisation in [
+        Polarisation::MinusTwo,
+        Polarisation::SigmaMinus,
+        Polarisation::Pi,
+        Polarisation::SigmaPlus,
+        Polarisation::PlusTwo,
     ] {
         for m in (-a..=a).step_by(2) {
-            let n = m - q;
-            let strength = dipole_share(a, m, b, n);
+            let n = m - 2 * polarisation.change_of_m();
+            let strength = match rank {
+                1 => dipole_share(a, m, b, n),
+                _ => quadrupole_share(a, m, b, n),
+            };
             if strength > 0.0 {
                 let (m_upper, m_lower) = (TwiceJ::from_doubled(m), TwiceJ::from_doubled(n));
                 components.push(Component {
@@ -153,6 +164,7 @@ pub fn pattern(
                     m_lower,
                     lorentz: energy(upper, m_upper) - energy(lower, m_lower),
                     strength,
+                    rank,
                 });
             }
         }
@@ -212,19 +224,11 @@ fn check_level(level: SplitLevel) -> Result<(), Problem> {
 }
 
 fn check(upper: SplitLevel, lower: SplitLevel, multipole: Multipole) -> Result<(), Problem> {
-    if multipole == Multipole::E2 {
-        return Err(Problem::new(
-            "pattern-quadrupole",
-            "the pattern of an E2 line has five polarisations and its own directions; it is not computed.",
-            0,
-            0,
-        )
-        .bound("E1 and M1 lines"));
-    }
     check_level(upper)?;
     check_level(lower)?;
     let (a, b) = (upper.j.doubled(), lower.j.doubled());
-    if (a - b).abs() > 2 || (a - b) % 2 != 0 || a + b < 2 {
+    let rank = if multipole == Multipole::E2 { 2 } else { 1 };
+    if (a - b).abs() > 2 * rank || (a - b) % 2 != 0 || a + b < 2 * rank {
         return Err(Problem::new(
             "pattern-no-line",
             format!(
@@ -234,7 +238,9 @@ fn check(upper: SplitLevel, lower: SplitLevel, multipole: Multipole) -> Result<(
             0,
             0,
         )
-        .bound("J changes by 0 or 1, not from 0 to 0"));
+        .bound(format!(
+            "J changes by at most {rank}, and both J together are at least {rank}"
+        )));
     }
     Ok(())
 }
@@ -242,17 +248,20 @@ fn check(upper: SplitLevel, lower: SplitLevel, multipole: Multipole) -> Result<(
 impl Component {
     /// What is seen of it at the angle between field and line of sight, in degrees, without polariser.
     pub fn seen(&self, angle_degrees: f64) -> f64 {
-        self.strength * self.polarisation.weight(cos_squared(angle_degrees))
+        self.strength
+            * self
+                .polarisation
+                .weight(self.rank, cos_squared(angle_degrees))
     }
 
     /// What is seen along the field.
     pub fn along(&self) -> f64 {
-        self.strength * self.polarisation.weight(1.0)
+        self.strength * self.polarisation.weight(self.rank, 1.0)
     }
 
     /// What is seen across the field.
     pub fn across(&self) -> f64 {
-        self.strength * self.polarisation.weight(0.0)
+        self.strength * self.polarisation.weight(self.rank, 0.0)
     }
 }
 
@@ -267,30 +276,6 @@ fn cos_squared(angle_degrees: f64) -> f64 {
     }
     let cosine = libm::cos(folded * (core::f64::consts::PI / 180.0));
     cosine * cosine
-}
-
-/// The polarisation of the light of one component at the angle between field and line of sight.
-///
-/// E1: π has its electric vector in the plane of field and line of sight, σ is elliptic with its
-/// long axis across that plane, circular along the field, linear across it. M1: electric and
-/// magnetic vector change roles, so the same holds with the two directions exchanged.
-pub fn light(multipole: Multipole, polarisation: Polarisation, angle_degrees: f64) -> Light {
-    let cos_squared = cos_squared(angle_degrees);
-    let electric = multipole != Multipole::M1;
-    match polarisation {
-        Polarisation::Pi if cos_squared == 1.0 => Light::Dark,
-        Polarisation::Pi => Light::Linear {
-            in_field_plane: electric,
-        },
-        _ if cos_squared == 1.0 => Light::Circular,
-        _ if cos_squared == 0.0 => Light::Linear {
-            in_field_plane: !electric,
-        },
-        _ => Light::Elliptic {
-            axis_ratio: libm::sqrt(cos_squared),
-            long_axis_in_field_plane: !electric,
-        },
-    }
 }
 
 impl Pattern {

@@ -1,7 +1,9 @@
-//! Squares of 3j symbols with a rank of one, in closed form.
+//! Squares of 3j symbols with a rank of one, in closed form, and with a rank of two.
 //!
 //! Edmonds, *Angular Momentum in Quantum Mechanics* (1957), table 2, with doubled arguments, so that
 //! each is one quotient of whole numbers.
+
+use crate::angular::wigner_3j;
 
 /// (J 1 J′; −M q M′)² with q = M − M′, from the doubled values; zero where the rules of projections or
 /// of the triangle forbid it.
@@ -17,6 +19,22 @@ pub fn dipole_share(two_j: i32, two_m: i32, lower_two_j: i32, lower_two_m: i32) 
         -2 => step(k, n, q),
         _ => 0.0,
     }
+}
+
+/// (J 2 J′; −M q M′)² with q = M − M′, from the doubled values.
+pub fn quadrupole_share(two_j: i32, two_m: i32, lower_two_j: i32, lower_two_m: i32) -> f64 {
+    let Some(q) = two_m.checked_sub(lower_two_m) else {
+        return 0.0;
+    };
+    let symbol = wigner_3j(
+        two_j,
+        4,
+        lower_two_j,
+        two_m.saturating_neg(),
+        q,
+        lower_two_m,
+    );
+    symbol * symbol
 }
 
 /// Whole numbers below 2³⁵ multiplied without overflow, exactly below 2⁵³.

@@ -65,9 +65,9 @@ export function fanLayout({ upper, lower, components, fieldText, kind }) {
         });
         ordered.forEach((component, i) => {
           const x = knee + (i + 1) * slot;
-          const { colour } = SIGNS[component.polarisation];
+          const { colour, dash } = SIGNS[component.polarisation];
           const [y1, y2] = [yOf(1, component.M_lower), yOf(0, component.M_upper)];
-          pen.line(x, y1, x, y2, { stroke: colour, width: 2, dash: { pi: null, "sigma+": "8 4", "sigma-": "2 4" }[component.polarisation] });
+          pen.line(x, y1, x, y2, { stroke: colour, width: 2, dash });
           pen.circle(x, y1, 3, { fill: colour });
           pen.circle(x, y2, 3, { fill: colour });
           if (slot >= 24) pen.text(x + 5, TOP + part + GAP / 2 + 5, SIGNS[component.polarisation].runs, { fill: colour });

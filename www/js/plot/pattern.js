@@ -14,11 +14,13 @@ export const OFFSET_UNITS = {
 };
 /** How the field is looked at: key in the answer and words. */
 export const VIEWS = { seen: "as in the sheet", across: "across the field", along: "along the field", strength: "over all directions" };
-/** Signs of the polarisations. */
+/** Signs of the polarisations, and by how much M rises; a quadrupole line has steps of two. */
 export const SIGNS = {
-  pi: { runs: [{ text: "π" }], plain: "π", speech: "pi", colour: "s1" },
-  "sigma+": { runs: [{ text: "σ" }, { up: "+" }], plain: "σ⁺", speech: "sigma plus", colour: "s2" },
-  "sigma-": { runs: [{ text: "σ" }, { up: "\u2212" }], plain: "σ⁻", speech: "sigma minus", colour: "s3" },
+  pi: { runs: [{ text: "π" }], plain: "π", speech: "pi", colour: "s1", step: 0, dash: null },
+  "sigma+": { runs: [{ text: "σ" }, { up: "+" }], plain: "σ⁺", speech: "sigma plus", colour: "s2", step: 1, dash: "8 4" },
+  "sigma-": { runs: [{ text: "σ" }, { up: "\u2212" }], plain: "σ⁻", speech: "sigma minus", colour: "s3", step: -1, dash: "2 4" },
+  "delta-M+2": { runs: [{ text: "ΔM +2" }], plain: "ΔM +2", speech: "delta M plus 2", colour: "s4", step: 2, dash: "12 3 2 3" },
+  "delta-M-2": { runs: [{ text: "ΔM \u22122" }], plain: "ΔM −2", speech: "delta M minus 2", colour: "s4", step: -2, dash: "4 2" },
 };
 
 const LEFT = 52;
@@ -95,10 +97,11 @@ function bar(pen, place, x, axis, end, energy) {
   const { colour } = SIGNS[place.polarisation];
   pen.line(x, axis, x, end, { stroke: colour, width: 3 });
   if (place.polarisation === "pi") return;
-  const towards = (place.polarisation === "sigma+" ? 1 : -1) * energy;
+  const rises = SIGNS[place.polarisation].step > 0;
+  const towards = (rises ? 1 : -1) * energy;
   const tip = [x + towards * TRIANGLE, end + TRIANGLE / 2];
   const base = [[x - towards * TRIANGLE * 0.6, end - TRIANGLE / 2], [x - towards * TRIANGLE * 0.6, end + 1.5 * TRIANGLE]];
-  pen.polygon([tip, ...base], place.polarisation === "sigma+" ? { fill: colour, stroke: colour } : { fill: "sheet", stroke: colour, width: 1.5 });
+  pen.polygon([tip, ...base], rises ? { fill: colour, stroke: colour } : { fill: "sheet", stroke: colour, width: 1.5 });
 }
 
 // Each polarisation is named once, at its strongest bar; σ⁺ and σ⁻ step aside from each other.
@@ -113,7 +116,7 @@ function labels(pen, shown, scale, ends) {
   const side = near ? Math.sign(scale(plus.x) - scale(minus.x)) || 1 : 0;
   for (const [polarisation, place] of Object.entries(at)) {
     const sign = SIGNS[polarisation];
-    const aside = { pi: 0, "sigma+": 13 * side, "sigma-": -13 * side }[polarisation];
+    const aside = Math.abs(sign.step) === 1 ? 13 * side * sign.step : 0;
     const y = polarisation === "pi" ? ends(place) - 7 : ends(place) + TRIANGLE * 1.5 + 16;
     pen.text(scale(place.x) + aside, y, sign.runs, { anchor: "middle", fill: sign.colour, weight: 600 });
   }

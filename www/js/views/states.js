@@ -7,7 +7,7 @@ import { richNode } from "../rich.js";
 import { bareShellTable, fillingNode, groundNode, shellsTable } from "./occupancy.js";
 import { fold } from "./fold.js";
 import {
-  chainsTable, chosenTerm, gridTable, jKTable, jjTable, levelsByJTable, levelsTable, parentageTable, readOffTable, termId, termRows, termsTable,
+  chainsTable, chosenTerm, gridTable, jKTable, jjFactorTable, jjTable, levelsByJTable, levelsTable, parentageTable, readOffTable, termId, termRows, termsTable,
 } from "./terms.js";
 import { kindOf, workingNode } from "./working.js";
 
@@ -36,9 +36,9 @@ function section(entry, { answer, context, several, first }) {
       entry.terms?.some((term) => term.chains?.length) ? part("chains", "How the terms come about", () => chainsTable(entry, context)) : null,
       entry.ground?.hund ? part("hund", "Ground level: Hund’s rules and observation", () => groundNode(entry, context)) : null,
       entry.shells?.length ? part("shells", "Shells and subshells", () => shellsTable(entry, context)) : null,
-      entry.jj?.length ? part("jj", "Levels in jj coupling", () => [jjTable(entry, context),
+      entry.jj?.length ? part("jj", "Levels in jj coupling", () => [jjTable(entry, context), jjFactorTable(entry, context, answer),
         entry.jj_levels_by_J ? levelsByJTable(entry.jj_levels_by_J, ["jj levels of ", ...configuration, " by J"], context, `jj levels by J ${entry.configuration.text}`) : null]) : null,
-      entry.jK?.length ? part("jk", "Names in jK (pair) coupling", () => jKTable(entry, context)) : null,
+      entry.jK?.length ? part("jk", "Names in jK (pair) coupling", () => jKTable(entry, context, answer)) : null,
       filling ? part("filling", "How the atom fills", () => fillingNode(filling, context)) : null));
 
   function facts() {

@@ -92,20 +92,26 @@ export function chainsTable(entry, context) {
 /** The table of levels with g_J. */
 export function levelsTable(entry, context, answer) {
   const rows = entry.levels ?? [];
-  const none = "a level with J = 0 has no magnetic moment";
   const table = dataTable({
     caption: [...captionOf(entry, "Levels of "), " in LS coupling"], rows, context, file: `levels ${entry.configuration.text}`,
     columns: [
       { name: "level", type: "text", value: (row) => row.label, rich: (row) => row.rich },
       { name: "J", type: "half", value: (row) => row.J },
       { name: "parity", type: "text", value: (row) => row.parity },
-      { name: "g_J", head: [{ sign: { runs: [{ text: "g" }, { down: "J" }], plain: "g_J", speech: "g J", latex: "$g_J$" } }], type: "number", kind: kindOf(answer, "levels.g"), value: (row) => row.g, reason: none },
-      { name: "mu_eff", head: [{ sign: { runs: [{ text: "μ" }, { down: "eff" }], plain: "mu_eff", speech: "mu effective", latex: "$\\mu_\\mathrm{eff}$" } }], unit: "mu_B", type: "number", kind: kindOf(answer, "levels.mu_eff"), value: (row) => row.mu_eff, reason: none },
+      gColumn(kindOf(answer, "levels.g"), (row) => row.g),
+      { name: "mu_eff", head: [{ sign: { runs: [{ text: "μ" }, { down: "eff" }], plain: "mu_eff", speech: "mu effective", latex: "$\\mu_\\mathrm{eff}$" } }], unit: "mu_B", type: "number", kind: kindOf(answer, "levels.mu_eff"), value: (row) => row.mu_eff, reason: NO_MOMENT },
     ],
     identify: (row) => `level:${row.label}`,
   });
   const all = String(entry.n_levels) === String(rows.length);
   return all ? table : [table, element("p", { class: "note", text: `The first ${rows.length} of ${entry.n_levels} levels are listed; the table of levels by J counts them all.` })];
+}
+
+const NO_MOMENT = "a level with J = 0 has no magnetic moment";
+
+function gColumn(kind, value) {
+  const sign = { runs: [{ text: "g" }, { down: "J" }], plain: "g_J", speech: "g J", latex: "$g_J$" };
+  return { name: "g_J", head: [{ sign }], type: "number", kind, value, reason: NO_MOMENT };
 }
 
 /** How many levels have each J. */
@@ -134,15 +140,34 @@ export function jjTable(entry, context) {
   });
 }
 
-/** Pair-coupling names of the levels of an outer electron on a parent level. */
-export function jKTable(entry, context) {
+/** g of every j subshell that occurs: the same for all levels of electrons that share one nℓj. */
+export function jjFactorTable(entry, context, answer) {
+  const rows = [];
+  for (const factor of entry.jj.flatMap((row) => row.factors ?? [])) {
+    if (!rows.some((other) => other.label === factor.label && other.j === factor.j)) rows.push(factor);
+  }
+  const rich = (row) => [{ jj: { subshells: [{ label: row.label, j: row.j, electrons: 1 }], J: null } }];
   return dataTable({
-    caption: [...captionOf(entry, "Levels of "), " in jK (pair) coupling"], rows: entry.jK, context, file: `jK ${entry.configuration.text}`,
+    caption: "g of each j subshell", rows, context, file: `g of j subshells ${entry.configuration.text}`,
+    columns: [
+      { name: "subshell", type: "text", value: (row) => richPlain(rich(row)), rich },
+      { name: "j", type: "half", value: (row) => row.j },
+      gColumn(kindOf(answer, "jj.factors"), (row) => row.g),
+    ],
+  });
+}
+
+/** Pair-coupling names of the levels of an outer electron on a parent level. */
+export function jKTable(entry, context, answer) {
+  const rows = entry.jK.flatMap((pair) => pair.J.map((J, place) => ({ ...pair, J, g: pair.g?.[place] ?? null })));
+  return dataTable({
+    caption: [...captionOf(entry, "Levels of "), " in jK (pair) coupling"], rows, context, file: `jK ${entry.configuration.text}`,
     columns: [
       { name: "name", type: "text", value: (row) => richPlain(row.name), rich: (row) => row.name },
       { name: "parent", type: "text", value: (row) => richPlain(row.parent), rich: (row) => row.parent },
       { name: "K", type: "half", value: (row) => row.K },
-      { name: "J", type: "text", value: (row) => row.J.join(", ") },
+      { name: "J", type: "half", value: (row) => row.J },
+      gColumn(kindOf(answer, "jK.g"), (row) => row.g),
     ],
   });
 }
