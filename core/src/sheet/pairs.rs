@@ -12,7 +12,7 @@ use super::document::{Document, LevelOf};
 use super::entry::Entry;
 
 /// The most pairs of levels that are judged in one answer.
-pub const MAX_PAIRS: u128 = 60_000;
+pub const MAX_PAIRS: u128 = 120_000;
 
 /// One kind of term of one entry, with its coupling chain.
 pub struct Kinds {
