@@ -6,27 +6,26 @@ use crate::terms::Term;
 
 use super::answer::Working;
 use super::document::Document;
-use super::entry::Entry;
+use super::entry::{Entry, Named};
 use super::formula::{Formula, fraction, name, number, operator, row, sup};
 use super::line_rows::{LineRow, MultipletRow, RefusedRow};
 use super::rich::{Kind, Rich};
 
 pub fn sentence(document: &Document, lines: &[LineRow], refused: &[RefusedRow]) -> Rich {
-    let mut say = Rich::new();
-    let real: Vec<&Entry> = document
+    let real: Vec<Rich> = document
         .entries
         .iter()
-        .filter(|e| e.configuration().is_some())
+        .filter_map(Entry::named)
+        .map(Named::short_rich)
         .collect();
-    say = match real.as_slice() {
-        [one] => say.say("Inside ").say(one.label.clone()).say(", "),
-        [one, two] => say
-            .say("Between and inside ")
-            .say(one.label.clone())
+    let say = match real.as_slice() {
+        [one] => Rich::words("Inside ").then(one).say(", "),
+        [one, two] => Rich::words("Between and inside ")
+            .then(one)
             .say(" and ")
-            .say(two.label.clone())
+            .then(two)
             .say(", "),
-        many => say.say(format!(
+        many => Rich::words(format!(
             "Between and inside the {} configurations, ",
             many.len()
         )),
