@@ -148,6 +148,7 @@ class Page {
       open: index === 0,
       fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label)),
     }));
+    this.questions.isUnfolded = (name) => this.rungOf(name).open;
     this.record = new RecordRung({
       numeral: this.rungs.length + 1, view: this.view, store: this.store, fields: this.fields,
       act: { saveSheet: () => this.filing.saveSheet(), saveRecord: () => this.filing.saveRecord(), open: () => byId("file").click() },
@@ -225,7 +226,8 @@ class Page {
     const { broken, reading } = this.questions;
     if (broken === null) this.notes.remove("broken");
     else this.notes.put("broken", { kind: "fault", lasting: true, more: panicNode(broken, () => this.questions.refresh(), () => this.filing.saveSheet()) });
-    if (reading === null) return;
+    if (broken !== null) for (const rung of this.rungs) rung.show();
+    if (reading === null || broken !== null) return;
     const faults = this.shownFaults();
     this.fields.read(reading);
     this.head.read(reading, faults);

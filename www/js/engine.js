@@ -4,7 +4,7 @@
 /** A worker whose memory grew beyond this is replaced, because it never shrinks. */
 const KEEP_BYTES = 300e6;
 /** A superseded run older than this is ended instead of awaited: a fresh worker takes 20–70 ms. */
-const AWAIT_MS = 120;
+const AWAIT_MS = 40;
 
 export class Engine {
   #startWorker;

@@ -1,5 +1,7 @@
 // What stands at each question: its reading, its last answer, and whether that answer is fresh.
 
+/** A folded question is asked once the sheet has rested this long, so that typing is not held up. */
+const FOLDED_REST_MS = 150;
 /** A run shorter than this is not shown as one. */
 export const SHOW_RUN_MS = 300;
 
@@ -25,6 +27,8 @@ export class Questions {
     this.broken = null;
     this.about = null;
     this.entries = new Map();
+    /** Whether a question is unfolded; the page says so. */
+    this.isUnfolded = () => true;
   }
 
   /** Asks the core which questions it answers. */
@@ -63,6 +67,7 @@ export class Questions {
     if (turn !== this.#turn || result.superseded || result.stopped) return;
     if (result.panic !== undefined) {
       this.broken = result.panic;
+      for (const entry of this.entries.values()) Object.assign(entry, { unread: false, fresh: false });
       this.#tell("reading");
       return;
     }
@@ -78,8 +83,13 @@ export class Questions {
       if (question.status === "lacks") entry.answer = null;
     }
     // The worker answers while the page shows how the sheet was read.
-    for (const entry of this.entries.values()) {
-      if (entry.status === "ready") this.ask(entry.name);
+    const ready = [...this.entries.values()].filter((entry) => entry.status === "ready");
+    for (const entry of ready.filter(({ name }) => this.isUnfolded(name))) this.ask(entry.name);
+    for (const entry of ready.filter(({ name }) => !this.isUnfolded(name))) {
+      entry.unread = true;
+      setTimeout(() => {
+        if (turn === this.#turn && entry.run === null && entry.unread) this.ask(entry.name);
+      }, FOLDED_REST_MS);
     }
     this.#tell("reading");
   }
@@ -90,7 +100,7 @@ export class Questions {
     const turn = this.#turn;
     const run = { since: performance.now(), estimate: null, shown: false, timer: 0 };
     this.#endRun(entry);
-    Object.assign(entry, { run, waits: null, panic: null, stopped: false });
+    Object.assign(entry, { run, waits: null, panic: null, stopped: false, unread: false });
     run.timer = setTimeout(() => {
       run.shown = true;
       this.#tell(name);
@@ -156,7 +166,7 @@ export function rungState(entry, shownFaults) {
     return { kind: "fault", words: `${shownFaults} ${shownFaults === 1 ? "fault" : "faults"}` };
   }
   if (entry.status === "lacks") return { kind: "lacks", words: `needs ${entry.needs}` };
-  if (entry.answer !== null && (entry.fresh || entry.run !== null)) return { kind: "answered", words: "answered" };
+  if (entry.answer !== null && (entry.fresh || isSettling(entry))) return { kind: "answered", words: "answered" };
   if (entry.answer !== null) return { kind: "stale", words: "from before your change" };
   return { kind: "ready", words: "open to ask" };
 }
