@@ -4,14 +4,14 @@ import { element } from "./dom.js";
 import { faultNode } from "./fields.js";
 
 /** The largest sheet or record, in bytes; the core has the same bound. */
-export const MAX_FILE = 5_000_000;
+export const MAX_FILE = 40_000_000;
 
 /** The text of a file, or {fault} before anything has been read. */
 export async function textOf(file) {
   if (file.size > MAX_FILE) {
     return { fault: {
       message: `"${file.name}" has ${megabytes(file.size)}.`,
-      bound: "A sheet or a record has at most 5 MB. Nothing of the file was read; your sheet is as it was.",
+      bound: "A sheet has at most 5 MB, a record at most 40 MB. Nothing of the file was read; your sheet is as it was.",
     } };
   }
   try {

@@ -19,7 +19,7 @@ export function openPanel(panel, examples, act) {
     element("div", { class: "actions" },
       element("button", { type: "button", class: "action", text: "Choose a file", on: { click: act.choose } }),
       element("button", { type: "button", class: "action", text: "Empty sheet", on: { click: () => act.replace({ rungline: 1 }, "Empty sheet") } })),
-    element("p", { class: "note", text: "A sheet or a record of at most 5 MB; it can also be dropped anywhere on the page. Undo brings back what was here." }),
+    element("p", { class: "note", text: "A sheet of at most 5 MB or a record of at most 40 MB; it can also be dropped anywhere on the page. Undo brings back what was here." }),
     element("h3", { text: "Examples" }),
     element("p", { class: "note", text: "All play in an invented scenario: a metal works called Tarn Gate Alloys. They are computed when opened." }),
     element("ul", { class: "examples" }, ...examples.map((example) => element("li", {}, link(example)))));
