@@ -108,7 +108,7 @@ class Page {
       choose: () => byId("file").click(),
       replace: (sheet, label) => this.replace(sheet, label),
     });
-    this.panels.settings.append(element("h2", { text: "Settings" }), settingsPanel(this.settings, () => this.keeper.clear()));
+    this.panels.settings.append(element("h2", { text: "Settings" }), settingsPanel(this.settings, () => this.keeper.clear(), this.questions.about.notices));
     this.makeRungs();
     this.makeFootBar();
     byId("version").textContent = `Rungline ${this.questions.about.version}, constants CODATA ${this.questions.about.codata}.${RUNGLINE_PROFILE === "quick" ? " This is a quick build: slower than the one that is shipped." : ""}`;

@@ -42,8 +42,8 @@ export class Settings {
   }
 }
 
-/** The panel of the settings. `clear` empties the storage. */
-export function settingsPanel(settings, clear) {
+/** The panel of the settings. `clear` empties the storage; `notices` are the licences of the data. */
+export function settingsPanel(settings, clear, notices) {
   const select = (key, label, options, read) => {
     const id = freshId("setting");
     const box = element("select", { id, on: { change: () => settings.set(key, read(box.value)) } },
@@ -69,5 +69,10 @@ export function settingsPanel(settings, clear) {
           : "The browser refuses access to its storage.";
       } },
     }),
-    cleared);
+    cleared,
+    element("h3", { text: "Licences" }),
+    element("p", { text: "Rungline is free under the MIT licence. It contains data from other packages:" }),
+    element("details", { class: "fold" },
+      element("summary", { text: "Sources and licences of the data" }),
+      element("pre", { class: "notices key", tabindex: "0", text: notices })));
 }

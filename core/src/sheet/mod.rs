@@ -181,11 +181,14 @@ pub fn about() -> String {
         version: &'static str,
         codata: u16,
         questions: Vec<&'static str>,
+        /// Licences of the data that are compiled in.
+        notices: &'static str,
     }
     to_json(&About {
         version: VERSION,
         codata: crate::constants::CODATA_YEAR,
         questions: Question::ALL.iter().map(|q| q.name()).collect(),
+        notices: crate::elements::NOTICE,
     })
 }
 
