@@ -1,0 +1,49 @@
+//! Runs natively while the tests are compiled, and writes what the native core answers.
+
+use std::fmt::Write as _;
+use std::path::Path;
+
+use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
+use rungline_core::sheet::{Question, answer_text};
+
+fn main() -> Result<(), Box<dyn std::error::Error>> {
+    let out = std::env::var("OUT_DIR")?;
+    let examples = Path::new(&std::env::var("CARGO_MANIFEST_DIR")?).join("../examples");
+    println!("cargo::rerun-if-changed={}", examples.display());
+
+    let mut files: Vec<_> = std::fs::read_dir(&examples)?
+        .filter_map(|entry| Some(entry.ok()?.path()))
+        .filter(|path| {
+            path.extension()
+                .is_some_and(|extension| extension == "json")
+        })
+        .collect();
+    files.sort();
+    let mut answers = String::from("pub const ANSWERS: &[(&str, &str, &str, &str)] = &[\n");
+    for file in files {
+        let sheet = std::fs::read_to_string(&file)?;
+        let name = file.file_name().unwrap_or_default().to_string_lossy();
+        for question in Question::ALL {
+            // A question that the example does not allow is left to the page tests.
+            let Ok(answer) = answer_text(&sheet, Some(question)) else {
+                continue;
+            };
+            let question = question.name();
+            writeln!(
+                answers,
+                "    ({name:?}, {sheet:?}, {question:?}, {answer:?}),"
+            )?;
+        }
+    }
+    answers.push_str("];\n");
+    std::fs::write(Path::new(&out).join("answers.rs"), answers)?;
+
+    let bits: Vec<u64> = symbols().iter().map(|value| value.to_bits()).collect();
+    std::fs::write(
+        Path::new(&out).join("symbols.rs"),
+        format!("pub const SYMBOL_BITS: &[u64] = &{bits:?};\n"),
+    )?;
+    Ok(())
+}
+
+include!("symbols.rs");
