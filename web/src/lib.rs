@@ -3,6 +3,9 @@
 //! Sheets come in as JavaScript values, answers go out as JSON text, because a number printed by
 //! JavaScript is not the same text.
 
+#[cfg(feature = "bench")]
+pub mod bench;
+
 use rungline_core::sheet::{self, Json};
 use wasm_bindgen::prelude::*;
 

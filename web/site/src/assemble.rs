@@ -63,7 +63,8 @@ pub fn assemble(paths: &Paths, profile: Profile, node: &Node, core: &Core) -> Ou
     };
 
     let file_script = bundler.script("app.js", Some(&constants("file", None)))?;
-    let packed = gzip(&wasm)?;
+    let quick = profile == Profile::Quick;
+    let packed = gzip(&wasm, quick)?;
     let one_file = one_file(&page, &style, &file_script, &packed)?;
 
     let wasm_name = hashed("core", "wasm", &wasm);
@@ -96,9 +97,9 @@ pub fn assemble(paths: &Paths, profile: Profile, node: &Node, core: &Core) -> Ou
     )?;
     site.insert("sw.js".to_string(), keeper.into_bytes());
 
-    let gzip_bytes = gzip(page.as_bytes())?.len()
-        + gzip(style.as_bytes())?.len()
-        + gzip(file_script.as_bytes())?.len()
+    let gzip_bytes = gzip(page.as_bytes(), quick)?.len()
+        + gzip(style.as_bytes(), quick)?.len()
+        + gzip(file_script.as_bytes(), quick)?.len()
         + packed.len();
     let built = Built {
         one_file: paths.site.join("rungline.html"),

@@ -174,7 +174,7 @@ impl Checks<'_> {
     }
 
     fn wasm_tests(&self, target: Target) -> Command {
-        let mut cargo = self.cargo(&["test", "--quiet", "--package", "rungline-wasm-tests"]);
+        let mut cargo = self.cargo(&["test", "--package", "rungline-wasm-tests"]);
         cargo
             .args([
                 "--profile",

@@ -1,6 +1,7 @@
 //! `cargo site`: sets up what is missing, builds both forms of the page, serves them, runs every test.
 
 mod assemble;
+mod bench;
 mod browsers;
 mod budget;
 mod checks;
@@ -28,6 +29,7 @@ const USAGE: &str = "\
 cargo site [--quick]                build both forms of the page and serve the site on 127.0.0.1
 cargo site build [--quick]          build them without serving
 cargo site test [--quick]           run every check
+cargo site bench                    time the core natively and in WebAssembly: tests/bench/numbers.md
 cargo site test [--quick] KIND [X]  run one kind (format, lints, native, wasm, page), of the last
                                     three only what has X in its name
 
@@ -71,6 +73,7 @@ fn run(arguments: &[String]) -> Outcome<()> {
             serve::serve(&paths.site)
         }
         ["build"] => build(&paths, profile),
+        ["bench"] => bench::run(&paths),
         ["test"] => checks::run(&paths, profile, None, ""),
         ["test", kind] if checks::KINDS.contains(kind) => {
             checks::run(&paths, profile, Some(*kind), "")
