@@ -6,6 +6,7 @@ use super::orbital::{Orbital, Subshell};
 use super::species::Species;
 use super::written::Written;
 use crate::elements::symbol;
+use crate::numerics::order::{sort, sort_by_key};
 use crate::problem::Problem;
 
 /// The largest n where a core is completed or several electrons are counted; one electron alone may
@@ -67,7 +68,7 @@ pub fn complete(written: &Written, species: &Species) -> Result<Reading, Vec<Pro
     let mut problems = overlaps(written);
     problems.extend(too_high(written, species));
     if !problems.is_empty() {
-        problems.sort_by_key(|problem| problem.start);
+        sort_by_key(&mut problems, |problem| problem.start);
         return Err(problems);
     }
     let core = written.core.and_then(|core| closed_core(core.z));
@@ -133,7 +134,7 @@ impl Parts {
     /// The text of these parts: `[Ar] 3d6 4s2`.
     fn text(&self, core: Option<&str>) -> String {
         let mut typed = self.typed.clone();
-        typed.sort_unstable();
+        sort(&mut typed);
         match core {
             Some(core) if typed.is_empty() => format!("[{core}]"),
             Some(core) => format!("[{core}] {}", join(&typed)),
@@ -318,7 +319,9 @@ fn fitting_species(parts: &Parts, species: &Species, have: u32) -> Option<Specie
         Some(other)
     };
     let mut charges: Vec<i32> = (-1..i32::from(z)).collect();
-    charges.sort_by_key(|charge| (charge.abs_diff(species.charge), *charge));
+    sort_by_key(&mut charges, |charge| {
+        (charge.abs_diff(species.charge), *charge)
+    });
     charges.into_iter().find_map(fits)
 }
 
@@ -335,7 +338,9 @@ fn ways(parts: &Parts, core: Option<&str>, wanted: u32) -> Vec<(String, String)>
     };
     // Put or take the difference in one subshell, the outermost first.
     let mut by_shell: Vec<usize> = (0..parts.typed.len()).collect();
-    by_shell.sort_by_key(|&i| parts.typed.get(i).map(|s| std::cmp::Reverse(s.orbital())));
+    sort_by_key(&mut by_shell, |&i| {
+        parts.typed.get(i).map(|s| std::cmp::Reverse(s.orbital()))
+    });
     let mut changed: Vec<(u32, usize, Parts)> = Vec::new();
     for (rank, &i) in by_shell.iter().enumerate() {
         let Some(&subshell) = parts.typed.get(i) else {
@@ -362,7 +367,7 @@ fn ways(parts: &Parts, core: Option<&str>, wanted: u32) -> Vec<(String, String)>
             }
         }
     }
-    changed.sort_by_key(|&(change, rank, _)| (change, rank));
+    sort_by_key(&mut changed, |&(change, rank, _)| (change, rank));
     // Or fill up what is missing: with full subshells, the lowest n first; or in filling order, the
     // last subshell not full.
     let left = wanted.checked_sub(parts.electrons());

@@ -1,5 +1,6 @@
 //! Filling: the ground configuration by rule and as observed.
 
+use crate::numerics::order::sort_by_key;
 use std::cmp::Reverse;
 
 use super::occupation::{Configuration, configuration_of};
@@ -167,7 +168,7 @@ fn fill(to: Configuration, mut electrons: u32) -> Option<Configuration> {
 /// Takes electrons away, highest n first, then highest ℓ.
 fn strip(from: &Configuration, mut electrons: u32) -> Option<Configuration> {
     let mut order: Vec<Subshell> = from.subshells().to_vec();
-    order.sort_unstable_by_key(|s| Reverse((s.orbital().n(), s.orbital().l())));
+    sort_by_key(&mut order, |s| Reverse((s.orbital().n(), s.orbital().l())));
     let mut left = Vec::new();
     for subshell in order {
         let taken = electrons.min(subshell.electrons());

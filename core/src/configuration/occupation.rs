@@ -1,5 +1,6 @@
 //! A complete configuration: which subshells hold how many electrons.
 
+use crate::numerics::order::sort;
 use std::fmt;
 use std::sync::LazyLock;
 
@@ -18,7 +19,7 @@ pub struct Configuration {
 impl Configuration {
     /// The configuration of these subshells in any order, or nothing where an orbital occurs twice.
     pub fn new(mut subshells: Vec<Subshell>) -> Option<Self> {
-        subshells.sort_unstable();
+        sort(&mut subshells);
         let repeated = subshells.windows(2).any(|pair| match pair {
             [a, b] => a.orbital() == b.orbital(),
             _ => false,

@@ -3,6 +3,7 @@
 use super::species::{Species, roman, roman_value};
 use super::species_faults::{self as faults, Piece, plain};
 use crate::elements::{by_name, by_symbol};
+use crate::numerics::order::sort_by_key;
 use crate::problem::Problem;
 
 pub(super) struct Reader<'a> {
@@ -61,7 +62,7 @@ impl<'a> Reader<'a> {
                 mass_number,
             })
         } else {
-            self.problems.sort_by_key(|problem| problem.start);
+            sort_by_key(&mut self.problems, |problem| problem.start);
             Err(self.problems)
         }
     }

@@ -6,6 +6,7 @@ use super::orbital::{MAX_N, Orbital, Subshell, l_of_letter};
 use super::text_faults as faults;
 use super::written::{Written, WrittenCore, WrittenSubshell};
 use crate::elements::by_symbol;
+use crate::numerics::order::sort_by_key;
 use crate::problem::Problem;
 use crate::quantity::signs::{is_minus, superscript_digit};
 
@@ -63,8 +64,7 @@ impl<'a> Reader<'a> {
             self.problems.push(faults::empty(self.text));
         }
         if !self.problems.is_empty() {
-            self.problems
-                .sort_by_key(|problem| (problem.start, problem.end));
+            sort_by_key(&mut self.problems, |problem| (problem.start, problem.end));
             return Err(self.problems);
         }
         Ok(Written {

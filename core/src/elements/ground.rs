@@ -3,6 +3,7 @@
 //! Source: mendeleev 1.3.0 (MIT), tables of ionisation energies and of elements; see
 //! `core/data/NOTICE`. `core/data/generate.py` describes the format of the data file.
 
+use crate::numerics::order::sort;
 use std::fmt;
 use std::sync::LazyLock;
 
@@ -176,7 +177,7 @@ fn subshells(written: &str) -> Option<Vec<(u8, u8, u32)>> {
             all.push((n, l, electrons));
         }
     }
-    all.sort_unstable();
+    sort(&mut all);
     Some(all)
 }
 

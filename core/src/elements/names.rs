@@ -3,6 +3,8 @@
 //! Names and symbols as approved by IUPAC (from memory); the tests compare the symbols with
 //! mendeleev 1.3.0.
 
+use crate::numerics::order::sort;
+
 /// The largest atomic number that has a name.
 pub const HEAVIEST: u8 = 118;
 
@@ -104,7 +106,7 @@ pub fn nearest(text: &str, most: usize) -> Vec<u8> {
             found.push((score, z));
         }
     }
-    found.sort_unstable();
+    sort(&mut found);
     found.into_iter().take(most).map(|(_, z)| z).collect()
 }
 

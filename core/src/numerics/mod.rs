@@ -2,4 +2,5 @@
 
 pub mod binomial;
 pub mod natural;
+pub mod order;
 pub mod symmetric;

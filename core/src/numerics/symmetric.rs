@@ -1,5 +1,6 @@
 //! Eigenvalues and eigenvectors of real symmetric matrices, rising and with fixed signs.
 
+use super::order::sort_by;
 use nalgebra::{DMatrix, SymmetricEigen};
 
 /// Eigenvalues in rising order, each with its normalised eigenvector.
@@ -28,7 +29,7 @@ pub fn eigensystem(matrix: DMatrix<f64>) -> Option<Eigensystem> {
     let sweeps = matrix.nrows().saturating_mul(100).max(1);
     let system = SymmetricEigen::try_new(matrix, f64::EPSILON, sweeps)?;
     let mut order: Vec<(f64, usize)> = system.eigenvalues.iter().copied().zip(0..).collect();
-    order.sort_by(|left, right| left.0.total_cmp(&right.0));
+    sort_by(&mut order, |left, right| left.0.total_cmp(&right.0));
     let columns: Vec<_> = order
         .iter()
         .map(|&(_, place)| system.eigenvectors.column(place).into_owned())

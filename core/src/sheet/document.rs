@@ -1,6 +1,7 @@
 //! A sheet as it was read: typed values, every fault, and what each question still lacks.
 
 use crate::configuration::{self, Species, filling};
+use crate::numerics::order::sort_by_key;
 use crate::problem::Problem;
 use crate::quantity::{self, Dimension};
 use crate::terms::{self, Level, label, ls};
@@ -415,7 +416,7 @@ impl Document {
 pub const MAX_TESLA: f64 = 1000.0;
 
 /// Sorts faults by where their path stands in the sheet, then by place in the text.
-fn sort_by_place(faults: &mut [Problem], json: &Json) {
+fn sort_by_place(faults: &mut Vec<Problem>, json: &Json) {
     fn walk(json: &Json, path: &str, order: &mut Vec<String>) {
         order.push(path.to_owned());
         match json {
@@ -442,7 +443,7 @@ fn sort_by_place(faults: &mut [Problem], json: &Json) {
         .enumerate()
         .map(|(place, path)| (path, place))
         .collect();
-    faults.sort_by_key(|fault| {
+    sort_by_key(faults, |fault| {
         (
             places.get(&fault.path).copied().unwrap_or(usize::MAX),
             fault.start,

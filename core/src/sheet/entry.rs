@@ -2,6 +2,7 @@
 
 use crate::configuration::{self, Configuration, Reading, Species, Subshell, Written, join};
 use crate::elements;
+use crate::numerics::order::sort;
 use crate::problem::Problem;
 
 use super::rich::{Piece, Rich, SubshellName};
@@ -39,7 +40,7 @@ impl Named {
             return Named::untyped(reading.configuration);
         }
         let mut beyond: Vec<Subshell> = written.subshells.iter().map(|s| s.subshell).collect();
-        beyond.sort_unstable();
+        sort(&mut beyond);
         if beyond.is_empty() {
             return Named::untyped(reading.configuration);
         }

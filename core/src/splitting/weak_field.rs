@@ -10,6 +10,7 @@
 
 use super::wigner_eckart::{dipole_share, quadrupole_share};
 use crate::constants::BOHR_MAGNETON_WAVENUMBER;
+use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::radiation::Multipole;
@@ -283,7 +284,7 @@ impl Pattern {
     /// equal within 10⁻⁹ μ_B B, far below what g is known to.
     pub fn positions(&self) -> Vec<Position> {
         let mut sorted = self.components.clone();
-        sorted.sort_by(|a, b| {
+        sort_by(&mut sorted, |a, b| {
             let order = a.polarisation.cmp(&b.polarisation);
             order.then(a.lorentz.total_cmp(&b.lorentz))
         });

@@ -19,11 +19,12 @@ mod weights;
 pub use term::{Level, Term};
 
 use crate::configuration::Subshell;
+use crate::numerics::order::sort;
 
 /// The open subshells, in the order n, ℓ in which they are coupled.
 pub fn open_shells(subshells: &[Subshell]) -> Vec<Subshell> {
     let mut open: Vec<Subshell> = subshells.iter().copied().filter(|s| s.is_open()).collect();
-    open.sort();
+    sort(&mut open);
     open
 }
 

@@ -6,6 +6,7 @@
 //!
 //! Source: Racah, Phys. Rev. 76, 1352 (1949); Weyl's character formula.
 
+use crate::numerics::order::sort_by_key;
 use std::sync::LazyLock;
 
 /// No weight of up to seven f electrons passes this in either direction.
@@ -83,7 +84,7 @@ pub(super) fn branching(seniority: u32, two_s: i32) -> Vec<([i32; 2], Vec<u64>)>
         .flat_map(|u1| (0..=u1).map(move |u2| [u1, u2]))
         .filter(|[u1, u2]| u1 + u2 <= REACH)
         .collect();
-    labels.sort_by_key(|&u| twelve_casimirs(u));
+    sort_by_key(&mut labels, |&u| twelve_casimirs(u));
     let mut found = Vec::new();
     for u in labels {
         let [u1, u2] = u;

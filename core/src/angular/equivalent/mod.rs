@@ -11,6 +11,7 @@
 mod counting;
 mod exceptional;
 
+use crate::numerics::order::sort_by_key;
 use crate::problem::Problem;
 use counting::{contents, states};
 
@@ -111,7 +112,7 @@ pub fn classify(l: u8, electrons: u32) -> Result<Vec<EquivalentTerm>, Problem> {
         }
     }
     // Stable: seniority and U were met in rising order.
-    terms.sort_by_key(|term| (-term.two_s, term.l_total));
+    sort_by_key(&mut terms, |term| (-term.two_s, term.l_total));
     for same in
         terms.chunk_by_mut(|one, other| (one.two_s, one.l_total) == (other.two_s, other.l_total))
     {
