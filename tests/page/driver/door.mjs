@@ -9,7 +9,7 @@ import { fileURLToPath, pathToFileURL } from "node:url";
 import { BROWSERS, browserOf } from "./browsers.mjs";
 import { serve } from "./server.mjs";
 
-const ROOT = join(dirname(fileURLToPath(import.meta.url)), "../../..");
+export const ROOT = join(dirname(fileURLToPath(import.meta.url)), "../../..");
 /** Where the build put the site, with the one file in it. */
 export const SITE = join(ROOT, "target", "site");
 const SCREENSHOTS = join(ROOT, "target", "screenshots");
