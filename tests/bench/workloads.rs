@@ -24,7 +24,7 @@ pub fn work(index: usize) -> f64 {
                 let j = |salt: i32| (step * salt) % 31;
                 let (a, b) = (j(7), j(11));
                 let c = (a - b).abs() + 2 * (step % (a.min(b) + 1));
-                sum += wigner_6j(black_box(a), b, c, b, a, c);
+                sum += wigner_6j(black_box(a), b, c, a, b, c);
             }
             sum
         }

@@ -182,7 +182,7 @@ impl Checks<'_> {
                 "--target-dir",
             ])
             .arg(&self.paths.wasm)
-            .env("CARGO_ENCODED_RUSTFLAGS", wasm::flags())
+            .env("CARGO_ENCODED_RUSTFLAGS", wasm::flags(self.paths))
             .env("CARGO_TARGET_WASM32_UNKNOWN_UNKNOWN_RUNNER", self.runner())
             .env("WASM_BINDGEN_TEST_ONLY_NODE", "1");
         target.apply(&mut cargo);

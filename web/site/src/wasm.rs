@@ -78,7 +78,7 @@ pub fn compile(
         .arg("--target-dir")
         .arg(&paths.wasm)
         .current_dir(&paths.root)
-        .env("CARGO_ENCODED_RUSTFLAGS", flags());
+        .env("CARGO_ENCODED_RUSTFLAGS", flags(paths));
     if !features.is_empty() {
         cargo.arg("--features").arg(features.join(","));
     }
@@ -91,14 +91,34 @@ pub fn compile(
         .join("rungline_web.wasm"))
 }
 
-/// What rustc is told for the browser: 128-bit vectors, which change no bit of a result, and the
-/// memory's maximum.
-pub fn flags() -> String {
-    [
+/// What rustc is told for the browser: 128-bit vectors, which change no bit of a result, the
+/// memory's maximum, and to leave this machine's folders out of what is shipped.
+pub fn flags(paths: &Paths) -> String {
+    let mut flags = vec![
         "-Ctarget-feature=+simd128".to_string(),
         format!("-Clink-arg=--max-memory={MAX_MEMORY}"),
-    ]
-    .join("\u{1f}")
+        format!("--remap-path-prefix={}=.", paths.root.display()),
+    ];
+    for folder in package_folders() {
+        flags.push(format!("--remap-path-prefix={}=packages", folder.display()));
+    }
+    flags.join("\u{1f}")
+}
+
+/// Where cargo unpacks the packages, one folder for each registry.
+fn package_folders() -> Vec<PathBuf> {
+    let home = std::env::var_os("CARGO_HOME")
+        .map(PathBuf::from)
+        .or_else(|| {
+            let user = std::env::var_os("HOME").or_else(|| std::env::var_os("USERPROFILE"))?;
+            Some(PathBuf::from(user).join(".cargo"))
+        });
+    let mut folders: Vec<PathBuf> = home
+        .and_then(|home| std::fs::read_dir(home.join("registry").join("src")).ok())
+        .map(|entries| entries.flatten().map(|entry| entry.path()).collect())
+        .unwrap_or_default();
+    folders.sort();
+    folders
 }
 
 /// Makes the bindings as an ES module.
@@ -119,7 +139,12 @@ pub fn bind(compiled: &Path, folder: &Path) -> Outcome<()> {
 pub fn optimise(paths: &Paths, node: &Node, from: &Path, to: &Path) -> Outcome<()> {
     capture(
         node.tool(paths, "binaryen/bin/wasm-opt")
-            .args(["-O3", "--strip-debug", "--strip-producers"])
+            .args([
+                "-Oz",
+                "--merge-similar-functions",
+                "--strip-debug",
+                "--strip-producers",
+            ])
             .arg(from)
             .arg("-o")
             .arg(to),
@@ -151,7 +176,7 @@ fn stamp(paths: &Paths, profile: Profile, target: Target, folder: &Path) -> Outc
         &files,
         &[
             profile.name(),
-            &flags(),
+            &flags(paths),
             &compiler,
             &format!("{target:?}"),
             // The build itself decides too: a changed step makes the core anew.
