@@ -22,7 +22,7 @@ export const DOORS = ["file", "site"].filter((door) => (process.env.RUNGLINE_ONL
 const QUICK = process.env.RUNGLINE_QUICK === "1";
 
 /** How long anything on the page may take before a test gives up. */
-const PATIENCE_MS = 10_000;
+const PATIENCE_MS = 20_000;
 
 let sharedServer = null;
 after(async () => (await sharedServer)?.close());
