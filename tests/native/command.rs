@@ -61,6 +61,14 @@ fn the_command_answers_streams_faults_and_records() {
     assert_eq!(code, 2);
     assert!(err.contains("colour"));
 
+    let (code, out, _) = command(&["answer", "-"], &format!("nonsense\n{good}\n"));
+    assert_eq!(code, 2);
+    let kinds: Vec<bool> = out
+        .lines()
+        .map(|line| line.starts_with("{\"fault\":"))
+        .collect();
+    assert_eq!(kinds, [true, false], "a stream may begin badly");
+
     let folder = std::env::temp_dir().join(format!("rungline-{}", std::process::id()));
     std::fs::create_dir_all(&folder).unwrap();
     let record = sheet::record_message(&serde_json::from_str(good).unwrap());
@@ -79,5 +87,22 @@ fn the_command_answers_streams_faults_and_records() {
     let (code, out, _) = command(&["recheck", moved.to_str().unwrap()], "");
     assert_eq!(code, 1);
     assert!(out.contains("/states/n_levels"));
+    let hollow = folder.join("hollow.json");
+    std::fs::write(
+        &hollow,
+        format!("{{\"rungline\":1,\"codata\":2022,\"sheet\":{good},\"answers\":{{}}}}"),
+    )
+    .unwrap();
+    assert_eq!(
+        command(&["recheck", hollow.to_str().unwrap()], "").0,
+        1,
+        "a missing answer has moved"
+    );
+    std::fs::write(
+        &hollow,
+        format!("{{\"rungline\":2,\"sheet\":{good},\"answers\":5,\"zz\":1}}"),
+    )
+    .unwrap();
+    assert_eq!(command(&["recheck", hollow.to_str().unwrap()], "").0, 2);
     std::fs::remove_dir_all(folder).unwrap();
 }

@@ -99,7 +99,7 @@ fn singlets_give_the_normal_triplet() {
         let upper = level(0, upper_l, 2 * i32::try_from(upper_l).unwrap());
         let lower = level(0, lower_l, 2 * i32::try_from(lower_l).unwrap());
         let triplet = pattern(upper, lower, Multipole::E1).unwrap();
-        assert!(triplet.is_triplet());
+        assert!(triplet.is_normal_triplet());
         let places = triplet.positions();
         let at: Vec<f64> = places.iter().map(|p| p.lorentz).collect();
         assert_eq!(at, [-1.0, 0.0, 1.0]);

@@ -138,17 +138,20 @@ function describePair({ parent, multiplicity, K, odd = false, J = null }, settin
   };
 }
 
-function describeSpecies({ symbol, stage: written = null, mass_number = null }) {
+function describeSpecies({ symbol, charge = 0, stage: written = null, mass_number = null }) {
   const stage = written || null;
+  // A negative ion has no spectrum number; its charge stands behind the symbol.
+  const minus = charge < 0 ? `${charge === -1 ? "" : -charge}\u2212` : "";
   if (symbol === "*") return { runs: [{ text: "any atom" }], plain: "*", speech: "any atom", latex: "any atom", kind: "species" };
   const runs = mass_number === null ? [] : [{ up: String(mass_number) }];
   runs.push({ text: stage === null ? symbol : `${symbol}\u00a0${stage}` });
+  if (minus) runs.push({ up: minus });
   const mass = mass_number ?? "";
   return {
     runs, kind: "species",
-    plain: `${mass}${symbol}${stage === null ? "" : ` ${stage}`}`,
-    speech: `${mass === "" ? "" : `${mass} `}${symbol}${stage === null ? "" : ` ${stageNumber(stage)}`}`,
-    latex: `${mass === "" ? "" : `$^{${mass}}$`}${symbol}${stage === null ? "" : `~\\textsc{${stage.toLowerCase()}}`}`,
+    plain: `${mass}${symbol}${stage === null ? minus.replace("\u2212", "-") : ` ${stage}`}`,
+    speech: `${mass === "" ? "" : `${mass} `}${symbol}${minus ? ` ${charge === -1 ? "" : `${-charge} `}minus` : ""}${stage === null ? "" : ` ${stageNumber(stage)}`}`,
+    latex: `${mass === "" ? "" : `$^{${mass}}$`}${symbol}${minus ? `$^{${minus.replace("\u2212", "-")}}$` : ""}${stage === null ? "" : `~\\textsc{${stage.toLowerCase()}}`}`,
   };
 }
 

@@ -171,63 +171,125 @@ fn process(text: &str, command: Command) -> Outcome {
     }
 }
 
+/// One line of the input, or the fault that makes it none.
+type Line = Result<String, Problem>;
+
+/// Reads the next line, at most one byte more of it than the library takes; longer ones are passed
+/// over to their end, so that a stream goes on after them.
+fn next_line(input: &mut impl BufRead) -> io::Result<Option<Line>> {
+    loop {
+        let mut bytes = Vec::new();
+        let bound = sheet::MAX_BYTES as u64 + 1;
+        if input.by_ref().take(bound).read_until(b'\n', &mut bytes)? == 0 {
+            return Ok(None);
+        }
+        let whole = bytes.last() == Some(&b'\n') || (bytes.len() as u64) < bound;
+        if !whole {
+            skip_line(input)?;
+        }
+        match String::from_utf8(bytes) {
+            Ok(line) if line.trim().is_empty() => {}
+            Ok(line) => return Ok(Some(Ok(line))),
+            Err(_) => {
+                let problem = Problem::new("not-utf8", "This is not text in UTF-8.", 0, 0)
+                    .bound("A sheet is a text file in UTF-8.");
+                return Ok(Some(Err(problem)));
+            }
+        }
+    }
+}
+
+fn skip_line(input: &mut impl BufRead) -> io::Result<()> {
+    loop {
+        let (used, ended) = {
+            let buffer = input.fill_buf()?;
+            match buffer.iter().position(|byte| *byte == b'\n') {
+                Some(place) => (place + 1, true),
+                None => (buffer.len(), buffer.is_empty()),
+            }
+        };
+        input.consume(used);
+        if ended {
+            return Ok(());
+        }
+    }
+}
+
+fn process_line(line: &Line, command: Command) -> Outcome {
+    match line {
+        Ok(text) => process(text, command),
+        Err(problem) => Outcome::Faults(vec![problem.clone()]),
+    }
+}
+
 /// One document, or one on each line. A document that spans lines never parses by its first line alone.
 fn standard_input(job: &Job, report: &mut Report) -> io::Result<()> {
-    let input = io::stdin();
-    let mut lines = input.lock().lines();
-    let Some(first) = next_line(&mut lines)? else {
+    let mut input = io::stdin().lock();
+    let Some(first) = next_line(&mut input)? else {
         return report.write(process("", job.command), "standard input");
     };
-    if !sheet::is_json(&first) {
-        let mut whole = vec![first];
-        for line in lines {
-            whole.push(line?);
-        }
-        let stream = whole
-            .iter()
-            .skip(1)
-            .any(|line| sheet::is_json(line) && line.trim_start().starts_with('{'));
-        if !stream || sheet::is_json(&whole.join("\n")) {
-            return report.write(process(&whole.join("\n"), job.command), "standard input");
-        }
-        report.many = true;
-        for (index, line) in whole
-            .iter()
-            .enumerate()
-            .filter(|(_, line)| !line.trim().is_empty())
-        {
-            report.write(process(line, job.command), &format!("line {}", index + 1))?;
-        }
-        return Ok(());
+    if !first.as_ref().is_ok_and(|line| sheet::is_json(line)) {
+        return rest_at_once(first, &mut input, job, report);
     }
-    let outcome = process(&first, job.command);
+    let outcome = process_line(&first, job.command);
     // Whether a fault is written depends on there being more than one sheet; an answer does not wait.
     let mut following = None;
     if matches!(outcome, Outcome::Faults(_)) {
-        following = next_line(&mut lines)?;
+        following = next_line(&mut input)?;
         report.many |= following.is_some();
     }
-    report.write(outcome, "line 1")?;
+    report.write(outcome, "sheet 1")?;
     report.many = true;
     let mut number = 1;
     while let Some(line) = match following.take() {
         Some(line) => Some(line),
-        None => next_line(&mut lines)?,
+        None => next_line(&mut input)?,
     } {
         number += 1;
-        report.write(process(&line, job.command), &format!("sheet {number}"))?;
+        report.write(process_line(&line, job.command), &format!("sheet {number}"))?;
     }
     Ok(())
 }
 
-fn next_line(lines: &mut impl Iterator<Item = io::Result<String>>) -> io::Result<Option<String>> {
-    for line in lines {
-        let line = line?;
-        if !line.trim().is_empty() {
-            return Ok(Some(line));
+/// The first line is no sheet by itself: one sheet over several lines, or a stream that begins badly.
+fn rest_at_once(
+    first: Line,
+    input: &mut impl BufRead,
+    job: &Job,
+    report: &mut Report,
+) -> io::Result<()> {
+    let mut lines = vec![first];
+    let mut bytes = 0;
+    while bytes <= sheet::MAX_BYTES {
+        let Some(line) = next_line(input)? else { break };
+        bytes += line.as_ref().map_or(0, String::len);
+        lines.push(line);
+    }
+    let whole: Option<String> = lines.iter().map(|line| line.as_deref().ok()).collect();
+    let is_sheet = |line: &Line| {
+        line.as_ref()
+            .is_ok_and(|text| sheet::is_json(text) && text.trim_start().starts_with('{'))
+    };
+    match whole {
+        Some(whole) if sheet::is_json(&whole) || !lines.iter().any(is_sheet) => {
+            report.write(process(&whole, job.command), "standard input")
+        }
+        _ => {
+            report.many = lines.len() > 1;
+            for (index, line) in lines.iter().enumerate() {
+                report.write(
+                    process_line(line, job.command),
+                    &format!("sheet {}", index + 1),
+                )?;
+            }
+            let mut number = lines.len();
+            while let Some(line) = next_line(input)? {
+                number += 1;
+                report.write(process_line(&line, job.command), &format!("sheet {number}"))?;
+            }
+            Ok(())
         }
     }
-    Ok(None)
 }
 
 struct Report {

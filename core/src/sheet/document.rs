@@ -77,17 +77,12 @@ impl Document {
         document.read_field(json);
         document.read_line(json);
         document.read_measured(json);
+        super::parameters::check(json, &mut document.faults);
         if let Json::Object(entries) = json {
-            let is_known = |key: &str| {
-                !document
-                    .faults
-                    .iter()
-                    .any(|f| f.code == "unknown-key" && f.path == schema::pointer("", key))
-            };
             document.unused_keys = entries
                 .iter()
                 .map(|(key, _)| key.clone())
-                .filter(|key| !USED.contains(&key.as_str()) && is_known(key))
+                .filter(|key| schema::is_known(key) && !USED.contains(&key.as_str()))
                 .collect();
         }
         sort_by_place(&mut document.faults, json);
@@ -323,6 +318,20 @@ impl Document {
                 .as_text()
                 .and_then(|t| quantity::quantity(t, Dimension::Wavenumber).ok());
             match (self.level(name), energy) {
+                (Ok(Some(level)), Some(_))
+                    if self.measured.iter().any(|(other, _)| *other == level) =>
+                {
+                    self.faults.push(
+                        Problem::new(
+                            "level-repeated",
+                            format!("{} is pinned twice.", self.level_label(&level)),
+                            0,
+                            name.encode_utf16().count(),
+                        )
+                        .bound("Each level has one measured energy.")
+                        .at(path),
+                    );
+                }
                 (Ok(Some(level)), Some(energy)) => self.measured.push((level, energy.value)),
                 (Ok(_), _) => {}
                 // The fault stands in the key, whose characters are not those of the value.
@@ -354,6 +363,45 @@ impl Document {
             }),
             None => Rich::new(),
         }
+    }
+
+    /// The measured energy of a level, in cm⁻¹.
+    pub fn pinned(&self, of: &LevelOf) -> Option<f64> {
+        self.measured
+            .iter()
+            .find(|(level, _)| level == of)
+            .map(|(_, energy)| *energy)
+    }
+
+    /// The vacuum wavelength of the line in nm: the typed one, or that between measured energies.
+    pub fn line_wavelength(&self) -> Option<f64> {
+        let between_pins = || {
+            let (upper, lower) = self.line.as_ref()?;
+            let wavenumber = (self.pinned(upper)? - self.pinned(lower)?).abs();
+            (wavenumber > 0.0).then(|| 1e7 / wavenumber)
+        };
+        self.wavelength_nm.or_else(between_pins)
+    }
+
+    /// Whether the species is a negative ion, which may not be bound at all.
+    pub fn is_anion(&self) -> bool {
+        self.species.is_some_and(|species| species.charge < 0)
+    }
+
+    /// Cautions on the source of the light: mercury, ultraviolet below 400 nm.
+    pub fn source_cautions(&self, shortest_nm: Option<f64>) -> Vec<&'static str> {
+        let mut cautions = Vec::new();
+        if self.species.is_some_and(|s| s.element == Some(80)) {
+            cautions.push(
+                "Mercury is poisonous; a broken lamp releases its vapour. Local codes and licensed practice come first.",
+            );
+        }
+        if shortest_nm.is_some_and(|nm| nm < 400.0) {
+            cautions.push(
+                "Ultraviolet light harms eyes and skin, and below about 240 nm makes ozone in air. Local codes and licensed practice come first.",
+            );
+        }
+        cautions
     }
 
     /// A sentence on keys that this version keeps and checks but does not use.

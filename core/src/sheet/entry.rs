@@ -1,6 +1,8 @@
 //! A configuration of the sheet, and how it is named.
 
-use crate::configuration::{self, Configuration, Reading, Species, Subshell, Written, join};
+use crate::configuration::{
+    self, CompletedCore, Configuration, Reading, Species, Subshell, Written, join,
+};
 use crate::elements;
 use crate::numerics::order::sort;
 use crate::problem::Problem;
@@ -14,10 +16,39 @@ pub struct Named {
     pub configuration: Configuration,
     /// The noble gas or typed core that stands in brackets.
     pub core: Option<String>,
-    /// The subshells beyond it, or all that were typed.
+    /// The subshells outside the brackets.
+    pub outside: Vec<Subshell>,
+    /// The subshells that name its levels: those that were typed, or all outside the brackets.
     pub beyond: Vec<Subshell>,
-    /// The core that was added to the typed text.
-    pub completed: Option<String>,
+    /// What was added to the typed text.
+    pub completed: Option<Completed>,
+}
+
+/// The inner electrons that were added to a typed configuration.
+#[derive(Clone, Debug)]
+pub struct Completed {
+    /// As answers carry it: `[Ar]`, `[Kr] 4d10`.
+    pub text: String,
+    /// The same, typeset.
+    pub rich: Rich,
+}
+
+impl Completed {
+    fn new(core: &CompletedCore) -> Completed {
+        let inner = &core.configuration;
+        let (symbol, rest) = match core.noble_gas {
+            Some(symbol) => (Some(symbol), Vec::new()),
+            None => (
+                inner.noble_core().and_then(elements::symbol),
+                inner.valence(),
+            ),
+        };
+        let rich = piece(symbol.map(str::to_owned), &rest);
+        Completed {
+            text: rich.plain(),
+            rich,
+        }
+    }
 }
 
 impl Named {
@@ -28,6 +59,7 @@ impl Named {
                 .noble_core()
                 .and_then(elements::symbol)
                 .map(str::to_owned),
+            outside: configuration.valence(),
             beyond: configuration.valence(),
             configuration,
             completed: None,
@@ -44,19 +76,22 @@ impl Named {
         if beyond.is_empty() {
             return Named::untyped(reading.configuration);
         }
-        let noble = reading
-            .completed_core
-            .as_ref()
-            .and_then(|core| core.noble_gas);
+        let completed = reading.completed_core.as_ref().map(Completed::new);
+        let configuration = reading.configuration;
+        // A typed core stands as it was typed; otherwise the largest noble gas that fits.
+        let (core, outside) = match written.core {
+            Some(core) => (Some(core.symbol), beyond.clone()),
+            None => (
+                configuration.noble_core().and_then(elements::symbol),
+                configuration.valence(),
+            ),
+        };
         Named {
-            core: written
-                .core
-                .map(|core| core.symbol)
-                .or(noble)
-                .map(str::to_owned),
+            core: core.map(str::to_owned),
+            outside,
             beyond,
-            completed: reading.completed_core.map(|core| core.to_string()),
-            configuration: reading.configuration,
+            completed,
+            configuration,
         }
     }
 
@@ -67,7 +102,7 @@ impl Named {
 
     /// With the core in brackets.
     pub fn rich(&self) -> Rich {
-        piece(self.core.clone(), &self.beyond)
+        piece(self.core.clone(), &self.outside)
     }
 
     /// Only what names its levels.

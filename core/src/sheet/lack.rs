@@ -95,6 +95,12 @@ pub fn lack(document: &Document, question: Question) -> Option<Lack> {
             if document.line.is_none() {
                 return Some(match pairs::first_allowed(document) {
                     Some((upper, lower)) => line_lack(document, &upper, &lower),
+                    None if document.entries.len() > 1 => Lack {
+                        code: "needs-a-line",
+                        needs: "a line: an upper and a lower level of these configurations"
+                            .to_owned(),
+                        way: None,
+                    },
                     None => second_configuration(
                         document,
                         first,

@@ -45,11 +45,11 @@ pub fn answer(document: &Document) -> Result<Lines, Problem> {
             continue;
         };
         let between = between.map_err(|problem| problem.at("/configurations"))?;
-        let lowers = kinds(document, lower_entry)?;
+        let lowers = kinds(document, lower_entry, usize::MAX)?;
         if lower_entry == upper_entry {
             judged.inside(&between, &lowers);
         } else {
-            let uppers = kinds(document, upper_entry)?;
+            let uppers = kinds(document, upper_entry, usize::MAX)?;
             for lower in &lowers {
                 for upper in &uppers {
                     judged.terms(&between, upper, lower);
@@ -84,14 +84,24 @@ pub fn answer(document: &Document) -> Result<Lines, Problem> {
     let mut around = Around::saying(sentence(document, &lines, &refused));
     around.working = working(&lines, &multiplets);
     around.limits = limits(document);
+    let shortest = lines
+        .iter()
+        .filter_map(|line| line.vacuum_nm)
+        .reduce(f64::min);
+    around.cautions = document.source_cautions(shortest);
     around.kinds = [
         ("lines.relative", Kind::Computed),
         ("lines.multipole", Kind::Exact),
         ("lines.wavenumber", Kind::Entered),
         ("lines.vacuum_nm", Kind::Entered),
         ("refused.rule", Kind::Exact),
+        ("multiplets.lines", Kind::Exact),
         ("multiplets.sum", Kind::Computed),
-        ("multiplets.expected", Kind::Exact),
+        ("multiplets.upper_sums.sum", Kind::Computed),
+        ("multiplets.upper_sums.expected", Kind::Exact),
+        ("multiplets.lower_sums.sum", Kind::Computed),
+        ("multiplets.lower_sums.expected", Kind::Exact),
+        ("pairs", Kind::Exact),
     ]
     .into_iter()
     .collect();
@@ -226,16 +236,8 @@ impl Judged<'_> {
         });
     }
 
-    fn pinned(&self, of: &LevelOf) -> Option<f64> {
-        self.document
-            .measured
-            .iter()
-            .find(|(level, _)| level == of)
-            .map(|(_, energy)| *energy)
-    }
-
     fn line(&mut self, multipole: Multipole, relative: f64, upper: &LevelOf, lower: &LevelOf) {
-        let (up, low) = (self.pinned(upper), self.pinned(lower));
+        let (up, low) = (self.document.pinned(upper), self.document.pinned(lower));
         let swap = matches!((up, low), (Some(up), Some(low)) if up < low);
         let wavenumber = up
             .zip(low)

@@ -31,27 +31,34 @@ pub fn sentence(document: &Document, lines: &[LineRow], refused: &[RefusedRow]) 
         )),
     };
     let count = |multipole| lines.iter().filter(|l| l.multipole == multipole).count();
-    let (e1, m1, e2) = (
+    let some = |say: Rich, number: usize, singular: &str, plural: &str| match number {
+        0 => say.say(format!("no {singular}")),
+        _ => say.count(number, singular, plural),
+    };
+    let say = some(
+        say,
         count(Multipole::E1),
-        count(Multipole::M1),
-        count(Multipole::E2),
+        "electric dipole line",
+        "electric dipole lines",
     );
-    say.count(e1, "electric dipole line, ", "electric dipole lines, ")
-        .count(
-            m1,
-            "magnetic dipole line and ",
-            "magnetic dipole lines and ",
-        )
-        .count(
-            e2,
-            "electric quadrupole line are allowed; ",
-            "electric quadrupole lines are allowed; ",
-        )
-        .count(
-            refused.len(),
-            "pair of levels is refused.",
-            "pairs of levels are refused.",
-        )
+    let say = some(
+        say.say(", "),
+        count(Multipole::M1),
+        "magnetic dipole line",
+        "magnetic dipole lines",
+    );
+    let say = some(
+        say.say(" and "),
+        count(Multipole::E2),
+        "electric quadrupole line",
+        "electric quadrupole lines",
+    );
+    let say = say.say(" are allowed; ");
+    match refused.len() {
+        0 => say.say("no pair of levels is refused."),
+        1 => say.say("one pair of levels is refused."),
+        many => say.count(many, "", "pairs of levels are refused."),
+    }
 }
 
 pub fn working(lines: &[LineRow], multiplets: &[MultipletRow]) -> Vec<Working> {

@@ -17,6 +17,7 @@ mod line_rows;
 mod lines;
 mod lines_words;
 mod pairs;
+mod parameters;
 mod reading;
 mod record;
 mod rich;
@@ -86,26 +87,26 @@ fn answers(document: &Document, question: Option<Question>) -> Result<String, Ve
     if !document.faults.is_empty() {
         return Err(document.faults.clone());
     }
-    let asked = match question {
-        Some(question) => vec![question],
-        None => Question::ALL
-            .into_iter()
-            .filter(|q| document.lacks(*q).is_none())
-            .collect(),
-    };
-    if asked.is_empty() {
-        // What the first question lacks is the most useful thing to say.
-        return answer(document, Question::States);
-    }
-    let mut parts = Vec::new();
-    for question in asked {
-        parts.push(format!(
-            "\"{}\":{}",
+    if let Some(question) = question {
+        return Ok(format!(
+            "{{\"{}\":{}}}",
             question.name(),
             answer(document, question)?
         ));
     }
-    Ok(format!("{{{}}}", parts.join(",")))
+    let mut parts = Vec::new();
+    let mut first_fault = None;
+    for question in Question::ALL {
+        match answer(document, question) {
+            Ok(text) => parts.push(format!("\"{}\":{text}", question.name())),
+            // What a question lacks or cannot do is no reason to keep the other answers back.
+            Err(faults) => first_fault = first_fault.or(Some(faults)),
+        }
+    }
+    match (parts.is_empty(), first_fault) {
+        (true, Some(faults)) => Err(faults),
+        _ => Ok(format!("{{{}}}", parts.join(","))),
+    }
 }
 
 /// The line that `rungline answer` prints for the text of a sheet.
@@ -114,8 +115,8 @@ fn answers(document: &Document, question: Option<Question>) -> Result<String, Ve
 /// Every fault of the text, in the order of the input.
 pub fn answer_text(text: &str, question: Option<Question>) -> Result<String, Vec<Problem>> {
     let json = json::read(text).map_err(|p| vec![p])?;
-    let json = record::sheet_of(json);
-    let document = Document::read(&json);
+    let (sheet, _) = record::split(&json)?;
+    let document = Document::read(sheet);
     Ok(format!(
         "{{\"rungline\":1,\"answers\":{}}}",
         answers(&document, question)?

@@ -14,6 +14,9 @@ use super::entry::Entry;
 /// The most pairs of levels that are judged in one answer.
 pub const MAX_PAIRS: u128 = 120_000;
 
+/// The highest running index whose coupling chain is looked up.
+const MAX_CHAIN: usize = 10_000;
+
 /// One kind of term of one entry, with its coupling chain.
 pub struct Kinds {
     /// Index into the document's entries.
@@ -77,18 +80,20 @@ pub fn rows(document: &Document) -> f64 {
     pairs(document).min(MAX_PAIRS) as f64
 }
 
-/// Every kind of term of one entry.
-pub fn kinds(document: &Document, entry: usize) -> Result<Vec<Kinds>, Problem> {
+/// Every kind of term of one entry, at most `limit` of them.
+pub fn kinds(document: &Document, entry: usize, limit: usize) -> Result<Vec<Kinds>, Problem> {
     let Some(configuration) = document.entries.get(entry).and_then(Entry::configuration) else {
         return Ok(Vec::new());
     };
     let subshells = configuration.subshells();
     let all = ls::terms(subshells)?;
-    let limit = usize::try_from(all.n_terms()).unwrap_or(usize::MAX);
     let mut chains = chains::chains(subshells, limit)?.listed.into_iter();
     let mut kinds = Vec::new();
     for term in &all.terms {
         for k in 1..=term.times {
+            if kinds.len() >= limit {
+                return Ok(kinds);
+            }
             kinds.push(Kinds {
                 entry,
                 term: term.term,
@@ -132,21 +137,24 @@ pub fn between(
     ))
 }
 
-/// The first allowed line, E1 before M1 before E2; what the question on splitting proposes.
+/// The most terms of a configuration among which a line is looked for.
+const MAX_TRIED: usize = 150;
+
+/// The first allowed line, E1 before M1 before E2, between different configurations before inside
+/// one; what the question on splitting proposes.
 pub fn first_allowed(document: &Document) -> Option<(LevelOf, LevelOf)> {
-    if pairs(document) > MAX_PAIRS {
-        return None;
-    }
+    let mut entries = pairs_of_entries(document);
+    entries.sort_by_key(|(lower, upper)| lower == upper);
     for multipole in Multipole::ALL {
-        for (lower_entry, upper_entry) in pairs_of_entries(document) {
+        for &(lower_entry, upper_entry) in &entries {
             let Some(Ok(between)) = between(document, lower_entry, upper_entry) else {
                 continue;
             };
-            let lowers = kinds(document, lower_entry).ok()?;
+            let lowers = kinds(document, lower_entry, MAX_TRIED).ok()?;
             let uppers = if upper_entry == lower_entry {
                 None
             } else {
-                kinds(document, upper_entry).ok()
+                kinds(document, upper_entry, MAX_TRIED).ok()
             };
             for upper in uppers.as_ref().unwrap_or(&lowers) {
                 for lower in &lowers {
@@ -182,9 +190,22 @@ pub fn judge(
     lower: &LevelOf,
 ) -> Result<Vec<(Multipole, Option<Rule>)>, Problem> {
     let find = |of: &LevelOf| -> Result<Option<Kinds>, Problem> {
-        Ok(kinds(document, of.entry)?
-            .into_iter()
-            .find(|k| k.term == of.level.term && k.index == of.level.index))
+        let Some(configuration) = document
+            .entries
+            .get(of.entry)
+            .and_then(Entry::configuration)
+        else {
+            return Ok(None);
+        };
+        let Level { term, index, .. } = of.level;
+        let chain = chains::chain(configuration.subshells(), term, index, MAX_CHAIN)?;
+        Ok(Some(Kinds {
+            entry: of.entry,
+            term,
+            index,
+            chain,
+            levels: term.levels().collect(),
+        }))
     };
     let (Some(a), Some(b)) = (find(upper)?, find(lower)?) else {
         return Ok(Vec::new());

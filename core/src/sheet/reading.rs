@@ -168,9 +168,9 @@ fn echoes(document: &Document) -> Vec<Echo> {
             Content::Configuration(named) => {
                 let rich = electrons(named.rich().say(", "), entry);
                 match &named.completed {
-                    Some(core) => {
-                        rich.say(format!("; the inner electrons were completed as {core}"))
-                    }
+                    Some(core) => rich
+                        .say("; the inner electrons were completed as ")
+                        .then(&core.rich),
                     None => rich,
                 }
             }

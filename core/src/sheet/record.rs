@@ -6,7 +6,7 @@ use crate::problem::Problem;
 
 use super::document::Document;
 use super::json::{self, Json};
-use super::{Question, VERSION, answers, to_json};
+use super::{VERSION, answers, to_json};
 
 /// What rechecking a record found.
 #[derive(Clone, Debug, PartialEq, Serialize)]
@@ -62,7 +62,7 @@ pub fn recheck_text(text: &str) -> Result<Recheck, Vec<Problem>> {
 
 /// The sheet of a file, and the recheck if the file is a record.
 pub fn open(json: &Json) -> Result<(&Json, Option<Recheck>), Vec<Problem>> {
-    let (Some(sheet), Some(recorded)) = (json.get("sheet"), json.get("answers")) else {
+    let (sheet, Some(recorded)) = split(json)? else {
         return Ok((json, None));
     };
     let document = Document::read(sheet);
@@ -74,14 +74,12 @@ pub fn open(json: &Json) -> Result<(&Json, Option<Recheck>), Vec<Problem>> {
         return Err(faults.collect());
     }
     let mut moved = Vec::new();
-    if let Json::Object(entries) = recorded {
-        for (name, was) in entries {
-            let now = Question::named(name)
-                .and_then(|question| super::answer(&document, question).ok())
-                .and_then(|text| json::read_own(&text));
-            compare(&format!("/{name}"), Some(was), now.as_ref(), &mut moved);
-        }
-    }
+    let now = answers(&document, None)
+        .ok()
+        .and_then(|text| json::read_own(&text));
+    compare("", Some(recorded), now.as_ref(), &mut moved);
+    let codata = Json::Number(f64::from(crate::constants::CODATA_YEAR));
+    compare("/codata", json.get("codata"), Some(&codata), &mut moved);
     let version = json
         .get("version")
         .and_then(Json::as_text)
@@ -97,12 +95,69 @@ pub fn open(json: &Json) -> Result<(&Json, Option<Recheck>), Vec<Problem>> {
     ))
 }
 
-/// The sheet that a value holds: itself, or the one inside a record.
-pub fn sheet_of(json: Json) -> Json {
-    match (json.get("sheet"), json.get("answers")) {
-        (Some(sheet), Some(_)) => sheet.clone(),
-        _ => json,
+/// The sheet of a file, and the answers if it is a record.
+///
+/// # Errors
+/// The record's own faults: its version, its keys, their kinds.
+pub fn split(json: &Json) -> Result<(&Json, Option<&Json>), Vec<Problem>> {
+    let (Some(sheet), Some(recorded)) = (json.get("sheet"), json.get("answers")) else {
+        return Ok((json, None));
+    };
+    let faults = check_shape(json);
+    if faults.is_empty() {
+        Ok((sheet, Some(recorded)))
+    } else {
+        Err(faults)
     }
+}
+
+fn check_shape(json: &Json) -> Vec<Problem> {
+    let mut faults = Vec::new();
+    let Json::Object(entries) = json else {
+        return faults;
+    };
+    if json.get("rungline") != Some(&Json::Number(super::schema::VERSION)) {
+        faults.push(
+            Problem::new(
+                "wrong-version",
+                "This record does not carry \"rungline\": 1.",
+                0,
+                0,
+            )
+            .bound("This program reads records of document version 1.")
+            .at("/rungline"),
+        );
+    }
+    for (key, value) in entries {
+        let fits = match key.as_str() {
+            "rungline" | "codata" => matches!(value, Json::Number(_)),
+            "version" => matches!(value, Json::Text(_)),
+            "sheet" | "answers" => matches!(value, Json::Object(_)),
+            "cautions" => matches!(value, Json::List(_)),
+            _ => false,
+        };
+        if fits {
+            continue;
+        }
+        let short: String = key.chars().take(60).collect();
+        faults.push(
+            Problem::new(
+                "not-as-recorded",
+                format!(
+                    "\"{short}\" is {}, which no record holds there.",
+                    value.what()
+                ),
+                0,
+                0,
+            )
+            .bound("The keys of a record: rungline, version, codata, sheet, cautions, answers.")
+            .at(super::schema::pointer("", key)),
+        );
+        if faults.len() > 50 {
+            break;
+        }
+    }
+    faults
 }
 
 fn compare(name: &str, was: Option<&Json>, now: Option<&Json>, moved: &mut Vec<Moved>) {

@@ -271,15 +271,16 @@ impl Piece {
             }
             Piece::Species {
                 symbol,
+                charge,
                 stage,
                 mass_number,
-                ..
             } => {
                 let mass = mass_number.map(|a| a.to_string()).unwrap_or_default();
-                if stage.is_empty() {
-                    format!("{mass}{symbol}")
-                } else {
-                    format!("{mass}{symbol} {stage}")
+                match (stage.as_str(), charge) {
+                    ("", -1) => format!("{mass}{symbol}-"),
+                    ("", 0..) => format!("{mass}{symbol}"),
+                    ("", _) => format!("{mass}{symbol} {}-", charge.unsigned_abs()),
+                    (stage, _) => format!("{mass}{symbol} {stage}"),
                 }
             }
             Piece::Number { text, unit, .. } => match unit {

@@ -167,6 +167,14 @@ pub const SHEET: Shape = Group(&[
     ("fit", Group(&[("free", List(&Text(200), 1000))])),
 ]);
 
+/// Whether the document has this key at its top.
+pub fn is_known(key: &str) -> bool {
+    match &SHEET {
+        Group(keys) => keys.iter().any(|(name, _)| *name == key),
+        _ => false,
+    }
+}
+
 /// The longest text of a quantity, a name or a label.
 pub const MAX_NAME: usize = 400;
 

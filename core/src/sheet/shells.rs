@@ -118,15 +118,14 @@ impl BareShell {
         } else {
             format!(", the {} shell,", self.letter)
         };
-        let values = |n: u32| if n == 1 { "value" } else { "values" };
         Rich::words(format!("The shell n = {}{name} has ", self.n))
             .count(self.n, "value of ℓ, ", "values of ℓ, ")
-            .say(format!(
-                "{} {} of m_ℓ, ",
+            .count(
                 self.m_l_values,
-                values(self.m_l_values)
-            ))
-            .count(self.pairs, "pair (ℓ, m_ℓ) and ", "pairs (ℓ, m_ℓ) and ")
+                "value of the magnetic quantum number, ",
+                "values of the magnetic quantum number, ",
+            )
+            .count(self.pairs, "pair of the two and ", "pairs of the two and ")
             .count(self.states, "state.", "states.")
     }
 

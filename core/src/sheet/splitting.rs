@@ -10,7 +10,7 @@ use crate::terms::lande;
 
 use super::answer::{Around, Working};
 use super::document::{Document, Field, LevelOf};
-use super::formula::{Formula, name, number, operator, row, sub, sup};
+use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
 use super::pairs;
 use super::rich::{Kind, Rich};
 
@@ -37,6 +37,10 @@ struct LineOf {
     g_lower: Option<f64>,
     multipole: Multipole,
     wavelength_nm: Option<f64>,
+    #[serde(skip)]
+    upper_j: TwiceJ,
+    #[serde(skip)]
+    lower_j: TwiceJ,
 }
 
 #[derive(Debug, Serialize)]
@@ -99,7 +103,7 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
     let pattern = weak_field::pattern(above, below, multipole).map_err(|p| p.at("/line"))?;
     let mut components = Vec::new();
     for component in &pattern.components {
-        let offset = weak_field::offset(component.lorentz, field.tesla, document.wavelength_nm)
+        let offset = weak_field::offset(component.lorentz, field.tesla, document.line_wavelength())
             .map_err(|p| p.at("/field/flux_density"))?;
         components.push(ComponentRow {
             polarisation: component.polarisation.name(),
@@ -143,13 +147,18 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         g_upper,
         g_lower,
         multipole,
-        wavelength_nm: document.wavelength_nm,
+        wavelength_nm: document.line_wavelength(),
+        upper_j: upper.level.j,
+        lower_j: lower.level.j,
     };
-    let described = describe(positions, pattern.is_triplet());
+    let described = describe(positions, pattern.is_normal_triplet());
     let mut around = Around::saying(sentence(&line, field, &components, &described));
     around.working = working(&line, field, &components);
     around.limits = limits(document, field, &components);
     around.cautions = cautions(field);
+    around
+        .cautions
+        .extend(document.source_cautions(document.line_wavelength()));
     around.kinds = [
         ("components.lorentz", Kind::Computed),
         ("components.offset", Kind::Computed),
@@ -159,9 +168,15 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         ("components.along", Kind::Exact),
         ("components.across", Kind::Exact),
         ("components.seen", Kind::Exact),
-        ("components.M", Kind::Exact),
+        ("components.M_upper", Kind::Exact),
+        ("components.M_lower", Kind::Exact),
+        ("positions", Kind::Exact),
+        ("states.M", Kind::Exact),
         ("states.energy", Kind::Computed),
-        ("line.g", Kind::Computed),
+        ("states.lorentz", Kind::Computed),
+        ("line.g_upper", Kind::Computed),
+        ("line.g_lower", Kind::Computed),
+        ("field.angle_degrees", Kind::Entered),
         ("field.tesla", Kind::Entered),
         ("line.wavelength_nm", Kind::Entered),
     ]
@@ -229,11 +244,11 @@ fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Mu
     .at("/line"))
 }
 
-fn describe(positions: usize, triplet: bool) -> String {
-    if triplet {
-        "3 components, the normal triplet".to_owned()
-    } else {
-        format!("{positions} components")
+fn describe(positions: usize, normal_triplet: bool) -> String {
+    match (positions, normal_triplet) {
+        (_, true) => "3 components, the normal triplet".to_owned(),
+        (1, _) => "1 component".to_owned(),
+        (many, _) => format!("{many} components"),
     }
 }
 
@@ -242,84 +257,119 @@ fn sentence(line: &LineOf, field: &Field, components: &[ComponentRow], pattern: 
         .iter()
         .map(|c| c.offset.abs())
         .fold(0.0, f64::max);
-    let unseen = components.iter().all(|c| c.seen == 0.0);
-    let say = Rich::new()
-        .then(&line.lower_rich)
-        .say(" to ")
-        .then(&line.upper_rich)
-        .say(" splits into ")
-        .say(pattern.to_owned())
-        .say(" in ")
-        .number(field.tesla, Some("T"), Kind::Entered);
-    if unseen {
-        return say.say(".");
+    let named = |say: Rich| {
+        say.say(format!("the {} line from ", line.multipole))
+            .then(&line.upper_rich)
+            .say(" to ")
+            .then(&line.lower_rich)
+    };
+    if field.tesla == 0.0 {
+        return named(Rich::words("Without a field "))
+            .say(format!(" does not split; any field makes {pattern} of it."));
     }
-    say.say(", the outermost ")
+    let say = named(
+        Rich::words("In a field of ")
+            .number(field.tesla, Some("T"), Kind::Entered)
+            .say(", "),
+    )
+    .say(format!(" splits into {pattern}"));
+    if widest == 0.0 {
+        return say.say(", which stays where the line is.");
+    }
+    say.say("; the largest offset from its centre is ")
         .number(widest, Some("cm-1"), Kind::Computed)
-        .say(" from the centre.")
+        .say(".")
 }
 
 fn working(line: &LineOf, field: &Field, components: &[ComponentRow]) -> Vec<Working> {
-    let formula = row([
-        operator("Δ"),
-        name("σ"),
-        operator("="),
-        operator("("),
-        sub(name("g"), name("upper")),
-        sub(name("M"), name("upper")),
-        operator("−"),
-        sub(name("g"), name("lower")),
-        sub(name("M"), name("lower")),
-        operator(")"),
-        sub(name("μ"), name("B")),
+    let shift = |upper: [Formula; 2], lower: [Formula; 2]| {
+        let mut parts = vec![operator("(")];
+        parts.extend(upper);
+        parts.push(operator("−"));
+        parts.extend(lower);
+        parts.push(operator(")"));
+        parts
+    };
+    let mut formula = vec![operator("Δ"), name("σ"), operator("=")];
+    formula.extend(shift(
+        [sub(name("g"), name("upper")), sub(name("M"), name("upper"))],
+        [sub(name("g"), name("lower")), sub(name("M"), name("lower"))],
+    ));
+    formula.extend([
+        fraction(sub(name("μ"), name("B")), row([name("h"), name("c")])),
         name("B"),
     ]);
-    let step = Working::new(
+    let offset = Working::new(
         "Offset of a component",
-        formula,
-        "Condon & Shortley, The Theory of Atomic Spectra (1935), ch. XVI; μ_B/hc from CODATA 2022",
+        row(formula),
+        "Condon & Shortley, The Theory of Atomic Spectra (1935), ch. XVI; the Bohr magneton in cm⁻¹ per tesla from CODATA 2022",
     );
-    let case = components
-        .iter()
-        .max_by(|a, b| a.offset.total_cmp(&b.offset));
-    let step = match case {
-        Some(c) => step.numbers(
-            row([
-                operator("("),
-                number(line.g_upper.unwrap_or(0.0)),
-                operator("×"),
-                number(c.m_upper),
-                operator("−"),
-                number(line.g_lower.unwrap_or(0.0)),
-                operator("×"),
-                operator("("),
-                number(c.m_lower),
-                operator(")"),
-                operator(")"),
-                operator("×"),
-                number(crate::constants::BOHR_MAGNETON_WAVENUMBER.value),
-                operator("×"),
-                number(field.tesla),
-            ]),
-            Rich::new().number(c.offset, Some("cm-1"), Kind::Computed),
-        ),
-        None => step,
-    };
     let strength = Working::new(
         "Strength of a component",
         row([
             name("s"),
             operator("="),
             sup(
-                Formula::ThreeJ(
-                    [["J", "k", "J′"], ["−M", "q", "M′"]].map(|r| r.map(str::to_owned)),
-                ),
+                three_j(["J", "k", "J′", "−M", "q", "M′"].map(str::to_owned)),
                 number(2),
             ),
         ]),
-        "Wigner–Eckart theorem; E. U. Condon & G. H. Shortley (1935), ch. XVI",
+        "Wigner–Eckart theorem; Condon & Shortley (1935), ch. XVI",
     );
-    vec![step, strength]
+    let Some(case) = components
+        .iter()
+        .max_by(|a, b| a.offset.total_cmp(&b.offset))
+    else {
+        return vec![offset, strength];
+    };
+    let of_case = format!(" for M from {} to {}", case.m_upper, case.m_lower).replace('-', "−");
+    let mut numbers = shift(
+        [number(line.g_upper.unwrap_or(0.0)), bracketed(case.m_upper)],
+        [number(line.g_lower.unwrap_or(0.0)), bracketed(case.m_lower)],
+    );
+    numbers.extend([
+        operator("×"),
+        number(crate::constants::BOHR_MAGNETON_WAVENUMBER.value),
+        operator("×"),
+        number(field.tesla),
+    ]);
+    let (up, low) = (line.upper_j, line.lower_j);
+    let (m, n) = (case.m_upper.doubled(), case.m_lower.doubled());
+    let symbol = three_j(
+        [
+            up.doubled(),
+            2 * i32::try_from(line.multipole.rank()).unwrap_or(1),
+            low.doubled(),
+            -m,
+            m - n,
+            n,
+        ]
+        .map(|two| TwiceJ::from_doubled(two).to_string().replace('-', "−")),
+    );
+    vec![
+        offset.numbers(
+            row(numbers),
+            Rich::new()
+                .number(case.offset, Some("cm-1"), Kind::Computed)
+                .say(of_case.clone()),
+        ),
+        strength.numbers(
+            sup(symbol, number(2)),
+            Rich::new()
+                .number(case.strength, None, Kind::Exact)
+                .say(of_case),
+        ),
+    ]
+}
+
+/// (value), so that a product with a negative number can be read.
+fn bracketed(m: TwiceJ) -> Formula {
+    row([operator("("), number(m), operator(")")])
+}
+
+fn three_j(cells: [String; 6]) -> Formula {
+    let [a, b, c, d, e, f] = cells;
+    Formula::ThreeJ([[a, b, c], [d, e, f]])
 }
 
 fn limits(document: &Document, field: &Field, components: &[ComponentRow]) -> Vec<String> {
@@ -329,11 +379,11 @@ fn limits(document: &Document, field: &Field, components: &[ComponentRow]) -> Ve
         .fold(0.0, f64::max);
     let mut limits = vec![
         format!(
-            "The field is taken as weak: offsets grow in proportion to it, which holds while {widest:.4} cm-1 is small beside the distance to neighbouring levels. Quadratic shifts and crossings are left out."
+            "The field is taken as weak: offsets grow in proportion to it, which holds while {widest:.4} cm⁻¹ is small beside the distance to neighbouring levels. Quadratic shifts and crossings are left out."
         ),
-        "g factors are those of pure LS coupling; measured ones differ, mostly in heavy atoms. The nucleus is left out: hyperfine structure comparable with the offsets changes the pattern.".to_owned(),
+        "The g factors are those of pure LS coupling; measured ones differ, mostly in heavy atoms. The nucleus is left out: hyperfine structure comparable with the offsets changes the pattern.".to_owned(),
     ];
-    if document.wavelength_nm.is_some() {
+    if document.line_wavelength().is_some() {
         limits.push("The wavelength is taken as that in vacuum; typed in air instead, the offsets in pm would be 0.06 % too small.".to_owned());
     }
     if field.angle_degrees == 0.0 {

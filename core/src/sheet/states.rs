@@ -211,7 +211,10 @@ pub fn answer(document: &Document) -> Result<States, Problem> {
         });
     }
     let first = by_configuration.first().cloned().unwrap_or_default();
-    let mut around = Around::saying(sentence(&first));
+    let mut around = Around::saying(sentence(
+        &first,
+        by_configuration.get(1..).unwrap_or_default(),
+    ));
     around.working = working(&first, document);
     around.limits = limits(&first, document);
     around.kinds = [
@@ -219,17 +222,29 @@ pub fn answer(document: &Document) -> Result<States, Problem> {
         ("n_terms", Kind::Exact),
         ("n_levels", Kind::Exact),
         ("terms", Kind::Exact),
-        ("terms.kinds.weight", Kind::Computed),
-        ("terms.kinds.casimir", Kind::Computed),
+        ("terms.kinds.parents.weight", Kind::Computed),
+        ("terms.kinds.rotation_casimir", Kind::Exact),
+        ("terms.kinds.G2_casimir", Kind::Exact),
         ("levels_by_J", Kind::Exact),
         ("levels.J", Kind::Exact),
         ("levels.g", Kind::Computed),
         ("levels.mu_eff", Kind::Computed),
+        (
+            "ground",
+            if first.ground.as_ref().is_some_and(Ground::is_tabulated) {
+                Kind::Measured
+            } else {
+                Kind::Computed
+            },
+        ),
         ("grid", Kind::Exact),
+        ("bare_shell", Kind::Exact),
         ("jj", Kind::Exact),
+        ("jj.factors", Kind::Computed),
+        ("jj_configurations", Kind::Exact),
+        ("jj_levels_by_J", Kind::Exact),
         ("jK", Kind::Exact),
         ("jK.g", Kind::Computed),
-        ("jj.factors", Kind::Computed),
         ("shells", Kind::Exact),
         ("spin_only", Kind::Computed),
     ]
@@ -246,6 +261,7 @@ fn bare(document: &Document, n: u8) -> Allowed {
     Allowed {
         species: document.species_rich(),
         source_of_configuration: "typed",
+        states: Some(Count(2 * u128::from(n) * u128::from(n))),
         bare_shell: BareShell::new(n),
         ..Allowed::default()
     }
@@ -255,7 +271,7 @@ fn configuration_text(named: &Named) -> ConfigurationText {
     ConfigurationText {
         core: named.core.clone(),
         subshells: named
-            .beyond
+            .outside
             .iter()
             .copied()
             .map(SubshellName::from)
@@ -274,19 +290,17 @@ fn allowed(document: &Document, entry: &Entry, named: &Named) -> Result<Allowed,
     let parity = if odd { "odd" } else { "even" };
     let levels = all.levels(MAX_LEVELS);
     let ground = Ground::of(document, configuration, &entry.label, &all);
-    let spin_only = Some(ground.term.two_s)
-        .filter(|two_s| *two_s > 0)
-        .and(Some(ground.term.spin()))
-        .map(|spin| SpinOnly {
-            mu: lande::spin_only_moment(spin),
-            s: spin,
-        });
+    let spin = ground.term.spin();
+    let spin_only = Some(SpinOnly {
+        mu: lande::spin_only_moment(spin),
+        s: spin,
+    });
     let pairs = jk::pairs(subshells, MAX_SCHEME_ROWS)?;
     let schemes = jj::configurations(subshells, MAX_SCHEME_ROWS)?;
     Ok(Allowed {
         configuration: Some(configuration_text(named)),
         species: document.species_rich(),
-        completed_core: named.completed.clone(),
+        completed_core: named.completed.as_ref().map(|core| core.text.clone()),
         source_of_configuration: entry.source,
         states: Some(Count(all.states)),
         parity: Some(parity),
@@ -328,7 +342,7 @@ fn level_row(configuration: &str, level: &Level, odd: bool, parity: &'static str
         index: level.index.map(Count),
         parity,
         g,
-        mu_eff: g.map(|g| lande::effective_moment(g, level.j)),
+        mu_eff: Some(g.map_or(0.0, |g| lande::effective_moment(g, level.j))),
     }
 }
 
@@ -349,7 +363,10 @@ fn term_rows(open: &[Subshell], odd: bool, all: &ls::LsTerms) -> Result<Vec<Term
         _ => None,
     };
     let chains = if open.len() > 1 {
-        chains::chains(open, MAX_CHAINS)?.listed
+        // Configurations whose couplings are too many to list keep their counts.
+        chains::chains(open, MAX_CHAINS)
+            .map(|c| c.listed)
+            .unwrap_or_default()
     } else {
         Vec::new()
     };

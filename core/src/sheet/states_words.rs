@@ -15,7 +15,7 @@ use super::states::Allowed;
 /// The size of the electron's g factor; its sign belongs to the moment.
 const ELECTRON_G: f64 = constants::ELECTRON_G.value;
 
-pub fn sentence(first: &Allowed) -> Rich {
+pub fn sentence(first: &Allowed, others: &[Allowed]) -> Rich {
     if let Some(shell) = &first.bare_shell {
         return shell.sentence();
     }
@@ -27,18 +27,35 @@ pub fn sentence(first: &Allowed) -> Rich {
             say.say(" in ").then(&configuration.rich)
         };
     }
-    say = say.say(" has ");
-    say = say
-        .count(first.states.unwrap_or(Count(0)), "state", "states")
-        .say(" in ");
-    say = say
-        .count(first.n_terms.unwrap_or(Count(0)), "term", "terms")
-        .say(" and ");
-    say = say.count(first.n_levels.unwrap_or(Count(0)), "level", "levels");
-    match &first.ground {
+    say = counted(say.say(" has "), first);
+    say = match &first.ground {
         Some(ground) => ground.finish_sentence(say),
         None => say.say("."),
+    };
+    match others {
+        [] => say,
+        [second] if second.configuration.is_some() => {
+            let name = second.configuration.as_ref().map(|c| &c.rich);
+            let say = name.iter().fold(say.say(" "), |say, rich| say.then(rich));
+            counted(say.say(" has "), second).say(".")
+        }
+        others => say
+            .say(" ")
+            .count(
+                others.len(),
+                "more configuration is",
+                "more configurations are",
+            )
+            .say(" below."),
     }
+}
+
+fn counted(say: Rich, of: &Allowed) -> Rich {
+    say.count(of.states.unwrap_or(Count(0)), "state", "states")
+        .say(" in ")
+        .count(of.n_terms.unwrap_or(Count(0)), "term", "terms")
+        .say(" and ")
+        .count(of.n_levels.unwrap_or(Count(0)), "level", "levels")
 }
 
 pub fn working(first: &Allowed, document: &Document) -> Vec<Working> {
@@ -148,7 +165,7 @@ fn ground_factor(term: Term, j: TwiceJ, g: f64) -> [Working; 3] {
         Working::new(
             "Landé factor of the lowest level",
             formula,
-            "A. Landé, Z. Phys. 15, 189 (1923); Condon & Shortley (1935), ch. XVI; g_s from CODATA 2022",
+            "A. Landé, Z. Phys. 15, 189 (1923); Condon & Shortley (1935), ch. XVI; the electron’s g factor from CODATA 2022",
         )
         .numbers(numbers, Rich::new().number(g, None, Kind::Computed)),
         Working::new("Effective moment of the lowest level", effective, "J. H. Van Vleck, The Theory of Electric and Magnetic Susceptibilities (1932), ch. IX")
@@ -156,7 +173,7 @@ fn ground_factor(term: Term, j: TwiceJ, g: f64) -> [Working; 3] {
         Working::new(
             "Spin-only moment",
             row([sub(name("μ"), name("S")), operator("="), sub(name("g"), name("s")), root(jj1("S")), sub(name("μ"), name("B"))]),
-            "common practice, no source",
+            "Common practice, no source",
         )
         .numbers(row([number(ELECTRON_G), root(number(twice(s)))]), Rich::new().number(spin_only, Some("μ_B"), Kind::Computed)),
     ]
@@ -177,11 +194,14 @@ pub fn limits(first: &Allowed, document: &Document) -> Vec<String> {
             .to_owned(),
     );
     limits.push(
-        "g_J is that of pure LS coupling. Mixing between terms changes it, by a few parts in a thousand in light atoms and by tens of per cent in heavy ones (common practice, no source)."
+        "The g factors are those of pure LS coupling. Mixing between terms changes it, by a few parts in a thousand in light atoms and by tens of per cent in heavy ones (common practice, no source)."
             .to_owned(),
     );
     if let Some(ground) = &first.ground {
         limits.extend(ground.limits());
+    }
+    if document.is_anion() {
+        limits.push("Whether this negative ion is bound at all is not computed.".to_owned());
     }
     if let (Some(Count(total)), listed) = (first.n_levels, first.levels_listed)
         && total > listed as u128

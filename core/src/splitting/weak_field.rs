@@ -27,6 +27,9 @@ pub const MAX_G: f64 = 1.0e3;
 /// Largest flux density, in tesla.
 pub const MAX_TESLA: f64 = 1.0e6;
 
+/// Offsets this close, in μ_B B, are one place: far below what any g is known to.
+const SAME_PLACE: f64 = 1e-9;
+
 /// A level in the field.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct SplitLevel {
@@ -163,7 +166,8 @@ pub fn pattern(
                     polarisation,
                     m_upper,
                     m_lower,
-                    lorentz: energy(upper, m_upper) - energy(lower, m_lower),
+                    // A sum with +0 has no negative zero.
+                    lorentz: energy(upper, m_upper) - energy(lower, m_lower) + 0.0,
                     strength,
                     rank,
                 });
@@ -281,7 +285,7 @@ fn cos_squared(angle_degrees: f64) -> f64 {
 
 impl Pattern {
     /// Components that coincide taken together, by polarisation, then by rising offset. Offsets are
-    /// equal within 10⁻⁹ μ_B B, far below what g is known to.
+    /// equal within 10⁻⁹ μ_B B.
     pub fn positions(&self) -> Vec<Position> {
         let mut sorted = self.components.clone();
         sort_by(&mut sorted, |a, b| {
@@ -292,7 +296,8 @@ impl Pattern {
         for c in sorted {
             match positions.last_mut() {
                 Some(last)
-                    if last.polarisation == c.polarisation && c.lorentz - last.lorentz <= 1e-9 =>
+                    if last.polarisation == c.polarisation
+                        && c.lorentz - last.lorentz <= SAME_PLACE =>
                 {
                     last.strength += c.strength;
                     last.components = last.components.saturating_add(1);
@@ -308,9 +313,14 @@ impl Pattern {
         positions
     }
 
-    /// Whether it is the normal triplet: one place for each polarisation.
-    pub fn is_triplet(&self) -> bool {
-        self.positions().len() == 3
+    /// Whether it is the normal triplet: π at the line and σ± at ±μ_B B, which both need g = 1.
+    pub fn is_normal_triplet(&self) -> bool {
+        let positions = self.positions();
+        let at_step = |p: &Position| {
+            let step = f64::from(p.polarisation.change_of_m());
+            (p.lorentz - step).abs() <= SAME_PLACE
+        };
+        positions.len() == 3 && positions.iter().all(at_step)
     }
 }
 
@@ -333,7 +343,7 @@ pub struct Offset {
 /// within 10⁻³ … 10⁹ nm.
 pub fn offset(lorentz: f64, tesla: f64, wavelength_nm: Option<f64>) -> Result<Offset, Problem> {
     check_field(tesla)?;
-    let wavenumber = lorentz * BOHR_MAGNETON_WAVENUMBER.value * tesla;
+    let wavenumber = lorentz * BOHR_MAGNETON_WAVENUMBER.value * tesla + 0.0;
     let wavelength = match wavelength_nm {
         Some(nm) => pm_offset(checked_wavelength(nm)?, wavenumber),
         None => None,
@@ -375,5 +385,5 @@ fn checked_wavelength(nm: f64) -> Result<f64, Problem> {
 fn pm_offset(nm: f64, wavenumber: f64) -> Option<f64> {
     // λ Δσ without unit: 1 nm·cm⁻¹ = 10⁻⁷.
     let relative = nm * wavenumber * 1.0e-7;
-    (relative > -1.0).then(|| -1.0e3 * nm * relative / (1.0 + relative))
+    (relative > -1.0).then(|| 0.0 - 1.0e3 * nm * relative / (1.0 + relative))
 }
