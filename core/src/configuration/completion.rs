@@ -81,13 +81,13 @@ pub fn complete(written: &Written, species: &Species) -> Result<Reading, Vec<Pro
 
 /// The typed core and subshells.
 #[derive(Clone)]
-struct Parts {
-    core: Option<&'static Configuration>,
-    typed: Vec<Subshell>,
+pub(super) struct Parts {
+    pub core: Option<&'static Configuration>,
+    pub typed: Vec<Subshell>,
 }
 
 impl Parts {
-    fn named(&self) -> Vec<Subshell> {
+    pub(super) fn named(&self) -> Vec<Subshell> {
         let core = self
             .core
             .iter()
@@ -95,14 +95,14 @@ impl Parts {
         core.chain(self.typed.iter().copied()).collect()
     }
 
-    fn electrons(&self) -> u32 {
+    pub(super) fn electrons(&self) -> u32 {
         self.named()
             .iter()
             .fold(0, |sum, s| sum.saturating_add(s.electrons()))
     }
 
     /// The whole configuration of a number of electrons, or of any number.
-    fn whole(&self, electrons: Option<u32>) -> Option<Reading> {
+    pub(super) fn whole(&self, electrons: Option<u32>) -> Option<Reading> {
         let mut all = self.named();
         let left = match electrons {
             Some(electrons) => electrons.checked_sub(self.electrons())?,
@@ -131,8 +131,23 @@ impl Parts {
         })
     }
 
+    /// Whether what was added is a noble gas, or fills before the typed subshells do.
+    fn core_is_usual(&self, reading: &Reading) -> bool {
+        let Some(added) = &reading.completed_core else {
+            return true;
+        };
+        let last_typed = filling_order().fold(None, |last, orbital| {
+            let typed = self.typed.iter().any(|s| s.orbital() == orbital);
+            if typed { Some(orbital) } else { last }
+        });
+        added.noble_gas.is_some()
+            || filling_order()
+                .skip_while(|&orbital| Some(orbital) != last_typed)
+                .all(|orbital| added.configuration.electrons_in(orbital) == 0)
+    }
+
     /// The text of these parts: `[Ar] 3d6 4s2`.
-    fn text(&self, core: Option<&str>) -> String {
+    pub(super) fn text(&self, core: Option<&str>) -> String {
         let mut typed = self.typed.clone();
         sort(&mut typed);
         match core {
@@ -144,7 +159,7 @@ impl Parts {
 }
 
 /// Full subshells of unnamed orbitals that hold exactly these electrons.
-fn full_subshells(
+pub(super) fn full_subshells(
     mut left: u32,
     named: &[Subshell],
     order: impl Iterator<Item = Orbital>,
@@ -199,7 +214,7 @@ fn overlaps(written: &Written) -> Vec<Problem> {
                 s.start,
                 s.end,
             )
-            .bound("each subshell is named once");
+            .bound("Each subshell is named once.");
             if let Some(opened) = &opened {
                 problem = problem.way("Write the core out", opened.clone());
             }
@@ -241,7 +256,7 @@ fn too_high(written: &Written, species: &Species) -> Vec<Problem> {
                 s.end,
             )
             .bound(format!(
-                "n is at most {MAX_N_FILLING} beside other electrons, 50 for one electron alone"
+                "Beside other electrons, n is at most {MAX_N_FILLING}; one electron alone has n up to 50."
             ));
             let lower = Orbital::new(MAX_N_FILLING, orbital.l())
                 .and_then(|o| Subshell::new(o, s.subshell.electrons()));
@@ -290,144 +305,33 @@ fn count_problem(written: &Written, parts: &Parts, species: &Species) -> Problem
     problem = problem.bound(match fitting_species(parts, species, have) {
         Some(fitting) => {
             format!(
-                "{species} has {}; as written it fits {fitting}",
+                "{species} has {}. As written it fits {fitting}.",
                 electrons_word(wanted)
             )
         }
-        None => format!("{species} has {}", electrons_word(wanted)),
+        None => format!("{species} has {}.", electrons_word(wanted)),
     });
-    for (label, replacement) in ways(parts, core, wanted) {
-        if problem.ways.len() < 4
-            && !problem
-                .ways
-                .iter()
-                .any(|way| way.replacement == replacement)
-        {
-            problem = problem.way(label, replacement);
-        }
+    for text in super::completion_ways::fitting_texts(parts, core, species) {
+        problem = problem.way(format!("Use {text}"), text);
     }
     problem
 }
 
-/// The charge with which the same text is whole, the nearest to the one given.
+/// The charge with which the same text is whole and its unnamed core the usual one: cations and
+/// the neutral atom before the anion, then the nearest to the one given.
 fn fitting_species(parts: &Parts, species: &Species, have: u32) -> Option<Species> {
     let z = species.element?;
     let fits = |charge: i32| {
         let other = Species { charge, ..*species };
         let electrons = other.electrons()?;
-        (electrons >= have).then(|| parts.whole(Some(electrons)))??;
-        Some(other)
+        let reading = (electrons >= have).then(|| parts.whole(Some(electrons)))??;
+        parts.core_is_usual(&reading).then_some(other)
     };
     let mut charges: Vec<i32> = (-1..i32::from(z)).collect();
     sort_by_key(&mut charges, |charge| {
-        (charge.abs_diff(species.charge), *charge)
+        (*charge < 0, charge.abs_diff(species.charge), *charge)
     });
     charges.into_iter().find_map(fits)
-}
-
-/// Texts that do fit, each tried before it is offered.
-fn ways(parts: &Parts, core: Option<&str>, wanted: u32) -> Vec<(String, String)> {
-    let mut found = Vec::new();
-    let mut offer = |parts: &Parts, core: Option<&str>| {
-        if parts.whole(Some(wanted)).is_some() {
-            let text = parts.text(core);
-            if !text.is_empty() {
-                found.push((format!("Use {text}"), text));
-            }
-        }
-    };
-    // Put or take the difference in one subshell, the outermost first.
-    let mut by_shell: Vec<usize> = (0..parts.typed.len()).collect();
-    sort_by_key(&mut by_shell, |&i| {
-        parts.typed.get(i).map(|s| std::cmp::Reverse(s.orbital()))
-    });
-    let mut changed: Vec<(u32, usize, Parts)> = Vec::new();
-    for (rank, &i) in by_shell.iter().enumerate() {
-        let Some(&subshell) = parts.typed.get(i) else {
-            continue;
-        };
-        for electrons in 0..=subshell.orbital().capacity() {
-            let mut other = parts.clone();
-            match Subshell::new(subshell.orbital(), electrons) {
-                Some(new) => other
-                    .typed
-                    .iter_mut()
-                    .skip(i)
-                    .take(1)
-                    .for_each(|s| *s = new),
-                None => {
-                    other.typed.remove(i);
-                }
-            }
-            if electrons != subshell.electrons()
-                && !(other.typed.is_empty() && core.is_none())
-                && other.whole(Some(wanted)).is_some()
-            {
-                changed.push((electrons.abs_diff(subshell.electrons()), rank, other));
-            }
-        }
-    }
-    sort_by_key(&mut changed, |&(change, rank, _)| (change, rank));
-    // Or fill up what is missing: with full subshells, the lowest n first; or in filling order, the
-    // last subshell not full.
-    let left = wanted.checked_sub(parts.electrons());
-    let named = parts.named();
-    if let (Some(left), None) = (left, core) {
-        let lowest = (1..=8u8).flat_map(|n| (0..n).filter_map(move |l| Orbital::new(n, l)));
-        if let Some(added) = full_subshells(left, &named, lowest) {
-            offer_with(parts, added, &mut offer);
-        }
-    }
-    for (_, _, other) in changed.into_iter().take(2) {
-        offer(&other, core);
-    }
-    if let Some(added) = left.and_then(|left| partly_filled(left, &named)) {
-        offer_with(parts, added, &mut |parts, none| offer(parts, core.or(none)));
-    }
-    found
-}
-
-/// Offers the typed subshells with others added; full noble-gas shells stay unwritten by the
-/// core's own completion where that still fits.
-fn offer_with(parts: &Parts, added: Vec<Subshell>, offer: &mut impl FnMut(&Parts, Option<&str>)) {
-    let mut typed = parts.typed.clone();
-    typed.extend(added);
-    let Some(whole) = Configuration::new(typed.clone()) else {
-        return;
-    };
-    match (&parts.core, whole.noble_core()) {
-        (None, Some(z)) => {
-            let shorter = Parts {
-                core: closed_core(z),
-                typed: whole.valence(),
-            };
-            offer(&shorter, symbol(z));
-        }
-        _ => offer(
-            &Parts {
-                core: parts.core,
-                typed,
-            },
-            None,
-        ),
-    }
-}
-
-/// Electrons put into unnamed orbitals in filling order, the last one perhaps not full.
-fn partly_filled(mut left: u32, named: &[Subshell]) -> Option<Vec<Subshell>> {
-    let mut added = Vec::new();
-    for orbital in filling_order() {
-        if left == 0 {
-            break;
-        }
-        if named.iter().any(|s| s.orbital() == orbital) {
-            continue;
-        }
-        let electrons = left.min(orbital.capacity());
-        added.push(Subshell::new(orbital, electrons)?);
-        left -= electrons;
-    }
-    (left == 0).then_some(added)
 }
 
 fn electrons_word(count: u32) -> String {

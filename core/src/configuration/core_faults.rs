@@ -14,7 +14,7 @@ pub(super) fn core_not_closed(text: &str, start: usize, end: usize, name: &str) 
         start,
         end,
     )
-    .bound("a core is written [Ar]");
+    .bound("A core is written [Ar].");
     if name.is_empty() {
         return way(problem, text, start, end, "");
     }
@@ -28,7 +28,7 @@ pub(super) fn core_repeated(text: &str, start: usize, end: usize, symbol: &str) 
         start,
         end,
     )
-    .bound("a configuration has at most one core");
+    .bound("A configuration has at most one core.");
     way(problem, text, start, end, "")
 }
 
@@ -40,7 +40,7 @@ pub(super) fn core_open(text: &str, start: usize, end: usize, z: u8) -> Problem 
         start,
         end,
     )
-    .bound("a core is an atom with full subshells only, such as [Ar] or [Xe]");
+    .bound("A core is an atom with full subshells only, such as [Ar] or [Xe].");
     let below = (1..z).rev().find(|&z| closed_core(z).is_some());
     for core in below.and_then(symbol).into_iter().chain(noble_below(z)) {
         let core = format!("[{core}]");
@@ -70,7 +70,7 @@ pub(super) fn core_unknown(text: &str, start: usize, end: usize, name: &str) -> 
         start,
         end,
     )
-    .bound("a core is the symbol of an atom with full subshells only, such as [Ar] or [Xe]");
+    .bound("A core is the symbol of an atom with full subshells only, such as [Ar] or [Xe].");
     let near: Vec<u8> = nearest(name, 8)
         .into_iter()
         .filter(|&z| closed_core(z).is_some())
@@ -100,7 +100,7 @@ pub(super) fn word(text: &str, start: usize, end: usize, word: &str) -> Problem 
         start,
         end,
     )
-    .bound("subshells such as 3d6 and a core such as [Ar]");
+    .bound("It is made of subshells such as 3d6 and a core such as [Ar].");
     let core = crate::elements::by_symbol(word)
         .or_else(|| crate::elements::by_name(word))
         .filter(|&z| closed_core(z).is_some())
@@ -118,7 +118,7 @@ pub(super) fn bare_shell_with_more(text: &str, n: u8) -> Problem {
         0,
         text.len(),
     )
-    .bound("a bare shell has nothing beside it")
+    .bound("A bare shell has nothing beside it.")
     .way(format!("Use n={n}"), format!("n={n}"))
 }
 
@@ -129,6 +129,8 @@ pub(super) fn shell_without_number(text: &str, start: usize, end: usize) -> Prob
         start,
         end,
     )
-    .bound(format!("n is a whole number from 1 to {MAX_N}"));
+    .bound(format!(
+        "The principal quantum number n is a whole number from 1 to {MAX_N}."
+    ));
     way(problem, text, start, end, "n=3")
 }

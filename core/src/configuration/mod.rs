@@ -2,6 +2,7 @@
 
 pub mod chart;
 mod completion;
+mod completion_ways;
 mod core_faults;
 pub mod filling;
 mod occupation;

@@ -42,6 +42,23 @@ impl Species {
     }
 }
 
+impl Species {
+    /// The charge as it is raised behind the symbol: `−`, `2−`, `+`, `3+`; empty for the neutral
+    /// atom and for any atom.
+    pub fn charge_text(&self) -> String {
+        let sign = match self.charge.signum() {
+            _ if self.element.is_none() => return String::new(),
+            0 => return String::new(),
+            1 => '+',
+            _ => '\u{2212}',
+        };
+        match self.charge.unsigned_abs() {
+            1 => sign.to_string(),
+            size => format!("{size}{sign}"),
+        }
+    }
+}
+
 /// ASCII: `Fe I`, `57Fe II`, `H-`, `*`; reading it gives the same species.
 impl fmt::Display for Species {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {

@@ -1,14 +1,16 @@
 //! The faults of a species' text, each with its code, place, bound and ways out.
 
 use super::species::{roman, roman_value};
+use super::species_text::capitalised;
 use crate::elements::{name, nearest, symbol};
 use crate::problem::Problem;
-use crate::quantity::signs::{clipped, is_minus, shown, superscript_digit, superscript_sign};
+use crate::quantity::signs::{clipped, is_minus, shown_all, superscript_digit, superscript_sign};
 
 /// The most characters a species may have.
 const LONGEST: usize = 80;
 
-const ELEMENTS: &str = "symbols and English names of the elements 1 to 118, or * for any atom";
+const ELEMENTS: &str =
+    "It is the symbol or English name of an element from 1 to 118, or * for any atom.";
 
 /// A piece of the text: its bytes, and its characters with like signs made one.
 #[derive(Clone, Debug)]
@@ -58,7 +60,7 @@ pub(super) fn size(text: &str) -> Option<Problem> {
     let length = text.chars().count();
     let problem = if text.trim().is_empty() {
         Problem::new("species-empty", "No species is given.", 0, text.len())
-            .bound("an element such as Fe, Fe II or iron, or * for any atom")
+            .bound("An element such as Fe, Fe II or iron, or * for any atom.")
     } else if length > LONGEST {
         Problem::new(
             "species-too-long",
@@ -66,7 +68,7 @@ pub(super) fn size(text: &str) -> Option<Problem> {
             0,
             text.len(),
         )
-        .bound(format!("a species has at most {LONGEST} characters"))
+        .bound(format!("A species has at most {LONGEST} characters."))
     } else {
         return None;
     };
@@ -75,20 +77,16 @@ pub(super) fn size(text: &str) -> Option<Problem> {
 
 /// A run of characters that no species has.
 pub(super) fn unexpected(text: &str, start: usize, end: usize) -> Problem {
-    let words: Vec<String> = text
-        .get(start..end)
-        .unwrap_or("")
-        .chars()
-        .take(3)
-        .map(shown)
-        .collect();
     let problem = Problem::new(
         "species-unexpected-character",
-        format!("A species has no {}.", words.join(", ")),
+        format!(
+            "A species has no {}.",
+            shown_all(text.get(start..end).unwrap_or(""))
+        ),
         start,
         end,
     )
-    .bound("Latin letters, digits, + and - in the form Fe II, Fe 2+ or 57Fe");
+    .bound("It is made of Latin letters, digits, + and −, as in Fe II, Fe 2+ or 57Fe.");
     let kept: String = text.chars().filter(|&c| plain(c).is_some()).collect();
     match kept.trim() {
         "" => problem.way("Use any atom", "*"),
@@ -106,7 +104,7 @@ pub(super) fn without_element(text: &str, start: usize) -> Problem {
 pub(super) fn any_atom_with_more(text: &str, start: usize) -> Problem {
     let message = "Any atom, *, has no charge and no isotope.";
     Problem::new("species-any-atom-with-more", message, start, text.len())
-        .bound("* stands alone")
+        .bound("The star stands alone.")
         .way("Use *", "*")
 }
 
@@ -120,7 +118,7 @@ pub(super) fn ambiguous(text: &str, letters: &Piece, z: u8, other: u8, numeral: 
             "species-ambiguous",
             format!("“{}” may be {one} or {two} {numeral}.", letters.text),
         )
-        .bound("a symbol has a capital letter first and small ones after it");
+        .bound("A symbol has a capital letter first and small ones after it.");
     let problem = using(problem, letters.replaced(text, one));
     using(problem, letters.replaced(text, &format!("{two} {numeral}")))
 }
@@ -154,7 +152,7 @@ pub(super) fn mass_out_of_range(text: &str, mass: &Piece, z: u8, largest: u16) -
     let problem = mass
         .problem("mass-number-out-of-range", message)
         .bound(format!(
-            "mass numbers of {symbol} are taken from {z} to {largest}"
+            "Mass numbers of {symbol} are taken from {z} to {largest}."
         ));
     using(problem, without.trim())
 }
@@ -169,11 +167,35 @@ pub(super) fn oxidation_number(text: &str, piece: &Piece, numeral: &str) -> Prob
             "stage-in-parentheses",
             format!("({upper}) may be a charge of {value}+ or the spectrum {upper}."),
         )
-        .bound("a charge is written 2+, a spectrum II without parentheses");
+        .bound("A charge is written 2+, a spectrum II without parentheses.");
     using(
         using(problem, format!("{before} {value}+")),
         format!("{before} {upper}"),
     )
+}
+
+/// `Fe I II`: one species has one stage.
+pub(super) fn several_stages(text: &str, piece: &Piece) -> Problem {
+    let mut problem = piece
+        .problem(
+            "several-stages",
+            format!(
+                "“{}” is more than one word after the element.",
+                clipped(&piece.text)
+            ),
+        )
+        .bound("One Roman numeral or one charge follows the element.");
+    let before = piece.before(text);
+    for word in piece.text.split_whitespace().take(3) {
+        let numeral = word.to_ascii_uppercase();
+        let usual = roman_value(&numeral).and_then(roman);
+        let whole = format!("{before} {numeral}");
+        let known = problem.ways.iter().any(|way| way.replacement == whole);
+        if usual.as_deref() == Some(&numeral) && !known && super::species::parse(&whole).is_ok() {
+            problem = using(problem, whole);
+        }
+    }
+    using(problem, before)
 }
 
 pub(super) fn stage_not_roman(text: &str, piece: &Piece, usual: Option<String>) -> Problem {
@@ -182,7 +204,7 @@ pub(super) fn stage_not_roman(text: &str, piece: &Piece, usual: Option<String>) 
             "stage-not-roman",
             format!("“{}” is not a Roman numeral.", clipped(&piece.text)),
         )
-        .bound("I is the neutral atom, II has lost one electron, and so on");
+        .bound("I is the neutral atom, II has lost one electron, and so on.");
     let before = piece.before(text);
     let numerals = usual
         .into_iter()
@@ -199,7 +221,7 @@ pub(super) fn charge_unreadable(text: &str, piece: &Piece) -> Problem {
             "charge-unreadable",
             format!("“{}” is not a charge.", clipped(&piece.text)),
         )
-        .bound("a charge is written 2+, + or II");
+        .bound("A charge is written 2+, + or II.");
     let before = piece.before(text);
     using(using(problem, before), format!("{before} +"))
 }
@@ -216,7 +238,7 @@ pub(super) fn charge_without_sign(
             "charge-without-sign",
             format!("{} may be a charge or a spectrum.", clipped(digits)),
         )
-        .bound("a charge has a sign (2+), a spectrum a Roman numeral (II)");
+        .bound("A charge has a sign (2+), a spectrum a Roman numeral (II).");
     let most = element.map_or(0, u32::from);
     let value = digits.parse::<u32>().ok();
     if value.is_some_and(|value| (1..most).contains(&value)) {
@@ -238,7 +260,7 @@ pub(super) fn charge_out_of_range(text: &str, piece: &Piece, z: u8, charge: i64)
                 "charge-too-negative",
                 format!("{symbol} {typed} has more than one electron too many."),
             )
-            .bound("ions are counted down to a single negative charge");
+            .bound("Ions are counted down to a single negative charge.");
         return using(problem, format!("{before}-"));
     }
     let (code, message) = if charge == i64::from(z) {
@@ -254,8 +276,23 @@ pub(super) fn charge_out_of_range(text: &str, piece: &Piece, z: u8, charge: i64)
     };
     let highest = z.saturating_sub(1);
     let problem = piece.problem(code, message).bound(format!(
-        "{} has {z} electrons, so the highest charge with one left is {highest}+",
-        name(z).unwrap_or_default()
+        "{} has {}, so {} with one left is {}.",
+        capitalised(name(z).unwrap_or_default()),
+        if z == 1 {
+            "1 electron".to_string()
+        } else {
+            format!("{z} electrons")
+        },
+        if highest == 0 {
+            "the only stage"
+        } else {
+            "the highest charge"
+        },
+        if highest == 0 {
+            "the neutral atom".to_string()
+        } else {
+            format!("{highest}+")
+        }
     ));
     let problem = if highest > 0 {
         using(problem, format!("{before} {highest}+"))

@@ -231,6 +231,18 @@ impl<'a> Reader<'a> {
             .chars()
             .filter(|c| !"()^{} ".contains(*c))
             .collect();
+        if piece
+            .text
+            .split(' ')
+            .filter(|word| !word.is_empty())
+            .count()
+            > 1
+            && inner.chars().all(|c| c.is_ascii_alphabetic())
+        {
+            self.problems
+                .push(faults::several_stages(self.text, &piece));
+            return None;
+        }
         if !inner.is_empty() && inner.chars().all(|c| c.is_ascii_alphabetic()) {
             if bracketed && roman_value(&inner).is_some() {
                 self.problems
@@ -298,7 +310,7 @@ impl<'a> Reader<'a> {
     }
 }
 
-fn capitalised(word: &str) -> String {
+pub(super) fn capitalised(word: &str) -> String {
     let mut letters = word.chars();
     letters
         .next()

@@ -5,7 +5,7 @@ use super::orbital::{MAX_N, Orbital, Subshell, orbital_letter};
 use super::text::{LONGEST, is_separator};
 use super::written::WrittenSubshell;
 use crate::problem::Problem;
-use crate::quantity::signs::{clipped, shown};
+use crate::quantity::signs::{clipped, shown_all};
 
 /// One subshell of the text, as far as it could be read.
 pub(super) struct Item<'a> {
@@ -94,7 +94,7 @@ pub(super) fn size(text: &str) -> Option<Problem> {
             0,
             text.len(),
         )
-        .bound(format!("a configuration has at most {LONGEST} characters"));
+        .bound(format!("A configuration has at most {LONGEST} characters."));
         // The beginning that is within the bound, cut at a space.
         let kept: String = text.chars().take(LONGEST).collect();
         let kept = kept
@@ -116,7 +116,7 @@ pub(super) fn empty(text: &str) -> Problem {
         0,
         text.len(),
     )
-    .bound("at least one subshell, such as 3d6")
+    .bound("At least one subshell, such as 3d6.")
     .way("Use 1s", "1s")
 }
 
@@ -128,7 +128,7 @@ pub(super) fn number_alone(text: &str, start: usize, end: usize, digits: &str) -
         start,
         end,
     )
-    .bound("a subshell is n, a letter and the number of electrons: 3d6");
+    .bound("A subshell is n, a letter and the number of electrons: 3d6.");
     if let Some(n) = digits
         .parse::<u8>()
         .ok()
@@ -152,7 +152,9 @@ pub(super) fn n_out_of_range(
         start,
         end,
     )
-    .bound(format!("n is a whole number from 1 to {MAX_N}"));
+    .bound(format!(
+        "The principal quantum number n is a whole number from 1 to {MAX_N}."
+    ));
     let nearest = if digits.trim_matches('0').is_empty() {
         1
     } else {
@@ -178,7 +180,7 @@ pub(super) fn letter_unknown(item: &Item) -> Problem {
         item.letter_start,
         item.letter_end,
     )
-    .bound("letters s p d f g h i k l m n o q r t u v w x y z, then [21], [22] …");
+    .bound("The letters are s p d f g h i k l m n o q r t u v w x y z, then [21], [22] and so on.");
     let n = item.n.parse::<u8>().unwrap_or(0);
     let electrons = item.electrons.unwrap_or(1);
     for l in (0..n.min(4)).rev() {
@@ -211,7 +213,7 @@ pub(super) fn letter_capital(item: &Item) -> Problem {
         item.letter_start,
         item.letter_end,
     )
-    .bound("orbital letters are small: 3d6")
+    .bound("Orbital letters are small: 3d6.")
     .way(format!("Use {small}"), whole)
 }
 
@@ -223,7 +225,7 @@ pub(super) fn n_missing(item: &Item, l: u8) -> Problem {
         item.end,
     )
     .bound(format!(
-        "n is a whole number from {} to {MAX_N} before {}",
+        "Before {1}, n is a whole number from {0} to {MAX_N}.",
         l.saturating_add(1),
         item.letter
     ));
@@ -256,7 +258,7 @@ pub(super) fn l_not_below_n(item: &Item, n: u32, l: u8, electrons: u32) -> Probl
         item.letter_end,
     )
     .bound(format!(
-        "ℓ is less than n, and {letter} is ℓ = {l}, so n is at least {}",
+        "In every subshell ℓ is less than n; {letter} is ℓ = {l}, so n is at least {}.",
         u32::from(l) + 1
     ));
     let higher = (l < MAX_N).then(|| Orbital::new(l + 1, l)).flatten();
@@ -278,7 +280,7 @@ pub(super) fn no_electrons(item: &Item) -> Problem {
         item.start,
         item.end,
     )
-    .bound("a subshell that is named holds at least 1 electron");
+    .bound("A subshell that is named holds at least 1 electron.");
     let one = format!("{}{}", item.n, item.letter);
     if replaced(item.text, item.start, item.end, "").is_empty() {
         return item.way(problem, &one);
@@ -300,7 +302,7 @@ pub(super) fn over_capacity(item: &Item, orbital: Orbital, before: &[WrittenSubs
         item.end,
     )
     .bound(format!(
-        "{} {letter} subshell holds at most {capacity} electrons",
+        "{} {letter} subshell holds at most {capacity} electrons.",
         article(&letter)
     ));
     problem = item.way(problem, &format!("{orbital}{capacity}"));
@@ -332,7 +334,7 @@ pub(super) fn repeated(item: &Item, earlier: &WrittenSubshell, again: Subshell) 
         item.start,
         item.end,
     )
-    .bound("each subshell is named once");
+    .bound("Each subshell is named once.");
     let without = replaced(item.text, item.start, item.end, "");
     // The earlier place is still the same in the shortened text: only what follows it moved. What
     // was trimmed at the beginning shifts both.
@@ -362,11 +364,11 @@ pub(super) fn repeated(item: &Item, earlier: &WrittenSubshell, again: Subshell) 
 pub(super) fn negative(text: &str, item: usize, minus: usize, end: usize, digits: &str) -> Problem {
     let problem = Problem::new(
         "occupation-negative",
-        format!("The number of electrons cannot be -{}.", clipped(digits)),
+        format!("The number of electrons cannot be −{}.", clipped(digits)),
         minus,
         end,
     )
-    .bound("a subshell that is named holds at least 1 electron");
+    .bound("A subshell that is named holds at least 1 electron.");
     let orbital = text.get(item..minus).unwrap_or("");
     let problem = way(
         problem,
@@ -395,7 +397,7 @@ pub(super) fn fractional(
         item,
         end,
     )
-    .bound("electrons are counted in whole numbers");
+    .bound("Electrons are counted in whole numbers.");
     let problem = way(problem, text, item, end, whole);
     let digits = whole.len() - whole.trim_end_matches(|c: char| c.is_ascii_digit()).len();
     match (whole.get(..whole.len() - digits), electrons.checked_add(1)) {
@@ -411,11 +413,7 @@ pub(super) fn unexpected(text: &str, start: usize, end: usize) -> Problem {
     let words = if run.starts_with('(') {
         format!("“{}”", clipped(run))
     } else {
-        run.chars()
-            .take(3)
-            .map(shown)
-            .collect::<Vec<_>>()
-            .join(", ")
+        shown_all(run)
     };
     let problem = Problem::new(
         "unexpected-character",
@@ -423,15 +421,15 @@ pub(super) fn unexpected(text: &str, start: usize, end: usize) -> Problem {
         start,
         end,
     )
-    .bound("subshells such as 3d6, a core such as [Ar], spaces or points between them");
+    .bound("It is made of subshells such as 3d6, a core such as [Ar], and spaces or points between them.");
     way(problem, text, start, end, "")
 }
 
 fn article(letter: &str) -> &'static str {
     // Spoken letters that begin with a vowel: s, f, h, i, l, m, n, o, r, x.
     if letter.starts_with(['s', 'f', 'h', 'i', 'l', 'm', 'n', 'o', 'r', 'x']) {
-        "an"
+        "An"
     } else {
-        "a"
+        "A"
     }
 }

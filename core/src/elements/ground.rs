@@ -96,10 +96,10 @@ impl ObservedGround {
     /// The source to be shown beside the entry.
     pub fn source(&self) -> String {
         if self.references.is_empty() {
-            "mendeleev 1.3.0 (MIT), table of elements".to_string()
+            "table of elements (see Sources under Settings)".to_string()
         } else {
             format!(
-                "mendeleev 1.3.0 (MIT), reference {}",
+                "table of ground levels, reference {} (see Sources under Settings)",
                 self.references.join(", ")
             )
         }
@@ -195,7 +195,7 @@ mod tests {
         assert_eq!(iron.status, Status::Measured);
         assert!(
             iron.source()
-                .starts_with("mendeleev 1.3.0 (MIT), reference ")
+                .starts_with("table of ground levels, reference ")
         );
     }
 

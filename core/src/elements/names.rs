@@ -86,7 +86,7 @@ pub fn by_name(name: &str) -> Option<u8> {
 
 /// Up to `most` elements whose symbol or name is nearest to a text, nearest first.
 ///
-/// Distance: insertions, deletions and replacements of letters, in any case; names further than a
+/// Distance: insertions, deletions, replacements and exchanges of letters, in any case; names further than a
 /// third of their length away are left out, symbols further than one letter.
 pub fn nearest(text: &str, most: usize) -> Vec<u8> {
     let wanted: Vec<char> = text.chars().take(24).flat_map(char::to_lowercase).collect();
@@ -128,22 +128,29 @@ fn position(test: impl Fn(&(&str, &str)) -> bool) -> Option<u8> {
         .and_then(|i| u8::try_from(i + 1).ok())
 }
 
-/// Levenshtein distance between letters and a name.
+/// Distance between letters and a name: insertions, deletions, replacements and exchanges of
+/// neighbours (Damerau 1964, each letter changed once).
 fn distance(wanted: &[char], name: &str) -> usize {
     let name: Vec<char> = name.chars().map(|c| c.to_ascii_lowercase()).collect();
     let mut row: Vec<usize> = (0..=name.len()).collect();
+    let mut two_above = row.clone();
     for (i, &a) in wanted.iter().enumerate() {
-        let mut previous = i;
+        let above = row.clone();
+        let letter_before = i.checked_sub(1).and_then(|before| wanted.get(before));
         let mut left = i + 1;
-        for (cell, &b) in row.iter_mut().skip(1).zip(&name) {
-            let replaced = previous + usize::from(a != b);
-            previous = *cell;
-            left = replaced.min(previous + 1).min(left + 1);
-            *cell = left;
+        let mut new = vec![left];
+        for (j, &b) in name.iter().enumerate() {
+            let at = |row: &[usize], column: usize| row.get(column).copied().unwrap_or(usize::MAX);
+            let replaced = at(&above, j) + usize::from(a != b);
+            left = replaced.min(at(&above, j + 1) + 1).min(left + 1);
+            let name_before = j.checked_sub(1).and_then(|before| name.get(before));
+            if letter_before == Some(&b) && name_before == Some(&a) {
+                left = left.min(at(&two_above, j - 1) + 1);
+            }
+            new.push(left);
         }
-        if let Some(first) = row.first_mut() {
-            *first = i + 1;
-        }
+        two_above = above;
+        row = new;
     }
     row.last().copied().unwrap_or(wanted.len())
 }
@@ -176,6 +183,9 @@ mod tests {
     #[test]
     fn slips_find_their_element() {
         assert_eq!(nearest("irn", 1), [26]);
+        assert_eq!(nearest("Iorn", 1), [26]);
+        assert_eq!(nearest("tin", 1), [50]);
+        assert_eq!(distance(&"iorn".chars().collect::<Vec<_>>(), "iron"), 1);
         assert_eq!(nearest("sodum", 1), [11]);
         assert!(nearest("Xx", 5).contains(&54));
         assert!(nearest("qqqqqqqq", 5).is_empty());

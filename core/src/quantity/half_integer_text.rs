@@ -43,7 +43,7 @@ pub fn half_integer(text: &str) -> Result<TwiceJ, Problem> {
             end,
         )
         .bound(format!(
-            "angular momenta are taken from -{MAX_ANGULAR_MOMENTUM} to {MAX_ANGULAR_MOMENTUM}"
+            "Angular momenta are taken from −{MAX_ANGULAR_MOMENTUM} to {MAX_ANGULAR_MOMENTUM}."
         ))
         .way("Use 1/2", "1/2"));
     }
@@ -53,7 +53,7 @@ pub fn half_integer(text: &str) -> Result<TwiceJ, Problem> {
         start,
         end,
     )
-    .bound("angular momenta are multiples of 1/2, such as 2 or 7/2");
+    .bound("Angular momenta are multiples of 1/2, such as 2 or 7/2.");
     let meant = match rest
         .strip_prefix('/')
         .and_then(|below| below.trim().parse::<u16>().ok())

@@ -88,7 +88,7 @@ pub(super) fn sized(text: &str, what: &str) -> Option<Problem> {
             0,
             text.len(),
         )
-        .bound(format!("a value has at most {LONGEST} characters"));
+        .bound(format!("A value has at most {LONGEST} characters."));
         let kept: String = text.chars().take(LONGEST).collect();
         return Some(problem.way("Keep the beginning", kept.trim()));
     }
@@ -127,7 +127,7 @@ pub(super) fn leading(text: &str) -> Result<Leading, Problem> {
             start,
             end,
         )
-        .bound("a number such as 589.592, 0,5 or 3e-2")
+        .bound("It begins with a number such as 589.592, 0,5 or 3e-2.")
         .way("Use 1", with(text, start, end, "1")));
     }
     let (whole, fraction) = mantissa.parts(text, place)?;
@@ -150,7 +150,7 @@ pub(super) fn leading(text: &str) -> Result<Leading, Problem> {
             start,
             end,
         )
-        .bound("numbers reach from about 1e-308 to 1e308")
+        .bound("Numbers reach from about 10⁻³⁰⁸ to 10³⁰⁸.")
         .way(format!("Use {near}"), with(text, start, end, near)));
     }
     let uncertainty = uncertainty.map(|digits| {
@@ -194,7 +194,7 @@ pub fn number(text: &str) -> Result<f64, Problem> {
         start,
         end,
     )
-    .bound("a pure number without a unit")
+    .bound("It is a pure number without a unit.")
     .way(format!("Use {kept}"), kept))
 }
 
@@ -251,7 +251,9 @@ impl Mantissa {
                 format!("{typed} has more than one decimal point.")
             };
             return Err(Problem::new("decimal-mark-repeated", message, start, end)
-                .bound("one decimal mark, point or comma; digits are grouped by spaces only")
+                .bound(
+                    "There is one decimal mark, point or comma; digits are grouped by spaces only.",
+                )
                 .way(format!("Use {meant}"), with(text, start, end, &meant)));
         }
         let split = self
@@ -276,7 +278,7 @@ impl Mantissa {
                 start,
                 end,
             )
-            .bound("spaces group digits by threes, counted from the decimal mark")
+            .bound("Spaces group digits by threes, counted from the decimal mark.")
             .way(format!("Use {meant}"), with(text, start, end, &meant)));
         }
         Ok((whole, fraction))

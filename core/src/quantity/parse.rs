@@ -3,7 +3,7 @@
 pub use super::half_integer_text::half_integer;
 pub use super::number::number;
 use super::number::{leading, sized, with};
-use super::signs::clipped;
+use super::signs::{clipped, typeset};
 use super::unit::{Dimension, Unit, normalised};
 use crate::problem::Problem;
 
@@ -33,7 +33,7 @@ pub fn quantity(text: &str, dimension: Dimension) -> Result<Quantity, Problem> {
     if let Some(problem) = sized(text, dimension.name()) {
         return Err(usual_values(problem, dimension));
     }
-    let number = leading(text)?;
+    let number = leading(text).map_err(|problem| keep_unit(problem, text, dimension))?;
     let rest = text.get(number.end..).unwrap_or("");
     let spelling = rest.trim();
     let end = text.trim_end().len();
@@ -71,17 +71,49 @@ pub fn quantity(text: &str, dimension: Dimension) -> Result<Quantity, Problem> {
     })
 }
 
-/// Ways out of an empty field: 1 of each usual unit.
+/// Ways out of an empty field: a usual value.
 fn usual_values(problem: Problem, dimension: Dimension) -> Problem {
-    let mut problem = problem.bound(bound_text(dimension));
-    if dimension.units().is_empty() {
-        return problem.way("Use 1", "1");
+    let usual = dimension.usual();
+    problem
+        .bound(bound_text(dimension))
+        .way(format!("Use {usual}"), usual)
+}
+
+/// Ways out of a number that cannot be read or counted: a bare number would lack its unit, so each
+/// is a whole quantity. A fraction sign is its decimal, a typed unit is kept.
+fn keep_unit(mut problem: Problem, text: &str, dimension: Dimension) -> Problem {
+    if !matches!(problem.code, "number-missing" | "number-out-of-range") {
+        return problem;
     }
-    for unit in dimension.units().iter().take(2) {
-        problem = problem.way(
-            format!("Use 1 {}", unit.symbol),
-            format!("1 {}", unit.symbol),
-        );
+    problem.ways.clear();
+    let typed = text.trim();
+    let fraction = typed.chars().next().and_then(|c| match c {
+        '½' => Some("0.5"),
+        '¼' => Some("0.25"),
+        '¾' => Some("0.75"),
+        _ => None,
+    });
+    let after_fraction = typed.chars().next().map_or(0, char::len_utf8);
+    let spelling = match fraction {
+        Some(_) => typed.get(after_fraction..).unwrap_or("").trim(),
+        None => typed.split_whitespace().next_back().unwrap_or(""),
+    };
+    let number = fraction.unwrap_or("1");
+    let usual = dimension.usual();
+    // What follows characters that do not belong here: `🙂0.5 T`.
+    let tail = typed
+        .find(|c: char| c.is_ascii_digit())
+        .filter(|_| problem.code == "number-missing")
+        .and_then(|digit| typed.get(digit..))
+        .map(str::to_string);
+    let kept = dimension
+        .unit(spelling)
+        .map(|unit| format!("{number} {}", unit.symbol));
+    for whole in tail.into_iter().chain(kept).chain([usual.to_string()]) {
+        let known = problem.ways.iter().any(|way| way.replacement == whole);
+        if !known && quantity(&whole, dimension).is_ok() {
+            problem = problem.way(format!("Use {whole}"), whole);
+        }
     }
     problem
 }
@@ -93,7 +125,7 @@ fn usual_units(dimension: Dimension) -> String {
         .take(5)
         .map(|unit| unit.symbol)
         .collect();
-    format!("units of {}: {}", dimension.name(), symbols.join(", "))
+    format!("Units of {}: {}.", dimension.name(), symbols.join(", "))
 }
 
 fn with_units(mut problem: Problem, dimension: Dimension, digits: &str) -> Problem {
@@ -134,7 +166,7 @@ fn unit_not_wanted(
         start,
         end,
     )
-    .bound("a pure number without a unit")
+    .bound("It is a pure number without a unit.")
     .way(format!("Use {}", clipped(digits)), digits)
 }
 
@@ -162,7 +194,7 @@ fn unit_wrong(
                 "unit-of-another-quantity",
                 format!(
                     "{name} is a unit of {}, not of {}.",
-                    other.name(),
+                    called(other, unit),
                     dimension.name()
                 ),
                 start,
@@ -186,6 +218,15 @@ fn unit_wrong(
         problem = problem.way(format!("Use {}", clipped(&whole)), whole);
     }
     with_units(problem, dimension, digits)
+}
+
+/// What a unit of another quantity measures: energies are also typed as frequency or wavenumber.
+fn called(dimension: Dimension, unit: Unit) -> &'static str {
+    let spectral = unit.symbol.contains("Hz") || unit.symbol.ends_with("m-1");
+    match dimension {
+        Dimension::Wavenumber if spectral => "a frequency or wavenumber",
+        other => other.name(),
+    }
 }
 
 /// The vacuum wavelength of a wavenumber and the other way round: σ(cm⁻¹) = 10⁷/λ(nm).
@@ -249,10 +290,10 @@ fn bound_text(dimension: Dimension) -> String {
     let unit = dimension.own_unit();
     let gap = if unit.is_empty() { "" } else { " " };
     format!(
-        "{} is taken from {} to {}{gap}{unit}",
-        with_article(dimension),
-        plain(lowest),
-        plain(highest)
+        "{} is taken from {} to {}{gap}{unit}.",
+        capitalised(&with_article(dimension)),
+        typeset(lowest),
+        typeset(highest)
     )
 }
 
@@ -291,7 +332,11 @@ fn within(
         end,
     )
     .bound(bound_text(dimension))
-    .way(format!("Use {nearest}"), with(text, start, end, &nearest)))
+    .way(format!("Use {nearest}"), with(text, start, end, &nearest))
+    .way(
+        format!("Use {}", dimension.usual()),
+        with(text, start, end, dimension.usual()),
+    ))
 }
 
 #[cfg(test)]
@@ -362,7 +407,35 @@ mod tests {
                 Dimension::FluxDensity,
                 "number-missing",
                 (0, 9),
-                "1",
+                "0.5 T",
+            ),
+            (
+                "NaN T",
+                Dimension::FluxDensity,
+                "number-missing",
+                (0, 5),
+                "1 T",
+            ),
+            (
+                "½ T",
+                Dimension::FluxDensity,
+                "number-missing",
+                (0, 4),
+                "0.5 T",
+            ),
+            (
+                "1e400 T",
+                Dimension::FluxDensity,
+                "number-out-of-range",
+                (0, 5),
+                "1 T",
+            ),
+            (
+                "yellow",
+                Dimension::Wavelength,
+                "number-missing",
+                (0, 6),
+                "589.592 nm",
             ),
             (
                 "0.5 🙂",

@@ -50,6 +50,54 @@ pub fn shown(c: char) -> String {
     }
 }
 
+/// The characters of a run in words: all of them up to eight different ones, else how many.
+pub fn shown_all(run: &str) -> String {
+    let mut different: Vec<char> = Vec::new();
+    for c in run.chars() {
+        if different.len() <= 8 && !different.contains(&c) {
+            different.push(c);
+        }
+    }
+    if different.len() > 8 {
+        return format!("“{}” ({} characters)", clipped(run), run.chars().count());
+    }
+    different
+        .into_iter()
+        .map(shown)
+        .collect::<Vec<_>>()
+        .join(", ")
+}
+
+/// A number as it is set in a sentence: `−360`, `10⁻⁶`, `2.5 × 10⁹`.
+pub fn typeset(value: f64) -> String {
+    let size = value.abs();
+    let sign = if value < 0.0 { "\u{2212}" } else { "" };
+    if size == 0.0 || (1e-4..1e6).contains(&size) {
+        return format!("{sign}{size}");
+    }
+    let scientific = format!("{size:e}");
+    let Some((mantissa, exponent)) = scientific.split_once('e') else {
+        return format!("{sign}{scientific}");
+    };
+    let raised: String = exponent.chars().map(raised).collect();
+    match mantissa {
+        "1" => format!("{sign}10{raised}"),
+        _ => format!("{sign}{mantissa} × 10{raised}"),
+    }
+}
+
+/// The superscript of a digit or sign.
+fn raised(c: char) -> char {
+    match c {
+        '1' => '¹',
+        '2' => '²',
+        '3' => '³',
+        '0' | '4'..='9' => char::from_u32(0x2070 + c.to_digit(10).unwrap_or(0)).unwrap_or(c),
+        '-' => '⁻',
+        _ => c,
+    }
+}
+
 /// A typed text for a message: at most 40 characters, invisible ones as �.
 pub fn clipped(text: &str) -> String {
     let visible = |c: char| if is_invisible(c) { '\u{FFFD}' } else { c };
@@ -57,5 +105,31 @@ pub fn clipped(text: &str) -> String {
         text.chars().map(visible).collect()
     } else {
         text.chars().take(36).map(visible).chain(['…']).collect()
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn numbers_are_set_as_in_a_sentence() {
+        for (value, text) in [
+            (-1.0, "−1"),
+            (0.0, "0"),
+            (1e9, "10⁹"),
+            (-2.5e10, "−2.5 × 10¹⁰"),
+            (1e-6, "10⁻⁶"),
+            (500.0, "500"),
+        ] {
+            assert_eq!(typeset(value), text);
+        }
+    }
+
+    #[test]
+    fn every_character_of_a_run_is_told() {
+        assert_eq!(shown_all("שלום"), "“ש”, “ל”, “ו”, “ם”");
+        assert_eq!(shown_all("aaa"), "“a”");
+        assert_eq!(shown_all("абвгдежзик"), "“абвгдежзик” (10 characters)");
     }
 }

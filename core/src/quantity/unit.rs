@@ -323,6 +323,30 @@ impl Dimension {
         }
     }
 
+    /// A value of everyday size, as it may be typed: what a way out offers in place of a text that
+    /// cannot be read.
+    pub fn usual(self) -> &'static str {
+        match self {
+            Dimension::Wavelength => "589.592 nm",
+            Dimension::Wavenumber => "16956.17 cm-1",
+            Dimension::Frequency => "100 MHz",
+            Dimension::FluxDensity => "0.5 T",
+            Dimension::Temperature => "1200 K",
+            Dimension::Pressure => "101325 Pa",
+            Dimension::Angle => "60 deg",
+            Dimension::ColumnDensity => "1e15 m-2",
+            Dimension::Mass => "23 u",
+            Dimension::Polarisability => "1 a0^3",
+            Dimension::Radius => "1 a0",
+            Dimension::RadialIntegral => "1 a0",
+            Dimension::RadialIntegralSquared => "1 a0^2",
+            Dimension::Length => "1 m",
+            Dimension::GrooveDensity => "1200 mm-1",
+            Dimension::ResolvingPower => "50000",
+            Dimension::Number => "1",
+        }
+    }
+
     /// What it is called in a sentence.
     pub fn name(self) -> &'static str {
         self.description().name
@@ -381,6 +405,8 @@ mod tests {
     #[test]
     fn every_spelling_names_one_unit() {
         for dimension in Dimension::ALL {
+            let usual = crate::quantity::quantity(dimension.usual(), dimension);
+            assert!(usual.is_ok(), "{dimension:?}: {usual:?}");
             let mut seen: Vec<String> = Vec::new();
             for unit in dimension.units() {
                 for spelling in std::iter::once(&unit.symbol).chain(unit.spellings) {
