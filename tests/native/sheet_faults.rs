@@ -67,6 +67,12 @@ fn what_nobody_should_type_is_a_plain_fault_with_a_way_out() {
         assert!(!faults.is_empty(), "{text} is taken without a word");
         for fault in &faults {
             assert!(fault.message.ends_with('.'), "{text}: {}", fault.message);
+            if let Some(bound) = &fault.bound {
+                assert!(
+                    !bound.starts_with(char::is_lowercase) && bound.ends_with('.'),
+                    "{text}: {bound}"
+                );
+            }
             assert!(
                 fault.bound.is_some() || !fault.ways.is_empty(),
                 "{text}: neither bound nor way out"
@@ -240,6 +246,78 @@ fn no_text_in_any_field_panics() {
             let answer: Value = serde_json::from_str(&sheet::answer_message(&json, question))
                 .expect("an answer is JSON");
             assert!(answer.get("answer").is_some() || answer.get("faults").is_some());
+        }
+    }
+}
+
+/// Every bound is a sentence, and every way out of these slips leads to a sheet that is read or to
+/// another fault with a way out of its own.
+#[test]
+fn bounds_are_sentences_and_ways_lead_on() {
+    let with = |key: &str, text: &str| {
+        let mut sheet = json!({
+            "rungline": 1, "species": "Na I", "configurations": ["3s", "3p"],
+            "field": {"flux_density": "0.5 T", "view": "across"},
+            "line": {"upper": "3p 2P3/2", "lower": "3s 2S1/2", "wavelength": "589.592 nm"},
+            "instrument": {"resolving_power": 50000}, "nucleus": {"spin": "3/2"},
+        });
+        *sheet.pointer_mut(key).unwrap() = text.into();
+        sheet
+    };
+    let read = |sheet: &serde_json::Value| {
+        Document::read(&serde_json::from_value(sheet.clone()).unwrap()).faults
+    };
+    assert_eq!(read(&with("/species", "Na I")), []);
+    for (key, texts) in [
+        (
+            "/species",
+            &["Ti II", "Fe I II", "Iorn", "H+", "שלום", "Fe 99+", "Fe3-"][..],
+        ),
+        (
+            "/configurations/1",
+            &["3s", "2p7", "", "n=5", "2p", "4f3 5d", "[Ne] 3d 3s"][..],
+        ),
+        (
+            "/field/flux_density",
+            &[
+                "NaN T", "½ T", "1e400 T", "strong", "0.5", "0.5 nm", "-1 T", "1e9 T",
+            ][..],
+        ),
+        (
+            "/field/view",
+            &["sideways", "Acros", "400 deg", "60", "60 T"][..],
+        ),
+        (
+            "/line/upper",
+            &[
+                "3p²P3/2", "3p 2p3/2", "2P3/2", "3d 2D5/2", "3p 2D5/2", "3s 2S1/2", "3p 2P", "x",
+            ][..],
+        ),
+        (
+            "/line/wavelength",
+            &["NaN", "THz", "500 THz", "16956 cm-1", "-1 nm"][..],
+        ),
+        ("/nucleus/spin", &["x", "7/4", "900"][..]),
+    ] {
+        for text in texts {
+            for fault in read(&with(key, text)) {
+                let bound = fault.bound.as_deref().unwrap_or("None.");
+                assert!(
+                    !bound.starts_with(char::is_lowercase) && bound.ends_with('.'),
+                    "{key} {text}: {bound}"
+                );
+                for way in &fault.ways {
+                    let changed = with(&fault.path, &way.replacement);
+                    let after = read(&changed);
+                    assert!(
+                        after
+                            .iter()
+                            .all(|f| f.path != fault.path || !f.ways.is_empty()),
+                        "{key} {text} → {}: {after:?}",
+                        way.replacement
+                    );
+                }
+            }
         }
     }
 }

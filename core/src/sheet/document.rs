@@ -225,10 +225,10 @@ impl Document {
             .get("view")
             .and_then(Json::as_text)
             .unwrap_or("across");
-        let angle_degrees = match view {
-            "along" => Some(0.0),
-            "across" => Some(90.0),
-            other => quantity::quantity(other, Dimension::Angle)
+        let angle_degrees = match schema::choice(view, &schema::VIEWS) {
+            Some("along") => Some(0.0),
+            Some(_) => Some(90.0),
+            None => quantity::quantity(view, Dimension::Angle)
                 .ok()
                 .map(|q| q.value),
         };
@@ -270,7 +270,8 @@ impl Document {
                     0,
                     text.len(),
                 )
-                .bound("From 0.001 nm to 1 m.");
+                .bound("From 0.001 nm to 1 m.")
+                .way("Use 589.592 nm", "589.592 nm");
                 self.add(vec![problem], text, "/line/wavelength");
             }
         }
@@ -285,7 +286,12 @@ impl Document {
             };
             match self.level(text) {
                 Ok(level) => *end = level,
-                Err(problems) => self.add(problems, text, &format!("/line/{key}")),
+                Err(problems) => {
+                    let problems = problems
+                        .into_iter()
+                        .map(|p| p.way("Leave the line out", ""));
+                    self.add(problems.collect(), text, &format!("/line/{key}"));
+                }
             }
         }
         if let [Some(upper), Some(lower)] = ends {
@@ -294,13 +300,17 @@ impl Document {
                     .get("upper")
                     .and_then(Json::as_text)
                     .unwrap_or_default();
-                let problem = Problem::new(
+                let mut problem = Problem::new(
                     "line-without-change",
                     "Upper and lower level are the same.",
                     0,
                     text.len(),
                 )
                 .bound("A line joins two different levels.");
+                for name in self.other_ends(&lower) {
+                    problem = problem.way(format!("Use {name}"), name);
+                }
+                problem = problem.way("Leave the line out", "");
                 self.add(vec![problem], text, "/line/upper");
             } else {
                 self.line = Some((upper, lower));
@@ -337,9 +347,13 @@ impl Document {
                 // The fault stands in the key, whose characters are not those of the value.
                 (Err(problems), _) => {
                     self.faults.extend(
-                        problems
-                            .into_iter()
-                            .map(|p| p.in_utf16(name).at(path.clone())),
+                        // A way out replaces the value, and the fault is in its name.
+                        problems.into_iter().map(|mut p| {
+                            p.ways.clear();
+                            p.way("Leave this value out", "")
+                                .in_utf16(name)
+                                .at(path.clone())
+                        }),
                     );
                 }
             }

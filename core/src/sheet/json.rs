@@ -7,6 +7,7 @@ use std::fmt;
 use serde::de::{self, Deserialize, Deserializer, MapAccess, SeqAccess, Visitor};
 use serde::ser::{Serialize, SerializeMap, SerializeSeq, Serializer};
 
+use super::json_repair::repaired;
 use crate::problem::Problem;
 
 /// The largest sheet that is read, in bytes of UTF-8.
@@ -14,6 +15,12 @@ pub const MAX_SHEET_BYTES: usize = 5_000_000;
 
 /// The largest record that is read: it holds the answers too.
 pub const MAX_BYTES: usize = 40_000_000;
+
+/// The longest corrected text that a way out carries.
+pub const MAX_REPAIRED_BYTES: usize = 100_000;
+
+/// The text of a sheet with nothing in it.
+pub const EMPTY_SHEET: &str = "{\"rungline\": 1}";
 
 /// A JSON value with its keys in the order of the text.
 #[derive(Clone, Debug, PartialEq)]
@@ -178,7 +185,7 @@ pub fn read(text: &str) -> Result<Json, Problem> {
     if text.trim().is_empty() {
         return Err(Problem::new("file-empty", "This file is empty.", 0, 0)
             .bound("A sheet is a JSON object with at least \"rungline\": 1.")
-            .way("Start an empty sheet", "{\"rungline\": 1}"));
+            .way("Start an empty sheet", EMPTY_SHEET));
     }
     let json: Json = serde_json::from_str(text).map_err(|error| explain(text, &error))?;
     let is_record = json.get("sheet").is_some() && json.get("answers").is_some();
@@ -217,44 +224,97 @@ fn explain(text: &str, error: &serde_json::Error) -> Problem {
     } else {
         end.saturating_sub(1)
     };
-    let place = format!("line {}, column {}", error.line(), error.column());
     let words = error.to_string();
     let problem = if error.is_eof() {
-        Problem::new(
-            "file-truncated",
-            format!("The file ends too early, at {place}."),
-            start,
-            end,
-        )
-        .bound("Every bracket and quotation mark that opens must close.")
+        Problem::new("file-truncated", "The file ends too early.", start, end)
+            .bound("Every bracket and quotation mark that opens must close.")
     } else if words.starts_with("recursion limit") {
-        Problem::new(
-            "nesting-too-deep",
-            format!("The nesting goes too deep at {place}."),
-            start,
-            end,
-        )
-        .bound("A sheet is nested at most 127 deep.")
+        Problem::new("nesting-too-deep", "The nesting goes too deep.", start, end)
+            .bound("A sheet is nested at most 127 deep.")
     } else if let Some(key) = words.strip_prefix("repeated key ") {
         let key = key.split(" at line").next().unwrap_or(key);
         Problem::new(
             "key-repeated",
-            format!("The key {key} stands twice, the second time before {place}."),
+            format!("The key {key} stands twice, the second time before this place."),
             start,
             end,
         )
         .bound("Each key stands at most once in its group.")
     } else {
-        let reason = words.split(" at line").next().unwrap_or(&words).to_owned();
         Problem::new(
             "not-json",
-            format!("This is not valid JSON at {place}: {reason}."),
+            format!("This is not valid JSON: {}.", reason(&words)),
             start,
             end,
         )
         .bound("A sheet is one JSON object.")
     };
-    problem.in_utf16(text)
+    let problem = match repaired(text, error) {
+        Some((label, whole)) => problem.way(label, whole),
+        None => problem,
+    };
+    problem
+        .way("Start an empty sheet", EMPTY_SHEET)
+        .in_utf16(text)
+}
+
+/// The reader's own words on a fault of the syntax in plain ones.
+fn reason(words: &str) -> &'static str {
+    const REASONS: [(&str, &str); 16] = [
+        ("expected value", "a value is missing here"),
+        (
+            "expected `,` or `}`",
+            "a comma or a closing brace is missing",
+        ),
+        (
+            "expected `,` or `]`",
+            "a comma or a closing bracket is missing",
+        ),
+        ("expected `:`", "a colon is missing after the key"),
+        (
+            "trailing comma",
+            "a comma stands before the closing bracket",
+        ),
+        (
+            "trailing characters",
+            "something follows the end of the sheet",
+        ),
+        (
+            "key must be a string",
+            "a key must stand in quotation marks",
+        ),
+        ("expected ident", "this is neither true, false nor null"),
+        (
+            "invalid escape",
+            "\\ is followed by a letter that has no meaning there",
+        ),
+        (
+            "unexpected end of hex escape",
+            "\\u is not followed by four hexadecimal digits",
+        ),
+        ("lone leading surrogate", "half of a \\u pair stands alone"),
+        (
+            "control character",
+            "a line break, tab or control character stands inside a text",
+        ),
+        ("invalid number", "this is no number as JSON writes it"),
+        (
+            "number out of range",
+            "this number is too large to be counted",
+        ),
+        (
+            "a number that is not finite",
+            "this number is too large to be counted",
+        ),
+        ("invalid unicode code point", "\\u names no character"),
+    ];
+    REASONS
+        .iter()
+        .find(|(theirs, _)| words.starts_with(theirs))
+        .map_or(
+            "a value or sign stands where none is expected",
+            |(_, plain)| plain,
+        )
 }
 
 #[cfg(test)]
@@ -283,6 +343,57 @@ mod tests {
         assert_eq!(code("{\"a\":1e999}"), "not-json");
         assert_eq!(code(&"[".repeat(100_000)), "nesting-too-deep");
         assert_eq!(code(&" ".repeat(MAX_BYTES + 1)), "sheet-too-large");
+    }
+
+    #[test]
+    fn faults_of_the_syntax_are_plain_and_lead_out() {
+        for (text, words, whole) in [
+            (
+                r#"{"rungline":1,}"#,
+                "comma stands before",
+                r#"{"rungline":1}"#,
+            ),
+            (r#"{"rungline":1"#, "ends too early", r#"{"rungline":1}"#),
+            (
+                r#"{"rungline":1,"title":"a"#,
+                "ends too early",
+                r#"{"rungline":1,"title":"a"}"#,
+            ),
+            (
+                r#"{"rungline":1} x"#,
+                "follows the end",
+                r#"{"rungline":1}"#,
+            ),
+            (
+                r#"{"rungline":1 "title":"a"}"#,
+                "comma or a closing brace",
+                r#"{"rungline":1, "title":"a"}"#,
+            ),
+            (
+                r#"{"configurations":["3s" "3p"]}"#,
+                "closing bracket",
+                r#"{"configurations":["3s", "3p"]}"#,
+            ),
+            (r#"{"rungline":01}"#, "no number", EMPTY_SHEET),
+            (r#"{"rungline":}"#, "value is missing", EMPTY_SHEET),
+            (r#"{rungline:1}"#, "quotation marks", EMPTY_SHEET),
+            (r#"{"a":"\q"}"#, "no meaning", EMPTY_SHEET),
+            (r#"{"a":"\ud800"}"#, "", EMPTY_SHEET),
+            ("{\"a\":\"\t\"}", "control character", EMPTY_SHEET),
+            (r#"{"a":1,"a":2}"#, "twice", EMPTY_SHEET),
+        ] {
+            let problem = read(text).unwrap_err();
+            assert!(
+                problem.message.contains(words),
+                "{text}: {}",
+                problem.message
+            );
+            assert!(!problem.message.contains("line 1"), "{}", problem.message);
+            assert_eq!(problem.ways[0].replacement, whole, "{text}");
+            for way in &problem.ways {
+                assert!(read(&way.replacement).is_ok(), "{text}: {way:?}");
+            }
+        }
     }
 
     #[test]

@@ -17,6 +17,9 @@ impl Document {
         {
             return Ok(None);
         }
+        if parsed.configuration.is_empty() {
+            return Err(vec![self.without_configuration(text, &parsed.level)]);
+        }
         let written = match configuration::parse(parsed.configuration) {
             Ok(written) => written,
             Err(problems) => {
@@ -25,7 +28,9 @@ impl Document {
                     .map(|mut p| {
                         p.start += parsed.configuration_start;
                         p.end += parsed.configuration_start;
-                        p.ways.clear();
+                        for way in &mut p.ways {
+                            way.replacement = label::format(&way.replacement, &parsed.level);
+                        }
                         p
                     })
                     .collect());
@@ -47,8 +52,8 @@ impl Document {
                 end,
             )
             .bound(format!("Its configurations: {}.", self.labels().join(", ")));
-            for other in self.labels().into_iter().take(3) {
-                problem = problem.way(format!("Use {other}"), label::format(&other, &parsed.level));
+            for name in self.names_of(&parsed.level) {
+                problem = problem.way(format!("Use {name}"), name);
             }
             return Err(vec![problem]);
         };
@@ -86,32 +91,103 @@ impl Document {
                     .take(12)
                     .map(|t| t.term.to_string())
                     .collect();
-                problem.bound(format!("Its terms: {}.", known.join(", ")))
+                let mut names = self.names_of(&parsed.level);
+                names.extend(
+                    self.levels(entry, 3)
+                        .iter()
+                        .map(|level| label::format(&name, level)),
+                );
+                names.truncate(4);
+                names.into_iter().fold(
+                    problem.bound(format!("Its terms: {}.", known.join(", "))),
+                    |problem, name| problem.way(format!("Use {name}"), name),
+                )
             }
-            1 => problem.way(
-                "Leave the number out",
-                label::format(
-                    &name,
-                    &Level {
-                        index: None,
-                        ..parsed.level
-                    },
-                ),
-            ),
-            _ => problem
-                .bound(format!("Write #1 to #{times} behind it."))
+            1 => problem
+                .bound("A number stands only behind a repeated term.")
                 .way(
-                    "Use number 1",
+                    "Leave the number out",
                     label::format(
                         &name,
                         &Level {
-                            index: Some(1),
+                            index: None,
                             ..parsed.level
                         },
                     ),
                 ),
+            _ => (1..=times.min(3)).fold(
+                problem.bound(format!("Write #1 to #{times} behind it.")),
+                |problem, index| {
+                    let level = Level {
+                        index: Some(index),
+                        ..parsed.level
+                    };
+                    problem.way(format!("Use #{index}"), label::format(&name, &level))
+                },
+            ),
         };
         Err(vec![problem])
+    }
+
+    /// A level without its configuration, `2P3/2`: each configuration that has it is a way out.
+    fn without_configuration(&self, text: &str, level: &Level) -> Problem {
+        let problem = Problem::new(
+            "level-without-configuration",
+            format!("{level} is a level of which configuration?"),
+            0,
+            text.len(),
+        )
+        .bound(format!(
+            "The sheet has the configurations {}.",
+            self.labels().join(", ")
+        ));
+        self.names_of(level)
+            .into_iter()
+            .fold(problem, |problem, name| {
+                problem.way(format!("Use {name}"), name)
+            })
+    }
+
+    /// Up to four names of this level in the sheet, one for each configuration that has it.
+    fn names_of(&self, level: &Level) -> Vec<String> {
+        let named = self.entries.iter().filter_map(|entry| {
+            let all = ls::terms(entry.configuration()?.subshells()).ok()?;
+            let times = all.times(level.term);
+            let index = match times {
+                0 => return None,
+                1 => None,
+                _ => Some(level.index.filter(|&index| index <= times).unwrap_or(1)),
+            };
+            let level = Level { index, ..*level };
+            all.has(&level).then(|| label::format(&entry.label, &level))
+        });
+        named.take(4).collect()
+    }
+
+    /// Up to two names for the other end of a line that starts or ends at this level: of the other
+    /// parity and the same spin, with J at most one apart (not 0 and 0).
+    pub(super) fn other_ends(&self, of: &LevelOf) -> Vec<String> {
+        let (term, j) = (of.level.term, of.level.j.doubled());
+        let mut names = Vec::new();
+        for (index, entry) in self.entries.iter().enumerate() {
+            if self.is_odd(index) == self.is_odd(of.entry) {
+                continue;
+            }
+            let reached = self.levels(index, 400).into_iter().filter(|level| {
+                let other = level.j.doubled();
+                level.term.two_s == term.two_s
+                    && level.term.l.abs_diff(term.l) <= 1
+                    && other.abs_diff(j) <= 2
+                    && (other, j) != (0, 0)
+            });
+            names.extend(
+                reached
+                    .map(|level| label::format(&entry.label, &level))
+                    .take(2),
+            );
+        }
+        names.truncate(2);
+        names
     }
 
     fn labels(&self) -> Vec<String> {

@@ -11,6 +11,7 @@ mod entry;
 mod formula;
 mod ground;
 mod json;
+mod json_repair;
 mod lack;
 mod level_names;
 mod line_rows;

@@ -6,6 +6,7 @@
 
 use crate::problem::Problem;
 use crate::quantity::Dimension;
+use crate::quantity::signs::{clipped, typeset};
 
 use super::json::Json;
 
@@ -14,6 +15,9 @@ pub const VERSION: f64 = 1.0;
 
 /// The most configurations of a sheet.
 pub const MAX_CONFIGURATIONS: usize = 40;
+
+/// The named directions in which a field is viewed.
+pub const VIEWS: [&str; 2] = ["along", "across"];
 
 /// What may stand under a key.
 #[derive(Debug)]
@@ -90,7 +94,7 @@ pub const SHEET: Shape = Group(&[
         "field",
         Group(&[
             ("flux_density", Quantity(Dimension::FluxDensity)),
-            ("view", ChoiceOr(&["along", "across"], Dimension::Angle)),
+            ("view", ChoiceOr(&VIEWS, Dimension::Angle)),
         ]),
     ),
     (
@@ -205,30 +209,42 @@ pub fn check(json: &Json, shape: &Shape, path: &str, faults: &mut Vec<Problem>) 
         }
         Number(low, high) => match json {
             Json::Number(value) if (*low..=*high).contains(value) => {}
-            Json::Number(value) => faults.push(
-                Problem::new(
-                    "number-out-of-range",
-                    format!("{} is {value}.", key_of(path)),
-                    0,
-                    0,
-                )
-                .bound(format!("It lies from {low} to {high}."))
-                .at(path),
-            ),
+            Json::Number(value) => {
+                let edge = if value < low { low } else { high };
+                faults.push(
+                    Problem::new(
+                        "number-out-of-range",
+                        format!("{} is {}.", key_of(path), typeset(*value)),
+                        0,
+                        0,
+                    )
+                    .bound(format!(
+                        "It lies from {} to {}.",
+                        typeset(*low),
+                        typeset(*high)
+                    ))
+                    .way(format!("Use {}", typeset(*edge)), edge.to_string())
+                    .at(path),
+                );
+            }
             _ => faults.push(kind(json, path, "a number")),
         },
         Choice(words) => {
             if let Some(word) = text(json, path, MAX_NAME, faults)
-                && !words.contains(&word)
+                && choice(word, words).is_none()
             {
-                faults.push(not_a_choice(word, words, path));
+                faults.push(not_a_choice(word, words, None, path));
             }
         }
         ChoiceOr(words, dimension) => {
             if let Some(word) = text(json, path, MAX_NAME, faults)
-                && !words.contains(&word)
+                && choice(word, words).is_none()
             {
-                quantity(word, *dimension, path, faults);
+                if word.trim_start().starts_with(char::is_alphabetic) {
+                    faults.push(not_a_choice(word, words, Some(*dimension), path));
+                } else {
+                    quantity(word, *dimension, path, faults);
+                }
             }
         }
         Quantity(dimension) => {
@@ -348,17 +364,34 @@ fn quantity(typed: &str, dimension: Dimension, path: &str, faults: &mut Vec<Prob
     }
 }
 
-fn not_a_choice(word: &str, words: &[&str], path: &str) -> Problem {
+/// The choice that a text names, in any case of letters and with spaces around it.
+pub fn choice(typed: &str, words: &[&'static str]) -> Option<&'static str> {
+    let typed = typed.trim();
+    words
+        .iter()
+        .copied()
+        .find(|word| word.eq_ignore_ascii_case(typed))
+}
+
+/// A word that is none of the choices; where a quantity may stand too, it is named with them.
+fn not_a_choice(word: &str, words: &[&'static str], or: Option<Dimension>, path: &str) -> Problem {
+    let choices = match or {
+        Some(Dimension::Angle) => format!("{}, or an angle such as 60 deg", words.join(", ")),
+        Some(other) => format!("{}, or a value such as {}", words.join(", "), other.usual()),
+        None => words.join(", "),
+    };
     let mut problem = Problem::new(
         "unknown-choice",
-        format!("{} is \"{word}\".", key_of(path)),
+        format!("{} is \"{}\".", key_of(path), clipped(word)),
         0,
         word.encode_utf16().count(),
     )
-    .bound(format!("It is one of: {}.", words.join(", ")))
+    .bound(format!("It is one of: {choices}."))
     .at(path);
-    if let Some(near) = nearest(word, words.iter().copied()) {
-        problem = problem.way(format!("Use {near}"), near);
+    let near = nearest(word, words.iter().copied());
+    let others = words.iter().copied().filter(|word| Some(*word) != near);
+    for choice in near.into_iter().chain(others).take(4) {
+        problem = problem.way(format!("Use {choice}"), choice);
     }
     problem
 }
@@ -369,7 +402,7 @@ fn version(json: &Json, path: &str, faults: &mut Vec<Problem>) {
         Json::Number(value) => faults.push(
             Problem::new(
                 "wrong-version",
-                format!("This sheet has document version {value}."),
+                format!("This sheet has document version {}.", typeset(*value)),
                 0,
                 0,
             )
@@ -387,15 +420,20 @@ fn group(json: &Json, keys: &[(&str, Shape)], path: &str, faults: &mut Vec<Probl
         return;
     };
     if path.is_empty() && json.get("rungline").is_none() {
-        faults.push(
-            Problem::new(
-                "version-missing",
-                "This is not a Rungline sheet: it lacks \"rungline\".",
-                0,
-                0,
-            )
-            .bound("A sheet starts with \"rungline\": 1."),
-        );
+        let mut problem = Problem::new(
+            "version-missing",
+            "This is not a Rungline sheet: it lacks \"rungline\".",
+            0,
+            0,
+        )
+        .bound("A sheet starts with \"rungline\": 1.");
+        let mut whole = vec![("rungline".to_owned(), Json::Number(VERSION))];
+        whole.extend(entries.iter().cloned());
+        let text = super::pretty(&Json::Object(whole));
+        if text.len() <= super::json::MAX_REPAIRED_BYTES {
+            problem = problem.way("Add \"rungline\": 1", text);
+        }
+        faults.push(problem);
     }
     for (key, value) in entries {
         match keys.iter().find(|(name, _)| name == key) {
@@ -469,6 +507,46 @@ fn distance(a: &[char], b: &[char]) -> usize {
 
 #[cfg(test)]
 mod tests {
+    #[test]
+    fn choices_are_read_in_any_case_and_named_where_unknown() {
+        assert_eq!(choice(" Across", &VIEWS), Some("across"));
+        let view = |typed: &str| {
+            let text = format!(r#"{{"rungline":1,"field":{{"view":"{typed}"}}}}"#);
+            let mut faults = Vec::new();
+            check(&read(&text).unwrap(), &SHEET, "", &mut faults);
+            faults
+        };
+        for typed in ["Across", "ALONG", "60 deg", "45°"] {
+            assert_eq!(view(typed), [], "{typed}");
+        }
+        let sideways = view("sideways").remove(0);
+        assert_eq!(sideways.code, "unknown-choice");
+        assert_eq!(
+            sideways.bound.as_deref(),
+            Some("It is one of: along, across, or an angle such as 60 deg.")
+        );
+        assert_eq!(sideways.ways.len(), 2);
+        for way in sideways.ways {
+            assert_eq!(view(&way.replacement), []);
+        }
+        assert_eq!(view("acros").remove(0).ways[0].replacement, "across");
+    }
+
+    #[test]
+    fn a_sheet_without_its_version_gets_it() {
+        let mut faults = Vec::new();
+        check(
+            &read(r#"{"species":"Fe"}"#).unwrap(),
+            &SHEET,
+            "",
+            &mut faults,
+        );
+        let whole = read(&faults[0].ways[0].replacement).unwrap();
+        faults.clear();
+        check(&whole, &SHEET, "", &mut faults);
+        assert_eq!(faults, []);
+    }
+
     use super::*;
     use crate::sheet::json::read;
 

@@ -46,14 +46,57 @@ pub fn format(configuration: &str, level: &Level) -> String {
 /// Errors, each with its bytes: `level-too-long`, `level-without-term`, `level-unknown-letter`,
 /// `level-without-j`, `level-j-impossible`, `level-bad-index`.
 pub fn parse(text: &str) -> Result<Label<'_>, Problem> {
+    parse_plainly(text).map_err(|problem| {
+        let slip = matches!(problem.code, "level-without-term" | "level-unknown-letter");
+        if !slip || !problem.ways.is_empty() {
+            return problem;
+        }
+        meant(text).into_iter().fold(problem, |problem, name| {
+            problem.way(format!("Use {name}"), name)
+        })
+    })
+}
+
+/// Names that a text with a slip may mean; each can be read.
+fn meant(text: &str) -> Vec<String> {
+    let trimmed = text.trim();
+    let (name, number) = match trimmed.rfind('#') {
+        Some(at) => (
+            trimmed.get(..at).unwrap_or_default().trim_end(),
+            trimmed.get(at..).unwrap_or_default(),
+        ),
+        None => (trimmed, ""),
+    };
+    let (configuration, last) = name.rsplit_once(char::is_whitespace).unwrap_or(("", name));
+    // A space inside the term, a small letter of L, no space before the term.
+    let joined = format!("{}{last}", configuration.trim_end());
+    let capital = format!("{configuration} {}", last.to_ascii_uppercase());
+    let apart = last
+        .find(|c: char| c.is_ascii_uppercase())
+        .and_then(|at| last.get(..at))
+        .and_then(|before| before.char_indices().next_back())
+        .and_then(|(at, _)| Some((last.get(..at)?, last.get(at..)?)))
+        .map(|(before, term)| format!("{configuration} {before} {term}"));
+    let mut names = Vec::new();
+    for candidate in [Some(capital), Some(joined), apart].into_iter().flatten() {
+        let whole = format!("{} {number}", candidate.trim());
+        let whole = whole.trim().to_owned();
+        if parse_plainly(&whole).is_ok() && !names.contains(&whole) {
+            names.push(whole);
+        }
+    }
+    names
+}
+
+fn parse_plainly(text: &str) -> Result<Label<'_>, Problem> {
     if text.len() > MAX_LENGTH {
         return Err(Problem::new(
             "level-too-long",
-            format!("a level name of {} bytes is too long.", text.len()),
+            format!("The level name has {} bytes.", text.len()),
             0,
             text.len(),
         )
-        .bound(format!("at most {MAX_LENGTH} bytes")));
+        .bound(format!("A level name has at most {MAX_LENGTH} bytes.")));
     }
     let (before_index, index) = split_index(text)?;
     let body = before_index.trim_end();
@@ -62,16 +105,17 @@ pub fn parse(text: &str) -> Result<Label<'_>, Problem> {
         .rev()
         .find(|(_, c)| c.is_whitespace())
         .map_or(0, |(i, c)| i + c.len_utf8());
+    let start = start + raised_multiplicity(body.get(start..).unwrap_or_default());
     let written = body.get(start..).unwrap_or_default();
     let configuration = body.get(..start).unwrap_or_default();
     if written.is_empty() {
         return Err(Problem::new(
             "level-without-term",
-            "a level name ends with a term and J, and none stands here.",
+            "A level name ends with a term and J, and none stands here.",
             0,
             text.len(),
         )
-        .bound("a name like 3p 2P1/2"));
+        .bound("A name is written like 3p 2P1/2."));
     }
     let (term, j, marked_odd) = read_term(text, written, start)?;
     let leading = configuration.len() - configuration.trim_start().len();
@@ -82,6 +126,28 @@ pub fn parse(text: &str) -> Result<Label<'_>, Problem> {
         level_start: start,
         marked_odd,
     })
+}
+
+/// The first byte of a raised multiplicity that follows the configuration directly: `3p²P3/2`,
+/// `3d⁶⁵D4`; 0 where none does.
+///
+/// Directly after an orbital letter, all raised digits but the last are the occupation.
+fn raised_multiplicity(word: &str) -> usize {
+    let is_raised =
+        |c: char| !c.is_ascii_digit() && !('₀'..='₉').contains(&c) && plain_digit(c).is_some();
+    let Some(letter) = word.find(|c: char| c.is_ascii_uppercase()) else {
+        return 0;
+    };
+    let before = word.get(..letter).unwrap_or_default();
+    let configuration = before.trim_end_matches(is_raised);
+    let raised = before.get(configuration.len()..).unwrap_or_default();
+    let last = raised.char_indices().next_back().map_or(0, |(at, _)| at);
+    match configuration.chars().next_back() {
+        None => 0,
+        Some(_) if raised.is_empty() => 0,
+        Some(c) if c.is_ascii_lowercase() => configuration.len() + last,
+        Some(_) => configuration.len(),
+    }
 }
 
 /// Takes ` #k` off the end.
@@ -104,9 +170,9 @@ fn split_index(text: &str) -> Result<(&str, Option<u128>), Problem> {
                 at,
                 text.len(),
             )
-            .bound("# and a whole number from 1");
+            .bound("Behind # stands a whole number from 1.");
             // A way out only where the rest can be read.
-            let rest_is_read = !before.contains('#') && parse(before).is_ok();
+            let rest_is_read = !before.contains('#') && parse_plainly(before).is_ok();
             Err(if rest_is_read {
                 fault.way("Use #1", format!("{before}#1"))
             } else {
@@ -136,7 +202,7 @@ fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, b
                 start,
             )
             .bound(format!(
-                "multiplicity 1 … {MAX_MULTIPLICITY}, letter, J, as in 2P1/2"
+                "A term is a multiplicity from 1 to {MAX_MULTIPLICITY}, a letter and J, as in 2P1/2."
             )));
         }
     };
@@ -146,18 +212,19 @@ fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, b
             format!("\"{written}\" has no letter of L after the multiplicity."),
             start + letter_at,
         )
-        .bound("S P D F G H I K L M N O Q R T U V W X Y Z, then [21], [22] …")
+        .bound("The letters are the capitals S P D F G H I K L M N O Q R T U V W X Y Z, then [21], [22] and so on.")
     })?;
     let unmarked = after_letter
-        .strip_prefix(['*', '°', 'o', 'º'])
+        .strip_prefix(PARITY_MARKS)
         .unwrap_or(after_letter);
-    let marked_odd = unmarked.len() != after_letter.len();
+    let number = unmarked.strip_suffix(PARITY_MARKS).unwrap_or(unmarked);
+    let marked_odd = number.len() != after_letter.len();
     let term = Term {
         two_s: multiplicity - 1,
         l,
     };
     let allowed: Vec<String> = term.levels().take(12).map(|j| j.to_string()).collect();
-    let bound = format!("{term} has J = {}", allowed.join(", "));
+    let bound = format!("{term} has J = {}.", allowed.join(", "));
     let stem = text.get(..end - unmarked.len()).unwrap_or_default();
     let tail = text.get(end..).unwrap_or_default();
     let with_ways = |mut problem: Problem| {
@@ -173,7 +240,7 @@ fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, b
             start,
         )));
     }
-    match half_integer(unmarked) {
+    match half_integer(number) {
         Some(j) if term.has(j) => Ok((term, j, marked_odd)),
         _ => Err(with_ways(fault(
             "level-j-impossible",
@@ -182,6 +249,9 @@ fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, b
         ))),
     }
 }
+
+/// The marks of odd parity, after the letter or after J.
+const PARITY_MARKS: [char; 4] = ['*', '°', 'o', 'º'];
 
 /// L and what follows its letter.
 fn read_letter(text: &str) -> Option<(u32, &str)> {
@@ -267,6 +337,44 @@ mod tests {
         assert!(label.marked_odd);
         assert!(parse("3p 2P*3/2").unwrap().marked_odd);
         assert!(!parse("3p 2P3/2").unwrap().marked_odd);
+    }
+
+    #[test]
+    fn marks_and_raised_multiplicities_stand_where_people_put_them() {
+        for (text, configuration, level, odd) in [
+            ("3p²P3/2", "3p", "2P3/2", false),
+            ("3p²P°₃⸝₂", "3p", "2P3/2", true),
+            ("3d⁶⁵D4", "3d⁶", "5D4", false),
+            ("3d6⁵D4", "3d6", "5D4", false),
+            ("3d⁶ 4s²⁵D4", "3d⁶ 4s²", "5D4", false),
+            ("3p 2P3/2°", "3p", "2P3/2", true),
+            ("3p 2P°3/2", "3p", "2P3/2", true),
+            ("²P3/2", "", "2P3/2", false),
+        ] {
+            let label = parse(text).unwrap();
+            assert_eq!(
+                (
+                    label.configuration,
+                    label.level.to_string().as_str(),
+                    label.marked_odd
+                ),
+                (configuration, level, odd),
+                "{text}"
+            );
+        }
+    }
+
+    #[test]
+    fn slips_lead_to_the_name_that_is_meant() {
+        for (text, name) in [
+            ("3p 2p3/2", "3p 2P3/2"),
+            ("3p 2P 3/2", "3p 2P3/2"),
+            ("3p2P3/2", "3p 2P3/2"),
+            ("3d3 2d5/2 #2", "3d3 2D5/2 #2"),
+        ] {
+            let problem = parse(text).unwrap_err();
+            assert_eq!(problem.ways[0].replacement, name, "{text}");
+        }
     }
 
     #[test]
