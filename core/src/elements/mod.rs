@@ -6,6 +6,7 @@ mod names;
 
 pub use ground::{DOUBTFUL_NEUTRALS, ObservedGround, Status, observed_ground};
 pub use level::{LevelSymbol, TermSymbol, read_level};
+pub(crate) use names::distance;
 pub use names::{HEAVIEST, by_name, by_symbol, name, nearest, symbol};
 
 /// Sources and licences of the data that are compiled in, to be shown or shipped with the program.

@@ -128,9 +128,9 @@ fn position(test: impl Fn(&(&str, &str)) -> bool) -> Option<u8> {
         .and_then(|i| u8::try_from(i + 1).ok())
 }
 
-/// Distance between letters and a name: insertions, deletions, replacements and exchanges of
+/// Distance between letters in lower case and a name in any case: insertions, deletions, replacements and exchanges of
 /// neighbours (Damerau 1964, each letter changed once).
-fn distance(wanted: &[char], name: &str) -> usize {
+pub(crate) fn distance(wanted: &[char], name: &str) -> usize {
     let name: Vec<char> = name.chars().map(|c| c.to_ascii_lowercase()).collect();
     let mut row: Vec<usize> = (0..=name.len()).collect();
     let mut two_above = row.clone();

@@ -6,6 +6,7 @@ mod number;
 pub mod parse;
 pub(crate) mod signs;
 mod unit;
+mod whole_ways;
 
 pub use half_integer::TwiceJ;
 pub use half_integer_text::MAX_ANGULAR_MOMENTUM;

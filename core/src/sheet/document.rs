@@ -225,7 +225,7 @@ impl Document {
             .get("view")
             .and_then(Json::as_text)
             .unwrap_or("across");
-        let angle_degrees = match schema::choice(view, &schema::VIEWS) {
+        let angle_degrees = match super::choice::choice(view, &super::choice::VIEWS) {
             Some("along") => Some(0.0),
             Some(_) => Some(90.0),
             None => quantity::quantity(view, Dimension::Angle)

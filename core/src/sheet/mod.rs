@@ -6,6 +6,7 @@
 
 mod answer;
 mod chart;
+mod choice;
 mod document;
 mod entry;
 mod formula;

@@ -6,8 +6,9 @@
 
 use crate::problem::Problem;
 use crate::quantity::Dimension;
-use crate::quantity::signs::{clipped, typeset};
+use crate::quantity::signs::typeset;
 
+use super::choice::{VIEWS, choice, nearest, not_a_choice};
 use super::json::Json;
 
 /// The document version that is read and written.
@@ -15,9 +16,6 @@ pub const VERSION: f64 = 1.0;
 
 /// The most configurations of a sheet.
 pub const MAX_CONFIGURATIONS: usize = 40;
-
-/// The named directions in which a field is viewed.
-pub const VIEWS: [&str; 2] = ["along", "across"];
 
 /// What may stand under a key.
 #[derive(Debug)]
@@ -309,7 +307,7 @@ pub fn check(json: &Json, shape: &Shape, path: &str, faults: &mut Vec<Problem>) 
     }
 }
 
-fn key_of(path: &str) -> String {
+pub(super) fn key_of(path: &str) -> String {
     match path.rsplit('/').next() {
         Some(key) if !key.is_empty() => {
             format!("\"{}\"", key.replace("~1", "/").replace("~0", "~"))
@@ -362,38 +360,6 @@ fn quantity(typed: &str, dimension: Dimension, path: &str, faults: &mut Vec<Prob
     if let Err(problem) = crate::quantity::quantity(typed, dimension) {
         faults.push(problem.in_utf16(typed).at(path));
     }
-}
-
-/// The choice that a text names, in any case of letters and with spaces around it.
-pub fn choice(typed: &str, words: &[&'static str]) -> Option<&'static str> {
-    let typed = typed.trim();
-    words
-        .iter()
-        .copied()
-        .find(|word| word.eq_ignore_ascii_case(typed))
-}
-
-/// A word that is none of the choices; where a quantity may stand too, it is named with them.
-fn not_a_choice(word: &str, words: &[&'static str], or: Option<Dimension>, path: &str) -> Problem {
-    let choices = match or {
-        Some(Dimension::Angle) => format!("{}, or an angle such as 60 deg", words.join(", ")),
-        Some(other) => format!("{}, or a value such as {}", words.join(", "), other.usual()),
-        None => words.join(", "),
-    };
-    let mut problem = Problem::new(
-        "unknown-choice",
-        format!("{} is \"{}\".", key_of(path), clipped(word)),
-        0,
-        word.encode_utf16().count(),
-    )
-    .bound(format!("It is one of: {choices}."))
-    .at(path);
-    let near = nearest(word, words.iter().copied());
-    let others = words.iter().copied().filter(|word| Some(*word) != near);
-    for choice in near.into_iter().chain(others).take(4) {
-        problem = problem.way(format!("Use {choice}"), choice);
-    }
-    problem
 }
 
 fn version(json: &Json, path: &str, faults: &mut Vec<Problem>) {
@@ -465,73 +431,8 @@ fn group(json: &Json, keys: &[(&str, Shape)], path: &str, faults: &mut Vec<Probl
     }
 }
 
-/// The known word that takes the fewest single-character changes, if at most half of it changes.
-pub fn nearest<'a>(typed: &str, known: impl Iterator<Item = &'a str>) -> Option<&'a str> {
-    let typed: Vec<char> = typed
-        .chars()
-        .take(64)
-        .flat_map(char::to_lowercase)
-        .collect();
-    known
-        .map(|word| {
-            (
-                distance(&typed, &word.to_lowercase().chars().collect::<Vec<_>>()),
-                word,
-            )
-        })
-        .min_by_key(|(changes, _)| *changes)
-        .filter(|(changes, word)| *changes * 2 <= word.chars().count().max(typed.len()))
-        .map(|(_, word)| word)
-}
-
-/// Levenshtein distance (Levenshtein 1966): insertions, deletions and replacements of characters.
-fn distance(a: &[char], b: &[char]) -> usize {
-    let mut previous: Vec<usize> = (0..=b.len()).collect();
-    for (i, x) in a.iter().enumerate() {
-        let mut current = vec![i + 1];
-        let mut left = i + 1;
-        for (y, pair) in b.iter().zip(previous.windows(2)) {
-            let (diagonal, above) = match pair {
-                [diagonal, above] => (*diagonal, *above),
-                _ => continue,
-            };
-            left = (diagonal + usize::from(x != y))
-                .min(above + 1)
-                .min(left + 1);
-            current.push(left);
-        }
-        previous = current;
-    }
-    previous.last().copied().unwrap_or(0)
-}
-
 #[cfg(test)]
 mod tests {
-    #[test]
-    fn choices_are_read_in_any_case_and_named_where_unknown() {
-        assert_eq!(choice(" Across", &VIEWS), Some("across"));
-        let view = |typed: &str| {
-            let text = format!(r#"{{"rungline":1,"field":{{"view":"{typed}"}}}}"#);
-            let mut faults = Vec::new();
-            check(&read(&text).unwrap(), &SHEET, "", &mut faults);
-            faults
-        };
-        for typed in ["Across", "ALONG", "60 deg", "45°"] {
-            assert_eq!(view(typed), [], "{typed}");
-        }
-        let sideways = view("sideways").remove(0);
-        assert_eq!(sideways.code, "unknown-choice");
-        assert_eq!(
-            sideways.bound.as_deref(),
-            Some("It is one of: along, across, or an angle such as 60 deg.")
-        );
-        assert_eq!(sideways.ways.len(), 2);
-        for way in sideways.ways {
-            assert_eq!(view(&way.replacement), []);
-        }
-        assert_eq!(view("acros").remove(0).ways[0].replacement, "across");
-    }
-
     #[test]
     fn a_sheet_without_its_version_gets_it() {
         let mut faults = Vec::new();
@@ -582,7 +483,6 @@ mod tests {
             &mut faults,
         );
         assert_eq!(faults[0].ways[0].replacement, "configurations");
-        assert_eq!(nearest("zzzzzzzz", ["species", "title"].into_iter()), None);
     }
 
     #[test]
