@@ -2,7 +2,7 @@
 
 import { element, setText, wordButton } from "./dom.js";
 import { richNode, richPlain } from "./rich.js";
-import { renderChart } from "./views/elements.js";
+import { markPresent, renderChart } from "./views/elements.js";
 
 /** The atom's line and its editor. `chart(charge)` resolves to the chart's data. */
 export class Head {
@@ -22,6 +22,7 @@ export class Head {
   #shownCharge = null;
   #extra = 0;
   #reading = null;
+  #pressed = false;
 
   constructor({ store, fields, settings, chart, view, toFirstFault }) {
     this.#store = store;
@@ -32,6 +33,14 @@ export class Head {
     this.#button.addEventListener("click", () => this.unfold(this.#editor.hidden));
     this.#faults.addEventListener("click", toFirstFault);
     this.#add.addEventListener("click", () => this.#addConfiguration());
+    this.#configurations.addEventListener("focusout", () => this.#leave());
+    document.addEventListener("pointerdown", () => { this.#pressed = true; }, true);
+    for (const end of ["pointerup", "pointercancel"]) {
+      document.addEventListener(end, () => {
+        this.#pressed = false;
+        this.#leave();
+      }, true);
+    }
     this.#chartFold.addEventListener("toggle", () => this.#showChart());
     this.#editor.append(
       element("h2", { class: "heard-only", text: "Atom and configurations" }),
@@ -82,7 +91,8 @@ export class Head {
       }
       this.#configurations.append(row);
     }
-    while (this.#configurations.children.length > wanted) {
+    // Whoever empties a field is about to type something else there: it stays while it has the focus.
+    while (this.#configurations.children.length > wanted && !this.#configurations.lastElementChild.contains(document.activeElement)) {
       this.#fields.remove(`/configurations/${this.#configurations.children.length - 1}`);
       this.#configurations.lastElementChild.remove();
     }
@@ -138,8 +148,22 @@ export class Head {
     return text ? `Empty stands for ${text}` : null;
   }
 
+  // Empty fields at the end go when they are left; under a pressed pointer nothing may move.
+  #leave() {
+    setTimeout(() => {
+      if (this.#pressed) return;
+      this.#extra = 0;
+      this.arrange();
+    }, 0);
+  }
+
   #addConfiguration() {
-    const index = this.#configurations.children.length;
+    const last = this.#configurations.children.length - 1;
+    if (last > 0 && this.#store.text(`/configurations/${last}`) === "") {
+      this.#fields.focus(`/configurations/${last}`);
+      return;
+    }
+    const index = last + 1;
     this.#extra = index + 1;
     const first = this.#reading?.defaults?.configurations?.[0];
     if (index === 1 && this.#store.text("/configurations/0") === "" && first) {
@@ -151,9 +175,9 @@ export class Head {
 
   #removeConfiguration(index) {
     this.#extra = 0;
+    this.#fields.focus(`/configurations/${Math.max(index - 1, 0)}`);
     this.#store.put([[`/configurations/${index}`, undefined]], `Remove configuration ${index + 1}`);
     this.arrange();
-    this.#fields.focus(`/configurations/${Math.max(index - 1, 0)}`);
   }
 
   #species() {
@@ -163,7 +187,8 @@ export class Head {
 
   #showIon() {
     const species = this.#species();
-    const key = species && species.symbol !== "*" ? `${species.symbol} ${species.charge} ${species.mass_number}` : "";
+    const last = /(?:^|\s)1 electron$/.test(this.#reading?.head_plain ?? "");
+    const key = species && species.symbol !== "*" ? `${species.symbol} ${species.charge} ${species.mass_number} ${last}` : "";
     if (this.#ion.dataset.shown === key) return;
     this.#ion.dataset.shown = key;
     if (key === "") {
@@ -176,9 +201,9 @@ export class Head {
       on: { click: () => this.#putSpecies(species.symbol, species.charge + change, species.mass_number) },
     });
     this.#ion.replaceChildren(
-      step(1, "One electron less"),
+      ...(last ? [] : [step(1, "One electron less")]),
       ...(species.charge > 0 ? [step(-1, "One electron more")] : []));
-    if (inside) this.#ion.firstElementChild.focus();
+    if (inside) (this.#ion.firstElementChild ?? this.#button).focus();
   }
 
   // The configurations of one atom rarely fit another: a picked atom starts from its ground one.
@@ -192,13 +217,17 @@ export class Head {
   async #showChart() {
     if (!this.#chartFold.open) return;
     const charge = Math.max(this.#species()?.charge ?? 0, 0);
-    if (this.#shownCharge === charge) return;
+    if (this.#shownCharge === charge) {
+      markPresent(this.#chartBox, this.#species()?.symbol);
+      return;
+    }
     this.#shownCharge = charge;
     const data = await this.#chart(charge);
     if (data === null || this.#shownCharge !== charge) return;
     this.#chartBox.replaceChildren(renderChart(data, {
       pick: (symbol) => this.#putSpecies(symbol, charge),
       settings: this.#settings.values,
+      present: () => this.#species()?.symbol,
     }));
   }
 }

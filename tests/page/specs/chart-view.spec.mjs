@@ -55,3 +55,19 @@ everyDoor("at 320 px the ladder still fits the page", async (door) => {
   assert.equal(await door.scrollsSideways(), false);
   assert.ok(await door.evaluate(() => [...document.querySelectorAll(".ladder-cells .cell")].every((cell) => cell.getBoundingClientRect().width >= 24)));
 }, { width: 320, fragment: "v=1&species=Fe" });
+
+everyDoor("the sheet's own element is marked, and moves with the sheet; every ground term has an edge", async (door) => {
+  await openChart(door);
+  const present = () => door.evaluate(() => [...document.querySelectorAll('.chart-columns .cell[aria-current="true"]')].map((cell) => cell.dataset.symbol).join());
+  assert.equal(await present(), "Fe");
+  await door.page.click('.chart-columns [data-symbol="Mn"]');
+  await door.until(() => document.querySelector('.chart-columns .cell[aria-current="true"]')?.dataset.symbol === "Mn");
+  await door.evaluate(() => {
+    const box = document.querySelector('.chart select');
+    box.value = "term";
+    box.dispatchEvent(new Event("change"));
+  });
+  assert.equal(await present(), "Mn");
+  assert.deepEqual(await door.evaluate(() => [...document.querySelectorAll(".chart-columns .cell")].filter((cell) => parseFloat(getComputedStyle(cell).borderTopWidth) < 4).map((cell) => cell.className)), []);
+  assert.ok(await door.evaluate(() => [...document.querySelectorAll(".chart-columns .cell")].every((cell) => !/ground level a level/.test(cell.textContent))));
+}, { fragment: "v=1&species=Fe" });

@@ -9,10 +9,10 @@ const TINTS = { open: "open shell", term: "ground term" };
 let lastTint = "open";
 
 /**
- * The chart as a node; `pick(symbol)` is called for the element that is pressed. `announce` and
- * `choice` are optional.
+ * The chart as a node; `pick(symbol)` is called for the element that is pressed, `present()` gives
+ * the symbol of the sheet's own element.
  */
-export function renderChart(chart, { pick, tint = lastTint, settings, announce }) {
+export function renderChart(chart, { pick, tint = lastTint, settings, announce, present = () => undefined }) {
   const node = element("div", { class: "chart" });
   const box = element("select", { "aria-label": "Tint by" }, ...Object.entries(TINTS).map(([value, text]) => element("option", { value, text })));
   box.value = tint;
@@ -22,9 +22,9 @@ export function renderChart(chart, { pick, tint = lastTint, settings, announce }
     lastTint = box.value;
     fillColumns(columns, chart.cells, box.value, pick, settings);
     fillLadder(ladder, chart.cells, box.value, pick, settings);
+    markPresent(node, present());
   };
   box.addEventListener("change", draw);
-  draw();
   walk(columns);
   walk(ladder);
   const tableBox = element("div", { class: "picture-table", hidden: true });
@@ -36,7 +36,21 @@ export function renderChart(chart, { pick, tint = lastTint, settings, announce }
     tableButton.textContent = tableBox.hidden ? "Show as table" : "Hide the table";
   });
   node.append(element("div", { class: "choices" }, element("label", { class: "choose" }, element("span", { text: "Tint by" }), box), tableButton), columns, ladder, tableBox);
+  draw();
   return node;
+}
+
+/** Marks the sheet's own element, where Tab enters the chart. */
+export function markPresent(chart, symbol) {
+  for (const box of chart.querySelectorAll(".chart-columns, .chart-ladder")) {
+    for (const cell of box.querySelectorAll('[aria-current="true"]')) cell.removeAttribute("aria-current");
+    const own = [...box.querySelectorAll("button.cell")].find((cell) => cell.dataset.symbol === symbol);
+    if (own === undefined) continue;
+    own.setAttribute("aria-current", "true");
+    if (box.contains(document.activeElement)) continue;
+    for (const cell of box.querySelectorAll('[tabindex="0"]')) cell.setAttribute("tabindex", "-1");
+    own.setAttribute("tabindex", "0");
+  }
 }
 
 function fillColumns(box, cells, tint, pick, settings) {
@@ -65,12 +79,17 @@ function cellButton(cell, tint, pick, settings) {
   const term = cell.ground?.find((item) => item.term)?.term ?? null;
   const group = tint === "open" ? openGroup(cell) : term ? term.letter : "";
   const words = tint === "open" ? openRuns(cell) : term ? describe({ term: { ...term, J: null, odd: false, index: null } }).runs : [{ text: "–" }];
-  const said = [`${cell.name}, ${cell.Z}`, richSpeech(cell.rich), cell.ground ? `ground level ${richSpeech(cell.ground)}` : "ground level not known", cell.source].join(", ");
+  const said = [`${cell.name}, ${cell.Z}`, richSpeech(cell.rich), cell.ground ? groundSpeech(cell.ground) : "ground level not known", cell.source].join(", ");
   return element("button", {
     type: "button", class: `cell tint-${group || "none"}`, "data-symbol": cell.symbol, tabindex: "-1",
     on: { click: () => pick(cell.symbol) },
   }, element("span", { class: "cell-symbol", text: cell.symbol }), element("span", { class: "cell-words" }, ...runNodes(words)),
     element("span", { class: "heard-only", text: ` ${said}` }));
+}
+
+// A level that is known by its J only says so in words of its own.
+function groundSpeech(ground) {
+  return `ground level ${richSpeech(ground)}`.replace("level a level", "level");
 }
 
 function bareCell(cell) {
