@@ -43,15 +43,15 @@ function alignedText({ caption, columns, rows }) {
   return `${caption}\n${lines.map((line) => line.map(pad).join("  ").trimEnd()).join("\n")}\n`;
 }
 
-// A spreadsheet would read 3/2 as a day in February, so half-integers go in as 1.5.
+// A spreadsheet would read 3/2 as a day in February, so half-integers go in as 1.5, in any column.
 function tabbed({ columns, rows }, decimalMark) {
-  const cellText = (cell, column) => {
-    const half = column.type === "half" ? /^(-?\d+)\/2$/.exec(cell.text) : null;
+  const cellText = (cell) => {
+    const half = /^(-?\d+)\/2$/.exec(cell.text);
     if (half) return String(Number(half[1]) / 2).replace(".", decimalMark);
     const text = typeof cell.value === "number" ? fullDigits(cell.value).replace(".", decimalMark) : cell.text;
     return text.replace(/[\t\r\n]+/g, " ");
   };
-  return [columns.map(headText), ...rows.map((row) => row.map((cell, i) => cellText(cell, columns[i])))]
+  return [columns.map(headText), ...rows.map((row) => row.map(cellText))]
     .map((line) => line.join("\t")).join("\n") + "\n";
 }
 
@@ -66,10 +66,15 @@ function latexTable({ caption, columns, rows }) {
     const unitPart = unit ? ` (${unitOf(unit).latex ?? latexText(unit)})` : "";
     return `${latex ?? latexText(name)}${unitPart}${kind ? ` [${kind}]` : ""}`;
   });
-  const body = rows.map((row) => row.map((cell) => cell.latex ?? (typeof cell.value === "number" ? `$${latexNumber(cell.text)}$` : latexText(cell.text))));
+  const body = rows.map((row) => row.map((cell) => cell.latex ?? (typeof cell.value === "number" ? `$${latexNumber(cell.text)}$` : latexCell(cell.text))));
   const align = columns.map(({ type }) => (type === "number" || type === "half" ? "r" : "l")).join("");
   const line = (cells) => `${cells.join(" & ")} \\\\`;
   return [`% ${caption}`, `\\begin{tabular}{${align}}`, "\\hline", line(head), "\\hline", ...body.map(line), "\\hline", "\\end{tabular}", ""].join("\n");
+}
+
+// A hyphen before a whole number is a minus.
+function latexCell(text) {
+  return /^-\d+$/.test(text) ? `$${text}$` : latexText(text);
 }
 
 function latexNumber(text) {

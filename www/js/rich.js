@@ -19,7 +19,7 @@ export function describe(item, settings = {}) {
   if (item.species) return describeSpecies(item.species);
   if (item.number) return describeNumber(item.number, settings);
   // A sign of the page's own making, such as σ⁺ or M_L: the core never sends one.
-  if (item.sign) return { latex: item.sign.plain, ...item.sign, kind: "sign" };
+  if (item.sign) return { latex: latexText(item.sign.plain), ...item.sign, kind: "sign" };
   return describe(String(item.text ?? ""));
 }
 
@@ -182,11 +182,18 @@ function listOf(rich) {
   return Array.isArray(rich) ? rich : [rich];
 }
 
-/** Text with the characters that LaTeX reads as commands made harmless. */
+// Signs of the page that plain LaTeX has no letters for.
+const LATEX_SIGNS = {
+  "\u2212": "$-$", "\u00a0": "~", "\u2013": "--", "\u2019": "'", "\u2026": "\\ldots{}", "\u00d7": "$\\times$", "\u00b0": "$^\\circ$",
+  "π": "$\\pi$", "σ": "$\\sigma$", "μ": "$\\mu$", "Δ": "$\\Delta$", "ℓ": "$\\ell$", "\u207a": "$^{+}$", "\u207b": "$^{-}$", "≤": "$\\le$", "≥": "$\\ge$",
+};
+
+/** Text with the characters that LaTeX reads as commands made harmless; half-integers are set as fractions. */
 export function latexText(text) {
   return String(text)
     .replace(/[\\{}$&#%_^~]/g, (c) => ({ "\\": "\\textbackslash{}", "^": "\\textasciicircum{}", "~": "\\textasciitilde{}" })[c] ?? `\\${c}`)
-    .replace(/\u2212/g, "$-$").replace(/\u00a0/g, "~");
+    .replace(/(?<![\p{L}\d/.])([-\u2212]?)(\d+)\/2(?![\p{L}\d/])/gu, (_, sign, halves) => `$${sign ? "-" : ""}\\tfrac{${halves}}{2}$`)
+    .replace(/[\u2212\u00a0\u2013\u2019\u2026\u00d7\u00b0πσμΔℓ\u207a\u207b≤≥]/g, (sign) => LATEX_SIGNS[sign]);
 }
 
 function trueLatex(number) {

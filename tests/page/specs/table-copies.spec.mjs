@@ -3,6 +3,8 @@
 import assert from "node:assert/strict";
 import { test } from "node:test";
 import { FORMATS, fileName, headText, tableText } from "../../../www/js/export.js";
+import { SIGNS } from "../../../www/js/plot/pattern.js";
+import { latexText, richLatex } from "../../../www/js/rich.js";
 
 const SHEET = {
   caption: "Levels of 2p2",
@@ -54,4 +56,17 @@ test("heads and file names", () => {
   assert.equal(headText({ name: "S", unit: "e2a02", kind: "exact" }), "S (e2a02) [exact]");
   assert.equal(fileName("terms 3d6 4s2", "csv"), "terms-3d6-4s2.csv");
   assert.equal(fileName("///", "svg"), "rungline.svg");
+});
+
+test("a lone half-integer is a number to a spreadsheet in every column, and a fraction to LaTeX", () => {
+  const sheet = { caption: "c", columns: [{ name: "J", type: "text" }, { name: "M", type: "half" }], rows: [[{ text: "1/2" }, { text: "-3/2" }], [{ text: "1/2, 3/2" }, { text: "-1" }]] };
+  assert.equal(tableText(sheet, "spreadsheet", "."), "J\tM\n0.5\t-1.5\n1/2, 3/2\t-1\n");
+  const latex = tableText(sheet, "latex");
+  assert.ok(latex.includes("$\\tfrac{1}{2}$ & $-\\tfrac{3}{2}$ \\\\"), latex);
+  assert.ok(latex.includes("$\\tfrac{1}{2}$, $\\tfrac{3}{2}$ & $-1$ \\\\"), latex);
+});
+
+test("polarisations are set in LaTeX's own letters", () => {
+  assert.deepEqual(["pi", "sigma+", "sigma-"].map((name) => richLatex([{ sign: SIGNS[name] }])), ["$\\pi$", "$\\sigma^+$", "$\\sigma^-$"]);
+  assert.equal(latexText("3p 2P3/2 – σ⁻"), "3p 2P3/2 -- $\\sigma$$^{-}$");
 });

@@ -7,7 +7,7 @@ import { unitOf } from "../spoken.js";
 
 /** The units in which offsets are shown: key in the answer, unit, and which way energy grows. */
 export const OFFSET_UNITS = {
-  lorentz: { unit: "mu_B B", label: "μ_B B", energy: 1 },
+  lorentz: { unit: "mu_B B", label: "units of μB·B", energy: 1 },
   offset: { unit: "cm-1", label: "cm⁻¹", energy: 1 },
   ghz: { unit: "GHz", label: "GHz", energy: 1 },
   pm: { unit: "pm", label: "pm", energy: -1 },
@@ -16,17 +16,18 @@ export const OFFSET_UNITS = {
 export const VIEWS = { seen: "as in the sheet", across: "across the field", along: "along the field", strength: "over all directions" };
 /** Signs of the polarisations, and by how much M rises; a quadrupole line has steps of two. */
 export const SIGNS = {
-  pi: { runs: [{ text: "π" }], plain: "π", speech: "pi", colour: "s1", step: 0, dash: null },
-  "sigma+": { runs: [{ text: "σ" }, { up: "+" }], plain: "σ⁺", speech: "sigma plus", colour: "s2", step: 1, dash: "8 4" },
-  "sigma-": { runs: [{ text: "σ" }, { up: "\u2212" }], plain: "σ⁻", speech: "sigma minus", colour: "s3", step: -1, dash: "2 4" },
-  "delta-M+2": { runs: [{ text: "ΔM +2" }], plain: "ΔM +2", speech: "delta M plus 2", colour: "s4", step: 2, dash: "12 3 2 3" },
-  "delta-M-2": { runs: [{ text: "ΔM \u22122" }], plain: "ΔM −2", speech: "delta M minus 2", colour: "s4", step: -2, dash: "4 2" },
+  pi: { runs: [{ text: "π" }], plain: "π", latex: "$\\pi$", speech: "pi", colour: "s1", step: 0, dash: null },
+  "sigma+": { runs: [{ text: "σ" }, { up: "+" }], plain: "σ⁺", latex: "$\\sigma^+$", speech: "sigma plus", colour: "s2", step: 1, dash: "8 4" },
+  "sigma-": { runs: [{ text: "σ" }, { up: "\u2212" }], plain: "σ⁻", latex: "$\\sigma^-$", speech: "sigma minus", colour: "s3", step: -1, dash: "2 4" },
+  "delta-M+2": { runs: [{ text: "ΔM +2" }], plain: "ΔM +2", latex: "$\\Delta M = +2$", speech: "delta M plus 2", colour: "s4", step: 2, dash: "12 3 2 3" },
+  "delta-M-2": { runs: [{ text: "ΔM \u22122" }], plain: "ΔM −2", latex: "$\\Delta M = -2$", speech: "delta M minus 2", colour: "s4", step: -2, dash: "4 2" },
 };
 
 const LEFT = 52;
 const RIGHT = 20;
 const TOP = 44;
 const TRIANGLE = 7;
+const BELOW = 36;
 // Offsets closer than this part of the pattern's width are one component to the eye and in fact.
 const SAME = 1e-9;
 
@@ -56,7 +57,8 @@ export function patternLayout({ components, unit, view, viewWords, kindOf }) {
   return (width, [from, to]) => {
     const height = Math.round(Math.min(Math.max((width * 7) / 16, 300), 420));
     const bottom = height - BOTTOM_AXIS;
-    const axis = TOP + (bottom - TOP - 12) / 2;
+    // Triangles and names of the downward bars keep clear of the offset axis.
+    const axis = TOP + (bottom - TOP - BELOW) / 2;
     const tall = axis - TOP - 10;
     const whole = 2.3 * reach;
     const low = -whole / 2 + from * whole;
