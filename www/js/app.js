@@ -146,7 +146,7 @@ class Page {
     this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
       name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,
       open: index === 0,
-      fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label)),
+      fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label), { choice: context.choice, store: this.store }),
     }));
     this.questions.isUnfolded = (name) => this.rungOf(name).open;
     this.record = new RecordRung({

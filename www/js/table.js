@@ -19,19 +19,23 @@ export const DRAW_ALL = 500;
  *   value  row → text or number as it is copied, null when unknown; `rich` row → rich text to show
  *   long   true for columns of sentences, which may take several lines
  *   reason why a value can be unknown: text, or row → text
+ *   copied true for columns that are copied but not shown
  *   kind   one kind for the column, or row → kind where they differ
  * `identify`: row → id of the shared choice, or null for rows that cannot be chosen.
+ * `concerns`: (row, chosen id) → whether what was chosen elsewhere is this row's matter too.
  */
-export function dataTable({ caption, columns, rows, identify = null, context, file }) {
-  return new DataTable({ caption, columns, rows, identify, context, file }).node;
+export function dataTable({ caption, columns, rows, identify = null, concerns = () => false, context, file }) {
+  return new DataTable({ caption, columns, rows, identify, concerns, context, file }).node;
 }
 
 class DataTable {
   #caption;
   #columns;
+  #shown;
   #rows;
   #order;
   #identify;
+  #concerns;
   #context;
   #file;
   #sorted = { column: -1, direction: 0 };
@@ -43,15 +47,17 @@ class DataTable {
   #told = element("span", { class: "note told" });
   #heads = [];
 
-  constructor({ caption, columns, rows, identify, context, file }) {
+  constructor({ caption, columns, rows, identify, concerns, context, file }) {
     this.#caption = caption;
     this.#columns = columns;
+    this.#shown = columns.filter((column) => !column.copied);
     this.#rows = rows;
     this.#order = rows.map((_, i) => i);
     this.#identify = identify;
+    this.#concerns = concerns;
     this.#context = context;
     this.#file = file ?? richPlain(caption);
-    this.#formats = columns.map((column) => (column.type === "number"
+    this.#formats = this.#shown.map((column) => (column.type === "number"
       ? columnFormat(rows.map((row) => column.value(row)).filter((value) => typeof value === "number"), context.settings.digits ?? 17)
       : null));
     this.#build();
@@ -62,18 +68,18 @@ class DataTable {
     const captionId = freshId("caption");
     const table = element("table", { class: `data${many ? " many" : ""}`, "aria-rowcount": many ? this.#rows.length + 1 : null },
       element("caption", { id: captionId }, element("span", { class: "caption-line" }, richNode(this.#caption, this.#context.settings))),
-      element("thead", {}, element("tr", { "aria-rowindex": many ? 1 : null }, ...this.#columns.map((column, i) => this.#head(column, i)))),
+      element("thead", {}, element("tr", { "aria-rowindex": many ? 1 : null }, ...this.#shown.map((column, i) => this.#head(column, i)))),
       this.#body);
     this.#region = element("div", { class: "table-region", tabindex: "0", role: "region", "aria-labelledby": captionId }, table);
     this.node = element("div", { class: "table" });
     if (many) {
       this.#window = rowWindow({
-        region: this.#region, body: this.#body, table, columns: this.#columns, rows: this.#rows,
+        region: this.#region, body: this.#body, table, columns: this.#shown, rows: this.#rows,
         makeRow: (place) => this.#row(place), plain: (row, column) => this.#plain(row, column),
       });
       this.node.append(this.#find());
     }
-    this.node.append(this.#region, element("div", { class: "table-tools" }, this.#copyMenu(), this.#told));
+    this.node.append(this.#region, this.#moreMark(table), element("div", { class: "table-tools" }, this.#copyMenu(), this.#told));
     this.#draw();
     if (this.#identify) {
       this.#region.addEventListener("keydown", (event) => this.#key(event));
@@ -83,6 +89,27 @@ class DataTable {
       });
       this.#context.choice.subscribe(() => this.#markChoice());
     }
+  }
+
+  // A table that goes on to the right says so; the words go once its end is in view.
+  #moreMark(table) {
+    const mark = element("p", { class: "table-more", "aria-hidden": "true", text: "more columns to the right ▸", hidden: true });
+    const look = () => {
+      const more = this.#region.scrollLeft + this.#region.clientWidth < this.#region.scrollWidth - 2;
+      mark.hidden = !more;
+      this.node.classList.toggle("goes-on", more);
+    };
+    this.#region.addEventListener("scroll", look, { passive: true });
+    const observer = new ResizeObserver(look);
+    observer.observe(this.#region);
+    observer.observe(table);
+    return mark;
+  }
+
+  // Chosen itself, or concerned by what is.
+  #marked(row, id) {
+    const chosen = this.#context.choice.get();
+    return chosen !== null && (id === chosen || this.#concerns(row, chosen));
   }
 
   #head(column, i) {
@@ -105,8 +132,8 @@ class DataTable {
   #row(place) {
     const row = this.#rows[this.#order[place]];
     const id = this.#identify?.(row) ?? null;
-    const chosen = id !== null && id === this.#context.choice.get();
-    const cells = this.#columns.map((column, i) => {
+    const chosen = id !== null && this.#marked(row, id);
+    const cells = this.#shown.map((column, i) => {
       const cell = element(i === 0 ? "th" : "td", {
         scope: i === 0 ? "row" : null,
         class: columnClass(column),
@@ -148,7 +175,7 @@ class DataTable {
     const kept = this.#order[this.#active];
     this.#order = this.#rows.map((_, at) => at);
     if (direction !== 0) {
-      const column = this.#columns[i];
+      const column = this.#shown[i];
       const keys = this.#rows.map((row) => sortKey(column.sort ? column.sort(row) : column.value(row), column.type));
       this.#order.sort((a, b) => direction * compare(keys[a], keys[b]) || a - b);
     }
@@ -190,14 +217,14 @@ class DataTable {
   #markChoice() {
     const chosen = this.#context.choice.get();
     for (const row of this.#body.querySelectorAll("tr[data-id]")) {
-      const marked = row.dataset.id === chosen;
+      const marked = this.#marked(this.#rows[this.#order[Number(row.dataset.place)]], row.dataset.id);
       if (marked) row.setAttribute("aria-current", "true");
       else row.removeAttribute("aria-current");
       row.querySelector(".notch").textContent = marked ? "▸" : "";
     }
     // What was chosen elsewhere is brought into view here, within the table only.
     if (this.#window && chosen !== null && !this.#region.contains(document.activeElement)) {
-      const place = this.#order.findIndex((at) => this.#identify(this.#rows[at]) === chosen);
+      const place = this.#order.findIndex((at) => this.#marked(this.#rows[at], this.#identify(this.#rows[at])));
       if (place >= 0) this.#window.show(place);
     }
   }

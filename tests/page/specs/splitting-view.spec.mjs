@@ -76,13 +76,30 @@ everyDoor("the picture is saved as an SVG that stands by itself, and as PNG", as
 
 everyDoor("a stronger field moves the offsets in cm⁻¹", async (door) => {
   await door.unfold("splitting");
-  const largest = () => door.evaluate(() => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[5].textContent.replace("\u2212", "-")))));
+  const largest = () => door.evaluate(() => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[3].textContent.replace("\u2212", "-")))));
   await door.until(() => document.querySelector("#splitting table"));
+  await door.evaluate(() => {
+    const box = document.querySelector('#splitting select[aria-label="Offsets in"]');
+    box.value = "offset";
+    box.dispatchEvent(new Event("change"));
+  });
   const before = await largest();
   await door.evaluate(() => document.querySelector("#splitting").scrollIntoView());
   await door.type("Field", "1 T");
-  await door.until((old) => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[5].textContent.replace("\u2212", "-")))) > 1.9 * old, before);
+  await door.until((old) => Math.max(...[...document.querySelector("#splitting table").tBodies[0].rows].map((row) => Number(row.cells[3].textContent.replace("\u2212", "-")))) > 1.9 * old, before);
 }, { fragment: line("2P3/2") });
+
+everyDoor("the table shows the offset in the chosen unit, and copies have it in every unit", async (door) => {
+  await door.unfold("splitting");
+  await door.until(() => document.querySelector("#splitting table"));
+  assert.equal(await door.evaluate(() => [...document.querySelectorAll("#splitting .evidence-body thead th")].filter((head) => /offset/.test(head.textContent)).length), 1);
+  await door.evaluate(() => [...document.querySelectorAll("#splitting .copy-list button")].find((each) => each.textContent === "Copy as CSV").click());
+  const [head] = (await door.until(() => window.clips.at(-1))).split("\r\n");
+  for (const unit of ["mu_B B", "cm-1", "GHz", "pm"]) assert.ok(head.includes(`offset (${unit})`), head);
+}, { fragment: line("2P3/2"), before: () => {
+  window.clips = [];
+  Object.defineProperty(navigator, "clipboard", { value: { writeText: async (text) => { window.clips.push(text); } } });
+} });
 
 everyDoor("the splitting is free of what axe finds", async (door) => {
   await door.unfold("splitting");

@@ -146,7 +146,7 @@ everyDoor("sorting by a head is told to everyone, and the answer's order comes b
 
 everyDoor("a bare shell is counted: n = 5 has 25 pairs and 50 states", async (door) => {
   await door.unfold("states");
-  assert.match((await captions(door))[0], /n = 5 \(O\): 5 values of ℓ, 25 pairs \(ℓ, m_ℓ\), 50 states/);
+  assert.match((await captions(door))[0], /n = 5 \(O\): 5 values of ℓ, 25 pairs \(ℓ, mℓ\), 50 states/);
 }, { fragment: "v=1&species=*&configurations.0=n%3D5" });
 
 for (const options of [{ width: 360 }, { width: 820, dark: true }, { width: 1400 }]) {

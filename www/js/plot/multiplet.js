@@ -12,7 +12,7 @@ const THICKEST = 9;
 
 /**
  * The layout for `picture`. `title` is runs; `upper` and `lower` are {rich (runs), levels: [{J, label, runs}]}; `links`
- * [{upperJ, lowerJ, strength, multipole, id, reading}]; `refused` [{upperJ, lowerJ, id, reading}].
+ * [{upperJ, lowerJ, strength, multipole, id, ids, reading}]; `refused` [{upperJ, lowerJ, id, reading}].
  */
 export function multipletLayout({ title, upper, lower, links, refused }) {
   const values = [...new Set([...upper.levels, ...lower.levels].map((level) => halfValue(level.J)))].sort((a, b) => a - b);
@@ -35,7 +35,7 @@ export function multipletLayout({ title, upper, lower, links, refused }) {
       marks: drawn.map((link) => {
         const [x1, y1, x2, y2] = ends(link);
         const [mx, my] = along(x1, y1, x2, y2, link.refused);
-        return { x: mx - 8, y: my - 8, w: 16, h: 16, id: link.id, reading: link.reading };
+        return { x: mx - 8, y: my - 8, w: 16, h: 16, id: link.id, ids: link.ids, reading: link.reading };
       }),
       draw(pen) {
         pen.text(8, 20, title, { fill: "quiet" });

@@ -19,7 +19,8 @@ const MOST_ZOOM = 200;
  *
  * `layout(width, view)` → {height, marks, draw(pen), width?}; `view` is the part of the horizontal extent that
  *   is shown, [0, 1] unzoomed, or ignored when `zoomable` is false.
- *   A mark: {x, y, w, h (its box, for ring and touch), reading: rich text, id: shared choice or null}.
+ *   A mark: {x, y, w, h (its box, for ring and touch), reading: rich text, id: shared choice or null,
+ *   ids: those of what else it belongs to, whose choice rings it too}.
  * `rest`: rich text of the reading line while nobody is on a mark.
  * `walk(index, key, marks)` → next index, for pictures that are walked in two directions.
  * `table`: node shown by "Show as table", or null when the table stands beside the picture already;
@@ -178,7 +179,7 @@ class Picture {
     if (this.#ring === null) return;
     const chosen = this.#context.choice?.get() ?? null;
     const ring = (mark, kind) => svgElement("rect", { class: kind, x: mark.x - 3, y: mark.y - 3, width: mark.w + 6, height: mark.h + 6 });
-    const rings = chosen === null ? [] : this.#marks.filter((mark) => mark.id === chosen && this.#seen(mark)).map((mark) => ring(mark, "ring-chosen"));
+    const rings = chosen === null ? [] : this.#marks.filter((mark) => (mark.id === chosen || mark.ids?.includes(chosen)) && this.#seen(mark)).map((mark) => ring(mark, "ring-chosen"));
     if (this.#at >= 0 && document.activeElement === this.#stage && this.#seen(this.#marks[this.#at])) rings.push(ring(this.#marks[this.#at], "ring-cursor"));
     this.#ring.replaceChildren(...rings);
   }

@@ -46,3 +46,8 @@ export function check(context, key, label, act) {
   });
   return { node: element("label", { class: "check" }, box, element("span", { text: label })), value: () => box.checked };
 }
+
+/** What a hint says to a finger, or to a mouse and keys. */
+export function pointerWords(touch, mouse) {
+  return window.matchMedia("(pointer: coarse)").matches ? touch : mouse;
+}

@@ -3,14 +3,17 @@
 import { element } from "../dom.js";
 import { multipletLayout } from "../plot/multiplet.js";
 import { picture } from "../plot/picture.js";
-import { richPlain, richRuns } from "../rich.js";
+import { richRuns, runNodes } from "../rich.js";
 import { dataTable } from "../table.js";
+import { tableAndPicture } from "./beside.js";
 import { check, fold, select } from "./fold.js";
 import { kindOf, workingNode } from "./working.js";
 
 /** Above this many multiplets the list is cut, and says so; the table still has every line. */
 const LISTED = 2000;
 const ARROW = " – ";
+/** The order of the multipoles: the strongest lines come first. */
+const MULTIPOLES = ["E1", "M1", "E2"];
 
 /** Evidence and working of an answer to "lines". */
 export function render(answer, context) {
@@ -24,9 +27,11 @@ export function lineId({ lower, upper, multipole }) {
 
 class Lines {
   #answer;
+  #ordered;
   #context;
   #levels;
   #tableBox = element("div", { class: "lines-table" });
+  #pictureNote = element("p", { class: "note", hidden: true });
   #shown = null;
 
   constructor(answer, context) {
@@ -34,10 +39,11 @@ class Lines {
     this.#levels = levelsOf(answer);
     this.#context = context;
     const { lines, refused, multiplets } = answer;
-    const multipoles = [...new Set(lines.map((line) => line.multipole))].sort();
+    this.#ordered = [...lines].sort((a, b) => rank(a) - rank(b));
+    const multipoles = [...new Set(this.#ordered.map((line) => line.multipole))];
     const listed = (multiplets ?? []).filter((one) => one.lines !== 0).slice(0, LISTED);
     this.multipole = select(context, "lines:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], () => this.#fill());
-    this.multiplet = select(context, "lines:multiplet", "Multiplet", [["", "all"], ...listed.map((one) => [`${one.name}|${one.multipole}`, `${one.name}, ${one.multipole}`])], () => {
+    this.multiplet = select(context, "lines:multiplet", "Multiplet", [["", "all"], ...listed.map((one) => [`${one.name}|${one.multipole}`, `${dashed(one.name)}, ${one.multipole}`])], () => {
       this.#fill();
       this.#redraw();
     });
@@ -46,7 +52,7 @@ class Lines {
     this.node = element("div", { class: "evidence-parts" },
       element("div", { class: "choices" }, this.multipole.node, this.multiplet.node, this.dotted.node),
       multiplets?.length > listed.length ? element("p", { class: "note", text: `The list has the first ${listed.length} multiplets with lines.` }) : null,
-      element("div", { class: "table-and-picture picture-stays" }, this.#tableBox, this.#picture()),
+      tableAndPicture(this.#tableBox, this.#picture(), "picture-stays"),
       element("div", { class: "parts" },
         refused?.length ? fold(context, "lines:refused-table", [`Refused pairs and the rules that refuse them (${refused.length})`], () => this.#refusedTable()) : null,
         multiplets?.length ? fold(context, "lines:sums", ["Sum rules of each multiplet"], () => this.#sums()) : null));
@@ -56,7 +62,7 @@ class Lines {
   #fill() {
     const wanted = this.multipole.value();
     const [name, multipole] = this.multiplet.value().split("|");
-    const rows = this.#answer.lines.filter((line) => (wanted === "" || line.multipole === wanted)
+    const rows = this.#ordered.filter((line) => (wanted === "" || line.multipole === wanted)
       && (name === "" || (line.multiplet === name && line.multipole === multipole)));
     this.#tableBox.replaceChildren(rows.length === 0 && this.#answer.lines.length > 0
       ? element("p", { text: `No line passes both choices; ${this.#answer.lines.length} stand outside them.` })
@@ -67,29 +73,48 @@ class Lines {
     const first = this.#pictured();
     if (first === null) return null;
     this.#shown = picture({
-      context: this.#context, zoomable: false, name: first.name, layout: multipletLayout(first),
-      rest: "Links are allowed lines, thicker when stronger: E1 whole, M1 dashed, E2 dash and dot. Refused pairs are dotted.",
+      context: this.#context, zoomable: false, name: first.name, layout: multipletLayout(first), rest: this.#legend(),
       tableNear: () => this.#tableBox.querySelector(".table-region")?.focus(),
     });
-    return this.#shown.node;
+    this.#sayWhich(first);
+    return element("div", { class: "picture picture-box" }, this.#pictureNote, this.#shown.node);
   }
 
   #redraw() {
     if (this.#shown === null) return;
     const now = this.#pictured();
-    this.#shown.redraw({ layout: multipletLayout(now), name: now.name });
+    this.#shown.redraw({ layout: multipletLayout(now), name: now.name, rest: this.#legend() });
+    this.#sayWhich(now);
+  }
+
+  #legend() {
+    return `Links are allowed lines, thicker when stronger: E1 whole, M1 dashed, E2 dash and dot.${this.dotted.value() ? " Refused pairs are dotted." : ""}`;
+  }
+
+  // The table may have every multiplet while the picture has room for one.
+  #sayWhich({ title }) {
+    const pairs = new Set(this.#answer.lines.map((line) => line.multiplet)).size;
+    this.#pictureNote.hidden = this.multiplet.value() !== "" || pairs < 2;
+    this.#pictureNote.replaceChildren("The picture shows one multiplet of ", String(pairs), ", ", ...runNodes(title), "; choose a line or a multiplet for another.");
   }
 
   /** The term pair to draw: that of the chosen line, else of the chosen multiplet, else the fullest. */
   #pictured() {
     const { lines, refused = [], multiplets = [] } = this.#answer;
     const chosen = this.#context.choice.get();
-    const picked = chosen?.startsWith("line:") ? [...lines, ...refused].find((one) => lineId(one) === chosen) : null;
+    const picked = chosen?.startsWith("line:") ? [...lines, ...refused].find((one) => lineId(one) === chosen) : this.#concerned(chosen);
     const [name, multipole] = this.multiplet.value().split("|");
     const listed = multiplets.find((one) => one.name === name && one.multipole === multipole)
       ?? multiplets.reduce((best, one) => (best === null || weightOf(one) > weightOf(best) ? one : best), null);
     const sample = picked ?? lines.find((line) => line.multiplet === listed?.name && line.multipole === listed?.multipole) ?? lines[0] ?? refused[0];
     return sample === undefined ? null : this.#pair(this.#levels.get(sample.upper), this.#levels.get(sample.lower));
+  }
+
+  // A line of the chosen level or term, of the multiplet on show if that has one.
+  #concerned(chosen) {
+    if (chosen === null) return null;
+    const own = this.#ordered.filter((line) => isOf(this.#levels, line, chosen));
+    return own.find((line) => line.multiplet === this.multiplet.value().split("|")[0]) ?? own[0] ?? null;
   }
 
   #pair(upper, lower) {
@@ -108,7 +133,7 @@ class Lines {
     const kind = kindOf(this.#answer, "lines.relative");
     const names = (one) => [...this.#levels.get(one.upper).rich, ARROW, ...this.#levels.get(one.lower).rich, `, ${one.multipole}`];
     const links = allowed.map((line) => ({
-      upperJ: line.upper_J, lowerJ: line.lower_J, strength: line.relative, multipole: line.multipole, id: lineId(line),
+      upperJ: line.upper_J, lowerJ: line.lower_J, strength: line.relative, multipole: line.multipole, id: lineId(line), ids: idsOf(this.#levels, line),
       reading: [...names(line), ": relative strength ", { number: { text: String(line.relative), unit: null, kind } }],
     }));
     const dots = this.dotted.value() ? forbidden.map((pair) => ({
@@ -128,7 +153,7 @@ class Lines {
         { name: "standing", type: "text", value: (row) => (row.rigorous ? "rigorous" : "approximate") },
         { name: "rule", type: "text", long: true, value: (row) => row.rule },
       ],
-      identify: lineId,
+      identify: lineId, concerns: (row, chosen) => isOf(this.#levels, row, chosen),
     });
   }
 
@@ -138,7 +163,7 @@ class Lines {
     return dataTable({
       caption: "Strengths summed over the lines that share a level, and what the sum rule expects", rows, context: this.#context, file: "sum rules",
       columns: [
-        { name: "multiplet", type: "text", value: (row) => `${row.one.name}, ${row.one.multipole}`, rich: (row) => [...(names.get(row.one.name) ?? [row.one.name]), `, ${row.one.multipole}`] },
+        { name: "multiplet", type: "text", value: (row) => `${dashed(row.one.name)}, ${row.one.multipole}`, rich: (row) => [...(names.get(row.one.name) ?? [row.one.name]), `, ${row.one.multipole}`] },
         { name: "level", type: "text", value: (row) => row.side },
         { name: "J", type: "half", value: (row) => row.J },
         { name: "sum", type: "number", kind: kindOf(this.#answer, "multiplets.sum"), value: (row) => row.sum },
@@ -159,11 +184,30 @@ function linesTable(rows, answer, levels, context) {
       ...levelColumns(levels),
       { name: "relative strength", type: "number", kind: kindOf(answer, "lines.relative"), value: (row) => row.relative, reason: "only lines of one multiplet are compared" },
       { name: "multipole", type: "text", value: (row) => row.multipole },
-      { name: "multiplet", type: "text", value: (row) => row.multiplet, rich: (row) => names.get(row.multiplet) ?? row.multiplet },
+      { name: "multiplet", type: "text", value: (row) => dashed(row.multiplet), rich: (row) => names.get(row.multiplet) ?? row.multiplet },
       number("wavenumber", "wavenumber", "cm-1"), number("vacuum_nm", "in vacuum", "nm"), number("air_nm", "in air", "nm"), number("S", "S"), number("gf", "gf"), number("A", "A"),
     ].filter(Boolean),
-    identify: lineId,
+    identify: lineId, concerns: (row, chosen) => isOf(levels, row, chosen),
   });
+}
+
+/** The shared-choice ids of a line's levels and of their terms. */
+function idsOf(levels, { upper, lower }) {
+  return [upper, lower].flatMap((label) => [`level:${label}`, levels.get(label).termId]);
+}
+
+function isOf(levels, line, chosen) {
+  return (chosen.startsWith("level:") || chosen.startsWith("term:")) && idsOf(levels, line).includes(chosen);
+}
+
+function rank({ multipole }) {
+  const place = MULTIPOLES.indexOf(multipole);
+  return place < 0 ? MULTIPOLES.length : place;
+}
+
+// Between two terms stands a dash, not a minus.
+function dashed(name) {
+  return name.replace(" - ", ARROW);
 }
 
 /** Each multiplet's name as rich text. */
@@ -176,12 +220,12 @@ function weightOf({ multipole, lines }) {
   return lines + (multipole === "E1" ? 1e9 : 0);
 }
 
-/** Label → {label, rich, J, term, termRich, key}; `key` is the same for all levels of one term. */
+/** Label → {label, rich, J, term, termRich, termId, key}; `key` is the same for all levels of one term. */
 function levelsOf({ levels }) {
   return new Map(levels.map(({ label, rich, J, configuration, term: name }) => {
     const { term } = rich.findLast((item) => item.term);
     const termRich = rich.map((item) => (item.term ? { term: { ...item.term, J: null } } : item));
-    return [label, { label, rich, J, term, termRich, key: `${configuration} ${name} ${term.index ?? ""}` }];
+    return [label, { label, rich, J, term, termRich, termId: `term:${configuration}/${name}#${term.index ?? 1}`, key: `${configuration} ${name} ${term.index ?? ""}` }];
   }));
 }
 

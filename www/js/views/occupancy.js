@@ -4,6 +4,8 @@ import { element } from "../dom.js";
 import { richNode, richPlain } from "../rich.js";
 import { dataTable } from "../table.js";
 
+const M_ELL = { sign: { runs: [{ text: "m" }, { down: "ℓ" }], plain: "m_l", speech: "m l", latex: "$m_\\ell$" } };
+
 function range(values) {
   if (values.length === 0) return "";
   return values.length === 1 ? String(values[0]) : `${String(values[0]).replace("-", "\u2212")} … ${values.at(-1)}`;
@@ -21,7 +23,7 @@ export function shellsTable(entry, context) {
       { name: "electrons", type: "number", value: (row) => row.electrons },
       { name: "capacity", type: "number", value: (row) => row.capacity },
       { name: "filled", type: "text", value: (row) => row.filled },
-      { name: "m_l", head: [{ sign: { runs: [{ text: "m" }, { down: "ℓ" }], plain: "m_l", speech: "m l", latex: "$m_\\ell$" } }], type: "text", value: (row) => range(row.m_l ?? []) },
+      { name: "m_l", head: [M_ELL], type: "text", value: (row) => range(row.m_l ?? []) },
       { name: "m_s", head: [{ sign: { runs: [{ text: "m" }, { down: "s" }], plain: "m_s", speech: "m s", latex: "$m_s$" } }], type: "text", value: (row) => (row.m_s ?? []).map((text) => text.replace("-", "\u2212")).join(", ") },
       { name: "states", type: "number", value: (row) => (typeof row.states === "number" ? row.states : Number(row.states)) },
     ],
@@ -32,11 +34,11 @@ export function shellsTable(entry, context) {
 export function bareShellTable(entry, context) {
   const bare = entry.bare_shell;
   return dataTable({
-    caption: `Shell n = ${bare.n}${bare.letter ? ` (${bare.letter})` : ""}: ${bare.l.length} values of ℓ, ${bare.pairs} pairs (ℓ, m_ℓ), ${bare.states} states`, rows: bare.l, context, file: `shell n=${bare.n}`,
+    caption: [`Shell n = ${bare.n}${bare.letter ? ` (${bare.letter})` : ""}: ${bare.l.length} values of ℓ, ${bare.pairs} pairs (ℓ, `, M_ELL, `), ${bare.states} states`], rows: bare.l, context, file: `shell n=${bare.n}`,
     columns: [
       { name: "subshell", type: "text", value: (row) => `${bare.n}${row.letter}`, sort: (row) => row.l },
       { name: "ℓ", type: "number", value: (row) => row.l },
-      { name: "m_l", head: [{ sign: { runs: [{ text: "m" }, { down: "ℓ" }], plain: "m_l", speech: "m l", latex: "$m_\\ell$" } }], type: "text", value: (row) => range(row.m_l) },
+      { name: "m_l", head: [M_ELL], type: "text", value: (row) => range(row.m_l) },
       { name: "pairs", type: "number", value: (row) => row.pairs },
       { name: "states", type: "number", value: (row) => row.states },
     ],

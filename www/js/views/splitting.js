@@ -6,7 +6,8 @@ import { OFFSET_UNITS, SIGNS, VIEWS, patternLayout } from "../plot/pattern.js";
 import { picture } from "../plot/picture.js";
 import { richNode, richPlain, richRuns, richSpeech } from "../rich.js";
 import { dataTable } from "../table.js";
-import { fold, select } from "./fold.js";
+import { tableAndPicture } from "./beside.js";
+import { fold, pointerWords, select } from "./fold.js";
 import { kindOf, workingNode } from "./working.js";
 
 /** Evidence and working of an answer to "splitting". */
@@ -28,12 +29,13 @@ function evidence(answer, context) {
   const near = element("div", {});
   const shown = picture({
     context, name: name(), layout: layout(),
-    rest: "Walk over the components with the arrow keys or point at them.",
+    rest: pointerWords("Tap a component, or walk with the arrow keys.", "Walk over the components with the arrow keys or point at them."),
     tableNear: () => near.querySelector(".table-region").focus(),
   });
   fillTable();
   function fillTable() {
-    near.replaceChildren(componentsTable(answer, context, unit.value(), view.value()));
+    near.replaceChildren(componentsTable(answer, context, unit.value(), view.value()),
+      element("p", { class: "note copies-note", text: "Copies have the offsets in every unit." }));
   }
   function redraw() {
     fillTable();
@@ -41,7 +43,7 @@ function evidence(answer, context) {
   }
   return element("div", { class: "evidence-parts" },
     element("div", { class: "choices" }, unit.node, view.node),
-    element("div", { class: "table-and-picture picture-first" }, near, shown.node),
+    tableAndPicture(near, shown.node),
     answer.states?.length ? element("div", { class: "parts" },
       fold(context, "splitting:states", ["Both levels in the field"], () => [fan(answer, context, lineName), statesTable(answer, context)])) : null);
 }
@@ -53,7 +55,7 @@ function viewWords(field) {
   return `at ${field.angle_degrees}° to the field`;
 }
 
-// What was chosen for the picture stands first among the offsets and the strengths.
+// What was chosen for the picture stands first; offsets in the other units are there for copies.
 function componentsTable(answer, context, unit, view) {
   const { components, line, field } = answer;
   const column = (key, name, unitName = null) => ({
@@ -71,7 +73,7 @@ function componentsTable(answer, context, unit, view) {
       { name: "M lower", type: "half", value: (row) => row.M_lower },
       column(unit, "offset", OFFSET_UNITS[unit].unit),
       column(view, `strength, ${names[view]}`),
-      ...firstOf(Object.keys(OFFSET_UNITS), unit).slice(1).map((key) => column(key, "offset", OFFSET_UNITS[key].unit)),
+      ...firstOf(Object.keys(OFFSET_UNITS), unit).slice(1).map((key) => ({ ...column(key, "offset", OFFSET_UNITS[key].unit), copied: true })),
       ...firstOf(Object.keys(names), view).slice(1).map((key) => column(key, `strength, ${names[key]}`)),
     ],
   });

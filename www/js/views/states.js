@@ -5,7 +5,8 @@ import { M_L, M_S, gridLayout, gridWalk } from "../plot/grid.js";
 import { picture } from "../plot/picture.js";
 import { richNode } from "../rich.js";
 import { bareShellTable, fillingNode, groundNode, shellsTable } from "./occupancy.js";
-import { fold } from "./fold.js";
+import { tableAndPicture } from "./beside.js";
+import { fold, pointerWords } from "./fold.js";
 import {
   chainsTable, chosenTerm, gridTable, jKTable, jjFactorTable, jjTable, levelsByJTable, levelsTable, parentageTable, readOffTable, termId, termRows, termsTable,
 } from "./terms.js";
@@ -26,14 +27,14 @@ function section(entry, { answer, context, several, first }) {
   if (entry.bare_shell) return element("section", { class: "of-configuration" }, head, bareShellTable(entry, context));
   const filling = first ? entry.filling ?? answer.filling : null;
   return element("section", { class: "of-configuration" }, head,
-    element("div", { class: "table-and-picture" }, termsTable(entry, context), gridPicture(entry, context)),
+    tableAndPicture(termsTable(entry, context), gridPicture(entry, context)),
     facts(entry, context),
     element("div", { class: "parts" },
       entry.levels?.length ? part("levels", `Levels and their g factors (${entry.n_levels})`, () => levelsTable(entry, context, answer)) : null,
       part("by-j", "Levels counted by J", () => levelsByJTable(entry.levels_by_J, ["Levels of ", ...configuration, " by J"], context, `levels by J ${entry.configuration.text}`)),
-      entry.grid ? part("read-off", "How the terms are read off the grid", () => readOffTable(entry, context)) : null,
+      entry.grid ? part("read-off", "Terms by corner cell", () => readOffTable(entry, context)) : null,
       termRows(entry).some((row) => row.parents?.length) ? part("parents", "Parents of each term", () => parentageTable(entry, context, answer)) : null,
-      entry.terms?.some((term) => term.chains?.length) ? part("chains", "How the terms come about", () => chainsTable(entry, context)) : null,
+      entry.terms?.some((term) => term.chains?.length) ? part("chains", "Coupling of the open shells", () => chainsTable(entry, context)) : null,
       entry.ground?.hund ? part("hund", "Ground level: Hund’s rules and observation", () => groundNode(entry, context)) : null,
       entry.shells?.length ? part("shells", "Shells and subshells", () => shellsTable(entry, context)) : null,
       entry.jj?.length ? part("jj", "Levels in jj coupling", () => [jjTable(entry, context), jjFactorTable(entry, context, answer),
@@ -60,7 +61,7 @@ function gridPicture(entry, context) {
   const shown = picture({
     context,
     name: [M_L, " by ", M_S, " grid of ", { configuration: entry.configuration }],
-    rest: ["Microstates by ", M_L, " and ", M_S, ". Choose a term to see the cells it takes; Enter on a corner cell chooses its term."],
+    rest: ["Microstates by ", M_L, " and ", M_S, ". Choose a term to see the cells it takes; ", pointerWords("a tap on", "Enter on"), " a corner cell chooses its term."],
     zoomable: false,
     walk: gridWalk(entry.grid.M_S.length),
     layout: gridLayout({

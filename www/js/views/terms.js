@@ -23,6 +23,26 @@ export function chosenTerm(entry, chosen) {
   return chosenTerm(entry, termId(entry, level.term, level.index)) ?? chosenTerm(entry, termId(entry, level.term, null));
 }
 
+/** Whether a chosen level or line has to do with this term. */
+function termConcerned(entry) {
+  const found = new Map();
+  return (row, chosen) => {
+    if (!found.has(chosen)) {
+      found.clear();
+      found.set(chosen, new Set((entry.levels ?? []).filter((level) => levelConcerned(level, chosen)).map((level) => chosenTerm(entry, `level:${level.label}`)?.id)));
+    }
+    return found.get(chosen).has(termId(entry, row.term, row.index));
+  };
+}
+
+/** Whether a level is the chosen one or an end of the chosen line. */
+function levelConcerned({ label }, chosen) {
+  if (chosen === `level:${label}`) return true;
+  if (!chosen.startsWith("line:")) return false;
+  const ends = chosen.slice("line:".length, chosen.lastIndexOf("/"));
+  return ends.startsWith(`${label}/`) || ends.endsWith(`/${label}`);
+}
+
 /** One row for each kind of each term, where kinds can be told apart; one for each term otherwise. */
 export function termRows(entry) {
   return (entry.terms ?? []).flatMap((term) => {
@@ -50,14 +70,17 @@ export function termsTable(entry, context) {
     { name: "J", type: "text", value: (row) => row.J.join(", ") },
     { name: "times", type: "number", value: (row) => row.times },
     has("seniority") && { name: "seniority", type: "number", value: (row) => row.seniority, reason: group },
-    has("W") && { name: "W", type: "text", value: (row) => (row.W ? `(${row.W.join(" ")})` : null), reason: group },
-    has("U") && { name: "U", type: "text", value: (row) => (row.U ? `(${row.U.join(" ")})` : null), reason: "only for f shells" },
+    has("W") && { name: "W", head: [{ sign: { runs: [{ text: "W" }], plain: "W", speech: "W, label of the rotation group", latex: "$W$" } }], type: "text", value: (row) => (row.W ? `(${row.W.join(" ")})` : null), reason: group },
+    has("U") && { name: "U", head: [{ sign: { runs: [{ text: "U" }], plain: "U", speech: "U, label of the group G 2", latex: "$U$" } }], type: "text", value: (row) => (row.U ? `(${row.U.join(" ")})` : null), reason: "only for f shells" },
   ].filter(Boolean);
   const counted = `${entry.n_terms} ${entry.n_terms === 1 ? "term" : "terms"}, ${entry.n_levels} ${entry.n_levels === 1 ? "level" : "levels"}, ${entry.states} states`;
-  return dataTable({
-    caption: [...captionOf(entry, "Terms of "), `: ${counted}`], columns, rows,
-    identify: (row) => termId(entry, row.term, row.index), context, file: `terms ${entry.configuration.text}`,
+  const table = dataTable({
+    caption: [...captionOf(entry, "Terms of "), `: ${counted} (exact, by counting)`], columns, rows,
+    identify: (row) => termId(entry, row.term, row.index), concerns: termConcerned(entry), context, file: `terms ${entry.configuration.text}`,
   });
+  return has("W") ? element("div", { class: "table-and-note" }, table, element("p", { class: "note", text: has("U")
+    ? "W labels the rotation group in 2ℓ + 1 dimensions and U the group G₂ for each term: they tell terms of the same name apart."
+    : "W labels the rotation group in 2ℓ + 1 dimensions for each term: with the seniority it tells terms of the same name apart." })) : table;
 }
 
 /** What each term is made of: its parents with one electron less, or its coupling chains. */
@@ -101,7 +124,7 @@ export function levelsTable(entry, context, answer) {
       gColumn(kindOf(answer, "levels.g"), (row) => row.g),
       { name: "mu_eff", head: [{ sign: { runs: [{ text: "μ" }, { down: "eff" }], plain: "mu_eff", speech: "mu effective", latex: "$\\mu_\\mathrm{eff}$" } }], unit: "mu_B", type: "number", kind: kindOf(answer, "levels.mu_eff"), value: (row) => row.mu_eff, reason: NO_MOMENT },
     ],
-    identify: (row) => `level:${row.label}`,
+    identify: (row) => `level:${row.label}`, concerns: levelConcerned,
   });
   const all = String(entry.n_levels) === String(rows.length);
   return all ? table : [table, element("p", { class: "note", text: `The first ${rows.length} of ${entry.n_levels} levels are listed; the table of levels by J counts them all.` })];
