@@ -75,7 +75,7 @@ class DataTable {
     if (many) {
       this.#window = rowWindow({
         region: this.#region, body: this.#body, table, columns: this.#shown, rows: this.#rows,
-        makeRow: (place) => this.#row(place), plain: (row, column) => this.#plain(row, column),
+        makeRow: (place) => this.#row(place), plain: (row, column) => this.#asShown(row, column),
       });
       this.node.append(this.#find());
     }
@@ -232,6 +232,13 @@ class DataTable {
   #plain(row, column) {
     const value = column.value(row);
     return value === null || value === undefined ? "–" : fullDigits(value);
+  }
+
+  // As plain as in a copy, but numbers with no more digits than are shown.
+  #asShown(row, column) {
+    const value = column.value(row);
+    if (typeof value !== "number") return this.#plain(row, column);
+    return columnRuns(value, this.#formats[this.#shown.indexOf(column)]).map((run) => run.text ?? run.up).join("");
   }
 
   /** Everything in the table as it is copied: all rows, in the order shown. */
