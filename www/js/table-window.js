@@ -95,7 +95,7 @@ function widths(columns, rows, plain) {
     let longest = Math.min([...column.name].length, 14) / NARROW;
     for (const row of rows) longest = Math.max(longest, plain(row, column).length);
     const col = element("col");
-    col.style.width = `${(Math.min(longest, 60) * (column.rich ? NARROW : 1) + 5).toFixed(1)}ch`;
+    col.style.width = `${(Math.min(longest, 60) * (column.rich ? NARROW : 1) + 3).toFixed(1)}ch`;
     return col;
   }));
 }
