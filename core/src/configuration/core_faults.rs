@@ -100,7 +100,7 @@ pub(super) fn word(text: &str, start: usize, end: usize, word: &str) -> Problem 
         start,
         end,
     )
-    .bound("It is made of subshells such as 3d6 and a core such as [Ar].");
+    .bound("A configuration is made of subshells such as 3d6 and a core such as [Ar].");
     let core = crate::elements::by_symbol(word)
         .or_else(|| crate::elements::by_name(word))
         .filter(|&z| closed_core(z).is_some())

@@ -10,7 +10,7 @@ use crate::quantity::signs::{clipped, is_minus, shown_all, superscript_digit, su
 const LONGEST: usize = 80;
 
 const ELEMENTS: &str =
-    "It is the symbol or English name of an element from 1 to 118, or * for any atom.";
+    "A species is the symbol or English name of an element from 1 to 118, or * for any atom.";
 
 /// A piece of the text: its bytes, and its characters with like signs made one.
 #[derive(Clone, Debug)]
@@ -86,7 +86,7 @@ pub(super) fn unexpected(text: &str, start: usize, end: usize) -> Problem {
         start,
         end,
     )
-    .bound("It is made of Latin letters, digits, + and −, as in Fe II, Fe 2+ or 57Fe.");
+    .bound("A species is made of Latin letters, digits, + and −, as in Fe II, Fe 2+ or 57Fe.");
     let kept: String = text.chars().filter(|&c| plain(c).is_some()).collect();
     match kept.trim() {
         "" => problem.way("Use any atom", "*"),

@@ -421,7 +421,7 @@ pub(super) fn unexpected(text: &str, start: usize, end: usize) -> Problem {
         start,
         end,
     )
-    .bound("It is made of subshells such as 3d6, a core such as [Ar], and spaces or points between them.");
+    .bound("A configuration is made of subshells such as 3d6, a core such as [Ar], and spaces or points between them.");
     way(problem, text, start, end, "")
 }
 

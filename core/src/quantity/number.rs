@@ -127,7 +127,7 @@ pub(super) fn leading(text: &str) -> Result<Leading, Problem> {
             start,
             end,
         )
-        .bound("It begins with a number such as 589.592, 0,5 or 3e-2.")
+        .bound("A value begins with a number such as 589.592, 0,5 or 3e-2.")
         .way("Use 1", with(text, start, end, "1")));
     }
     let (whole, fraction) = mantissa.parts(text, place)?;
@@ -194,7 +194,7 @@ pub fn number(text: &str) -> Result<f64, Problem> {
         start,
         end,
     )
-    .bound("It is a pure number without a unit.")
+    .bound("A pure number without a unit stands here.")
     .way(format!("Use {kept}"), kept))
 }
 

@@ -120,7 +120,7 @@ fn unit_not_wanted(
         start,
         end,
     )
-    .bound("It is a pure number without a unit.")
+    .bound("A pure number without a unit stands here.")
     .way(format!("Use {}", clipped(digits)), digits)
 }
 

@@ -209,7 +209,7 @@ fn read_term(text: &str, written: &str, start: usize) -> Result<(Term, TwiceJ, b
     let (l, after_letter) = read_letter(rest).ok_or_else(|| {
         fault(
             "level-unknown-letter",
-            format!("\"{written}\" has no letter of L after the multiplicity."),
+            format!("\"{written}\" has no capital letter of L after the multiplicity."),
             start + letter_at,
         )
         .bound("The letters are the capitals S P D F G H I K L M N O Q R T U V W X Y Z, then [21], [22] and so on.")
