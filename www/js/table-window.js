@@ -90,12 +90,13 @@ function spacer(columns) {
 
 // Columns keep their widths while rows come and go.
 function widths(columns, rows, plain) {
-  return element("colgroup", {}, ...columns.map((column) => {
+  return element("colgroup", {}, ...columns.map((column, i) => {
     // Heads break after 14 characters; raised and lowered parts are narrower than their letters.
     let longest = Math.min([...column.name].length, 14) / NARROW;
     for (const row of rows) longest = Math.max(longest, plain(row, column).length);
     const col = element("col");
-    col.style.width = `${(Math.min(longest, 60) * (column.rich ? NARROW : 1) + 3).toFixed(1)}ch`;
+    // The first column has the room of the notch besides.
+    col.style.width = `${(Math.min(longest, 60) * (column.rich ? NARROW : 1) + (i === 0 ? 5 : 3)).toFixed(1)}ch`;
     return col;
   }));
 }

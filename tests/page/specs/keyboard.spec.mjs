@@ -61,3 +61,14 @@ everyDoor("Esc folds the open panel in and gives focus back", async (door) => {
   assert.equal(await door.evaluate(() => document.getElementById("settings-panel").hidden), true);
   assert.equal(await door.evaluate(() => document.activeElement.textContent), "Settings");
 });
+
+everyDoor("the columns of the list of keys start level", async (door) => {
+  await door.click("Settings");
+  const tops = await door.evaluate(() => {
+    const heads = [...document.querySelectorAll(".keys h4")].map((head) => head.getBoundingClientRect());
+    const columns = [...new Set(heads.map(({ left }) => left))];
+    return columns.map((left) => Math.min(...heads.filter((head) => head.left === left).map(({ top }) => top)));
+  });
+  assert.ok(tops.length > 1);
+  assert.ok(Math.max(...tops) - Math.min(...tops) < 1, String(tops));
+}, { width: 1400 });

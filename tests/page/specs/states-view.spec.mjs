@@ -144,6 +144,14 @@ everyDoor("sorting by a head is told to everyone, and the answer's order comes b
   assert.deepEqual(await names(), first);
 }, { fragment: CARBON });
 
+everyDoor("the group label W is named aloud and explained under the table", async (door) => {
+  await door.unfold("states");
+  await door.until(() => document.querySelector("#states .table-and-note"));
+  assert.ok(await door.evaluate(() => document.querySelector('#states thead [aria-label="W, label of the rotation group"]') !== null));
+  assert.match(await door.text("#states .table-and-note > .note"), /^W labels the rotation group/);
+  assert.match((await captions(door))[0], /\(exact, by counting\)$/);
+}, { fragment: "v=1&species=*&configurations.0=4f3" });
+
 everyDoor("a bare shell is counted: n = 5 has 25 pairs and 50 states", async (door) => {
   await door.unfold("states");
   assert.match((await captions(door))[0], /n = 5 \(O\): 5 values of ℓ, 25 pairs \(ℓ, mℓ\), 50 states/);
