@@ -36,6 +36,7 @@ pub struct Problem {
 
 impl Problem {
     /// A fault at the bytes `start..end` of the text being read.
+    #[inline(never)]
     pub fn new(code: &'static str, message: impl Into<String>, start: usize, end: usize) -> Self {
         Problem {
             code,
@@ -50,6 +51,7 @@ impl Problem {
 
     /// The same fault with the bound it passed.
     #[must_use]
+    #[inline(never)]
     pub fn bound(mut self, bound: impl Into<String>) -> Self {
         self.bound = Some(bound.into());
         self
@@ -57,6 +59,7 @@ impl Problem {
 
     /// The same fault with one more way out.
     #[must_use]
+    #[inline(never)]
     pub fn way(mut self, label: impl Into<String>, replacement: impl Into<String>) -> Self {
         self.ways.push(WayOut {
             label: label.into(),
@@ -67,6 +70,7 @@ impl Problem {
 
     /// The same fault at a JSON pointer.
     #[must_use]
+    #[inline(never)]
     pub fn at(mut self, path: impl Into<String>) -> Self {
         self.path = path.into();
         self
@@ -74,6 +78,7 @@ impl Problem {
 
     /// The same fault with its place counted in UTF-16 units of `text`, as browsers count.
     #[must_use]
+    #[inline(never)]
     pub fn in_utf16(mut self, text: &str) -> Self {
         self.start = utf16_offset(text, self.start);
         self.end = utf16_offset(text, self.end);

@@ -19,6 +19,7 @@ pub struct Working {
 
 impl Working {
     /// A step with its formula and where the formula comes from.
+    #[inline(never)]
     pub fn new(title: &'static str, formula: Formula, source: &'static str) -> Self {
         Working {
             title,
@@ -31,6 +32,7 @@ impl Working {
 
     /// The same formula with this case's numbers, and what it gives.
     #[must_use]
+    #[inline(never)]
     pub fn numbers(mut self, numbers: Formula, result: Rich) -> Self {
         self.numbers = Some(numbers.into());
         self.result = Some(result);
@@ -57,6 +59,7 @@ pub struct Around {
 
 impl Around {
     /// With its sentence.
+    #[inline(never)]
     pub fn saying(say: Rich) -> Self {
         Around {
             say_plain: say.plain(),

@@ -28,41 +28,49 @@ pub enum Formula {
 }
 
 /// Parts side by side.
+#[inline(never)]
 pub fn row(parts: impl IntoIterator<Item = Formula>) -> Formula {
     Formula::Row(parts.into_iter().collect())
 }
 
 /// An identifier.
+#[inline(never)]
 pub fn name(text: &str) -> Formula {
     Formula::Name(text.to_owned())
 }
 
 /// A number.
+#[inline(never)]
 pub fn number(value: impl ToString) -> Formula {
     Formula::Number(value.to_string().replace('-', "−"))
 }
 
 /// An operator or a bracket.
+#[inline(never)]
 pub fn operator(text: &str) -> Formula {
     Formula::Operator(text.to_owned())
 }
 
 /// a below b.
+#[inline(never)]
 pub fn sub(base: Formula, below: Formula) -> Formula {
     Formula::Sub(Box::new(base), Box::new(below))
 }
 
 /// b above a.
+#[inline(never)]
 pub fn sup(base: Formula, above: Formula) -> Formula {
     Formula::Super(Box::new(base), Box::new(above))
 }
 
 /// a over b.
+#[inline(never)]
 pub fn fraction(over: Formula, under: Formula) -> Formula {
     Formula::Fraction(Box::new(over), Box::new(under))
 }
 
 /// √a.
+#[inline(never)]
 pub fn root(inside: Formula) -> Formula {
     Formula::Root(Box::new(inside))
 }

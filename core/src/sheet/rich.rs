@@ -59,6 +59,7 @@ pub struct TermName {
 
 impl TermName {
     /// The name of a term of a configuration of that parity.
+    #[inline(never)]
     pub fn new(term: Term, odd: bool) -> Self {
         TermName {
             multiplicity: term.multiplicity(),
@@ -70,6 +71,7 @@ impl TermName {
     }
 
     /// The name of a level.
+    #[inline(never)]
     pub fn of_level(level: &Level, odd: bool) -> Self {
         let mut name = TermName::new(level.term, odd).level(level.j);
         name.index = level.index.map(Count);
@@ -78,6 +80,7 @@ impl TermName {
 
     /// The level J of this term.
     #[must_use]
+    #[inline(never)]
     pub fn level(mut self, j: TwiceJ) -> Self {
         self.j = Some(j);
         self
@@ -85,12 +88,14 @@ impl TermName {
 
     /// The k-th of several equal terms.
     #[must_use]
+    #[inline(never)]
     pub fn number(mut self, index: Option<u128>) -> Self {
         self.index = index.map(Count);
         self
     }
 
     /// Bare ASCII as in the answers' keys: `5D`, `5D4`, `2D5/2 #2`.
+    #[inline(never)]
     pub fn plain(&self) -> String {
         let mut text = format!("{}{}", self.multiplicity, self.letter);
         if let Some(j) = self.j {
@@ -174,17 +179,20 @@ pub struct Rich(pub Vec<Piece>);
 
 impl Rich {
     /// Nothing yet.
+    #[inline(never)]
     pub fn new() -> Self {
         Rich(Vec::new())
     }
 
     /// Only words.
+    #[inline(never)]
     pub fn words(text: impl Into<String>) -> Self {
         Rich::new().say(text)
     }
 
     /// With words added.
     #[must_use]
+    #[inline(never)]
     pub fn say(mut self, text: impl Into<String>) -> Self {
         self.0.push(Piece::Words(text.into()));
         self
@@ -192,6 +200,7 @@ impl Rich {
 
     /// With one more piece.
     #[must_use]
+    #[inline(never)]
     pub fn with(mut self, piece: Piece) -> Self {
         self.0.push(piece);
         self
@@ -199,6 +208,7 @@ impl Rich {
 
     /// With another text behind it.
     #[must_use]
+    #[inline(never)]
     pub fn then(mut self, other: &Rich) -> Self {
         self.0.extend(other.0.iter().cloned());
         self
@@ -206,6 +216,7 @@ impl Rich {
 
     /// With a number, its unit and its kind.
     #[must_use]
+    #[inline(never)]
     pub fn number(self, value: f64, unit: Option<&'static str>, kind: Kind) -> Self {
         self.with(Piece::Number {
             text: value.to_string(),
@@ -216,6 +227,7 @@ impl Rich {
 
     /// With an exact whole number and what it counts.
     #[must_use]
+    #[inline(never)]
     pub fn count(self, number: impl ToString, singular: &str, plural: &str) -> Self {
         let text = number.to_string();
         let noun = if text == "1" { singular } else { plural };
@@ -228,6 +240,7 @@ impl Rich {
     }
 
     /// ASCII-leaning plain text, as answers and the command print it.
+    #[inline(never)]
     pub fn plain(&self) -> String {
         self.0.iter().map(Piece::plain).collect()
     }
