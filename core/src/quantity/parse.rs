@@ -424,14 +424,14 @@ mod tests {
                 Dimension::Wavelength,
                 "quantity-out-of-range",
                 (0, 5),
-                "1e-6 nm",
+                "0.001 nm",
             ),
             (
                 "1e9 T",
                 Dimension::FluxDensity,
                 "quantity-out-of-range",
                 (0, 5),
-                "100000 T",
+                "1000 T",
             ),
             (
                 "-300 °C",

@@ -297,11 +297,11 @@ impl Dimension {
 
     const fn description(self) -> Description {
         match self {
-            Dimension::Wavelength => described("wavelength", WAVELENGTH, 1e-6, 1e9),
+            Dimension::Wavelength => described("wavelength", WAVELENGTH, 1e-3, 1e9),
             Dimension::Wavenumber => described("energy", WAVENUMBER, -1e10, 1e10),
             Dimension::Frequency => described("frequency", FREQUENCY, -1e12, 1e12),
-            // 1e5 T is beyond every field that the linear and the full treatment are meant for.
-            Dimension::FluxDensity => described("flux density", FLUX_DENSITY, 0.0, 1e5),
+            // The strongest field in which a sheet is answered; its direction is set by the view.
+            Dimension::FluxDensity => described("flux density", FLUX_DENSITY, 0.0, 1e3),
             Dimension::Temperature => described("temperature", TEMPERATURE, 1e-9, 1e9),
             Dimension::Pressure => described("pressure", PRESSURE, 0.0, 1e9),
             Dimension::Angle => described("angle", ANGLE, -360.0, 360.0),

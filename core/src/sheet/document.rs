@@ -232,20 +232,6 @@ impl Document {
                 .ok()
                 .map(|q| q.value),
         };
-        if !(0.0..=MAX_TESLA).contains(&density.value) {
-            let problem = Problem::new(
-                "field-out-of-range",
-                format!("The flux density is {text}."),
-                0,
-                text.len(),
-            )
-            .bound(format!(
-                "From 0 to {MAX_TESLA} T; its direction is set by the view."
-            ))
-            .way("Use 0.5 T", "0.5 T");
-            self.add(vec![problem], text, "/field/flux_density");
-            return;
-        }
         if let Some(angle_degrees) = angle_degrees {
             self.field = Some(Field {
                 tesla: density.value,
@@ -260,20 +246,7 @@ impl Document {
         if let Some(text) = line.get("wavelength").and_then(Json::as_text)
             && let Ok(wavelength) = quantity::quantity(text, Dimension::Wavelength)
         {
-            let nanometres = wavelength.value;
-            if (1e-3..=1e9).contains(&nanometres) {
-                self.wavelength_nm = Some(nanometres);
-            } else {
-                let problem = Problem::new(
-                    "wavelength-out-of-range",
-                    format!("The wavelength is {text}."),
-                    0,
-                    text.len(),
-                )
-                .bound("From 0.001 nm to 1 m.")
-                .way("Use 589.592 nm", "589.592 nm");
-                self.add(vec![problem], text, "/line/wavelength");
-            }
+            self.wavelength_nm = Some(wavelength.value);
         }
         let mut ends = [None, None];
         for (end, key) in ends.iter_mut().zip(["upper", "lower"]) {
@@ -473,9 +446,6 @@ impl Document {
         label::format(label, &of.level)
     }
 }
-
-/// The strongest static field in which a sheet is answered, in tesla.
-pub const MAX_TESLA: f64 = 1000.0;
 
 /// Sorts faults by where their path stands in the sheet, then by place in the text.
 fn sort_by_place(faults: &mut Vec<Problem>, json: &Json) {
