@@ -1,7 +1,7 @@
 // Files in and out: opening by button or drop, saving by download, by the share sheet, by copying.
 
 import { element } from "./dom.js";
-import { faultNode } from "./fields.js";
+import { faultNode, wayButton } from "./fields.js";
 
 /** The largest sheet or record, in bytes; the core has the same bound. */
 export const MAX_FILE = 40_000_000;
@@ -45,13 +45,15 @@ export function acceptDrops(open, refuse) {
 }
 
 /** What the notes show of a file that cannot be used. */
-export function fileFaults(name, faults, text = "") {
+export function fileFaults(name, faults, text, openText) {
   return element("div", { class: "file-faults" },
     element("p", { class: "sentence", text: `"${name}" was not opened; your sheet is as it was.` }),
     ...faults.slice(0, 20).map((fault) => {
       const node = faultNode(fault, fault.path === "" && fault.end > 0 ? text : "");
       const place = fault.path ? `At ${fault.path}.` : fault.end > 0 && text !== "" ? `${lineOf(text, fault.start)}.` : null;
       if (place) node.append(element("p", { class: "bound", text: place }));
+      // Without a path a way out is the whole text of the file, put right.
+      if (fault.path === "") node.append(...fault.ways.map((way) => wayButton(way, () => openText(way.replacement))));
       return node;
     }),
     faults.length > 20 ? element("p", { text: `… and ${faults.length - 20} more.` }) : null);

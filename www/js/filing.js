@@ -32,22 +32,26 @@ export class Filing {
       this.refuse(fault);
       return;
     }
+    await this.#openText(text, file.name);
+  }
+
+  async #openText(text, name) {
     const result = await this.#engine.request("open", "open", [text]);
     if (result.text === undefined) {
       if (result.panic) {
-        this.#notes.put("file", { kind: "fault", more: panicNode(result.panic, () => this.open(file), () => this.saveSheet()) });
+        this.#notes.put("file", { kind: "fault", more: panicNode(result.panic, () => this.#openText(text, name), () => this.saveSheet()) });
       }
       return;
     }
     const message = JSON.parse(result.text);
     const faults = message.faults ?? (isGroup(message.sheet) ? null : [NO_SHEET]);
     if (faults !== null) {
-      this.#notes.put("file", { kind: "fault", more: fileFaults(file.name, faults, text) });
+      this.#notes.put("file", { kind: "fault", more: fileFaults(name, faults, text, (better) => this.#openText(better, name)) });
       return;
     }
     this.#notes.remove("file");
-    this.#replace(message.sheet, `Open "${file.name}"`);
-    if (message.record) this.#verdict(file.name, message.record);
+    this.#replace(message.sheet, `Open "${name}"`);
+    if (message.record) this.#verdict(name, message.record);
   }
 
   refuse(fault) {

@@ -45,6 +45,13 @@ everyDoor("bad files are a plain fault each, and nothing is lost", async (door) 
     await noteThat(door, new RegExp(`${name}.*${words.source}`));
     assert.equal(await value(door, "/species"), "Ne");
   }
+  // A file that can be put right says how; taking the way out opens it.
+  await drop(door, "comma.json", '{"rungline": 1, "species": "Na",}');
+  await noteThat(door, /comma\.json/);
+  await door.evaluate(() => document.querySelector(".file-faults .way").click());
+  await door.until(() => document.querySelector('[data-path="/species"]').value === "Na");
+  await door.press("Control+z");
+  assert.equal(await value(door, "/species"), "Ne");
   await door.evaluate(() => {
     const carried = new DataTransfer();
     carried.items.add(new File(["{}"], "a.json"));
