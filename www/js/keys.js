@@ -34,13 +34,12 @@ const KEYS = [
 
 /** The list of all keys. */
 export function keyList() {
-  return element("div", { class: "keys" }, ...KEYS.flatMap(([where, rows]) => [
+  return element("div", { class: "keys" }, ...KEYS.map(([where, rows]) => element("section", {},
     element("h4", { text: where }),
     element("dl", {}, ...rows.flatMap(([key, what]) => [
       element("dt", {}, element("kbd", { text: key })),
       element("dd", { text: what }),
-    ])),
-  ]));
+    ])))));
 }
 
 /** Listens for the keys that work everywhere; on an Apple keyboard Command stands for Ctrl. */

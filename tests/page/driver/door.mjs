@@ -197,12 +197,26 @@ export class Door {
   }
 
   /** Clicks the visible button, link or summary with this text or accessible label. */
+  /** Waits until an element stays where it is: what comes into the page above it moves it away from the pointer. */
+  async settled(element) {
+    await element.evaluate((node) => node.scrollIntoView({ block: "center", behavior: "instant" }));
+    await element.evaluate(async (node) => {
+      const place = () => { const { x, y } = node.getBoundingClientRect(); return `${x} ${y}`; };
+      const rest = () => new Promise((resolve) => setTimeout(resolve, 80));
+      for (let before = null, tries = 0; tries < 40 && before !== place(); tries += 1) {
+        before = place();
+        await rest();
+      }
+    });
+  }
+
   async click(text) {
     const handle = await this.page.evaluateHandle((wanted) => [...document.querySelectorAll("button, a, summary, [role=button], label, option")].find(
       (each) => each.checkVisibility() && (each.getAttribute("aria-label") ?? each.textContent).trim() === wanted,
     ) ?? null, text);
     const element = handle.asElement();
     if (!element) throw new Error(`There is nothing to click called “${text}”.`);
+    await this.settled(element);
     await element.click();
   }
 

@@ -47,11 +47,12 @@ everyDoor("the head leads to the first fault, and focus is never under the head"
   await door.evaluate(() => document.getElementById("fault-count").focus());
   await door.press("Enter");
   assert.equal(await door.evaluate(() => document.activeElement.dataset.path), "/species");
-  const covered = await door.evaluate(() => {
+  // The page may still be growing above the field when the focus arrives: where it comes to rest counts.
+  await door.until(() => {
     const head = document.getElementById("head").getBoundingClientRect();
-    return document.activeElement.getBoundingClientRect().top < head.bottom - 1 && head.top <= 0;
+    const covered = document.activeElement.getBoundingClientRect().top < head.bottom - 1 && head.top <= 0;
+    return !covered && document.activeElement.dataset.path === "/species";
   });
-  assert.equal(covered, false);
 });
 
 everyDoor("Esc folds the open panel in and gives focus back", async (door) => {
@@ -66,8 +67,8 @@ everyDoor("the columns of the list of keys start level", async (door) => {
   await door.click("Settings");
   const tops = await door.evaluate(() => {
     const heads = [...document.querySelectorAll(".keys h4")].map((head) => head.getBoundingClientRect());
-    const columns = [...new Set(heads.map(({ left }) => left))];
-    return columns.map((left) => Math.min(...heads.filter((head) => head.left === left).map(({ top }) => top)));
+    const columns = [...new Set(heads.map(({ left }) => Math.round(left)))];
+    return columns.map((column) => Math.min(...heads.filter(({ left }) => Math.round(left) === column).map(({ top }) => top)));
   });
   assert.ok(tops.length > 1);
   assert.ok(Math.max(...tops) - Math.min(...tops) < 1, String(tops));
