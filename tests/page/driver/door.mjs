@@ -197,13 +197,18 @@ export class Door {
   }
 
   /** Clicks the visible button, link or summary with this text or accessible label. */
-  /** Waits until an element stays where it is: what comes into the page above it moves it away from the pointer. */
+  /**
+   * Waits until an element stays where it is: an answer that arrives above it moves it away from the
+   * pointer. A run that is meant to last is not waited for longer than two seconds.
+   */
   async settled(element) {
-    await element.evaluate((node) => node.scrollIntoView({ block: "center", behavior: "instant" }));
     await element.evaluate(async (node) => {
+      const rest = () => new Promise((resolve) => setTimeout(resolve, 40));
+      const moving = () => document.querySelector('.rung[data-settling="true"]') !== null;
+      for (let tries = 0; tries < 50 && moving(); tries += 1) await rest();
+      node.scrollIntoView({ block: "center", behavior: "instant" });
       const place = () => { const { x, y } = node.getBoundingClientRect(); return `${x} ${y}`; };
-      const rest = () => new Promise((resolve) => setTimeout(resolve, 80));
-      for (let before = null, tries = 0; tries < 40 && before !== place(); tries += 1) {
+      for (let before = null, tries = 0; tries < 50 && before !== place(); tries += 1) {
         before = place();
         await rest();
       }
