@@ -206,7 +206,6 @@ export class Door {
       const rest = () => new Promise((resolve) => setTimeout(resolve, 40));
       const moving = () => document.querySelector('.rung[data-settling="true"]') !== null;
       for (let tries = 0; tries < 50 && moving(); tries += 1) await rest();
-      node.scrollIntoView({ block: "center", behavior: "instant" });
       const place = () => { const { x, y } = node.getBoundingClientRect(); return `${x} ${y}`; };
       for (let before = null, tries = 0; tries < 50 && before !== place(); tries += 1) {
         before = place();
