@@ -12,6 +12,7 @@ pub mod elements;
 pub mod numerics;
 pub mod problem;
 pub mod quantity;
+pub mod radial;
 pub mod radiation;
 pub mod sheet;
 pub mod splitting;

@@ -14,6 +14,7 @@ const ORDER: &[&str] = &[
     "elements",
     "configuration",
     "terms",
+    "radial",
     "radiation",
     "splitting",
     "sheet",
