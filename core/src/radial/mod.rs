@@ -3,3 +3,4 @@
 //! Energies in hartree, lengths in a₀; P(r) = r·R(r).
 
 pub mod blume_watson;
+pub mod hydrogenic;
