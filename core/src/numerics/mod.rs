@@ -1,6 +1,12 @@
 //! Numerical tools free of the physics that uses them.
 
+pub mod anderson;
+pub mod banded;
+pub mod banded_eigen;
 pub mod binomial;
+pub mod gauss_legendre;
+pub mod linear;
 pub mod natural;
 pub mod order;
+pub mod spline;
 pub mod symmetric;
