@@ -2,5 +2,13 @@
 //!
 //! Energies in hartree, lengths in a₀; P(r) = r·R(r).
 
+pub mod average;
 pub mod blume_watson;
+pub mod expectation;
+pub mod hartree_fock;
 pub mod hydrogenic;
+pub mod knots;
+pub mod mesh;
+pub mod nucleus;
+pub mod slater;
+pub mod thomas_fermi;

@@ -1,0 +1,62 @@
+//! Polarisation of the core by the electrons outside it.
+
+use super::atom::fault;
+use crate::configuration::Orbital;
+use crate::problem::Problem;
+
+/// A polarisable core: V_p(r) = −½ α r²/(r² + ρ²)³ for every electron outside it.
+///
+/// What the field of one outer electron does to the core is taken to act on that electron alone; the
+/// mixed term of two outer electrons is left out. In E1 integrals the dipole that an outer electron
+/// induces in the core belongs to it: r becomes r [1 − α/(r² + ρ²)^{3/2}], see
+/// [`Polarisation::dipole`]. Source: Migdalek and Baylis, J. Phys. B 11, L497 (1978).
+#[derive(Clone, Debug, PartialEq)]
+pub struct Polarisation {
+    /// Static dipole polarisability of the core, a₀³.
+    pub alpha: f64,
+    /// Cut-off radius, a₀; about the mean radius of the core's outermost orbital.
+    pub radius: f64,
+    /// The orbitals of the core.
+    pub core: Vec<Orbital>,
+}
+
+impl Polarisation {
+    /// # Errors
+    /// `polarisability-not-positive` and `polarisation-radius-not-positive`, also where they are not finite.
+    pub fn check(&self) -> Result<(), Problem> {
+        let positive = |value: f64| value > 0.0 && value.is_finite();
+        if !positive(self.alpha) {
+            return Err(fault(
+                "polarisability-not-positive",
+                format!(
+                    "A core polarisability of {} a0^3 has no meaning.",
+                    self.alpha
+                ),
+                "a polarisability above 0".into(),
+            ));
+        }
+        if !positive(self.radius) {
+            return Err(fault(
+                "polarisation-radius-not-positive",
+                format!(
+                    "A cut-off radius of {} a0 leaves the potential without bound.",
+                    self.radius
+                ),
+                "a cut-off radius above 0".into(),
+            ));
+        }
+        Ok(())
+    }
+
+    /// V_p at r, hartree.
+    pub fn potential(&self, r: f64) -> f64 {
+        let square = r * r + self.radius * self.radius;
+        -0.5 * self.alpha * r * r / (square * square * square)
+    }
+
+    /// The factor 1 − α/(r² + ρ²)^{3/2} on the dipole operator r.
+    pub fn dipole(&self, r: f64) -> f64 {
+        let square = r * r + self.radius * self.radius;
+        1.0 - self.alpha / (square * square.sqrt())
+    }
+}
