@@ -1,0 +1,201 @@
+//! Every atom, its first ions, its K and L holes and its excited states: do they converge?
+
+use rungline_core::configuration::{Orbital, Subshell, filling};
+use rungline_core::radial::hartree_fock::{Atom, HEAVIEST, solve};
+use rungline_core::radial::nucleus::stable_mass_number;
+use rungline_tests::{Row, report};
+
+/// What a sweep found.
+#[derive(Default)]
+struct Found {
+    cases: usize,
+    iterations: usize,
+    most: usize,
+    virial: f64,
+    failures: Vec<String>,
+}
+
+impl Found {
+    fn run(&mut self, name: &str, z: u8, subshells: &[Subshell], relativity: bool) {
+        let atom = if relativity {
+            Atom::relativistic(z, subshells.to_vec(), stable_mass_number(z))
+        } else {
+            Atom::new(z, subshells.to_vec())
+        };
+        self.cases += 1;
+        match solve(&atom, &mut |_| true) {
+            Ok(solution) => {
+                self.iterations += solution.iterations();
+                self.most = self.most.max(solution.iterations());
+                let deviation = (solution.virial_ratio() + 2.0).abs();
+                if !relativity {
+                    self.virial = self.virial.max(deviation);
+                }
+                let bound = solution.orbitals.iter().all(|o| o.energy < 0.0);
+                let near = solution.residual() < 1e-10;
+                if !(bound && near && solution.total_energy.is_finite()) {
+                    self.failures.push(format!("{name}, Z = {z}: no good"));
+                }
+            }
+            Err(failure) => {
+                let message = failure.problem.message;
+                self.failures.push(format!("{name}, Z = {z}: {message}"));
+            }
+        }
+    }
+
+    fn close(self, name: &str, what: &str) {
+        println!(
+            "{what}: {} runs, {:.1} iterations each, {} at most",
+            self.cases,
+            self.iterations as f64 / self.cases as f64,
+            self.most
+        );
+        for failure in &self.failures {
+            eprintln!("{what}: {failure}");
+        }
+        report(
+            name,
+            Row {
+                quantity: format!("{what}: runs that do not converge"),
+                cases: self.cases,
+                worst: self.failures.len() as f64,
+                tolerance: 0.0,
+                measure: "cases".into(),
+                source: "ground configurations from mendeleev 1.3.0 (MIT)".into(),
+            },
+        );
+        if self.virial > 0.0 {
+            report(
+                &format!("{name}_virial"),
+                Row {
+                    quantity: format!("{what}: virial ratio + 2"),
+                    cases: self.cases,
+                    worst: self.virial,
+                    tolerance: 1e-8,
+                    measure: "absolute".into(),
+                    source: "the virial theorem".into(),
+                },
+            );
+        }
+    }
+}
+
+fn ground(z: u8, charge: i32) -> Vec<Subshell> {
+    let ground = filling::ground(z, charge).expect("a ground configuration");
+    ground.configuration().subshells().to_vec()
+}
+
+/// One electron less in an orbital.
+fn without(subshells: &[Subshell], orbital: Orbital) -> Vec<Subshell> {
+    subshells
+        .iter()
+        .filter_map(|s| match s.orbital() == orbital {
+            true => Subshell::new(orbital, s.electrons() - 1),
+            false => Some(*s),
+        })
+        .collect()
+}
+
+/// One electron more in an orbital, where it has room.
+fn with(subshells: &[Subshell], orbital: Orbital) -> Option<Vec<Subshell>> {
+    let held = subshells.iter().find(|s| s.orbital() == orbital);
+    let added = Subshell::new(orbital, held.map_or(0, |s| s.electrons()) + 1)?;
+    let mut all: Vec<Subshell> = subshells
+        .iter()
+        .copied()
+        .filter(|s| s.orbital() != orbital)
+        .collect();
+    all.push(added);
+    Some(all)
+}
+
+fn orbital(n: u8, l: u8) -> Orbital {
+    Orbital::new(n, l).expect("ℓ below n")
+}
+
+fn atoms_and_ions(relativity: bool) -> Found {
+    let mut found = Found::default();
+    for charge in 0..=2 {
+        for z in 1..=HEAVIEST {
+            if i32::from(z) > charge {
+                found.run(
+                    &format!("charge {charge}"),
+                    z,
+                    &ground(z, charge),
+                    relativity,
+                );
+            }
+        }
+    }
+    found
+}
+
+fn holes(relativity: bool) -> Found {
+    let mut found = Found::default();
+    for z in 10..=92 {
+        for (n, l) in [(1, 0), (2, 0), (2, 1)] {
+            let hole = without(&ground(z, 0), orbital(n, l));
+            found.run(&format!("hole in {}", orbital(n, l)), z, &hole, relativity);
+        }
+    }
+    found
+}
+
+/// One electron excited to every nℓ up to n = 12, ℓ = 5, above the singly charged ground configuration.
+fn excited(relativity: bool) -> Found {
+    let mut found = Found::default();
+    for z in [
+        2u8, 3, 6, 10, 11, 13, 19, 20, 26, 29, 37, 47, 55, 56, 64, 80, 82, 87, 92,
+    ] {
+        let core = ground(z, 1);
+        for l in 0..=5 {
+            for n in l + 1..=12 {
+                if let Some(subshells) = with(&core, orbital(n, l)) {
+                    found.run(
+                        &format!("{} excited", orbital(n, l)),
+                        z,
+                        &subshells,
+                        relativity,
+                    );
+                }
+            }
+        }
+    }
+    found
+}
+
+#[test]
+fn atoms_and_ions_converge() {
+    atoms_and_ions(false).close("radial_sweep", "neutral atoms, charges 1 and 2");
+}
+
+#[test]
+fn atoms_and_ions_converge_with_relativity() {
+    let what = "neutral atoms, charges 1 and 2, with relativity";
+    atoms_and_ions(true).close("radial_sweep_relativity", what);
+}
+
+#[test]
+fn inner_holes_converge() {
+    holes(false).close("radial_holes", "K and L holes of Z = 10 to 92");
+}
+
+#[test]
+fn inner_holes_converge_with_relativity() {
+    let what = "K and L holes of Z = 10 to 92, with relativity";
+    holes(true).close("radial_holes_relativity", what);
+}
+
+#[test]
+fn excited_configurations_converge() {
+    excited(false).close("radial_excited", "excited to n = 12, ℓ = 5");
+}
+
+#[test]
+fn excited_configurations_converge_with_relativity() {
+    excited(true).close(
+        "radial_excited_relativity",
+        "excited to n = 12, ℓ = 5, with relativity",
+    );
+}
