@@ -5,14 +5,11 @@
 //! (`tests/native/house.rs` guards it).
 #![forbid(unsafe_code)]
 
-pub mod angular;
+pub use rungline_kernel::{angular, constants, numerics, problem, radial};
+
 pub mod configuration;
-pub mod constants;
 pub mod elements;
-pub mod numerics;
-pub mod problem;
 pub mod quantity;
-pub mod radial;
 pub mod radiation;
 pub mod sheet;
 pub mod splitting;

@@ -4,20 +4,35 @@
 use std::collections::BTreeSet;
 use std::path::{Path, PathBuf};
 
-/// The modules of the core; each may use those before it and none after it.
-const ORDER: &[&str] = &[
-    "constants",
-    "problem",
-    "quantity",
-    "numerics",
-    "angular",
-    "elements",
-    "configuration",
-    "terms",
-    "radial",
-    "radiation",
-    "splitting",
-    "sheet",
+/// The packages of the core with their modules; each module may use those before it and none after it.
+const PACKAGES: &[(&str, &[&str])] = &[
+    (
+        "core/kernel/src",
+        &[
+            "constants",
+            "problem",
+            "quantity",
+            "json_text",
+            "numerics",
+            "angular",
+            "configuration",
+            "projections",
+            "weights",
+            "radial",
+        ],
+    ),
+    (
+        "core/src",
+        &[
+            "quantity",
+            "elements",
+            "configuration",
+            "terms",
+            "radiation",
+            "splitting",
+            "sheet",
+        ],
+    ),
 ];
 
 /// Lines that a file may have; empty ones, comments and a Rust file's test module are not counted.
@@ -73,7 +88,10 @@ fn files(folder: &Path, endings: &[&str]) -> Vec<PathBuf> {
 }
 
 fn core_files() -> Vec<PathBuf> {
-    files(&root().join("core/src"), &[".rs"])
+    PACKAGES
+        .iter()
+        .flat_map(|(package, _)| files(&root().join(package), &[".rs"]))
+        .collect()
 }
 
 /// The code of a Rust file: its test modules, comments and the contents of its texts left out, one
@@ -132,11 +150,20 @@ fn skip_text(characters: &mut std::iter::Peekable<std::str::Chars<'_>>, lines: &
     }
 }
 
-/// The module of the core that a file belongs to; nothing for the crate's root and its programs.
+/// The package of the core that a file belongs to, and its place inside.
+fn package_of(file: &Path) -> (&'static [&'static str], PathBuf) {
+    PACKAGES
+        .iter()
+        .find_map(|(package, modules)| {
+            let inside = file.strip_prefix(root().join(package)).ok()?;
+            Some((*modules, inside.to_path_buf()))
+        })
+        .expect("a file of the core")
+}
+
+/// The module of the core that a file belongs to; nothing for a package's root and its programs.
 fn module_of(file: &Path) -> Option<String> {
-    let inside = file
-        .strip_prefix(root().join("core/src"))
-        .expect("a file of the core");
+    let (_, inside) = package_of(file);
     let first = inside
         .components()
         .next()?
@@ -193,30 +220,34 @@ fn modules_named(code: &str) -> BTreeSet<String> {
 
 /// How many steps of `super` lead from a file's module to the crate.
 fn depth(file: &Path) -> usize {
-    let inside = file
-        .strip_prefix(root().join("core/src"))
-        .expect("a file of the core");
     let is_folder = file.file_name().is_some_and(|name| name == "mod.rs");
-    inside.components().count() - usize::from(is_folder)
+    package_of(file).1.components().count() - usize::from(is_folder)
 }
 
-fn place_of(module: &str) -> Option<usize> {
-    ORDER.iter().position(|each| *each == module)
+fn place_of(modules: &[&str], module: &str) -> Option<usize> {
+    modules.iter().position(|each| *each == module)
 }
 
 #[test]
 fn every_module_has_its_place_in_the_order() {
-    let library = code(&root().join("core/src/lib.rs")).join("\n");
-    let modules: Vec<&str> = library
-        .lines()
-        .filter_map(|line| line.trim().strip_prefix("pub mod ")?.strip_suffix(';'))
-        .collect();
-    assert!(!modules.is_empty());
-    for module in modules {
-        assert!(
-            place_of(module).is_some(),
-            "{module} has no place in the order"
-        );
+    for (package, order) in PACKAGES {
+        let library = code(&root().join(package).join("lib.rs")).join("\n");
+        let modules: Vec<&str> = library
+            .lines()
+            .filter_map(|line| {
+                let line = line.trim();
+                line.strip_prefix("pub mod ")
+                    .or_else(|| line.strip_prefix("mod "))?
+                    .strip_suffix(';')
+            })
+            .collect();
+        assert!(!modules.is_empty());
+        for module in modules {
+            assert!(
+                place_of(order, module).is_some(),
+                "{module} of {package} has no place in the order"
+            );
+        }
     }
 }
 
@@ -227,11 +258,12 @@ fn modules_depend_downwards_only() {
         let Some(module) = module_of(&file) else {
             continue;
         };
-        let own = place_of(&module).unwrap_or_else(|| panic!("{module} has no place"));
+        let (order, _) = package_of(&file);
+        let own = place_of(order, &module).unwrap_or_else(|| panic!("{module} has no place"));
         let code = code(&file).join("\n");
         for named in modules_named(&code) {
             // A macro or a type of the crate's root is no module.
-            if place_of(&named).is_some_and(|place| place > own) {
+            if place_of(order, &named).is_some_and(|place| place > own) {
                 upward.push(format!("{} uses {named}", file.display()));
             }
         }
@@ -302,7 +334,14 @@ fn indexes(line: &str) -> bool {
 fn no_file_outgrows_one_concept() {
     let root = root();
     let mut long = Vec::new();
-    for folder in ["core/src", "web/src", "web/site/src", "www/js", "tests"] {
+    for folder in [
+        "core/kernel/src",
+        "core/src",
+        "web/src",
+        "web/site/src",
+        "www/js",
+        "tests",
+    ] {
         for file in files(&root.join(folder), &[".rs", ".js", ".mjs"]) {
             let lines = if file.extension().is_some_and(|extension| extension == "rs") {
                 code(&file)

@@ -2,8 +2,8 @@
 
 use std::fmt;
 
+use super::Orbital;
 use super::filling::filling_order;
-use super::orbital::Orbital;
 use crate::elements::HEAVIEST;
 
 /// The block: the ℓ of the subshell that fills.

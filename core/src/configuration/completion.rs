@@ -2,9 +2,9 @@
 
 use super::filling::filling_order;
 use super::occupation::{Configuration, closed_core, join};
-use super::orbital::{Orbital, Subshell};
 use super::species::Species;
 use super::written::Written;
+use super::{Orbital, Subshell};
 use crate::elements::symbol;
 use crate::numerics::order::{sort, sort_by_key};
 use crate::problem::Problem;

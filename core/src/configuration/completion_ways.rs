@@ -3,8 +3,8 @@
 use super::completion::{Parts, full_subshells};
 use super::filling::{filling_order, ground};
 use super::occupation::{Configuration, closed_core};
-use super::orbital::{Orbital, Subshell};
 use super::species::Species;
+use super::{Orbital, Subshell};
 use crate::elements::symbol;
 use crate::numerics::order::sort_by_key;
 

@@ -1,7 +1,7 @@
 //! The faults of what stands beside subshells in a configuration's text: cores, words, bare shells.
 
+use super::MAX_N;
 use super::occupation::{NOBLE_GASES, closed_core};
-use super::orbital::MAX_N;
 use super::text_faults::way;
 use crate::elements::{nearest, symbol};
 use crate::problem::Problem;

@@ -4,7 +4,7 @@ use crate::numerics::order::sort_by_key;
 use std::cmp::Reverse;
 
 use super::occupation::{Configuration, configuration_of};
-use super::orbital::{Orbital, Subshell};
+use super::{Orbital, Subshell};
 use crate::elements::{HEAVIEST, ObservedGround, observed_ground};
 
 /// Orbitals in the order n + ℓ, then n (the order in which subshells fill in neutral atoms;

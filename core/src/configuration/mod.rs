@@ -6,7 +6,6 @@ mod completion_ways;
 mod core_faults;
 pub mod filling;
 mod occupation;
-mod orbital;
 pub mod shells;
 pub mod species;
 mod species_faults;
@@ -17,6 +16,8 @@ mod written;
 
 pub use completion::{CompletedCore, MAX_N_FILLING, Reading, complete};
 pub use occupation::{Configuration, NOBLE_GASES, closed_core, join};
-pub use orbital::{MAX_N, Orbital, Subshell, l_of_letter, orbital_letter, total_letter};
+pub use rungline_kernel::configuration::{
+    MAX_N, Orbital, Subshell, l_of_letter, orbital_letter, total_letter,
+};
 pub use species::Species;
 pub use written::{Written, WrittenCore, WrittenSubshell, parse};

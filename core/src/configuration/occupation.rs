@@ -4,7 +4,7 @@ use crate::numerics::order::sort;
 use std::fmt;
 use std::sync::LazyLock;
 
-use super::orbital::{Orbital, Subshell};
+use super::{Orbital, Subshell};
 use crate::elements::{HEAVIEST, ObservedGround, observed_ground, symbol};
 
 /// Atomic numbers of the noble gases, whose symbols abbreviate a core.

@@ -1,7 +1,7 @@
 //! Shells and what they hold; the bare shell n.
 
 use super::occupation::Configuration;
-use super::orbital::{MAX_N, Orbital, Subshell, orbital_letter};
+use super::{MAX_N, Orbital, Subshell, orbital_letter};
 use crate::quantity::TwiceJ;
 
 /// The letter of shell n: K L M N O P Q for 1…7 (common practice, no source), nothing beyond.

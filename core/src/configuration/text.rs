@@ -2,9 +2,9 @@
 
 use super::core_faults;
 use super::occupation::closed_core;
-use super::orbital::{MAX_N, Orbital, Subshell, l_of_letter};
 use super::text_faults as faults;
 use super::written::{Written, WrittenCore, WrittenSubshell};
+use super::{MAX_N, Orbital, Subshell, l_of_letter};
 use crate::elements::by_symbol;
 use crate::numerics::order::sort_by_key;
 use crate::problem::Problem;

@@ -1,9 +1,9 @@
 //! The faults of a configuration's text, each with its code, place, bound and ways out.
 
 use super::filling::filling_order;
-use super::orbital::{MAX_N, Orbital, Subshell, orbital_letter};
 use super::text::{LONGEST, is_separator};
 use super::written::WrittenSubshell;
+use super::{MAX_N, Orbital, Subshell, orbital_letter};
 use crate::problem::Problem;
 use crate::quantity::signs::{clipped, shown_all};
 

@@ -1,6 +1,6 @@
 //! A configuration as typed: its core, its subshells with their places, or a bare shell.
 
-use super::orbital::Subshell;
+use super::Subshell;
 use super::text::Reader;
 use crate::problem::Problem;
 

@@ -89,7 +89,11 @@ pub fn by_name(name: &str) -> Option<u8> {
 /// Distance: insertions, deletions, replacements and exchanges of letters, in any case; names further than a
 /// third of their length away are left out, symbols further than one letter.
 pub fn nearest(text: &str, most: usize) -> Vec<u8> {
-    let wanted: Vec<char> = text.chars().take(24).flat_map(char::to_lowercase).collect();
+    let wanted: Vec<char> = text
+        .chars()
+        .take(24)
+        .map(|c| c.to_ascii_lowercase())
+        .collect();
     let mut found: Vec<(usize, u8)> = Vec::new();
     for z in 1..=HEAVIEST {
         let Some((symbol, name)) = entry(z) else {

@@ -1,6 +1,6 @@
 //! The reading of angular momenta.
 
-use super::half_integer::TwiceJ;
+use super::TwiceJ;
 use super::number::{leading, sized};
 use super::signs::clipped;
 use crate::problem::Problem;

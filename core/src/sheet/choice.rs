@@ -52,7 +52,7 @@ pub fn nearest<'a>(typed: &str, known: impl Iterator<Item = &'a str>) -> Option<
     let typed: Vec<char> = typed
         .chars()
         .take(64)
-        .flat_map(char::to_lowercase)
+        .map(|c| c.to_ascii_lowercase())
         .collect();
     known
         .map(|word| (distance(&typed, word), word))

@@ -265,5 +265,5 @@ pub fn fault_words(fault: &Problem) -> String {
 
 /// JSON text of a value that serialises without fail: no maps with odd keys, no foreign types.
 fn to_json<T: Serialize + ?Sized>(value: &T) -> String {
-    serde_json::to_string(value).unwrap_or_default()
+    rungline_kernel::json_text(value)
 }

@@ -7,9 +7,9 @@
 use super::ls::{self, LsTerm};
 use super::open_shells;
 use super::term::Term;
-use super::weights::text_of;
 use crate::configuration::Subshell;
 use crate::problem::Problem;
+use rungline_kernel::weights::text_of;
 use std::fmt;
 
 /// The most couplings of two terms that are tried for one listing, about a tenth of a second.

@@ -1,9 +1,9 @@
 //! The M_L × M_S grid of a configuration, off which its terms are read.
 
-use super::weights::Weights;
 use crate::configuration::Subshell;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
+use rungline_kernel::weights::Weights;
 
 /// Numbers of states by M_L and M_S.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -23,7 +23,7 @@ pub fn grid(subshells: &[Subshell]) -> Result<Grid, Problem> {
     let weights = Weights::of(subshells)?;
     let l_max = i32::try_from(weights.l_max()).unwrap_or(i32::MAX);
     let two_s_max = i32::try_from(weights.two_s_max()).unwrap_or(i32::MAX);
-    let by_falling_m_s: Vec<&Vec<u128>> = weights.rows().iter().rev().collect();
+    let by_falling_m_s: Vec<&[u128]> = weights.rows().rev().collect();
     let counts = (0..by_falling_m_s.first().map_or(0, |row| row.len()))
         .rev()
         .map(|c| {

@@ -1,10 +1,11 @@
 //! jj levels: every nℓ^N divided between j = ℓ − ½ and j = ℓ + ½, each j^n antisymmetrised, all
 //! coupled to J (Condon & Shortley 1935, ch. X; Cowan 1981, §4-15).
 
-use super::weights::{MAX_STEPS, convolve, gaussian_binomials, states, text_of};
 use crate::configuration::{Orbital, Subshell};
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
+use rungline_kernel::projections::{convolve, gaussian_binomials};
+use rungline_kernel::weights::{MAX_STEPS, states, text_of};
 use std::fmt;
 
 /// The largest j whose equivalent electrons are counted, that of ℓ = 49.

@@ -6,12 +6,12 @@
 //! Spectra*, 1935, ch. VII; Cowan, *The Theory of Atomic Structure and Spectra*, 1981, ch. 4).
 
 use super::term::{Level, Term};
-use super::weights::Weights;
 use crate::configuration::Subshell;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
+use rungline_kernel::weights::Weights;
 
-pub use super::weights::{MAX_STATES, states};
+pub use rungline_kernel::weights::{MAX_STATES, states};
 
 /// A term and how many times a configuration has it.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -36,36 +36,17 @@ pub struct LsTerms {
 /// Errors: `too-many-states` above 2¹²⁰ states, `counting-too-long` above 10⁸ steps.
 pub fn terms(subshells: &[Subshell]) -> Result<LsTerms, Problem> {
     let states = states(subshells)?;
-    let weights = Weights::of(subshells)?;
+    let found = Weights::of(subshells)?.terms();
     Ok(LsTerms {
-        terms: from_weights(&weights),
+        terms: found
+            .into_iter()
+            .map(|(two_s, l, times)| LsTerm {
+                term: Term { two_s, l },
+                times,
+            })
+            .collect(),
         states,
     })
-}
-
-/// The terms that a table of projections consists of.
-pub(super) fn from_weights(weights: &Weights) -> Vec<LsTerm> {
-    let mut found = Vec::new();
-    let mut two_s = Some(weights.two_s_max());
-    while let Some(spin) = two_s {
-        for l in (0..=weights.l_max()).rev() {
-            let with = weights
-                .count(spin, l)
-                .saturating_add(weights.count(spin.saturating_add(2), l.saturating_add(1)));
-            let without = weights
-                .count(spin.saturating_add(2), l)
-                .saturating_add(weights.count(spin, l.saturating_add(1)));
-            let times = with.saturating_sub(without);
-            if times > 0 {
-                found.push(LsTerm {
-                    term: Term { two_s: spin, l },
-                    times,
-                });
-            }
-        }
-        two_s = spin.checked_sub(2);
-    }
-    found
 }
 
 impl LsTerms {

@@ -14,7 +14,6 @@ pub mod lande;
 pub mod ls;
 pub mod seniority;
 mod term;
-mod weights;
 
 pub use term::{Level, Term};
 

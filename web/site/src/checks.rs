@@ -21,6 +21,7 @@ const ONLY_FULL: &[&str] = &["speed"];
 
 /// The packages that run on this machine.
 const NATIVE: &[&str] = &[
+    "rungline-kernel",
     "rungline-core",
     "rungline-web",
     "rungline-site",

@@ -91,11 +91,12 @@ pub fn compile(
         .join("rungline_web.wasm"))
 }
 
-/// What rustc is told for the browser: 128-bit vectors, which change no bit of a result, the
-/// memory's maximum, and to leave this machine's folders out of what is shipped.
+/// What rustc is told for the browser: 128-bit vectors, which change no bit of a result; no bulk
+/// copies of memory, which cost a browser more than the few bytes that most copies are; the memory's
+/// maximum; and to leave this machine's folders out of what is shipped.
 pub fn flags(paths: &Paths) -> String {
     let mut flags = vec![
-        "-Ctarget-feature=+simd128".to_string(),
+        "-Ctarget-feature=+simd128,-bulk-memory".to_string(),
         format!("-Clink-arg=--max-memory={MAX_MEMORY}"),
         format!("--remap-path-prefix={}=.", paths.root.display()),
     ];
@@ -140,8 +141,9 @@ pub fn optimise(paths: &Paths, node: &Node, from: &Path, to: &Path) -> Outcome<(
     capture(
         node.tool(paths, "binaryen/bin/wasm-opt")
             .args([
-                "-Oz",
-                "--merge-similar-functions",
+                "-O3",
+                // Functions of one room side by side: they are alike, and gzip sees that.
+                "--reorder-functions-by-name",
                 "--strip-debug",
                 "--strip-producers",
             ])

@@ -19,7 +19,7 @@ pub fn orbital_letter(l: u32) -> String {
 
 /// The letter of a total L: `S`, `P`, …, `Z` for 20, `[21]` beyond.
 pub fn total_letter(l: u32) -> String {
-    orbital_letter(l).to_uppercase()
+    orbital_letter(l).to_ascii_uppercase()
 }
 
 /// The ℓ that a single lower-case letter stands for.
