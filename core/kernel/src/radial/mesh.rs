@@ -349,6 +349,25 @@ impl Mesh {
         }
     }
 
+    /// ∫₀^r f ds at every point, f being interpolated as in [`Mesh::add_field`].
+    pub fn running_integral(&self, f: &[f64]) -> Vec<f64> {
+        let mut out = vec![0.0; f.len()];
+        let mut before = 0.0;
+        let parts = f.chunks_exact(POINTS).zip(out.chunks_exact_mut(POINTS));
+        for ((f, out), half) in parts.zip(&self.halves) {
+            let mut whole = 0.0;
+            out.fill(before);
+            for ((f, column), weight) in f.iter().zip(&self.running).zip(&self.rule) {
+                whole += half * weight * f;
+                for (sum, a) in out.iter_mut().zip(column) {
+                    *sum += a * half * f;
+                }
+            }
+            before += whole;
+        }
+        out
+    }
+
     /// Σ c_i B_i with the coefficients that come nearest to f, given at the points.
     pub fn fit(&self, f: &[f64]) -> Vec<f64> {
         let weighted: Vec<f64> = f.iter().zip(&self.weights).map(|(f, w)| f * w).collect();

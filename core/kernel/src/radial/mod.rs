@@ -9,6 +9,8 @@ pub mod hartree_fock;
 pub mod hydrogenic;
 pub mod knots;
 pub mod mesh;
+pub mod multipole;
 pub mod nucleus;
 pub mod slater;
+pub mod spin_orbit;
 pub mod thomas_fermi;

@@ -75,6 +75,8 @@ pub struct RadialOrbital {
     /// The local potential it moves in: nucleus, direct field without its own, core polarisation, at
     /// the mesh's points, hartree.
     pub potential: Vec<f64>,
+    /// 1/M at the mesh's points: 1 without relativity.
+    pub inverse_mass: Vec<f64>,
     /// Coefficients of P on the mesh's splines.
     pub coefficients: Vec<f64>,
     /// P at the mesh's points; positive near the nucleus.

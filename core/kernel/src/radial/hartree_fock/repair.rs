@@ -17,6 +17,13 @@ const ASIDE: f64 = 1e6;
 /// Part of the largest |P| below which a lobe is not counted.
 const FAINT: f64 = 1e-3;
 
+/// The sign of P near the nucleus, where it is not faint.
+pub(super) fn first_sign(p: &[f64]) -> f64 {
+    let top = p.iter().fold(0.0_f64, |m, p| m.max(p.abs()));
+    let first = p.iter().find(|p| p.abs() > FAINT * top);
+    first.map_or(1.0, |p| p.signum())
+}
+
 /// Whether P has n − ℓ − 1 nodes inside its largest maximum. Further out, exchange may add faint ones.
 pub(super) fn has_its_nodes(wave: &Wave) -> bool {
     let mut largest = 0.0_f64;

@@ -3,7 +3,7 @@
 use super::atom::{Atom, fault};
 use super::field::{Coefficients, total_energy, update};
 use super::iterate::{DECAY, End, iterate, reach};
-use super::repair::{has_its_nodes, state};
+use super::repair::{first_sign, has_its_nodes, state};
 use super::start;
 use super::wave::{Case, Wave, active};
 use super::{Failure, Progress, RadialOrbital, Solution};
@@ -241,6 +241,12 @@ fn solution(
         history: Vec::new(),
         mesh: case.mesh,
         orbitals: (waves.into_iter().zip(subshells))
+            .map(|(mut wave, subshell)| {
+                let sign = first_sign(&wave.p);
+                wave.p.iter_mut().for_each(|p| *p *= sign);
+                wave.coefficients.iter_mut().for_each(|c| *c *= sign);
+                (wave, subshell)
+            })
             .map(|(wave, subshell)| RadialOrbital {
                 orbital: subshell.orbital(),
                 electrons: subshell.electrons(),
@@ -248,6 +254,7 @@ fn solution(
                 one_electron: wave.one_electron,
                 kinetic: wave.kinetic,
                 potential: wave.local,
+                inverse_mass: wave.inverse_mass,
                 coefficients: wave.coefficients,
                 p: wave.p,
             })

@@ -91,10 +91,6 @@ fn eigenfunctions(case: &Case, z: f64, local: &[f64], waves: &mut [Wave]) -> Opt
         }
         wave.energy = value;
         wave.p = mesh.sample(mesh.values(), &coefficients);
-        // Positive near the nucleus, as is usual.
-        if wave.p.first().is_some_and(|p| *p < 0.0) {
-            coefficients.iter_mut().for_each(|c| *c = -*c);
-        }
         wave.coefficients = coefficients;
     }
     None
