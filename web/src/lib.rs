@@ -6,7 +6,7 @@
 #[cfg(feature = "bench")]
 pub mod bench;
 
-use rungline_core::sheet::{self, Json};
+use rungline_core::sheet::{self, Json, Progress};
 use wasm_bindgen::prelude::*;
 
 /// Sends a panic's words to the page before the trap ends this worker.
@@ -14,15 +14,38 @@ use wasm_bindgen::prelude::*;
 pub fn start() {
     std::panic::set_hook(Box::new(|information| {
         console_error_panic_hook::hook(information);
-        let message = js_sys::Object::new();
-        let text = JsValue::from_str(&information.to_string());
-        if js_sys::Reflect::set(&message, &JsValue::from_str("panic"), &text).is_ok()
-            && let Ok(worker) = js_sys::global().dyn_into::<web_sys::DedicatedWorkerGlobalScope>()
-        {
-            // Nothing is left to tell when even this message cannot be sent.
-            let _ = worker.post_message(&message);
-        }
+        post("panic", &JsValue::from_str(&information.to_string()));
     }));
+}
+
+/// Posts `{key: value}` to the page; nowhere else than in a worker is there anyone to tell.
+fn post(key: &str, value: &JsValue) {
+    let message = js_sys::Object::new();
+    if js_sys::Reflect::set(&message, &JsValue::from_str(key), value).is_ok()
+        && let Ok(worker) = js_sys::global().dyn_into::<web_sys::DedicatedWorkerGlobalScope>()
+    {
+        // Nothing is left to do when even this message cannot be sent.
+        let _ = worker.post_message(&message);
+    }
+}
+
+/// The least time between two messages of progress, in milliseconds.
+const PROGRESS_EVERY: f64 = 100.0;
+
+/// Posts a calculation's iterations as `{progress: {…}}`, at most ten a second. It never stops a
+/// calculation: the page does that by ending this worker.
+fn teller() -> impl FnMut(&Progress) -> bool {
+    let mut told = js_sys::Date::now();
+    move |progress| {
+        let now = js_sys::Date::now();
+        if now - told >= PROGRESS_EVERY
+            && let Ok(value) = serde_wasm_bindgen::to_value(progress)
+        {
+            told = now;
+            post("progress", &value);
+        }
+        true
+    }
 }
 
 fn json(value: JsValue) -> Result<Json, JsValue> {
@@ -44,7 +67,17 @@ pub fn read(sheet: JsValue) -> Result<String, JsValue> {
 /// One answer, or the faults that stand before it.
 #[wasm_bindgen]
 pub fn answer(sheet: JsValue, question: &str) -> Result<String, JsValue> {
-    Ok(sheet::answer_message(&json(sheet)?, question))
+    Ok(sheet::answer_message_watched(
+        &json(sheet)?,
+        question,
+        &mut teller(),
+    ))
+}
+
+/// The radial densities of the sheet's subshells for their picture, or the faults before them.
+#[wasm_bindgen]
+pub fn curves(sheet: JsValue) -> Result<String, JsValue> {
+    Ok(sheet::curves_message(&json(sheet)?, &mut teller()))
 }
 
 /// Seconds and megabytes that an answer is likely to take.
@@ -56,7 +89,7 @@ pub fn estimate(sheet: JsValue, question: &str) -> Result<String, JsValue> {
 /// The sheet in the text of a file, be it a sheet or a record.
 #[wasm_bindgen]
 pub fn open(text: &str) -> String {
-    sheet::open_message(text)
+    sheet::open_message(text, &mut teller())
 }
 
 /// The text of a sheet's file.
@@ -68,7 +101,7 @@ pub fn save(sheet: JsValue) -> Result<String, JsValue> {
 /// The text of a record: the sheet, its answers, the version, the constants' year, the cautions.
 #[wasm_bindgen]
 pub fn record(sheet: JsValue) -> Result<String, JsValue> {
-    Ok(sheet::record_message(&json(sheet)?))
+    Ok(sheet::record_message_watched(&json(sheet)?, &mut teller()))
 }
 
 /// The chart of the elements for one charge.

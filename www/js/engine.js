@@ -27,11 +27,11 @@ export class Engine {
    * One call of the core. A newer request with the same key supersedes an older one. Resolves to
    * {text}, {waits: estimate}, {superseded: true}, {stopped: true} or {panic: words}.
    */
-  request(key, door, parameters, { asked = false, onEstimate = null } = {}) {
+  request(key, door, parameters, { asked = false, onEstimate = null, onProgress = null } = {}) {
     return new Promise((resolve) => {
       this.#waiting.get(key)?.resolve({ superseded: true });
       this.#waiting.delete(key);
-      const request = { key, door, parameters, asked, onEstimate, resolve, id: 0, since: 0 };
+      const request = { key, door, parameters, asked, onEstimate, onProgress, resolve, id: 0, since: 0 };
       if (key === "read") this.#waiting = new Map([[key, request], ...this.#waiting]);
       else this.#waiting.set(key, request);
       if (this.#running?.key === key) this.#abandon();
@@ -106,6 +106,9 @@ export class Engine {
       this.#next();
     } else if (typeof data.panic === "string") {
       this.#panic = data.panic;
+    } else if (data.progress) {
+      // Only one calculation runs at a time, and a worker that was given up is not heard.
+      this.#running?.onProgress?.(data.progress);
     } else if (data.id !== this.#running?.id) {
       // The answer to a request that has been given up.
     } else if (data.estimate) {

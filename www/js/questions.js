@@ -98,7 +98,7 @@ export class Questions {
   async ask(name, asked = false) {
     const entry = this.entries.get(name);
     const turn = this.#turn;
-    const run = { since: performance.now(), estimate: null, shown: false, timer: 0 };
+    const run = { since: performance.now(), estimate: null, progress: null, shown: false, timer: 0 };
     this.#endRun(entry);
     Object.assign(entry, { run, waits: null, panic: null, stopped: false, unread: false });
     run.timer = setTimeout(() => {
@@ -109,6 +109,10 @@ export class Questions {
       asked,
       onEstimate: (estimate) => {
         run.estimate = estimate;
+        if (run.shown) this.#tell(name);
+      },
+      onProgress: (progress) => {
+        run.progress = progress;
         if (run.shown) this.#tell(name);
       },
     });

@@ -71,6 +71,10 @@ constants! {
     ELECTRON_MASS_U = "electron mass in u", "m_e", 0.0005485799090441, 9.7e-15, "u";
     /// m_p in atomic mass units.
     PROTON_MASS_U = "proton mass in u", "m_p", 1.0072764665789, 8.3e-12, "u";
+    /// m_d in atomic mass units.
+    DEUTERON_MASS_U = "deuteron mass in u", "m_d", 2.013553212544, 1.5e-11, "u";
+    /// m_α in atomic mass units.
+    ALPHA_MASS_U = "alpha particle mass in u", "m_α", 4.001506179129, 6.2e-11, "u";
     /// 1 u.
     ATOMIC_MASS = "atomic mass constant", "m_u", 1.66053906892e-27, 5.2e-37, "kg";
 }

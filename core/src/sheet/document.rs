@@ -11,6 +11,7 @@ use super::entry::{Content, Entry, Named, content};
 use super::json::Json;
 use super::rich::{Piece, Rich};
 use super::schema;
+use super::structure::{self, Structure};
 
 /// A level of one of the sheet's configurations.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -47,6 +48,8 @@ pub struct Document {
     pub line: Option<(LevelOf, LevelOf)>,
     /// Vacuum wavelength of the line in nanometres.
     pub wavelength_nm: Option<f64>,
+    /// How radial functions are computed.
+    pub structure: Structure,
     /// Level energies from measurements, in cm⁻¹.
     pub measured: Vec<(LevelOf, f64)>,
     /// Keys that no question of this version uses.
@@ -54,12 +57,13 @@ pub struct Document {
 }
 
 /// Keys of the sheet that the questions of this version use.
-const USED: [&str; 8] = [
+const USED: [&str; 9] = [
     "rungline",
     "title",
     "note",
     "species",
     "configurations",
+    "structure",
     "measured",
     "field",
     "line",
@@ -77,14 +81,21 @@ impl Document {
         document.read_field(json);
         document.read_line(json);
         document.read_measured(json);
+        document.structure = Structure::read(json, &mut document.faults);
         super::parameters::check(json, &mut document.faults);
-        if let Json::Object(entries) = json {
-            document.unused_keys = entries
+        let keys = |json: Option<&Json>, used: &[&str]| match json {
+            Some(Json::Object(entries)) => entries
                 .iter()
                 .map(|(key, _)| key.clone())
-                .filter(|key| schema::is_known(key) && !USED.contains(&key.as_str()))
-                .collect();
-        }
+                .filter(|key| !used.contains(&key.as_str()))
+                .collect(),
+            _ => Vec::new(),
+        };
+        document.unused_keys = keys(Some(json), &USED);
+        document.unused_keys.retain(|key| schema::is_known(key));
+        let inner = keys(json.get("structure"), &structure::USED);
+        let inner = inner.iter().map(|key| format!("structure.{key}"));
+        document.unused_keys.extend(inner);
         sort_by_place(&mut document.faults, json);
         document
     }

@@ -82,7 +82,10 @@ impl Formula {
             Formula::Row(parts) => parts.iter().map(Formula::plain).collect(),
             Formula::Name(text) | Formula::Number(text) => text.clone(),
             Formula::Operator(text)
-                if matches!(text.as_str(), "(" | ")" | "[" | "]" | "{" | "}" | "!" | ",") =>
+                if matches!(
+                    text.as_str(),
+                    "(" | ")" | "[" | "]" | "{" | "}" | "⟨" | "⟩" | "!" | ","
+                ) =>
             {
                 text.clone()
             }

@@ -73,6 +73,11 @@ pub fn lack(document: &Document, question: Question) -> Option<Lack> {
     };
     match question {
         Question::States => None,
+        Question::Orbitals => super::orbitals_case::need(document).map(|needs| Lack {
+            code: "needs-a-nucleus",
+            needs,
+            way: None,
+        }),
         Question::Lines => {
             let pairs = pairs::pairs(document);
             if pairs == 0 {

@@ -18,6 +18,14 @@ mod level_names;
 mod line_rows;
 mod lines;
 mod lines_words;
+mod orbitals;
+mod orbitals_cache;
+mod orbitals_case;
+mod orbitals_closed;
+mod orbitals_field;
+mod orbitals_rows;
+mod orbitals_sample;
+mod orbitals_words;
 mod pairs;
 mod parameters;
 mod reading;
@@ -28,6 +36,8 @@ mod shells;
 mod splitting;
 mod states;
 mod states_words;
+mod structure;
+mod watch;
 
 use serde::Serialize;
 
@@ -38,6 +48,7 @@ pub use document::Document;
 pub use json::{Json, MAX_BYTES};
 pub use reading::reading;
 pub use record::{Recheck, recheck_text};
+pub use watch::{Progress, Watch, unwatched};
 
 /// The program's version, as records carry it.
 pub const VERSION: &str = env!("CARGO_PKG_VERSION");
@@ -47,6 +58,8 @@ pub const VERSION: &str = env!("CARGO_PKG_VERSION");
 pub enum Question {
     /// Which states does the configuration allow, and which lies lowest?
     States,
+    /// Which radial functions, with what energies, radii, integrals and ζ?
+    Orbitals,
     /// Which lines are allowed, and how strong are they beside each other?
     Lines,
     /// How does the line split in the field?
@@ -55,12 +68,18 @@ pub enum Question {
 
 impl Question {
     /// All questions in the order of work.
-    pub const ALL: [Question; 3] = [Question::States, Question::Lines, Question::Splitting];
+    pub const ALL: [Question; 4] = [
+        Question::States,
+        Question::Orbitals,
+        Question::Lines,
+        Question::Splitting,
+    ];
 
     /// Its key among the answers.
     pub fn name(self) -> &'static str {
         match self {
             Question::States => "states",
+            Question::Orbitals => "orbitals",
             Question::Lines => "lines",
             Question::Splitting => "splitting",
         }
@@ -74,10 +93,15 @@ impl Question {
 /// The answer of a checked sheet to one question, as JSON text.
 ///
 /// # Errors
-/// What the question lacks, as a fault.
-pub fn answer(document: &Document, question: Question) -> Result<String, Vec<Problem>> {
+/// What the question lacks, as a fault; a long calculation that found no end or was stopped.
+pub fn answer(
+    document: &Document,
+    question: Question,
+    watch: &mut Watch,
+) -> Result<String, Vec<Problem>> {
     let text = match question {
         Question::States => states::answer(document).map(|a| to_json(&a)),
+        Question::Orbitals => orbitals::answer(document, watch).map(|a| to_json(&a)),
         Question::Lines => lines::answer(document).map(|a| to_json(&a)),
         Question::Splitting => splitting::answer(document).map(|a| to_json(&a)),
     };
@@ -85,7 +109,11 @@ pub fn answer(document: &Document, question: Question) -> Result<String, Vec<Pro
 }
 
 /// Every answer that the document allows, or the one asked for: `{"states":{…}}`.
-fn answers(document: &Document, question: Option<Question>) -> Result<String, Vec<Problem>> {
+fn answers(
+    document: &Document,
+    question: Option<Question>,
+    watch: &mut Watch,
+) -> Result<String, Vec<Problem>> {
     if !document.faults.is_empty() {
         return Err(document.faults.clone());
     }
@@ -93,13 +121,13 @@ fn answers(document: &Document, question: Option<Question>) -> Result<String, Ve
         return Ok(format!(
             "{{\"{}\":{}}}",
             question.name(),
-            answer(document, question)?
+            answer(document, question, watch)?
         ));
     }
     let mut parts = Vec::new();
     let mut first_fault = None;
     for question in Question::ALL {
-        match answer(document, question) {
+        match answer(document, question, watch) {
             Ok(text) => parts.push(format!("\"{}\":{text}", question.name())),
             // What a question lacks or cannot do is no reason to keep the other answers back.
             Err(faults) => first_fault = first_fault.or(Some(faults)),
@@ -121,7 +149,7 @@ pub fn answer_text(text: &str, question: Option<Question>) -> Result<String, Vec
     let document = Document::read(sheet);
     Ok(format!(
         "{{\"rungline\":1,\"answers\":{}}}",
-        answers(&document, question)?
+        answers(&document, question, &mut unwatched)?
     ))
 }
 
@@ -132,11 +160,16 @@ pub fn is_json(text: &str) -> bool {
 
 /// The answer to one question for the page: `{"answer":{…}}` or `{"faults":[…]}`.
 pub fn answer_message(sheet: &Json, question: &str) -> String {
+    answer_message_watched(sheet, question, &mut unwatched)
+}
+
+/// [`answer_message`], telling `watch` how far it has come.
+pub fn answer_message_watched(sheet: &Json, question: &str, watch: &mut Watch) -> String {
     let result = match Question::named(question) {
         Some(question) => {
             let document = Document::read(sheet);
             if document.faults.is_empty() {
-                answer(&document, question)
+                answer(&document, question, watch)
             } else {
                 Err(document.faults)
             }
@@ -148,7 +181,7 @@ pub fn answer_message(sheet: &Json, question: &str) -> String {
                 0,
                 0,
             )
-            .bound("The questions are states, lines and splitting."),
+            .bound("The questions are states, orbitals, lines and splitting."),
         ]),
     };
     match result {
@@ -165,16 +198,34 @@ pub fn estimate_message(sheet: &Json, question: &str) -> String {
         megabytes: f64,
     }
     let document = Document::read(sheet);
-    let rows = match Question::named(question) {
-        Some(Question::States) => states::rows(&document),
-        Some(Question::Lines) => pairs::rows(&document),
-        Some(Question::Splitting) | None => 0.0,
-    };
     // Measured in a browser: about 4 µs and 600 bytes for each row of an answer.
+    let rows = |rows: f64| (rows * 4e-6, rows * 6e-4);
+    let (seconds, megabytes) = match Question::named(question) {
+        Some(Question::States) => rows(states::rows(&document)),
+        Some(Question::Orbitals) => orbitals::estimate(&document),
+        Some(Question::Lines) => rows(pairs::rows(&document)),
+        Some(Question::Splitting) | None => (0.0, 0.0),
+    };
     to_json(&Estimate {
-        seconds: 0.002 + rows * 4e-6,
-        megabytes: 4.0 + rows * 6e-4,
+        seconds: 0.002 + seconds,
+        megabytes: 4.0 + megabytes,
     })
+}
+
+/// The densities of all subshells for their picture: `{"curves":[…]}` or `{"faults":[…]}`.
+///
+/// They stand beside the answer and not in it, so that answers and records stay small.
+pub fn curves_message(sheet: &Json, watch: &mut Watch) -> String {
+    let document = Document::read(sheet);
+    let curves = if document.faults.is_empty() {
+        orbitals::curves(&document, watch).map_err(|problem| vec![problem])
+    } else {
+        Err(document.faults)
+    };
+    match curves {
+        Ok(curves) => to_json(&curves),
+        Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
+    }
 }
 
 /// The version, the year of the constants and the questions of this build.
@@ -198,7 +249,7 @@ pub fn about() -> String {
 /// What a file holds: `{"sheet":…,"record":null|{…}}` or `{"faults":[…]}`.
 ///
 /// A sheet with faults still opens: its fields show them.
-pub fn open_message(text: &str) -> String {
+pub fn open_message(text: &str, watch: &mut Watch) -> String {
     #[derive(Serialize)]
     struct Opened<'a> {
         sheet: &'a Json,
@@ -206,7 +257,7 @@ pub fn open_message(text: &str) -> String {
     }
     match json::read(text) {
         Err(problem) => format!("{{\"faults\":{}}}", faults_json(&[problem])),
-        Ok(json) => match record::open(&json) {
+        Ok(json) => match record::open(&json, watch) {
             Ok((sheet, record)) => to_json(&Opened { sheet, record }),
             Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
         },
@@ -215,11 +266,16 @@ pub fn open_message(text: &str) -> String {
 
 /// The record of a sheet for the page: `{"record":"text"}` or `{"faults":[…]}`.
 pub fn record_message(sheet: &Json) -> String {
+    record_message_watched(sheet, &mut unwatched)
+}
+
+/// [`record_message`], telling `watch` how far it has come.
+pub fn record_message_watched(sheet: &Json, watch: &mut Watch) -> String {
     #[derive(Serialize)]
     struct Recorded {
         record: String,
     }
-    match record::record(sheet) {
+    match record::record(sheet, watch) {
         Ok(record) => to_json(&Recorded { record }),
         Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
     }

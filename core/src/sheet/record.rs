@@ -6,6 +6,7 @@ use crate::problem::Problem;
 
 use super::document::Document;
 use super::json::{self, Json};
+use super::watch::{Watch, unwatched};
 use super::{VERSION, answers, to_json};
 
 /// What rechecking a record found.
@@ -46,7 +47,7 @@ impl Recheck {
 /// The faults of the text, or that it holds no record.
 pub fn recheck_text(text: &str) -> Result<Recheck, Vec<Problem>> {
     let json = json::read(text).map_err(|p| vec![p])?;
-    match open(&json)? {
+    match open(&json, &mut unwatched)? {
         (_, Some(recheck)) => Ok(recheck),
         (_, None) => Err(vec![
             Problem::new(
@@ -61,7 +62,10 @@ pub fn recheck_text(text: &str) -> Result<Recheck, Vec<Problem>> {
 }
 
 /// The sheet of a file, and the recheck if the file is a record.
-pub fn open(json: &Json) -> Result<(&Json, Option<Recheck>), Vec<Problem>> {
+pub fn open<'a>(
+    json: &'a Json,
+    watch: &mut Watch,
+) -> Result<(&'a Json, Option<Recheck>), Vec<Problem>> {
     let (sheet, Some(recorded)) = split(json)? else {
         return Ok((json, None));
     };
@@ -74,7 +78,7 @@ pub fn open(json: &Json) -> Result<(&Json, Option<Recheck>), Vec<Problem>> {
         return Err(faults.collect());
     }
     let mut moved = Vec::new();
-    let now = answers(&document, None)
+    let now = answers(&document, None, watch)
         .ok()
         .and_then(|text| json::read_own(&text));
     compare("", Some(recorded), now.as_ref(), &mut moved);
@@ -196,9 +200,9 @@ fn compare(name: &str, was: Option<&Json>, now: Option<&Json>, moved: &mut Vec<M
 }
 
 /// The text of the record of a sheet: the sheet indented for a person, each answer on a line.
-pub fn record(sheet: &Json) -> Result<String, Vec<Problem>> {
+pub fn record(sheet: &Json, watch: &mut Watch) -> Result<String, Vec<Problem>> {
     let document = Document::read(sheet);
-    let answers = answers(&document, None)?;
+    let answers = answers(&document, None, watch)?;
     let mut cautions = Vec::new();
     if let Some(Json::Object(entries)) = json::read_own(&answers) {
         for (_, answer) in entries {

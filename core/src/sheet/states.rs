@@ -267,7 +267,7 @@ fn bare(document: &Document, n: u8) -> Allowed {
     }
 }
 
-fn configuration_text(named: &Named) -> ConfigurationText {
+pub(super) fn configuration_text(named: &Named) -> ConfigurationText {
     ConfigurationText {
         core: named.core.clone(),
         subshells: named
