@@ -4,7 +4,7 @@ use std::fmt::Write as _;
 use std::path::Path;
 
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
-use rungline_core::sheet::{Question, answer_text};
+use rungline_core::sheet::{Question, answer_text, curves_message, unwatched};
 
 fn main() -> Result<(), Box<dyn std::error::Error>> {
     let out = std::env::var("OUT_DIR")?;
@@ -20,9 +20,12 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
         .collect();
     files.sort();
     let mut answers = String::from("pub const ANSWERS: &[(&str, &str, &str, &str)] = &[\n");
+    let mut curves = String::from("pub const CURVES: &[(&str, &str, &str)] = &[\n");
     for file in files {
         let sheet = std::fs::read_to_string(&file)?;
         let name = file.file_name().unwrap_or_default().to_string_lossy();
+        let drawn = curves_message(&serde_json::from_str(&sheet)?, &mut unwatched);
+        writeln!(curves, "    ({name:?}, {sheet:?}, {drawn:?}),")?;
         for question in Question::ALL {
             // A question that the example does not allow is left to the page tests.
             let Ok(answer) = answer_text(&sheet, Some(question)) else {
@@ -36,6 +39,8 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
         }
     }
     answers.push_str("];\n");
+    curves.push_str("];\n");
+    answers.push_str(&curves);
     std::fs::write(Path::new(&out).join("answers.rs"), answers)?;
 
     let bits: Vec<u64> = symbols().iter().map(|value| value.to_bits()).collect();

@@ -55,6 +55,15 @@ fn the_door_gives_the_core_s_text_for_a_sheet_from_javascript() {
 }
 
 #[wasm_bindgen_test]
+fn every_picture_has_the_native_bytes() {
+    for (name, sheet, native) in CURVES {
+        let value = js_sys::JSON::parse(sheet).expect("an example is JSON");
+        let here = rungline_web::curves(value).expect("curves or faults as natively");
+        assert!(here == *native, "{name}: {}", place(&here, native));
+    }
+}
+
+#[wasm_bindgen_test]
 fn symbols_have_the_native_bits() {
     let here = symbols();
     assert_eq!(here.len(), SYMBOL_BITS.len());
