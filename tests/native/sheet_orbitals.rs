@@ -52,7 +52,7 @@ fn an_answer_has_the_stable_keys() {
     assert_eq!(iron["virial_ratio"], Value::Null, "only without relativity");
     assert_eq!(iron["method"], "Hartree-Fock");
     assert_eq!(iron["configuration"]["text"], "3d6 4s2");
-    assert_eq!(iron["nucleus"]["model"], "Fermi");
+    assert_eq!(iron["nucleus"]["model"], "uniform sphere");
     assert_eq!(iron["nucleus"]["mass_number_by"], "valley of stability");
     assert_eq!(iron["configurations"], json!([]));
     let labels: Vec<&str> = iron["orbitals"]
@@ -237,12 +237,12 @@ fn what_cannot_be_computed_is_a_fault_in_its_place() {
         (json!({"radius": "1 a0"}), "polarisation-incomplete", ""),
         (
             json!({"alpha": "1 a0^3", "radius": "0 a0"}),
-            "polarisation-not-positive",
+            "polarisation-radius-not-positive",
             "/radius",
         ),
         (
             json!({"alpha": "0 a0^3", "radius": "1 a0"}),
-            "polarisation-not-positive",
+            "polarisability-not-positive",
             "/alpha",
         ),
     ] {
@@ -256,6 +256,11 @@ fn what_cannot_be_computed_is_a_fault_in_its_place() {
         json!({"rungline": 1, "species": "Na", "structure": {"polarisation": {"alpha": "1 a0^3", "radius": "-1 a0"}}}),
     );
     assert_eq!(negative["path"], "/structure/polarisation/radius");
+    let bare = fault(
+        json!({"rungline": 1, "species": "He", "structure": {"polarisation": {"alpha": "0.2 a0^3", "radius": "1 a0"}}}),
+    );
+    assert_eq!(bare["code"], "polarisation-without-core");
+    assert_eq!(bare["path"], "/structure/polarisation");
     // H⁻ holds its two electrons in Hartree–Fock; a second extra electron on neon stays nowhere.
     let anion = fault(json!({"rungline": 1, "species": "Ne-", "configurations": ["2p6 3s"]}));
     assert_eq!(anion["path"], "/configurations/0");
@@ -381,7 +386,7 @@ fn a_record_holds_the_orbitals_and_reproduces() {
     let check: Value =
         serde_json::from_str(&sheet::recheck_text(&moved).unwrap().to_json()).unwrap();
     assert_eq!(check["reproduces"], false);
-    assert_eq!(check["moved"][0]["name"], "/orbitals/say/2/number/text");
+    assert_eq!(check["moved"][0]["name"], "/orbitals/say/4/number/text");
 }
 
 #[test]

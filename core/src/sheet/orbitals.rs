@@ -10,7 +10,7 @@ use super::answer::Around;
 use super::document::Document;
 use super::entry::Entry;
 use super::orbitals_cache as cache;
-use super::orbitals_case::{Asked, asked, place};
+use super::orbitals_case::{Asked, asked, place, without_core};
 use super::orbitals_rows::{Block, Curve};
 use super::orbitals_words::{kinds, limits, sentence, working};
 use super::rich::Rich;
@@ -80,7 +80,7 @@ pub fn curves(document: &Document, watch: &mut Watch) -> Result<Curves, Problem>
                 orbitals,
                 occupied,
             } => orbitals_closed::curves(*z, orbitals, *occupied)?,
-            Asked::Field(case) => orbitals_field::curves(&*orbitals_field::solution(case, watch)?),
+            Asked::Field(atom) => orbitals_field::curves(&*orbitals_field::solution(atom, watch)?),
         };
         for curve in &mut of_entry {
             curve.configuration = entry.label.clone();
@@ -105,6 +105,14 @@ fn for_each(
         .collect();
     let of = all.len();
     for (configuration, (entry, asked)) in all.iter().enumerate() {
+        if let Asked::Field(atom) = asked
+            && atom
+                .polarisation
+                .as_ref()
+                .is_some_and(|p| p.core.is_empty())
+        {
+            return Err(without_core(entry));
+        }
         let mut tell = |step: &Step| {
             watch(&Progress {
                 configuration,
@@ -135,9 +143,9 @@ fn block(
             let relativity = document.structure.relativity;
             orbitals_closed::block(*z, typed, orbitals, *occupied, relativity)?
         }
-        Asked::Field(case) => {
+        Asked::Field(atom) => {
             let outside = entry.named().map(|named| named.outside.as_slice());
-            orbitals_field::block(case, outside.unwrap_or_default(), watch)?
+            orbitals_field::block(atom, outside.unwrap_or_default(), watch)?
         }
     };
     // A computed function knows its nucleus, the sheet where that comes from.
@@ -151,11 +159,13 @@ fn block(
 pub fn estimate(document: &Document) -> (f64, f64) {
     let mut total = (0.0, 0.0);
     for entry in &document.entries {
-        if let Some(Asked::Field(case)) = asked(document, entry) {
-            let mut cases = vec![case];
-            cases.extend(cases.first().and_then(orbitals_field::without_polarisation));
-            for case in cases.iter().filter(|case| !cache::has(case)) {
-                let (seconds, megabytes) = orbitals_field::cost(case);
+        if let Some(Asked::Field(atom)) = asked(document, entry) {
+            let bare = orbitals_field::without_polarisation(&atom);
+            for atom in std::iter::once(atom)
+                .chain(bare)
+                .filter(|atom| !cache::has(atom))
+            {
+                let (seconds, megabytes) = orbitals_field::cost(&atom);
                 total = (total.0 + seconds, total.1 + megabytes);
             }
         }

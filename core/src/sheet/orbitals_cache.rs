@@ -6,39 +6,36 @@
 use std::cell::RefCell;
 use std::rc::Rc;
 
-use crate::radial::hartree_fock::Solution;
-
-use super::orbitals_case::Case;
+use crate::radial::hartree_fock::{Atom, Solution};
 
 /// The most solutions that are kept, about 1 MB each for a heavy atom.
 const MOST: usize = 24;
 
 thread_local! {
-    static KEPT: RefCell<Vec<(Case, Rc<Solution>)>> = const { RefCell::new(Vec::new()) };
+    static KEPT: RefCell<Vec<Rc<Solution>>> = const { RefCell::new(Vec::new()) };
 }
 
-/// The solution of a case, if it is kept; it then counts as the newest.
-pub fn get(case: &Case) -> Option<Rc<Solution>> {
+/// The solution of an atom, if it is kept; it then counts as the newest.
+pub fn get(atom: &Atom) -> Option<Rc<Solution>> {
     KEPT.with_borrow_mut(|kept| {
-        let place = kept.iter().position(|(key, _)| key == case)?;
-        let entry = kept.remove(place);
-        let solution = Rc::clone(&entry.1);
-        kept.push(entry);
+        let place = kept.iter().position(|solution| solution.atom == *atom)?;
+        let solution = kept.remove(place);
+        kept.push(Rc::clone(&solution));
         Some(solution)
     })
 }
 
 /// Keeps a solution; the oldest goes when there are too many.
-pub fn put(case: &Case, solution: &Rc<Solution>) {
+pub fn put(solution: &Rc<Solution>) {
     KEPT.with_borrow_mut(|kept| {
         if kept.len() >= MOST {
             kept.remove(0);
         }
-        kept.push((case.clone(), Rc::clone(solution)));
+        kept.push(Rc::clone(solution));
     });
 }
 
 /// Whether a solution is kept.
-pub fn has(case: &Case) -> bool {
-    KEPT.with_borrow(|kept| kept.iter().any(|(key, _)| key == case))
+pub fn has(atom: &Atom) -> bool {
+    KEPT.with_borrow(|kept| kept.iter().any(|solution| solution.atom == *atom))
 }

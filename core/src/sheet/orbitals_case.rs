@@ -2,29 +2,11 @@
 
 use crate::configuration::{Orbital, Subshell};
 use crate::problem::Problem;
+use crate::radial::hartree_fock::{Atom, HEAVIEST, Polarisation};
 
 use super::document::Document;
-use super::entry::{Content, Entry};
+use super::entry::{Content, Entry, Named};
 use super::orbitals_closed::mass_number_of;
-use super::structure::Polarisation;
-
-/// The heaviest nucleus whose electrons are computed.
-pub const LARGEST_CHARGE: u8 = 103;
-
-/// Everything that radial functions depend on, and nothing else: the key of the cache.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Case {
-    /// Nuclear charge.
-    pub z: u8,
-    /// Nucleons of a nucleus of finite size; nothing for a point.
-    pub mass_number: Option<u16>,
-    /// Every occupied subshell.
-    pub subshells: Vec<Subshell>,
-    /// Whether the radial equation is relativistic.
-    pub relativity: bool,
-    /// The core polarisation.
-    pub polarisation: Option<Polarisation>,
-}
 
 /// What one entry of the sheet asks for.
 pub enum Asked {
@@ -37,8 +19,8 @@ pub enum Asked {
         /// Whether an electron is in it.
         occupied: bool,
     },
-    /// Many electrons.
-    Field(Case),
+    /// Many electrons: everything that their radial functions depend on, and nothing else.
+    Field(Atom),
 }
 
 /// What an entry asks for; nothing where no nucleus is known or it is past the bounds.
@@ -61,19 +43,37 @@ pub fn asked(document: &Document, entry: &Entry) -> Option<Asked> {
                     orbitals: vec![one.orbital()],
                     occupied: true,
                 }),
-                _ if z > LARGEST_CHARGE => None,
-                _ => Some(Asked::Field(Case {
-                    z,
-                    mass_number: document
-                        .structure
-                        .relativity
-                        .then(|| mass_number_of(z, species.mass_number).0),
-                    subshells: subshells.to_vec(),
-                    relativity: document.structure.relativity,
-                    polarisation: document.structure.polarisation,
-                })),
+                _ if z > HEAVIEST => None,
+                _ => Some(Asked::Field(atom(document, named, z))),
             }
         }
+    }
+}
+
+fn atom(document: &Document, named: &Named, z: u8) -> Atom {
+    let subshells = named.configuration.subshells().to_vec();
+    let typed = document.species.and_then(|species| species.mass_number);
+    let polarisation = document.structure.polarisation.map(|entered| {
+        // What the sheet writes beside its core is polarising, what is open too.
+        let inner = |shell: &&Subshell| !shell.is_open() && !named.beyond.contains(shell);
+        Polarisation {
+            alpha: entered.alpha,
+            radius: entered.radius,
+            core: subshells
+                .iter()
+                .filter(inner)
+                .map(|s| s.orbital())
+                .collect(),
+        }
+    });
+    let atom = if document.structure.relativity {
+        Atom::relativistic(z, subshells, mass_number_of(z, typed).0)
+    } else {
+        Atom::new(z, subshells)
+    };
+    Atom {
+        polarisation,
+        ..atom
     }
 }
 
@@ -95,8 +95,8 @@ pub fn need(document: &Document) -> Option<String> {
             "a configuration: a bare shell has radial functions only where the atom has one electron"
                 .to_owned(),
         ),
-        _ if element > LARGEST_CHARGE => Some(format!(
-            "a nuclear charge of at most {LARGEST_CHARGE}: this atom has {element}"
+        _ if element > HEAVIEST => Some(format!(
+            "a nuclear charge of at most {HEAVIEST}: this atom has {element}"
         )),
         _ => Some("at least one electron".to_owned()),
     }
@@ -114,4 +114,16 @@ pub fn place(entry: &Entry, problem: Problem) -> Problem {
         &entry.path
     };
     problem.at(path)
+}
+
+/// A polarisation that is entered for a configuration without any core.
+pub fn without_core(entry: &Entry) -> Problem {
+    Problem::new(
+        "polarisation-without-core",
+        format!("{} has no core that could be polarised.", entry.label),
+        0,
+        0,
+    )
+    .bound("The core are the full subshells that the configuration does not write, such as [Ne] in 3s.")
+    .at("/structure/polarisation")
 }

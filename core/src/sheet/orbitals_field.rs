@@ -2,14 +2,13 @@
 
 use std::rc::Rc;
 
-use crate::configuration::Subshell;
+use crate::configuration::{Orbital, Subshell};
 use crate::constants::HARTREE_WAVENUMBER;
 use crate::problem::Problem;
 use crate::radial::hartree_fock::{Atom, Progress as Step, RadialOrbital, Solution, solve};
 use crate::radial::nucleus::{Nucleus, rms_radius};
 
 use super::orbitals_cache as cache;
-use super::orbitals_case::Case;
 use super::orbitals_rows::{
     Block, Change, Curve, IntegralRow, Iteration, MeshRow, NucleusRow, OrbitalChange, OrbitalRow,
     PolarisationRow, Without,
@@ -19,78 +18,60 @@ use super::orbitals_sample::radii;
 /// The most integrals that are listed.
 const MAX_INTEGRALS: usize = 400;
 
-/// The solution of a case, from the cache or computed; `watch` is told of every iteration.
+/// The solution of an atom, from the cache or computed; `watch` is told of every iteration.
 pub fn solution(
-    case: &Case,
+    atom: &Atom,
     watch: &mut dyn FnMut(&Step) -> bool,
 ) -> Result<Rc<Solution>, Problem> {
-    if let Some(solution) = cache::get(case) {
+    if let Some(solution) = cache::get(atom) {
         return Ok(solution);
     }
-    let atom = Atom {
-        z: case.z,
-        subshells: case.subshells.clone(),
-        nucleus: nucleus(case),
-        relativity: case.relativity,
-    };
-    match solve(&atom, &mut |step| watch(&step)) {
-        Ok(solution) => {
-            let solution = Rc::new(solution);
-            cache::put(case, &solution);
-            Ok(solution)
-        }
-        Err(failure) => Err(failure.problem),
-    }
+    let solution = solve(atom, &mut |step| watch(&step)).map_err(|failure| failure.problem)?;
+    let solution = Rc::new(solution);
+    cache::put(&solution);
+    Ok(solution)
 }
 
-fn nucleus(case: &Case) -> Nucleus {
-    match case.mass_number {
-        Some(mass_number) => Nucleus::Fermi { mass_number },
-        None => Nucleus::Point,
-    }
-}
-
-/// The same case without its polarisation, to show what that does.
-pub fn without_polarisation(case: &Case) -> Option<Case> {
-    case.polarisation.map(|_| Case {
+/// The same atom without its polarisation, to show what that does.
+pub fn without_polarisation(atom: &Atom) -> Option<Atom> {
+    atom.polarisation.as_ref().map(|_| Atom {
         polarisation: None,
-        ..case.clone()
+        ..atom.clone()
     })
 }
 
-/// The block of a case; `outside` are the subshells among which integrals are listed.
+/// The block of an atom; `outside` are the subshells among which integrals are listed.
 pub fn block(
-    case: &Case,
+    atom: &Atom,
     outside: &[Subshell],
     watch: &mut dyn FnMut(&Step) -> bool,
 ) -> Result<Block, Problem> {
-    let solved = solution(case, watch)?;
-    let rows = rows(case, &solved);
-    let polarisation = match (case.polarisation, without_polarisation(case)) {
+    let solved = solution(atom, watch)?;
+    let rows = rows(&solved);
+    let polarisation = match (&atom.polarisation, without_polarisation(atom)) {
         (Some(entered), Some(bare)) => {
             let without = solution(&bare, watch)?;
             Some(PolarisationRow {
                 alpha: entered.alpha,
                 radius: entered.radius,
+                core: join(&entered.core),
                 without: Without {
                     total_energy: without.total_energy,
                 },
-                change: change(&solved, &rows, &without, &self::rows(&bare, &without)),
+                change: change(&solved, &rows, &without, &self::rows(&without)),
             })
         }
         _ => None,
     };
-    let last = solved.history.last();
     Ok(Block {
         configuration: None,
         method: "Hartree-Fock",
         total_energy: solved.total_energy,
-        virial_ratio: (!case.relativity && case.polarisation.is_none())
-            .then_some(solved.virial_ratio),
-        iterations: solved.history.len(),
-        residual: last.map_or(0.0, |step| step.residual),
-        relativity: case.relativity,
-        nucleus: nucleus_row(case),
+        virial_ratio: (!atom.relativity && polarisation.is_none()).then(|| solved.virial_ratio()),
+        iterations: solved.iterations(),
+        residual: solved.residual(),
+        relativity: atom.relativity,
+        nucleus: nucleus_row(atom),
         mesh: Some(MeshRow {
             splines: solved.mesh.size(),
             points: solved.mesh.radii().len(),
@@ -111,16 +92,23 @@ pub fn block(
     })
 }
 
-fn nucleus_row(case: &Case) -> NucleusRow {
+fn join(orbitals: &[Orbital]) -> String {
+    let names: Vec<String> = orbitals.iter().map(Orbital::to_string).collect();
+    names.join(" ")
+}
+
+fn nucleus_row(atom: &Atom) -> NucleusRow {
+    let (model, mass_number) = match atom.nucleus {
+        Nucleus::Point => ("point", None),
+        Nucleus::Uniform { mass_number } => ("uniform sphere", Some(mass_number)),
+        Nucleus::Fermi { mass_number } => ("Fermi distribution", Some(mass_number)),
+    };
     NucleusRow {
-        charge: case.z,
-        model: match case.mass_number {
-            Some(_) => "Fermi",
-            None => "point",
-        },
-        mass_number: case.mass_number,
+        charge: atom.z,
+        model,
+        mass_number,
         mass_number_by: None,
-        rms_radius: case.mass_number.map(rms_radius),
+        rms_radius: mass_number.map(rms_radius),
     }
 }
 
@@ -140,81 +128,59 @@ fn change(with: &Solution, rows: &[OrbitalRow], without: &Solution, bare: &[Orbi
     }
 }
 
-fn rows(case: &Case, solved: &Solution) -> Vec<OrbitalRow> {
-    let radii = solved.mesh.radii();
-    solved
-        .orbitals
-        .iter()
-        .map(|orbital| {
-            let mean = |power: &dyn Fn(f64) -> f64| {
-                solved
-                    .mesh
-                    .integral(orbital.p.iter().zip(radii).map(|(p, r)| p * p * power(*r)))
-            };
-            let shell = orbital.orbital;
-            OrbitalRow {
-                label: shell.to_string(),
-                n: shell.n(),
-                l: shell.l(),
-                electrons: orbital.electrons,
-                open: orbital.electrons < shell.capacity(),
-                energy: orbital.energy,
-                r: mean(&|r| r),
-                r2: mean(&|r| r * r),
-                r_inv: mean(&|r| 1.0 / r),
-                r_inv2: mean(&|r| 1.0 / (r * r)),
-                r_inv3: (shell.l() > 0).then(|| mean(&|r| 1.0 / (r * r * r))),
-                r_most_probable: highest(solved, orbital).0,
-                zeta: None,
-                zeta_central: None,
-            }
-        })
-        .collect()
+fn rows(solved: &Solution) -> Vec<OrbitalRow> {
+    let row = |orbital: &RadialOrbital| {
+        let mean = |k: i32| solved.expectation(orbital, k);
+        let shell = orbital.orbital;
+        let zeta = |hartree: Option<f64>| hartree.map(|zeta| zeta * HARTREE_WAVENUMBER.value);
+        OrbitalRow {
+            label: shell.to_string(),
+            n: shell.n(),
+            l: shell.l(),
+            electrons: orbital.electrons,
+            open: orbital.electrons < shell.capacity(),
+            energy: orbital.energy,
+            r: mean(1).unwrap_or(0.0),
+            r2: mean(2).unwrap_or(0.0),
+            r_inv: mean(-1).unwrap_or(0.0),
+            r_inv2: mean(-2).unwrap_or(0.0),
+            r_inv3: mean(-3),
+            r_most_probable: solved.most_probable(orbital).0,
+            zeta: zeta(None),
+            zeta_central: zeta(None),
+        }
+    };
+    solved.orbitals.iter().map(row).collect()
 }
 
+/// F^k and G^k within and between the subshells that stand outside the core, in cm⁻¹.
 fn integrals(solved: &Solution, outside: &[Subshell]) -> Vec<IntegralRow> {
-    let _ = (solved, outside, MAX_INTEGRALS, HARTREE_WAVENUMBER);
-    Vec::new()
-}
-
-/// P² of an orbital at a radius.
-fn density(solved: &Solution, orbital: &RadialOrbital, r: f64) -> f64 {
-    if r >= solved.mesh.end() {
-        return 0.0;
-    }
-    let p = solved.mesh.basis().evaluate(&orbital.coefficients, r);
-    p * p
-}
-
-/// The place and the height of the largest maximum of P².
-///
-/// The largest value at the points of the mesh lies within one point of it; there P² has one
-/// maximum, which golden-section search narrows to a part in 10⁹ (P² itself is flat there).
-fn highest(solved: &Solution, orbital: &RadialOrbital) -> (f64, f64) {
-    let radii = solved.mesh.radii();
-    let mut best = (0, 0.0);
-    for (place, p) in orbital.p.iter().enumerate() {
-        if p * p > best.1 {
-            best = (place, p * p);
+    let shells: Vec<&RadialOrbital> = outside
+        .iter()
+        .filter_map(|shell| solved.orbital(shell.orbital()))
+        .collect();
+    let mut rows = Vec::new();
+    let mut add = |letter: char, k: usize, a: &RadialOrbital, b: &RadialOrbital, value| {
+        if let Some(hartree) = value
+            && rows.len() < MAX_INTEGRALS
+        {
+            let hartree: f64 = hartree;
+            rows.push(IntegralRow {
+                name: format!("{letter}{k}({},{})", a.orbital, b.orbital),
+                value: hartree * HARTREE_WAVENUMBER.value,
+            });
+        }
+    };
+    for (place, a) in shells.iter().enumerate() {
+        for b in shells.iter().skip(place) {
+            let highest = usize::from(a.orbital.l()) + usize::from(b.orbital.l());
+            (0..=highest).for_each(|k| add('F', k, a, b, solved.f(k, a, b)));
+            if a.orbital != b.orbital {
+                (0..=highest).for_each(|k| add('G', k, a, b, solved.g(k, a, b)));
+            }
         }
     }
-    let at = |place: usize| radii.get(place).copied();
-    let mut left = best.0.checked_sub(1).and_then(at).unwrap_or(0.0);
-    let mut right = at(best.0 + 1).unwrap_or(solved.mesh.end());
-    let golden = 0.618_033_988_749_894_9;
-    for _ in 0..60 {
-        let (a, b) = (
-            right - golden * (right - left),
-            left + golden * (right - left),
-        );
-        if density(solved, orbital, a) < density(solved, orbital, b) {
-            left = a;
-        } else {
-            right = b;
-        }
-    }
-    let radius = 0.5 * (left + right);
-    (radius, density(solved, orbital, radius))
+    rows
 }
 
 /// The density of each subshell for its picture.
@@ -223,15 +189,12 @@ pub fn curves(solved: &Solution) -> Vec<Curve> {
         .orbitals
         .iter()
         .map(|orbital| {
-            let (most_probable, height) = highest(solved, orbital);
-            let r = radii(most_probable, height, |r| density(solved, orbital, r));
-            let mean = solved.mesh.integral(
-                orbital
-                    .p
-                    .iter()
-                    .zip(solved.mesh.radii())
-                    .map(|(p, r)| p * p * r),
-            );
+            let (most_probable, height) = solved.most_probable(orbital);
+            let density = |r: f64| {
+                let p = solved.p_at(orbital, r);
+                p * p
+            };
+            let r = radii(most_probable, height, density);
             Curve {
                 configuration: String::new(),
                 path: String::new(),
@@ -239,9 +202,9 @@ pub fn curves(solved: &Solution) -> Vec<Curve> {
                 n: orbital.orbital.n(),
                 l: orbital.orbital.l(),
                 electrons: orbital.electrons,
-                density: r.iter().map(|r| density(solved, orbital, *r)).collect(),
+                density: r.iter().map(|r| density(*r)).collect(),
                 r,
-                mean,
+                mean: solved.expectation(orbital, 1).unwrap_or(0.0),
                 most_probable,
                 height,
             }
@@ -249,8 +212,8 @@ pub fn curves(solved: &Solution) -> Vec<Curve> {
         .collect()
 }
 
-/// Seconds in a browser and megabytes that a case takes.
-pub fn cost(case: &Case) -> (f64, f64) {
-    let shells = case.subshells.len() as f64;
+/// Seconds in a browser and megabytes that an atom takes.
+pub fn cost(atom: &Atom) -> (f64, f64) {
+    let shells = atom.subshells.len() as f64;
     (0.01 + 5e-4 * shells * shells, 8.0 + shells)
 }

@@ -83,6 +83,8 @@ pub struct IntegralRow {
 pub struct PolarisationRow {
     pub alpha: f64,
     pub radius: f64,
+    /// The orbitals that it does not act on.
+    pub core: String,
     pub without: Without,
     pub change: Change,
 }

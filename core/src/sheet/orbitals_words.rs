@@ -20,7 +20,7 @@ pub fn sentence(document: &Document, first: &Block, others: &[Block]) -> Rich {
     if let Some(configuration) = &first.configuration {
         say = say.say(" in ").then(&configuration.rich);
     }
-    let kind = kind_of_energy(first);
+    let kind = kind(first);
     say = match (&first.dirac, &first.configuration) {
         (Some(_), None) => say.say(": every orbital of the shell in closed form"),
         (Some(_), Some(_)) => say
@@ -49,7 +49,7 @@ pub fn sentence(document: &Document, first: &Block, others: &[Block]) -> Rich {
             } else {
                 " at "
             })
-            .number(orbital.r_most_probable, Some("a0"), kind_of_radius(first));
+            .number(orbital.r_most_probable, Some("a0"), kind);
     }
     let say = say.say(".");
     match others.len() {
@@ -74,8 +74,9 @@ fn outermost(block: &Block) -> Vec<&OrbitalRow> {
     named
 }
 
-/// Without relativity an electron alone has an energy that is exact; Dirac's needs α, a measured number.
-fn kind_of_energy(block: &Block) -> Kind {
+/// Without relativity an electron alone has closed formulas without any measured number in them;
+/// Dirac's energies need α, and the radii beside them are those without relativity.
+fn kind(block: &Block) -> Kind {
     if block.dirac.is_some() && !block.relativity {
         Kind::Exact
     } else {
@@ -83,29 +84,21 @@ fn kind_of_energy(block: &Block) -> Kind {
     }
 }
 
-fn kind_of_radius(block: &Block) -> Kind {
-    if block.dirac.is_some() {
-        Kind::Exact
-    } else {
-        Kind::Computed
-    }
-}
-
 pub fn kinds(first: &Block) -> BTreeMap<&'static str, Kind> {
-    let radius = kind_of_radius(first);
+    let own = kind(first);
     let mut kinds: BTreeMap<&'static str, Kind> = [
-        ("total_energy", kind_of_energy(first)),
+        ("total_energy", own),
         ("virial_ratio", Kind::Computed),
         ("residual", Kind::Computed),
         ("history.residual", Kind::Computed),
         ("orbitals.electrons", Kind::Exact),
-        ("orbitals.energy", kind_of_energy(first)),
-        ("orbitals.r", radius),
-        ("orbitals.r2", radius),
-        ("orbitals.r_inv", radius),
-        ("orbitals.r_inv2", radius),
-        ("orbitals.r_inv3", radius),
-        ("orbitals.r_most_probable", radius),
+        ("orbitals.energy", own),
+        ("orbitals.r", own),
+        ("orbitals.r2", own),
+        ("orbitals.r_inv", own),
+        ("orbitals.r_inv2", own),
+        ("orbitals.r_inv3", own),
+        ("orbitals.r_most_probable", own),
         ("orbitals.zeta", Kind::Computed),
         ("orbitals.zeta_central", Kind::Computed),
         ("integrals.value", Kind::Computed),
@@ -247,7 +240,7 @@ fn closed(first: &Block) -> Vec<Working> {
                 row([number(2), operator("×"), number(first.nucleus.charge)]),
             ),
             Rich::new()
-                .number(orbital.r, Some("a0"), Kind::Exact)
+                .number(orbital.r, Some("a0"), kind(first))
                 .say(format!(" for {}", orbital.label)),
         ),
     );
@@ -430,8 +423,8 @@ pub fn limits(document: &Document, first: &Block, others: &[Block]) -> Vec<Strin
     }
     if let Some(polarisation) = &first.polarisation {
         limits.push(format!(
-            "The core polarisation is as entered, {} a0³ and {} a0; it acts on the electrons outside the core and is no computed property of this atom.",
-            polarisation.alpha, polarisation.radius
+            "The core polarisation is as entered, {} a0³ and {} a0; it acts on the electrons outside the core ({}) and is no computed property of this atom.",
+            polarisation.alpha, polarisation.radius, polarisation.core
         ));
     }
     for entry in passed_over(document) {

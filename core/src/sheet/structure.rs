@@ -84,8 +84,11 @@ fn polarise(group: &Json, faults: &mut Vec<Problem>) -> Option<Polarisation> {
     }
     let (alpha, radius) = (alpha?, radius?);
     let mut sound = true;
-    let names = ["polarisability", "cut-off radius"];
-    for ((key, _, usual), ((text, value), name)) in
+    let names = [
+        ("polarisability-not-positive", "polarisability"),
+        ("polarisation-radius-not-positive", "cut-off radius"),
+    ];
+    for ((key, _, usual), ((text, value), (code, name))) in
         keys.into_iter().zip([alpha, radius].into_iter().zip(names))
     {
         if value > 0.0 {
@@ -94,7 +97,7 @@ fn polarise(group: &Json, faults: &mut Vec<Problem>) -> Option<Polarisation> {
         sound = false;
         faults.push(
             Problem::new(
-                "polarisation-not-positive",
+                code,
                 format!("The {name} of the core is {}.", text.trim()),
                 0,
                 text.len(),
@@ -142,8 +145,8 @@ mod tests {
         assert_eq!(
             faults,
             [
-                ("polarisation-not-positive", at("alpha")),
-                ("polarisation-not-positive", at("radius"))
+                ("polarisability-not-positive", at("alpha")),
+                ("polarisation-radius-not-positive", at("radius"))
             ]
         );
         assert_eq!(found("{}"), (None, vec![]));
