@@ -232,6 +232,12 @@ fn what_cannot_be_computed_is_a_fault_in_its_place() {
     let heavy = fault(json!({"rungline": 1, "species": "Og"}));
     assert_eq!(heavy["code"], "needs-a-nucleus");
     assert!(heavy["message"].as_str().unwrap().contains("103"));
+    assert_eq!(heavy["path"], "/species");
+    let unbound = fault(json!({"rungline": 1, "species": "He-"}));
+    assert_eq!(unbound["code"], "not-bound");
+    assert_eq!(unbound["path"], "/species");
+    let way = &unbound["ways"][0]["replacement"];
+    answer(json!({"rungline": 1, "species": way}));
     for (polarisation, code, path) in [
         (json!({"alpha": "0.95 a0^3"}), "polarisation-incomplete", ""),
         (json!({"radius": "1 a0"}), "polarisation-incomplete", ""),
