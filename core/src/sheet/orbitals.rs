@@ -10,7 +10,7 @@ use super::answer::Around;
 use super::document::Document;
 use super::entry::Entry;
 use super::orbitals_cache as cache;
-use super::orbitals_case::{Asked, asked, place, without_core};
+use super::orbitals_case::{Asked, asked, lacking, place, without_core};
 use super::orbitals_rows::{Block, Curve};
 use super::orbitals_words::{kinds, limits, sentence, working};
 use super::rich::Rich;
@@ -38,7 +38,7 @@ pub struct Curves {
 /// The answer on orbitals.
 pub fn answer(document: &Document, watch: &mut Watch) -> Result<Orbitals, Problem> {
     if let Some(lack) = document.lacks(super::Question::Orbitals) {
-        return Err(lack.problem());
+        return Err(lacking(&lack));
     }
     let mut blocks = Vec::new();
     for_each(document, watch, |entry, asked, watch| {
@@ -70,7 +70,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Orbitals, Proble
 /// The densities of all subshells for their picture.
 pub fn curves(document: &Document, watch: &mut Watch) -> Result<Curves, Problem> {
     if let Some(lack) = document.lacks(super::Question::Orbitals) {
-        return Err(lack.problem());
+        return Err(lacking(&lack));
     }
     let mut curves = Vec::new();
     for_each(document, watch, |entry, asked, watch| {
@@ -122,7 +122,7 @@ fn for_each(
                 residual: step.residual,
             })
         };
-        what(entry, asked, &mut tell).map_err(|problem| place(entry, problem))?;
+        what(entry, asked, &mut tell).map_err(|problem| place(document, entry, problem))?;
     }
     Ok(())
 }

@@ -1,11 +1,12 @@
 //! What radial functions a configuration of the sheet asks for, and why some cannot be had.
 
-use crate::configuration::{Orbital, Subshell};
+use crate::configuration::{Orbital, Species, Subshell};
 use crate::problem::Problem;
 use crate::radial::hartree_fock::{Atom, HEAVIEST, Polarisation};
 
 use super::document::Document;
 use super::entry::{Content, Entry, Named};
+use super::lack::Lack;
 use super::orbitals_closed::mass_number_of;
 
 /// What one entry of the sheet asks for.
@@ -102,18 +103,36 @@ pub fn need(document: &Document) -> Option<String> {
     }
 }
 
-/// The place in the sheet that a fault of an entry's radial functions belongs to.
-pub fn place(entry: &Entry, problem: Problem) -> Problem {
+/// The lack as a fault: it is the atom that is lacking or too heavy.
+pub fn lacking(lack: &Lack) -> Problem {
+    let problem = lack.problem();
+    if problem.path.is_empty() {
+        problem.at("/species")
+    } else {
+        problem
+    }
+}
+
+/// A fault of an entry's radial functions at its place in the sheet.
+pub fn place(document: &Document, entry: &Entry, problem: Problem) -> Problem {
     if !problem.path.is_empty() {
         return problem;
     }
+    if !entry.path.is_empty() {
+        return problem.at(entry.path.clone());
+    }
     // A configuration that nobody typed stands for the species.
-    let path = if entry.path.is_empty() {
-        "/species"
-    } else {
-        &entry.path
-    };
-    problem.at(path)
+    let problem = problem.at("/species");
+    match document.species {
+        Some(species) if species.charge < 0 => {
+            let neutral = Species {
+                charge: 0,
+                ..species
+            };
+            problem.way(format!("Use {neutral}"), neutral.to_string())
+        }
+        _ => problem,
+    }
 }
 
 /// A polarisation that is entered for a configuration without any core.

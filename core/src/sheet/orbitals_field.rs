@@ -146,8 +146,8 @@ fn rows(solved: &Solution) -> Vec<OrbitalRow> {
             r_inv2: mean(-2).unwrap_or(0.0),
             r_inv3: mean(-3),
             r_most_probable: solved.most_probable(orbital).0,
-            zeta: zeta(None),
-            zeta_central: zeta(None),
+            zeta: zeta(solved.zeta(orbital)),
+            zeta_central: zeta(solved.zeta_central(orbital)),
         }
     };
     solved.orbitals.iter().map(row).collect()
