@@ -163,7 +163,7 @@ fn one_electron_is_answered_in_closed_form() {
     assert_eq!(hydrogen["nucleus"]["mass_number_by"], "usual isotope");
     assert_eq!(hydrogen["dirac"]["nuclear_mass_by"], "CODATA 2022");
     let mass = hydrogen["dirac"]["nuclear_mass"].as_f64().unwrap();
-    assert!(relative_error(mass, 1836.152_673_426) < 1e-10);
+    assert!(relative_error(mass, 1_836.152_673_426) < 1e-10);
 
     // The bare shell of a one-electron atom: all its orbitals.
     let shell = answer(json!({"rungline": 1, "species": "H I", "configurations": ["n=5"]}));
