@@ -19,6 +19,7 @@ mod line_rows;
 mod lines;
 mod lines_words;
 mod orbitals;
+mod orbitals_between;
 mod orbitals_cache;
 mod orbitals_case;
 mod orbitals_closed;

@@ -11,12 +11,12 @@ use super::document::Document;
 use super::entry::Entry;
 use super::orbitals_cache as cache;
 use super::orbitals_case::{Asked, asked, lacking, place, without_core};
-use super::orbitals_rows::{Block, Curve};
+use super::orbitals_rows::{BetweenRow, Block, Curve};
 use super::orbitals_words::{kinds, limits, sentence, working};
 use super::rich::Rich;
 use super::states::configuration_text;
 use super::watch::{Progress, Watch};
-use super::{orbitals_closed, orbitals_field};
+use super::{orbitals_between, orbitals_closed, orbitals_field};
 
 /// The answer: the first configuration's own keys, then a block for every further one.
 #[derive(Debug, Serialize)]
@@ -27,6 +27,8 @@ pub struct Orbitals {
     #[serde(flatten)]
     first: Block,
     configurations: Vec<Block>,
+    /// Radial integrals between the configurations.
+    between: Vec<BetweenRow>,
 }
 
 /// The picture's data.
@@ -55,6 +57,8 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Orbitals, Proble
         ));
     };
     let configurations: Vec<Block> = blocks.collect();
+    // Nothing is left to watch: every solution is there.
+    let between = orbitals_between::rows(document, &mut |_| true)?;
     let mut around = Around::saying(sentence(document, &first, &configurations));
     around.working = working(&first);
     around.limits = limits(document, &first, &configurations);
@@ -64,6 +68,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Orbitals, Proble
         species: document.species_rich(),
         first,
         configurations,
+        between,
     })
 }
 

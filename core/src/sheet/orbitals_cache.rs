@@ -8,8 +8,8 @@ use std::rc::Rc;
 
 use crate::radial::hartree_fock::{Atom, Solution};
 
-/// The most solutions that are kept, about 1 MB each for a heavy atom.
-const MOST: usize = 24;
+/// The most solutions that are kept, more than a sheet can ask for at once; each has 0.1 to 0.7 MB.
+const MOST: usize = 96;
 
 thread_local! {
     static KEPT: RefCell<Vec<Rc<Solution>>> = const { RefCell::new(Vec::new()) };

@@ -78,6 +78,26 @@ pub struct IntegralRow {
     pub value: f64,
 }
 
+/// A radial integral between two configurations of the sheet.
+#[derive(Clone, Debug, Serialize)]
+pub struct BetweenRow {
+    /// `r(3s,3p)`
+    pub name: String,
+    /// The earlier configuration of the sheet.
+    pub lower: String,
+    /// The later one.
+    pub upper: String,
+    pub multipole: &'static str,
+    /// With the overlaps of the other electrons, a₀ or a₀².
+    pub value: f64,
+    /// Of the two orbitals alone.
+    pub bare: f64,
+    /// What the electrons that stay have of themselves in the other configuration.
+    pub overlap: f64,
+    /// The largest overlap of different orbitals; its square bounds what is left out.
+    pub largest_cross: f64,
+}
+
 /// The core polarisation and what it does: with minus without, hartree, a₀, cm⁻¹.
 #[derive(Clone, Debug, Serialize)]
 pub struct PolarisationRow {

@@ -102,6 +102,10 @@ pub fn kinds(first: &Block) -> BTreeMap<&'static str, Kind> {
         ("orbitals.zeta", Kind::Computed),
         ("orbitals.zeta_central", Kind::Computed),
         ("integrals.value", Kind::Computed),
+        ("between.value", own),
+        ("between.bare", own),
+        ("between.overlap", own),
+        ("between.largest_cross", own),
         ("nucleus.rms_radius", Kind::Computed),
     ]
     .into_iter()
