@@ -3,7 +3,9 @@
 use std::hint::black_box;
 
 use rungline_core::angular::{equivalent, wigner_6j};
-use rungline_core::configuration::{Orbital, Subshell};
+use rungline_core::configuration::{Orbital, Subshell, filling};
+use rungline_core::radial::hartree_fock::{Atom, solve};
+use rungline_core::radial::nucleus::stable_mass_number;
 use rungline_core::sheet;
 use rungline_core::terms::ls;
 
@@ -13,6 +15,8 @@ pub const WORKLOADS: &[(&str, u32)] = &[
     ("f7 terms with seniority", 20),
     ("f7 d5 p3 terms", 50),
     ("the states of neutral iron, as the page asks for them", 50),
+    ("the self-consistent field of neutral iron", 5),
+    ("the self-consistent field of neutral uranium, relativistic", 1),
 ];
 
 /// Does a piece of work once. The number only keeps the compiler from leaving the work out.
@@ -36,10 +40,25 @@ pub fn work(index: usize) -> f64 {
                 .collect();
             ls::terms(black_box(&shells)).map_or(0.0, |found| found.terms.len() as f64)
         }
-        _ => {
+        3 => {
             let text = r#"{"rungline":1,"species":"Fe I","configurations":["3d6 4s2"]}"#;
             sheet::answer_text(black_box(text), Some(sheet::Question::States))
                 .map_or(0.0, |answer| answer.len() as f64)
         }
+        4 => field(26, false),
+        _ => field(92, true),
     }
+}
+
+/// The average energy of a neutral atom's ground configuration.
+fn field(z: u8, relativity: bool) -> f64 {
+    let Some(ground) = filling::ground(black_box(z), 0) else {
+        return 0.0;
+    };
+    let subshells = ground.configuration().subshells().to_vec();
+    let atom = match relativity {
+        true => Atom::relativistic(z, subshells, stable_mass_number(z)),
+        false => Atom::new(z, subshells),
+    };
+    solve(&atom, &mut |_| true).map_or(0.0, |solution| solution.total_energy)
 }

@@ -357,6 +357,35 @@ fn orbitals_of_equal_l_are_orthonormal_and_start_positive() {
 }
 
 #[test]
+fn closed_shell_anions_are_bound() {
+    // Numerical Hartree–Fock limits, hartree, FROM MEMORY: Froese Fischer (1977); Koga et al.,
+    // J. Chem. Phys. 103, 3000 (1995).
+    let known = [
+        (1, "1s2", -0.487_929_734),
+        (9, "1s2 2s2 2p6", -99.459_453_9),
+        (17, "1s2 2s2 2p6 3s2 3p6", -459.576_925_3),
+    ];
+    let mut worst = 0.0_f64;
+    for (z, shells, expected) in known {
+        let found = solved(&Atom::new(z, subshells(shells)));
+        worst = worst.max(relative_error(found.total_energy, expected));
+        assert!((found.virial_ratio() + 2.0).abs() < 1e-9);
+        assert!(found.orbitals.iter().all(|o| o.energy < 0.0));
+    }
+    report(
+        "radial_anions",
+        Row {
+            quantity: "energies of H⁻, F⁻, Cl⁻".into(),
+            cases: known.len(),
+            worst,
+            tolerance: 2e-9,
+            measure: "relative".into(),
+            source: "from memory: numerical Hartree–Fock limits".into(),
+        },
+    );
+}
+
+#[test]
 fn faults_have_their_codes() {
     let code = |atom: &Atom| {
         solve(atom, &mut |_| true)

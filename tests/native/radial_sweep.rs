@@ -165,6 +165,73 @@ fn excited(relativity: bool) -> Found {
     found
 }
 
+/// Every charge of a few elements.
+fn charges(relativity: bool) -> Found {
+    let mut found = Found::default();
+    for z in [10u8, 26, 36, 54, 74, 92, 103] {
+        for charge in 3..i32::from(z) {
+            found.run(
+                &format!("charge {charge}"),
+                z,
+                &ground(z, charge),
+                relativity,
+            );
+        }
+    }
+    found
+}
+
+/// Up to three electrons of a ground configuration put elsewhere, drawn with a fixed seed.
+fn drawn(relativity: bool) -> Found {
+    let mut found = Found::default();
+    let mut seed = 20_261_201_u64;
+    let mut draw = |below: usize| {
+        // Knuth's linear congruence; its high bits are good enough here.
+        seed = seed
+            .wrapping_mul(6_364_136_223_846_793_005)
+            .wrapping_add(1_442_695_040_888_963_407);
+        (seed >> 33) as usize % below
+    };
+    for _ in 0..250 {
+        let z = 1 + draw(usize::from(HEAVIEST)) as u8;
+        let charge = draw(usize::from(z).min(6)) as i32;
+        let mut subshells = ground(z, charge);
+        for _ in 0..1 + draw(3) {
+            let from = subshells[draw(subshells.len())].orbital();
+            let l = draw(5) as u8;
+            let to = orbital(l + 1 + draw(6) as u8, l);
+            if let (true, Some(moved)) = (from != to, with(&without(&subshells, from), to)) {
+                subshells = moved;
+            }
+        }
+        let text: Vec<String> = subshells.iter().map(|s| s.to_string()).collect();
+        found.run(&text.join(" "), z, &subshells, relativity);
+    }
+    found
+}
+
+#[test]
+fn every_charge_converges() {
+    charges(false).close("radial_charges", "every charge of seven elements");
+}
+
+#[test]
+fn every_charge_converges_with_relativity() {
+    let what = "every charge of seven elements, with relativity";
+    charges(true).close("radial_charges_relativity", what);
+}
+
+#[test]
+fn drawn_configurations_converge() {
+    drawn(false).close("radial_drawn", "configurations drawn at random");
+}
+
+#[test]
+fn drawn_configurations_converge_with_relativity() {
+    let what = "configurations drawn at random, with relativity";
+    drawn(true).close("radial_drawn_relativity", what);
+}
+
 #[test]
 fn atoms_and_ions_converge() {
     atoms_and_ions(false).close("radial_sweep", "neutral atoms, charges 1 and 2");

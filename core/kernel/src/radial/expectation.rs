@@ -1,6 +1,7 @@
 //! Expectation values of powers of r, and P at chosen radii.
 
 use super::hartree_fock::{RadialOrbital, Solution};
+use crate::configuration::Orbital;
 
 /// The powers of r whose expectation values are computed.
 pub const POWERS: core::ops::RangeInclusive<i32> = -3..=2;
@@ -22,6 +23,15 @@ impl Solution {
         };
         let parts = orbital.p.iter().zip(self.mesh.radii());
         Some(self.mesh.integral(parts.map(|(p, &r)| p * p * power(r))))
+    }
+
+    /// The largest ⟨r⟩ of these orbitals, a₀: the usual cut-off of core polarisation, the orbitals being
+    /// the core's (Migdalek and Baylis, J. Phys. B 11, L497 (1978)); 0 where none is occupied.
+    pub fn core_radius(&self, core: &[Orbital]) -> f64 {
+        let means = core
+            .iter()
+            .filter_map(|&o| self.expectation(self.orbital(o)?, 1));
+        means.fold(0.0, f64::max)
     }
 
     /// P at a radius, zero outside the box.

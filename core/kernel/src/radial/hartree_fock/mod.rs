@@ -34,7 +34,7 @@ mod start;
 mod wave;
 
 pub use atom::{Atom, HEAVIEST, MAX_L, MAX_N};
-pub use polarisation::Polarisation;
+pub use polarisation::{Polarisation, polarisability};
 pub use solve::solve;
 
 use crate::configuration::Orbital;

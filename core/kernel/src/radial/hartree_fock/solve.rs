@@ -21,6 +21,8 @@ const ROUGH: f64 = 1.4;
 const FINE: f64 = 0.65;
 /// Meshes that are tried, each larger than the one before.
 const MESHES: usize = 8;
+/// Iterations after which no other start is tried.
+const ENOUGH: usize = 500;
 /// Shares of the corrections that are taken, one after another where an iteration fails.
 const SHARES: [f64; 3] = [1.0, 0.5, 0.2];
 
@@ -61,10 +63,16 @@ fn attempts(
     let highest = subshells.iter().map(|s| s.orbital().l()).max().unwrap_or(0);
     let coefficients = Coefficients::up_to(highest);
     for share in SHARES {
+        if history.len() > ENOUGH {
+            break;
+        }
         let (rough, mut waves) = start_of(atom, &subshells, highest)?;
         let mut from = rough.mesh.clone();
         let mut spacing = rough.spacing;
         for _ in 0..MESHES {
+            if history.len() > 2 * ENOUGH {
+                break;
+            }
             spacing = fine_spacing(&spacing, &rough, &waves);
             let case = case(atom, spacing, highest)?;
             transfer(&from, &case, &mut waves);
