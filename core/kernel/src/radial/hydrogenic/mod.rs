@@ -108,6 +108,7 @@ impl Hydrogenic {
     ///
     /// h_k of the square root times L_k: √{(k+1)(k+2ℓ+2)} h_{k+1} = (2k+2ℓ+2−x) h_k −
     /// √{k(k+2ℓ+1)} h_{k−1}.
+    #[inline(never)]
     fn laguerre(&self, x: f64) -> (f64, f64) {
         let mut value = 1.0;
         for i in 1..=self.l {

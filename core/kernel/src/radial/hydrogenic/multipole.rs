@@ -49,16 +49,13 @@ fn exact_sum(a: &Hydrogenic, b: &Hydrogenic, k: i32) -> (bool, Natural) {
     let (p, q) = (a.degree(), b.degree());
     // The term i = j = 0.
     let mut row = Natural::from_u64(1);
-    let mut times = |factor: i32, how_often: i32| {
-        (0..how_often).for_each(|_| row.multiply_small(factor.unsigned_abs()));
-    };
-    times(2 * m, a.l);
-    times(2 * n, b.l);
-    times(n + m, p + q);
-    (2..=a.l + b.l + 2 + k).for_each(|factor| times(factor, 1));
+    raise(&mut row, 2 * m, a.l);
+    raise(&mut row, 2 * n, b.l);
+    raise(&mut row, n + m, p + q);
+    rise(&mut row, 2, a.l + b.l + 2 + k);
     // c_0 = p! C(n+ℓ, p) = (n+ℓ)!/(2ℓ+1)!.
-    (2 * a.l + 2..=n + a.l).for_each(|factor| times(factor, 1));
-    (2 * b.l + 2..=m + b.l).for_each(|factor| times(factor, 1));
+    rise(&mut row, 2 * a.l + 2, n + a.l);
+    rise(&mut row, 2 * b.l + 2, m + b.l);
     let mut sums = [Natural::default(), Natural::default()];
     for i in 0..=p {
         let mut term = row.clone();
@@ -79,7 +76,20 @@ fn exact_sum(a: &Hydrogenic, b: &Hydrogenic, k: i32) -> (bool, Natural) {
     even.difference(&odd)
 }
 
+/// Multiplies by factorᵖ.
+#[inline(never)]
+pub(super) fn raise(value: &mut Natural, factor: i32, exponent: i32) {
+    (0..exponent).for_each(|_| value.multiply_small(factor.unsigned_abs()));
+}
+
+/// Multiplies by every whole number from the first to the last.
+#[inline(never)]
+pub(super) fn rise(value: &mut Natural, first: i32, last: i32) {
+    (first..=last).for_each(|factor| value.multiply_small(factor.unsigned_abs()));
+}
+
 /// From one term to the next; every quotient is whole.
+#[inline(never)]
 fn step(term: &mut Natural, up: [i32; 3], down: [i32; 2], total: u32) {
     up.iter()
         .for_each(|factor| term.multiply_small(factor.unsigned_abs()));
@@ -89,20 +99,21 @@ fn step(term: &mut Natural, up: [i32; 3], down: [i32; 2], total: u32) {
 }
 
 /// √Π p! (n+ℓ)!, p = n − ℓ − 1, over the orbitals.
+#[inline(never)]
 pub(super) fn norm(orbitals: &[Hydrogenic]) -> Scaled {
     let mut square = Natural::from_u64(1);
     for orbital in orbitals {
-        for top in [orbital.degree(), orbital.n + orbital.l] {
-            (2..=top).for_each(|factor| square.multiply_small(factor.unsigned_abs()));
-        }
+        rise(&mut square, 2, orbital.degree());
+        rise(&mut square, 2, orbital.n + orbital.l);
     }
     square.scaled().root()
 }
 
 /// baseᵖ, p of either sign, rounded once or twice.
+#[inline(never)]
 pub(super) fn whole_power(base: i32, exponent: i32) -> Scaled {
     let mut product = Natural::from_u64(1);
-    (0..exponent.unsigned_abs()).for_each(|_| product.multiply_small(base.unsigned_abs()));
+    raise(&mut product, base, exponent.saturating_abs());
     let one = Scaled::new(1.0, 0);
     if exponent < 0 {
         one.over(product.scaled())

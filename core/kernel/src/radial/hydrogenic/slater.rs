@@ -1,7 +1,7 @@
 //! Slater integrals of hydrogenic orbitals, by an exact sum.
 
 use super::Hydrogenic;
-use super::multipole::{norm, whole_power};
+use super::multipole::{norm, raise, rise, whole_power};
 use crate::configuration::Orbital;
 use crate::numerics::natural::{Natural, Scaled};
 use crate::problem::Problem;
@@ -88,9 +88,9 @@ impl Pair {
             // J(p,q) B^(P+1) T^(P+Q+1), P and Q being the highest powers and T = B + G: the term
             // (p+q)! B^P T^(P+Q−p−q) at p = 0, which each step turns into the next.
             let mut term = Natural::from_u64(1);
-            (2..=q).for_each(|factor| term.multiply_small(factor.unsigned_abs()));
-            (0..high_p).for_each(|_| term.multiply_small(self.rate));
-            (0..high_p + high_q - q).for_each(|_| term.multiply_small(rates));
+            rise(&mut term, 2, q);
+            raise(&mut term, whole(self.rate), high_p);
+            raise(&mut term, whole(rates), high_p + high_q - q);
             let mut nested = term.clone();
             let mut row = [Natural::default(), Natural::default()];
             let mut coefficients = self.coefficients.iter().enumerate();
@@ -133,9 +133,8 @@ fn polynomial(orbital: &Hydrogenic, product: i32) -> Vec<Natural> {
     let (degree, l) = (orbital.degree(), orbital.l);
     let width = (2 * product / orbital.n).unsigned_abs();
     let mut coefficient = Natural::from_u64(1);
-    (0..l).for_each(|_| coefficient.multiply_small(width));
-    (2 * l + 2..=orbital.n + l)
-        .for_each(|factor| coefficient.multiply_small(factor.unsigned_abs()));
+    raise(&mut coefficient, whole(width), l);
+    rise(&mut coefficient, 2 * l + 2, orbital.n + l);
     let mut all = Vec::new();
     for i in 0..=degree {
         all.push(coefficient.clone());
