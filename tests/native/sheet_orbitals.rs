@@ -251,6 +251,40 @@ fn a_polarisation_is_shown_with_what_it_does() {
     assert!(limits.contains("0.95 a0³"), "{limits}");
 }
 
+/// Johnson, Kolb and Huang, At. Data Nucl. Data Tables 28, 333 (1983), from memory: α(Na⁺) = 0.9457 a₀³.
+#[test]
+fn a_polarisation_with_a_source_is_offered_and_can_be_entered() {
+    let sodium = json!({"rungline": 1, "species": "Na I", "configurations": ["3s"]});
+    let offer = answer(sodium.clone())["polarisation_offer"].clone();
+    assert_eq!(offer["alpha"], "0.9457 a0^3");
+    assert_eq!(offer["core"], "1s 2s 2p");
+    assert!(offer["source"].as_str().unwrap().contains("Johnson"));
+    let mut entered = sodium;
+    entered["structure"] =
+        json!({"polarisation": {"alpha": offer["alpha"], "radius": offer["radius"]}});
+    let polarised = answer(entered);
+    assert_eq!(polarised["polarisation"]["alpha"], 0.9457);
+    assert_eq!(polarised["polarisation_offer"], Value::Null);
+    // The observed ionisation energy is 5.139 eV = 0.18886 hartree (ground levels of the core's table).
+    let bound = |block: &Value| -row(block, "3s")["energy"].as_f64().unwrap();
+    let bare = bound(&polarised)
+        + polarised["polarisation"]["change"]["orbitals"]
+            .as_array()
+            .unwrap()
+            .iter()
+            .find(|row| row["label"] == "3s")
+            .unwrap()["energy"]
+            .as_f64()
+            .unwrap();
+    let observed = 0.188_86;
+    assert!((bound(&polarised) - observed).abs() < 0.5 * (bare - observed).abs());
+    // No published value is known here for a core of Fe I, and a one-electron ion has no core.
+    for other in ["Fe I", "H I", "B I"] {
+        let other = answer(json!({"rungline": 1, "species": other}));
+        assert_eq!(other["polarisation_offer"], Value::Null);
+    }
+}
+
 #[test]
 fn what_cannot_be_computed_is_a_fault_in_its_place() {
     let lack = fault(json!({"rungline": 1, "species": "*", "configurations": ["3d6"]}));

@@ -46,6 +46,7 @@ pub fn block(
         orbitals: rows,
         integrals: Vec::new(),
         polarisation: None,
+        polarisation_offer: None,
         dirac: Some(dirac),
     })
 }

@@ -5,13 +5,15 @@ use std::rc::Rc;
 use crate::configuration::{Orbital, Subshell};
 use crate::constants::HARTREE_WAVENUMBER;
 use crate::problem::Problem;
-use crate::radial::hartree_fock::{Atom, Progress as Step, RadialOrbital, Solution, solve};
+use crate::radial::hartree_fock::{
+    Atom, Progress as Step, RadialOrbital, Solution, polarisability, solve,
+};
 use crate::radial::nucleus::{Nucleus, rms_radius};
 
 use super::orbitals_cache as cache;
 use super::orbitals_rows::{
     Block, Change, Curve, IntegralRow, Iteration, MeshRow, NucleusRow, OrbitalChange, OrbitalRow,
-    PolarisationRow, Without,
+    PolarisationOffer, PolarisationRow, Without,
 };
 use super::orbitals_sample::radii;
 
@@ -87,8 +89,38 @@ pub fn block(
             .collect(),
         orbitals: rows,
         integrals: integrals(&solved, outside),
+        polarisation_offer: match polarisation {
+            Some(_) => None,
+            None => offer(&solved, outside),
+        },
         polarisation,
         dirac: None,
+    })
+}
+
+/// The core polarisation that could be entered: a published polarisability, and for the cut-off radius
+/// the mean radius of the core's outermost orbital (Migdalek and Baylis 1978).
+fn offer(solved: &Solution, outside: &[Subshell]) -> Option<PolarisationOffer> {
+    let core: Vec<&RadialOrbital> = solved
+        .orbitals
+        .iter()
+        .filter(|inner| outside.iter().all(|shell| shell.orbital() != inner.orbital))
+        .collect();
+    let full = core
+        .iter()
+        .all(|inner| inner.electrons == inner.orbital.capacity());
+    let electrons = core.iter().map(|inner| inner.electrons).sum();
+    let alpha = polarisability(solved.atom.z, electrons).filter(|_| full)?;
+    let radius = core
+        .iter()
+        .filter_map(|inner| solved.expectation(inner, 1))
+        .fold(0.0, f64::max);
+    let names: Vec<Orbital> = core.iter().map(|inner| inner.orbital).collect();
+    Some(PolarisationOffer {
+        alpha: format!("{alpha} a0^3"),
+        radius: format!("{radius:.2} a0"),
+        core: join(&names),
+        source: "Johnson, Kolb and Huang, At. Data Nucl. Data Tables 28, 333 (1983), from memory",
     })
 }
 

@@ -23,6 +23,8 @@ pub struct Block {
     pub orbitals: Vec<OrbitalRow>,
     pub integrals: Vec<IntegralRow>,
     pub polarisation: Option<PolarisationRow>,
+    /// What could be entered, where none is and the core's polarisability is known.
+    pub polarisation_offer: Option<PolarisationOffer>,
     pub dirac: Option<DiracRow>,
 }
 
@@ -96,6 +98,17 @@ pub struct BetweenRow {
     pub overlap: f64,
     /// The largest overlap of different orbitals; its square bounds what is left out.
     pub largest_cross: f64,
+}
+
+/// A core polarisation that has a source, in the sheet's own spelling.
+#[derive(Clone, Debug, Serialize)]
+pub struct PolarisationOffer {
+    /// "0.9457 a0^3".
+    pub alpha: String,
+    /// The mean radius of the core's outermost orbital as computed here, to two decimals: "0.79 a0".
+    pub radius: String,
+    pub core: String,
+    pub source: &'static str,
 }
 
 /// The core polarisation and what it does: with minus without, hartree, a₀, cm⁻¹.
