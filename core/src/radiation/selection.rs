@@ -9,11 +9,11 @@ use super::chain_rules::Shells;
 use super::strengths::orbital_share;
 use super::{Multipole, Rule};
 use crate::configuration::{Orbital, Subshell};
+use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::terms::chains::Chain;
 use crate::terms::{Term, is_odd};
-use std::collections::BTreeMap;
 
 /// A term of a configuration: one kind of it, where it occurs more than once.
 #[derive(Clone, Copy, Debug)]
@@ -76,16 +76,18 @@ impl Between {
     ///
     /// Errors: `electron-count-differs`.
     pub fn new(upper: &[Subshell], lower: &[Subshell]) -> Result<Self, Problem> {
-        let mut occupations: BTreeMap<Orbital, (u32, u32)> = BTreeMap::new();
-        for s in upper {
-            occupations.entry(s.orbital()).or_default().0 += s.electrons();
-        }
-        for s in lower {
-            occupations.entry(s.orbital()).or_default().1 += s.electrons();
+        let mut occupations: SortedMap<Orbital, (u32, u32)> = SortedMap::default();
+        let sides = [upper, lower].into_iter().zip([(1, 0), (0, 1)]);
+        for (s, (above, below)) in
+            sides.flat_map(|(shells, side)| shells.iter().map(move |s| (s, side)))
+        {
+            let before = occupations.get(&s.orbital()).copied().unwrap_or_default();
+            let with = |count: u32, share: u32| count.saturating_add(share * s.electrons());
+            occupations.insert(s.orbital(), (with(before.0, above), with(before.1, below)));
         }
         let (mut left, mut joined) = (0_u32, 0_u32);
         let mut jump = (None, None);
-        for (&orbital, &(above, below)) in &occupations {
+        for &(orbital, (above, below)) in occupations.entries() {
             left = left.saturating_add(above.saturating_sub(below));
             joined = joined.saturating_add(below.saturating_sub(above));
             if above > below {
@@ -127,7 +129,7 @@ impl Between {
                 _ => Jump::Several(left),
             },
             shells: Shells::new(
-                occupations.into_keys().collect(),
+                occupations.entries().iter().map(|entry| entry.0).collect(),
                 if left == 0 { upper } else { &[] },
                 &active,
             ),

@@ -1,6 +1,6 @@
 //! What every answer carries beside its own keys.
 
-use std::collections::BTreeMap;
+use crate::numerics::sorted_map::SortedMap;
 
 use serde::Serialize;
 
@@ -54,7 +54,7 @@ pub struct Around {
     /// Where something can hurt.
     pub cautions: Vec<&'static str>,
     /// The kind of every column or single number, by its path in the answer.
-    pub kinds: BTreeMap<&'static str, Kind>,
+    pub kinds: SortedMap<&'static str, Kind>,
 }
 
 impl Around {

@@ -2,6 +2,7 @@
 
 use crate::configuration::{self, Species, filling};
 use crate::numerics::order::sort_by_key;
+use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
 use crate::quantity::{self, Dimension};
 use crate::terms::{self, Level, label, ls};
@@ -481,7 +482,7 @@ fn sort_by_place(faults: &mut Vec<Problem>, json: &Json) {
     }
     let mut order = Vec::new();
     walk(json, "", &mut order);
-    let places: std::collections::BTreeMap<String, usize> = order
+    let places: SortedMap<String, usize> = order
         .into_iter()
         .enumerate()
         .map(|(place, path)| (path, place))

@@ -1,6 +1,6 @@
 //! The rows of the answer to *Which lines?*
 
-use std::collections::BTreeMap;
+use crate::numerics::sorted_map::SortedMap;
 
 use serde::Serialize;
 
@@ -54,7 +54,7 @@ pub struct RefusedRow {
     pub code: &'static str,
     pub rigorous: bool,
     /// The rule against each other multipole, by its code.
-    pub others: BTreeMap<String, &'static str>,
+    pub others: SortedMap<String, &'static str>,
 }
 
 #[derive(Debug, Serialize)]

@@ -1,6 +1,6 @@
 //! The sentence, the working, the kinds and the limits of the answer on orbitals.
 
-use std::collections::BTreeMap;
+use crate::numerics::sorted_map::SortedMap;
 
 use crate::constants::{FINE_STRUCTURE, HARTREE_ELECTRON_VOLT, HARTREE_WAVENUMBER};
 
@@ -84,9 +84,9 @@ fn kind(block: &Block) -> Kind {
     }
 }
 
-pub fn kinds(first: &Block) -> BTreeMap<&'static str, Kind> {
+pub fn kinds(first: &Block) -> SortedMap<&'static str, Kind> {
     let own = kind(first);
-    let mut kinds: BTreeMap<&'static str, Kind> = [
+    let mut kinds: SortedMap<&'static str, Kind> = [
         ("total_energy", own),
         ("virial_ratio", Kind::Computed),
         ("residual", Kind::Computed),

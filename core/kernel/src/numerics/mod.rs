@@ -8,5 +8,6 @@ pub mod gauss_legendre;
 pub mod linear;
 pub mod natural;
 pub mod order;
+pub mod sorted_map;
 pub mod spline;
 pub mod symmetric;
