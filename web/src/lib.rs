@@ -104,6 +104,12 @@ pub fn record(sheet: JsValue) -> Result<String, JsValue> {
     Ok(sheet::record_message_watched(&json(sheet)?, &mut teller()))
 }
 
+/// The angular part of orbitals with this ℓ, in section.
+#[wasm_bindgen]
+pub fn sections(l: u32) -> String {
+    sheet::sections_message(l)
+}
+
 /// The chart of the elements for one charge.
 #[wasm_bindgen]
 pub fn chart(charge: i32) -> String {

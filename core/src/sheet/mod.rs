@@ -33,6 +33,7 @@ mod reading;
 mod record;
 mod rich;
 mod schema;
+mod sections;
 mod shells;
 mod splitting;
 mod states;
@@ -49,6 +50,7 @@ pub use document::Document;
 pub use json::{Json, MAX_BYTES};
 pub use reading::reading;
 pub use record::{Recheck, recheck_text};
+pub use sections::sections_message;
 pub use watch::{Progress, Watch, unwatched};
 
 /// The program's version, as records carry it.

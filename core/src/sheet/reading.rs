@@ -193,6 +193,16 @@ fn echoes(document: &Document) -> Vec<Echo> {
         add("/line/upper", document.level_rich(upper));
         add("/line/lower", document.level_rich(lower));
     }
+    if let Some(polarisation) = &document.structure.polarisation {
+        add(
+            "/structure/polarisation/alpha",
+            Rich::new().number(polarisation.alpha, Some("a0^3"), Kind::Entered),
+        );
+        add(
+            "/structure/polarisation/radius",
+            Rich::new().number(polarisation.radius, Some("a0"), Kind::Entered),
+        );
+    }
     if let Some(wavelength) = document.wavelength_nm {
         add(
             "/line/wavelength",

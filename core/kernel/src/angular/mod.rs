@@ -7,6 +7,7 @@ mod nine_j;
 pub mod parentage;
 mod racah_sum;
 mod six_j;
+pub mod spherical;
 mod three_j;
 mod triad;
 pub mod unit_tensors;
