@@ -14,6 +14,7 @@ import { listen } from "./keys.js";
 import { Notes } from "./notes.js";
 import { keepOffline } from "./offline.js";
 import { openPanel } from "./opening.js";
+import { Orbitals } from "./orbitals.js";
 import { valueAt } from "./pointer.js";
 import { Questions, WORDS } from "./questions.js";
 import { questionFields } from "./question-fields.js";
@@ -24,6 +25,7 @@ import { SheetStore } from "./sheet.js";
 import { compileCore, showCannotStart, workerStarter } from "./startup.js";
 import { Storage } from "./storage.js";
 import { ViewState } from "./view-state.js";
+import { OrbitalsPart } from "./views/orbitals.js";
 
 const byId = (id) => document.getElementById(id);
 
@@ -43,11 +45,13 @@ async function start() {
   const announcer = makeAnnouncer(byId("announcements"));
   keeper.begin();
 
-  const engine = new Engine(startWorker, await compiling);
+  const core = await compiling;
+  const engine = new Engine(startWorker, core);
   const questions = new Questions(engine, store);
+  const orbitals = new Orbitals(() => new Engine(startWorker, core), store, questions);
   await questions.begin();
 
-  new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, questions }).begin();
+  new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, questions, orbitals }).begin();
   byId("cannot-start").remove();
   keepForOffline(notes);
 }
@@ -124,6 +128,7 @@ class Page {
     });
     this.store.subscribe((change) => this.changed(change));
     this.questions.subscribe((what) => (what === "reading" ? this.showReading() : this.showQuestion(what)));
+    this.orbitals.subscribe(() => this.showStop());
     this.settings.subscribe(() => this.showAll());
     this.changed({ kind: "load" });
     measureHead();
@@ -143,9 +148,13 @@ class Page {
       stop: () => this.stop(),
       save: () => this.filing.saveSheet(),
     };
+    this.orbitalsPart = new OrbitalsPart({
+      orbitals: this.orbitals, context, fields: this.fields,
+      act: { stop: act.stop, save: act.save, takeWay: (fault, way) => this.fields.takeWay(fault, way) },
+    });
     this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
       name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,
-      open: index === 0,
+      open: index === 0, more: name === "states" ? this.orbitalsPart.node : null,
       fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label), { choice: context.choice, store: this.store }),
     }));
     this.questions.isUnfolded = (name) => this.rungOf(name).open;
@@ -276,13 +285,14 @@ class Page {
   }
 
   showStop() {
-    const { running } = this.questions;
+    const running = this.questions.running || this.orbitals.running;
     this.stopButton.hidden = !running;
     byId("foot-bar").classList.toggle("running", running);
   }
 
   showAll() {
     if (this.questions.reading !== null) this.showReading();
+    this.orbitalsPart.show();
   }
 
   toFirstFault() {
@@ -290,7 +300,10 @@ class Page {
     if (fault === undefined) return;
     if (/^\/(species|configurations)/.test(fault.path)) this.head.unfold(true, false);
     else if (/^\/(field|line)/.test(fault.path)) this.rungs.find((rung) => rung.name === "splitting")?.rung.unfold(true);
-    else if (/^\/(title|note)$/.test(fault.path)) this.record.rung.unfold(true);
+    else if (/^\/structure/.test(fault.path)) {
+      this.rungOf("states").unfold(true);
+      this.orbitalsPart.open();
+    } else if (/^\/(title|note)$/.test(fault.path)) this.record.rung.unfold(true);
     this.head.makeRoom(fault.path);
     if (!this.fields.focus(fault.path)) document.querySelector('[data-note="elsewhere"] button')?.focus();
   }
@@ -327,11 +340,12 @@ class Page {
 
   stop() {
     this.questions.stop();
+    this.orbitals.stop();
     this.announcer.now("Stopped.");
   }
 
   escape() {
-    if (this.questions.running) {
+    if (this.questions.running || this.orbitals.running) {
       this.stop();
       return true;
     }

@@ -16,3 +16,21 @@ export function makeChoice() {
     },
   };
 }
+
+/** The same choice for nodes that are made anew now and then: `release` ends their subscriptions. */
+export function scopedChoice(choice) {
+  let drops = [];
+  return {
+    get: choice.get,
+    set: choice.set,
+    subscribe(listener) {
+      const drop = choice.subscribe(listener);
+      drops.push(drop);
+      return drop;
+    },
+    release() {
+      for (const drop of drops) drop();
+      drops = [];
+    },
+  };
+}

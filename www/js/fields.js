@@ -54,9 +54,9 @@ export class Fields {
 
   /**
    * A new field for the text at `path`. `hint` says what may stand there; `suggestions` gives the
-   * texts that the browser offers.
+   * texts that the browser offers. A fault of the whole `group` is shown while the field is empty.
    */
-  make(path, { label, hint, suggestions = null, onEmpty = null }) {
+  make(path, { label, hint, suggestions = null, onEmpty = null, group = null }) {
     const id = freshId("field");
     const input = element("input", {
       id, type: "text", class: "key", autocomplete: "off", autocapitalize: "off", autocorrect: "off",
@@ -71,7 +71,7 @@ export class Fields {
       element("label", { for: id, text: label }),
       element("span", { class: "hint", id: `${id}-hint`, text: hint }),
       input, list, echo, ways);
-    const field = { path, label, input, echo, ways, list, suggestions, node, onEmpty };
+    const field = { path, label, input, echo, ways, list, suggestions, node, onEmpty, group };
     input.value = this.#store.text(path);
     input.addEventListener("input", () => {
       this.#timing.typing(path);
@@ -99,7 +99,7 @@ export class Fields {
   }
 
   has(path) {
-    return this.#fields.has(path);
+    return this.#fields.has(path) || [...this.#fields.values()].some(({ group }) => group === path);
   }
 
   /** Focuses the field at a path, or the first one inside the group at that path. */
@@ -137,7 +137,7 @@ export class Fields {
       }
     }
     if (this.#reading === null) return;
-    const faults = this.#timing.shown(this.#reading.faults).filter((fault) => fault.path === field.path);
+    const faults = this.#timing.shown(this.#reading.faults).filter(({ path }) => path === field.path || (path === field.group && field.input.value === ""));
     const key = JSON.stringify([faults, field.input.value, this.#echoOf(field), field.onEmpty?.(this.#reading)]);
     if (field.shown === key) return;
     field.shown = key;

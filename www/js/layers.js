@@ -1,5 +1,6 @@
 // The four layers of one answer: sentence, evidence, working, limits.
 
+import { scopedChoice } from "./choice.js";
 import { element } from "./dom.js";
 import { richNode, richPlain, richSpeech } from "./rich.js";
 
@@ -10,7 +11,8 @@ export class Layers {
   #view;
   #name;
   #turn = 0;
-  #drop = [];
+  #choice;
+  #parts;
   #shown = null;
   #say = element("p", { class: "say", tabindex: "0" });
   #copied = element("span", { class: "note", role: "status" });
@@ -21,11 +23,13 @@ export class Layers {
   #working;
   #limits;
 
-  constructor({ name, render, context, view }) {
+  /** `more`: a node between evidence and working that outlives the answers. */
+  constructor({ name, render, context, view, more = null }) {
     this.#name = name;
     this.#render = render;
     this.#context = context;
     this.#view = view;
+    this.#choice = scopedChoice(context.choice);
     const heading = (text) => element("h3", { id: `${name}-${text.toLowerCase()}`, text });
     this.#evidence = element("section", { class: "evidence", tabindex: "-1", "aria-labelledby": `${name}-evidence ${name}-name` }, heading("Evidence"), this.#evidenceBody);
     this.#working = element("details", { class: "working fold" }, element("summary", {}, heading("Working")), this.#workingBody);
@@ -33,12 +37,17 @@ export class Layers {
     this.#working.open = view.get(`working:${name}`) ?? false;
     this.#working.addEventListener("toggle", () => view.set(`working:${name}`, this.#working.open));
     this.#say.addEventListener("copy", (event) => this.#copy(event));
-    this.node = element("div", { class: "layers", hidden: true },
-      element("div", { class: "say-line" }, this.#say,
-        element("button", { type: "button", class: "action copy-say", text: "Copy", "aria-label": "Copy the answer's sentence", on: { click: () => this.#copyBy() } }),
-        this.#copied),
-      this.#cautions, this.#evidence,
-      element("div", { class: "under" }, this.#working, this.#limits));
+    const line = element("div", { class: "say-line" }, this.#say,
+      element("button", { type: "button", class: "action copy-say", text: "Copy", "aria-label": "Copy the answer's sentence", on: { click: () => this.#copyBy() } }),
+      this.#copied);
+    const under = element("div", { class: "under" }, this.#working, this.#limits);
+    this.#parts = [line, this.#cautions, this.#evidence, under];
+    this.node = element("div", { class: "layers" }, line, this.#cautions, this.#evidence, more, under);
+    this.#hide(true);
+  }
+
+  #hide(hidden) {
+    for (const part of this.#parts) part.hidden = hidden;
   }
 
   /** The sentence as it is spoken. */
@@ -57,7 +66,7 @@ export class Layers {
     this.#turn += 1;
     this.#say.replaceChildren(richNode(answer.say, this.#context.settings.values));
     this.#copied.textContent = "";
-    this.node.hidden = false;
+    this.#hide(false);
     if (unfolded) this.#evidenceLater(answer);
   }
 
@@ -65,8 +74,8 @@ export class Layers {
   clear() {
     this.#turn += 1;
     this.#shown = null;
-    this.node.hidden = true;
-    this.#release();
+    this.#hide(true);
+    this.#choice.release();
     this.#evidenceBody.replaceChildren();
     this.#workingBody.replaceChildren();
   }
@@ -89,7 +98,7 @@ export class Layers {
       element("h3", { id: `${this.#name}-limits`, text: "Limits" }),
       element("ul", {}, ...limits.map((text) => element("li", { text }))));
     const place = focusPlace(this.#evidence) ?? focusPlace(this.#workingBody);
-    this.#release();
+    this.#choice.release();
     try {
       const { evidence, working } = this.#render(answer, this.#viewContext());
       this.#evidenceBody.replaceChildren(evidence);
@@ -107,27 +116,8 @@ export class Layers {
 
   // The view's subscriptions end when its nodes go.
   #viewContext() {
-    const { choice, settings, ...rest } = this.#context;
-    return {
-      ...rest,
-      view: this.#view,
-      settings: settings.values,
-      sheet: this.#context.store.sheet,
-      choice: {
-        get: choice.get,
-        set: choice.set,
-        subscribe: (listener) => {
-          const drop = choice.subscribe(listener);
-          this.#drop.push(drop);
-          return drop;
-        },
-      },
-    };
-  }
-
-  #release() {
-    for (const drop of this.#drop) drop();
-    this.#drop = [];
+    const { settings, ...rest } = this.#context;
+    return { ...rest, view: this.#view, settings: settings.values, sheet: this.#context.store.sheet, choice: this.#choice };
   }
 
   #copy(event) {
@@ -164,7 +154,7 @@ function afterPaint(act) {
 }
 
 // How to find focus again after the nodes under it have been made anew.
-function focusPlace(container) {
+export function focusPlace(container) {
   const focused = document.activeElement;
   if (!container.contains(focused) || focused === container) return null;
   const all = () => [...container.querySelectorAll("a[href], button, input, select, summary, [tabindex]")];

@@ -77,14 +77,14 @@ export class QuestionRung {
   #announcer;
   #spoken = "";
 
-  constructor({ name, numeral, view, questions, context, announcer, fieldsNode = null, open, act }) {
+  constructor({ name, numeral, view, questions, context, announcer, fieldsNode = null, more = null, open, act }) {
     this.name = name;
     this.#questions = questions;
     this.#context = context;
     this.#announcer = announcer;
     this.act = act;
     this.rung = new Rung({ name, question: WORDS[name], numeral, view, open, onUnfold: () => this.show() });
-    this.#layers = new Layers({ name, render: VIEWS[name].render, context, view });
+    this.#layers = new Layers({ name, render: VIEWS[name].render, context, view, more });
     this.rung.hang.append(...[fieldsNode, this.#needs, this.#run, this.#note, this.#layers.node].filter(Boolean));
   }
 

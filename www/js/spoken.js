@@ -51,6 +51,8 @@ function cardinal(number) {
   return ones === 0 ? TENS[Math.floor(number / 10)] : `${TENS[Math.floor(number / 10)]}-${ONES[ones]}`;
 }
 
+const bohr = (power, speech) => ({ runs: [{ text: "a" }, { up: power.replace("-", "\u2212"), down: "0" }], speech, latex: `$a_0^{${power}}$` });
+
 /** Units: how each is set (runs, see rich.js) and said. */
 export const UNITS = {
   "cm-1": { runs: [{ text: "cm" }, { up: "\u22121" }], speech: "inverse centimetres", latex: "cm$^{-1}$" },
@@ -62,6 +64,13 @@ export const UNITS = {
   mu_B: MU_B,
   "μ_B": MU_B,
   "mu_B B": { runs: [{ text: "μ" }, { down: "B" }, { text: "\u00a0B" }], speech: "Bohr magnetons times B", latex: "$\\mu_\\mathrm{B} B$" },
+  hartree: { runs: [{ text: "hartree" }], speech: "hartree" },
+  a0: { runs: [{ text: "a" }, { down: "0" }], speech: "Bohr radii", latex: "$a_0$" },
+  "a0^2": bohr("2", "Bohr radii squared"),
+  "a0^3": bohr("3", "Bohr radii cubed"),
+  "a0^-1": bohr("-1", "inverse Bohr radii"),
+  "a0^-2": bohr("-2", "inverse Bohr radii squared"),
+  "a0^-3": bohr("-3", "inverse Bohr radii cubed"),
   "°": { runs: [{ text: "°" }], speech: "degrees", latex: "$^\\circ$" },
   "%": { runs: [{ text: "%" }], speech: "per cent", latex: "\\%" },
 };

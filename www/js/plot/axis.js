@@ -25,20 +25,36 @@ export function ticks(from, to, wanted) {
   return { values: Array.from({ length: count + 1 }, (_, i) => (first + i) * step), decimals };
 }
 
-/** A horizontal axis at `y`, with the title (runs) beneath. */
-export function bottomAxis(pen, { scale, from, to, left, right, y, title }) {
-  const { values, decimals } = ticks(from, to, Math.max(2, (right - left) / 64));
+/** A horizontal axis at `y`, with the title (runs) beneath; `at` are its ticks where they are not even. */
+export function bottomAxis(pen, { scale, from, to, left, right, y, title, at = null }) {
+  const { values, decimals } = at ?? ticks(from, to, Math.max(2, (right - left) / 64));
   pen.line(left, y, right, y, { stroke: "edge" });
   for (const value of values) {
     const x = scale(value);
     pen.line(x, y, x, y + TICK, { stroke: "edge" });
-    pen.text(x, y + TICK + LABEL + 1, tickText(value, decimals), { anchor: "middle", fill: "quiet" });
+    pen.text(x, y + TICK + LABEL + 1, tickText(value, decimals ?? decimalsOf(value)), { anchor: "middle", fill: "quiet" });
   }
   pen.text((left + right) / 2, y + TICK + 2 * LABEL + 9, title, { anchor: "middle", fill: "quiet" });
 }
 
+/** Round values from `from` to `to` on an axis that runs as the root: at least `apart` pixels apart. */
+export function rootTicks(from, to, place, apart) {
+  const values = [];
+  const add = (value) => {
+    if (value >= from && value <= to && values.every((other) => Math.abs(place(other) - place(value)) >= apart)) values.push(value);
+  };
+  add(0);
+  // Round ones first, then what fits between them.
+  for (const steps of [[1], [5], [2]]) for (let power = 3; power >= -5; power -= 1) for (const step of steps) add(Number(`${step}e${power}`));
+  return values.length < 3 ? ticks(from, to, 4) : { values };
+}
+
 /** The height that `bottomAxis` takes beneath its line. */
 export const BOTTOM_AXIS = TICK + 2 * LABEL + 16;
+
+function decimalsOf(value) {
+  return Math.max(0, -Math.floor(Math.log10(Math.abs(value) || 1) + 1e-9));
+}
 
 /** A tick's number; with enough decimals for its step. */
 export function tickText(value, decimals) {

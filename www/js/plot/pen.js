@@ -34,7 +34,11 @@ export class SvgPen {
   }
 
   polygon(points, style = {}) {
-    this.#add("polygon", { points: points.map(([x, y]) => `${tidy(x)},${tidy(y)}`).join(" ") }, style);
+    this.#add("polygon", { points: listed(points) }, style);
+  }
+
+  polyline(points, style = {}) {
+    this.#add("polyline", { points: listed(points) }, { stroke: "ink", ...style, fill: null });
   }
 
   circle(x, y, radius, style = {}) {
@@ -87,6 +91,10 @@ export class CanvasPen {
 
   polygon(points, style = {}) {
     this.#trace(points, true, style);
+  }
+
+  polyline(points, style = {}) {
+    this.#trace(points, false, { stroke: "ink", ...style, fill: null });
   }
 
   circle(x, y, radius, style = {}) {
@@ -146,6 +154,10 @@ function parts(label) {
     if (stacked) down[0].back = [...run.up].length * 0.58 * SMALL;
     return [...up, ...down];
   });
+}
+
+function listed(points) {
+  return points.map(([x, y]) => `${tidy(x)},${tidy(y)}`).join(" ");
 }
 
 // Half a hundredth of a pixel is never seen, and short numbers keep files small.

@@ -20,7 +20,8 @@ const MOST_ZOOM = 200;
  * `layout(width, view)` → {height, marks, draw(pen), width?}; `view` is the part of the horizontal extent that
  *   is shown, [0, 1] unzoomed, or ignored when `zoomable` is false.
  *   A mark: {x, y, w, h (its box, for ring and touch), reading: rich text, id: shared choice or null,
- *   ids: those of what else it belongs to, whose choice rings it too}.
+ *   ids: those of what else it belongs to, whose choice rings it too; chooses: what Enter chooses on
+ *   a mark that is not ringed for it}.
  * `rest`: rich text of the reading line while nobody is on a mark.
  * `walk(index, key, marks)` → next index, for pictures that are walked in two directions.
  * `table`: node shown by "Show as table", or null when the table stands beside the picture already;
@@ -164,7 +165,7 @@ class Picture {
   }
 
   #choose(index) {
-    const id = this.#marks[index]?.id ?? null;
+    const id = this.#marks[index]?.id ?? this.#marks[index]?.chooses ?? null;
     if (id === null) return;
     this.#context.choice.set(id === this.#context.choice.get() ? null : id);
   }
