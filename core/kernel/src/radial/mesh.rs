@@ -243,6 +243,25 @@ impl Mesh {
         out
     }
 
+    /// Several functions Σ c_i B_i at any radii, zero beyond the end.
+    pub fn sample_at(&self, coefficients: &[&[f64]], radii: &[f64]) -> Vec<Vec<f64>> {
+        let none = || Vec::with_capacity(radii.len());
+        let mut all: Vec<Vec<f64>> = coefficients.iter().map(|_| none()).collect();
+        for &r in radii {
+            let first = self.basis.first_at(r);
+            let values = if r <= self.end() {
+                self.basis.values(first, r)
+            } else {
+                Vec::new()
+            };
+            for (coefficients, out) in coefficients.iter().zip(&mut all) {
+                let part = coefficients.get(first..).unwrap_or_default();
+                out.push(part.iter().zip(&values).map(|(c, b)| c * b).sum());
+            }
+        }
+        all
+    }
+
     /// Σ_q f_q B_i(r_q) for each spline; f holds the weights of the quadrature already.
     pub fn project(&self, blocks: &[Block], f: &[f64]) -> Vec<f64> {
         let mut out = vec![0.0; self.size()];

@@ -15,7 +15,7 @@
 //! Source: Löwdin, Phys. Rev. 97, 1474 (1955).
 
 use super::hartree_fock::{Polarisation, RadialOrbital, Solution};
-use super::mesh::{Mesh, POINTS};
+use super::mesh::POINTS;
 use crate::configuration::Orbital;
 use crate::numerics::gauss_legendre::gauss_legendre;
 use crate::numerics::linear::solve;
@@ -180,8 +180,8 @@ impl Common {
             }
         }
         Common {
-            from: sample(&from.mesh, &from.orbitals, &radii),
-            to: sample(&to.mesh, &to.orbitals, &radii),
+            from: sample(from, &radii),
+            to: sample(to, &radii),
             radii,
             weights,
         }
@@ -243,23 +243,9 @@ fn place_of(solution: &Solution, orbital: &RadialOrbital) -> Option<usize> {
 }
 
 /// Every orbital's P at these radii.
-fn sample(mesh: &Mesh, orbitals: &[RadialOrbital], radii: &[f64]) -> Vec<Vec<f64>> {
-    let mut all: Vec<Vec<f64>> = orbitals
-        .iter()
-        .map(|_| Vec::with_capacity(radii.len()))
+fn sample(solution: &Solution, radii: &[f64]) -> Vec<Vec<f64>> {
+    let all: Vec<&[f64]> = (solution.orbitals.iter())
+        .map(|o| o.coefficients.as_slice())
         .collect();
-    for &r in radii {
-        let inside = r <= mesh.end();
-        let first = mesh.basis().first_at(r);
-        let values = if inside {
-            mesh.basis().values(first, r)
-        } else {
-            Vec::new()
-        };
-        for (orbital, out) in orbitals.iter().zip(&mut all) {
-            let coefficients = orbital.coefficients.iter().skip(first);
-            out.push(coefficients.zip(&values).map(|(c, b)| c * b).sum());
-        }
-    }
-    all
+    solution.mesh.sample_at(&all, radii)
 }

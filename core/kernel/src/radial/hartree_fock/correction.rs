@@ -3,7 +3,6 @@
 
 use super::field::{Coefficients, between};
 use super::wave::{Case, Wave, active, add, dot};
-use crate::numerics::banded::Banded;
 use crate::numerics::linear;
 
 /// The largest rotation and the largest length of a correction in one step.
@@ -80,7 +79,11 @@ fn outside(
     // An orbital that is hardly bound yet, or not, must not be taken for one of the continuum.
     let n = f64::from(wave.n);
     let shift = wave.energy.min(-0.25 * case.tail * case.tail / (n * n));
-    let factors = operator(case, wave, Some(average), shift)
+    let local: Vec<f64> = (wave.local.iter().zip(average))
+        .map(|(v, x)| v + x - shift)
+        .collect();
+    let factors = case
+        .operator(wave.l, &wave.inverse_mass, &local)
         .part(start, end)
         .factorise();
     let same = waves.iter().filter(|other| other.l == wave.l);
@@ -119,28 +122,6 @@ fn outside(
         part.copy_from_slice(&step);
     }
     whole
-}
-
-/// K + V + v − shift on all splines, v being Slater's average exchange where it is given.
-pub(super) fn operator(case: &Case, wave: &Wave, average: Option<&[f64]>, shift: f64) -> Banded {
-    let mesh = &case.mesh;
-    let weights = mesh.weights();
-    let centrifugal = wave.centrifugal();
-    let slope_part: Vec<f64> = (wave.inverse_mass.iter().zip(weights))
-        .map(|(m, w)| 0.5 * w * m)
-        .collect();
-    let parts = (wave.local.iter().zip(mesh.radii())).zip(wave.inverse_mass.iter().zip(weights));
-    let mut value_part: Vec<f64> = parts
-        .map(|((v, r), (m, w))| w * (0.5 * m * centrifugal / (r * r) + v - shift))
-        .collect();
-    if let Some(average) = average {
-        for ((value, x), w) in value_part.iter_mut().zip(average).zip(weights) {
-            *value += w * x;
-        }
-    }
-    let mut matrix = mesh.assemble(&case.twists, &slope_part);
-    matrix.add(1.0, &mesh.assemble(mesh.values(), &value_part));
-    matrix
 }
 
 /// The angle θ by which a turns to b (P_a + θ P_b, P_b − θ P_a) for E_av to be stationary; for two

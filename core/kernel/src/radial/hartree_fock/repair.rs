@@ -6,7 +6,6 @@
 
 use nalgebra::DMatrix;
 
-use super::correction::operator;
 use super::field::Coefficients;
 use super::wave::{Case, Wave, active, dot};
 use crate::numerics::symmetric::eigensystem;
@@ -56,8 +55,9 @@ pub(super) fn state(
     let mesh = &case.mesh;
     let (start, end) = active(mesh, wave.l);
     let size = end.checked_sub(start)?;
-    // Kinetic and local part: the operator of the corrections, without its exchange and shift.
-    let local = operator(case, wave, None, 0.0).part(start, end);
+    let local = case
+        .operator(wave.l, &wave.inverse_mass, &wave.local)
+        .part(start, end);
     let factors = mesh.metric().part(start, end).factorise();
     let mut matrix = DMatrix::zeros(size, size);
     for (i, row) in local.entries().chunks_exact(local.width()).enumerate() {

@@ -9,10 +9,11 @@ use super::wave::{Case, Wave, active};
 use super::{Failure, Progress, RadialOrbital, Solution};
 use crate::configuration::{Orbital, Subshell};
 use crate::constants::FINE_STRUCTURE;
+use crate::numerics::banded::Banded;
 use crate::numerics::order::sort;
 use crate::problem::Problem;
 use crate::radial::knots::{Spacing, breaks};
-use crate::radial::mesh::Mesh;
+use crate::radial::mesh::{Block, Mesh};
 use crate::radial::nucleus::Nucleus;
 
 /// Phase that an interval of the first, rough mesh spans.
@@ -206,8 +207,15 @@ fn case(atom: &Atom, spacing: Spacing, highest: u8) -> Result<Case, Problem> {
     } else {
         0.0
     };
+    let twists = mesh.slopes_with(-1.0);
+    let kinetic = if atom.relativity {
+        Vec::new()
+    } else {
+        (0..=highest).map(|l| kinetic(&mesh, &twists, l)).collect()
+    };
     Ok(Case {
-        twists: mesh.slopes_with(-1.0),
+        twists,
+        kinetic,
         nuclear: atom.nucleus.potential(spacing.z, mesh.radii()),
         polarisation: (atom.polarisation.as_ref())
             .map(|p| mesh.radii().iter().map(|&r| p.potential(r)).collect()),
@@ -219,12 +227,23 @@ fn case(atom: &Atom, spacing: Spacing, highest: u8) -> Result<Case, Problem> {
     })
 }
 
+/// −½ d²/dr² + ℓ(ℓ+1)/2r².
+fn kinetic(mesh: &Mesh, twists: &[Block], l: u8) -> Banded {
+    let half: Vec<f64> = mesh.weights().iter().map(|w| 0.5 * w).collect();
+    let centrifugal = f64::from(l) * (f64::from(l) + 1.0);
+    let barrier: Vec<f64> = (half.iter().zip(mesh.radii()))
+        .map(|(w, r)| w * centrifugal / (r * r))
+        .collect();
+    let mut matrix = mesh.assemble(twists, &half);
+    matrix.add(1.0, &mesh.assemble(mesh.values(), &barrier));
+    matrix
+}
+
 /// Brings the functions from one mesh to another.
 fn transfer(from: &Mesh, case: &Case, waves: &mut [Wave]) {
-    for wave in waves.iter_mut() {
-        let p: Vec<f64> = (case.mesh.radii().iter())
-            .map(|&r| from.basis().evaluate(&wave.coefficients, r))
-            .collect();
+    let all: Vec<&[f64]> = waves.iter().map(|w| w.coefficients.as_slice()).collect();
+    let sampled = from.sample_at(&all, case.mesh.radii());
+    for (wave, p) in waves.iter_mut().zip(sampled) {
         let (start, end) = active(&case.mesh, wave.l);
         let fitted = case.mesh.fit(&p);
         wave.coefficients = (fitted.iter().zip(0..))

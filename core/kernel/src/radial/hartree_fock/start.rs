@@ -96,22 +96,14 @@ fn eigenfunctions(case: &Case, z: f64, local: &[f64], waves: &mut [Wave]) -> Opt
     None
 }
 
-/// K + ℓ(ℓ+1)/2r² + V, with relativity at the ε known so far.
+/// Kinetic energy and V, with relativity at the ε known so far.
 fn hamiltonian(case: &Case, wave: &Wave, local: &[f64]) -> Banded {
-    let mesh = &case.mesh;
     let half = 0.5 * case.alpha_squared;
     let energy = wave.energy.min(0.0);
-    let weighted: Vec<f64> = (local.iter().zip(mesh.weights()))
-        .map(|(v, w)| 0.5 * w / (1.0 + half * (energy - v)).max(0.05))
+    let inverse_mass: Vec<f64> = (local.iter())
+        .map(|v| 1.0 / (1.0 + half * (energy - v)).max(0.05))
         .collect();
-    let centrifugal = wave.centrifugal();
-    let values: Vec<f64> = (weighted.iter().zip(mesh.radii()))
-        .zip(local.iter().zip(mesh.weights()))
-        .map(|((m, r), (v, w))| m * centrifugal / (r * r) + w * v)
-        .collect();
-    let mut matrix = mesh.assemble(&case.twists, &weighted);
-    matrix.add(1.0, &mesh.assemble(mesh.values(), &values));
-    matrix
+    case.operator(wave.l, &inverse_mass, local)
 }
 
 /// Makes the functions of equal ℓ orthonormal, each against those before it.

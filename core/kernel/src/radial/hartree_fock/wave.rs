@@ -1,6 +1,7 @@
 //! One subshell of an iteration: its radial function and the field it moves in.
 
 use crate::configuration::Orbital;
+use crate::numerics::banded::Banded;
 use crate::radial::knots::Spacing;
 use crate::radial::mesh::{Block, Mesh, ORDER};
 
@@ -9,6 +10,8 @@ pub(super) struct Case {
     pub mesh: Mesh,
     /// B′ − B/r at the points.
     pub twists: Vec<Block>,
+    /// The kinetic energy of each ℓ, without relativity.
+    pub kinetic: Vec<Banded>,
     /// Potential energy in the field of the nucleus, at the points.
     pub nuclear: Vec<f64>,
     /// Core polarisation, at the points, for the subshells that feel it.
@@ -21,6 +24,30 @@ pub(super) struct Case {
     pub spacing: Spacing,
     /// α² with relativity, 0 without.
     pub alpha_squared: f64,
+}
+
+impl Case {
+    /// Kinetic energy with these 1/M and a local potential, in functions of this ℓ.
+    pub fn operator(&self, l: u8, inverse_mass: &[f64], local: &[f64]) -> Banded {
+        let mesh = &self.mesh;
+        let weights = mesh.weights();
+        let mut values: Vec<f64> = local.iter().zip(weights).map(|(v, w)| v * w).collect();
+        if let Some(kinetic) = self.kinetic.get(usize::from(l)) {
+            let mut matrix = mesh.assemble(mesh.values(), &values);
+            matrix.add(1.0, kinetic);
+            return matrix;
+        }
+        let centrifugal = f64::from(l) * (f64::from(l) + 1.0);
+        let slopes: Vec<f64> = (inverse_mass.iter().zip(weights))
+            .map(|(m, w)| 0.5 * m * w)
+            .collect();
+        for ((value, half), r) in values.iter_mut().zip(&slopes).zip(mesh.radii()) {
+            *value += half * centrifugal / (r * r);
+        }
+        let mut matrix = mesh.assemble(&self.twists, &slopes);
+        matrix.add(1.0, &mesh.assemble(mesh.values(), &values));
+        matrix
+    }
 }
 
 /// A subshell with its radial function and, after [`super::field::update`], what acts on it.
