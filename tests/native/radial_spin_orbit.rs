@@ -285,6 +285,8 @@ fn polarisation_faults_have_their_codes() {
         (1.0, 0.0, "polarisation-radius-not-positive"),
         (1.0, -2.0, "polarisation-radius-not-positive"),
         (1.0, f64::INFINITY, "polarisation-radius-not-positive"),
+        (1.0, 0.1, "polarisation-too-strong"),
+        (1e300, 1e-300, "polarisation-too-strong"),
     ] {
         let mut atom = Atom::new(11, subshells("1s2 2s2 2p6 3s1"));
         atom.polarisation = Some(Polarisation {

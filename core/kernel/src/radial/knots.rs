@@ -17,6 +17,9 @@ pub struct Spacing {
     pub phase: f64,
 }
 
+/// Intervals at most; n = 20 at Z = 103 takes 300.
+const MOST: usize = 1000;
+
 /// Break points 0 = r₀ < r₁ < … = `end`.
 ///
 /// The local wave number is bounded by k(r) = √(2 Z_eff(r)/r + κ²), which is also the rate of decay
@@ -38,7 +41,7 @@ pub fn breaks(spacing: &Spacing, inner: &[f64]) -> Vec<f64> {
     let mut s = start;
     let mut total = 0.0;
     let mut table = vec![(0.0, start)];
-    while s < last && table.len() < 100_000 {
+    while s < last && table.len() < 4 * MOST {
         let step = fine / rate(s + 0.5 * fine / rate(s));
         let next = (s + step).min(last);
         let middle = 0.5 * (s + next);

@@ -13,7 +13,8 @@ pub enum Nucleus {
         /// Nucleons.
         mass_number: u16,
     },
-    /// ρ ∝ 1/{1 + exp[(r − c)/a]} with a skin of 2.3 fm and the radius of [`rms_radius`].
+    /// ρ ∝ 1/{1 + exp[(r − c)/a]} with a skin of 2.3 fm and the radius of [`rms_radius`]; the sphere
+    /// for nuclei too light for such a skin, c < 3a.
     Fermi {
         /// Nucleons.
         mass_number: u16,
@@ -26,8 +27,8 @@ const SKIN_FM: f64 = 2.3;
 
 /// √⟨r²⟩ = 0.836 A^{1/3} + 0.570 fm, in a₀.
 ///
-/// Fitted to measured radii for A > 9, where it is good to about 0.05 fm; lighter nuclei differ by up
-/// to 0.5 fm, which moves no energy here by 1e-9 of itself. Source: Johnson and Soff, At. Data Nucl. Data Tables 33, 405 (1985).
+/// Fitted to measured radii for A > 9, where it is good to about 0.05 fm. Lighter nuclei differ by up
+/// to 0.5 fm; their whole size moves energies by less than 1e-8 of themselves. Source: Johnson and Soff, At. Data Nucl. Data Tables 33, 405 (1985).
 pub fn rms_radius(mass_number: u16) -> f64 {
     (0.836 * libm::cbrt(f64::from(mass_number.max(1))) + 0.570) * fermi()
 }
@@ -53,9 +54,21 @@ pub fn stable_mass_number(z: u8) -> u16 {
 }
 
 impl Nucleus {
+    /// The sphere in place of a Fermi distribution that would be all skin.
+    fn shape(self) -> Nucleus {
+        match self {
+            Nucleus::Fermi { mass_number }
+                if fermi_half_radius(rms_radius(mass_number), skin()) < 3.0 * skin() =>
+            {
+                Nucleus::Uniform { mass_number }
+            }
+            other => other,
+        }
+    }
+
     /// Radii where the mesh has to have break points, a₀; none for a point.
     pub fn break_points(self) -> Vec<f64> {
-        match self {
+        match self.shape() {
             Nucleus::Point => Vec::new(),
             Nucleus::Uniform { mass_number } => vec![sphere(mass_number)],
             Nucleus::Fermi { mass_number } => {
@@ -70,7 +83,7 @@ impl Nucleus {
 
     /// Those of the break points where the potential has a kink in a derivative.
     pub fn kinks(self) -> Vec<f64> {
-        match self {
+        match self.shape() {
             Nucleus::Uniform { mass_number } => vec![sphere(mass_number)],
             _ => Vec::new(),
         }
@@ -81,7 +94,7 @@ impl Nucleus {
     /// Sphere of radius R = √(5/3) √⟨r²⟩: −(Z/2R)(3 − r²/R²) inside. Fermi: by the series of its
     /// radial integrals, see [`fermi_part`].
     pub fn potential(self, z: f64, radii: &[f64]) -> Vec<f64> {
-        match self {
+        match self.shape() {
             Nucleus::Point => radii.iter().map(|r| -z / r).collect(),
             Nucleus::Uniform { mass_number } => {
                 let edge = sphere(mass_number);
@@ -92,16 +105,17 @@ impl Nucleus {
                     .collect()
             }
             Nucleus::Fermi { mass_number } => {
-                let rms = rms_radius(mass_number);
-                let skin = SKIN_FM * fermi() / (4.0 * libm::log(3.0));
-                let half = fermi_half_radius(rms, skin);
-                radii
-                    .iter()
-                    .map(|&r| -z / r * fermi_part(r, half, skin))
-                    .collect()
+                let half = fermi_half_radius(rms_radius(mass_number), skin());
+                let part = |r: f64| fermi_part(r, half, skin());
+                radii.iter().map(|&r| -z / r * part(r)).collect()
             }
         }
     }
+}
+
+/// a of the Fermi distribution.
+fn skin() -> f64 {
+    SKIN_FM * fermi() / (4.0 * libm::log(3.0))
 }
 
 /// √(5/3) √⟨r²⟩.
@@ -208,6 +222,26 @@ mod tests {
             let found = fermi_part(r, c, a);
             assert!((found - expected).abs() < 1e-12, "{r}: {found} {expected}");
         }
+    }
+
+    #[test]
+    fn light_nuclei_are_spheres() {
+        let radii = [1e-6, 2e-5, 1e-4, 1.0];
+        for mass_number in [0, 1, 4] {
+            let fermi = Nucleus::Fermi { mass_number };
+            let sphere = Nucleus::Uniform { mass_number };
+            assert_eq!(fermi.potential(2.0, &radii), sphere.potential(2.0, &radii));
+            assert_eq!(fermi.break_points(), sphere.break_points());
+        }
+        let heaviest = Nucleus::Fermi {
+            mass_number: u16::MAX,
+        };
+        assert!(
+            heaviest
+                .potential(92.0, &radii)
+                .iter()
+                .all(|v| v.is_finite())
+        );
     }
 
     #[test]

@@ -20,6 +20,9 @@ pub struct Polarisation {
     pub core: Vec<Orbital>,
 }
 
+/// The deepest V_p that is taken for a polarised core, hartree.
+const DEEPEST: f64 = 5.0;
+
 /// Static dipole polarisability of a closed core of this many electrons, a₀³, where one is known here.
 ///
 /// Random-phase values of Johnson, Kolb and Huang, At. Data Nucl. Data Tables 28, 333 (1983), FROM
@@ -45,7 +48,8 @@ pub fn polarisability(z: u8, electrons: u32) -> Option<f64> {
 
 impl Polarisation {
     /// # Errors
-    /// `polarisability-not-positive` and `polarisation-radius-not-positive`, also where they are not finite.
+    /// `polarisability-not-positive` and `polarisation-radius-not-positive`, also where they are not
+    /// finite; `polarisation-too-strong` where V_p alone is deeper than 5 hartree (real cores: 0.2).
     pub fn check(&self) -> Result<(), Problem> {
         let positive = |value: f64| value > 0.0 && value.is_finite();
         if !positive(self.alpha) {
@@ -66,6 +70,19 @@ impl Polarisation {
                     self.radius
                 ),
                 "a cut-off radius above 0".into(),
+            ));
+        }
+        // V_p is deepest at r = ρ/√2.
+        let square = self.radius * self.radius;
+        let depth = 2.0 / 27.0 * self.alpha / (square * square);
+        if depth > DEEPEST || !depth.is_finite() {
+            return Err(fault(
+                "polarisation-too-strong",
+                format!(
+                    "A core polarisability of {} a0^3 with a cut-off radius of {} a0 makes a well of its own, {depth:.3e} hartree deep.",
+                    self.alpha, self.radius
+                ),
+                format!("a well of at most {DEEPEST} hartree: a larger cut-off radius"),
             ));
         }
         Ok(())
