@@ -5,7 +5,7 @@
 //! (`tests/native/house.rs` guards it).
 #![forbid(unsafe_code)]
 
-pub use rungline_kernel::{angular, constants, numerics, problem, radial};
+pub use rungline_kernel::{angular, constants, numerics, problem, radial, structure};
 
 pub mod configuration;
 pub mod elements;

@@ -19,6 +19,7 @@ const PACKAGES: &[(&str, &[&str])] = &[
             "projections",
             "weights",
             "radial",
+            "structure",
         ],
     ),
     (

@@ -13,6 +13,7 @@ pub mod problem;
 pub mod projections;
 pub mod quantity;
 pub mod radial;
+pub mod structure;
 pub mod weights;
 
 pub use json_text::json_text;

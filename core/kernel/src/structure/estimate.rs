@@ -1,0 +1,129 @@
+//! How large a problem is, found from counts alone, before anything is built.
+
+use super::basis::{Coupled, check, too_large};
+use super::bounds::MOST_COUNTED;
+use crate::angular::equivalent::classify;
+use crate::problem::Problem;
+use std::collections::BTreeMap;
+
+/// Sizes of a set of configurations of one parity.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Estimate {
+    /// Π C(4ℓ+2, N) summed over configurations: states with their M.
+    pub states: u64,
+    /// LS-coupled states, not counting J and M.
+    pub ls_states: u64,
+    /// Levels: LS-coupled states counted once for each J.
+    pub levels: u64,
+    /// Rows of the matrix of each 2J, 2J rising.
+    pub rows_by_two_j: Vec<(i32, u64)>,
+    /// Rows of the largest matrix.
+    pub largest: u64,
+    /// Σ n² over the blocks of equal S and L: places of electrostatic coefficients.
+    pub electrostatic_places: u64,
+    /// Bytes at most at one time: the largest matrix with its eigenvectors and what the eigensolver
+    /// works with, three square matrices, all eigenvectors kept, and the coefficients at 24 bytes
+    /// with six integrals at each place.
+    pub bytes: u64,
+    /// Multiplications of all diagonalisations, 9 n³ each.
+    pub multiplications: f64,
+}
+
+/// How often each S L occurs.
+type Counts = BTreeMap<Coupled, u64>;
+
+/// Sizes of these configurations (see [`super::Basis::new`]).
+///
+/// # Errors
+/// Those of [`super::Basis::new`], for the size only above 10⁸ LS-coupled states.
+pub fn estimate(subshells: &[u8], configurations: &[Vec<u32>]) -> Result<Estimate, Problem> {
+    check(subshells, configurations)?;
+    let mut totals = Counts::new();
+    for occupations in configurations {
+        let mut counts = Counts::from([(Coupled::default(), 1)]);
+        for (&l, &electrons) in subshells.iter().zip(occupations) {
+            let mut shell = Counts::new();
+            for term in classify(l, electrons)? {
+                add(&mut shell, Coupled::of(&term), 1);
+            }
+            let mut coupled = Counts::new();
+            for (&before, &many) in &counts {
+                for (&part, &times) in &shell {
+                    for after in before.couplings(part) {
+                        add(&mut coupled, after, many.saturating_mul(times));
+                    }
+                }
+            }
+            counts = coupled;
+            let so_far = counts.values().fold(0_u64, |sum, &n| sum.saturating_add(n));
+            if so_far > MOST_COUNTED {
+                return Err(too_large(&format!(
+                    "One configuration has more than {MOST_COUNTED} LS-coupled states."
+                )));
+            }
+        }
+        for (total, many) in counts {
+            add(&mut totals, total, many);
+        }
+    }
+    Ok(sizes(&totals))
+}
+
+fn add(counts: &mut Counts, key: Coupled, many: u64) {
+    let count = counts.entry(key).or_insert(0);
+    *count = count.saturating_add(many);
+}
+
+fn sizes(totals: &Counts) -> Estimate {
+    let mut found = Estimate::default();
+    let mut by_two_j = BTreeMap::new();
+    for (total, &many) in totals {
+        let degeneracy = u64::try_from((total.two_s + 1) * (2 * total.l + 1)).unwrap_or(0);
+        found.states = found.states.saturating_add(degeneracy.saturating_mul(many));
+        found.ls_states = found.ls_states.saturating_add(many);
+        let square = many.saturating_mul(many);
+        found.electrostatic_places = found.electrostatic_places.saturating_add(square);
+        let lowest = (total.two_s - 2 * total.l).abs();
+        for two_j in (lowest..=total.two_s + 2 * total.l).step_by(2) {
+            let rows = by_two_j.entry(two_j).or_insert(0_u64);
+            *rows = rows.saturating_add(many);
+        }
+    }
+    found.rows_by_two_j = by_two_j.into_iter().collect();
+    let mut squares = 0_u64;
+    for &(_, rows) in &found.rows_by_two_j {
+        let square = rows.saturating_mul(rows);
+        squares = squares.saturating_add(square);
+        found.levels = found.levels.saturating_add(rows);
+        found.largest = found.largest.max(rows);
+        found.multiplications += 9.0 * rows as f64 * square as f64;
+    }
+    let largest = found.largest.saturating_mul(found.largest);
+    let numbers = largest.saturating_mul(3).saturating_add(squares);
+    let coefficients = found.electrostatic_places.saturating_mul(72);
+    found.bytes = numbers.saturating_mul(8).saturating_add(coefficients);
+    found
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn sizes_are_those_of_the_shell() {
+        let found = estimate(&[3], &[vec![7]]).expect("f7");
+        assert_eq!(
+            (found.states, found.ls_states, found.levels),
+            (3432, 119, 327)
+        );
+        assert_eq!(found.largest, 50);
+    }
+
+    #[test]
+    fn sizes_beyond_all_bounds_are_told() {
+        let found = estimate(&[3; 32], &[vec![7; 32]]);
+        assert_eq!(found.expect_err("too large").code, "basis-too-large");
+        let large = estimate(&[3, 2, 2], &[vec![7, 5, 5]]).expect("counted");
+        assert_eq!(large.states, 3432 * 252 * 252);
+    }
+}

@@ -1,0 +1,205 @@
+//! Energies and eigenvectors in intermediate coupling, with their g and composition.
+
+use super::basis::{Basis, Coupled};
+use super::hamiltonian::{Hamiltonian, Rows};
+use super::ties::{SAME, untie};
+use crate::numerics::order::{sort_by, sort_by_key};
+use crate::numerics::symmetric::eigensystem;
+use crate::problem::Problem;
+use nalgebra::DMatrix;
+
+/// One level.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Level {
+    /// 2J.
+    pub two_j: i32,
+    /// In the unit of the parameters, from the scale of the averages.
+    pub energy: f64,
+    /// Components in the LS basis, in the order of the rows of its J, normalised; the largest is
+    /// positive.
+    pub vector: Vec<f64>,
+}
+
+/// All levels by rising energy; equal ones by J, then by their largest component.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Levels {
+    /// The rows of each J that occurs, 2J rising.
+    pub rows: Vec<Rows>,
+    /// The levels.
+    pub levels: Vec<Level>,
+}
+
+impl Levels {
+    /// Diagonalises the matrix of every J.
+    ///
+    /// # Errors
+    /// Those of [`Hamiltonian::matrix`]; `levels-not-found` when an iteration does not converge.
+    pub fn solve(hamiltonian: &Hamiltonian, values: &[f64]) -> Result<Levels, Problem> {
+        let mut rows = Vec::new();
+        let mut levels = Vec::new();
+        for two_j in hamiltonian.basis().two_js() {
+            let of_j = hamiltonian.rows(two_j);
+            levels.extend(solve_j(hamiltonian, &of_j, values)?);
+            rows.push(of_j);
+        }
+        in_order(&mut levels);
+        Ok(Levels { rows, levels })
+    }
+
+    /// The rows that a level's components belong to.
+    pub fn rows_of(&self, level: &Level) -> Option<&Rows> {
+        let place = self.rows.binary_search_by_key(&level.two_j, |r| r.two_j);
+        place.ok().and_then(|place| self.rows.get(place))
+    }
+
+    /// g_J = Σ |c|² g(SLJ): L + g_s S has no elements between different S L of one J. Nothing for
+    /// J = 0.
+    pub fn g(&self, basis: &Basis, level: &Level, g_s: f64) -> Option<f64> {
+        if level.two_j == 0 {
+            return None;
+        }
+        let rows = self.rows_of(level)?;
+        let mut sum = 0.0;
+        for (&place, &component) in rows.states.iter().zip(&level.vector) {
+            let total = basis.states().get(place)?.total();
+            sum += component * component * lande(total, level.two_j, g_s);
+        }
+        Some(sum)
+    }
+
+    /// The places of the states in [`Basis::states`] with their shares in percent, largest first;
+    /// equal ones in the order of the basis, those that are exactly zero left out.
+    pub fn composition(&self, level: &Level) -> Vec<(usize, f64)> {
+        let Some(rows) = self.rows_of(level) else {
+            return Vec::new();
+        };
+        let mut shares: Vec<(usize, f64)> = rows
+            .states
+            .iter()
+            .zip(&level.vector)
+            .filter(|&(_, &component)| component != 0.0)
+            .map(|(&place, &component)| (place, 100.0 * component * component))
+            .collect();
+        sort_by(&mut shares, |a, b| b.1.total_cmp(&a.1));
+        shares
+    }
+}
+
+/// g(SLJ) = 1 + (g_s − 1) [J(J+1) + S(S+1) − L(L+1)] / [2J(J+1)] for J > 0.
+///
+/// Source: Landé, Z. Phys. 15, 189 (1923), with g_L = 1.
+pub fn lande(total: Coupled, two_j: i32, g_s: f64) -> f64 {
+    let square = |two: i32| f64::from(two) * f64::from(two + 2);
+    let (j, s, l) = (square(two_j), square(total.two_s), square(2 * total.l));
+    1.0 + (g_s - 1.0) * (j + s - l) / (2.0 * j)
+}
+
+/// The levels of one J by rising energy.
+///
+/// # Errors
+/// Those of [`Levels::solve`].
+pub fn solve_j(
+    hamiltonian: &Hamiltonian,
+    rows: &Rows,
+    values: &[f64],
+) -> Result<Vec<Level>, Problem> {
+    let matrix = hamiltonian.matrix(rows, values)?;
+    let size = rows.states.len();
+    let mut levels = Vec::with_capacity(size);
+    for part in parts(&matrix) {
+        let inner = DMatrix::from_fn(part.len(), part.len(), |row, column| {
+            match (part.get(row), part.get(column)) {
+                (Some(&row), Some(&column)) if column <= row => {
+                    matrix.get((row, column)).copied().unwrap_or(0.0)
+                }
+                _ => 0.0,
+            }
+        });
+        let system = eigensystem(inner).ok_or_else(not_found)?;
+        let mut vectors: Vec<Vec<f64>> = system
+            .vectors
+            .column_iter()
+            .map(|column| column.iter().copied().collect())
+            .collect();
+        untie(&system.values, &mut vectors);
+        for (&energy, short) in system.values.iter().zip(vectors) {
+            let mut vector = vec![0.0; size];
+            for (&row, value) in part.iter().zip(short) {
+                if let Some(component) = vector.get_mut(row) {
+                    *component = value;
+                }
+            }
+            levels.push(Level {
+                two_j: rows.two_j,
+                energy,
+                vector,
+            });
+        }
+    }
+    sort_by(&mut levels, |a, b| a.energy.total_cmp(&b.energy));
+    Ok(levels)
+}
+
+/// Rows that the matrix connects, each part rising: what is not mixed stays pure, however close.
+fn parts(matrix: &DMatrix<f64>) -> Vec<Vec<usize>> {
+    let size = matrix.nrows();
+    let mut seen = vec![false; size];
+    let mut found = Vec::new();
+    for start in 0..size {
+        if seen.get(start) != Some(&false) {
+            continue;
+        }
+        let mut part = Vec::new();
+        let mut open = vec![start];
+        if let Some(mark) = seen.get_mut(start) {
+            *mark = true;
+        }
+        while let Some(row) = open.pop() {
+            part.push(row);
+            for (other, mark) in seen.iter_mut().enumerate() {
+                let at = (row.max(other), row.min(other));
+                if !*mark && matrix.get(at).is_some_and(|&entry| entry != 0.0) {
+                    *mark = true;
+                    open.push(other);
+                }
+            }
+        }
+        crate::numerics::order::sort(&mut part);
+        found.push(part);
+    }
+    found
+}
+
+/// By energy, and what cannot be told apart by J and largest component.
+fn in_order(levels: &mut Vec<Level>) {
+    sort_by(levels, |a, b| a.energy.total_cmp(&b.energy));
+    let scale = levels
+        .iter()
+        .fold(0.0_f64, |most, level| most.max(level.energy.abs()));
+    // The number of each run of equal energies, then a stable sort by it.
+    let mut run = 0_usize;
+    let mut last = f64::NEG_INFINITY;
+    let mut keyed: Vec<(usize, i32, usize, Level)> = Vec::with_capacity(levels.len());
+    for level in levels.drain(..) {
+        if level.energy - last > SAME * scale {
+            run += 1;
+        }
+        last = level.energy;
+        let largest = super::ties::largest(&level.vector);
+        keyed.push((run, level.two_j, largest, level));
+    }
+    sort_by_key(&mut keyed, |&(run, two_j, largest, _)| {
+        (run, two_j, largest)
+    });
+    levels.extend(keyed.into_iter().map(|keyed| keyed.3));
+}
+
+#[inline(never)]
+fn not_found() -> Problem {
+    Problem::new(
+        "levels-not-found",
+        "The matrix of the energies could not be diagonalised.",
+        0,
+        0,
+    )
+}

@@ -1,0 +1,31 @@
+//! Levels of configurations with any number of open subshells, in intermediate coupling.
+//!
+//! H = E_av + Σ F^k f_k + Σ G^k g_k + Σ R^k r_k + Σ ζ ℓ·s in a basis of LS-coupled states, several
+//! configurations of one parity together. Operators are products of creation and annihilation
+//! operators, whose reduced elements within a subshell come from fractional parentage; subshells are
+//! coupled one after another. Electrostatic coefficients belong to S and L, spin–orbit ones to pairs
+//! of them: each is made once and serves every J, whatever the values of the radial integrals.
+
+mod basis;
+mod bounds;
+mod chain;
+mod electrostatic;
+mod estimate;
+mod hamiltonian;
+mod levels;
+mod matrix;
+mod parameters;
+mod recoupling;
+mod shell_operators;
+mod spin_orbit;
+mod symbols;
+mod ties;
+
+pub use basis::{Basis, Block, Coupled, State};
+pub use bounds::{MOST_CONFIGURATIONS, MOST_LS_STATES, MOST_ROWS, MOST_SUBSHELLS};
+pub use electrostatic::Entry;
+pub use estimate::{Estimate, estimate};
+pub use hamiltonian::{Hamiltonian, Rows};
+pub use levels::{Level, Levels, lande, solve_j};
+pub use parameters::{Integral, Parameter};
+pub use spin_orbit::Joint;

@@ -1,0 +1,45 @@
+//! Times of the levels of configurations: coefficients from nothing, then all levels.
+
+use rungline_core::structure::{Basis, Hamiltonian, Integral, Levels, estimate};
+use std::time::Instant;
+
+fn measure(name: &str, shells: &[u8], configurations: &[Vec<u32>]) {
+    let sizes = estimate(shells, configurations).expect("sizes");
+    let mut best = [f64::INFINITY; 2];
+    for _ in 0..3 {
+        let start = Instant::now();
+        let basis = Basis::new(shells, configurations).expect("a basis");
+        let own = Hamiltonian::new(basis).expect("coefficients");
+        best[0] = best[0].min(start.elapsed().as_secs_f64() * 1e3);
+        let values = own.values(|parameter| match parameter.integral {
+            Integral::Average => 1000.0 * parameter.first as f64,
+            Integral::Direct { k, .. } => 60_000.0 / f64::from(k),
+            Integral::Exchange { k, .. } => 9_000.0 / f64::from(k + 1),
+            Integral::SpinOrbit { a } => 500.0 / (a + 1) as f64,
+            Integral::Mixing { k, .. } => 6_000.0 / f64::from(k + 1),
+            Integral::OneElectron { .. } => 0.0,
+        });
+        let start = Instant::now();
+        let levels = Levels::solve(&own, &values).expect("levels");
+        best[1] = best[1].min(start.elapsed().as_secs_f64() * 1e3);
+        assert_eq!(levels.levels.len() as u64, sizes.levels);
+    }
+    println!(
+        "{name:<32} {:>6} levels, largest {:>4}: coefficients {:>9.2} ms, levels {:>9.2} ms",
+        sizes.levels, sizes.largest, best[0], best[1]
+    );
+}
+
+fn main() {
+    measure("d5", &[2], &[vec![5]]);
+    measure("f7", &[3], &[vec![7]]);
+    measure("d6 s2 + d7 s", &[2, 0], &[vec![6, 2], vec![7, 1]]);
+    measure("d6 s p + d7 p", &[2, 0, 1], &[vec![6, 1, 1], vec![7, 0, 1]]);
+    measure(
+        "f3 d s2 + f3 d2 s",
+        &[3, 2, 0],
+        &[vec![3, 1, 2], vec![3, 2, 1]],
+    );
+    measure("f4 d s", &[3, 2, 0], &[vec![4, 1, 1]]);
+    measure("f7 d", &[3, 2], &[vec![7, 1]]);
+}
