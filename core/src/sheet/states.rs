@@ -410,7 +410,7 @@ fn kind_of_term(kind: &EquivalentTerm, parents: Vec<ParentRow>) -> KindOfTerm {
     KindOfTerm {
         index: (kind.times > 1).then_some(kind.index),
         seniority: kind.seniority,
-        w: kind.w.clone(),
+        w: kind.w.map(|w| w.components().collect()),
         u: kind.u,
         rotation_casimir: kind.rotation_casimir,
         g2_casimir: kind.g2_casimir,

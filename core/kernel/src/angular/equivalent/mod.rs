@@ -31,7 +31,7 @@ pub struct EquivalentTerm {
     /// Seniority v: the number of electrons left when pairs coupled to ¹S are taken away.
     pub seniority: u32,
     /// W = (w₁ … w_ℓ) of R(2ℓ+1), for ℓ ≥ 2.
-    pub w: Option<Vec<i32>>,
+    pub w: Option<RotationLabel>,
     /// U = (u₁ u₂) of G₂, for f electrons.
     pub u: Option<[i32; 2]>,
     /// Eigenvalue of the Casimir operator of R(2ℓ+1): Σ wᵢ(wᵢ + 2ℓ+1−2i) / [2(2ℓ−1)].
@@ -83,13 +83,13 @@ pub fn classify(l: u8, electrons: u32) -> Result<Vec<EquivalentTerm>, Problem> {
         if total > MOST_TERMS {
             return Err(too_many());
         }
-        let w = (l >= 2).then(|| rotation_label(l, spin.seniority, spin.two_s));
-        let rotation_casimir = w.as_ref().map(|w| rotation_casimir(w));
+        let w = (l >= 2).then(|| RotationLabel::of(l, spin.seniority, spin.two_s));
+        let rotation_casimir = w.map(RotationLabel::casimir);
         let term = |l_total: u32, u: Option<[i32; 2]>, alike: u64| EquivalentTerm {
             two_s: spin.two_s,
             l_total,
             seniority: spin.seniority,
-            w: w.clone(),
+            w,
             u,
             rotation_casimir,
             g2_casimir: u.map(exceptional::casimir),
@@ -125,31 +125,46 @@ pub fn classify(l: u8, electrons: u32) -> Result<Vec<EquivalentTerm>, Problem> {
     Ok(terms)
 }
 
-/// W of the states of ℓ^v with seniority v and spin S: v/2 − S twos, then min(2S, 2ℓ+1−v) ones.
-///
-/// Racah, Phys. Rev. 76, 1352 (1949).
-fn rotation_label(l: u8, seniority: u32, two_s: i32) -> Vec<i32> {
-    let spin = u32::try_from(two_s).unwrap_or(0);
-    let twos = seniority.saturating_sub(spin) / 2;
-    let ones = spin.min((2 * u32::from(l) + 1).saturating_sub(seniority));
-    (0..u32::from(l))
-        .map(|place| {
-            if place < twos {
-                2
-            } else {
-                i32::from(place < twos + ones)
-            }
-        })
-        .collect()
+/// W = (w₁ … w_ℓ) of R(2ℓ+1): some twos, then some ones, then zeros.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct RotationLabel {
+    twos: u32,
+    ones: u32,
+    l: u32,
 }
 
-fn rotation_casimir(w: &[i32]) -> f64 {
-    let l = i32::try_from(w.len()).unwrap_or(0);
-    let sum: i32 = (1..)
-        .zip(w)
-        .map(|(place, &w)| w * (w + 2 * l + 1 - 2 * place))
-        .sum();
-    f64::from(sum) / f64::from(2 * (2 * l - 1))
+impl RotationLabel {
+    /// W of the states of ℓ^v with seniority v and spin S: v/2 − S twos, then min(2S, 2ℓ+1−v) ones.
+    ///
+    /// Racah, Phys. Rev. 76, 1352 (1949).
+    fn of(l: u8, seniority: u32, two_s: i32) -> Self {
+        let spin = u32::try_from(two_s).unwrap_or(0);
+        RotationLabel {
+            twos: seniority.saturating_sub(spin) / 2,
+            ones: spin.min((2 * u32::from(l) + 1).saturating_sub(seniority)),
+            l: l.into(),
+        }
+    }
+
+    /// w₁ … w_ℓ.
+    pub fn components(self) -> impl Iterator<Item = i32> {
+        (0..self.l).map(move |place| {
+            if place < self.twos {
+                2
+            } else {
+                i32::from(place < self.twos + self.ones)
+            }
+        })
+    }
+
+    fn casimir(self) -> f64 {
+        let l = i32::try_from(self.l).unwrap_or(0);
+        let sum: i32 = (1..)
+            .zip(self.components())
+            .map(|(place, w)| w * (w + 2 * l + 1 - 2 * place))
+            .sum();
+        f64::from(sum) / f64::from(2 * (2 * l - 1))
+    }
 }
 
 #[cfg(test)]
