@@ -150,7 +150,7 @@ class Page {
     };
     this.orbitalsPart = new OrbitalsPart({
       orbitals: this.orbitals, context, fields: this.fields,
-      act: { stop: act.stop, save: act.save, takeWay: (fault, way) => this.fields.takeWay(fault, way) },
+      act: { stop: act.stop, save: act.save, takeWay: (fault, way) => this.fields.takeWay(fault, way), speak: (text) => this.announcer.later("orbitals", text) },
     });
     this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
       name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,

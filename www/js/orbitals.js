@@ -29,7 +29,7 @@ export class Orbitals {
     /** The sheet's own atom. */
     this.own = emptySlot("own");
     /** Another one beside it, with how its text was read. */
-    this.beside = { ...emptySlot("beside"), typed: {}, reading: null };
+    this.beside = { ...emptySlot("beside"), typed: {}, reading: NOTHING };
     questions.subscribe((what) => {
       if (what === "reading") this.refresh();
     });
@@ -49,7 +49,7 @@ export class Orbitals {
     this.refresh();
   }
 
-  /** Another atom to set beside: its species and configuration as typed, empty for none. */
+  /** Another atom to set beside: a sheet with its species or its configuration, or with neither. */
   compare(typed) {
     this.beside.typed = typed;
     this.refresh();
@@ -92,19 +92,17 @@ export class Orbitals {
   // The text is read by the core as a sheet of its own.
   async #readBeside({ species: own, structure }) {
     const slot = this.beside;
-    const { species, configuration } = slot.typed;
-    if (!species && !configuration) {
-      slot.reading = null;
+    const { typed } = slot;
+    const { species = own, configurations } = typed;
+    if (species === own && !configurations) {
+      slot.reading = NOTHING;
       this.#leave(slot, {});
       return;
     }
-    const sheet = partOf({
-      species: species || own, configurations: configuration ? [configuration] : undefined,
-      structure: structure?.relativity === false ? { relativity: false } : undefined,
-    });
+    const sheet = partOf({ species, configurations, structure: structure?.relativity === false ? { relativity: false } : undefined });
     if (JSON.stringify(sheet) === slot.key) return;
     const { text } = await this.#call("beside:read", "read", [sheet]);
-    if (text === undefined || slot.typed.species !== species || slot.typed.configuration !== configuration) return;
+    if (text === undefined || slot.typed !== typed) return;
     slot.reading = JSON.parse(text);
     const { status, needs } = slot.reading.questions.find(({ name }) => name === "orbitals");
     if (status === "ready") this.#want(slot, sheet);
@@ -174,6 +172,8 @@ export class Orbitals {
     for (const listener of this.#listeners) listener();
   }
 }
+
+const NOTHING = { faults: [], echo: [] };
 
 function emptySlot(name) {
   return { name, key: null, sheet: null, result: null, old: false, needs: null, faults: [], run: null, rest: 0, waits: null, stopped: false, panic: null };

@@ -1,5 +1,6 @@
 // The rungs: one for each question, and what hangs from them.
 
+import { trueMinus } from "./digits.js";
 import { element, setText, wordButton } from "./dom.js";
 import { Layers } from "./layers.js";
 import { WORDS, duration, estimateWords, isSettling, rungState } from "./questions.js";
@@ -137,34 +138,31 @@ export class QuestionRung {
     if (this.#run.dataset.shown === key) return;
     this.#run.dataset.shown = key;
     const inside = this.#run.contains(document.activeElement);
-    this.#run.replaceChildren(...this.#runNodes(entry));
+    this.#run.replaceChildren(...runNodes(entry, entry.answer !== null, {
+      stop: this.act.stop, save: this.act.save, start: () => this.act.start(this.name), again: () => this.act.again(this.name),
+    }));
     if (inside) (this.#run.querySelector("button") ?? this.rung).focus();
   }
+}
 
-  #runNodes(entry) {
-    const button = (text, act) => element("button", { type: "button", class: "action", text, on: { click: act } });
-    if (entry.run?.shown) {
-      const seconds = entry.run.estimate?.seconds;
-      return [
-        element("p", { text: `Calculating${seconds ? `, estimated ${duration(seconds)} in all` : ""}. The sheet can be changed meanwhile.` }),
-        button("Stop", () => this.act.stop()),
-      ];
-    }
-    if (entry.panic !== null) return [panicNode(entry.panic, () => this.act.again(this.name), () => this.act.save())];
-    if (entry.waits !== null) {
-      return [
-        element("p", { text: `This will take ${estimateWords(entry.waits)}. It starts when you say so.` }),
-        button("Start", () => this.act.start(this.name)),
-      ];
-    }
-    if (entry.stopped) {
-      return [
-        element("p", { text: entry.answer ? "Stopped. The last answer is still here." : "Stopped." }),
-        button("Start again", () => this.act.start(this.name)),
-      ];
-    }
-    return [];
-  }
+/**
+ * What a run, an estimate or a stop says, with its buttons. `kept`: a last answer is still there;
+ * `act`: {stop, start, again, save}.
+ */
+export function runNodes(entry, kept, act) {
+  const button = (text, does) => element("button", { type: "button", class: "action", text, on: { click: () => does() } });
+  if (entry.run?.shown) return [element("p", { text: runWords(entry.run) }), button("Stop", act.stop)];
+  if (entry.panic !== null) return [panicNode(entry.panic, act.again, act.save)];
+  if (entry.waits !== null) return [element("p", { text: `This will take ${estimateWords(entry.waits)}. It starts when you say so.` }), button("Start", act.start)];
+  if (entry.stopped) return [element("p", { text: kept ? "Stopped. The last answer is still here." : "Stopped." }), button("Start again", act.start)];
+  return [];
+}
+
+/** What is under way: where it stands, if it tells, and how long it takes. */
+export function runWords({ progress, estimate }) {
+  const of = progress?.of > 1 ? `, ${progress.configuration + 1} of ${progress.of}` : "";
+  const step = progress ? ` ${progress.label}${of}: iteration ${progress.iteration}, residual ${trueMinus(progress.residual.toExponential(1))}` : "";
+  return `Calculating${step}${estimate?.seconds ? `, estimated ${duration(estimate.seconds)} in all` : ""}. The sheet can be changed meanwhile.`;
 }
 
 /** What is shown when a calculation ended by itself. */

@@ -79,10 +79,11 @@ everyDoor("iron without relativity: energies and radii of the reference are read
   shows(own["energy"], Number(energy), 3);
   shows(own["⟨r⟩"], Number(r), 5);
   await openPart(door, "Energy, convergence");
-  const [run] = await table(door, "Energy, convergence");
+  const [run] = await table(door, "Energy and convergence");
   shows(run["average energy"], Number(rowsOf("hf_energies.csv").find(([z]) => z === "26")[8]), 6);
   assert.ok(Math.abs(Number(run["virial ratio"]) + 2) < 1e-5, run["virial ratio"]);
-  assert.match(run.nucleus, /^point, charge 26/);
+  const [nucleus] = await table(door, "Nucleus");
+  assert.deepEqual([nucleus.model, nucleus.charge], ["point", "26"]);
   const history = await table(door, "Residual after");
   assert.equal(history.length, Number(run.iterations));
   await openPart(door, "Slater integrals");
@@ -110,6 +111,43 @@ everyDoor("sodium: 3s and 3p stand in one picture, a curve is chosen by its row,
   assert.deepEqual(await widths(), ["4", "2", "2"]);
   await door.press("Escape");
   assert.deepEqual(door.troubles, []);
+}, { fragment: SODIUM });
+
+everyDoor("the picture is zoomed by keys, has its points as a table, and is saved as SVG", async (door) => {
+  await openOrbitals(door);
+  await door.page.focus(".orbitals .stage");
+  await door.press("Home", "=", "=", "End", "=");
+  await door.until(() => [...document.querySelectorAll(".orbitals .picture-tools button")].find(({ textContent }) => textContent === "Whole picture").checkVisibility());
+  assert.equal(await polylines(door), 2);
+  await door.press("0");
+  await door.evaluate(() => [...document.querySelectorAll(".orbitals .picture-tools button")].find(({ textContent }) => textContent === "Show as table").click());
+  await door.until(() => document.querySelector(".orbitals .picture-table table"));
+  // 201 points of each of the two curves.
+  assert.equal(await door.evaluate(() => document.querySelector(".orbitals .picture-table table").rows.length), 403);
+  await door.evaluate(() => [...document.querySelectorAll(".orbitals .picture-tools button")].find(({ textContent }) => textContent === "Save SVG").click());
+  const svg = await door.until(() => window.files.at(-1)?.text);
+  assert.match(svg, /<title>Radial distributions of Na I \[Ne\] 3s and Na I \[Ne\] 3p<\/title>/);
+  assert.match(svg, /<polyline/);
+  assert.deepEqual(door.troubles, []);
+}, { fragment: SODIUM, before: () => {
+  window.files = [];
+  const make = URL.createObjectURL;
+  URL.createObjectURL = (blob) => {
+    if (blob.type === "image/svg+xml") blob.text().then((text) => window.files.push({ text }));
+    return make.call(URL, blob);
+  };
+} });
+
+everyDoor("a polarisability that has a source is put in by its button", async (door) => {
+  await openOrbitals(door);
+  const words = await door.text(".orbitals .offer button");
+  // 0.9457 a0^3 for Na+: Johnson, Kolb and Huang (1983).
+  assert.match(words, /0\.9457 a0\^3/);
+  await door.evaluate(() => document.querySelector(".orbitals .offer button").click());
+  await door.until(() => [...document.querySelectorAll(".orbitals summary")].some((each) => each.textContent === "What core polarisation changed"));
+  assert.equal(await door.evaluate(() => document.querySelector('[data-path="/structure/polarisation/alpha"]').value), "0.9457 a0^3");
+  await openPart(door, "Integrals between");
+  assert.equal((await table(door, "E1 integrals"))[0].integral, "r(3s,3p)");
 }, { fragment: SODIUM });
 
 everyDoor("another field or title never asks again, a second look neither", async (door) => {
@@ -142,7 +180,7 @@ everyDoor("closed, nothing is computed", async (door) => {
 everyDoor("a run tells its iterations, Stop stops it, and the next one answers", async (door) => {
   await door.evaluate(() => { window.slow = true; });
   await openOrbitals(door, false);
-  await door.until(() => /Calculating 3s, 1 of 2: iteration 7, residual 3\.0e−3\. About 1\.5\ss in all/.test(document.querySelector(".orbitals .run p")?.textContent));
+  await door.until(() => /Calculating 3s, 1 of 2: iteration 7, residual 3\.0e−3, estimated 1\.5\ss in all/.test(document.querySelector(".orbitals .run p")?.textContent));
   await door.evaluate(() => [...document.querySelectorAll(".orbitals .run button")].find(({ textContent }) => textContent === "Stop").click());
   await door.until(() => /^Stopped/.test(document.querySelector(".orbitals .run p")?.textContent));
   await door.click("Start again");

@@ -11,7 +11,7 @@ const LETTERS = "spdfghiklmnoqrtuv";
 /** A node with the section; `sections(l)` asks the core for those of one ℓ. */
 export function shapeNode(found, sections, context) {
   const box = element("div", {});
-  const l = select(context, "orbitals:l", "Subshells", found.map((each) => [String(each), LETTERS[each] ?? `ℓ = ${each}`]), fill);
+  const l = select(context, "orbitals:l", "Subshell", found.map((each) => [String(each), LETTERS[each] ?? `ℓ = ${each}`]), fill);
   const place = element("span", {});
   fill();
   return element("div", {}, element("div", { class: "choices" }, l.node, place), box);
