@@ -1,33 +1,65 @@
-//! Times of the levels of configurations: coefficients from nothing, then all levels.
+//! Times of the levels of configurations: coefficients from nothing, then all levels; and of lines.
 
-use rungline_core::structure::{Basis, Hamiltonian, Integral, Levels, estimate};
+use rungline_core::structure::{
+    Basis, Hamiltonian, Integral, Levels, Multipole, Parameter, amplitudes, estimate,
+};
 use std::time::Instant;
+
+fn value(parameter: &Parameter) -> f64 {
+    match parameter.integral {
+        Integral::Average => 1000.0 * parameter.first as f64,
+        Integral::Direct { k, .. } => 60_000.0 / f64::from(k),
+        Integral::Exchange { k, .. } => 9_000.0 / f64::from(k + 1),
+        Integral::SpinOrbit { a } => 500.0 / (a + 1) as f64,
+        Integral::Mixing { k, .. } => 6_000.0 / f64::from(k + 1),
+        Integral::OneElectron { .. } => 0.0,
+    }
+}
+
+fn solve(shells: &[u8], configurations: &[Vec<u32>], best: &mut [f64; 2]) -> (Basis, Levels) {
+    let start = Instant::now();
+    let basis = Basis::new(shells, configurations).expect("a basis");
+    let own = Hamiltonian::new(basis).expect("coefficients");
+    best[0] = best[0].min(start.elapsed().as_secs_f64() * 1e3);
+    let values = own.values(value);
+    let start = Instant::now();
+    let levels = Levels::solve(&own, &values).expect("levels");
+    best[1] = best[1].min(start.elapsed().as_secs_f64() * 1e3);
+    (own.basis().clone(), levels)
+}
 
 fn measure(name: &str, shells: &[u8], configurations: &[Vec<u32>]) {
     let sizes = estimate(shells, configurations).expect("sizes");
     let mut best = [f64::INFINITY; 2];
     for _ in 0..3 {
-        let start = Instant::now();
-        let basis = Basis::new(shells, configurations).expect("a basis");
-        let own = Hamiltonian::new(basis).expect("coefficients");
-        best[0] = best[0].min(start.elapsed().as_secs_f64() * 1e3);
-        let values = own.values(|parameter| match parameter.integral {
-            Integral::Average => 1000.0 * parameter.first as f64,
-            Integral::Direct { k, .. } => 60_000.0 / f64::from(k),
-            Integral::Exchange { k, .. } => 9_000.0 / f64::from(k + 1),
-            Integral::SpinOrbit { a } => 500.0 / (a + 1) as f64,
-            Integral::Mixing { k, .. } => 6_000.0 / f64::from(k + 1),
-            Integral::OneElectron { .. } => 0.0,
-        });
-        let start = Instant::now();
-        let levels = Levels::solve(&own, &values).expect("levels");
-        best[1] = best[1].min(start.elapsed().as_secs_f64() * 1e3);
+        let (_, levels) = solve(shells, configurations, &mut best);
         assert_eq!(levels.levels.len() as u64, sizes.levels);
     }
     println!(
         "{name:<32} {:>6} levels, largest {:>4}: coefficients {:>9.2} ms, levels {:>9.2} ms",
         sizes.levels, sizes.largest, best[0], best[1]
     );
+}
+
+/// Neutral iron: levels of both parities and all E1 lines, from nothing.
+fn measure_iron() {
+    let shells = [2, 0, 1];
+    let mut best = f64::INFINITY;
+    let mut lines = 0;
+    for _ in 0..3 {
+        let start = Instant::now();
+        let mut times = [f64::INFINITY; 2];
+        let (even, lower) = solve(&shells, &[vec![6, 2, 0], vec![7, 1, 0]], &mut times);
+        let (odd, upper) = solve(&shells, &[vec![6, 1, 1], vec![7, 0, 1]], &mut times);
+        let operator = Multipole::new(&even, &odd, 1).expect("coefficients");
+        let lengths = vec![1.0; operator.transfers().len()];
+        let found = amplitudes(&lower, &upper, 1, false, |rows, columns| {
+            operator.elements(&lengths, rows, columns)
+        });
+        lines = found.len();
+        best = best.min(start.elapsed().as_secs_f64() * 1e3);
+    }
+    println!("d6 s2 + d7 s, d6 s p + d7 p, {lines} E1 lines: {best:.2} ms");
 }
 
 fn main() {
@@ -42,4 +74,5 @@ fn main() {
     );
     measure("f4 d s", &[3, 2, 0], &[vec![4, 1, 1]]);
     measure("f7 d", &[3, 2], &[vec![7, 1]]);
+    measure_iron();
 }

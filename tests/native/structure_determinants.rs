@@ -7,8 +7,10 @@
 
 use nalgebra::DMatrix;
 use rungline_core::angular::wigner_3j;
-use rungline_core::numerics::symmetric::eigensystem;
-use rungline_core::structure::{Basis, Hamiltonian, Integral, Levels};
+use rungline_core::numerics::symmetric::{Eigensystem, eigensystem};
+use rungline_core::structure::{
+    Basis, Hamiltonian, Integral, Levels, Multipole, Parameter, amplitudes,
+};
 use rungline_tests::{Row, report};
 use std::collections::BTreeMap;
 
@@ -41,6 +43,11 @@ fn radial(k: usize, [a, b, c, d]: [usize; 4]) -> f64 {
 /// ⟨a|h|c⟩.
 fn single(a: usize, c: usize) -> f64 {
     arbitrary(&[2, a.min(c), a.max(c)])
+}
+
+/// ⟨a|r|c⟩.
+fn length(a: usize, c: usize) -> f64 {
+    arbitrary(&[4, a.min(c), a.max(c)])
 }
 
 fn zeta(a: usize) -> f64 {
@@ -199,7 +206,7 @@ impl Brute {
         }
     }
 
-    fn energies(&self) -> Vec<f64> {
+    fn eigensystem(&self) -> Eigensystem {
         let places: BTreeMap<u64, usize> = self.determinants.iter().copied().zip(0..).collect();
         let size = self.determinants.len();
         let mut matrix = DMatrix::zeros(size, size);
@@ -211,7 +218,30 @@ impl Brute {
             });
         }
         assert!((&matrix - matrix.transpose()).abs().max() < 1e-12);
-        eigensystem(matrix).expect("converges").values
+        eigensystem(matrix).expect("converges")
+    }
+
+    /// ⟨this determinant|Σ r C¹_0|that one of `other`⟩.
+    fn dipole(&self, other: &Brute) -> DMatrix<f64> {
+        let places: BTreeMap<u64, usize> = self.determinants.iter().copied().zip(0..).collect();
+        let mut matrix = DMatrix::zeros(self.determinants.len(), other.determinants.len());
+        for (column, &ket) in other.determinants.iter().enumerate() {
+            for (p, &from) in self.orbitals.iter().enumerate() {
+                for (r, &to) in self.orbitals.iter().enumerate() {
+                    if to.m != from.m || to.two_sigma != from.two_sigma {
+                        continue;
+                    }
+                    if let Some((first, left)) = without(ket, p)
+                        && let Some((second, made)) = with(left, r)
+                        && let Some(&row) = places.get(&made)
+                    {
+                        let value = gaunt(1, to, from) * length(to.shell, from.shell);
+                        matrix[(row, column)] += first * second * value;
+                    }
+                }
+            }
+        }
+        matrix
     }
 
     /// The mean of the diagonal.
@@ -236,25 +266,31 @@ impl Brute {
     }
 }
 
-const MOST_DETERMINANTS: usize = 300;
+/// The average is what the determinants say, so that the trace rule is checked with the rest.
+fn averages(shells: &[u8], configurations: &[Vec<u32>]) -> Vec<f64> {
+    let mean = |one: &Vec<u32>| Brute::new(shells, std::slice::from_ref(one), None).mean();
+    configurations.iter().map(mean).collect()
+}
 
-/// The worst deviation of all levels, relative to the largest energy, and their number.
-fn compare(shells: &[u8], configurations: &[Vec<u32>]) -> (f64, usize) {
-    let basis = Basis::new(shells, configurations).expect("a basis");
-    let hamiltonian = Hamiltonian::new(basis).expect("coefficients");
-    // The average is what the determinants say, so that the trace rule is checked with the rest.
-    let averages: Vec<f64> = configurations
-        .iter()
-        .map(|one| Brute::new(shells, std::slice::from_ref(one), None).mean())
-        .collect();
-    let values = hamiltonian.values(|parameter| match parameter.integral {
+fn value(parameter: &Parameter, averages: &[f64]) -> f64 {
+    match parameter.integral {
         Integral::Average => averages[parameter.first],
         Integral::Direct { k, a, b } => radial(k.into(), [a, b, a, b]),
         Integral::Exchange { k, a, b } => radial(k.into(), [a, b, b, a]),
         Integral::SpinOrbit { a } => zeta(a),
         Integral::Mixing { k, a, b, c, d } => radial(k.into(), [a, b, c, d]),
         Integral::OneElectron { a, c } => single(a, c),
-    });
+    }
+}
+
+const MOST_DETERMINANTS: usize = 300;
+
+/// The worst deviation of all levels, relative to the largest energy, and their number.
+fn compare(shells: &[u8], configurations: &[Vec<u32>]) -> (f64, usize) {
+    let basis = Basis::new(shells, configurations).expect("a basis");
+    let hamiltonian = Hamiltonian::new(basis).expect("coefficients");
+    let averages = averages(shells, configurations);
+    let values = hamiltonian.values(|parameter| value(parameter, &averages));
     let ours = Levels::solve(&hamiltonian, &values).expect("levels");
     let electrons: u32 = configurations[0].iter().sum();
     // The lowest M whose determinants are not too many: every level with J ≥ M.
@@ -264,7 +300,7 @@ fn compare(shells: &[u8], configurations: &[Vec<u32>]) -> (f64, usize) {
         two_m += 2;
         brute = Brute::new(shells, configurations, Some(two_m));
     }
-    let brute = brute.energies();
+    let brute = brute.eigensystem().values;
     let scale = brute.iter().fold(0.0_f64, |most, e| most.max(e.abs()));
     let levels = ours.levels.iter().filter(|level| level.two_j >= two_m);
     let mut energies: Vec<f64> = levels.map(|level| level.energy).collect();
@@ -358,6 +394,125 @@ fn mixed_configurations_have_the_levels_of_their_determinants() {
             worst,
             tolerance: 1e-12,
             measure: "relative to the largest".to_owned(),
+            source: "sums over Slater determinants in the test itself".to_owned(),
+        },
+    );
+}
+
+/// Subshells, configurations of one parity, configurations of the other.
+type Dipole = (
+    &'static [u8],
+    &'static [&'static [u32]],
+    &'static [&'static [u32]],
+);
+
+const DIPOLES: &[Dipole] = &[
+    (&[0, 1], &[&[1, 0]], &[&[0, 1]]),
+    (
+        &[0, 1, 2],
+        &[&[2, 0, 0], &[0, 2, 0], &[1, 0, 1]],
+        &[&[1, 1, 0], &[0, 1, 1]],
+    ),
+    (
+        &[2, 1, 0],
+        &[&[2, 1, 0], &[1, 1, 1], &[0, 1, 2]],
+        &[&[3, 0, 0], &[2, 0, 1], &[1, 2, 0]],
+    ),
+    (
+        &[0, 1, 0],
+        &[&[1, 2, 0], &[0, 2, 1], &[2, 0, 1]],
+        &[&[1, 1, 1], &[2, 1, 0], &[0, 3, 0]],
+    ),
+    (
+        &[1, 2, 0],
+        &[&[5, 1, 0], &[5, 0, 1]],
+        &[&[6, 0, 0], &[4, 1, 1], &[4, 2, 0]],
+    ),
+    (
+        &[0, 1, 2],
+        &[&[1, 4, 0], &[2, 2, 1]],
+        &[&[2, 3, 0], &[1, 3, 1]],
+    ),
+    (&[3, 2], &[&[2, 0], &[0, 2]], &[&[1, 1]]),
+    (&[2, 3, 0], &[&[1, 1, 1]], &[&[0, 2, 1], &[2, 0, 1]]),
+];
+
+/// How far an energy is from its neighbours, relative to the largest.
+fn gap(energies: &[f64], place: usize) -> f64 {
+    let largest = energies.iter().fold(0.0_f64, |most, e| most.max(e.abs()));
+    let others = energies
+        .iter()
+        .enumerate()
+        .filter(|&(other, _)| other != place);
+    let nearest = others.fold(largest, |least, (_, e)| {
+        least.min((e - energies[place]).abs())
+    });
+    nearest / largest
+}
+
+#[test]
+fn dipole_strengths_are_those_of_the_determinants() {
+    let (mut worst, mut lines) = (0.0_f64, 0);
+    for &(shells, left, right) in DIPOLES {
+        let own = |configurations: &[&[u32]]| {
+            let owned: Vec<Vec<u32>> = configurations.iter().map(|c| c.to_vec()).collect();
+            let basis = Basis::new(shells, &owned).expect("a basis");
+            let hamiltonian = Hamiltonian::new(basis).expect("coefficients");
+            let averages = averages(shells, &owned);
+            let values = hamiltonian.values(|parameter| value(parameter, &averages));
+            let levels = Levels::solve(&hamiltonian, &values).expect("levels");
+            // For M = 0 the 3j symbol of J = J′ vanishes.
+            let two_m = 2 - i32::try_from(owned[0].iter().sum::<u32>() % 2).expect("small");
+            let brute = Brute::new(shells, &owned, Some(two_m));
+            let system = brute.eigensystem();
+            let seen = (0..levels.levels.len()).filter(|&p| levels.levels[p].two_j >= two_m);
+            let seen: Vec<usize> = seen.collect();
+            assert_eq!(seen.len(), system.values.len());
+            (
+                hamiltonian.basis().clone(),
+                levels,
+                brute,
+                system,
+                seen,
+                two_m,
+            )
+        };
+        let (one, two) = (own(left), own(right));
+        let operator = Multipole::new(&one.0, &two.0, 1).expect("coefficients");
+        let lengths: Vec<f64> = operator
+            .transfers()
+            .iter()
+            .map(|t| length(t.a, t.c))
+            .collect();
+        let found = amplitudes(&one.1, &two.1, 1, false, |rows, columns| {
+            operator.elements(&lengths, rows, columns)
+        });
+        let matrix = one.3.vectors.transpose() * one.2.dipole(&two.2) * &two.3.vectors;
+        let largest = matrix.abs().max();
+        for (row, &bra) in one.4.iter().enumerate() {
+            for (column, &ket) in two.4.iter().enumerate() {
+                let line = found.iter().find(|l| (l.left, l.right) == (bra, ket));
+                let (j, jp) = (one.1.levels[bra].two_j, two.1.levels[ket].two_j);
+                // Eigenvectors have signs of their own.
+                let ours =
+                    line.map_or(0.0, |line| line.reduced) * wigner_3j(j, 2, jp, -one.5, 0, two.5);
+                let difference = ours.abs() - matrix[(row, column)].abs();
+                // A vector is as exact as its energy is apart from the next.
+                let apart = gap(&one.3.values, row).min(gap(&two.3.values, column));
+                worst = worst.max(difference.abs() / largest * apart);
+                lines += 1;
+            }
+        }
+    }
+    report(
+        "structure-dipole",
+        Row {
+            quantity: "E1 amplitudes between sets of mixing configurations, arbitrary integrals"
+                .to_owned(),
+            cases: lines,
+            worst,
+            tolerance: 1e-13,
+            measure: "relative to the largest, times the gap to the next level".to_owned(),
             source: "sums over Slater determinants in the test itself".to_owned(),
         },
     );

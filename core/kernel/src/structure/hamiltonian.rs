@@ -31,6 +31,17 @@ pub struct Rows {
     pub states: Vec<usize>,
 }
 
+impl Rows {
+    /// The first row of a block, where it reaches J.
+    pub fn first(&self, block: usize) -> Option<usize> {
+        let place = self.blocks.binary_search_by_key(&block, |known| known.0);
+        place
+            .ok()
+            .and_then(|place| self.blocks.get(place))
+            .map(|known| known.1)
+    }
+}
+
 impl Hamiltonian {
     /// The coefficients of E_av, F^k, G^k, R^k, ⟨a|h|c⟩ and ζ in this basis.
     ///
@@ -131,13 +142,9 @@ impl Hamiltonian {
             }
         }
         let mut symbols = Symbols::default();
-        let first_row = |place: usize| {
-            let at = rows.blocks.binary_search_by_key(&place, |block| block.0);
-            at.ok().and_then(|at| rows.blocks.get(at)).map(|b| b.1)
-        };
         let total = |place: usize| self.basis.blocks().get(place).map(|b: &Block| b.total);
         for joint in &self.spin_orbit {
-            let (Some(row), Some(column)) = (first_row(joint.rows), first_row(joint.columns))
+            let (Some(row), Some(column)) = (rows.first(joint.rows), rows.first(joint.columns))
             else {
                 continue;
             };
