@@ -80,14 +80,9 @@ impl Character {
 pub(super) fn branching(seniority: u32, two_s: i32) -> Vec<([i32; 2], Vec<u64>)> {
     let character = rotation_character(seniority, two_s);
     let reflections = weyl_group(HALF_SUM);
-    let mut labels: Vec<[i32; 2]> = (0..=REACH)
-        .flat_map(|u1| (0..=u1).map(move |u2| [u1, u2]))
-        .filter(|[u1, u2]| u1 + u2 <= REACH)
-        .collect();
-    sort_by_key(&mut labels, |&u| twelve_casimirs(u));
     let mut found = Vec::new();
-    for u in labels {
-        let [u1, u2] = u;
+    for (u, contents) in REPRESENTATIONS.iter() {
+        let [u1, u2] = *u;
         // Weyl: the coefficient at λ + ρ of the character times the alternating sum over wρ.
         let times: i64 = reflections
             .iter()
@@ -96,17 +91,22 @@ pub(super) fn branching(seniority: u32, two_s: i32) -> Vec<([i32; 2], Vec<u64>)>
             })
             .sum();
         if times > 0 {
-            let by_l = contents(u);
-            found.push((
-                u,
-                by_l.into_iter()
-                    .map(|count| count * times.unsigned_abs())
-                    .collect(),
-            ));
+            let by_l = contents.iter().map(|count| count * times.unsigned_abs());
+            found.push((*u, by_l.collect()));
         }
     }
     found
 }
+
+/// Every U that f electrons can have, in the order of the Casimir eigenvalues, with its L.
+static REPRESENTATIONS: LazyLock<Vec<([i32; 2], Vec<u64>)>> = LazyLock::new(|| {
+    let mut labels: Vec<[i32; 2]> = (0..=REACH)
+        .flat_map(|u1| (0..=u1).map(move |u2| [u1, u2]))
+        .filter(|[u1, u2]| u1 + u2 <= REACH)
+        .collect();
+    sort_by_key(&mut labels, |&u| twelve_casimirs(u));
+    labels.into_iter().map(|u| (u, contents(u))).collect()
+});
 
 /// (u₁² + u₁u₂ + u₂² + 5u₁ + 4u₂)/12.
 pub(super) fn casimir(u: [i32; 2]) -> f64 {
@@ -168,22 +168,21 @@ fn elementary_characters() -> Vec<Vec<Weight>> {
 ///
 /// The reflections in the simple roots (0,1) and (1,−1) are (x, y) → (x, x−y) and (y, x); their
 /// alternating products are the twelve elements.
-fn weyl_group(weight: (i32, i32)) -> Vec<(i64, (i32, i32))> {
-    let mut images = vec![(1, weight)];
+fn weyl_group(weight: (i32, i32)) -> [(i64, (i32, i32)); 12] {
+    let short = |(x, y): (i32, i32)| (x, x - y);
+    let long = |(x, y): (i32, i32)| (y, x);
     let (mut sign, mut left, mut right) = (1, weight, weight);
-    for step in 0..6 {
+    let mut images = [(1, weight); 12];
+    // Two walks from the weight, one reflection after the other in turn, meet in the longest element.
+    for (step, pair) in images.split_at_mut(1).1.chunks_mut(2).enumerate() {
         sign = -sign;
-        let short = |(x, y): (i32, i32)| (x, x - y);
-        let long = |(x, y): (i32, i32)| (y, x);
         (left, right) = if step % 2 == 0 {
             (short(left), long(right))
         } else {
             (long(left), short(right))
         };
-        images.push((sign, left));
-        // The two ways meet in the longest element.
-        if step < 5 {
-            images.push((sign, right));
+        for (image, walk) in pair.iter_mut().zip([left, right]) {
+            *image = (sign, walk);
         }
     }
     images
@@ -268,7 +267,7 @@ mod tests {
 
     #[test]
     fn the_weyl_group_has_twelve_different_elements() {
-        let mut images = weyl_group(HALF_SUM);
+        let mut images = weyl_group(HALF_SUM).to_vec();
         images.sort_unstable();
         images.dedup_by_key(|image| image.1);
         assert_eq!(images.len(), 12);

@@ -76,13 +76,13 @@ pub fn classify(l: u8, electrons: u32) -> Result<Vec<EquivalentTerm>, Problem> {
     if states(l, electrons) > MOST_STATES {
         return Err(too_many());
     }
-    let mut terms = Vec::new();
-    let mut total = 0_u64;
-    for spin in contents(l, electrons) {
-        total += spin.by_l.iter().sum::<u64>();
-        if total > MOST_TERMS {
-            return Err(too_many());
-        }
+    let contents = contents(l, electrons);
+    let total: u64 = contents.iter().flat_map(|spin| &spin.by_l).sum();
+    if total > MOST_TERMS {
+        return Err(too_many());
+    }
+    let mut terms = Vec::with_capacity(usize::try_from(total).unwrap_or(0));
+    for spin in contents {
         let w = (l >= 2).then(|| RotationLabel::of(l, spin.seniority, spin.two_s));
         let rotation_casimir = w.map(RotationLabel::casimir);
         let term = |l_total: u32, u: Option<[i32; 2]>, alike: u64| EquivalentTerm {
