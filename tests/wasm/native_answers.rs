@@ -4,7 +4,7 @@ use std::fmt::Write as _;
 use std::path::Path;
 
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
-use rungline_core::sheet::{Question, answer_text, curves_message, unwatched};
+use rungline_core::sheet::{Question, answer_text, curves_message, sections_message, unwatched};
 
 fn main() -> Result<(), Box<dyn std::error::Error>> {
     let out = std::env::var("OUT_DIR")?;
@@ -41,6 +41,11 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
     answers.push_str("];\n");
     curves.push_str("];\n");
     answers.push_str(&curves);
+    answers.push_str("pub const SECTIONS: &[(u32, &str)] = &[\n");
+    for l in 0..=6 {
+        writeln!(answers, "    ({l}, {:?}),", sections_message(l))?;
+    }
+    answers.push_str("];\n");
     std::fs::write(Path::new(&out).join("answers.rs"), answers)?;
 
     let bits: Vec<u64> = symbols().iter().map(|value| value.to_bits()).collect();

@@ -64,6 +64,14 @@ fn every_picture_has_the_native_bytes() {
 }
 
 #[wasm_bindgen_test]
+fn every_section_has_the_native_bytes() {
+    for (l, native) in SECTIONS {
+        let here = rungline_web::sections(*l);
+        assert!(here == *native, "ℓ = {l}: {}", place(&here, native));
+    }
+}
+
+#[wasm_bindgen_test]
 fn symbols_have_the_native_bits() {
     let here = symbols();
     assert_eq!(here.len(), SYMBOL_BITS.len());
