@@ -30,8 +30,7 @@ pub struct Mesh {
     slopes: Vec<Block>,
     metric: Banded,
     means: Vec<f64>,
-    rule: [f64; POINTS],
-    running: [[f64; POINTS]; POINTS],
+    running: Running,
     powers: Vec<Powers>,
 }
 
@@ -42,12 +41,94 @@ struct Powers {
     falling: Vec<f64>,
 }
 
-fn array(values: &[f64]) -> [f64; POINTS] {
-    let mut array = [0.0; POINTS];
-    for (to, from) in array.iter_mut().zip(values) {
-        *to = *from;
+/// Running integrals over one interval, from its middle on.
+///
+/// With a_qj of [`running_weights`], s_qj = a_qj − w_j/2 changes its sign when both q and j are
+/// mirrored, so that even and odd parts of the integrand need half the products.
+#[derive(Clone, Debug, Default)]
+struct Running {
+    rule: [f64; POINTS],
+    /// Column j: (s_qj + s_q,8−j)/2 for q < 4; the last one s_q4.
+    even: [[f64; 4]; 5],
+    /// Column j: (s_qj − s_q,8−j)/2 for q < 4.
+    odd: [[f64; 4]; 4],
+    /// The same for q = 4.
+    centre: [f64; 4],
+}
+
+impl Running {
+    fn new(rule: &[(f64, f64)]) -> Self {
+        let mut running = Running::default();
+        for (to, &(_, w)) in running.rule.iter_mut().zip(rule) {
+            *to = w;
+        }
+        let weights = running_weights(rule);
+        let s = |q: usize, j: usize| {
+            let a = weights.get(j).and_then(|column| column.get(q));
+            let w = rule.get(j).map_or(0.0, |&(_, w)| w);
+            a.map_or(0.0, |a| a - 0.5 * w)
+        };
+        for (j, column) in running.even.iter_mut().enumerate() {
+            for (q, entry) in column.iter_mut().enumerate() {
+                *entry = 0.5 * (s(q, j) + s(q, POINTS - 1 - j));
+            }
+        }
+        for (j, column) in running.odd.iter_mut().enumerate() {
+            for (q, entry) in column.iter_mut().enumerate() {
+                *entry = 0.5 * (s(q, j) - s(q, POINTS - 1 - j));
+            }
+        }
+        for (j, entry) in running.centre.iter_mut().enumerate() {
+            *entry = 0.5 * (s(4, j) - s(4, POINTS - 1 - j));
+        }
+        running
     }
-    array
+
+    /// The integral of f · power over an interval of this half width, and from the interval's
+    /// start to each point less half the whole.
+    #[inline(always)]
+    fn of(&self, f: &[f64; POINTS], power: &[f64; POINTS], half: f64) -> (f64, [f64; POINTS]) {
+        let mut source = [0.0; POINTS];
+        for ((to, f), power) in source.iter_mut().zip(f).zip(power) {
+            *to = half * f * power;
+        }
+        let whole = source.iter().zip(&self.rule).map(|(f, w)| f * w).sum();
+        let [a, b, c, d, middle, e, f, g, h] = source;
+        let mut turning = [0.0; 4];
+        for (column, f) in self.even.iter().zip([a + h, b + g, c + f, d + e, middle]) {
+            for (sum, s) in turning.iter_mut().zip(column) {
+                *sum += s * f;
+            }
+        }
+        let odd = [a - h, b - g, c - f, d - e];
+        let mut steady = [0.0; 4];
+        for (column, f) in self.odd.iter().zip(odd) {
+            for (sum, s) in steady.iter_mut().zip(column) {
+                *sum += s * f;
+            }
+        }
+        let centre = self.centre.iter().zip(odd).map(|(s, f)| s * f).sum();
+        let [u0, u1, u2, u3] = turning;
+        let [v0, v1, v2, v3] = steady;
+        let points = [
+            v0 + u0,
+            v1 + u1,
+            v2 + u2,
+            v3 + u3,
+            centre,
+            v3 - u3,
+            v2 - u2,
+            v1 - u1,
+            v0 - u0,
+        ];
+        (whole, points)
+    }
+}
+
+/// The values of each interval.
+fn chunks(values: &[f64]) -> impl DoubleEndedIterator<Item = &[f64; POINTS]> + ExactSizeIterator {
+    let (chunks, _) = values.as_chunks::<POINTS>();
+    chunks.iter()
 }
 
 impl Mesh {
@@ -75,11 +156,6 @@ impl Mesh {
         }
         let basis = SplineBasis::new(ORDER, knots)?;
         let rule = gauss_legendre(POINTS);
-        let mut running = [[0.0; POINTS]; POINTS];
-        for (to, from) in running.iter_mut().zip(running_weights(&rule)) {
-            *to = array(&from);
-        }
-        let weights_of_rule: Vec<f64> = rule.iter().map(|&(_, w)| w).collect();
         let mut mesh = Mesh {
             means: Vec::new(),
             firsts: Vec::new(),
@@ -89,8 +165,7 @@ impl Mesh {
             values: Vec::new(),
             slopes: Vec::new(),
             metric: Banded::zero(basis.len(), ORDER),
-            rule: array(&weights_of_rule),
-            running,
+            running: Running::new(&rule),
             powers: Vec::new(),
             basis,
             breaks,
@@ -312,76 +387,43 @@ impl Mesh {
             return;
         };
         let mut outward = 0.0;
-        let parts = density
-            .chunks_exact(POINTS)
-            .zip(powers.rising.chunks_exact(POINTS))
-            .zip(powers.falling.chunks_exact(POINTS))
+        let parts = chunks(density)
+            .zip(chunks(&powers.rising))
+            .zip(chunks(&powers.falling))
             .zip(out.chunks_exact_mut(POINTS))
             .zip(&self.halves);
         for ((((density, rising), falling), out), half) in parts {
-            let mut running = [outward; POINTS];
-            let mut whole = 0.0;
-            let terms = density
-                .iter()
-                .zip(rising)
-                .zip(&self.running)
-                .zip(&self.rule);
-            for (((density, power), column), weight) in terms {
-                let source = half * density * power;
-                whole += weight * source;
-                for (sum, a) in running.iter_mut().zip(column) {
-                    *sum += a * source;
-                }
+            let (whole, running) = self.running.of(density, rising, *half);
+            let middle = outward + 0.5 * whole;
+            for ((out, power), sum) in out.iter_mut().zip(falling).zip(running) {
+                *out += factor * power * (middle + sum);
             }
             outward += whole;
-            for ((out, power), sum) in out.iter_mut().zip(falling).zip(&running) {
-                *out += factor * power * sum;
-            }
         }
         let mut inward = 0.0;
-        let parts = density
-            .chunks_exact(POINTS)
-            .zip(powers.rising.chunks_exact(POINTS))
-            .zip(powers.falling.chunks_exact(POINTS))
+        let parts = chunks(density)
+            .zip(chunks(&powers.rising))
+            .zip(chunks(&powers.falling))
             .zip(out.chunks_exact_mut(POINTS))
             .zip(&self.halves)
             .rev();
         for ((((density, rising), falling), out), half) in parts {
-            let mut running = [0.0; POINTS];
-            let mut whole = inward;
-            let terms = density
-                .iter()
-                .zip(falling)
-                .zip(&self.running)
-                .zip(&self.rule);
-            for (((density, power), column), weight) in terms {
-                let source = half * density * power;
-                whole += weight * source;
-                for (sum, a) in running.iter_mut().zip(column) {
-                    *sum += a * source;
-                }
+            let (whole, running) = self.running.of(density, falling, *half);
+            let middle = inward + 0.5 * whole;
+            for ((out, power), sum) in out.iter_mut().zip(rising).zip(running) {
+                *out += factor * power * (middle - sum);
             }
-            inward = whole;
-            for ((out, power), sum) in out.iter_mut().zip(rising).zip(&running) {
-                *out += factor * power * (whole - sum);
-            }
+            inward += whole;
         }
     }
 
     /// ∫₀^r f ds at every point, f being interpolated as in [`Mesh::add_field`].
     pub fn running_integral(&self, f: &[f64]) -> Vec<f64> {
-        let mut out = vec![0.0; f.len()];
+        let mut out = Vec::with_capacity(f.len());
         let mut before = 0.0;
-        let parts = f.chunks_exact(POINTS).zip(out.chunks_exact_mut(POINTS));
-        for ((f, out), half) in parts.zip(&self.halves) {
-            let mut whole = 0.0;
-            out.fill(before);
-            for ((f, column), weight) in f.iter().zip(&self.running).zip(&self.rule) {
-                whole += half * weight * f;
-                for (sum, a) in out.iter_mut().zip(column) {
-                    *sum += a * half * f;
-                }
-            }
+        for (f, half) in chunks(f).zip(&self.halves) {
+            let (whole, running) = self.running.of(f, &[1.0; POINTS], *half);
+            out.extend(running.iter().map(|sum| before + 0.5 * whole + sum));
             before += whole;
         }
         out
