@@ -76,8 +76,9 @@ pub(super) fn iterate(
             let unbound = |wave: &&Wave| {
                 wave.energy >= 0.0 || (residual < NEAR && wave.energy > -LEAST_BOUND)
             };
-            // Only a negative ion may have no bound state.
-            if let (true, Some(wave)) = (case.anion, waves.iter().find(unbound)) {
+            // On the way, only a negative ion is judged: all others have bound states.
+            let judged = case.anion || residual < CONVERGED;
+            if let (true, Some(wave)) = (judged, waves.iter().find(unbound)) {
                 return End::Unbound(wave.n, wave.l);
             }
         }

@@ -18,7 +18,7 @@ use crate::radial::nucleus::Nucleus;
 
 /// Phase that an interval of the first, rough mesh spans.
 const ROUGH: f64 = 1.4;
-/// Phase that an interval of the final mesh spans: relative errors of energies below 1e-12.
+/// Phase that an interval of the final mesh spans.
 const FINE: f64 = 0.65;
 /// Meshes that are tried, each larger than the one before.
 const MESHES: usize = 8;
@@ -40,20 +40,13 @@ const SHARES: [f64; 3] = [1.0, 0.5, 0.2];
 /// `stopped`. The history goes with them.
 pub fn solve(atom: &Atom, progress: &mut dyn FnMut(Progress) -> bool) -> Result<Solution, Failure> {
     let mut history = Vec::new();
-    let mut outcome = attempts(atom, &mut history, progress);
-    match &mut outcome {
-        Ok(solution) => solution.history = history,
-        Err(problem) => {
-            return Err(Failure {
-                problem: problem.clone(),
-                history,
-            });
+    match attempts(atom, &mut history, progress) {
+        Ok(mut solution) => {
+            solution.history = history;
+            Ok(solution)
         }
+        Err(problem) => Err(Failure { problem, history }),
     }
-    outcome.map_err(|problem| Failure {
-        problem,
-        history: Vec::new(),
-    })
 }
 
 fn attempts(
@@ -82,22 +75,23 @@ fn attempts(
             let case = case(atom, spacing, highest)?;
             transfer(&from, &case, &mut waves);
             match iterate(&case, &coefficients, &mut waves, share, history, progress) {
-                End::Converged => {
-                    if !set_right(&case, &coefficients, &mut waves, &mut repairs) {
+                End::Converged => match set_right(&case, &coefficients, &mut waves, &mut repairs) {
+                    Right::All => {
                         let average = update(&case, &coefficients, &mut waves);
                         return Ok(solution(atom, case, waves, average, &subshells));
                     }
-                }
+                    Right::Changed => {}
+                    Right::Unknown => return Err(not_converged(history)),
+                },
                 End::Cramped => {}
                 End::Unbound(n, l) => return Err(not_bound(n, l)),
                 End::Stopped => {
                     return Err(Problem::new("stopped", "The run was stopped.", 0, 0));
                 }
-                End::Failed => {
-                    if !set_right(&case, &coefficients, &mut waves, &mut repairs) {
-                        break;
-                    }
-                }
+                End::Failed => match set_right(&case, &coefficients, &mut waves, &mut repairs) {
+                    Right::Changed => {}
+                    Right::All | Right::Unknown => break,
+                },
             }
             from = case.mesh;
         }
@@ -105,30 +99,42 @@ fn attempts(
     Err(not_converged(history))
 }
 
-/// Puts orbitals that are not the state they should be into it; says whether there were any.
+/// Whether every orbital is the state it should be.
+enum Right {
+    All,
+    /// Some were not, and are now.
+    Changed,
+    /// Some may not be, and no more is tried.
+    Unknown,
+}
+
+/// Puts orbitals that are not the state they should be into it.
 fn set_right(
     case: &Case,
     coefficients: &Coefficients,
     waves: &mut [Wave],
     repairs: &mut usize,
-) -> bool {
-    let mut changed = false;
+) -> Right {
+    let mut right = Right::All;
     for place in 0..waves.len() {
-        if *repairs == 0 || waves.get(place).is_none_or(has_its_nodes) {
+        if waves.get(place).is_none_or(has_its_nodes) {
             continue;
+        }
+        if *repairs == 0 {
+            return Right::Unknown;
         }
         *repairs -= 1;
         let found = state(case, coefficients, waves, place);
-        let (Some(wave), Some((energy, right))) = (waves.get_mut(place), found) else {
-            continue;
+        let (Some(wave), Some((energy, function))) = (waves.get_mut(place), found) else {
+            return Right::Unknown;
         };
         if (energy - wave.energy).abs() > 1e-5 * wave.energy.abs() {
-            wave.coefficients = right;
+            wave.coefficients = function;
             wave.energy = energy;
-            changed = true;
+            right = Right::Changed;
         }
     }
-    changed
+    right
 }
 
 #[cold]
