@@ -99,20 +99,15 @@ impl Banded {
                 negative += usize::from(*pivot < 0.0);
                 let inverse = 1.0 / *pivot;
                 let mut sources: &[f64] = right;
-                let mut factors = [0.0; 32];
-                for ((target, source), factor) in below
-                    .chunks_exact_mut(width)
-                    .zip(right.iter())
-                    .zip(&mut factors)
-                {
-                    *factor = source * inverse;
+                for (target, source) in below.chunks_exact_mut(width).zip(right.iter()) {
+                    let factor = source * inverse;
                     for (entry, other) in target.iter_mut().zip(sources) {
-                        *entry -= *factor * other;
+                        *entry -= factor * other;
                     }
                     sources = sources.get(1..).unwrap_or_default();
                 }
-                for (entry, factor) in right.iter_mut().zip(factors) {
-                    *entry = factor;
+                for entry in right {
+                    *entry *= inverse;
                 }
                 *pivot = inverse;
             }
@@ -129,7 +124,7 @@ impl Banded {
 /// A = L D Lᵀ with unit lower L inside the band, without exchange of rows.
 ///
 /// Meant for positive matrices and for A − λB between eigenvalues; a vanishing pivot is replaced by
-/// a tiny one. Widths up to 33. Source: Golub and Van Loan, *Matrix Computations* (1996), 4.1 and 4.3.
+/// a tiny one. Source: Golub and Van Loan, *Matrix Computations* (1996), 4.1 and 4.3.
 #[derive(Clone, Debug)]
 pub struct Factors {
     width: usize,

@@ -437,3 +437,98 @@ impl Mesh {
         out
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn mesh() -> Mesh {
+        let breaks = (0..=40).map(|i| 0.02 * f64::from(i * i)).collect();
+        Mesh::new(breaks, &[], 6).expect("rising break points")
+    }
+
+    #[test]
+    fn the_field_of_an_exponential_density_is_exact() {
+        // ρ = 4 r² e^{−2r}, the 1s density: U⁰ = [1 − (1 + r) e^{−2r}]/r.
+        let mesh = mesh();
+        let density: Vec<f64> = (mesh.radii().iter())
+            .map(|&r| 4.0 * r * r * libm::exp(-2.0 * r))
+            .collect();
+        let mut field = vec![0.0; density.len()];
+        mesh.add_field(0, 1.0, &density, &mut field);
+        for (u, &r) in field.iter().zip(mesh.radii()) {
+            let exact = -libm::expm1(-2.0 * r) / r - libm::exp(-2.0 * r);
+            assert!((u - exact).abs() < 1e-9, "{r}: {u} {exact}");
+        }
+        assert!((mesh.integral(density.iter().copied()) - 1.0).abs() < 1e-12);
+        let running = mesh.running_integral(&density);
+        assert!((running.last().copied().unwrap_or(0.0) - 1.0).abs() < 1e-12);
+    }
+
+    #[test]
+    fn double_integrals_are_symmetric() {
+        let mesh = mesh();
+        let density = |power: i32, rate: f64| -> Vec<f64> {
+            (mesh.radii().iter())
+                .map(|&r| (0..power).fold(libm::exp(-rate * r), |p, _| p * r))
+                .collect()
+        };
+        let (f, g) = (density(8, 3.0), density(9, 0.7));
+        for k in 0..=6 {
+            let between = |source: &[f64], probe: &[f64]| {
+                let mut field = vec![0.0; source.len()];
+                mesh.add_field(k, 1.0, source, &mut field);
+                mesh.integral(field.iter().zip(probe).map(|(u, p)| u * p))
+            };
+            let (there, back) = (between(&f, &g), between(&g, &f));
+            assert!((there / back - 1.0).abs() < 1e-13, "k = {k}");
+        }
+        let mut untouched = vec![1.0; f.len()];
+        mesh.add_field(7, 1.0, &f, &mut untouched);
+        assert!(untouched.iter().all(|u| *u == 1.0));
+    }
+
+    #[test]
+    fn polynomials_are_fitted_and_found_again_anywhere() {
+        let mesh = mesh();
+        let cubic = |r: f64| r * (1.0 - 0.3 * r + 0.01 * r * r);
+        let values: Vec<f64> = mesh.radii().iter().map(|&r| cubic(r)).collect();
+        let fitted = mesh.fit(&values);
+        let radii = [0.0, 0.013, 1.7, 12.0, mesh.end(), 2.0 * mesh.end()];
+        let found = mesh.sample_at(&[&fitted], &radii);
+        for (value, r) in found[0].iter().zip(radii) {
+            let exact = if r > mesh.end() { 0.0 } else { cubic(r) };
+            assert!((value - exact).abs() < 1e-9, "{r}: {value} {exact}");
+        }
+        let slopes = mesh.sample(mesh.slopes(), &fitted);
+        let with = mesh.sample(&mesh.slopes_with(2.0), &fitted);
+        for (((s, t), v), r) in slopes.iter().zip(&with).zip(&values).zip(mesh.radii()) {
+            assert!((s + 2.0 * v / r - t).abs() < 1e-8 * (1.0 + t.abs()));
+        }
+    }
+
+    #[test]
+    fn a_kink_is_followed_where_it_is_announced() {
+        let breaks = vec![0.0, 1.0, 2.0, 3.0, 4.0];
+        let bent = |r: f64| {
+            let beyond = (r - 2.0).max(0.0);
+            r + beyond * beyond * beyond
+        };
+        let miss = |kinks: &[f64]| {
+            let mesh = Mesh::new(breaks.clone(), kinks, 0).expect("rising break points");
+            let values: Vec<f64> = mesh.radii().iter().map(|&r| bent(r)).collect();
+            let found = mesh.sample(mesh.values(), &mesh.fit(&values));
+            let pairs = found.iter().zip(&values);
+            pairs.fold(0.0_f64, |most, (f, v)| most.max((f - v).abs()))
+        };
+        assert!(miss(&[2.0]) < 1e-11 && miss(&[]) > 1e-5);
+    }
+
+    #[test]
+    fn what_is_no_mesh_is_refused() {
+        assert!(Mesh::new(vec![0.0, 1.0], &[], 0).is_none());
+        assert!(Mesh::new(vec![0.0, 1.0, 1.0], &[], 0).is_none());
+        assert!(Mesh::new(vec![0.0, 1.0, f64::NAN], &[], 0).is_none());
+        assert!(Mesh::new(vec![-1.0, 1.0, 2.0], &[], 0).is_none());
+    }
+}
