@@ -3,6 +3,7 @@
 /** The setting that means "all digits". */
 export const ALL_DIGITS = 17;
 // A column whose smallest entry would need more decimals than this is shown with powers of ten.
+const MOST_SPAN = 1e8;
 const MAX_DECIMALS = 12;
 
 /** A hyphen before a digit becomes U+2212. */
@@ -59,6 +60,8 @@ export function columnFormat(values, digits) {
   if (largest === 0) return { decimals: 0 };
   if (largest >= 1e9) return { power: Math.min(needed, digits - 1) };
   const byLargest = digits >= ALL_DIGITS ? needed : Math.max(0, digits - 1 - Math.floor(Math.log10(largest)));
+  // Over many powers of ten equal decimals would be mostly zeros.
+  if (largest / smallest > MOST_SPAN && digits < ALL_DIGITS) return { power: Math.max(digits - 1, 1) };
   const bySmallest = 1 - Math.floor(Math.log10(smallest));
   const decimals = Math.min(Math.max(byLargest, bySmallest), needed);
   return decimals > MAX_DECIMALS && digits < ALL_DIGITS ? { power: Math.max(digits - 1, 1) } : { decimals: Math.min(decimals, 20) };

@@ -118,6 +118,9 @@ pub fn place(document: &Document, entry: &Entry, problem: Problem) -> Problem {
     if !problem.path.is_empty() {
         return problem;
     }
+    if problem.code == "polarisation-too-strong" {
+        return problem.at("/structure/polarisation/alpha");
+    }
     if !entry.path.is_empty() {
         return problem.at(entry.path.clone());
     }

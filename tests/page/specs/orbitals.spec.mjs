@@ -304,12 +304,52 @@ everyDoor("the angular part in section: solid and hatched lobes, values of the h
   await door.until(() => document.querySelectorAll(".orbitals .stage")[1].querySelectorAll("svg[role=img] polygon").length === 4);
 }, { fragment: IRON });
 
+const openTurning = async (door) => {
+  await openOrbitals(door);
+  await openPart(door, "Shape of");
+  await door.until(() => document.querySelectorAll(".orbitals .stage").length === 2);
+  await openPart(door, "Turning view");
+  await door.until(() => document.querySelectorAll(".orbitals .stage").length === 3 && document.querySelectorAll(".orbitals .stage")[2].querySelectorAll("polygon").length > 500);
+};
+const drawn = () => [...document.querySelectorAll(".orbitals .stage")[2].querySelectorAll("polygon")].slice(0, 40).map((each) => each.getAttribute("points")).join();
+
+everyDoor("the angular part in space is turned by keys, and by itself on request", async (door) => {
+  await openTurning(door);
+  const before = await door.evaluate(drawn);
+  const [turn, tip] = await door.page.$$(".orbitals input[type=range]");
+  await tip.focus();
+  await door.press("ArrowRight");
+  assert.equal(await tip.evaluate((each) => each.value), "25");
+  const tipped = await door.evaluate(drawn);
+  assert.notEqual(tipped, before);
+  // A d orbital with m = 0 is round about its axis.
+  const stage = (await door.page.$$(".orbitals .stage"))[2];
+  await stage.focus();
+  await door.press("Home");
+  const reading = () => door.evaluate(() => document.querySelectorAll(".orbitals .stage")[2].closest("figure").querySelector(".reading").textContent);
+  assert.match(await reading(), /^0° from the axis, 0° around it: Y is 0\.630783\sexact/);
+  await door.evaluate(() => [...document.querySelectorAll(".orbitals button")].find((each) => each.textContent === "Turn it").click());
+  await door.until((was) => [...document.querySelectorAll(".orbitals .stage")[2].querySelectorAll("polygon")].slice(0, 40).map((each) => each.getAttribute("points")).join() !== was, tipped);
+  await door.evaluate(() => [...document.querySelectorAll(".orbitals button")].find((each) => each.textContent === "Hold it").click());
+  const held = await door.evaluate(drawn);
+  await new Promise((done) => setTimeout(done, 200));
+  assert.equal(await door.evaluate(drawn), held);
+  assert.ok(turn);
+}, { fragment: IRON });
+
+everyDoor("under reduced motion the view in space stands still and can be turned by hand only", async (door) => {
+  await openTurning(door);
+  assert.equal(await door.evaluate(() => [...document.querySelectorAll(".orbitals button")].some((each) => each.textContent === "Turn it")), false);
+  assert.equal((await door.page.$$(".orbitals input[type=range]")).length, 2);
+}, { fragment: IRON, reducedMotion: true });
+
 for (const width of [360, 820, 1400]) {
   for (const dark of [false, true]) {
     everyDoor(`axe finds nothing with orbitals open, ${width} px, ${dark ? "dark" : "light"}`, async (door) => {
       await openOrbitals(door);
       for (const part of ["Shape of", "Slater integrals", "Energy, convergence"]) await openPart(door, part);
       await door.until(() => document.querySelectorAll(".orbitals .stage svg").length > 1);
+      await openPart(door, "Turning view");
       assert.deepEqual(await door.axe(), []);
       assert.equal(await door.scrollsSideways(), false);
       assert.deepEqual(door.troubles, []);

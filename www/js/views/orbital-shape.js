@@ -3,8 +3,9 @@
 import { element } from "../dom.js";
 import { angularLayout } from "../plot/angular.js";
 import { picture } from "../plot/picture.js";
+import { tips, turningLayout } from "../plot/turning.js";
 import { dataTable } from "../table.js";
-import { select } from "./fold.js";
+import { fold, select } from "./fold.js";
 
 const LETTERS = "spdfghiklmnoqrtuv";
 
@@ -36,7 +37,78 @@ export function shapeNode(found, sections, context) {
             { name: "Y", type: "number", kind: answer.kind, value: (row) => row.value },
           ],
         }),
-      }).node);
+      }).node, fold(context, "orbitals:turning", ["Turning view"], () => turning(section, answer.kind, wanted, context)));
     }
   }
+}
+
+// The same in space. It is still until somebody turns it, and on paper it stands as it was left.
+function turning(section, kind, l, context) {
+  const name = `Angular part of ${LETTERS[l] ?? `ℓ = ${l}`} with |m| = ${section.m}, in space`;
+  const turn = slider(context, "orbitals:turn", "Turned about the axis (°)", 355, 30, draw);
+  const tip = slider(context, "orbitals:tip", "Axis tipped towards you (°)", 90, 20, draw);
+  const layout = () => turningLayout({ section, kind, turn: turn.value(), tip: tip.value() });
+  const shown = picture({
+    context, name: [name], zoomable: false, layout: layout(),
+    table: () => dataTable({
+      caption: [name], context, file: name, rows: tips(section),
+      columns: [
+        { name: "lobe: angle from the axis", unit: "°", type: "number", value: (row) => row.theta },
+        { name: "angle around the axis", unit: "°", type: "number", value: (row) => row.phi },
+        { name: "Y", type: "number", kind, value: (row) => row.value },
+      ],
+    }),
+    rest: "Distance from the middle is the size of the real spherical harmonic; solid lobes are positive, those drawn in lines negative. The arrow keys go from lobe to lobe.",
+  });
+  const going = element("button", { type: "button", class: "word", text: "Turn it" });
+  let frame = 0;
+  let before = 0;
+  going.addEventListener("click", () => (frame === 0 ? start() : hold()));
+  const still = window.matchMedia("(prefers-reduced-motion: reduce)").matches;
+  return [element("div", { class: "choices" }, turn.node, tip.node, still ? null : going), shown.node];
+
+  function draw() {
+    shown.redraw({ layout: layout() });
+  }
+  function start() {
+    going.textContent = "Hold it";
+    before = performance.now();
+    frame = requestAnimationFrame(step);
+  }
+  function hold() {
+    cancelAnimationFrame(frame);
+    frame = 0;
+    going.textContent = "Turn it";
+  }
+  function step(now) {
+    if (!shown.node.isConnected || shown.node.offsetParent === null) return hold();
+    // Once around in twelve seconds; a shape that is round about its axis is tipped instead.
+    const degrees = ((now - before) * 30) / 1000;
+    if (degrees >= 1) {
+      before = now;
+      if (section.m === 0) tip.set((tip.value() + degrees) % 90);
+      else turn.set((turn.value() + degrees) % 360);
+      draw();
+    }
+    frame = requestAnimationFrame(step);
+  }
+}
+
+// An angle that is drawn along a line, remembered like a fold.
+function slider(context, key, label, most, usual, act) {
+  const box = element("input", { type: "range", min: "0", max: String(most), step: "5", value: String(context.view?.get(key) ?? usual) });
+  let exact = Number(box.value);
+  box.addEventListener("input", () => {
+    exact = Number(box.value);
+    context.view?.set(key, box.value);
+    act();
+  });
+  return {
+    node: element("label", { class: "choose" }, element("span", { text: label }), box),
+    value: () => exact,
+    set(value) {
+      exact = value;
+      box.value = String(value);
+    },
+  };
 }
