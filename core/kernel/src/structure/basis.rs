@@ -4,7 +4,7 @@
 //! one after another to S and L: (((a S_a L_a), b S_b L_b) S₁L₁, c S_c L_c) … SL. As a product of
 //! creation operators it keeps that order too, which fixes all phases between configurations.
 
-use super::bounds::{MOST_CONFIGURATIONS, MOST_LS_STATES, MOST_SUBSHELLS};
+use super::bounds::{MOST_CONFIGURATIONS, MOST_LS_STATES, MOST_PRODUCTS, MOST_SUBSHELLS};
 use super::estimate::{Estimate, estimate};
 use crate::angular::equivalent::{EquivalentTerm, classify};
 use crate::problem::Problem;
@@ -318,12 +318,18 @@ fn within_bounds(expected: &Estimate) -> Result<(), Problem> {
             expected.ls_states
         )));
     }
+    if expected.products > MOST_PRODUCTS {
+        return Err(too_large(&format!(
+            "The electrostatic coefficients take {} products.",
+            expected.products
+        )));
+    }
     Ok(())
 }
 
 pub(super) fn too_large(message: &str) -> Problem {
     Problem::new("basis-too-large", message, 0, 0).bound(format!(
-        "at most {MOST_SUBSHELLS} subshells, {MOST_CONFIGURATIONS} configurations and {MOST_LS_STATES} LS-coupled states"
+        "at most {MOST_SUBSHELLS} subshells, {MOST_CONFIGURATIONS} configurations, {MOST_LS_STATES} LS-coupled states and {MOST_PRODUCTS} products"
     ))
 }
 
@@ -362,6 +368,7 @@ mod tests {
         );
         assert_eq!(code(&[3, 3, 3, 3], &[vec![7, 7, 7, 7]]), "basis-too-large");
         assert_eq!(code(&[1; 100], &[vec![0; 100]]), "basis-too-large");
+        assert_eq!(code(&[49, 49], &[vec![2, 1]]), "basis-too-large");
     }
 
     #[test]

@@ -14,3 +14,6 @@ pub const MOST_ROWS: u64 = 3000;
 
 /// LS-coupled states up to which they are counted.
 pub const MOST_COUNTED: u64 = 100_000_000;
+
+/// Products that make electrostatic coefficients: some ten seconds.
+pub const MOST_PRODUCTS: u64 = 3_000_000_000;

@@ -106,7 +106,7 @@ impl Connection {
         entries: &mut Vec<Entry>,
     ) {
         let mut push = |parameter: usize, value: f64| {
-            if value.abs() > ZERO {
+            if value.abs() > ZERO || value.is_nan() {
                 entries.push(Entry {
                     parameter,
                     row,

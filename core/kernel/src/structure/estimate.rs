@@ -21,6 +21,9 @@ pub struct Estimate {
     pub largest: u64,
     /// Σ n² over the blocks of equal S and L: places of electrostatic coefficients.
     pub electrostatic_places: u64,
+    /// Products that make the electrostatic coefficients, some nanoseconds each: those places times
+    /// Σ 2(2ℓ_<+1)² over the pairs of open subshells, ranks of the tensors times integrals.
+    pub products: u64,
     /// Bytes at most at one time: the largest matrix with its eigenvectors and what the eigensolver
     /// works with, three square matrices, all eigenvectors kept, and the coefficients at 24 bytes
     /// with six integrals at each place.
@@ -66,7 +69,27 @@ pub fn estimate(subshells: &[u8], configurations: &[Vec<u32>]) -> Result<Estimat
             add(&mut totals, total, many);
         }
     }
-    Ok(sizes(&totals))
+    let mut found = sizes(&totals);
+    let each = configurations.iter().map(|c| products(subshells, c)).max();
+    found.products = found.electrostatic_places.saturating_mul(each.unwrap_or(0));
+    Ok(found)
+}
+
+/// Products for one pair of states of a configuration.
+fn products(subshells: &[u8], occupations: &[u32]) -> u64 {
+    let open: Vec<u64> = subshells
+        .iter()
+        .zip(occupations)
+        .filter(|&(&l, &electrons)| (1..4 * u32::from(l) + 2).contains(&electrons))
+        .map(|(&l, _)| u64::from(l))
+        .collect();
+    let pairs = open
+        .iter()
+        .enumerate()
+        .flat_map(|(place, &one)| open.iter().skip(place + 1).map(move |&two| one.min(two)));
+    // What every pair of states costs.
+    let ground = 10;
+    pairs.fold(ground, |sum, l| sum + 2 * (2 * l + 1) * (2 * l + 1))
 }
 
 fn add(counts: &mut Counts, key: Coupled, many: u64) {

@@ -7,6 +7,7 @@ use super::electrostatic::{self, Entry};
 use super::parameters::{Integral, Parameter};
 use super::spin_orbit::{self, Joint};
 use super::symbols::Symbols;
+use crate::angular::NINE_J_CAPACITY;
 use crate::problem::Problem;
 use nalgebra::DMatrix;
 
@@ -46,7 +47,8 @@ impl Hamiltonian {
     /// The coefficients of E_av, F^k, G^k, R^k, ⟨a|h|c⟩ and ζ in this basis.
     ///
     /// # Errors
-    /// Those of [`crate::angular::parentage::parents`].
+    /// Those of [`crate::angular::parentage::parents`]; `angular-momentum-too-large` where a 9j symbol
+    /// is beyond what is computed.
     pub fn new(basis: Basis) -> Result<Self, Problem> {
         let mut workshop = Workshop::default();
         let mut parameters: Vec<Parameter> = (0..basis.configurations().len())
@@ -58,6 +60,11 @@ impl Hamiltonian {
             .collect();
         let electrostatic = electrostatic::coefficients(&basis, &mut workshop, &mut parameters)?;
         let spin_orbit = spin_orbit::coefficients(&basis, &mut workshop, &mut parameters)?;
+        let finite = |entries: &Vec<Entry>| entries.iter().all(|entry| entry.value.is_finite());
+        let joints = spin_orbit.iter().map(|joint| &joint.entries);
+        if !electrostatic.iter().chain(joints).all(finite) {
+            return Err(beyond_symbols());
+        }
         Ok(Hamiltonian {
             basis,
             parameters,
@@ -183,4 +190,15 @@ fn not_finite() -> Problem {
         0,
         0,
     )
+}
+
+#[inline(never)]
+pub(super) fn beyond_symbols() -> Problem {
+    Problem::new(
+        "angular-momentum-too-large",
+        "The coupling of these subshells needs 9j symbols that are not computed.",
+        0,
+        0,
+    )
+    .bound(format!("angular momenta up to {}", NINE_J_CAPACITY / 2))
 }

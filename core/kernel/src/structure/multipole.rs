@@ -13,7 +13,7 @@
 use super::basis::{Basis, Coupled};
 use super::chain::{Chain, Workshop};
 use super::electrostatic::{Entry, electrons};
-use super::hamiltonian::Rows;
+use super::hamiltonian::{Rows, beyond_symbols};
 use super::recoupling::Electron;
 use super::shell_operators::{Ranks, multipole};
 use super::spin_orbit::Joint;
@@ -55,7 +55,8 @@ impl Multipole {
     /// Both must be built on the same list of subshells.
     ///
     /// # Errors
-    /// `subshells-differ`; those of [`crate::angular::parentage::parents`].
+    /// `subshells-differ`, `angular-momentum-too-large`; those of
+    /// [`crate::angular::parentage::parents`].
     pub fn new(left: &Basis, right: &Basis, rank: u8) -> Result<Self, Problem> {
         if left.subshells() != right.subshells() {
             return Err(Problem::new(
@@ -112,7 +113,7 @@ impl Multipole {
                         let place = bra.configuration * width + ket.configuration;
                         for (parameter, chain, factor) in chains.get(place).into_iter().flatten() {
                             let value = factor * chain.value(&mut workshop.symbols, bra, ket);
-                            if value.abs() > ZERO {
+                            if value.abs() > ZERO || value.is_nan() {
                                 entries.push(Entry {
                                     parameter: *parameter,
                                     row,
@@ -131,6 +132,10 @@ impl Multipole {
                     });
                 }
             }
+        }
+        let finite = |joint: &Joint| joint.entries.iter().all(|entry| entry.value.is_finite());
+        if !joints.iter().all(finite) {
+            return Err(beyond_symbols());
         }
         let totals = |basis: &Basis| basis.blocks().iter().map(|b| b.total).collect();
         Ok(Multipole {

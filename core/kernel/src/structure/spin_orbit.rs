@@ -104,7 +104,7 @@ fn add(
     }
     for (parameter, chain, factor) in chains.get(ket.configuration).into_iter().flatten() {
         let value = factor * chain.value(&mut workshop.symbols, bra, ket);
-        if value.abs() > ZERO {
+        if value.abs() > ZERO || value.is_nan() {
             entries.push(Entry {
                 parameter: *parameter,
                 row,

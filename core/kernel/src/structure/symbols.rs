@@ -12,15 +12,15 @@ enum Kind {
     Step,
 }
 
-/// A key that no symbol has: both tag bits set.
-const EMPTY: u64 = u64::MAX;
+/// A key that no symbol has: 126 bits of angular momenta and one of the kind leave one unset.
+const EMPTY: u128 = u128::MAX;
 
 /// Doubled angular momenta of a key are below this; others are computed each time.
-const KEY_LIMIT: i32 = 128;
+const KEY_LIMIT: i32 = 1 << 14;
 
 /// 6j symbols and coupling steps that were asked for before.
 pub struct Symbols {
-    slots: Vec<(u64, f64)>,
+    slots: Vec<(u128, f64)>,
     used: usize,
 }
 
@@ -54,14 +54,14 @@ impl Symbols {
     #[inline]
     fn kept(&mut self, kind: Kind, two_j: [i32; 9]) -> f64 {
         let mut key = match kind {
-            Kind::Six => 1_u64,
+            Kind::Six => 1_u128,
             Kind::Step => 0,
         };
         for value in two_j {
             if !(0..KEY_LIMIT).contains(&value) {
                 return compute(kind, two_j);
             }
-            key = (key << 7) | u64::from(value.unsigned_abs());
+            key = (key << 14) | u128::from(value.unsigned_abs());
         }
         let mask = self.slots.len() - 1;
         let mut place = scatter(key, mask);
@@ -79,7 +79,7 @@ impl Symbols {
         value
     }
 
-    fn keep(&mut self, key: u64, value: f64) {
+    fn keep(&mut self, key: u128, value: f64) {
         if self.used * 2 >= self.slots.len() {
             let larger = vec![(EMPTY, 0.0); self.slots.len() * 2];
             let old = std::mem::replace(&mut self.slots, larger);
@@ -91,7 +91,7 @@ impl Symbols {
         self.used += 1;
     }
 
-    fn insert(&mut self, key: u64, value: f64) {
+    fn insert(&mut self, key: u128, value: f64) {
         let mask = self.slots.len() - 1;
         let mut place = scatter(key, mask);
         while self.slots.get(place).is_some_and(|slot| slot.0 != EMPTY) {
@@ -104,8 +104,11 @@ impl Symbols {
 }
 
 /// Multiplication by 2⁶⁴ over the golden ratio spreads neighbouring keys; the high bits are best.
-fn scatter(key: u64, mask: usize) -> usize {
-    usize::try_from(key.wrapping_mul(0x9E37_79B9_7F4A_7C15) >> 32).unwrap_or(0) & mask
+fn scatter(key: u128, mask: usize) -> usize {
+    const GOLDEN: u64 = 0x9E37_79B9_7F4A_7C15;
+    let (high, low) = ((key >> 64) as u64, key as u64);
+    let mixed = (high.wrapping_mul(GOLDEN) ^ (high >> 29) ^ low).wrapping_mul(GOLDEN);
+    usize::try_from(mixed >> 32).unwrap_or(0) & mask
 }
 
 fn compute(kind: Kind, nine: [i32; 9]) -> f64 {
