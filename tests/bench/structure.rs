@@ -1,7 +1,8 @@
 //! Times of the levels of configurations: coefficients from nothing, then all levels; and of lines.
 
 use rungline_core::structure::{
-    Basis, Hamiltonian, Integral, Levels, Multipole, Parameter, amplitudes, estimate,
+    Basis, Hamiltonian, Integral, JjTransformation, Levels, Multipole, Parameter, amplitudes,
+    estimate,
 };
 use std::time::Instant;
 
@@ -62,6 +63,26 @@ fn measure_iron() {
     println!("d6 s2 + d7 s, d6 s p + d7 p, {lines} E1 lines: {best:.2} ms");
 }
 
+/// The composition of every level in jj coupling, the levels being there.
+fn measure_jj(name: &str, shells: &[u8], configurations: &[Vec<u32>]) {
+    let (basis, levels) = solve(shells, configurations, &mut [0.0; 2]);
+    let start = Instant::now();
+    let jj = JjTransformation::new(&basis).expect("jj states");
+    let mut leading = 0.0;
+    for rows in &levels.rows {
+        let scheme = jj.of(&basis, rows);
+        for level in levels.levels.iter().filter(|l| l.two_j == rows.two_j) {
+            leading += scheme
+                .composition(level)
+                .first()
+                .map_or(0.0, |share| share.1);
+        }
+    }
+    let time = start.elapsed().as_secs_f64() * 1e3;
+    let mean = leading / levels.levels.len() as f64;
+    println!("{name}, mean leading share in jj {mean:.1} %: {time:.2} ms");
+}
+
 fn main() {
     measure("d5", &[2], &[vec![5]]);
     measure("f7", &[3], &[vec![7]]);
@@ -75,4 +96,7 @@ fn main() {
     measure("f4 d s", &[3, 2, 0], &[vec![4, 1, 1]]);
     measure("f7 d", &[3, 2], &[vec![7, 1]]);
     measure_iron();
+    measure_jj("f7", &[3], &[vec![7]]);
+    measure_jj("d6 s p + d7 p", &[2, 0, 1], &[vec![6, 1, 1], vec![7, 0, 1]]);
+    measure_jj("f7 d", &[3, 2], &[vec![7, 1]]);
 }
