@@ -13,7 +13,7 @@ fn value(parameter: &Parameter) -> f64 {
         Integral::Exchange { k, .. } => 9_000.0 / f64::from(k + 1),
         Integral::SpinOrbit { a } => 500.0 / (a + 1) as f64,
         Integral::Mixing { k, .. } => 6_000.0 / f64::from(k + 1),
-        Integral::OneElectron { .. } => 0.0,
+        Integral::OneElectron { .. } | Integral::Effective { .. } => 0.0,
     }
 }
 

@@ -1,6 +1,6 @@
 //! Term energies in closed form, the trace rule, Landé's interval rule and the limit of jj coupling.
 
-use rungline_core::structure::{Basis, Hamiltonian, Integral, Level, Levels, estimate};
+use rungline_core::structure::{Basis, Effective, Hamiltonian, Integral, Level, Levels, estimate};
 use rungline_tests::{Row, report};
 
 /// 2S, L and the coefficient of each parameter.
@@ -317,6 +317,56 @@ fn strong_spin_orbit_coupling_gives_the_energies_of_jj_coupling() {
             source: "ζ ℓ/2 and −ζ (ℓ+1)/2 for each electron, exact".to_owned(),
         },
     );
+}
+
+/// α shifts the terms of a subshell by L(L+1), and no average; β and γ are there for d and f alone.
+#[test]
+fn effective_interactions_keep_the_average() {
+    let count = |shells: &[u8], electrons: &[u32], kind: Effective| {
+        let basis = Basis::new(shells, &[electrons.to_vec()]).expect("a basis");
+        let own = Hamiltonian::with_effective(basis).expect("coefficients");
+        let is_it = |integral: Integral| matches!(integral, Integral::Effective { kind: k, .. } if k == kind);
+        let values = own.values(|parameter| f64::from(u8::from(is_it(parameter.integral))));
+        let levels = Levels::solve(&own, &values).expect("levels");
+        let weight = |level: &Level| f64::from(level.two_j + 1);
+        let mean: f64 = levels.levels.iter().map(|l| weight(l) * l.energy).sum();
+        assert!(mean.abs() < 1e-9);
+        // Without other interactions a level is one state, shifted by its subshells' terms.
+        let mut offset: Option<f64> = None;
+        for level in &levels.levels {
+            let state = &own.basis().states()[levels.composition(level)[0].0];
+            let factor = |subshell: usize| {
+                let term = &own.basis().terms(0, subshell)[state.terms[subshell]];
+                let l = f64::from(term.l_total);
+                match (kind, shells[subshell]) {
+                    (Effective::Alpha, 1..=3) => l * (l + 1.0),
+                    (Effective::Beta, 2) | (Effective::Gamma, 3) => {
+                        term.rotation_casimir.expect("W")
+                    }
+                    (Effective::Beta, 3) => term.g2_casimir.expect("U"),
+                    _ => 0.0,
+                }
+            };
+            let shift: f64 = (0..shells.len())
+                .filter(|&a| own.basis().terms(0, a).len() > 1)
+                .map(factor)
+                .sum();
+            let here = level.energy - shift;
+            assert!((here - *offset.get_or_insert(here)).abs() < 1e-11);
+        }
+        values.iter().filter(|&&value| value == 1.0).count()
+    };
+    for (shells, electrons, expected) in [
+        (vec![1], vec![3], [1, 0, 0]),
+        (vec![2], vec![3], [1, 1, 0]),
+        (vec![3], vec![4], [1, 1, 1]),
+        (vec![2, 1], vec![2, 2], [2, 1, 0]),
+        (vec![3, 2, 0], vec![2, 1, 2], [1, 1, 1]),
+        (vec![0], vec![1], [0, 0, 0]),
+    ] {
+        let kinds = [Effective::Alpha, Effective::Beta, Effective::Gamma];
+        assert_eq!(kinds.map(|kind| count(&shells, &electrons, kind)), expected);
+    }
 }
 
 #[test]

@@ -280,6 +280,7 @@ fn value(parameter: &Parameter, averages: &[f64]) -> f64 {
         Integral::SpinOrbit { a } => zeta(a),
         Integral::Mixing { k, a, b, c, d } => radial(k.into(), [a, b, c, d]),
         Integral::OneElectron { a, c } => single(a, c),
+        Integral::Effective { .. } => 0.0,
     }
 }
 

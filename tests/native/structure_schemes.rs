@@ -23,7 +23,7 @@ fn ordinary(parameter: &Parameter) -> f64 {
         Integral::SpinOrbit { a } => 0.4 / (a + 1) as f64,
         Integral::Direct { k, .. } | Integral::Exchange { k, .. } => 1.0 / f64::from(k + 1),
         Integral::Mixing { k, .. } => 0.3 / f64::from(k + 1),
-        Integral::OneElectron { .. } => 0.0,
+        Integral::OneElectron { .. } | Integral::Effective { .. } => 0.0,
     }
 }
 

@@ -270,7 +270,7 @@ fn files_of_j_keep_their_sums_whatever_mixes() {
             Integral::Mixing { k, .. } => mixing / f64::from(k + 1),
             Integral::Direct { k, .. } | Integral::Exchange { k, .. } => 1.0 / f64::from(k + 1),
             Integral::Average => parameter.first as f64,
-            Integral::OneElectron { .. } => 0.0,
+            Integral::OneElectron { .. } | Integral::Effective { .. } => 0.0,
         });
         let levels = Levels::solve(&hamiltonian, &values).expect("levels");
         Side {

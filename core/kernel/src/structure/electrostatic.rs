@@ -7,10 +7,10 @@
 //! Source: Slater, *Quantum Theory of Atomic Structure* (1960); second quantisation as in Judd,
 //! *Second Quantization and Atomic Spectroscopy* (1967).
 
-use super::basis::{Basis, State};
+use super::basis::{Basis, Coupled, State};
 use super::chain::{Chain, Workshop};
 use super::matrix::Table;
-use super::parameters::{Integral, Parameter};
+use super::parameters::{Effective, Integral, Parameter};
 use super::recoupling::{Electron, sorted};
 use super::shell_operators::{Ranks, multipole};
 use super::symbols::signed;
@@ -66,6 +66,7 @@ pub fn coefficients(
     basis: &Basis,
     workshop: &mut Workshop,
     parameters: &mut Vec<Parameter>,
+    with_effective: bool,
 ) -> Result<Vec<Vec<Entry>>, Problem> {
     let count = basis.configurations().len();
     let mut connections = Vec::with_capacity(count * count);
@@ -73,7 +74,13 @@ pub fn coefficients(
         for second in 0..count {
             connections.push(match second.cmp(&first) {
                 std::cmp::Ordering::Less => Connection::default(),
-                std::cmp::Ordering::Equal => diagonal(basis, workshop, first, parameters)?,
+                std::cmp::Ordering::Equal => {
+                    let mut own = diagonal(basis, workshop, first, parameters)?;
+                    if with_effective {
+                        effective(basis, first, parameters, &mut own.within);
+                    }
+                    own
+                }
                 std::cmp::Ordering::Greater => {
                     between(basis, workshop, (first, second), parameters)?
                 }
@@ -214,6 +221,47 @@ fn diagonal(
         }
     }
     Ok(connection)
+}
+
+/// α, β and γ of every subshell that has them.
+fn effective(
+    basis: &Basis,
+    place: usize,
+    parameters: &mut Vec<Parameter>,
+    within: &mut Vec<Within>,
+) {
+    for electron in electrons(basis) {
+        let a = electron.subshell;
+        let terms = basis.terms(place, a);
+        if terms.len() < 2 {
+            continue;
+        }
+        let weights = terms.iter().map(|term| Coupled::of(term).degeneracy());
+        let weights: Vec<f64> = weights.collect();
+        let mut tables = Vec::new();
+        for kind in [Effective::Alpha, Effective::Beta, Effective::Gamma] {
+            let factors = terms.iter().map(|term| kind.factor(term, electron.l));
+            let Some(factors) = factors.collect::<Option<Vec<f64>>>() else {
+                continue;
+            };
+            let weighted = factors.iter().zip(&weights).map(|(f, w)| f * w);
+            let mean = weighted.sum::<f64>() / weights.iter().sum::<f64>();
+            let value = |row: usize| factors.get(row).map_or(0.0, |factor| factor - mean);
+            let table = Table::from_fn(terms.len(), terms.len(), |row, column| {
+                if row == column { value(row) } else { 0.0 }
+            });
+            parameters.push(Parameter {
+                first: place,
+                second: place,
+                integral: Integral::Effective { kind, a },
+            });
+            tables.push((parameters.len() - 1, table));
+        }
+        within.push(Within {
+            subshell: a,
+            tables,
+        });
+    }
 }
 
 /// R^k and ⟨a|h|c⟩ between two configurations.

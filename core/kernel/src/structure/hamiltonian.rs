@@ -50,6 +50,18 @@ impl Hamiltonian {
     /// Those of [`crate::angular::parentage::parents`]; `angular-momentum-too-large` where a 9j symbol
     /// is beyond what is computed.
     pub fn new(basis: Basis) -> Result<Self, Problem> {
+        Self::build(basis, false)
+    }
+
+    /// The same with α, β and γ of every subshell that has them among the parameters.
+    ///
+    /// # Errors
+    /// Those of [`Hamiltonian::new`].
+    pub fn with_effective(basis: Basis) -> Result<Self, Problem> {
+        Self::build(basis, true)
+    }
+
+    fn build(basis: Basis, with_effective: bool) -> Result<Self, Problem> {
         let mut workshop = Workshop::default();
         let mut parameters: Vec<Parameter> = (0..basis.configurations().len())
             .map(|place| Parameter {
@@ -58,7 +70,8 @@ impl Hamiltonian {
                 integral: Integral::Average,
             })
             .collect();
-        let electrostatic = electrostatic::coefficients(&basis, &mut workshop, &mut parameters)?;
+        let electrostatic =
+            electrostatic::coefficients(&basis, &mut workshop, &mut parameters, with_effective)?;
         let spin_orbit = spin_orbit::coefficients(&basis, &mut workshop, &mut parameters)?;
         let finite = |entries: &Vec<Entry>| entries.iter().all(|entry| entry.value.is_finite());
         let joints = spin_orbit.iter().map(|joint| &joint.entries);

@@ -1,6 +1,6 @@
 //! Levels of configurations with any number of open subshells, in intermediate coupling.
 //!
-//! H = E_av + Σ F^k f_k + Σ G^k g_k + Σ R^k r_k + Σ ζ ℓ·s in a basis of LS-coupled states, several
+//! H = E_av + Σ F^k f_k + Σ G^k g_k + Σ R^k r_k + Σ ζ ℓ·s, on request with α, β and γ, in a basis of LS-coupled states, several
 //! configurations of one parity together. Operators are products of creation and annihilation
 //! operators, whose reduced elements within a subshell come from fractional parentage; subshells are
 //! coupled one after another. Electrostatic coefficients belong to S and L, spin–orbit ones to pairs
@@ -32,7 +32,7 @@ pub use estimate::{Estimate, estimate};
 pub use hamiltonian::{Hamiltonian, Rows};
 pub use levels::{Level, Levels, lande, solve_j};
 pub use multipole::{Elements, Multipole, Transfer, magnetic_elements};
-pub use parameters::{Integral, Parameter};
+pub use parameters::{Effective, Integral, Parameter};
 pub use schemes::{JjCoupled, JjTransformation, JkCoupled, Scheme, jk_scheme};
 pub use spin_orbit::Joint;
 pub use subshell_jj::JjState;

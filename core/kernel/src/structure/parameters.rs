@@ -1,5 +1,7 @@
 //! The radial integrals that energies are linear in.
 
+use crate::angular::equivalent::EquivalentTerm;
+
 /// A named radial integral; letters are places in the list of subshells.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub enum Integral {
@@ -28,6 +30,13 @@ pub enum Integral {
         /// The subshell.
         a: usize,
     },
+    /// An effective interaction within one subshell: what distant configurations leave behind.
+    Effective {
+        /// Which one.
+        kind: Effective,
+        /// The subshell.
+        a: usize,
+    },
     /// R^k(ab,cd) = ∬ P_a(1)P_b(2) (r_<^k/r_>^(k+1)) P_c(1)P_d(2); a and b of the one configuration,
     /// c and d of the other, a ≤ b, and c ≤ d where a = b.
     Mixing {
@@ -50,6 +59,35 @@ pub enum Integral {
         /// The subshell that the second configuration has more of.
         c: usize,
     },
+}
+
+/// The effective interactions of two electrons of one subshell, each less its mean over the states of
+/// the subshell, so that averages stay averages.
+///
+/// Source: Trees, Phys. Rev. 83, 756 (1951), for α; Rajnak & Wybourne, Phys. Rev. 132, 280 (1963),
+/// for β and γ. Casimir operators with the eigenvalues of [`crate::angular::equivalent`].
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub enum Effective {
+    /// α L(L+1), p, d and f.
+    Alpha,
+    /// β times Casimir's operator of R(5) for d, of G₂ for f.
+    Beta,
+    /// γ times Casimir's operator of R(7) for f.
+    Gamma,
+}
+
+impl Effective {
+    /// What the parameter is multiplied by in a term, before the mean is taken off; nothing where
+    /// the subshell has no such parameter.
+    pub fn factor(self, term: &EquivalentTerm, l: u8) -> Option<f64> {
+        let total = f64::from(term.l_total);
+        match (self, l) {
+            (Effective::Alpha, 1..=3) => Some(total * (total + 1.0)),
+            (Effective::Beta, 2) | (Effective::Gamma, 3) => term.rotation_casimir,
+            (Effective::Beta, 3) => term.g2_casimir,
+            _ => None,
+        }
+    }
 }
 
 /// A radial integral of one configuration, or of two that it mixes.
