@@ -391,3 +391,26 @@ fn bad_values_are_faults() {
     // Finite, but not their sums.
     assert_eq!(code(&own.values(|_| f64::MAX)), "levels-not-found");
 }
+
+/// Every shell that is allowed, alone, beside an s electron and beside another of its kind.
+#[test]
+fn high_orbital_momenta_are_computed() {
+    for l in [4_u8, 5, 9, 20, 49] {
+        let full = 4 * u32::from(l) + 2;
+        for electrons in [0, 1, 2, full - 1, full] {
+            for (shells, occupations) in [
+                (vec![l], vec![electrons]),
+                (vec![0, l], vec![1, electrons]),
+                (vec![l, 1], vec![electrons, 5]),
+            ] {
+                let own = hamiltonian(&shells, &[occupations]);
+                let values = any_values(&own);
+                let levels = Levels::solve(&own, &values).expect("levels");
+                let weight = |level: &Level| f64::from(level.two_j + 1);
+                let sum: f64 = levels.levels.iter().map(|l| weight(l) * l.energy).sum();
+                let states: f64 = levels.levels.iter().map(weight).sum();
+                assert!((sum / states - values[0]).abs() < 1e-10, "{l} {electrons}");
+            }
+        }
+    }
+}

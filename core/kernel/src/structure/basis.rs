@@ -4,7 +4,7 @@
 //! one after another to S and L: (((a S_a L_a), b S_b L_b) S₁L₁, c S_c L_c) … SL. As a product of
 //! creation operators it keeps that order too, which fixes all phases between configurations.
 
-use super::bounds::{MOST_CONFIGURATIONS, MOST_LS_STATES, MOST_PRODUCTS, MOST_SUBSHELLS};
+use super::bounds::{MOST_CONFIGURATIONS, MOST_L, MOST_LS_STATES, MOST_PRODUCTS, MOST_SUBSHELLS};
 use super::estimate::{Estimate, estimate};
 use crate::angular::equivalent::{EquivalentTerm, classify};
 use crate::problem::Problem;
@@ -103,7 +103,7 @@ impl Basis {
     ///
     /// # Errors
     /// `no-configuration`, `configurations-of-different-length`, `subshell-over-capacity`,
-    /// `electron-numbers-differ`, `parities-differ`, `configuration-twice`, `parentage-too-large`
+    /// `angular-momentum-too-large` for ℓ > 49, `electron-numbers-differ`, `parities-differ`, `configuration-twice`, `parentage-too-large`
     /// for ℓ > 3 with more than two electrons and more than one hole, and `basis-too-large`.
     pub fn new(subshells: &[u8], configurations: &[Vec<u32>]) -> Result<Basis, Problem> {
         check(subshells, configurations)?;
@@ -289,6 +289,15 @@ pub(super) fn check(subshells: &[u8], configurations: &[Vec<u32>]) -> Result<(),
 }
 
 fn within_capacity(l: u8, electrons: u32) -> Result<(), Problem> {
+    if l > MOST_L {
+        return Err(Problem::new(
+            "angular-momentum-too-large",
+            format!("A subshell of ℓ = {l} is not computed."),
+            0,
+            0,
+        )
+        .bound(format!("ℓ up to {MOST_L}")));
+    }
     let capacity = 4 * u32::from(l) + 2;
     if electrons > capacity {
         return Err(Problem::new(
@@ -357,6 +366,7 @@ mod tests {
         );
         assert_eq!(code(&[0], &[vec![3]]), "subshell-over-capacity");
         assert_eq!(code(&[4], &[vec![3]]), "parentage-too-large");
+        assert_eq!(code(&[50], &[vec![1]]), "angular-momentum-too-large");
         assert_eq!(
             code(&[0, 1], &[vec![1, 1], vec![1, 2]]),
             "electron-numbers-differ"

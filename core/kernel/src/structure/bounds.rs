@@ -6,6 +6,9 @@ pub const MOST_SUBSHELLS: usize = 32;
 /// Configurations of one parity.
 pub const MOST_CONFIGURATIONS: usize = 64;
 
+/// ℓ of an electron: n ≤ 50.
+pub const MOST_L: u8 = 49;
+
 /// LS-coupled states of one parity, not counting J and M.
 pub const MOST_LS_STATES: u64 = 60_000;
 

@@ -26,7 +26,9 @@ mod ties;
 mod transitions;
 
 pub use basis::{Basis, Block, Coupled, State};
-pub use bounds::{MOST_CONFIGURATIONS, MOST_LS_STATES, MOST_PRODUCTS, MOST_ROWS, MOST_SUBSHELLS};
+pub use bounds::{
+    MOST_CONFIGURATIONS, MOST_L, MOST_LS_STATES, MOST_PRODUCTS, MOST_ROWS, MOST_SUBSHELLS,
+};
 pub use electrostatic::Entry;
 pub use estimate::{Estimate, estimate};
 pub use hamiltonian::{Hamiltonian, Rows};
