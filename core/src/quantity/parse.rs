@@ -278,7 +278,7 @@ fn within(
         .filter(|unit| unit.symbol != own)
         .map_or(String::new(), |_| format!(" ({} {own})", shortened(value)));
     let size = if low { "small" } else { "large" };
-    Err(Problem::new(
+    let mut problem = Problem::new(
         "quantity-out-of-range",
         format!(
             "{typed}{in_own} is too {size} for {}.",
@@ -287,9 +287,13 @@ fn within(
         start,
         end,
     )
-    .bound(bound_text(dimension))
-    .way(format!("Use {nearest}"), with(text, start, end, &nearest))
-    .way(
+    .bound(bound_text(dimension));
+    // A core without polarisability or size is no core: zero would only lead to the next fault.
+    let no_way = low && matches!(dimension, Dimension::Polarisability | Dimension::Radius);
+    if !no_way {
+        problem = problem.way(format!("Use {nearest}"), with(text, start, end, &nearest));
+    }
+    Err(problem.way(
         format!("Use {}", dimension.usual()),
         with(text, start, end, dimension.usual()),
     ))

@@ -65,7 +65,7 @@ impl Atom {
             return Err(fault(
                 "nuclear-charge-out-of-range",
                 format!("Radial functions are not computed for Z = {}.", self.z),
-                format!("Z = 1 to {HEAVIEST}"),
+                format!("They are computed for Z = 1 to {HEAVIEST}."),
             ));
         }
         let electrons = self.electrons();
@@ -73,7 +73,7 @@ impl Atom {
             return Err(fault(
                 "no-electrons",
                 "There is no electron to compute a radial function for.".into(),
-                "at least one electron".into(),
+                "At least one electron is needed.".into(),
             ));
         }
         if electrons > u32::from(self.z) + 1 {
@@ -83,7 +83,7 @@ impl Atom {
                     "A nucleus with Z = {} does not bind {electrons} electrons.",
                     self.z
                 ),
-                format!("at most {} electrons, charge −1", u32::from(self.z) + 1),
+                format!("It binds at most {}, to charge −1.", u32::from(self.z) + 1),
             ));
         }
         let mut seen: Vec<Orbital> = Vec::with_capacity(self.subshells.len());
@@ -93,14 +93,14 @@ impl Atom {
                 return Err(fault(
                     "orbital-out-of-range",
                     format!("The radial function of {orbital} is not computed."),
-                    format!("n up to {MAX_N}, ℓ up to {MAX_L}"),
+                    format!("With several electrons n goes to {MAX_N} and ℓ to {MAX_L}."),
                 ));
             }
             if seen.contains(&orbital) {
                 return Err(fault(
                     "repeated-subshell",
                     format!("{orbital} occurs twice."),
-                    "each subshell once".into(),
+                    "Each subshell stands once.".into(),
                 ));
             }
             seen.push(orbital);

@@ -59,7 +59,7 @@ impl Polarisation {
                     "A core polarisability of {} a0^3 has no meaning.",
                     self.alpha
                 ),
-                "a polarisability above 0".into(),
+                "A polarisability is above 0.".into(),
             ));
         }
         if !positive(self.radius) {
@@ -69,7 +69,7 @@ impl Polarisation {
                     "A cut-off radius of {} a0 leaves the potential without bound.",
                     self.radius
                 ),
-                "a cut-off radius above 0".into(),
+                "A cut-off radius is above 0.".into(),
             ));
         }
         // V_p is deepest at r = ρ/√2.
@@ -82,7 +82,9 @@ impl Polarisation {
                     "A core polarisability of {} a0^3 with a cut-off radius of {} a0 makes a well of its own, {depth:.3e} hartree deep.",
                     self.alpha, self.radius
                 ),
-                format!("a well of at most {DEEPEST} hartree: a larger cut-off radius"),
+                format!(
+                    "The well of a core is at most {DEEPEST} hartree deep here; a larger cut-off radius makes it shallower."
+                ),
             ));
         }
         Ok(())

@@ -144,7 +144,7 @@ fn not_bound(n: u8, l: u8) -> Problem {
     fault(
         "not-bound",
         format!("The {name} electron is not bound in this configuration."),
-        "every electron bound: take fewer electrons or another configuration".into(),
+        "Every electron has to be bound: take fewer electrons or another configuration.".into(),
     )
 }
 
@@ -158,7 +158,7 @@ fn not_converged(history: &[Progress]) -> Problem {
             "After {} iterations the orbitals still change by {last:.0e}.",
             history.len()
         ),
-        "a change below 1e-10: take another configuration or charge".into(),
+        "They count as found when they change by less than 1e-10; take another configuration or charge.".into(),
     )
 }
 
