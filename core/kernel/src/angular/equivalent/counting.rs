@@ -27,14 +27,21 @@ pub(super) fn states(l: u8, electrons: u32) -> u64 {
 pub(super) fn contents(l: u8, electrons: u32) -> Vec<Content> {
     let rows: Vec<Vec<u64>> = one_spin(l, electrons);
     let mut found = Vec::new();
+    // What ℓ^(v−2) has, by falling spin.
+    let mut smaller: Vec<Vec<u64>> = Vec::new();
     for seniority in (electrons % 2..=electrons).step_by(2) {
-        for two_s in (0..=seniority).rev().step_by(2) {
-            let mut by_l = terms(&rows, seniority, two_s);
-            if two_s + 2 <= seniority {
-                let fewer = terms(&rows, seniority - 2, two_s);
-                // The highest M of the larger shell lies higher, so L counts from the same end.
+        let mut all = Vec::new();
+        // States with M_S = S + 1, of which there are none above the largest spin.
+        let mut above = Vec::new();
+        for (place, two_s) in (0..=seniority).rev().step_by(2).enumerate() {
+            let here = weights(&rows, seniority, two_s);
+            let mut by_l = terms(&here, &above);
+            above = here;
+            all.push(by_l.clone());
+            // The highest M of the larger shell lies higher, so L counts from the same end.
+            if let Some(fewer) = place.checked_sub(1).and_then(|place| smaller.get(place)) {
                 for (count, less) in by_l.iter_mut().zip(fewer) {
-                    *count = count.saturating_sub(less);
+                    *count = count.saturating_sub(*less);
                 }
             }
             found.push(Content {
@@ -43,6 +50,7 @@ pub(super) fn contents(l: u8, electrons: u32) -> Vec<Content> {
                 by_l,
             });
         }
+        smaller = all;
     }
     found
 }
@@ -72,22 +80,21 @@ fn one_spin(l: u8, most: u32) -> Vec<Vec<u64>> {
     rows
 }
 
-/// How often each L occurs in ℓ^N with spin S.
-fn terms(rows: &[Vec<u64>], electrons: u32, two_s: u32) -> Vec<u64> {
-    // States with M_S = S less those with M_S = S + 1 have spin S exactly; the same for M_L.
-    let here = weights(rows, electrons, two_s);
-    let above = weights(rows, electrons, two_s + 2);
-    let mut by_m = here;
-    // Both are centred on M_L = 0 and equally long.
-    for (count, less) in by_m.iter_mut().zip(above) {
-        *count = count.saturating_sub(less);
+/// How often each L occurs with spin S, from the states with M_S = S and with M_S = S + 1, both by
+/// M_L from one end to the other.
+fn terms(here: &[u64], above: &[u64]) -> Vec<u64> {
+    let middle = here.len() / 2;
+    let more = above.iter().copied().chain(std::iter::repeat(0));
+    let exactly = |(count, more): (&u64, u64)| count.saturating_sub(more);
+    let mut by_l: Vec<u64> = here.iter().zip(more).skip(middle).map(exactly).collect();
+    // The same for M_L.
+    let mut higher = 0;
+    for count in by_l.iter_mut().rev() {
+        let with = *count;
+        *count = with.saturating_sub(higher);
+        higher = with;
     }
-    let mut upper = by_m.split_off(by_m.len() / 2);
-    let shifted: Vec<u64> = upper.iter().skip(1).copied().chain([0]).collect();
-    for (count, less) in upper.iter_mut().zip(shifted) {
-        *count = count.saturating_sub(less);
-    }
-    upper
+    by_l
 }
 
 /// States of ℓ^N with M_S by rising M_L, from −Nℓ to Nℓ.

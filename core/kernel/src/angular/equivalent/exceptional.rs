@@ -75,9 +75,33 @@ impl Character {
     }
 }
 
-/// The representations U in W of seniority v and spin S, in the order of their Casimir
-/// eigenvalues, each with how often L = 0, 1, 2 … occurs in it; as often as it occurs in W.
-pub(super) fn branching(seniority: u32, two_s: i32) -> Vec<([i32; 2], Vec<u64>)> {
+/// A representation U and how often L = 0, 1, 2 … occurs in it, as often as it occurs in a W.
+pub(super) type Part = ([i32; 2], Vec<u64>);
+
+/// The representations U in W of seniority v and spin S of f electrons, in the order of their
+/// Casimir eigenvalues.
+pub(super) fn branching(seniority: u32, two_s: i32) -> &'static [Part] {
+    BRANCHING
+        .iter()
+        .find(|(label, _)| *label == (seniority, two_s))
+        .map_or(&[], |(_, parts)| parts)
+}
+
+/// v and 2S of a W with its parts.
+type Branching = ((u32, i32), Vec<Part>);
+
+/// The branching of every seniority and spin.
+static BRANCHING: LazyLock<Vec<Branching>> = LazyLock::new(|| {
+    (0..=7_u32)
+        .flat_map(|seniority| {
+            let spins = (0..=seniority).rev().step_by(2);
+            spins.map(move |two_s| (seniority, i32::try_from(two_s).unwrap_or(0)))
+        })
+        .map(|(seniority, two_s)| ((seniority, two_s), parts(seniority, two_s)))
+        .collect()
+});
+
+fn parts(seniority: u32, two_s: i32) -> Vec<Part> {
     let character = rotation_character(seniority, two_s);
     let reflections = weyl_group(HALF_SUM);
     let mut found = Vec::new();
@@ -99,7 +123,7 @@ pub(super) fn branching(seniority: u32, two_s: i32) -> Vec<([i32; 2], Vec<u64>)>
 }
 
 /// Every U that f electrons can have, in the order of the Casimir eigenvalues, with its L.
-static REPRESENTATIONS: LazyLock<Vec<([i32; 2], Vec<u64>)>> = LazyLock::new(|| {
+static REPRESENTATIONS: LazyLock<Vec<Part>> = LazyLock::new(|| {
     let mut labels: Vec<[i32; 2]> = (0..=REACH)
         .flat_map(|u1| (0..=u1).map(move |u2| [u1, u2]))
         .filter(|[u1, u2]| u1 + u2 <= REACH)
@@ -279,8 +303,8 @@ mod tests {
     fn rotation_labels_branch_as_published() {
         let labels = |seniority, two_s| -> Vec<[i32; 2]> {
             branching(seniority, two_s)
-                .into_iter()
-                .map(|(u, _)| u)
+                .iter()
+                .map(|(u, _)| *u)
                 .collect()
         };
         assert_eq!(labels(3, 1), [[1, 1], [2, 0], [2, 1]]);

@@ -97,18 +97,17 @@ pub fn classify(l: u8, electrons: u32) -> Result<Vec<EquivalentTerm>, Problem> {
             times: 0,
             distinguished: alike == 1,
         };
-        let parts = if l == 3 {
-            exceptional::branching(spin.seniority, spin.two_s)
-                .into_iter()
-                .map(|(u, by_l)| (Some(u), by_l))
-                .collect()
-        } else {
-            vec![(None, spin.by_l)]
-        };
-        for (u, by_l) in parts {
-            for (l_total, &alike) in (0_u32..).zip(&by_l) {
+        let mut add = |u: Option<[i32; 2]>, by_l: &[u64]| {
+            for (l_total, &alike) in (0_u32..).zip(by_l) {
                 terms.extend((0..alike).map(|_| term(l_total, u, alike)));
             }
+        };
+        if l == 3 {
+            for (u, by_l) in exceptional::branching(spin.seniority, spin.two_s) {
+                add(Some(*u), by_l);
+            }
+        } else {
+            add(None, &spin.by_l);
         }
     }
     // Stable: seniority and U were met in rising order.
