@@ -1,26 +1,13 @@
 //! Filling against tables of ground configurations.
 
-use std::collections::BTreeMap;
-
 use rungline_core::configuration::filling::{Used, ground, rule};
 use rungline_core::configuration::{Species, complete, parse};
-use rungline_tests::{Row, report, vector};
-
-fn rows(name: &str) -> Vec<BTreeMap<String, String>> {
-    let text = vector(name);
-    let mut reader = csv::ReaderBuilder::new()
-        .comment(Some(b'#'))
-        .from_reader(text.as_bytes());
-    reader
-        .deserialize()
-        .map(|row| row.expect("a row of the table"))
-        .collect()
-}
+use rungline_tests::{Row, report, vector_rows};
 
 #[test]
 fn neutral_atoms_have_the_tabulated_configuration() {
     // mendeleev 1.3.0 (MIT), written out by its own expansion of the cores.
-    let rows = rows("ground_configurations.csv");
+    let rows = vector_rows("ground_configurations.csv");
     let mut differing = Vec::new();
     for row in &rows {
         let z: u8 = row["Z"].parse().unwrap();
@@ -70,7 +57,7 @@ fn the_rule_fails_for_the_known_exceptions() {
 fn cations_lose_the_highest_n_first() {
     // First and second ions of mendeleev 1.3.0 (MIT): in how many does the rule give the table's
     // configuration. A rule of thumb is not right everywhere; the transition metals must be.
-    let rows = rows("ground_levels_all_ions.csv");
+    let rows = vector_rows("ground_levels_all_ions.csv");
     for row in rows.iter().filter(|row| row["charge"] == "2") {
         let z: u8 = row["Z"].parse().unwrap();
         if (21..=30).contains(&z) || (39..=48).contains(&z) || (72..=80).contains(&z) {
@@ -89,7 +76,7 @@ fn cations_lose_the_highest_n_first() {
 #[test]
 fn the_tabulated_text_is_a_configuration_of_the_trade() {
     // Each `shells` text, points between subshells, reads as the configuration of its ion.
-    for row in rows("ground_levels_all_ions.csv") {
+    for row in vector_rows("ground_levels_all_ions.csv") {
         let z: u8 = row["Z"].parse().unwrap();
         let charge: i32 = row["charge"].parse().unwrap();
         let species = Species {

@@ -6,20 +6,9 @@
 use std::collections::BTreeMap;
 
 use rungline_core::elements::{HEAVIEST, Status, by_symbol, observed_ground, symbol};
-use rungline_tests::{Row, report, vector};
+use rungline_tests::{Row, report, vector_rows};
 
 type Listing = BTreeMap<(u8, u8), u32>;
-
-fn rows(name: &str) -> Vec<BTreeMap<String, String>> {
-    let text = vector(name);
-    let mut reader = csv::ReaderBuilder::new()
-        .comment(Some(b'#'))
-        .from_reader(text.as_bytes());
-    reader
-        .deserialize()
-        .map(|row| row.expect("a row of the table"))
-        .collect()
-}
 
 /// Writes out `[Ar].3d6.4s2`, with cores taken from the same file.
 fn listing(shells: &str, cores: &BTreeMap<String, Listing>) -> Listing {
@@ -42,7 +31,7 @@ fn listing(shells: &str, cores: &BTreeMap<String, Listing>) -> Listing {
 
 #[test]
 fn all_entries_are_decoded_as_tabulated() {
-    let rows = rows("ground_levels_all_ions.csv");
+    let rows = vector_rows("ground_levels_all_ions.csv");
     assert_eq!(rows.len(), 5847);
     let mut cores: BTreeMap<String, Listing> = BTreeMap::new();
     for row in rows.iter().filter(|row| row["charge"] == "0") {
@@ -111,7 +100,7 @@ fn all_entries_are_decoded_as_tabulated() {
 
 #[test]
 fn nothing_is_added_but_heavy_neutral_atoms() {
-    let rows = rows("ground_levels_all_ions.csv");
+    let rows = vector_rows("ground_levels_all_ions.csv");
     let tabulated: Vec<(u8, i32)> = rows
         .iter()
         .map(|row| (row["Z"].parse().unwrap(), row["charge"].parse().unwrap()))
@@ -136,7 +125,7 @@ fn nothing_is_added_but_heavy_neutral_atoms() {
 fn doubtful_entries_say_so() {
     // Ds 6d9 7s and Rg 6d10 7s are extrapolations: a second source, pyscf 2.14.0 (Apache-2.0), has
     // 6d8 7s2 and 6d9 7s2; its occupation per ℓ stands in the same file.
-    let rows = rows("ground_configurations.csv");
+    let rows = vector_rows("ground_configurations.csv");
     for (z, d_electrons) in [(110u8, 38u32), (111, 39)] {
         let ground = observed_ground(z, 0).unwrap();
         assert!(ground.status_text().contains("doubtful"));
@@ -158,7 +147,7 @@ fn doubtful_entries_say_so() {
 
 #[test]
 fn symbols_are_the_tables() {
-    let rows = rows("ground_configurations.csv");
+    let rows = vector_rows("ground_configurations.csv");
     assert_eq!(rows.len(), 118);
     for row in rows {
         assert_eq!(by_symbol(&row["symbol"]), row["Z"].parse().ok());

@@ -11,20 +11,9 @@ use std::collections::BTreeMap;
 use rungline_core::configuration::{Orbital, Subshell, l_of_letter};
 use rungline_core::radial::hartree_fock::{Atom, Progress, RadialOrbital, Solution, solve};
 use rungline_core::radial::hydrogenic::Hydrogenic;
-use rungline_tests::{Row, relative_error, report, vector};
+use rungline_tests::{Row, relative_error, report, vector_rows};
 
 const SOURCE: &str = "own B-spline program in Python, checked with pyscf 2.14.0 (Apache-2.0)";
-
-fn rows(name: &str) -> Vec<BTreeMap<String, String>> {
-    let text = vector(name);
-    let mut reader = csv::ReaderBuilder::new()
-        .comment(Some(b'#'))
-        .from_reader(text.as_bytes());
-    reader
-        .deserialize()
-        .map(|row| row.expect("a row of the table"))
-        .collect()
-}
 
 fn orbital(name: &str) -> Orbital {
     let letter = name.find(|c: char| c.is_ascii_alphabetic()).unwrap();
@@ -74,7 +63,7 @@ fn check(name: &str, quantity: &str, cases: usize, worst: f64, tolerance: f64, m
 #[test]
 fn average_energies_and_the_virial_theorem() {
     let (mut light, mut heavy, mut virial, mut virial_heavy) = ((0, 0.0), (0, 0.0), 0.0, 0.0);
-    for row in rows("hf_energies.csv") {
+    for row in vector_rows("hf_energies.csv") {
         let z: u8 = row["Z"].parse().unwrap();
         let subshells = subshells(&row["configuration"]);
         let text = match row["E_average_own"].as_str() {
@@ -133,7 +122,7 @@ fn average_energies_and_the_virial_theorem() {
 /// Runs of the tables of orbitals and integrals: Z, which, configuration.
 fn systems() -> BTreeMap<(String, String), (u8, Vec<Subshell>)> {
     let mut all: BTreeMap<(String, String), (u8, Vec<Subshell>)> = BTreeMap::new();
-    for row in rows("hf_orbitals.csv") {
+    for row in vector_rows("hf_orbitals.csv") {
         let key = (row["system"].clone(), row["which"].clone());
         let entry = all
             .entry(key)
@@ -155,7 +144,7 @@ fn orbital_energies_and_expectation_values() {
         .collect();
     assert!(solutions.len() >= 20);
     let mut worst: BTreeMap<(bool, &str), (usize, f64)> = BTreeMap::new();
-    for row in rows("hf_orbitals.csv") {
+    for row in vector_rows("hf_orbitals.csv") {
         let Some(solution) = solutions.get(&(row["system"].clone(), row["which"].clone())) else {
             continue;
         };
@@ -205,7 +194,7 @@ fn slater_integrals() {
     let systems = systems();
     let (mut cases, mut worst) = (0, 0.0_f64);
     let mut of_runs = 0.0_f64;
-    for row in rows("hf_slater_integrals.csv") {
+    for row in vector_rows("hf_slater_integrals.csv") {
         let key = (row["system"].clone(), row["which"].clone());
         let Some((z, subshells)) = systems.get(&key) else {
             continue;

@@ -1,6 +1,7 @@
 //! Shared by the native checks: where the vectors are, how closely two numbers agree, and the
 //! validation report, which is written from what the checks measured.
 
+use std::collections::BTreeMap;
 use std::fs;
 use std::path::{Path, PathBuf};
 use std::sync::Mutex;
@@ -21,6 +22,18 @@ pub fn vector(name: &str) -> String {
 /// The JSON of a file under `tests/vectors`.
 pub fn vector_json(name: &str) -> serde_json::Value {
     serde_json::from_str(&vector(name)).unwrap_or_else(|error| panic!("{name}: {error}"))
+}
+
+/// The rows of a table under `tests/vectors`, each by the names of its columns.
+pub fn vector_rows(name: &str) -> Vec<BTreeMap<String, String>> {
+    let text = vector(name);
+    let mut reader = csv::ReaderBuilder::new()
+        .comment(Some(b'#'))
+        .from_reader(text.as_bytes());
+    reader
+        .deserialize()
+        .map(|row| row.unwrap_or_else(|error| panic!("{name}: {error}")))
+        .collect()
 }
 
 /// |a − b| / |b|, or |a − b| where b is zero.
