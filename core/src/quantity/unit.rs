@@ -40,6 +40,14 @@ pub enum Dimension {
     GrooveDensity,
     /// Resolving power λ/Δλ, a pure number.
     ResolvingPower,
+    /// Particles in a volume, m-3.
+    NumberDensity,
+    /// Relative humidity of air, %.
+    Humidity,
+    /// Share of a gas among the molecules of air, ppm.
+    MoleFraction,
+    /// Refractive index, a pure number.
+    RefractiveIndex,
     /// A pure number of any kind.
     Number,
 }
@@ -251,6 +259,18 @@ const GROOVE_DENSITY: &[Unit] = &[
     unit("m-1", &["/m", "1/m"], 1.0, 1e3),
 ];
 
+const NUMBER_DENSITY: &[Unit] = &[
+    unit("m-3", &["/m3", "1/m3"], 1.0, 1.0),
+    unit("cm-3", &["/cm3", "1/cm3"], 1e6, 1.0),
+];
+
+const HUMIDITY: &[Unit] = &[unit("%", &["percent", "per cent"], 1.0, 1.0)];
+
+const MOLE_FRACTION: &[Unit] = &[
+    unit("ppm", &["µmol/mol", "umol/mol"], 1.0, 1.0),
+    unit("%", &["percent", "per cent"], 1e4, 1.0),
+];
+
 /// Name, units (the first is the own one), lowest and highest value in it.
 struct Description {
     name: &'static str,
@@ -275,7 +295,7 @@ const fn described(
 
 impl Dimension {
     /// Every dimension.
-    pub const ALL: [Dimension; 17] = [
+    pub const ALL: [Dimension; 21] = [
         Dimension::Wavelength,
         Dimension::Wavenumber,
         Dimension::Frequency,
@@ -292,6 +312,10 @@ impl Dimension {
         Dimension::Length,
         Dimension::GrooveDensity,
         Dimension::ResolvingPower,
+        Dimension::NumberDensity,
+        Dimension::Humidity,
+        Dimension::MoleFraction,
+        Dimension::RefractiveIndex,
         Dimension::Number,
     ];
 
@@ -319,6 +343,10 @@ impl Dimension {
             Dimension::Length => described("length", LENGTH, 1e-6, 1e6),
             Dimension::GrooveDensity => described("groove density", GROOVE_DENSITY, 1e-3, 1e5),
             Dimension::ResolvingPower => described("resolving power", &[], 1.0, 1e10),
+            Dimension::NumberDensity => described("number density", NUMBER_DENSITY, 1.0, 1e40),
+            Dimension::Humidity => described("relative humidity", HUMIDITY, 0.0, 100.0),
+            Dimension::MoleFraction => described("share of a gas", MOLE_FRACTION, 0.0, 1e6),
+            Dimension::RefractiveIndex => described("refractive index", &[], 0.1, 10.0),
             Dimension::Number => described("number", &[], -1e15, 1e15),
         }
     }
@@ -343,6 +371,10 @@ impl Dimension {
             Dimension::Length => "1 m",
             Dimension::GrooveDensity => "1200 mm-1",
             Dimension::ResolvingPower => "50000",
+            Dimension::NumberDensity => "1e20 m-3",
+            Dimension::Humidity => "50 %",
+            Dimension::MoleFraction => "450 ppm",
+            Dimension::RefractiveIndex => "1.5",
             Dimension::Number => "1",
         }
     }

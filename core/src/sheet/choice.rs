@@ -10,6 +10,12 @@ use super::schema::key_of;
 /// The named directions in which a field is viewed.
 pub const VIEWS: [&str; 2] = ["along", "across"];
 
+/// Where the radial parameters of energies come from.
+pub const ENERGIES: [&str; 2] = ["computed", "given"];
+
+/// Where wavelengths are measured.
+pub const MEDIA: [&str; 2] = ["air", "vacuum"];
+
 /// The choice that a text names, in any case of letters and with spaces around it.
 pub fn choice(typed: &str, words: &[&'static str]) -> Option<&'static str> {
     let typed = typed.trim();

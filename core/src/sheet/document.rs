@@ -8,11 +8,13 @@ use crate::quantity::{self, Dimension};
 use crate::terms::{self, Level, label, ls};
 
 use super::Question;
+use super::conditions::Conditions;
 use super::entry::{Content, Entry, Named, content};
+use super::given::Given;
 use super::json::Json;
 use super::rich::{Piece, Rich};
 use super::schema;
-use super::structure::{self, Structure};
+use super::structure::{Energies, Structure};
 
 /// A level of one of the sheet's configurations.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -49,26 +51,17 @@ pub struct Document {
     pub line: Option<(LevelOf, LevelOf)>,
     /// Vacuum wavelength of the line in nanometres.
     pub wavelength_nm: Option<f64>,
-    /// How radial functions are computed.
+    /// How radial functions and energies are computed.
     pub structure: Structure,
+    /// Radial parameters that the sheet gives.
+    pub given: Vec<Given>,
+    /// The source of light and the medium of its wavelengths.
+    pub conditions: Conditions,
     /// Level energies from measurements, in cm⁻¹.
     pub measured: Vec<(LevelOf, f64)>,
     /// Keys that no question of this version uses.
-    unused_keys: Vec<String>,
+    pub(super) unused_keys: Vec<String>,
 }
-
-/// Keys of the sheet that the questions of this version use.
-const USED: [&str; 9] = [
-    "rungline",
-    "title",
-    "note",
-    "species",
-    "configurations",
-    "structure",
-    "measured",
-    "field",
-    "line",
-];
 
 impl Document {
     /// Reads a sheet; every fault is in `faults`, and what could be read is there all the same.
@@ -83,20 +76,11 @@ impl Document {
         document.read_line(json);
         document.read_measured(json);
         document.structure = Structure::read(json, &mut document.faults);
+        document.refuse_energies(json);
+        document.read_given(json);
+        document.conditions = Conditions::read(json, &mut document.faults);
         super::parameters::check(json, &mut document.faults);
-        let keys = |json: Option<&Json>, used: &[&str]| match json {
-            Some(Json::Object(entries)) => entries
-                .iter()
-                .map(|(key, _)| key.clone())
-                .filter(|key| !used.contains(&key.as_str()))
-                .collect(),
-            _ => Vec::new(),
-        };
-        document.unused_keys = keys(Some(json), &USED);
-        document.unused_keys.retain(|key| schema::is_known(key));
-        let inner = keys(json.get("structure"), &structure::USED);
-        let inner = inner.iter().map(|key| format!("structure.{key}"));
-        document.unused_keys.extend(inner);
+        document.unused_keys = super::unused::keys(json);
         sort_by_place(&mut document.faults, json);
         document
     }
@@ -303,48 +287,6 @@ impl Document {
         }
     }
 
-    fn read_measured(&mut self, json: &Json) {
-        let Some(Json::Object(pins)) = json.get("measured") else {
-            return;
-        };
-        for (name, value) in pins {
-            let path = schema::pointer("/measured", name);
-            let energy = value
-                .as_text()
-                .and_then(|t| quantity::quantity(t, Dimension::Wavenumber).ok());
-            match (self.level(name), energy) {
-                (Ok(Some(level)), Some(_))
-                    if self.measured.iter().any(|(other, _)| *other == level) =>
-                {
-                    self.faults.push(
-                        Problem::new(
-                            "level-repeated",
-                            format!("{} is pinned twice.", self.level_label(&level)),
-                            0,
-                            name.encode_utf16().count(),
-                        )
-                        .bound("Each level has one measured energy.")
-                        .at(path),
-                    );
-                }
-                (Ok(Some(level)), Some(energy)) => self.measured.push((level, energy.value)),
-                (Ok(_), _) => {}
-                // The fault stands in the key, whose characters are not those of the value.
-                (Err(problems), _) => {
-                    self.faults.extend(
-                        // A way out replaces the value, and the fault is in its name.
-                        problems.into_iter().map(|mut p| {
-                            p.ways.clear();
-                            p.way("Leave this value out", "")
-                                .in_utf16(name)
-                                .at(path.clone())
-                        }),
-                    );
-                }
-            }
-        }
-    }
-
     /// How the atom or ion fills its subshells, by rule and as tabulated.
     pub fn filled(&self) -> Option<filling::Ground> {
         let species = self.species.as_ref()?;
@@ -382,6 +324,39 @@ impl Document {
         self.wavelength_nm.or_else(between_pins)
     }
 
+    /// Whether the energies of levels come from radial functions or only from what is given.
+    pub fn energies(&self) -> Energies {
+        let nucleus = self
+            .species
+            .is_some_and(|species| species.element.is_some());
+        match self.structure.energies {
+            Some(said) => said,
+            None if nucleus => Energies::Computed,
+            None => Energies::Given,
+        }
+    }
+
+    /// Any atom has no nucleus from which energies could be computed.
+    fn refuse_energies(&mut self, json: &Json) {
+        let any = self
+            .species
+            .is_some_and(|species| species.element.is_none());
+        if !any || self.structure.energies != Some(Energies::Computed) {
+            return;
+        }
+        let typed = json.get("structure").and_then(|s| s.get("energies"));
+        let text = typed.and_then(Json::as_text).unwrap_or_default();
+        let problem = Problem::new(
+            "energies-need-a-nucleus",
+            "Energies of any atom cannot be computed: it has no nucleus.",
+            0,
+            text.len(),
+        )
+        .bound("With * energies come from the given parameters, and what is not given is zero.")
+        .way("Use given", "given");
+        self.add(vec![problem], text, "/structure/energies");
+    }
+
     /// Whether the species is a negative ion, which may not be bound at all.
     pub fn is_anion(&self) -> bool {
         self.species.is_some_and(|species| species.charge < 0)
@@ -401,16 +376,6 @@ impl Document {
             );
         }
         cautions
-    }
-
-    /// A sentence on keys that this version keeps and checks but does not use.
-    pub fn unused(&self) -> Option<String> {
-        (!self.unused_keys.is_empty()).then(|| {
-            format!(
-                "This version does not use these keys of the sheet: {}.",
-                self.unused_keys.join(", ")
-            )
-        })
     }
 
     /// What the question lacks, or nothing when it can be answered.

@@ -203,6 +203,36 @@ fn echoes(document: &Document) -> Vec<Echo> {
             Rich::new().number(polarisation.radius, Some("a0"), Kind::Entered),
         );
     }
+    for given in &document.given {
+        let unit = given.name.parameter.dimension().own_unit();
+        add(
+            &super::schema::pointer("/structure/given", &given.spelling),
+            Rich::new().number(given.value, Some(unit), Kind::Entered),
+        );
+    }
+    let conditions = &document.conditions;
+    let (from, to) = conditions.window.unzip();
+    let air = &conditions.air;
+    for (path, value, unit) in [
+        ("/window/0", from, Some("nm")),
+        ("/window/1", to, Some("nm")),
+        ("/refractive_index", conditions.refractive_index, None),
+        ("/air/temperature", air.temperature, Some("K")),
+        ("/air/pressure", air.pressure, Some("Pa")),
+        ("/air/humidity", air.humidity, Some("%")),
+        ("/air/co2", air.co2, Some("ppm")),
+        ("/source/temperature", conditions.temperature, Some("K")),
+        (
+            "/source/electron_density",
+            conditions.electron_density,
+            Some("m-3"),
+        ),
+        ("/source/column", conditions.column, Some("m-2")),
+    ] {
+        if let Some(value) = value {
+            add(path, Rich::new().number(value, unit, Kind::Entered));
+        }
+    }
     if let Some(wavelength) = document.wavelength_nm {
         add(
             "/line/wavelength",

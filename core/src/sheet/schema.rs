@@ -8,7 +8,7 @@ use crate::problem::Problem;
 use crate::quantity::Dimension;
 use crate::quantity::signs::typeset;
 
-use super::choice::{VIEWS, choice, nearest, not_a_choice};
+use super::choice::{ENERGIES, MEDIA, VIEWS, choice, nearest, not_a_choice};
 use super::json::Json;
 
 /// The document version that is read and written.
@@ -65,7 +65,7 @@ pub const SHEET: Shape = Group(&[
     (
         "structure",
         Group(&[
-            ("energies", Choice(&["computed", "given"])),
+            ("energies", Choice(&ENERGIES)),
             ("relativity", Bool),
             ("mixing", Bool),
             (
@@ -107,6 +107,7 @@ pub const SHEET: Shape = Group(&[
         "source",
         Group(&[
             ("temperature", Quantity(Dimension::Temperature)),
+            ("electron_density", Quantity(Dimension::NumberDensity)),
             ("collision_width", Quantity(Dimension::Frequency)),
             ("column", Quantity(Dimension::ColumnDensity)),
         ]),
@@ -117,7 +118,17 @@ pub const SHEET: Shape = Group(&[
     ),
     ("window", List(&Quantity(Dimension::Wavelength), 2)),
     ("pair", List(&Quantity(Dimension::Wavelength), 2)),
-    ("medium", Choice(&["air", "vacuum"])),
+    ("medium", Choice(&MEDIA)),
+    ("refractive_index", Quantity(Dimension::RefractiveIndex)),
+    (
+        "air",
+        Group(&[
+            ("temperature", Quantity(Dimension::Temperature)),
+            ("pressure", Quantity(Dimension::Pressure)),
+            ("humidity", Quantity(Dimension::Humidity)),
+            ("co2", Quantity(Dimension::MoleFraction)),
+        ]),
+    ),
     (
         "nucleus",
         Group(&[

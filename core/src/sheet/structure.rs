@@ -1,8 +1,9 @@
-//! What the sheet says about how radial functions are computed.
+//! What the sheet says about how radial functions and energies are computed.
 
 use crate::problem::Problem;
 use crate::quantity::{self, Dimension};
 
+use super::choice::{ENERGIES, choice};
 use super::json::Json;
 
 /// A core polarisation: both values as entered.
@@ -14,9 +15,48 @@ pub struct Polarisation {
     pub radius: f64,
 }
 
-/// `structure.relativity` and `structure.polarisation`.
+/// Where the radial parameters of energies come from.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Energies {
+    /// From radial functions; what is given replaces what is computed.
+    Computed,
+    /// Only what is given; the rest is zero.
+    Given,
+}
+
+/// By what computed radial integrals are multiplied; given ones are not.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Scale {
+    /// F^k.
+    pub f: f64,
+    /// G^k.
+    pub g: f64,
+    /// R^k.
+    pub r: f64,
+    /// ζ.
+    pub zeta: f64,
+}
+
+impl Default for Scale {
+    fn default() -> Self {
+        Scale {
+            f: 1.0,
+            g: 1.0,
+            r: 1.0,
+            zeta: 1.0,
+        }
+    }
+}
+
+/// The group `structure`, what it gives apart.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Structure {
+    /// Where parameters come from, if the sheet says so.
+    pub energies: Option<Energies>,
+    /// Whether configurations of one parity mix.
+    pub mixing: bool,
+    /// Of computed integrals.
+    pub scale: Scale,
     /// Whether the radial equation holds the relativistic terms.
     pub relativity: bool,
     /// The core polarisation, off where none is entered.
@@ -26,14 +66,14 @@ pub struct Structure {
 impl Default for Structure {
     fn default() -> Self {
         Structure {
+            energies: None,
+            mixing: true,
+            scale: Scale::default(),
             relativity: true,
             polarisation: None,
         }
     }
 }
-
-/// Keys of `structure` that are used.
-pub const USED: [&str; 2] = ["relativity", "polarisation"];
 
 impl Structure {
     /// Reads the group; what its schema does not know of is added to the faults.
@@ -44,6 +84,26 @@ impl Structure {
         };
         if let Some(Json::Bool(relativity)) = group.get("relativity") {
             structure.relativity = *relativity;
+        }
+        if let Some(Json::Bool(mixing)) = group.get("mixing") {
+            structure.mixing = *mixing;
+        }
+        let energies = group.get("energies").and_then(Json::as_text);
+        structure.energies = match energies.and_then(|typed| choice(typed, &ENERGIES)) {
+            Some("computed") => Some(Energies::Computed),
+            Some(_) => Some(Energies::Given),
+            None => None,
+        };
+        let scale = &mut structure.scale;
+        for (key, place) in [
+            ("F", &mut scale.f),
+            ("G", &mut scale.g),
+            ("R", &mut scale.r),
+            ("zeta", &mut scale.zeta),
+        ] {
+            if let Some(Json::Number(value)) = group.get("scale").and_then(|s| s.get(key)) {
+                *place = *value;
+            }
         }
         if let Some(polarisation) = group.get("polarisation") {
             structure.polarisation = polarise(polarisation, faults);

@@ -1,0 +1,157 @@
+//! Where the light comes from and in what its wavelengths are measured.
+
+use crate::problem::Problem;
+use crate::quantity::{self, Dimension};
+
+use super::choice::{MEDIA, choice};
+use super::json::Json;
+use super::parameters::two_needed;
+
+/// The air that wavelengths are measured in; nothing where the standard value stands.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct AirOf {
+    /// Kelvin.
+    pub temperature: Option<f64>,
+    /// Pascal.
+    pub pressure: Option<f64>,
+    /// Relative humidity, %.
+    pub humidity: Option<f64>,
+    /// Carbon dioxide, parts in a million molecules.
+    pub co2: Option<f64>,
+}
+
+/// `window`, `medium`, `refractive_index`, `air` and the `source` of light.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Conditions {
+    /// Shortest and longest wavelength that is looked at, nm in the medium.
+    pub window: Option<(f64, f64)>,
+    /// Whether the sheet says that wavelengths are those in vacuum.
+    pub vacuum: bool,
+    /// Of a medium that is neither air nor vacuum.
+    pub refractive_index: Option<f64>,
+    /// The air.
+    pub air: AirOf,
+    /// Of the source, kelvin.
+    pub temperature: Option<f64>,
+    /// Of the source, m⁻³.
+    pub electron_density: Option<f64>,
+    /// Atoms in a column along the line of sight, m⁻².
+    pub column: Option<f64>,
+}
+
+impl Conditions {
+    /// Reads the keys; what their shapes do not show is added to the faults.
+    pub fn read(json: &Json, faults: &mut Vec<Problem>) -> Conditions {
+        let value = |group: Option<&Json>, key: &str, dimension| {
+            let text = group?.get(key)?.as_text()?;
+            Some(quantity::quantity(text, dimension).ok()?.value)
+        };
+        let (source, air) = (json.get("source"), json.get("air"));
+        let medium = json.get("medium").and_then(Json::as_text);
+        Conditions {
+            window: window(json, faults),
+            vacuum: medium.and_then(|typed| choice(typed, &MEDIA)) == Some("vacuum"),
+            refractive_index: value(Some(json), "refractive_index", Dimension::RefractiveIndex),
+            air: AirOf {
+                temperature: value(air, "temperature", Dimension::Temperature),
+                pressure: value(air, "pressure", Dimension::Pressure),
+                humidity: value(air, "humidity", Dimension::Humidity),
+                co2: value(air, "co2", Dimension::MoleFraction),
+            },
+            temperature: value(source, "temperature", Dimension::Temperature),
+            electron_density: value(source, "electron_density", Dimension::NumberDensity),
+            column: value(source, "column", Dimension::ColumnDensity),
+        }
+    }
+}
+
+/// Two wavelengths, the shorter one first.
+fn window(json: &Json, faults: &mut Vec<Problem>) -> Option<(f64, f64)> {
+    let Some(Json::List(ends)) = json.get("window") else {
+        return None;
+    };
+    let [from, to] = ends.as_slice() else {
+        faults.push(two_needed("window", ends.len()));
+        return None;
+    };
+    let read = |end: &Json| {
+        let text = end.as_text()?;
+        Some((
+            text.to_owned(),
+            quantity::quantity(text, Dimension::Wavelength).ok()?.value,
+        ))
+    };
+    let ((_, from), (text, to)) = (read(from)?, read(to)?);
+    if from < to {
+        return Some((from, to));
+    }
+    let wider = quantity::quantity(&format!("{} nm", from + 1.0), Dimension::Wavelength)
+        .map_or_else(|_| text.clone(), |q| q.text);
+    faults.push(
+        Problem::new(
+            "window-empty",
+            format!(
+                "The window ends at {} and does not begin below it.",
+                text.trim()
+            ),
+            0,
+            text.len(),
+        )
+        .bound("The first wavelength is shorter than the second.")
+        .way(format!("Use {wider}"), wider)
+        .in_utf16(&text)
+        .at("/window/1"),
+    );
+    None
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::sheet::json::read;
+
+    fn found(text: &str) -> (Conditions, Vec<(&'static str, String)>) {
+        let mut faults = Vec::new();
+        let conditions = Conditions::read(&read(text).unwrap(), &mut faults);
+        let faults = faults.into_iter().map(|f| (f.code, f.path)).collect();
+        (conditions, faults)
+    }
+
+    #[test]
+    fn conditions_are_read_in_their_own_units() {
+        let (all, faults) = found(
+            r#"{"window":["5880 Å","590 nm"],"medium":"Vacuum","refractive_index":"1.76",
+                "source":{"temperature":"926.85 °C","electron_density":"1e14 cm-3","column":"1e11 cm-2"},
+                "air":{"temperature":"20 °C","pressure":"1 atm","humidity":"45 %","co2":"400 ppm"}}"#,
+        );
+        assert_eq!(faults, []);
+        assert_eq!(all.window, Some((588.0, 590.0)));
+        assert!(all.vacuum);
+        assert_eq!(all.refractive_index, Some(1.76));
+        assert_eq!(all.temperature, Some(1200.0));
+        assert_eq!(all.electron_density, Some(1e20));
+        assert_eq!(all.column, Some(1e15));
+        assert_eq!(
+            all.air,
+            AirOf {
+                temperature: Some(293.15),
+                pressure: Some(101_325.0),
+                humidity: Some(45.0),
+                co2: Some(400.0)
+            }
+        );
+    }
+
+    #[test]
+    fn a_window_has_two_rising_ends() {
+        let codes = |text: &str| found(text).1;
+        assert_eq!(
+            codes(r#"{"window":["590 nm","588 nm"]}"#),
+            [("window-empty", "/window/1".to_owned())]
+        );
+        assert_eq!(
+            codes(r#"{"window":["590 nm"]}"#),
+            [("two-values-needed", "/window".to_owned())]
+        );
+    }
+}
