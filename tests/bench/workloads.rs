@@ -12,9 +12,9 @@ use rungline_core::terms::ls;
 /// A named piece of work and how often it is repeated within one timing.
 pub const WORKLOADS: &[(&str, u32)] = &[
     ("6j symbols with j up to 15, 4096 of them", 20),
-    ("f7 terms with seniority", 20),
-    ("f7 d5 p3 terms", 50),
-    ("the states of neutral iron, as the page asks for them", 50),
+    ("f7 terms with seniority", 2000),
+    ("f7 d5 p3 terms", 2000),
+    ("the states of neutral iron, as the page asks for them", 1000),
     ("the self-consistent field of neutral iron", 5),
     ("the self-consistent field of neutral uranium, relativistic", 1),
 ];

@@ -11,9 +11,8 @@
 mod counting;
 mod exceptional;
 
-use crate::numerics::order::sort_by_key;
 use crate::problem::Problem;
-use counting::{contents, states};
+use counting::{Content, contents, states};
 
 /// Subshells with more states than this are not resolved into terms.
 pub const MOST_STATES: u64 = 1_000_000_000;
@@ -81,47 +80,74 @@ pub fn classify(l: u8, electrons: u32) -> Result<Vec<EquivalentTerm>, Problem> {
     if total > MOST_TERMS {
         return Err(too_many());
     }
+    let families: Vec<Family> = contents.iter().flat_map(|spin| families(l, spin)).collect();
     let mut terms = Vec::with_capacity(usize::try_from(total).unwrap_or(0));
-    for spin in contents {
-        let w = (l >= 2).then(|| RotationLabel::of(l, spin.seniority, spin.two_s));
-        let rotation_casimir = w.map(RotationLabel::casimir);
-        let term = |l_total: u32, u: Option<[i32; 2]>, alike: u64| EquivalentTerm {
-            two_s: spin.two_s,
-            l_total,
-            seniority: spin.seniority,
-            w,
-            u,
-            rotation_casimir,
-            g2_casimir: u.map(exceptional::casimir),
-            index: 0,
-            times: 0,
-            distinguished: alike == 1,
-        };
-        let mut add = |u: Option<[i32; 2]>, by_l: &[u64]| {
-            for (l_total, &alike) in (0_u32..).zip(by_l) {
-                terms.extend((0..alike).map(|_| term(l_total, u, alike)));
+    let highest = contents.iter().map(|spin| spin.two_s).max().unwrap_or(0);
+    for two_s in (0..=highest).rev().step_by(2) {
+        // Met in rising seniority and U.
+        let alike: Vec<&Family> = families.iter().filter(|f| f.two_s == two_s).collect();
+        let longest = alike.iter().map(|f| f.by_l.len()).max().unwrap_or(0);
+        for (l_total, place) in (0_u32..).zip(0..longest) {
+            let first = terms.len();
+            let occurs = |f: &Family| f.by_l.get(place).copied().unwrap_or(0);
+            let times = alike.iter().map(|f| occurs(f)).sum::<u64>();
+            let times = u32::try_from(times).unwrap_or(u32::MAX);
+            for family in &alike {
+                for _ in 0..occurs(family) {
+                    let index = u32::try_from(terms.len() - first).unwrap_or(u32::MAX);
+                    terms.push(EquivalentTerm {
+                        two_s,
+                        l_total,
+                        seniority: family.seniority,
+                        w: family.w,
+                        u: family.u,
+                        rotation_casimir: family.rotation_casimir,
+                        g2_casimir: family.g2_casimir,
+                        index: index.saturating_add(1),
+                        times,
+                        distinguished: occurs(family) == 1,
+                    });
+                }
             }
-        };
-        if l == 3 {
-            for (u, by_l) in exceptional::branching(spin.seniority, spin.two_s) {
-                add(Some(*u), by_l);
-            }
-        } else {
-            add(None, &spin.by_l);
-        }
-    }
-    // Stable: seniority and U were met in rising order.
-    sort_by_key(&mut terms, |term| (-term.two_s, term.l_total));
-    for same in
-        terms.chunk_by_mut(|one, other| (one.two_s, one.l_total) == (other.two_s, other.l_total))
-    {
-        let times = u32::try_from(same.len()).unwrap_or(u32::MAX);
-        for (index, term) in (1..).zip(same) {
-            term.index = index;
-            term.times = times;
         }
     }
     Ok(terms)
+}
+
+/// The terms that share all labels but L.
+struct Family<'a> {
+    two_s: i32,
+    seniority: u32,
+    w: Option<RotationLabel>,
+    u: Option<[i32; 2]>,
+    rotation_casimir: Option<f64>,
+    g2_casimir: Option<f64>,
+    /// How often L = 0, 1, 2 … occurs.
+    by_l: &'a [u64],
+}
+
+/// The families of one spin and seniority: one, or one for each U of f electrons, U rising.
+fn families(l: u8, spin: &Content) -> Vec<Family<'_>> {
+    let w = (l >= 2).then(|| RotationLabel::of(l, spin.seniority, spin.two_s));
+    let rotation_casimir = w.map(RotationLabel::casimir);
+    let family = |u: Option<[i32; 2]>, by_l| Family {
+        two_s: spin.two_s,
+        seniority: spin.seniority,
+        w,
+        u,
+        rotation_casimir,
+        g2_casimir: u.map(exceptional::casimir),
+        by_l,
+    };
+    if l == 3 {
+        let branches = exceptional::branching(spin.seniority, spin.two_s);
+        branches
+            .iter()
+            .map(|(u, by_l)| family(Some(*u), by_l.as_slice()))
+            .collect()
+    } else {
+        vec![family(None, spin.by_l.as_slice())]
+    }
 }
 
 /// W = (w₁ … w_ℓ) of R(2ℓ+1): some twos, then some ones, then zeros.
