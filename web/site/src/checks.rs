@@ -16,8 +16,23 @@ use crate::{Outcome, build};
 /// Kinds of checks that can be run alone.
 pub const KINDS: &[&str] = &["format", "lints", "native", "wasm", "page"];
 
-/// Left out of `--quick`: the speed is that of the full build.
-const ONLY_FULL: &[&str] = &["speed"];
+/// The page tests of `--quick`: what a change most likely breaks, in minutes.
+const EVERY_DAY: &[&str] = &[
+    "states-view",
+    "lines-view",
+    "splitting-view",
+    "engine",
+    "faults",
+    "keyboard",
+    "palette",
+    "sentence",
+    "store",
+    "tokens",
+];
+
+/// Native tests that `--quick` leaves out, by a part of their names: sweeps over all atoms, and
+/// comparisons with brute force.
+const LONG: &[&str] = &["sweep", "converge", "determinant"];
 
 /// The packages that run on this machine.
 const NATIVE: &[&str] = &[
@@ -76,9 +91,10 @@ pub fn run(paths: &Paths, profile: Profile, kind: Option<&str>, filter: &str) ->
     println!("\n{}", checks.lines.join("\n"));
     if profile == Profile::Quick {
         println!(
-            "Quick: the quick build; Chromium with the one file and Firefox with the site only; \
-             without {}. “cargo site test” runs everything.",
-            ONLY_FULL.join(", ")
+            "Quick: the quick build; of the page tests {}, in Chromium with the one file; native \
+             tests without those whose names have {} in them. “cargo site test” runs everything.",
+            EVERY_DAY.join(", "),
+            LONG.join(", ")
         );
     }
     println!("{} passed, {} failed", checks.sum.passed, checks.sum.failed);
@@ -161,6 +177,11 @@ impl Checks<'_> {
         }
         if !self.filter.is_empty() {
             cargo.arg(self.filter);
+        } else if self.profile == Profile::Quick {
+            cargo.arg("--");
+            for long in LONG {
+                cargo.args(["--skip", long]);
+            }
         }
         counted(&mut cargo, libtest_counts)
     }
@@ -225,7 +246,12 @@ impl Checks<'_> {
             return Err(format!("No page test has “{}” in its name.", self.filter));
         }
         let mut node = Node::find()?.program();
-        node.args(["--test", "--test-concurrency=1", "--test-reporter=spec"])
+        // Times are only measured by the full run, which has the machine to itself.
+        let at_once = match self.profile {
+            Profile::Quick => "--test-concurrency=2",
+            Profile::Full => "--test-concurrency=1",
+        };
+        node.args(["--test", at_once, "--test-reporter=spec"])
             .args(specs)
             .current_dir(&self.paths.page_tests)
             .env(
@@ -245,9 +271,9 @@ impl Checks<'_> {
     }
 
     fn specs(&self) -> Outcome<Vec<PathBuf>> {
-        let left_out = |name: &str| {
-            self.profile == Profile::Quick && ONLY_FULL.iter().any(|only| name.starts_with(only))
-        };
+        // Who names a file of tests gets it.
+        let all = self.profile != Profile::Quick || !self.filter.is_empty();
+        let wanted = |name: &str| all || EVERY_DAY.iter().any(|part| name.starts_with(part));
         let specs = files_under(&self.paths.page_tests.join("specs"))?;
         Ok(specs
             .into_iter()
@@ -255,7 +281,7 @@ impl Checks<'_> {
                 file.file_name()
                     .and_then(|name| name.to_str())
                     .is_some_and(|name| {
-                        name.ends_with(".spec.mjs") && name.contains(self.filter) && !left_out(name)
+                        name.ends_with(".spec.mjs") && name.contains(self.filter) && wanted(name)
                     })
             })
             .collect())
