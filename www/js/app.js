@@ -47,11 +47,17 @@ async function start() {
 
   const core = await compiling;
   const engine = new Engine(startWorker, core);
-  const questions = new Questions(engine, store);
-  const orbitals = new Orbitals(() => new Engine(startWorker, core), store, questions);
+  // What computes has a worker of its own, which starts once something is to be computed.
+  let second = null;
+  const heavy = () => {
+    second ??= new Engine(startWorker, core);
+    return second;
+  };
+  const questions = new Questions(engine, heavy, store);
+  const orbitals = new Orbitals(heavy, store, questions);
   await questions.begin();
 
-  new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, questions, orbitals }).begin();
+  new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, heavy, questions, orbitals }).begin();
   byId("cannot-start").remove();
   keepForOffline(notes);
 }
@@ -87,7 +93,7 @@ class Page {
     this.fields = new Fields(this.store, this.settings, this.timing);
     this.panels = { open: byId("open-panel"), settings: byId("settings-panel") };
     this.filing = new Filing({
-      engine: this.engine, store: this.store, notes: this.notes,
+      engine: this.engine, heavy: this.heavy, store: this.store, notes: this.notes,
       replace: (sheet, label) => this.replace(sheet, label),
       verdict: (name, record) => this.record.verdict(name, record),
       toFirstFault: () => this.toFirstFault(),
@@ -155,7 +161,7 @@ class Page {
     this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
       name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,
       open: index === 0, more: name === "states" ? this.orbitalsPart.node : null,
-      fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label), { choice: context.choice, store: this.store }),
+      fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label), { choice: context.choice, store: this.store, view: this.view, openCsv: () => byId("file").click() }),
     }));
     this.questions.isUnfolded = (name) => this.rungOf(name).open;
     this.record = new RecordRung({
@@ -199,7 +205,7 @@ class Page {
       if (change.kind !== "step") this.head.reset();
     }
     this.head.arrange();
-    this.fields.refill();
+    this.fields.refill(change.kind === "typing");
     this.record.changed();
     this.showWords();
     this.showTitle();
@@ -300,6 +306,7 @@ class Page {
     if (fault === undefined) return;
     if (/^\/(species|configurations)/.test(fault.path)) this.head.unfold(true, false);
     else if (/^\/(field|line)/.test(fault.path)) this.rungs.find((rung) => rung.name === "splitting")?.rung.unfold(true);
+    else if (/^\/(window|medium|source|refractive_index|air|measured|structure\/(energies|mixing|scale|given))/.test(fault.path)) this.rungOf("lines").unfold(true);
     else if (/^\/structure/.test(fault.path)) {
       this.rungOf("states").unfold(true);
       this.orbitalsPart.open();

@@ -44,9 +44,10 @@ export function numberRuns(value, digits) {
 
 /**
  * How a column of numbers is shown: {decimals} or {power: decimals}. The largest entry gets
- * `digits` significant digits, the smallest at least two, and none more decimals than it has.
+ * `digits` significant digits, the smallest at least two, and none more decimals than it has. `usual`: digits before
+ * the point of a value that gets `digits` instead of the largest one; or "power".
  */
-export function columnFormat(values, digits) {
+export function columnFormat(values, digits, usual = null) {
   let largest = 0;
   let smallest = Infinity;
   let needed = 0;
@@ -58,6 +59,8 @@ export function columnFormat(values, digits) {
     needed = Math.max(needed, decimalsOf(value));
   }
   if (largest === 0) return { decimals: 0 };
+  if (usual === "power") return { power: Math.max(digits >= ALL_DIGITS ? 15 : digits - 1, 1) };
+  if (usual !== null) return { decimals: digits >= ALL_DIGITS ? Math.min(needed, 20) : Math.min(Math.max(digits - usual, 0), needed) };
   if (largest >= 1e9) return { power: Math.min(needed, digits - 1) };
   const byLargest = digits >= ALL_DIGITS ? needed : Math.max(0, digits - 1 - Math.floor(Math.log10(largest)));
   // Over many powers of ten equal decimals would be mostly zeros.

@@ -55,8 +55,10 @@ export class Fields {
   /**
    * A new field for the text at `path`. `hint` says what may stand there; `suggestions` gives the
    * texts that the browser offers. A fault of the whole `group` is shown while the field is empty.
+   * With `number` the sheet gets a number where the text is one. Fields of
+   * one `pair` stand in the sheet together, once all of them are typed.
    */
-  make(path, { label, hint, suggestions = null, onEmpty = null, group = null }) {
+  make(path, { label, hint, suggestions = null, onEmpty = null, group = null, number = false, pair = null }) {
     const id = freshId("field");
     const input = element("input", {
       id, type: "text", class: "key", autocomplete: "off", autocapitalize: "off", autocorrect: "off",
@@ -71,11 +73,12 @@ export class Fields {
       element("label", { for: id, text: label }),
       element("span", { class: "hint", id: `${id}-hint`, text: hint }),
       input, list, echo, ways);
-    const field = { path, label, input, echo, ways, list, suggestions, node, onEmpty, group };
+    const field = { path, label, input, echo, ways, list, suggestions, node, onEmpty, group, number, pair };
     input.value = this.#store.text(path);
     input.addEventListener("input", () => {
       this.#timing.typing(path);
-      this.#store.type(path, input.value, `Typing in ${label}`);
+      if (pair) this.#typePair(pair, label);
+      else this.#store.type(path, number ? numberOr(input.value) : input.value, `Typing in ${label}`);
     });
     input.addEventListener("blur", () => {
       this.#store.rest();
@@ -92,6 +95,11 @@ export class Fields {
     return node;
   }
 
+  #typePair(pair, label) {
+    const texts = [...this.#fields.values()].filter((field) => field.pair === pair).map(({ input }) => input.value);
+    this.#store.type(pair, texts.every((text) => text.trim() !== "") ? texts : "", `Typing in ${label}`);
+  }
+
   /** Takes a field off the page. */
   remove(path) {
     this.#fields.get(path)?.node.remove();
@@ -105,6 +113,7 @@ export class Fields {
   /** Focuses the field at a path, or the first one inside the group at that path. */
   focus(path) {
     const field = this.#fields.get(path) ?? [...this.#fields.values()].find((other) => other.path.startsWith(`${path}/`));
+    for (let fold = field?.input.closest("details"); fold; fold = fold.parentElement.closest("details")) fold.open = true;
     field?.input.focus();
     return field !== undefined;
   }
@@ -114,10 +123,14 @@ export class Fields {
     return this.#fields.get(path)?.label ?? null;
   }
 
-  /** The sheet has changed by other means than typing here. */
-  refill() {
+  /** The sheet has changed; by `typing`, or by other means. */
+  refill(typing = false) {
     for (const field of this.#fields.values()) {
+      // One end of a pair waits for the other.
+      if (typing && field.pair && valueAt(this.#store.sheet, field.pair) === undefined) continue;
       const text = this.#store.text(field.path);
+      // "0." is on its way to 0.85.
+      if (field.number && String(numberOr(field.input.value)) === text) continue;
       if (field.input.value !== text) field.input.value = text;
     }
   }
@@ -171,6 +184,32 @@ export class Fields {
   }
 }
 
+/** A yes-or-no entry that is yes unless the sheet says no. */
+export function flagField({ store, setField }, path, label, short) {
+  const box = element("input", { type: "checkbox", "data-path": path });
+  const fill = () => {
+    box.checked = valueAt(store.sheet, path) !== false;
+  };
+  box.addEventListener("change", () => setField(path, box.checked ? undefined : false, `${short} ${box.checked ? "on" : "off"}`));
+  store.subscribe(fill);
+  fill();
+  return element("label", { class: "check" }, box, element("span", { text: label }));
+}
+
+/** An entry that is one of a few words: [[word, how it is said]]; "" leaves the sheet silent. */
+export function wordField({ store, setField }, path, label, words) {
+  const id = freshId("word");
+  const box = element("select", { id, "data-path": path }, ...words.map(([value, text]) => element("option", { value, text })));
+  const fill = () => {
+    const value = valueAt(store.sheet, path) ?? "";
+    box.value = words.some(([word]) => word === value) ? value : "";
+  };
+  box.addEventListener("change", () => setField(path, box.value || undefined, `${label} ${box.selectedOptions[0].textContent}`));
+  store.subscribe(fill);
+  fill();
+  return element("div", { class: "field" }, element("label", { for: id, text: label }), element("span", { class: "hint" }), box);
+}
+
 /** What a fault says: the text with its place marked, the sentence, the bound. */
 export function faultNode(fault, text) {
   const node = element("div", { class: "fault" });
@@ -205,10 +244,15 @@ function whole(text) {
   return text.replace(/^[\uDC00-\uDFFF]/, "").replace(/[\uD800-\uDBFF]$/, "");
 }
 
+// The number of a text that is one, else the text: the core says what is wrong with it.
+function numberOr(text) {
+  return text.trim() !== "" && Number.isFinite(Number(text)) ? Number(text) : text;
+}
+
 // A number that stood where a number must stand is replaced by a number.
 function replacementValue(sheet, path, text) {
   if (text === "") return undefined;
-  return typeof valueAt(sheet, path) === "number" && text.trim() !== "" && Number.isFinite(Number(text)) ? Number(text) : text;
+  return typeof valueAt(sheet, path) === "number" ? numberOr(text) : text;
 }
 
 // The ways out may change under somebody's finger: focus goes back to the input.

@@ -10,14 +10,16 @@ const NO_SHEET = {
 
 export class Filing {
   #engine;
+  #heavy;
   #store;
   #notes;
   #replace;
   #verdict;
   #toFirstFault;
 
-  constructor({ engine, store, notes, replace, verdict, toFirstFault }) {
+  constructor({ engine, heavy, store, notes, replace, verdict, toFirstFault }) {
     this.#engine = engine;
+    this.#heavy = heavy;
     this.#store = store;
     this.#notes = notes;
     this.#replace = replace;
@@ -67,7 +69,7 @@ export class Filing {
 
   async saveRecord() {
     const { sheet } = this.#store;
-    const result = await this.#engine.request("record", "record", [sheet]);
+    const result = await this.#heavy().request("record", "record", [sheet]);
     if (result.text === undefined) {
       this.#notes.put("saved", { kind: "fault", text: "The record could not be made: the calculation ended. Your sheet is safe." });
       return;

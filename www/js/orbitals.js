@@ -12,8 +12,7 @@ const REST_MS = 250;
 const KEPT = 24;
 
 export class Orbitals {
-  #makeEngine;
-  #engine = null;
+  #engine;
   #store;
   #questions;
   #kept = new Map();
@@ -21,9 +20,9 @@ export class Orbitals {
   #listeners = new Set();
   #open = false;
 
-  /** `makeEngine` starts the worker, once somebody wants to see the answer. */
-  constructor(makeEngine, store, questions) {
-    this.#makeEngine = makeEngine;
+  /** `heavy()` gives the worker that computes. */
+  constructor(heavy, store, questions) {
+    this.#engine = heavy;
     this.#store = store;
     this.#questions = questions;
     /** The sheet's own atom. */
@@ -76,7 +75,7 @@ export class Orbitals {
 
   /** Ends the runs; what was computed stays. */
   stop() {
-    if (this.own.run !== null || this.beside.run !== null) this.#engine.stop();
+    if (this.own.run !== null || this.beside.run !== null) this.#engine().stop();
   }
 
   /** The sections of every real spherical harmonic of this ℓ, or null when that was stopped. */
@@ -111,8 +110,7 @@ export class Orbitals {
   }
 
   #call(key, door, parameters, options) {
-    this.#engine ??= this.#makeEngine();
-    return this.#engine.request(key, door, parameters, options);
+    return this.#engine().request(key, door, parameters, options);
   }
 
   #want(slot, sheet) {
@@ -129,7 +127,7 @@ export class Orbitals {
   // Nothing is wanted any more; what stays on show is from before the change.
   #leave(slot, { needs = null, result = null }) {
     clearTimeout(slot.rest);
-    if (slot.run !== null) this.#engine.supersede(`${slot.name}:`);
+    if (slot.run !== null) this.#engine().supersede(`${slot.name}:`);
     this.#end(slot);
     Object.assign(slot, { key: null, needs, result, old: result !== null, faults: [], waits: null, stopped: false, panic: null });
   }

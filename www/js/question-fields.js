@@ -1,6 +1,7 @@
 // The fields that belong to one question, shown in its rung.
 
 import { element, freshId, setText } from "./dom.js";
+import { lineFields } from "./line-fields.js";
 
 /** Lines in the list; a longer one is no help to anybody. */
 const LISTED = 500;
@@ -9,6 +10,7 @@ const MULTIPOLES = ["E1", "M1", "E2"];
 
 /** The node with the fields of a question, or null where the head has them all. */
 export function questionFields(name, fields, questions, put, shared) {
+  if (name === "lines") return lineFields(fields, questions, { ...shared, setField: put });
   return name === "splitting" ? splittingFields(fields, questions, put, shared) : null;
 }
 

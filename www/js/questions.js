@@ -2,6 +2,11 @@
 
 /** A folded question is asked once the sheet has rested this long, so that typing is not held up. */
 const FOLDED_REST_MS = 150;
+/** Levels and lines are computed once the sheet has rested this long; folded, a little later. */
+const COMPUTED_REST_MS = 250;
+const COMPUTED_FOLDED_REST_MS = 600;
+/** What they hang on: another field never asks for them again. */
+const MATTERS = ["species", "configurations", "structure", "measured", "window", "medium", "source", "refractive_index", "air"];
 /** A run shorter than this is not shown as one. */
 export const SHOW_RUN_MS = 300;
 
@@ -12,14 +17,20 @@ export const WORDS = {
   splitting: "How does it split?",
 };
 
+/** Questions whose answer is computed, in a worker of its own, and what is asked there with them. */
+const COMPUTED = { lines: ["levels", "lines"] };
+
 export class Questions {
   #engine;
+  #heavy;
   #store;
   #listeners = new Set();
   #turn = 0;
 
-  constructor(engine, store) {
+  /** `engine` reads and counts; `heavy()` gives the one that computes, so that typing never waits. */
+  constructor(engine, heavy, store) {
     this.#engine = engine;
+    this.#heavy = heavy;
     this.#store = store;
     /** The newest reading of the sheet, or null. */
     this.reading = null;
@@ -40,6 +51,7 @@ export class Questions {
       this.entries.set(name, {
         name, status: null, needs: null, way: null, answer: null, fresh: false,
         run: null, waits: null, panic: null, stopped: false, unread: true,
+        computed: COMPUTED[name] ?? null, key: null, answered: null, found: [], rest: 0,
       });
     }
   }
@@ -58,7 +70,10 @@ export class Questions {
     this.#turn += 1;
     const turn = this.#turn;
     this.#engine.supersede("answer:");
+    const key = computedKey(this.#store.sheet);
     for (const entry of this.entries.values()) {
+      if (entry.computed && entry.key === key) continue;
+      if (entry.computed) this.#leave(entry);
       this.#endRun(entry);
       entry.unread = true;
       this.#tell(entry.name);
@@ -67,7 +82,7 @@ export class Questions {
     if (turn !== this.#turn || result.superseded || result.stopped) return;
     if (result.panic !== undefined) {
       this.broken = result.panic;
-      for (const entry of this.entries.values()) Object.assign(entry, { unread: false, fresh: false });
+      for (const entry of this.entries.values()) Object.assign(entry, { unread: false, fresh: false, key: null });
       this.#tell("reading");
       return;
     }
@@ -76,14 +91,13 @@ export class Questions {
     for (const question of this.reading.questions) {
       const entry = this.entries.get(question.name);
       if (entry === undefined) continue;
-      Object.assign(entry, {
-        status: question.status, needs: question.needs, way: question.way,
-        fresh: false, waits: null, panic: null, stopped: false, unread: false,
-      });
+      Object.assign(entry, { status: question.status, needs: question.needs, way: question.way, unread: false });
+      if (entry.computed) this.#settle(entry, key);
+      else Object.assign(entry, { fresh: false, waits: null, panic: null, stopped: false });
       if (question.status === "lacks") entry.answer = null;
     }
     // The worker answers while the page shows how the sheet was read.
-    const ready = [...this.entries.values()].filter((entry) => entry.status === "ready");
+    const ready = [...this.entries.values()].filter((entry) => entry.status === "ready" && !entry.computed);
     for (const entry of ready.filter(({ name }) => this.isUnfolded(name))) this.ask(entry.name);
     for (const entry of ready.filter(({ name }) => !this.isUnfolded(name))) {
       entry.unread = true;
@@ -94,53 +108,105 @@ export class Questions {
     this.#tell("reading");
   }
 
+  // What was computed for this very part of the sheet, or is under way, stands as it is.
+  #settle(entry, key) {
+    if (entry.status !== "lacks" && entry.key === key) {
+      // A fault in another field, which typing often passes through, ends no run.
+      entry.unread = entry.rest !== 0;
+      if (entry.found.length > 0) this.#fault(entry, entry.found);
+    } else if (entry.status !== "ready") {
+      this.#leave(entry);
+      entry.fresh = false;
+    } else {
+      const first = entry.answer === null;
+      Object.assign(entry, { key, found: [], waits: null, panic: null, stopped: false, fresh: entry.answer !== null && entry.answered === key });
+      if (entry.fresh) return;
+      entry.unread = true;
+      const rest = this.isUnfolded(entry.name) ? (first ? 0 : COMPUTED_REST_MS) : COMPUTED_FOLDED_REST_MS;
+      entry.rest = setTimeout(() => this.ask(entry.name), rest);
+    }
+  }
+
+  // Nothing of it is wanted any more; the answer on show is from before the change.
+  #leave(entry) {
+    this.#unrest(entry);
+    if (entry.run !== null) this.#heavy().supersede("answer:");
+    this.#endRun(entry);
+    entry.key = null;
+  }
+
+  #unrest(entry) {
+    clearTimeout(entry.rest);
+    entry.rest = 0;
+  }
+
   /** Asks one question; `asked` means that the person has said so, however long it takes. */
   async ask(name, asked = false) {
     const entry = this.entries.get(name);
-    const turn = this.#turn;
     const run = { since: performance.now(), estimate: null, progress: null, shown: false, timer: 0 };
+    this.#unrest(entry);
     this.#endRun(entry);
     Object.assign(entry, { run, waits: null, panic: null, stopped: false, unread: false });
     run.timer = setTimeout(() => {
       run.shown = true;
       this.#tell(name);
     }, SHOW_RUN_MS);
-    const result = await this.#engine.request(`answer:${name}`, "answer", [this.#store.sheet, name], {
-      asked,
-      onEstimate: (estimate) => {
-        run.estimate = estimate;
-        if (run.shown) this.#tell(name);
-      },
-      onProgress: (progress) => {
-        run.progress = progress;
-        if (run.shown) this.#tell(name);
-      },
-    });
-    if (turn !== this.#turn || entry.run !== run) return;
+    const note = (what) => (value) => {
+      run[what] = value;
+      if (run.shown) this.#tell(name);
+    };
+    const { sheet } = this.#store;
+    const key = entry.key;
+    const engine = entry.computed ? this.#heavy() : this.#engine;
+    const answers = {};
+    let result;
+    let faults = null;
+    for (const question of this.#askedFor(entry)) {
+      result = await engine.request(`answer:${question}`, "answer", [sheet, question], { asked, onEstimate: note("estimate"), onProgress: note("progress") });
+      if (entry.run !== run) return;
+      if (result.text === undefined) break;
+      const message = JSON.parse(result.text);
+      answers[question] = message.answer;
+      faults = message.answer ? null : message.faults;
+      if (faults !== null) break;
+    }
     this.#endRun(entry);
     if (result.superseded) return;
     if (result.waits) entry.waits = result.waits;
     else if (result.stopped) entry.stopped = true;
     else if (result.panic !== undefined) entry.panic = result.panic;
-    else {
-      const message = JSON.parse(result.text);
-      if (message.answer) Object.assign(entry, { answer: message.answer, fresh: true });
-      else {
-        // Faults that only answering could find are shown like those of the reading.
-        entry.status = "fault";
-        const known = new Set(this.reading.faults.map((fault) => JSON.stringify(fault)));
-        const found = message.faults.filter((fault) => !known.has(JSON.stringify(fault)));
-        this.reading = { ...this.reading, faults: [...this.reading.faults, ...found] };
-        this.#tell("reading");
-      }
+    else if (faults === null) {
+      const { [name]: answer, ...beside } = answers;
+      Object.assign(entry, { answer: entry.computed ? { ...answer, beside } : answer, fresh: true, answered: key });
+    } else {
+      entry.found = faults;
+      this.#fault(entry, faults);
+      this.#tell("reading");
     }
     this.#tell(name);
+  }
+
+  // Levels are asked for where the atom has them: shells of any atom may have no energies.
+  #askedFor(entry) {
+    if (!entry.computed) return [entry.name];
+    const ready = (name) => name === entry.name || this.reading.questions.some((question) => question.name === name && question.status === "ready");
+    return entry.computed.filter(ready);
+  }
+
+  // Faults that only answering could find are shown like those of the reading.
+  #fault(entry, faults) {
+    entry.status = "fault";
+    entry.fresh = false;
+    const known = new Set(this.reading.faults.map((fault) => JSON.stringify(fault)));
+    const found = faults.filter((fault) => !known.has(JSON.stringify(fault)));
+    this.reading = { ...this.reading, faults: [...this.reading.faults, ...found] };
   }
 
   /** Ends every run; the last answers stay. */
   stop() {
     const running = [...this.entries.values()].filter((entry) => entry.run !== null);
-    if (running.length > 0) this.#engine.stop();
+    if (running.some(({ computed }) => !computed)) this.#engine.stop();
+    if (running.some(({ computed }) => computed)) this.#heavy().stop();
   }
 
   #endRun(entry) {
@@ -154,6 +220,10 @@ export class Questions {
   }
 }
 
+function computedKey(sheet) {
+  return JSON.stringify(MATTERS.map((key) => sheet[key] ?? null));
+}
+
 /**
  * The state of a rung: {kind, words}. `shownFaults` is how many faults are on show; a fault that
  * is still held back because somebody is typing only makes the answer old.
@@ -161,7 +231,7 @@ export class Questions {
 export function rungState(entry, shownFaults) {
   if (entry.run?.shown) {
     const seconds = entry.run.estimate?.seconds;
-    return { kind: "running", words: seconds ? `running, about ${duration(seconds)}` : "running" };
+    return { kind: "running", words: seconds ? `running, about ${duration(seconds)}` : "running", part: entry.run.progress?.done ?? 0 };
   }
   if (entry.panic !== null) return { kind: "fault", words: "stopped unexpectedly" };
   if (entry.waits !== null) return { kind: "ready", words: `${estimateWords(entry.waits)}, waits for Start` };

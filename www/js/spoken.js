@@ -71,6 +71,11 @@ export const UNITS = {
   "a0^-1": bohr("-1", "inverse Bohr radii"),
   "a0^-2": bohr("-2", "inverse Bohr radii squared"),
   "a0^-3": bohr("-3", "inverse Bohr radii cubed"),
+  "s-1": { runs: [{ text: "s" }, { up: "\u22121" }], speech: "per second", latex: "s$^{-1}$" },
+  s: { runs: [{ text: "s" }], speech: "seconds" },
+  "Å": { runs: [{ text: "Å" }], speech: "ångström", latex: "\\AA{}" },
+  eV: { runs: [{ text: "eV" }], speech: "electron volts" },
+  THz: { runs: [{ text: "THz" }], speech: "terahertz" },
   "°": { runs: [{ text: "°" }], speech: "degrees", latex: "$^\\circ$" },
   "%": { runs: [{ text: "%" }], speech: "per cent", latex: "\\%" },
 };

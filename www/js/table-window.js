@@ -31,8 +31,16 @@ export function rowWindow({ region, body, table, columns, rows, makeRow, plain }
     const to = Math.min(count, Math.ceil((region.scrollTop + view) / height) + SPARE);
     if (!anew && from === first && to === last) return;
     const held = body.contains(document.activeElement) ? document.activeElement.dataset.place : undefined;
+    const rowsOf = (start, end) => Array.from({ length: Math.max(end - start, 0) }, (_, i) => makeRow(start + i));
+    if (anew || from >= last || to <= first) body.replaceChildren(...rowsOf(from, to));
+    else {
+      // Rows that stay in view stay as they are.
+      for (let place = first; place < from; place += 1) body.firstElementChild.remove();
+      for (let place = last; place > to; place -= 1) body.lastElementChild.remove();
+      body.prepend(...rowsOf(from, first));
+      body.append(...rowsOf(last, to));
+    }
     [first, last] = [from, to];
-    body.replaceChildren(...Array.from({ length: to - from }, (_, i) => makeRow(from + i)));
     above.set(from * height);
     below.set((count - to) * height);
     if (pointed >= 0) body.querySelector(`tr[data-place="${pointed}"]`)?.classList.add("found");
@@ -88,12 +96,19 @@ function spacer(columns) {
   };
 }
 
+// Of numbers with equal decimals the largest and the smallest are the longest.
+function outermost(rows, { value }) {
+  const known = rows.filter((row) => typeof value(row) === "number");
+  const most = (sign) => known.reduce((best, row) => (sign * value(row) > sign * value(best) ? row : best), known[0]);
+  return known.length === 0 ? rows.slice(0, 1) : [most(1), most(-1)];
+}
+
 // Columns keep their widths while rows come and go.
 function widths(columns, rows, plain) {
   return element("colgroup", {}, ...columns.map((column, i) => {
     // Heads break after 14 characters; raised and lowered parts are narrower than their letters.
     let longest = Math.min([...column.name].length, 14) / NARROW;
-    for (const row of rows) longest = Math.max(longest, plain(row, column).length);
+    for (const row of column.type === "number" ? outermost(rows, column) : rows) longest = Math.max(longest, plain(row, column).length);
     const col = element("col");
     // The first column has the room of the notch besides.
     col.style.width = `${(Math.min(longest, 60) * (column.rich ? NARROW : 1) + (i === 0 ? 5 : 3)).toFixed(1)}ch`;

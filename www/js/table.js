@@ -20,12 +20,15 @@ export const DRAW_ALL = 500;
  *   long   true for columns of sentences, which may take several lines
  *   reason why a value can be unknown: text, or row → text
  *   copied true for columns that are copied but not shown
+ *   digits how many digits stand before the point of a usual value: its decimals follow from these and not from the
+ *          largest value; "power" for powers of ten
  *   kind   one kind for the column, or row → kind where they differ
  * `identify`: row → id of the shared choice, or null for rows that cannot be chosen.
  * `concerns`: (row, chosen id) → whether what was chosen elsewhere is this row's matter too.
+ * `sorting`: {name, direction} of the column by which it is sorted, kept by a caller that builds it anew.
  */
-export function dataTable({ caption, columns, rows, identify = null, concerns = () => false, context, file }) {
-  return new DataTable({ caption, columns, rows, identify, concerns, context, file }).node;
+export function dataTable({ caption, columns, rows, identify = null, concerns = () => false, context, file, sorting = {} }) {
+  return new DataTable({ caption, columns, rows, identify, concerns, context, file, sorting }).node;
 }
 
 class DataTable {
@@ -38,7 +41,8 @@ class DataTable {
   #concerns;
   #context;
   #file;
-  #sorted = { column: -1, direction: 0 };
+  #sorted;
+  #sorting;
   #active = 0;
   #formats;
   #window = null;
@@ -47,7 +51,7 @@ class DataTable {
   #told = element("span", { class: "note told" });
   #heads = [];
 
-  constructor({ caption, columns, rows, identify, concerns, context, file }) {
+  constructor({ caption, columns, rows, identify, concerns, context, file, sorting }) {
     this.#caption = caption;
     this.#columns = columns;
     this.#shown = columns.filter((column) => !column.copied);
@@ -58,8 +62,11 @@ class DataTable {
     this.#context = context;
     this.#file = file ?? richPlain(caption);
     this.#formats = this.#shown.map((column) => (column.type === "number"
-      ? columnFormat(rows.map((row) => column.value(row)).filter((value) => typeof value === "number"), context.settings.digits ?? 17)
+      ? columnFormat(rows.map((row) => column.value(row)).filter((value) => typeof value === "number"), context.settings.digits ?? 17, column.digits)
       : null));
+    this.#sorting = sorting;
+    this.#sorted = { column: this.#shown.findIndex(({ name }) => name === sorting.name), direction: sorting.direction ?? 0 };
+    if (this.#sorted.column < 0) this.#sorted = { column: -1, direction: 0 };
     this.#build();
   }
 
@@ -80,7 +87,7 @@ class DataTable {
       this.node.append(this.#find());
     }
     this.node.append(this.#region, this.#moreMark(table), element("div", { class: "table-tools" }, this.#copyMenu(), this.#told));
-    this.#draw();
+    this.#arrange();
     if (this.#identify) {
       this.#region.addEventListener("keydown", (event) => this.#key(event));
       this.#body.addEventListener("click", (event) => {
@@ -99,7 +106,8 @@ class DataTable {
       mark.hidden = !more;
       this.node.classList.toggle("goes-on", more);
     };
-    this.#region.addEventListener("scroll", look, { passive: true });
+    // Before a window of rows draws others: looking afterwards would lay the table out twice.
+    this.#region.addEventListener("scroll", look, { passive: true, capture: true });
     const observer = new ResizeObserver(look);
     observer.observe(this.#region);
     observer.observe(table);
@@ -115,7 +123,7 @@ class DataTable {
   #head(column, i) {
     const kind = typeof column.kind === "string" ? column.kind : null;
     const inside = [column.head ? richNode(column.head, this.#context.settings) : column.name];
-    if (column.unit) inside.push("\u00a0(", unitNode(column.unit), ")");
+    if (column.unit) inside.push(element("wbr"), element("span", { class: "in-unit" }, "\u00a0(", unitNode(column.unit), ")"));
     const button = element("button", { type: "button", class: "sort", on: { click: () => this.#sort(i) } },
       element("span", {}, ...inside), element("span", { class: "sort-mark", "aria-hidden": "true" }));
     const cell = element("th", { scope: "col", class: columnClass(column) }, button);
@@ -167,15 +175,21 @@ class DataTable {
   #sort(i) {
     const direction = this.#sorted.column === i ? { 1: -1, [-1]: 0, 0: 1 }[this.#sorted.direction] : 1;
     this.#sorted = { column: direction === 0 ? -1 : i, direction };
+    Object.assign(this.#sorting, { name: direction === 0 ? null : this.#shown[i].name, direction });
+    this.#arrange();
+  }
+
+  #arrange() {
+    const { column: sorted, direction } = this.#sorted;
     this.#heads.forEach((head, at) => {
-      if (at === i && direction !== 0) head.setAttribute("aria-sort", direction > 0 ? "ascending" : "descending");
+      if (at === sorted) head.setAttribute("aria-sort", direction > 0 ? "ascending" : "descending");
       else head.removeAttribute("aria-sort");
-      head.querySelector(".sort-mark").textContent = at === i && direction !== 0 ? (direction > 0 ? " ↑" : " ↓") : "";
+      head.querySelector(".sort-mark").textContent = at === sorted ? (direction > 0 ? " ↑" : " ↓") : "";
     });
     const kept = this.#order[this.#active];
     this.#order = this.#rows.map((_, at) => at);
-    if (direction !== 0) {
-      const column = this.#shown[i];
+    if (sorted >= 0) {
+      const column = this.#shown[sorted];
       const keys = this.#rows.map((row) => sortKey(column.sort ? column.sort(row) : column.value(row), column.type));
       this.#order.sort((a, b) => direction * compare(keys[a], keys[b]) || a - b);
     }
@@ -344,9 +358,11 @@ function sortKey(value, type) {
   return type === "half" ? halfValue(value) : value;
 }
 
+const COLLATOR = new Intl.Collator("en", { numeric: true });
+
 // Unknown values stand last in either direction of numbers, first of nothing.
 function compare(a, b) {
   if (a === null || b === null) return (a === null) - (b === null);
   if (typeof a === "number" && typeof b === "number") return a - b;
-  return String(a).localeCompare(String(b), "en", { numeric: true });
+  return COLLATOR.compare(String(a), String(b));
 }

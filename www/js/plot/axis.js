@@ -37,6 +37,16 @@ export function bottomAxis(pen, { scale, from, to, left, right, y, title, at = n
   pen.text((left + right) / 2, y + TICK + 2 * LABEL + 9, title, { anchor: "middle", fill: "quiet" });
 }
 
+/** A vertical axis at `x`, its numbers to the left of it. */
+export function leftAxis(pen, { scale, from, to, x, top, bottom }) {
+  const { values, decimals } = ticks(from, to, Math.max(2, (bottom - top) / 48));
+  pen.line(x, top, x, bottom, { stroke: "edge" });
+  for (const value of values) {
+    pen.line(x - TICK, scale(value), x, scale(value), { stroke: "edge" });
+    pen.text(x - TICK - 4, scale(value) + LABEL / 3, tickText(value, decimals), { anchor: "end", fill: "quiet" });
+  }
+}
+
 /** Round values from `from` to `to` on an axis that runs as the root: at least `apart` pixels apart. */
 export function rootTicks(from, to, place, apart) {
   const values = [];

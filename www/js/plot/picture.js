@@ -17,8 +17,8 @@ const MOST_ZOOM = 200;
 /**
  * A picture.
  *
- * `layout(width, view)` → {height, marks, draw(pen), width?}; `view` is the part of the horizontal extent that
- *   is shown, [0, 1] unzoomed, or ignored when `zoomable` is false.
+ * `layout(width, view)` → {height, marks, draw(pen), width?}; `view` is the part of the horizontal extent (of the
+ *   vertical one, counted upwards, when `vertical` is true) that is shown, [0, 1] unzoomed, or ignored when `zoomable` is false.
  *   A mark: {x, y, w, h (its box, for ring and touch), reading: rich text, id: shared choice or null,
  *   ids: those of what else it belongs to, whose choice rings it too; chooses: what Enter chooses on
  *   a mark that is not ringed for it}.
@@ -66,6 +66,8 @@ class Picture {
       zoom: (centre, factor, shift) => this.#zoomBy(factor, centre, shift),
       band: (from, to) => this.#band(from, to),
       width: () => this.#width,
+      height: () => this.#shown?.height,
+      vertical: () => this.#options.vertical === true,
       enabled: () => this.#options.zoomable !== false,
     });
     new ResizeObserver(([entry]) => {
@@ -221,7 +223,8 @@ class Picture {
 
   #cursorPart() {
     const mark = this.#marks[this.#at];
-    return mark ? (mark.x + mark.w / 2) / this.#width : 0.5;
+    if (!mark) return 0.5;
+    return this.#options.vertical ? 1 - (mark.y + mark.h / 2) / this.#shown.height : (mark.x + mark.w / 2) / this.#width;
   }
 
   #band(from, to) {

@@ -4,16 +4,19 @@
 // A pointer that moved less than this was a tap.
 const TAP = 6;
 
-/** `act`: {tap(x, y), hover(x, y), zoom(centre, factor, shift), band(from, to), width(), enabled()}; parts run 0 to 1. */
+/**
+ * `act`: {tap(x, y), hover(x, y), zoom(centre, factor, shift), band(from, to), width(), height(), vertical(), enabled()};
+ * parts run 0 to 1 along the axis that zooms: to the right, or upwards.
+ */
 export function watchPointers(stage, act) {
   const held = new Map();
   let start = null;
   let pinch = null;
   const place = (event) => {
     const box = stage.getBoundingClientRect();
-    return [event.clientX - box.left, event.clientY - box.top];
+    return [event.clientX - box.left + stage.scrollLeft, event.clientY - box.top];
   };
-  const part = (x) => Math.min(Math.max(x / (act.width() || 1), 0), 1);
+  const part = ([x, y]) => Math.min(Math.max(act.vertical() ? 1 - y / (act.height() || 1) : x / (act.width() || 1), 0), 1);
   const band = document.createElement("div");
   band.className = "zoom-band";
 
@@ -35,14 +38,16 @@ export function watchPointers(stage, act) {
     held.set(event.pointerId, [x, y]);
     if (held.size === 2 && pinch !== null && act.enabled()) {
       const now = spread(held);
-      act.zoom(part(now.centre), now.distance / pinch.distance, (now.centre - pinch.centre) / (act.width() || 1));
+      act.zoom(part(now.centre), now.distance / pinch.distance, part(now.centre) - part(pinch.centre));
       pinch = now;
     } else if (start !== null) {
       start.moved ||= Math.hypot(x - start.at[0], y - start.at[1]) > TAP;
       if (start.moved && start.mouse && act.enabled()) {
         stage.setPointerCapture(event.pointerId);
-        band.style.left = `${Math.min(x, start.at[0])}px`;
-        band.style.width = `${Math.abs(x - start.at[0])}px`;
+        const [from, to] = act.vertical() ? [y, start.at[1]] : [x, start.at[0]];
+        band.classList.toggle("upright", act.vertical());
+        band.style[act.vertical() ? "top" : "left"] = `${Math.min(from, to)}px`;
+        band.style[act.vertical() ? "height" : "width"] = `${Math.abs(from - to)}px`;
         if (!band.isConnected) stage.append(band);
       }
     }
@@ -52,8 +57,9 @@ export function watchPointers(stage, act) {
     const [x, y] = place(event);
     band.remove();
     if (finished && start !== null) {
+      const drawn = act.vertical() ? y - start.at[1] : x - start.at[0];
       if (!start.moved) act.tap(x, y);
-      else if (start.mouse && act.enabled() && Math.abs(x - start.at[0]) > 2 * TAP) act.band(part(start.at[0]), part(x));
+      else if (start.mouse && act.enabled() && Math.abs(drawn) > 2 * TAP) act.band(part(start.at), part([x, y]));
     }
     if (held.size < 2) pinch = null;
     if (held.size === 0) start = null;
@@ -68,5 +74,5 @@ export function watchPointers(stage, act) {
 
 function spread(held) {
   const [[ax, ay], [bx, by]] = [...held.values()];
-  return { centre: (ax + bx) / 2, distance: Math.max(Math.hypot(ax - bx, ay - by), 1) };
+  return { centre: [(ax + bx) / 2, (ay + by) / 2], distance: Math.max(Math.hypot(ax - bx, ay - by), 1) };
 }

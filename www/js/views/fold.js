@@ -22,7 +22,7 @@ export function fold(context, key, title, make) {
   return node;
 }
 
-/** A choice among words, remembered like a fold: {node, value()}. */
+/** A choice among words, remembered like a fold: {node, value(), words()}. */
 export function select(context, key, label, options, act) {
   const view = context.view ?? memory;
   const kept = view.get(key);
@@ -32,14 +32,14 @@ export function select(context, key, label, options, act) {
     view.set(key, box.value);
     act(box.value);
   });
-  return { node: element("label", { class: "choose" }, element("span", { text: label }), box), value: () => box.value };
+  return { node: element("label", { class: "choose" }, element("span", { text: label }), box), value: () => box.value, words: () => box.selectedOptions[0]?.textContent ?? "" };
 }
 
 /** A yes-or-no choice, remembered: {node, value()}. */
-export function check(context, key, label, act) {
+export function check(context, key, label, act, initially = false) {
   const view = context.view ?? memory;
   const box = element("input", { type: "checkbox" });
-  box.checked = view.get(key) ?? false;
+  box.checked = view.get(key) ?? initially;
   box.addEventListener("change", () => {
     view.set(key, box.checked);
     act(box.checked);

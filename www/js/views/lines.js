@@ -1,234 +1,213 @@
-// Which lines? Every pair of levels, allowed or refused, by which multipole and by which rule.
+// Which lines? Levels as rungs, the lines between them, where they stand and how strong they are.
 
 import { element } from "../dom.js";
-import { multipletLayout } from "../plot/multiplet.js";
 import { picture } from "../plot/picture.js";
-import { richRuns, runNodes } from "../rich.js";
-import { dataTable } from "../table.js";
-import { tableAndPicture } from "./beside.js";
-import { check, fold, select } from "./fold.js";
+import { rungLayout, walkRungs } from "../plot/rung-diagram.js";
+import { stickLayout } from "../plot/sticks.js";
+import { richRuns } from "../rich.js";
+import { unitOf } from "../spoken.js";
+import { levelParts } from "./levels.js";
+import { chosenBlock } from "./chosen.js";
+import { check, fold, pointerWords, select } from "./fold.js";
+import { LineFilters } from "./line-filters.js";
+import { lineList, lineReading } from "./line-list.js";
+import { mediumOf } from "./line-units.js";
+import { Multiplets, idsOf, isOf, levelsOf, lineId } from "./multiplets.js";
 import { kindOf, workingNode } from "./working.js";
 
-/** Above this many multiplets the list is cut, and says so; the table still has every line. */
-const LISTED = 2000;
-const ARROW = " – ";
-/** The order of the multipoles: the strongest lines come first. */
-const MULTIPOLES = ["E1", "M1", "E2"];
+/** Links that are drawn at once: more would be a hatching. */
+const LINKS = 14;
+const LINKS_OF_LEVEL = 60;
+/** Part of the strongest line's height that can be seen. */
+const SEEN = 1e-3;
+const COLUMNS = { configuration: "configuration", term: "term", J: "J" };
+const LEAST_COLUMN = { configuration: 112, term: 96, J: 112 };
 
-/** Evidence and working of an answer to "lines". */
+/** Evidence and working of an answer to "lines"; `answer.beside.levels` has the levels, where there are energies. */
 export function render(answer, context) {
-  return { evidence: new Lines(answer, context).node, working: workingNode(answer, context.settings) };
+  const levels = answer.beside?.levels ?? null;
+  const working = element("div", {}, ...[levels, answer].filter(Boolean).map((each) => workingNode(each, context.settings)));
+  if (levels === null) return { evidence: new Multiplets(answer, context).node, working };
+  return { evidence: new Lines(answer, levels, context).node, working };
 }
 
-/** The shared-choice id of a line or of a refused pair. */
-export function lineId({ lower, upper, multipole }) {
-  return `line:${lower}/${upper}/${multipole}`;
-}
+const STICK_WORDS = () => pointerWords("Tap a stick; two fingers enlarge.", "Walk from stick to stick with the arrow keys, + enlarges.");
 
 class Lines {
   #answer;
-  #ordered;
+  #whole;
   #context;
   #levels;
-  #tableBox = element("div", { class: "lines-table" });
-  #pictureNote = element("p", { class: "note", hidden: true });
-  #shown = null;
+  #filters;
+  #columns;
+  #refused;
+  #endsOf;
+  #logarithmic;
+  #diagram;
+  #spectrum;
+  #list = element("div", { class: "lines-table" });
 
-  constructor(answer, context) {
+  constructor(answer, whole, context) {
     this.#answer = answer;
-    this.#levels = levelsOf(answer);
+    this.#whole = whole;
     this.#context = context;
-    const { lines, refused, multiplets } = answer;
-    this.#ordered = [...lines].sort((a, b) => rank(a) - rank(b));
-    const multipoles = [...new Set(this.#ordered.map((line) => line.multipole))];
-    const listed = (multiplets ?? []).filter((one) => one.lines !== 0).slice(0, LISTED);
-    this.multipole = select(context, "lines:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], () => this.#fill());
-    this.multiplet = select(context, "lines:multiplet", "Multiplet", [["", "all"], ...listed.map((one) => [`${one.name}|${one.multipole}`, `${dashed(one.name)}, ${one.multipole}`])], () => {
-      this.#fill();
-      this.#redraw();
+    this.#levels = mergedLevels(answer, whole);
+    this.#endsOf = lineEnds(answer.lines);
+    this.#filters = new LineFilters(answer, this.#levels, context, () => this.#changed());
+    this.#columns = select(context, "lines:columns", "Columns by", Object.entries(COLUMNS), () => this.#drawDiagram());
+    this.#refused = answer.refused?.length ? check(context, "lines:refused", "Refused pairs of the chosen level, dotted", () => this.#drawDiagram()) : null;
+    this.#logarithmic = check(context, "lines:log", "Heights by powers of ten", () => this.#drawSpectrum());
+    const nearList = () => this.#list.querySelector(".table-region")?.focus();
+    this.#diagram = picture({
+      context, vertical: true, walk: walkRungs, tableNear: () => this.#openLevels(),
+      name: "", layout: () => ({ height: 0, marks: [], draw() {} }),
+      rest: pointerWords("Tap a level or a line; two fingers enlarge.", "Walk with the arrow keys, + enlarges; draw a band with the mouse to enlarge a part."),
     });
-    this.dotted = check(context, "lines:refused", "Show refused pairs, dotted", () => this.#redraw());
-    this.#fill();
+    this.#spectrum = picture({
+      context, tableNear: nearList, name: "", layout: () => ({ height: 0, marks: [], draw() {} }),
+      rest: STICK_WORDS(),
+    });
+    this.#changed();
+    const details = levelParts(whole, this.#levels, this.#endsOf, context);
+    this.#levelsFold = details[0];
     this.node = element("div", { class: "evidence-parts" },
-      element("div", { class: "choices" }, this.multipole.node, this.multiplet.node, this.dotted.node),
-      multiplets?.length > listed.length ? element("p", { class: "note", text: `The list has the first ${listed.length} multiplets with lines.` }) : null,
-      tableAndPicture(this.#tableBox, this.#picture(), "picture-stays"),
-      element("div", { class: "parts" },
-        refused?.length ? fold(context, "lines:refused-table", [`Refused pairs and the rules that refuse them (${refused.length})`], () => this.#refusedTable()) : null,
-        multiplets?.length ? fold(context, "lines:sums", ["Sum rules of each multiplet"], () => this.#sums()) : null));
-    context.choice.subscribe(() => this.#redraw());
+      this.#filters.node,
+      element("div", { class: "picture-with-choices" },
+        element("div", { class: "choices" }, this.#columns.node, this.#refused?.node), this.#diagram.node),
+      answer.lines.length === 0 ? null : element("div", { class: "picture-with-choices" },
+        element("div", { class: "choices" }, this.#logarithmic.node), this.#spectrum.node),
+      this.#list,
+      chosenBlock({ answer, levels: this.#levels, context }),
+      element("div", { class: "parts" }, ...details,
+        answer.multiplets?.length || answer.refused?.length
+          ? fold(context, "lines:multiplets", ["Multiplets: relative strengths, refused pairs, sum rules"], () => new Multiplets(answer, context).node) : null));
+    context.choice.subscribe(() => this.#drawDiagram());
   }
 
-  #fill() {
-    const wanted = this.multipole.value();
-    const [name, multipole] = this.multiplet.value().split("|");
-    const rows = this.#ordered.filter((line) => (wanted === "" || line.multipole === wanted)
-      && (name === "" || (line.multiplet === name && line.multipole === multipole)));
-    this.#tableBox.replaceChildren(rows.length === 0 && this.#answer.lines.length > 0
-      ? element("p", { text: `No line passes both choices; ${this.#answer.lines.length} stand outside them.` })
-      : linesTable(rows, this.#answer, this.#levels, this.#context));
+  #levelsFold = null;
+
+  #openLevels() {
+    this.#levelsFold.open = true;
+    this.#levelsFold.querySelector("summary").focus();
   }
 
-  #picture() {
-    const first = this.#pictured();
-    if (first === null) return null;
-    this.#shown = picture({
-      context: this.#context, zoomable: false, name: first.name, layout: multipletLayout(first), rest: this.#legend(),
-      tableNear: () => this.#tableBox.querySelector(".table-region")?.focus(),
+  #changed() {
+    this.#drawDiagram();
+    this.#drawSpectrum();
+    const { rows } = this.#filters;
+    this.#list.replaceChildren(rows.length === 0 && this.#answer.lines.length > 0
+      ? element("p", { text: `No line passes these choices; ${this.#answer.lines.length} stand outside them.` })
+      : lineList(rows, { answer: this.#answer, levels: this.#levels, filters: this.#filters, context: this.#context }));
+  }
+
+  #reading(line) {
+    return lineReading(line, { answer: this.#answer, levels: this.#levels, filters: this.#filters, medium: mediumOf(this.#context) });
+  }
+
+  #drawDiagram() {
+    const links = this.#links();
+    const by = this.#columns.value();
+    this.#diagram.redraw({
+      name: ["Levels of ", ...(this.#whole.species ?? []), ", columns by ", by],
+      layout: rungLayout({ columns: this.#columnsBy(by), least: LEAST_COLUMN[by], links, axis: [{ text: "Energy above the lowest level (" }, ...unitOf("cm-1").runs, { text: ")" }] }),
     });
-    this.#sayWhich(first);
-    return element("div", { class: "picture picture-box" }, this.#pictureNote, this.#shown.node);
   }
 
-  #redraw() {
-    if (this.#shown === null) return;
-    const now = this.#pictured();
-    this.#shown.redraw({ layout: multipletLayout(now), name: now.name, rest: this.#legend() });
-    this.#sayWhich(now);
-  }
-
-  #legend() {
-    return `Links are allowed lines, thicker when stronger: E1 whole, M1 dashed, E2 dash and dot.${this.dotted.value() ? " Refused pairs are dotted." : ""}`;
-  }
-
-  // The table may have every multiplet while the picture has room for one.
-  #sayWhich({ title }) {
-    const pairs = new Set(this.#answer.lines.map((line) => line.multiplet)).size;
-    this.#pictureNote.hidden = this.multiplet.value() !== "" || pairs < 2;
-    this.#pictureNote.replaceChildren("The picture shows one multiplet of ", String(pairs), ", ", ...runNodes(title), "; choose a line or a multiplet for another.");
-  }
-
-  /** The term pair to draw: that of the chosen line, else of the chosen multiplet, else the fullest. */
-  #pictured() {
-    const { lines, refused = [], multiplets = [] } = this.#answer;
+  // The chosen line, the lines of the chosen level, or the strongest that are listed.
+  #links() {
+    const { measure, rows } = this.#filters;
     const chosen = this.#context.choice.get();
-    const picked = chosen?.startsWith("line:") ? [...lines, ...refused].find((one) => lineId(one) === chosen) : this.#concerned(chosen);
-    const [name, multipole] = this.multiplet.value().split("|");
-    const listed = multiplets.find((one) => one.name === name && one.multipole === multipole)
-      ?? multiplets.reduce((best, one) => (best === null || weightOf(one) > weightOf(best) ? one : best), null);
-    const sample = picked ?? lines.find((line) => line.multiplet === listed?.name && line.multipole === listed?.multipole) ?? lines[0] ?? refused[0];
-    return sample === undefined ? null : this.#pair(this.#levels.get(sample.upper), this.#levels.get(sample.lower));
+    const byStrength = (lines) => [...lines].sort((a, b) => (b[measure] ?? 0) - (a[measure] ?? 0));
+    const own = chosen?.startsWith("line:") ? this.#answer.lines.filter((line) => lineId(line) === chosen)
+      : chosen === null ? [] : byStrength(this.#answer.lines.filter((line) => isOf(this.#levels, line, chosen))).slice(0, LINKS_OF_LEVEL);
+    const lines = own.length > 0 ? own : byStrength(rows).slice(0, LINKS);
+    const refused = chosen === null || !this.#refused?.value() ? [] : this.#answer.refused.filter((pair) => isOf(this.#levels, pair, chosen)).slice(0, LINKS_OF_LEVEL);
+    const link = (line, more) => ({ id: lineId(line), ids: idsOf(this.#levels, line), upper: `level:${line.upper}`, lower: `level:${line.lower}`, multipole: line.multipole, ...more });
+    return [
+      ...lines.map((line) => link(line, { strength: line[measure], refused: false, reading: this.#reading(line) })),
+      ...refused.map((pair) => link(pair, { strength: null, refused: true, reading: [...this.#levels.get(pair.lower).rich, " – ", ...this.#levels.get(pair.upper).rich, `, ${pair.multipole}, refused: ${pair.rule}`] })),
+    ];
   }
 
-  // A line of the chosen level or term, of the multiplet on show if that has one.
-  #concerned(chosen) {
-    if (chosen === null) return null;
-    const own = this.#ordered.filter((line) => isOf(this.#levels, line, chosen));
-    return own.find((line) => line.multiplet === this.multiplet.value().split("|")[0]) ?? own[0] ?? null;
+  #columnsBy(by) {
+    const groups = new Map();
+    for (const level of this.#levels.values()) {
+      const odd = level.parity === "odd";
+      const key = `${odd ? 1 : 0} ${{ configuration: level.configuration, term: level.termName, J: level.J }[by]}`;
+      if (!groups.has(key)) groups.set(key, { key, odd, head: headOf(by, level), levels: [] });
+      groups.get(key).levels.push(this.#rung(by, level));
+    }
+    const lowest = ({ levels }) => Math.min(...levels.map(({ energy }) => energy));
+    const order = by === "configuration" ? (a, b) => a.odd - b.odd || lowest(a) - lowest(b) : (a, b) => a.odd - b.odd || a.key.localeCompare(b.key, "en", { numeric: true });
+    return [...groups.values()].sort(order);
   }
 
-  #pair(upper, lower) {
-    const { lines, refused = [] } = this.#answer;
-    const within = (one) => this.#levels.get(one.upper).key === upper.key && this.#levels.get(one.lower).key === lower.key;
-    const [allowed, forbidden] = [lines.filter(within), refused.filter(within)];
-    const side = (which, sample) => {
-      const labels = new Set([...allowed, ...forbidden].map((one) => one[which]));
-      const runs = (term) => richRuns([{ term }]);
-      return {
-        odd: sample.term.odd,
-        runs: runs({ ...sample.term, J: null }),
-        levels: [...labels].map((label) => this.#levels.get(label)).map(({ J, label, term }) => ({ J, label, runs: runs({ ...term, index: null }) })),
-      };
+  #rung(by, level) {
+    const { term } = level;
+    const chosen = this.#context.choice.get() ?? "";
+    return {
+      id: `level:${level.label}`, ids: [level.termId, ...(this.#endsOf(chosen).includes(level.label) ? [chosen] : [])], energy: level.above_lowest, group: level.termId,
+      runs: by === "term" ? [{ text: level.J }] : richRuns([{ term }]), groupRuns: richRuns([{ term: { ...term, J: null } }]),
+      reading: [...level.rich, ", above the lowest level ", { number: { text: String(level.above_lowest), unit: "cm-1", kind: level.energy_kind ?? kindOf(this.#whole, "levels.above_lowest") } },
+        ...(level.leading ? [`, ${Math.round(level.leading)} % ${level.composition?.[0]?.name ?? ""}`] : [])],
     };
-    const kind = kindOf(this.#answer, "lines.relative");
-    const names = (one) => [...this.#levels.get(one.upper).rich, ARROW, ...this.#levels.get(one.lower).rich, `, ${one.multipole}`];
-    const links = allowed.map((line) => ({
-      upperJ: line.upper_J, lowerJ: line.lower_J, strength: line.relative, multipole: line.multipole, id: lineId(line), ids: idsOf(this.#levels, line),
-      reading: [...names(line), ": relative strength ", { number: { text: String(line.relative), unit: null, kind } }],
-    }));
-    const dots = this.dotted.value() ? forbidden.map((pair) => ({
-      upperJ: pair.upper_J, lowerJ: pair.lower_J, id: lineId(pair), reading: [...names(pair), `, refused: ${pair.rule}`],
-    })) : [];
-    const name = [...lower.termRich, ARROW, ...upper.termRich];
-    return { upper: side("upper", upper), lower: side("lower", lower), links, refused: dots, title: richRuns(name), name: ["Multiplet ", ...name] };
   }
 
-  #refusedTable() {
-    const { refused } = this.#answer;
-    return dataTable({
-      caption: "Refused pairs", rows: refused, context: this.#context, file: "refused pairs",
-      columns: [
-        ...levelColumns(this.#levels),
-        { name: "multipole", type: "text", value: (row) => row.multipole },
-        { name: "standing", type: "text", value: (row) => (row.rigorous ? "rigorous" : "approximate") },
-        { name: "rule", type: "text", long: true, value: (row) => row.rule },
-      ],
-      identify: lineId, concerns: (row, chosen) => isOf(this.#levels, row, chosen),
-    });
-  }
-
-  #sums() {
-    const names = multipletNames(this.#answer);
-    const rows = this.#answer.multiplets.flatMap((one) => ["lower", "upper"].flatMap((side) => (one[`${side}_sums`] ?? []).map((sum) => ({ ...sum, side, one }))));
-    return dataTable({
-      caption: "Strengths summed over the lines that share a level, and what the sum rule expects", rows, context: this.#context, file: "sum rules",
-      columns: [
-        { name: "multiplet", type: "text", value: (row) => `${dashed(row.one.name)}, ${row.one.multipole}`, rich: (row) => [...(names.get(row.one.name) ?? [row.one.name]), `, ${row.one.multipole}`] },
-        { name: "level", type: "text", value: (row) => row.side },
-        { name: "J", type: "half", value: (row) => row.J },
-        { name: "sum", type: "number", kind: kindOf(this.#answer, "multiplets.sum"), value: (row) => row.sum },
-        { name: "expected", type: "number", kind: "exact", value: (row) => row.expected },
-      ],
+  #drawSpectrum() {
+    const { units, unit, measure, rows } = this.#filters;
+    const medium = mediumOf(this.#context);
+    const { value, title, wave, unit: name } = units[unit.value()];
+    const absorbs = measure === "absorption" || measure === "intensity";
+    const sticks = rows.map((line) => ({
+      x: value(line, medium), up: measure === "absorption" ? 0 : line[measure] ?? 0, down: (absorbs && line.absorption) || 0,
+      multipole: line.multipole, weak: line.weak === true, id: lineId(line), ids: idsOf(this.#levels, line), reading: () => this.#reading(line),
+    })).filter(({ x }) => typeof x === "number").sort((a, b) => a.x - b.x);
+    const [from, to] = extent(sticks);
+    const inside = sticks.filter(({ x }) => x >= from && x <= to);
+    const beyond = sticks.length - inside.length;
+    const words = wave ? `${title} in ${medium} (` : `${title} (`;
+    this.#spectrum.redraw({
+      name: ["Stick spectrum of ", ...(this.#whole.species ?? []), `, ${inside.length} lines`],
+      rest: `${STICK_WORDS()}${beyond > 0 ? ` Beyond both ends stand ${beyond} lines, each below a thousandth of the strongest.` : ""}`,
+      layout: stickLayout({
+        sticks: inside, from, to, logarithmic: this.#logarithmic.value(),
+        title: [{ text: words }, ...unitOf(name).runs, { text: ")" }], height: [{ text: `${this.#filters.measureBox.words()}, strongest = 1` }],
+      }),
     });
   }
 }
 
-function linesTable(rows, answer, levels, context) {
-  const names = multipletNames(answer);
-  const missing = "needs energies, which are not computed yet";
-  const known = (key) => rows.some((row) => row[key] !== null && row[key] !== undefined);
-  const number = (key, name, unit) => known(key) && { name, unit, type: "number", kind: kindOf(answer, `lines.${key}`), value: (row) => row[key], reason: missing };
-  return dataTable({
-    caption: `${rows.length} ${rows.length === 1 ? "line" : "lines"} allowed`, rows, context, file: "lines",
-    columns: [
-      ...levelColumns(levels),
-      { name: "relative strength", type: "number", kind: kindOf(answer, "lines.relative"), value: (row) => row.relative, reason: "only lines of one multiplet are compared" },
-      { name: "multipole", type: "text", value: (row) => row.multipole },
-      { name: "multiplet", type: "text", value: (row) => dashed(row.multiplet), rich: (row) => names.get(row.multiplet) ?? row.multiplet },
-      number("wavenumber", "wavenumber", "cm-1"), number("vacuum_nm", "in vacuum", "nm"), number("air_nm", "in air", "nm"), number("S", "S"), number("gf", "gf"), number("A", "A"),
-    ].filter(Boolean),
-    identify: lineId, concerns: (row, chosen) => isOf(levels, row, chosen),
-  });
+// Labels of the chosen line's levels, looked for once for each choice.
+function lineEnds(lines) {
+  let last = { chosen: null, ends: [] };
+  return (chosen) => {
+    if (last.chosen !== chosen) {
+      const line = chosen.startsWith("line:") ? lines.find((each) => lineId(each) === chosen) : undefined;
+      last = { chosen, ends: line ? [line.upper, line.lower] : [] };
+    }
+    return last.ends;
+  };
 }
 
-/** The shared-choice ids of a line's levels and of their terms. */
-function idsOf(levels, { upper, lower }) {
-  return [upper, lower].flatMap((label) => [`level:${label}`, levels.get(label).termId]);
+// Lines that nobody would see do not stretch the axis.
+function extent(sticks) {
+  const height = ({ up, down }) => Math.max(up, down);
+  const strongest = sticks.reduce((most, stick) => Math.max(most, height(stick)), 0);
+  const seen = sticks.filter((stick) => height(stick) >= SEEN * strongest);
+  if (seen.length === 0) return [0, 1];
+  const [first, last] = [seen[0].x, seen.at(-1).x];
+  const margin = (last - first || Math.abs(first) * 0.01 || 1) * 0.03;
+  return [first - margin, last + margin];
 }
 
-function isOf(levels, line, chosen) {
-  return (chosen.startsWith("level:") || chosen.startsWith("term:")) && idsOf(levels, line).includes(chosen);
+function headOf(by, level) {
+  if (by === "configuration") return richRuns(level.rich.filter((item) => item.configuration));
+  return by === "J" ? [{ text: `J ${level.J}` }] : richRuns([{ term: { ...level.term, J: null, index: null } }]);
 }
 
-function rank({ multipole }) {
-  const place = MULTIPOLES.indexOf(multipole);
-  return place < 0 ? MULTIPOLES.length : place;
-}
-
-// Between two terms stands a dash, not a minus.
-function dashed(name) {
-  return name.replace(" - ", ARROW);
-}
-
-/** Each multiplet's name as rich text. */
-function multipletNames({ multiplets = [] }) {
-  return new Map(multiplets.filter((one) => one.lower_rich?.length).map((one) => [one.name, [...one.lower_rich, ARROW, ...one.upper_rich]]));
-}
-
-// The multiplet shown first: an E1 one if there is any, and the fullest.
-function weightOf({ multipole, lines }) {
-  return lines + (multipole === "E1" ? 1e9 : 0);
-}
-
-/** Label → {label, rich, J, term, termRich, termId, key}; `key` is the same for all levels of one term. */
-function levelsOf({ levels }) {
-  return new Map(levels.map(({ label, rich, J, configuration, term: name }) => {
-    const { term } = rich.findLast((item) => item.term);
-    const termRich = rich.map((item) => (item.term ? { term: { ...item.term, J: null } } : item));
-    return [label, { label, rich, J, term, termRich, termId: `term:${configuration}/${name}#${term.index ?? 1}`, key: `${configuration} ${name} ${term.index ?? ""}` }];
-  }));
-}
-
-function levelColumns(levels) {
-  return ["upper", "lower"].map((side) => ({ name: side, type: "text", value: (row) => row[side], rich: (row) => levels.get(row[side]).rich }));
+// What both answers say of a level, by its label.
+function mergedLevels(answer, whole) {
+  const named = levelsOf(whole);
+  const more = new Map(answer.levels.map((level) => [level.label, level]));
+  return new Map(whole.levels.map((level) => [level.label, { ...more.get(level.label), ...level, ...named.get(level.label), termName: level.term }]));
 }

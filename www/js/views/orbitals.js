@@ -2,7 +2,7 @@
 
 import { scopedChoice } from "../choice.js";
 import { element, setText } from "../dom.js";
-import { FaultTiming, Fields, faultNode, wayButton } from "../fields.js";
+import { FaultTiming, Fields, faultNode, flagField, wayButton } from "../fields.js";
 import { focusPlace } from "../layers.js";
 import { valueAt } from "../pointer.js";
 import { richSpeech } from "../rich.js";
@@ -60,16 +60,8 @@ export class OrbitalsPart {
   }
 
   #fields(fields) {
-    const { store, setField, view } = this.#context;
-    const box = element("input", { type: "checkbox" });
-    const fill = () => {
-      box.checked = valueAt(store.sheet, "/structure/relativity") !== false;
-    };
-    box.addEventListener("change", () => setField("/structure/relativity", box.checked ? undefined : false, box.checked ? "Relativity on" : "Relativity off"));
-    store.subscribe(fill);
-    fill();
     return element("div", { class: "question-fields" },
-      element("label", { class: "check" }, box, element("span", { text: "Relativity in the radial equation" })),
+      flagField(this.#context, "/structure/relativity", "Relativity in the radial equation", "Relativity"),
       element("div", { class: "field-row" },
         fields.make(`${POLARISATION}/alpha`, { label: "Core polarisability", hint: "such as 0.95 a0^3; empty for none", group: POLARISATION }),
         fields.make(`${POLARISATION}/radius`, { label: "Cut-off radius", hint: "such as 1.2 a0", group: POLARISATION })),
