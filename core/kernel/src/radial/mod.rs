@@ -9,6 +9,7 @@ pub mod hartree_fock;
 pub mod hydrogenic;
 pub mod knots;
 pub mod mesh;
+pub mod mixing;
 pub mod multipole;
 pub mod nucleus;
 pub mod slater;

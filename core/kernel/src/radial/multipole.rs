@@ -150,21 +150,23 @@ fn is_jump(from: &Solution, a: Orbital, to: &Solution, b: Orbital) -> bool {
 }
 
 #[derive(Clone, Copy, PartialEq)]
-enum Side {
+pub(super) enum Side {
     From,
     To,
 }
 
 /// The functions of both runs at quadrature points that suit both.
-struct Common {
-    radii: Vec<f64>,
-    weights: Vec<f64>,
-    from: Vec<Vec<f64>>,
-    to: Vec<Vec<f64>>,
+pub(super) struct Common {
+    /// The break points of both meshes.
+    pub breaks: Vec<f64>,
+    pub radii: Vec<f64>,
+    pub weights: Vec<f64>,
+    pub from: Vec<Vec<f64>>,
+    pub to: Vec<Vec<f64>>,
 }
 
 impl Common {
-    fn new(from: &Solution, to: &Solution) -> Self {
+    pub fn new(from: &Solution, to: &Solution) -> Self {
         let mut breaks: Vec<f64> = from.mesh.breaks().to_vec();
         breaks.extend_from_slice(to.mesh.breaks());
         sort_by(&mut breaks, f64::total_cmp);
@@ -182,23 +184,30 @@ impl Common {
         Common {
             from: sample(from, &radii),
             to: sample(to, &radii),
+            breaks,
             radii,
             weights,
         }
     }
 
-    fn product(&self, f: &[f64], g: &[f64]) -> f64 {
+    pub fn product(&self, f: &[f64], g: &[f64]) -> f64 {
         let parts = self.weights.iter().zip(f).zip(g);
         parts.map(|((w, f), g)| w * f * g).sum()
     }
 
-    fn with(&self, f: &[f64], operator: &[f64], g: &[f64]) -> f64 {
+    pub fn with(&self, f: &[f64], operator: &[f64], g: &[f64]) -> f64 {
         let parts = (self.weights.iter().zip(f)).zip(operator.iter().zip(g));
         parts.map(|((w, f), (o, g))| w * f * o * g).sum()
     }
 
     /// ã or b̃: the jumping orbital without what the other side's full shells of its ℓ hold of it.
-    fn without_core(&self, from: &Solution, to: &Solution, place: usize, side: Side) -> Vec<f64> {
+    pub fn without_core(
+        &self,
+        from: &Solution,
+        to: &Solution,
+        place: usize,
+        side: Side,
+    ) -> Vec<f64> {
         let (own, others, own_solution, other_solution) = match side {
             Side::From => (&self.from, &self.to, from, to),
             Side::To => (&self.to, &self.from, to, from),

@@ -9,6 +9,7 @@
 
 use super::basis::{Basis, Coupled, State};
 use super::chain::{Chain, Workshop};
+use super::hamiltonian::Terms;
 use super::matrix::Table;
 use super::parameters::{Effective, Integral, Parameter};
 use super::recoupling::{Electron, sorted};
@@ -66,7 +67,7 @@ pub fn coefficients(
     basis: &Basis,
     workshop: &mut Workshop,
     parameters: &mut Vec<Parameter>,
-    with_effective: bool,
+    terms: Terms,
 ) -> Result<Vec<Vec<Entry>>, Problem> {
     let count = basis.configurations().len();
     let mut connections = Vec::with_capacity(count * count);
@@ -76,11 +77,12 @@ pub fn coefficients(
                 std::cmp::Ordering::Less => Connection::default(),
                 std::cmp::Ordering::Equal => {
                     let mut own = diagonal(basis, workshop, first, parameters)?;
-                    if with_effective {
+                    if terms.effective {
                         effective(basis, first, parameters, &mut own.within);
                     }
                     own
                 }
+                std::cmp::Ordering::Greater if !terms.mixing => Connection::default(),
                 std::cmp::Ordering::Greater => {
                     between(basis, workshop, (first, second), parameters)?
                 }

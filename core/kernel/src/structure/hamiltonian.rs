@@ -11,6 +11,15 @@ use crate::angular::NINE_J_CAPACITY;
 use crate::problem::Problem;
 use nalgebra::DMatrix;
 
+/// What the energy holds beside E_av, F^k, G^k and ζ.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Terms {
+    /// R^k and ⟨a|h|c⟩ between configurations.
+    pub mixing: bool,
+    /// α, β and γ of every subshell that has them.
+    pub effective: bool,
+}
+
 /// All coefficients of a basis; a change of a parameter only sums them again.
 #[derive(Clone, Debug)]
 pub struct Hamiltonian {
@@ -50,7 +59,11 @@ impl Hamiltonian {
     /// Those of [`crate::angular::parentage::parents`]; `angular-momentum-too-large` where a 9j symbol
     /// is beyond what is computed.
     pub fn new(basis: Basis) -> Result<Self, Problem> {
-        Self::build(basis, false)
+        let terms = Terms {
+            mixing: true,
+            effective: false,
+        };
+        Self::of(basis, terms)
     }
 
     /// The same with α, β and γ of every subshell that has them among the parameters.
@@ -58,10 +71,18 @@ impl Hamiltonian {
     /// # Errors
     /// Those of [`Hamiltonian::new`].
     pub fn with_effective(basis: Basis) -> Result<Self, Problem> {
-        Self::build(basis, true)
+        let terms = Terms {
+            mixing: true,
+            effective: true,
+        };
+        Self::of(basis, terms)
     }
 
-    fn build(basis: Basis, with_effective: bool) -> Result<Self, Problem> {
+    /// The same with these terms.
+    ///
+    /// # Errors
+    /// Those of [`Hamiltonian::new`].
+    pub fn of(basis: Basis, terms: Terms) -> Result<Self, Problem> {
         let mut workshop = Workshop::default();
         let mut parameters: Vec<Parameter> = (0..basis.configurations().len())
             .map(|place| Parameter {
@@ -71,7 +92,7 @@ impl Hamiltonian {
             })
             .collect();
         let electrostatic =
-            electrostatic::coefficients(&basis, &mut workshop, &mut parameters, with_effective)?;
+            electrostatic::coefficients(&basis, &mut workshop, &mut parameters, terms)?;
         let spin_orbit = spin_orbit::coefficients(&basis, &mut workshop, &mut parameters)?;
         let finite = |entries: &Vec<Entry>| entries.iter().all(|entry| entry.value.is_finite());
         let joints = spin_orbit.iter().map(|joint| &joint.entries);

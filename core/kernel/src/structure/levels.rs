@@ -35,11 +35,27 @@ impl Levels {
     /// # Errors
     /// Those of [`Hamiltonian::matrix`]; `levels-not-found` when an iteration does not converge.
     pub fn solve(hamiltonian: &Hamiltonian, values: &[f64]) -> Result<Levels, Problem> {
+        Levels::solve_watched(hamiltonian, values, &mut |_| true)
+    }
+
+    /// The same; `watch` hears of the rows of each J that is done, and ends the work by answering
+    /// false.
+    ///
+    /// # Errors
+    /// Those of [`Levels::solve`]; `stopped`.
+    pub fn solve_watched(
+        hamiltonian: &Hamiltonian,
+        values: &[f64],
+        watch: &mut dyn FnMut(usize) -> bool,
+    ) -> Result<Levels, Problem> {
         let mut rows = Vec::new();
         let mut levels = Vec::new();
         for two_j in hamiltonian.basis().two_js() {
             let of_j = hamiltonian.rows(two_j);
             levels.extend(solve_j(hamiltonian, &of_j, values)?);
+            if !watch(of_j.states.len()) {
+                return Err(stopped());
+            }
             rows.push(of_j);
         }
         in_order(&mut levels);
@@ -192,6 +208,12 @@ fn in_order(levels: &mut Vec<Level>) {
         (run, two_j, largest)
     });
     levels.extend(keyed.into_iter().map(|keyed| keyed.3));
+}
+
+/// What a refusal of progress becomes.
+#[inline(never)]
+pub(super) fn stopped() -> Problem {
+    Problem::new("stopped", "The run was stopped.", 0, 0)
 }
 
 #[inline(never)]

@@ -14,6 +14,7 @@ mod estimate;
 mod hamiltonian;
 mod levels;
 mod matrix;
+pub mod model;
 mod multipole;
 mod parameters;
 mod recoupling;
@@ -31,7 +32,7 @@ pub use bounds::{
 };
 pub use electrostatic::Entry;
 pub use estimate::{Estimate, estimate};
-pub use hamiltonian::{Hamiltonian, Rows};
+pub use hamiltonian::{Hamiltonian, Rows, Terms};
 pub use levels::{Level, Levels, lande, solve_j};
 pub use multipole::{Elements, Multipole, Transfer, magnetic_elements};
 pub use parameters::{Effective, Integral, Parameter};

@@ -124,8 +124,8 @@ fn outside(
     whole
 }
 
-/// The angle θ by which a turns to b (P_a + θ P_b, P_b − θ P_a) for E_av to be stationary; for two
-/// subshells that turn freely, for ⟨b|F|a⟩ to vanish.
+/// The angle θ by which a turns to b (P_a + θ P_b, P_b − θ P_a) for E_av to be stationary; for two full
+/// subshells, whose turning leaves E_av as it is, for ⟨b|F|a⟩ to vanish.
 ///
 /// With relativity K_a and K_b differ by their ε; their mean is used for both.
 fn rotation(case: &Case, coefficients: &Coefficients, a: &Wave, b: &Wave) -> f64 {
@@ -133,8 +133,14 @@ fn rotation(case: &Case, coefficients: &Coefficients, a: &Wave, b: &Wave) -> f64
     let (f_ab, k_ab) = between(a, b);
     let shift = 0.5 * (k_ab - k_ba);
     let (f_ba, f_ab) = (f_ba + shift, f_ab - shift);
-    if a.turns_freely_with(b) {
-        return 0.5 * (f_ba + f_ab) / (a.energy - b.energy);
+    if a.full && b.full {
+        // Of a core and a full subshell outside it, the core's is the field without its polarisation.
+        let coupling = match (a.polarised, b.polarised) {
+            (false, true) => f_ba,
+            (true, false) => f_ab,
+            _ => 0.5 * (f_ba + f_ab),
+        };
+        return coupling / (a.energy - b.energy);
     }
     let slope = 2.0 * (a.q * f_ba - b.q * f_ab);
     -slope / curvature(case, coefficients, a, b)

@@ -6,7 +6,9 @@
 //!
 //! Each subshell has one radial function; those of equal ℓ are orthogonal. The functions make
 //! E_av ([`crate::radial::average`]) stationary; for two full subshells of equal ℓ, whose rotation
-//! leaves E_av as it is, ⟨a|F|b⟩ = 0 besides.
+//! leaves E_av as it is, ⟨a|F|b⟩ = 0 besides. Core polarisation would favour one of those rotations, for
+//! only what is outside the core feels it; it is left out of that ⟨a|F|b⟩, or it would mix core and
+//! outer functions.
 //!
 //! **Relativity.** The kinetic energy is then
 //! K_a = ½ ∫ (1/M_a) [(P′ − P/r)² + ℓ(ℓ+1) P²/r²] dr, M_a = 1 + ½α²(ε_a − V_a),

@@ -96,6 +96,12 @@ impl Polarisation {
         -0.5 * self.alpha * r * r / (square * square * square)
     }
 
+    /// r/(r² + ρ²)^{3/2}: times the square root of α, how strongly an electron at r polarises the core.
+    pub fn pull(&self, r: f64) -> f64 {
+        let square = r * r + self.radius * self.radius;
+        r / (square * square.sqrt())
+    }
+
     /// The factor 1 − α/(r² + ρ²)^{3/2} on the dipole operator r.
     pub fn dipole(&self, r: f64) -> f64 {
         let square = r * r + self.radius * self.radius;

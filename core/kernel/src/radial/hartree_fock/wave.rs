@@ -115,11 +115,6 @@ impl Wave {
     pub fn centrifugal(&self) -> f64 {
         f64::from(self.l) * (f64::from(self.l) + 1.0)
     }
-
-    /// Whether turning the two into each other leaves the energy as it is.
-    pub fn turns_freely_with(&self, other: &Wave) -> bool {
-        self.full && other.full && self.polarised == other.polarised
-    }
 }
 
 /// The splines that functions of this ℓ are made of: P starts as r^{ℓ+1} (as far as the order

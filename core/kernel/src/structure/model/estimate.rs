@@ -1,0 +1,75 @@
+//! What a case takes, found before anything is built.
+
+use super::case::Case;
+use crate::problem::Problem;
+
+/// Sizes and costs; seconds are those of a browser on a machine of 2020 or so.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Estimate {
+    /// Whole time.
+    pub seconds: f64,
+    /// Of which for radial functions.
+    pub field_seconds: f64,
+    /// Bytes at most at one time.
+    pub bytes: u64,
+    /// States with their M.
+    pub states: u64,
+    /// Levels.
+    pub levels: u64,
+    /// Blocks of one parity and J: whether it is odd, 2J, rows.
+    pub blocks: Vec<(bool, i32, u64)>,
+}
+
+/// Seconds for the coefficients of one parity.
+pub(super) fn coefficient_seconds(sizes: &crate::structure::Estimate) -> f64 {
+    2e-8 * sizes.products as f64
+}
+
+/// Seconds to build and diagonalise a matrix.
+pub(super) fn matrix_seconds(rows: f64) -> f64 {
+    9.0 * rows * rows * rows / 6e8
+}
+
+/// Sizes and costs of a case.
+///
+/// # Errors
+/// `no-configuration`, `electron-numbers-differ`, and those of [`crate::structure::estimate()`].
+pub fn estimate(case: &Case) -> Result<Estimate, Problem> {
+    case.check()?;
+    let orbitals = case.orbitals();
+    let subshells: Vec<u8> = orbitals.iter().map(|orbital| orbital.l()).collect();
+    let mut found = Estimate {
+        seconds: 0.0,
+        field_seconds: 0.0,
+        bytes: 0,
+        states: 0,
+        levels: 0,
+        blocks: Vec::new(),
+    };
+    for place in 0..case.configurations.len() {
+        if let Some(atom) = case.atom(place) {
+            let shells = atom.subshells.len() as f64;
+            found.field_seconds += 0.006 + 3e-4 * shells * shells;
+        }
+    }
+    found.seconds = found.field_seconds;
+    for odd in [false, true] {
+        let configurations = case.of_parity(odd);
+        if configurations.is_empty() {
+            continue;
+        }
+        let occupations: Vec<Vec<u32>> = (configurations.iter())
+            .map(|&place| case.occupations(place, &orbitals))
+            .collect();
+        let sizes = crate::structure::estimate(&subshells, &occupations)?;
+        found.seconds += coefficient_seconds(&sizes);
+        for &(two_j, rows) in &sizes.rows_by_two_j {
+            found.seconds += matrix_seconds(rows as f64);
+            found.blocks.push((odd, two_j, rows));
+        }
+        found.bytes = found.bytes.saturating_add(sizes.bytes);
+        found.states = found.states.saturating_add(sizes.states);
+        found.levels = found.levels.saturating_add(sizes.levels);
+    }
+    Ok(found)
+}
