@@ -5,6 +5,7 @@ pub mod banded;
 pub mod banded_eigen;
 pub mod binomial;
 pub mod gauss_legendre;
+pub mod least_squares;
 pub mod linear;
 pub mod natural;
 pub mod order;
