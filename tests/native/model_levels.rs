@@ -1,55 +1,10 @@
 //! From a nucleus to levels and lines: what must hold whatever the radial functions are.
 
-use rungline_core::configuration::{Orbital, Subshell, filling};
-use rungline_core::problem::Problem;
-use rungline_core::radial::hartree_fock::{Atom, Solution, solve as field_of};
 use rungline_core::structure::Integral;
 use rungline_core::structure::model::{Case, Given, Kind, MultipoleKind, Name, Spectrum, solve};
+use rungline_tests::model::{case, energy, field, orbital, spectrum};
 use rungline_tests::{Row, report};
 use std::collections::BTreeSet;
-use std::rc::Rc;
-
-fn field(atom: &Atom) -> Result<Rc<Solution>, Problem> {
-    field_of(atom, &mut |_| true)
-        .map(Rc::new)
-        .map_err(|failure| failure.problem)
-}
-
-fn orbital(name: &str) -> Orbital {
-    let (n, l) = name.split_at(name.len() - 1);
-    let l = "spdfgh".find(l).expect("a letter") as u8;
-    Orbital::new(n.parse().expect("n"), l).expect("ℓ below n")
-}
-
-/// A closed core of a neutral noble gas, then what is written: `3s2 3p`.
-fn configuration(core: u8, text: &str) -> Vec<Subshell> {
-    let mut subshells = match core {
-        0 => Vec::new(),
-        _ => {
-            let ground = filling::ground(core, 0).expect("a noble gas");
-            ground.configuration().subshells().to_vec()
-        }
-    };
-    for word in text.split_whitespace() {
-        let (name, electrons) = word.split_at(2);
-        let electrons = if electrons.is_empty() {
-            1
-        } else {
-            electrons.parse().expect("N")
-        };
-        subshells.push(Subshell::new(orbital(name), electrons).expect("within its capacity"));
-    }
-    subshells
-}
-
-fn case(z: u8, mass: u16, core: u8, configurations: &[&str]) -> Case {
-    let all = configurations.iter().map(|text| configuration(core, text));
-    Case::new(z, mass, all.collect())
-}
-
-fn spectrum(case: &Case) -> Spectrum {
-    solve(case, &mut field, &mut |_| true).expect("levels")
-}
 
 fn cases() -> Vec<Case> {
     vec![
@@ -80,11 +35,6 @@ fn cases() -> Vec<Case> {
             &["3d2 4s2", "3d3 4s", "3d4", "3d2 4s 4p", "3d3 4p", "3d3 5s"],
         ),
     ]
-}
-
-fn energy(spectrum: &Spectrum, place: usize) -> (f64, i32) {
-    let (_, level) = spectrum.level(spectrum.levels[place]).expect("a level");
-    (level.energy, level.two_j)
 }
 
 #[test]

@@ -1,6 +1,8 @@
 //! Shared by the native checks: where the vectors are, how closely two numbers agree, and the
 //! validation report, which is written from what the checks measured.
 
+pub mod model;
+
 use std::collections::BTreeMap;
 use std::fs;
 use std::path::{Path, PathBuf};
