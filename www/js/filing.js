@@ -1,5 +1,6 @@
 // Opens files into the sheet and saves the sheet and its record, through the core.
 
+import { element } from "./dom.js";
 import { fileFaults, fileName, saveFile, textOf } from "./files.js";
 import { panicNode } from "./rungs.js";
 
@@ -7,6 +8,9 @@ const NO_SHEET = {
   message: "This file is JSON, but not a sheet.", path: "", start: 0, end: 0,
   bound: "A sheet is one JSON object, in braces, with at least \"rungline\": 1.", ways: [],
 };
+
+/** Faults of a table that are shown; the others are as its first ones. */
+const FAULTS = 8;
 
 export class Filing {
   #engine;
@@ -34,7 +38,21 @@ export class Filing {
       this.refuse(fault);
       return;
     }
-    await this.#openText(text, file.name);
+    if (/\.(csv|tsv)$/i.test(file.name)) await this.#openLevels(text, file.name);
+    else await this.#openText(text, file.name);
+  }
+
+  // A table of measured levels joins the sheet; what it says of a level replaces what stood there.
+  async #openLevels(text, name) {
+    const { sheet } = this.#store;
+    const result = await this.#engine.request("open", "measured_csv", [text, sheet]);
+    if (result.text === undefined) return;
+    const { measured, taken, left, faults } = JSON.parse(result.text);
+    if (taken > 0) this.#store.put([["/measured", { ...sheet.measured, ...measured }]], `Take ${taken} levels from "${name}"`);
+    this.#notes.put("file", {
+      kind: taken > 0 ? "note" : "fault", text: levelWords(name, taken, left),
+      more: faults?.length > 0 ? element("ul", {}, ...faults.slice(0, FAULTS).map((fault) => element("li", { text: [fault.message, fault.bound].filter(Boolean).join(" ") }))) : null,
+    });
   }
 
   async #openText(text, name) {
@@ -82,6 +100,11 @@ export class Filing {
       });
     } else saveFile(fileName(sheet, ".record.json"), record, this.#notes);
   }
+}
+
+function levelWords(name, taken, left) {
+  const rest = left > 0 ? ` ${left} ${left === 1 ? "row was" : "rows were"} left out.` : "";
+  return taken > 0 ? `${taken} measured ${taken === 1 ? "level" : "levels"} taken from "${name}".${rest} Undo takes them out again.` : `"${name}" holds no level of this sheet; the sheet is as it was.${rest}`;
 }
 
 function isGroup(value) {

@@ -15,6 +15,8 @@ const DROP = 0.22;
 const STACK_RISE = 0.48;
 const STACK_DROP = 0.3;
 
+const HALO = 4;
+
 /** Draws into an SVG group. `colour` turns a token into a paint. */
 export class SvgPen {
   #group;
@@ -45,9 +47,10 @@ export class SvgPen {
     this.#add("circle", { cx: tidy(x), cy: tidy(y), r: tidy(radius) }, style);
   }
 
-  /** A label of runs (see rich.js) or of plain text. */
-  text(x, y, label, { anchor = "start", size = LABEL, fill = "ink", weight = 400 } = {}) {
+  /** A label of runs (see rich.js) or of plain text; `halo` keeps what lies under it away from the letters. */
+  text(x, y, label, { anchor = "start", size = LABEL, fill = "ink", weight = 400, halo = null } = {}) {
     const node = svgElement("text", {
+      ...(halo ? { stroke: this.#colour(halo), "stroke-width": HALO, "stroke-linejoin": "round", "paint-order": "stroke" } : {}),
       x: tidy(x), y: tidy(y), "text-anchor": anchor, "font-size": size, "font-family": FACE, "font-weight": weight, fill: this.#colour(fill),
     });
     // A span shifts what follows it too, so each one undoes the shift before it.
@@ -103,7 +106,7 @@ export class CanvasPen {
     this.#paint(style);
   }
 
-  text(x, y, label, { anchor = "start", size = LABEL, fill = "ink", weight = 400 } = {}) {
+  text(x, y, label, { anchor = "start", size = LABEL, fill = "ink", weight = 400, halo = null } = {}) {
     const canvas = this.#canvas;
     const font = (small) => `${weight} ${small ? size * SMALL : size}px ${FACE}`;
     const measured = parts(label).map((part) => {
@@ -116,6 +119,11 @@ export class CanvasPen {
     for (const part of measured) {
       canvas.font = font(part.small);
       at -= (part.back ?? 0) * size;
+      if (halo) {
+        Object.assign(canvas, { strokeStyle: this.#colour(halo), lineWidth: HALO, lineJoin: "round" });
+        canvas.setLineDash([]);
+        canvas.strokeText(part.text, at, y + part.shift * size);
+      }
       canvas.fillText(part.text, at, y + part.shift * size);
       at += part.width;
     }

@@ -16,7 +16,7 @@ const STRETCH = LABEL + 6;
 const FARTHEST = 44;
 /** Rungs closer than this are drawn as lines. */
 const CLOSE = 7;
-const THICKEST = 7;
+const THICKEST = 5;
 const SIGNS = { E1: { stroke: "s1", dash: null }, M1: { stroke: "s2", dash: "10 4" }, E2: { stroke: "s3", dash: "10 4 2 4" } };
 
 /**
@@ -103,7 +103,7 @@ function shared(pen, own, x) {
     else pen.polyline([[x + 2, first], [x + 6, first], [x + 6, last], [x + 2, last]], { stroke: "edge" });
     const term = levels.every((level) => level.group === levels[0].group) ? levels[0].groupRuns : null;
     const name = levels.length === 1 ? levels[0].runs : term ?? `${levels.length}\u00a0levels`;
-    pen.text(x + LEADER, middle + LABEL / 3, name, term || levels.length === 1 ? {} : { fill: "quiet" });
+    pen.text(x + LEADER, middle + LABEL / 3, name, { halo: "sheet", fill: term || levels.length === 1 ? "ink" : "quiet" });
   }
 }
 
@@ -175,7 +175,7 @@ function names(pen, own, x, bottom) {
       const level = own[from + i];
       const at = top + i * APART;
       pen.line(x, level.y, x + LEADER - 3, at, { stroke: "edge" });
-      pen.text(x + LEADER, at + LABEL / 3, level.runs);
+      pen.text(x + LEADER, at + LABEL / 3, level.runs, { halo: "sheet" });
     }
   }
 }

@@ -34,7 +34,7 @@ export class LineFilters {
     this.lower = select(context, "lines:lower", "Lower level", this.#lowerOptions(), act);
     this.unit = select(context, "lines:unit", "Places in", Object.keys(this.units).map((key) => [key, key === "cm-1" ? "cm⁻¹" : key]), act);
     this.inWindow = window ? check(context, "lines:window", `Only the window, ${window.lines} ${window.lines === 1 ? "line" : "lines"}`, act, true) : null;
-    this.node = element("div", { class: "choices" },
+    this.node = element("div", { class: "choices filters" },
       ...[this.inWindow, this.measureBox, this.least, this.multipole, this.lower, this.unit].filter(Boolean).map(({ node }) => node));
   }
 
