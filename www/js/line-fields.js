@@ -16,8 +16,7 @@ export function lineFields(fields, questions, { store, view, setField, openCsv }
   const row = (...inside) => element("div", { class: "field-row" }, ...inside);
   const field = (path, label, hint, more = {}) => fields.make(path, { label, hint, ...more });
   const scale = (key, label) => field(`/structure/scale/${key}`, label, "a number; empty is 1", { number: true });
-  const parameters = () => levels()?.parameters ?? [];
-  const named = ({ name, configuration }) => (configuration === null ? name : `${name} @ ${configuration}`);
+  const parameters = () => (levels()?.parameters ?? []).filter((parameter) => parameter.can_be_given !== false);
   return element("div", { class: "question-fields" },
     row(field("/window/0", "Window from", "such as 580 nm; needs both ends", { pair: "/window" }), field("/window/1", "Window to", "such as 600 nm", { pair: "/window" }),
       wordField({ store, setField }, "/medium", "Wavelengths", [["", "in vacuum"], ["air", "in air"]]),
@@ -30,9 +29,9 @@ export function lineFields(fields, questions, { store, view, setField, openCsv }
         namedRows({
           fields, store, path: "/structure/given",
           words: { name: "Parameter", value: "Value", hint: "such as 11.46 cm-1", add: "Give a value", one: "such as zeta(3p) or F2(3d,3d) @ 3d6 4s2" },
-          suggestions: () => parameters().map(named),
+          suggestions: () => parameters().map(({ name }) => name),
           usual: (name) => {
-            const known = parameters().find((parameter) => named(parameter) === name);
+            const known = parameters().find((parameter) => parameter.name === name);
             return known ? `${known.value} ${known.unit ?? ""}`.trim() : "";
           },
         })),

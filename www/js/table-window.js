@@ -21,7 +21,14 @@ export function rowWindow({ region, body, table, columns, rows, makeRow, plain }
   region.classList.add("windowed");
   body.before(above.node);
   body.after(below.node);
-  table.prepend(widths(columns, rows, plain));
+  const lengths = lengthsOf(columns, rows, plain);
+  table.prepend(element("colgroup", {}, ...lengths.map((length) => {
+    const col = element("col");
+    col.style.width = `${length.toFixed(1)}ch`;
+    return col;
+  })));
+  // With a width of its own the table is laid out by its columns, not by what is in them.
+  table.style.width = `${lengths.reduce((sum, length) => sum + length, 0).toFixed(1)}ch`;
   // A caption has to be the first child of its table.
   table.prepend(table.querySelector("caption"));
 
@@ -103,15 +110,13 @@ function outermost(rows, { value }) {
   return known.length === 0 ? rows.slice(0, 1) : [most(1), most(-1)];
 }
 
-// Columns keep their widths while rows come and go.
-function widths(columns, rows, plain) {
-  return element("colgroup", {}, ...columns.map((column, i) => {
+// Columns keep their widths while rows come and go: each in characters.
+function lengthsOf(columns, rows, plain) {
+  return columns.map((column, i) => {
     // Heads break after 14 characters; raised and lowered parts are narrower than their letters.
     let longest = Math.min([...column.name].length, 14) / NARROW;
     for (const row of column.type === "number" ? outermost(rows, column) : rows) longest = Math.max(longest, plain(row, column).length);
-    const col = element("col");
     // The first column has the room of the notch besides.
-    col.style.width = `${(Math.min(longest, 60) * (column.rich ? NARROW : 1) + (i === 0 ? 5 : 3)).toFixed(1)}ch`;
-    return col;
-  }));
+    return Math.min(longest, 60) * (column.rich ? NARROW : 1) + (i === 0 ? 5 : 3);
+  });
 }

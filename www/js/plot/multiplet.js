@@ -13,8 +13,9 @@ const THICKEST = 9;
 /**
  * The layout for `picture`. `title` is runs; `upper` and `lower` are {rich (runs), levels: [{J, label, runs}]}; `links`
  * [{upperJ, lowerJ, strength, multipole, id, ids, reading}]; `refused` [{upperJ, lowerJ, id, reading}].
+ * `known`: whether energies are known elsewhere.
  */
-export function multipletLayout({ title, upper, lower, links, refused }) {
+export function multipletLayout({ title, upper, lower, links, refused, known }) {
   const values = [...new Set([...upper.levels, ...lower.levels].map((level) => halfValue(level.J)))].sort((a, b) => a - b);
   const strongest = Math.max(...links.map((link) => link.strength ?? 0), 0) || 1;
   return (width) => {
@@ -68,10 +69,15 @@ export function multipletLayout({ title, upper, lower, links, refused }) {
           pen.line(at, axis, at, axis + 5, { stroke: "edge" });
           pen.text(at, axis + 5 + LABEL, halfText(value), { anchor: "middle", fill: "quiet" });
         }
-        pen.text((LEFT + width - RIGHT) / 2, height - 6, width < 420 ? "J (energies are not known yet)" : "J; levels are ordered by J, their energies are not known yet", { anchor: "middle", fill: "quiet" });
+        pen.text((LEFT + width - RIGHT) / 2, height - 6, axisWords(known, width < 420), { anchor: "middle", fill: "quiet" });
       },
     };
   };
+}
+
+function axisWords(known, narrow) {
+  if (known) return narrow ? "J (not to scale)" : "J; levels are ordered by J, not by their energies";
+  return narrow ? "J (energies are not known yet)" : "J; levels are ordered by J, their energies are not known yet";
 }
 
 // Where a link's mark sits: off the middle, where links cross, and refused ones apart from allowed.

@@ -28,7 +28,7 @@ function ofLine(line, answer, levels, context) {
     element("p", { class: "chosen-name" }, "▸ ", richNode([...lower.rich, " – ", ...upper.rich, `, ${line.multipole}`], context.settings)),
     facts(context, [
       ["in vacuum", line.vacuum_nm, "nm", line.energy_kind], ["in air", line.air_nm, "nm", line.energy_kind], ["wavenumber", line.wavenumber, "cm-1", line.energy_kind],
-      ["A", line.A, "s-1", kind("A")], ["gf", line.gf, null, kind("gf")], ["S", line.S, null, kind("S")],
+      ["A", line.A, "s-1", kind("A")], ["gf", line.gf, null, kind("gf")], ["f", line.f, null, kind("f")], ["S", line.S, null, kind("S")],
       ["branching fraction", line.branching, null, kind("branching")], ["cancellation factor", line.cancellation, null, kind("cancellation")],
     ]),
     ...notesOf(line).map((note) => element("p", { class: "note", text: `To be known: ${note}.` })),

@@ -17,7 +17,7 @@ export function levelParts(whole, levels, endsOf, context) {
     fold(context, "lines:levels", [`Levels and what they are made of (${whole.levels.length})`], () => levelsPart(whole, levels, endsOf, context)),
     part("parameters", "Parameters of the energies", whole.parameters, () => parametersTable(whole, context)),
     part("intervals", "Fine-structure intervals and Landé’s rule", whole.intervals, () => intervalsTable(whole, context)),
-    part("series", "Series and their limits", whole.series, () => whole.series.map((series) => seriesTable(series, context))),
+    part("series", "Series and their limits", whole.series, () => whole.series.map((series) => seriesTable(series, levels, context))),
   ].filter(Boolean);
 }
 
@@ -80,7 +80,7 @@ function parametersTable(whole, context) {
       caption: "Parameters", rows: whole.parameters, context, file: "parameters",
       columns: [
         { name: "parameter", type: "text", value: (row) => row.name },
-        { name: "configuration", type: "text", value: (row) => row.configuration, reason: "all that have these shells" },
+        { name: "configuration", type: "text", value: (row) => (row.second ? `${row.configuration}, ${row.second}` : row.configuration), reason: "all that have these shells" },
         number("value", "value", { kind: (row) => row.kind }), { name: "unit", type: "text", value: (row) => row.unit },
         number("computed", "as computed", { kind: "computed", reason: "nothing is computed here" }), number("scale", "scale", { reason: "a given value is not scaled" }),
       ],
@@ -102,7 +102,7 @@ function intervalsTable(whole, context) {
   });
 }
 
-function seriesTable(series, context) {
+function seriesTable(series, levels, context) {
   return dataTable({
     caption: ["Series ", ...(series.rich ?? [series.name]), ", limit ", { number: { text: String(series.limit), unit: "cm-1", kind: series.limit_kind } }], rows: series.members, context, file: `series ${series.name}`,
     columns: [
@@ -112,6 +112,6 @@ function seriesTable(series, context) {
       { name: "effective n", type: "number", kind: (row) => row.kind, value: (row) => row.n_effective },
       { name: "quantum defect", type: "number", kind: (row) => row.kind, value: (row) => row.defect },
     ],
-    identify: (row) => (row.label ? `level:${row.label}` : null),
+    identify: (row) => (levels.has(row.label) ? `level:${row.label}` : null),
   });
 }

@@ -136,7 +136,7 @@ export class Multiplets {
       upperJ: pair.upper_J, lowerJ: pair.lower_J, id: lineId(pair), reading: [...names(pair), `, refused: ${pair.rule}`],
     })) : [];
     const name = [...lower.termRich, ARROW, ...upper.termRich];
-    return { upper: side("upper", upper), lower: side("lower", lower), links, refused: dots, title: richRuns(name), name: ["Multiplet ", ...name] };
+    return { known: lines.some((line) => typeof line.wavenumber === "number"), upper: side("upper", upper), lower: side("lower", lower), links, refused: dots, title: richRuns(name), name: ["Multiplet ", ...name] };
   }
 
   #refusedTable() {
