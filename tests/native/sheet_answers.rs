@@ -188,6 +188,6 @@ fn a_record_that_was_tampered_with_names_what_moved() {
 fn questions_keep_their_names() {
     assert_eq!(
         Question::ALL.map(Question::name),
-        ["states", "orbitals", "lines", "splitting"]
+        ["states", "orbitals", "levels", "lines", "splitting"]
     );
 }

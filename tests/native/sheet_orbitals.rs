@@ -471,10 +471,11 @@ fn a_record_holds_the_orbitals_and_reproduces() {
 #[test]
 fn the_sheet_s_keys_for_structure_are_used() {
     let states = message(
-        &json!({"rungline": 1, "species": "Na", "structure": {"relativity": true, "mixing": false}}),
+        &json!({"rungline": 1, "species": "Na", "structure": {"relativity": true, "mixing": false},
+            "instrument": {"resolving_power": 50000}}),
         "states",
     );
     let limits = states["answer"]["limits"].to_string();
-    assert!(limits.contains("structure.mixing"), "{limits}");
-    assert!(!limits.contains("structure.relativity"), "{limits}");
+    assert!(limits.contains("instrument"), "{limits}");
+    assert!(!limits.contains("structure"), "{limits}");
 }

@@ -15,7 +15,7 @@ rungline recheck FILE… [--json]                     recompute records and name
 
 FILE may be - for standard input: one sheet, or a stream with one sheet on each line.
 Several files or a stream give one output line each, {\"fault\": …} in a faulted one's place.
---question   one of: states, orbitals, lines, splitting; without it every answer that the sheet allows
+--question   one of: states, orbitals, levels, lines, splitting; without it every answer that the sheet allows
 --json       faults as a JSON array on standard error
 Exit: 0 answered or reproduced · 1 a record that no longer reproduces · 2 a fault";
 

@@ -346,7 +346,7 @@ impl Dimension {
             Dimension::NumberDensity => described("number density", NUMBER_DENSITY, 1.0, 1e40),
             Dimension::Humidity => described("relative humidity", HUMIDITY, 0.0, 100.0),
             Dimension::MoleFraction => described("share of a gas", MOLE_FRACTION, 0.0, 1e6),
-            Dimension::RefractiveIndex => described("refractive index", &[], 0.1, 10.0),
+            Dimension::RefractiveIndex => described("refractive index", &[], 1.0, 10.0),
             Dimension::Number => described("number", &[], -1e15, 1e15),
         }
     }

@@ -5,6 +5,7 @@ use crate::quantity::{self, Dimension};
 
 use super::choice::{MEDIA, choice};
 use super::json::Json;
+use super::light;
 use super::parameters::two_needed;
 
 /// The air that wavelengths are measured in; nothing where the standard value stands.
@@ -25,8 +26,8 @@ pub struct AirOf {
 pub struct Conditions {
     /// Shortest and longest wavelength that is looked at, nm in the medium.
     pub window: Option<(f64, f64)>,
-    /// Whether the sheet says that wavelengths are those in vacuum.
-    pub vacuum: bool,
+    /// Whether the sheet says that wavelengths are those in air; otherwise they are those in vacuum.
+    pub air_wanted: bool,
     /// Of a medium that is neither air nor vacuum.
     pub refractive_index: Option<f64>,
     /// The air.
@@ -48,9 +49,9 @@ impl Conditions {
         };
         let (source, air) = (json.get("source"), json.get("air"));
         let medium = json.get("medium").and_then(Json::as_text);
-        Conditions {
+        let conditions = Conditions {
             window: window(json, faults),
-            vacuum: medium.and_then(|typed| choice(typed, &MEDIA)) == Some("vacuum"),
+            air_wanted: medium.and_then(|typed| choice(typed, &MEDIA)) == Some("air"),
             refractive_index: value(Some(json), "refractive_index", Dimension::RefractiveIndex),
             air: AirOf {
                 temperature: value(air, "temperature", Dimension::Temperature),
@@ -61,7 +62,14 @@ impl Conditions {
             temperature: value(source, "temperature", Dimension::Temperature),
             electron_density: value(source, "electron_density", Dimension::NumberDensity),
             column: value(source, "column", Dimension::ColumnDensity),
+        };
+        if let Err(mut problem) = light::air(&conditions) {
+            let key = problem.path.rsplit('/').next().unwrap_or_default();
+            let typed = air.and_then(|air| air.get(key)).and_then(Json::as_text);
+            problem.end = typed.unwrap_or_default().encode_utf16().count();
+            faults.push(problem);
         }
+        conditions
     }
 }
 
@@ -126,7 +134,7 @@ mod tests {
         );
         assert_eq!(faults, []);
         assert_eq!(all.window, Some((588.0, 590.0)));
-        assert!(all.vacuum);
+        assert!(!all.air_wanted);
         assert_eq!(all.refractive_index, Some(1.76));
         assert_eq!(all.temperature, Some(1200.0));
         assert_eq!(all.electron_density, Some(1e20));

@@ -9,6 +9,7 @@ use super::Question;
 use super::document::{Document, LevelOf};
 use super::entry::{Entry, Named};
 use super::json::Json;
+use super::levels::MOST_LEVELS_WITH_LINES;
 use super::pairs;
 
 /// What a question lacks, and a usual value that would do.
@@ -78,24 +79,17 @@ pub fn lack(document: &Document, question: Question) -> Option<Lack> {
             needs,
             way: None,
         }),
-        Question::Lines => {
-            let pairs = pairs::pairs(document);
-            if pairs == 0 {
-                return Some(second_configuration(
-                    document,
-                    first,
-                    "a second configuration",
-                ));
+        Question::Levels => super::energy_case::need(document).map(|(code, needs)| {
+            if code == "needs-an-open-shell" {
+                return second_configuration(document, first, &needs);
             }
-            (pairs > pairs::MAX_PAIRS).then(|| Lack {
-                code: "needs-fewer-pairs",
-                needs: format!(
-                    "fewer configurations or fewer open shells: these have {pairs} pairs of levels, and at most {} are listed",
-                    pairs::MAX_PAIRS
-                ),
+            Lack {
+                code,
+                needs,
                 way: None,
-            })
-        }
+            }
+        }),
+        Question::Lines => lines(document, first),
         Question::Splitting => {
             if document.line.is_none() {
                 return Some(match pairs::first_allowed(document) {
@@ -127,6 +121,41 @@ pub fn lack(document: &Document, question: Question) -> Option<Lack> {
             })
         }
     }
+}
+
+/// Lines need two levels, and not too many: fewer where their energies are not known.
+fn lines(document: &Document, first: &Entry) -> Option<Lack> {
+    if document.entries.iter().any(|e| e.named().is_none())
+        && super::energy_case::need(document).is_none()
+    {
+        return None;
+    }
+    let pairs = pairs::pairs(document);
+    if pairs == 0 {
+        return Some(second_configuration(
+            document,
+            first,
+            "a second configuration",
+        ));
+    }
+    let needs = if super::energy_case::need(document).is_none() {
+        let (levels, most) = (pairs::level_count(document), MOST_LEVELS_WITH_LINES);
+        (levels > most as u128).then(|| {
+            format!("fewer configurations or fewer open shells: these have {levels} levels, and lines are listed between at most {most}")
+        })
+    } else {
+        (!pairs::few(document)).then(|| {
+            format!(
+                "fewer configurations or fewer open shells: these have {pairs} pairs of levels, and at most {} are listed",
+                pairs::MAX_PAIRS
+            )
+        })
+    };
+    needs.map(|needs| Lack {
+        code: "needs-fewer-pairs",
+        needs,
+        way: None,
+    })
 }
 
 fn line_lack(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Lack {

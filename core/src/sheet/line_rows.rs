@@ -8,8 +8,10 @@ use crate::quantity::TwiceJ;
 use crate::radiation::Multipole;
 use crate::radiation::strengths::LevelSum;
 
-use super::rich::Rich;
+use super::levels_rows::Shared;
+use super::rich::{Kind, Rich};
 
+/// A level that lines join; energies in cm⁻¹.
 #[derive(Debug, Serialize)]
 pub struct LevelEntry {
     pub label: String,
@@ -18,27 +20,89 @@ pub struct LevelEntry {
     pub j: TwiceJ,
     pub configuration: String,
     pub term: String,
+    pub parity: &'static str,
+    pub energy: Option<f64>,
+    pub above_lowest: Option<f64>,
+    /// Share of the atoms at the temperature of the source.
+    pub population: Option<f64>,
 }
 
+/// One line by one multipole. There can be very many: nothing is typeset here.
 #[derive(Debug, Serialize)]
 pub struct LineRow {
-    pub upper: String,
-    pub lower: String,
+    pub upper: Shared,
+    pub lower: Shared,
     #[serde(rename = "upper_J")]
     pub upper_j: TwiceJ,
     #[serde(rename = "lower_J")]
     pub lower_j: TwiceJ,
     pub multipole: Multipole,
-    pub relative: f64,
-    pub multiplet: String,
+    /// cm⁻¹ in vacuum.
     pub wavenumber: Option<f64>,
+    pub energy_kind: Option<Kind>,
     pub vacuum_nm: Option<f64>,
+    /// Nothing beyond the range of the formula for air.
     pub air_nm: Option<f64>,
+    /// Where a refractive index is entered.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub medium_nm: Option<f64>,
     #[serde(rename = "S")]
     pub s: Option<f64>,
     pub gf: Option<f64>,
+    pub f: Option<f64>,
     #[serde(rename = "A")]
     pub a: Option<f64>,
+    pub branching: Option<f64>,
+    pub cancellation: Option<f64>,
+    /// Whether so little is left of large terms that S is uncertain.
+    pub weak: bool,
+    /// Emitted power beside the strongest line.
+    pub intensity: Option<f64>,
+    /// Absorbed share of a continuum, thin column, beside the strongest line.
+    pub absorption: Option<f64>,
+    /// At the line's centre, where a column is entered.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub optical_depth: Option<f64>,
+    /// Share of the multiplet in pure LS coupling.
+    pub relative: Option<f64>,
+    pub multiplet: Option<Shared>,
+    pub spin_note: Option<Shared>,
+}
+
+impl LineRow {
+    /// A line of which no more is known.
+    pub fn between(
+        upper: Shared,
+        lower: Shared,
+        (upper_j, lower_j): (TwiceJ, TwiceJ),
+        multipole: Multipole,
+    ) -> LineRow {
+        LineRow {
+            upper,
+            lower,
+            upper_j,
+            lower_j,
+            multipole,
+            wavenumber: None,
+            energy_kind: None,
+            vacuum_nm: None,
+            air_nm: None,
+            medium_nm: None,
+            s: None,
+            gf: None,
+            f: None,
+            a: None,
+            branching: None,
+            cancellation: None,
+            weak: false,
+            intensity: None,
+            absorption: None,
+            optical_depth: None,
+            relative: None,
+            multiplet: None,
+            spin_note: None,
+        }
+    }
 }
 
 #[derive(Debug, Serialize)]
@@ -85,4 +149,37 @@ impl From<&LevelSum> for SumRow {
             expected: sum.expected,
         }
     }
+}
+
+/// The window that is looked at.
+#[derive(Debug, Serialize)]
+pub struct WindowRow {
+    /// In vacuum, nm.
+    pub from_nm: f64,
+    pub to_nm: f64,
+    /// As entered, nm in the medium.
+    pub from: f64,
+    pub to: f64,
+    /// "vacuum", "air" or "index".
+    pub medium: &'static str,
+    pub lines: usize,
+    /// The nearest line outside, where none is inside.
+    pub nearest: Option<NearestRow>,
+}
+
+#[derive(Debug, Serialize)]
+pub struct NearestRow {
+    pub upper: Shared,
+    pub lower: Shared,
+    pub multipole: Multipole,
+    /// In the medium.
+    pub nm: f64,
+}
+
+/// By what the page shows a line in other units.
+#[derive(Debug, Serialize)]
+pub struct Conversions {
+    pub angstrom_per_nm: f64,
+    pub ev_per_wavenumber: f64,
+    pub thz_per_wavenumber: f64,
 }

@@ -1,19 +1,37 @@
-//! Which lines? Every pair of levels, allowed or refused, and relative strengths in each multiplet.
+//! Which lines? Every pair of levels that a photon joins, with its strength, wavelength and rates, and
+//! the rule against every other pair.
+//!
+//! Where no energies are to be had, lines have their relative strengths in pure LS coupling alone.
 
 use serde::Serialize;
 
+use crate::configuration::Subshell;
+use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
-use crate::quantity::TwiceJ;
-use crate::radiation::selection::Between;
-use crate::radiation::strengths::{self, Multiplet};
-use crate::radiation::{Multipole, Rule};
+use crate::radiation::Multipole;
+use crate::radiation::populations::Weighted;
+use crate::radiation::selection::{Between, TermOf};
 
 use super::answer::Around;
+use super::decays::Radiation;
 use super::document::{Document, LevelOf};
-use super::line_rows::{LevelEntry, LineRow, MultipletRow, RefusedRow, SumRow};
+use super::energy_case;
+use super::levels::{parity, populated};
+use super::light::{Surroundings, conversions};
+use super::line_rows::{Conversions, LevelEntry, LineRow, MultipletRow, RefusedRow, WindowRow};
+use super::lines_energies::Source;
+use super::lines_relative::{Judgement, judge};
+use super::lines_spectrum_words as spectrum_words;
 use super::lines_words::{limits, sentence, working};
-use super::pairs::{Kinds, between, kinds, pairs, pairs_of_entries};
-use super::rich::{Kind, Piece, Rich, TermName};
+use super::pairs;
+use super::placed::Placed;
+use super::rich::Kind;
+use super::solved::{Solved, SolvedLevel, solved};
+use super::watch::Watch;
+
+/// The most refused pairs and the most multiplets that are listed beside known energies; their number is
+/// given always.
+const MAX_LISTED: usize = 5000;
 
 /// The answer.
 #[derive(Debug, Serialize)]
@@ -22,47 +40,45 @@ pub struct Lines {
     around: Around,
     lines: Vec<LineRow>,
     refused: Vec<RefusedRow>,
+    refused_total: usize,
     multiplets: Vec<MultipletRow>,
+    multiplets_total: usize,
     levels: Vec<LevelEntry>,
     pairs: usize,
+    window: Option<WindowRow>,
+    conversions: Conversions,
     order: &'static str,
 }
 
 /// The answer to *Which lines?*
-pub fn answer(document: &Document) -> Result<Lines, Problem> {
+pub fn answer(document: &Document, watch: &mut Watch) -> Result<Lines, Problem> {
     if let Some(lack) = document.lacks(super::Question::Lines) {
         return Err(lack.problem());
     }
-    let total = pairs(document);
-    let mut judged = Judged {
-        document,
-        lines: Vec::new(),
-        refused: Vec::new(),
-        multiplets: Vec::new(),
-    };
-    for (lower_entry, upper_entry) in pairs_of_entries(document) {
-        let Some(between) = between(document, lower_entry, upper_entry) else {
-            continue;
-        };
-        let between = between.map_err(|problem| problem.at("/configurations"))?;
-        let lowers = kinds(document, lower_entry, usize::MAX)?;
-        if lower_entry == upper_entry {
-            judged.inside(&between, &lowers);
-        } else {
-            let uppers = kinds(document, upper_entry, usize::MAX)?;
-            for lower in &lowers {
-                for upper in &uppers {
-                    judged.terms(&between, upper, lower);
-                }
-            }
-        }
+    if energy_case::need(document).is_some() {
+        return relative(document, None);
     }
-    let Judged {
+    match with_energies(document, watch) {
+        Ok(found) => Ok(found),
+        // Energies that cannot be had keep no rule and no relative strength back.
+        Err(problem) if problem.code != "stopped" && pairs::few(document) => {
+            relative(document, Some(&problem))
+        }
+        Err(problem) => Err(problem),
+    }
+}
+
+fn count(pairs: u128) -> usize {
+    usize::try_from(pairs).unwrap_or(usize::MAX)
+}
+
+/// Lines without energies.
+fn relative(document: &Document, because: Option<&Problem>) -> Result<Lines, Problem> {
+    let Judgement {
         lines,
         refused,
         multiplets,
-        ..
-    } = judged;
+    } = judge(document)?;
     let mut levels = Vec::new();
     for (entry, named) in document
         .entries
@@ -78,12 +94,17 @@ pub fn answer(document: &Document) -> Result<Lines, Problem> {
                 j: level.j,
                 configuration: named.label.clone(),
                 term: level.term.to_string(),
+                parity: parity(document.is_odd(entry)),
+                energy: document.pinned(&of),
+                above_lowest: None,
+                population: None,
             });
         }
     }
+    let surroundings = Surroundings::new(&document.conditions);
     let mut around = Around::saying(sentence(document, &lines, &refused));
     around.working = working(&lines, &multiplets);
-    around.limits = limits(document);
+    around.limits = limits(document, because);
     let shortest = lines
         .iter()
         .filter_map(|line| line.vacuum_nm)
@@ -107,7 +128,11 @@ pub fn answer(document: &Document) -> Result<Lines, Problem> {
     .collect();
     Ok(Lines {
         around,
-        pairs: usize::try_from(total).unwrap_or(usize::MAX),
+        pairs: count(pairs::pairs(document)),
+        window: surroundings.window(&document.conditions, &lines),
+        conversions: conversions(),
+        refused_total: refused.len(),
+        multiplets_total: multiplets.len(),
         lines,
         refused,
         multiplets,
@@ -116,183 +141,154 @@ pub fn answer(document: &Document) -> Result<Lines, Problem> {
     })
 }
 
-struct Judged<'a> {
-    document: &'a Document,
-    lines: Vec<LineRow>,
-    refused: Vec<RefusedRow>,
-    multiplets: Vec<MultipletRow>,
-}
-
-impl Judged<'_> {
-    /// Pairs inside one configuration: each pair of terms once, and within each term.
-    fn inside(&mut self, between: &Between, kinds: &[Kinds]) {
-        for (place, lower) in kinds.iter().enumerate() {
-            for upper in kinds.iter().skip(place) {
-                self.terms(between, upper, lower);
-            }
-        }
+fn with_energies(document: &Document, watch: &mut Watch) -> Result<Lines, Problem> {
+    let solved = solved(document, watch)?;
+    let placed = Placed::new(document, &solved);
+    let strengths = solved.strengths(document, watch)?;
+    let radiation = Radiation::new(&solved, strengths, &placed);
+    let surroundings = Surroundings::new(&document.conditions);
+    let many = !pairs::few(document);
+    let judged = match solved.spectrum.is_some() && !many {
+        true => Some(judge(document)?),
+        false => None,
+    };
+    let source = Source {
+        document,
+        solved: &solved,
+        placed: &placed,
+        radiation: &radiation,
+        surroundings: &surroundings,
+        judged: judged.as_ref(),
+    };
+    let lines = source.rows();
+    let mut refused = match (judged.is_some(), solved.spectrum.is_some()) {
+        (false, false) => refused_of_one_electron(&solved)?,
+        _ => Vec::new(),
+    };
+    let mut multiplets = Vec::new();
+    if let Some(judged) = judged {
+        refused = judged.refused;
+        multiplets = judged.multiplets;
     }
-
-    /// All pairs of levels of two terms, or of one term with itself.
-    fn terms(&mut self, between: &Between, upper: &Kinds, lower: &Kinds) {
-        let same = std::ptr::eq(upper, lower);
-        let rules =
-            Multipole::ALL.map(|m| (m, between.term_rule(m, &upper.as_term(), &lower.as_term())));
-        let multiplets = rules.map(|(multipole, rule)| match rule {
-            Some(_) => None,
-            None if same => Some(strengths::within(multipole, upper.term)),
-            None => Some(strengths::between(multipole, upper.term, lower.term)),
-        });
-        for multiplet in multiplets.iter().flatten().filter(|m| !m.lines.is_empty()) {
-            if between
-                .level_rule(
-                    multiplet.multipole,
-                    TwiceJ::from_doubled(4),
-                    TwiceJ::from_doubled(4),
-                )
-                .is_none()
-            {
-                self.multiplet(multiplet, upper, lower);
-            }
-        }
-        for (upper_place, upper_j) in upper.levels.iter().enumerate() {
-            for (lower_place, lower_j) in lower.levels.iter().enumerate() {
-                if same && lower_place >= upper_place {
-                    continue;
-                }
-                let mut refusals = Vec::new();
-                let mut allowed = 0;
-                for ((multipole, rule), multiplet) in rules.iter().zip(&multiplets) {
-                    let refusal = between.level_rule(*multipole, *upper_j, *lower_j).or(*rule);
-                    let share = multiplet
-                        .as_ref()
-                        .and_then(|m| share(m, *upper_j, *lower_j));
-                    match (refusal, share) {
-                        (Some(rule), _) => refusals.push((*multipole, rule)),
-                        (None, Some(relative)) => {
-                            allowed += 1;
-                            self.line(
-                                *multipole,
-                                relative,
-                                &upper.level(*upper_j),
-                                &lower.level(*lower_j),
-                            );
-                        }
-                        // A multipole without strength between these terms.
-                        (None, None) => {}
-                    }
-                }
-                if allowed == 0 {
-                    self.refuse(&refusals, &upper.level(*upper_j), &lower.level(*lower_j));
-                }
-            }
-        }
-    }
-
-    fn term_rich(&self, kinds: &Kinds) -> Rich {
-        let Some(level) = kinds.levels.first() else {
-            return Rich::new();
-        };
-        let mut rich = self.document.level_rich(&kinds.level(*level));
-        if let Some(Piece::Term(name)) = rich.0.last_mut() {
-            *name = TermName {
-                j: None,
-                ..name.clone()
-            };
-        }
-        rich
-    }
-
-    fn multiplet_name(upper: &str, lower: &str) -> String {
-        format!("{lower} - {upper}")
-    }
-
-    fn term_label(&self, of: &LevelOf) -> String {
-        let configuration = self
-            .document
-            .entries
-            .get(of.entry)
-            .map(|e| e.label.as_str())
-            .unwrap_or_default();
-        let index = of.level.index.map(|k| format!(" #{k}")).unwrap_or_default();
-        format!("{configuration} {}{index}", of.level.term)
-    }
-
-    fn multiplet(&mut self, multiplet: &Multiplet, upper: &Kinds, lower: &Kinds) {
-        let first = |kinds: &Kinds| kinds.level(kinds.levels.first().copied().unwrap_or_default());
-        let name = Self::multiplet_name(
-            &self.term_label(&first(upper)),
-            &self.term_label(&first(lower)),
-        );
-        self.multiplets.push(MultipletRow {
-            name,
-            upper_rich: self.term_rich(upper),
-            lower_rich: self.term_rich(lower),
-            multipole: multiplet.multipole,
-            lines: multiplet.lines.len(),
-            sum: multiplet.lines.iter().map(|l| l.relative).sum(),
-            upper_sums: multiplet.upper_sums.iter().map(SumRow::from).collect(),
-            lower_sums: multiplet.lower_sums.iter().map(SumRow::from).collect(),
-        });
-    }
-
-    fn line(&mut self, multipole: Multipole, relative: f64, upper: &LevelOf, lower: &LevelOf) {
-        let (up, low) = (self.document.pinned(upper), self.document.pinned(lower));
-        let swap = matches!((up, low), (Some(up), Some(low)) if up < low);
-        let wavenumber = up
-            .zip(low)
-            .map(|(up, low)| (up - low).abs())
-            .filter(|w| *w > 0.0);
-        let multiplet = Self::multiplet_name(&self.term_label(upper), &self.term_label(lower));
-        let (upper, lower) = if swap { (lower, upper) } else { (upper, lower) };
-        self.lines.push(LineRow {
-            upper: self.document.level_label(upper),
-            lower: self.document.level_label(lower),
-            upper_j: upper.level.j,
-            lower_j: lower.level.j,
-            multipole,
-            relative,
-            multiplet,
-            wavenumber,
-            vacuum_nm: wavenumber.map(|w| 1e7 / w),
-            air_nm: None,
-            s: None,
-            gf: None,
-            a: None,
-        });
-    }
-
-    /// The rule that comes nearest to allowing the pair decides: approximate before rigorous ones.
-    fn refuse(&mut self, refusals: &[(Multipole, Rule)], upper: &LevelOf, lower: &LevelOf) {
-        let deciding = refusals
-            .iter()
-            .find(|(_, rule)| !rule.is_rigorous())
-            .or(refusals.first());
-        let Some((multipole, rule)) = deciding else {
-            return;
-        };
-        self.refused.push(RefusedRow {
-            upper: self.document.level_label(upper),
-            lower: self.document.level_label(lower),
-            upper_j: upper.level.j,
-            lower_j: lower.level.j,
-            multipole: *multipole,
-            rule: rule.to_string(),
-            code: rule.code(),
-            rigorous: rule.is_rigorous(),
-            others: refusals
-                .iter()
-                .filter(|(other, _)| other != multipole)
-                .map(|(multipole, rule)| (multipole.to_string(), rule.code()))
-                .collect(),
-        });
-    }
-}
-
-fn share(multiplet: &Multiplet, upper: TwiceJ, lower: TwiceJ) -> Option<f64> {
-    multiplet
-        .lines
+    let joined: SortedMap<(&str, &str), ()> = lines
         .iter()
-        .find(|l| l.upper == upper && l.lower == lower)
-        .map(|l| l.relative)
+        .map(|line| {
+            let (one, other) = (&*line.upper.0, &*line.lower.0);
+            ((one.min(other), one.max(other)), ())
+        })
+        .collect();
+    // A pair that pure coupling refuses may be joined by mixing.
+    refused.retain(|row| {
+        let (one, other) = (row.upper.as_str(), row.lower.as_str());
+        joined.get(&(one.min(other), one.max(other))).is_none()
+    });
+    let levels_count = solved.levels.len();
+    let pairs = levels_count * levels_count.saturating_sub(1) / 2;
+    let refused_total = match many {
+        true => pairs.saturating_sub(joined.entries().len()),
+        false => refused.len(),
+    };
+    // What comes nearest to being allowed first.
+    crate::numerics::order::sort_by_key(&mut refused, |row| row.rigorous);
+    refused.truncate(MAX_LISTED);
+    let multiplets_total = multiplets.len();
+    multiplets.truncate(MAX_LISTED);
+    let window = surroundings.window(&document.conditions, &lines);
+    let told = spectrum_words::Told {
+        document,
+        solved: &solved,
+        placed: &placed,
+        lines: &lines,
+        surroundings: &surroundings,
+        window: window.as_ref(),
+        refused_listed: !many,
+    };
+    let mut around = Around::saying(spectrum_words::sentence(&told));
+    around.working = spectrum_words::working(&told);
+    if !many && solved.spectrum.is_some() {
+        around.working.extend(working(&lines, &multiplets));
+    }
+    around.limits = spectrum_words::limits(&told);
+    let shortest = lines
+        .iter()
+        .filter_map(|line| line.vacuum_nm)
+        .reduce(f64::min);
+    around.cautions = document.source_cautions(shortest);
+    around.kinds = spectrum_words::kinds(document, &placed);
+    Ok(Lines {
+        around,
+        refused,
+        refused_total,
+        multiplets,
+        multiplets_total,
+        levels: level_entries(document, &solved, &placed),
+        pairs,
+        window,
+        conversions: conversions(),
+        lines,
+        order: "Of two levels the one of higher energy is called the upper one.",
+    })
+}
+
+fn level_entries(document: &Document, solved: &Solved, placed: &Placed) -> Vec<LevelEntry> {
+    let filled = populated(document, &placed.weighted(solved));
+    let lowest = placed.lowest();
+    let entry = |place: &usize| {
+        let level = solved.levels.get(*place)?;
+        let energy = placed.of(*place);
+        Some(LevelEntry {
+            label: level.label.to_string(),
+            rich: level.rich(document),
+            j: level.level.j,
+            configuration: level.configuration.to_string(),
+            term: level.level.term.to_string(),
+            parity: parity(level.odd),
+            energy: Some(energy),
+            above_lowest: Some(energy - lowest),
+            population: filled.as_ref().map(|filled| {
+                filled.share(Weighted {
+                    energy,
+                    weight: level.weight(),
+                })
+            }),
+        })
+    };
+    placed.order.iter().filter_map(entry).collect()
+}
+
+/// The rule against an electric dipole line between each pair of one-electron levels that has none.
+fn refused_of_one_electron(solved: &Solved) -> Result<Vec<RefusedRow>, Problem> {
+    let mut refused = Vec::new();
+    let subshells = |level: &SolvedLevel| -> Vec<Subshell> {
+        let shell = level.orbital.and_then(|orbital| Subshell::new(orbital, 1));
+        shell.into_iter().collect()
+    };
+    let term = |level: &SolvedLevel| TermOf {
+        term: level.level.term,
+        index: None,
+        chain: None,
+    };
+    for (place, lower) in solved.levels.iter().enumerate() {
+        for upper in solved.levels.iter().skip(place + 1) {
+            let between = Between::new(&subshells(upper), &subshells(lower))?;
+            let (j, other) = (upper.level.j, lower.level.j);
+            let verdicts = between.verdicts(&term(upper), j, &term(lower), other);
+            let electric = verdicts.iter().find(|v| v.multipole == Multipole::E1);
+            let Some(rule) = electric.and_then(|verdict| verdict.refused_by) else {
+                continue;
+            };
+            refused.push(RefusedRow {
+                upper: upper.label.to_string(),
+                lower: lower.label.to_string(),
+                upper_j: j,
+                lower_j: other,
+                multipole: Multipole::E1,
+                rule: rule.to_string(),
+                code: rule.code(),
+                rigorous: rule.is_rigorous(),
+                others: SortedMap::default(),
+            });
+        }
+    }
+    Ok(refused)
 }

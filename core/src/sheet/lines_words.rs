@@ -1,5 +1,6 @@
 //! The sentence, the working and the limits of the answer to *Which lines?*
 
+use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::radiation::Multipole;
 use crate::terms::Term;
@@ -94,10 +95,18 @@ pub fn working(lines: &[LineRow], multiplets: &[MultipletRow]) -> Vec<Working> {
     let case = lines
         .iter()
         .filter(|l| l.multipole == Multipole::E1)
-        .max_by(|a, b| a.relative.total_cmp(&b.relative))
-        .and_then(|line| Some((line, term_of(&line.upper)?, term_of(&line.lower)?)));
+        .filter_map(|line| Some((line, line.relative?)))
+        .max_by(|a, b| a.1.total_cmp(&b.1))
+        .and_then(|(line, relative)| {
+            Some((
+                line,
+                relative,
+                term_of(&line.upper.0)?,
+                term_of(&line.lower.0)?,
+            ))
+        });
     steps.push(match case {
-        Some((line, upper, lower)) => {
+        Some((line, relative, upper, lower)) => {
             let text = |j: TwiceJ| j.to_string();
             let cells = [
                 [upper.l.to_string(), text(line.upper_j), text(upper.spin())],
@@ -115,10 +124,10 @@ pub fn working(lines: &[LineRow], multiplets: &[MultipletRow]) -> Vec<Working> {
                 six_j(cells),
             ]);
             let result = Rich::new()
-                .number(line.relative, None, Kind::Computed)
+                .number(relative, None, Kind::Computed)
                 .say(format!(
                     " of its multiplet, for {} to {}",
-                    line.lower, line.upper
+                    line.lower.0, line.upper.0
                 ));
             step.numbers(numbers, result)
         }
@@ -193,14 +202,18 @@ fn term_of(label: &str) -> Option<Term> {
     crate::terms::label::parse(label).ok().map(|l| l.level.term)
 }
 
-pub fn limits(document: &Document) -> Vec<String> {
-    let mut limits = vec![
-        "Energies are not computed, so lines have no wavelength of their own and their strengths are relative within one multiplet: S, gf and A stay empty. Pinning measured energies gives wavelengths."
+pub fn limits(document: &Document, because: Option<&Problem>) -> Vec<String> {
+    let mut limits: Vec<String> = because
+        .map(|problem| format!("Energies could not be computed: {}", problem.message))
+        .into_iter()
+        .collect();
+    limits.extend([
+        "Energies are not computed here, so lines have no wavelength of their own and their strengths are relative within one multiplet: S, gf and A stay empty. Pinning measured energies gives wavelengths."
             .to_owned(),
         "Pure LS coupling of single configurations. Rigorous rules (parity, J) always hold; the approximate ones weaken with spin–orbit mixing, so refused intercombination lines do appear, strongly so in heavy atoms (common practice, no source)."
             .to_owned(),
         "Strengths across multiplets cannot be compared: each multiplet adds up to one.".to_owned(),
-    ];
+    ]);
     limits.extend(document.unused());
     limits
 }

@@ -5,10 +5,14 @@
 //! their own calling conventions.
 
 mod answer;
+mod basis_names;
 mod chart;
 mod choice;
+mod compositions;
 mod conditions;
+mod decays;
 mod document;
+mod energy_case;
 mod entry;
 mod formula;
 mod given;
@@ -17,8 +21,16 @@ mod json;
 mod json_repair;
 mod lack;
 mod level_names;
+mod levels;
+mod levels_facts;
+mod levels_rows;
+mod levels_words;
+mod light;
 mod line_rows;
 mod lines;
+mod lines_energies;
+mod lines_relative;
+mod lines_spectrum_words;
 mod lines_words;
 mod measured;
 mod orbitals;
@@ -32,13 +44,17 @@ mod orbitals_sample;
 mod orbitals_words;
 mod pairs;
 mod parameter_name;
+mod parameter_rows;
 mod parameters;
+mod placed;
 mod reading;
 mod record;
 mod rich;
 mod schema;
 mod sections;
 mod shells;
+mod solved;
+mod solved_lines;
 mod splitting;
 mod states;
 mod states_words;
@@ -68,6 +84,8 @@ pub enum Question {
     States,
     /// Which radial functions, with what energies, radii, integrals and ζ?
     Orbitals,
+    /// Which levels, at which energies, made of what?
+    Levels,
     /// Which lines are allowed, and how strong are they beside each other?
     Lines,
     /// How does the line split in the field?
@@ -76,9 +94,10 @@ pub enum Question {
 
 impl Question {
     /// All questions in the order of work.
-    pub const ALL: [Question; 4] = [
+    pub const ALL: [Question; 5] = [
         Question::States,
         Question::Orbitals,
+        Question::Levels,
         Question::Lines,
         Question::Splitting,
     ];
@@ -88,6 +107,7 @@ impl Question {
         match self {
             Question::States => "states",
             Question::Orbitals => "orbitals",
+            Question::Levels => "levels",
             Question::Lines => "lines",
             Question::Splitting => "splitting",
         }
@@ -110,7 +130,8 @@ pub fn answer(
     let text = match question {
         Question::States => states::answer(document).map(|a| to_json(&a)),
         Question::Orbitals => orbitals::answer(document, watch).map(|a| to_json(&a)),
-        Question::Lines => lines::answer(document).map(|a| to_json(&a)),
+        Question::Levels => levels::answer(document, watch).map(|a| to_json(&a)),
+        Question::Lines => lines::answer(document, watch).map(|a| to_json(&a)),
         Question::Splitting => splitting::answer(document).map(|a| to_json(&a)),
     };
     text.map_err(|problem| vec![problem])
@@ -189,7 +210,7 @@ pub fn answer_message_watched(sheet: &Json, question: &str, watch: &mut Watch) -
                 0,
                 0,
             )
-            .bound("The questions are states, orbitals, lines and splitting."),
+            .bound("The questions are states, orbitals, levels, lines and splitting."),
         ]),
     };
     match result {
@@ -211,6 +232,10 @@ pub fn estimate_message(sheet: &Json, question: &str) -> String {
     let (seconds, megabytes) = match Question::named(question) {
         Some(Question::States) => rows(states::rows(&document)),
         Some(Question::Orbitals) => orbitals::estimate(&document),
+        Some(Question::Levels) => solved::estimate(&document, true),
+        Some(Question::Lines) if energy_case::need(&document).is_none() => {
+            solved::estimate(&document, true)
+        }
         Some(Question::Lines) => rows(pairs::rows(&document)),
         Some(Question::Splitting) | None => (0.0, 0.0),
     };

@@ -125,6 +125,7 @@ fn for_each(
                 label: &entry.label,
                 iteration: step.iteration,
                 residual: step.residual,
+                done: None,
             })
         };
         what(entry, asked, &mut tell).map_err(|problem| place(document, entry, problem))?;

@@ -136,7 +136,7 @@ pub fn mass_number_of(z: u8, typed: Option<u16>) -> (u16, &'static str) {
 /// The mass of a nucleus in electron masses: CODATA for p, d and α, otherwise A u − Z m_e, which is
 /// within a part in 150 of every nucleus's and within a part in 800 from A = 12 on (isotope tables,
 /// from memory: ³He 3.016 u, ⁵⁶Fe 55.935 u).
-fn nuclear_mass(z: u8, mass_number: u16) -> (f64, &'static str) {
+pub fn nuclear_mass(z: u8, mass_number: u16) -> (f64, &'static str) {
     let by_number = f64::from(mass_number) / ELECTRON_MASS_U.value - f64::from(z);
     let known = match (z, mass_number) {
         (1, 1) => PROTON_MASS_U,

@@ -59,8 +59,13 @@ pub fn pairs(document: &Document) -> u128 {
     pair_count(level_count(document), None)
 }
 
+/// Whether pure LS coupling is worked out for all pairs.
+pub fn few(document: &Document) -> bool {
+    pairs(document) <= MAX_PAIRS
+}
+
 /// Levels of all configurations together.
-fn level_count(document: &Document) -> u128 {
+pub fn level_count(document: &Document) -> u128 {
     document
         .entries
         .iter()
@@ -75,7 +80,7 @@ fn levels_of(configuration: &Configuration) -> Option<u128> {
         .map(|terms| terms.n_levels())
 }
 
-/// About how many rows the answer has, for the estimate.
+/// About how many rows pure LS coupling gives, for the estimate.
 pub fn rows(document: &Document) -> f64 {
     pairs(document).min(MAX_PAIRS) as f64
 }

@@ -344,7 +344,7 @@ mod tests {
             ("r(3p,3s)", "r(3s,3p)"),
             ("R1(3s,3s;3p,3p)", "R1(3p,3p,3s,3s)"),
             // ac and bd are the densities: a and c change places, and both with b and d.
-            ("R1(3d,4s;4p,5s)", "R1(4p,4s,3d,5s)"),
+            ("R1(3d,4s;4p,4p)", "R1(4p,4s,3d,4p)"),
             ("R1(3d,3p;4p,5s)", "R1(3p,3d;5s,4p)"),
         ] {
             assert_eq!(parse(one).unwrap(), parse(other).unwrap(), "{one}");

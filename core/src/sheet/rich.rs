@@ -280,7 +280,11 @@ impl Piece {
                 ..
             } => {
                 let tail = j.map(|j| j.to_string()).unwrap_or_default();
-                format!("({}) {multiplicity}[{k}]{tail}", parent.plain())
+                let before = match parent.0.as_slice() {
+                    [] => String::new(),
+                    _ => format!("({}) ", parent.plain()),
+                };
+                format!("{before}{multiplicity}[{k}]{tail}")
             }
             Piece::Species {
                 symbol,

@@ -2,7 +2,7 @@
 
 use serde::Serialize;
 
-/// One iteration of one configuration's radial functions.
+/// One iteration of one configuration's radial functions, or a share of the matrices and lines.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize)]
 pub struct Progress<'a> {
     /// Which configuration of the sheet, from 0.
@@ -15,6 +15,9 @@ pub struct Progress<'a> {
     pub iteration: usize,
     /// The residual they have left.
     pub residual: f64,
+    /// How much of the matrices or lines is done, from 0 to 1; nothing during the iterations above.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub done: Option<f64>,
 }
 
 /// Is told of every iteration, and says whether to go on. What it is told never changes an answer;

@@ -1,0 +1,354 @@
+//! The sentence, the working and the limits of the answer on levels.
+
+use crate::numerics::sorted_map::SortedMap;
+
+use super::answer::Working;
+use super::document::Document;
+use super::energy_case::EnergyCase;
+use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
+use super::levels_rows::{GroundRow, IntervalRow, LevelRow, ParameterRow};
+use super::placed::Placed;
+use super::rich::{Kind, Rich};
+use super::solved::Solved;
+use super::structure::Energies;
+
+/// What the words are about.
+pub struct Told<'a> {
+    pub document: &'a Document,
+    pub solved: &'a Solved,
+    pub placed: &'a Placed,
+    pub levels: &'a [LevelRow],
+    pub parameters: &'a [ParameterRow],
+    pub ground: Option<&'a GroundRow>,
+    pub intervals: &'a [IntervalRow],
+}
+
+/// A wavenumber as it is read aloud.
+pub fn rounded(value: f64) -> f64 {
+    let digits = if value.abs() >= 1000.0 { 1.0 } else { 100.0 };
+    libm::round(value * digits) / digits
+}
+
+pub fn sentence(told: &Told) -> Rich {
+    let species = told.document.species_rich();
+    let say = if species.0.is_empty() {
+        Rich::words("These configurations have ")
+    } else {
+        species.say(" has ")
+    };
+    let say = say.count(told.levels.len(), "level here", "levels here");
+    let Some(lowest) = told.levels.first() else {
+        return say.say(".");
+    };
+    let say = say.say("; the lowest is ").then(&lowest.rich);
+    let say = match told.ground {
+        Some(ground) => beside(say, ground),
+        None => say,
+    };
+    let kind = |row: &LevelRow| row.energy_kind;
+    match (told.levels.get(1), told.levels.last()) {
+        (Some(next), Some(last)) if told.levels.len() > 2 => say
+            .say("; the next lies ")
+            .number(rounded(next.above_lowest), Some("cm-1"), kind(next))
+            .say(" above it, the highest ")
+            .number(rounded(last.above_lowest), Some("cm-1"), kind(last))
+            .say("."),
+        (Some(next), _) => say
+            .say("; the other lies ")
+            .number(rounded(next.above_lowest), Some("cm-1"), kind(next))
+            .say(" above it."),
+        _ => say.say("."),
+    }
+}
+
+/// The lowest level beside the observed one and Hund's rules.
+fn beside(say: Rich, ground: &GroundRow) -> Rich {
+    match (&ground.observed, ground.hund.agrees) {
+        (Some(observed), true) if observed.agrees => say.say(", as observed and by Hund’s rules"),
+        (Some(observed), false) if observed.agrees => {
+            say.say(", as observed, where Hund’s rules name another")
+        }
+        (Some(observed), _) => say.say(match (&observed.term, observed.j) {
+            (Some(term), Some(j)) => format!(", but observed is {term}{j}"),
+            (None, Some(j)) => format!(", but observed is a level with J = {j}"),
+            _ => ", but another is observed".to_owned(),
+        }),
+        (None, true) => say.say(", as Hund’s rules say"),
+        (None, false) => say.say(", where Hund’s rules name another"),
+    }
+}
+
+fn sum_of(letter: &str, below: &str) -> [Formula; 3] {
+    let raised = |letter: &str| sup(name(letter), name("k"));
+    let small = sub(name(below), name("k"));
+    [operator("∑"), raised(letter), small]
+}
+
+pub fn working(told: &Told) -> Vec<Working> {
+    if let EnergyCase::OneElectron { .. } = told.solved.case() {
+        return vec![Working::new(
+            "Energy of one electron",
+            row([
+                name("E"),
+                operator("="),
+                name("μ"),
+                sup(name("c"), number(2)),
+                operator("["),
+                name("f"),
+                operator("("),
+                name("n"),
+                operator(","),
+                name("j"),
+                operator(")"),
+                operator("−"),
+                number(1),
+                operator("]"),
+            ]),
+            "Dirac’s levels with the mass of the nucleus: Bethe & Salpeter, Quantum Mechanics of One- and Two-Electron Atoms (1957), §§14 and 42",
+        )];
+    }
+    let mut steps = vec![matrix(told)];
+    steps.extend(interval_rule(told));
+    steps.extend(factor(told));
+    steps
+}
+
+/// The energy matrix with the first parameters of this case.
+fn matrix(told: &Told) -> Working {
+    let mut formula = vec![name("H"), operator("="), sub(name("E"), name("av"))];
+    for (letter, below) in [("F", "f"), ("G", "g"), ("R", "r")] {
+        formula.push(operator("+"));
+        formula.extend(sum_of(letter, below));
+    }
+    formula.extend([
+        operator("+"),
+        operator("∑"),
+        name("ζ"),
+        name("ℓ"),
+        operator("·"),
+        name("s"),
+    ]);
+    let step = Working::new(
+        "Energy matrix in intermediate coupling",
+        row(formula),
+        "J. C. Slater, Phys. Rev. 34, 1293 (1929); Condon & Shortley, The Theory of Atomic Spectra (1935), ch. VI–XI; R. D. Cowan, The Theory of Atomic Structure and Spectra (1981), ch. 10–13",
+    );
+    let mut numbers = Vec::new();
+    let shown = told
+        .parameters
+        .iter()
+        .filter(|row| row.value != 0.0 && row.unit == "cm-1" && !row.name.starts_with("E("));
+    for parameter in shown.take(4) {
+        if !numbers.is_empty() {
+            numbers.push(operator(","));
+        }
+        numbers.extend([
+            name(&parameter.name),
+            operator("="),
+            number(rounded(parameter.value)),
+        ]);
+    }
+    let Some(ground) = told.ground.filter(|_| !numbers.is_empty()) else {
+        return step;
+    };
+    let energy = told.levels.first().map_or(0.0, |row| row.computed_energy);
+    let result = ground
+        .rich
+        .clone()
+        .say(" at ")
+        .number(rounded(energy), Some("cm-1"), Kind::Computed)
+        .say(match told.document.energies() {
+            Energies::Computed => " from the average of the first configuration",
+            Energies::Given => " on the scale of the given averages",
+        });
+    step.numbers(row(numbers), result)
+}
+
+/// Landé's interval rule on the term of the lowest level.
+fn interval_rule(told: &Told) -> Option<Working> {
+    let ground = told.ground?;
+    let lowest = told.levels.first()?;
+    let of_term = |row: &&IntervalRow| {
+        row.term == lowest.term && row.configuration.0 == lowest.configuration.0
+    };
+    let first = told.intervals.iter().find(of_term)?;
+    let (upper, lower) = (first.upper_j, first.lower_j);
+    let formula = row([
+        name("E"),
+        operator("("),
+        name("J"),
+        operator(")"),
+        operator("−"),
+        name("E"),
+        operator("("),
+        name("J"),
+        operator("−"),
+        number(1),
+        operator(")"),
+        operator("="),
+        name("A"),
+        name("J"),
+    ]);
+    let j = f64::from(upper.doubled()) / 2.0;
+    let numbers = row([
+        fraction(number(rounded(first.interval)), number(upper)),
+        operator("="),
+        number(rounded(first.interval / j)),
+    ]);
+    let rest: Vec<&IntervalRow> = told.intervals.iter().filter(of_term).skip(1).collect();
+    let worst = rest
+        .iter()
+        .filter_map(|row| Some((row.ratio? / row.expected_ratio - 1.0).abs()))
+        .fold(0.0, f64::max);
+    let result = Rich::words("A = ")
+        .number(rounded(first.interval / j), Some("cm-1"), Kind::Computed)
+        .say(format!(" between J = {lower} and {upper} of "))
+        .then(&ground.rich);
+    let result = match rest.is_empty() {
+        true => result,
+        false => result
+            .say("; the other intervals of its term depart from the rule by up to ")
+            .number(
+                libm::round(worst * 1000.0) / 10.0,
+                Some("%"),
+                Kind::Computed,
+            ),
+    };
+    let step = Working::new(
+        "Interval rule",
+        formula,
+        "A. Landé, Z. Phys. 15, 189 (1923)",
+    );
+    Some(step.numbers(numbers, result))
+}
+
+/// g of the lowest level that has one.
+fn factor(told: &Told) -> Option<Working> {
+    let level = told.levels.iter().find(|row| row.g.is_some())?;
+    let formula = row([
+        sub(name("g"), name("J")),
+        operator("="),
+        operator("∑"),
+        sup(name("c"), number(2)),
+        name("g"),
+        operator("("),
+        name("S"),
+        name("L"),
+        name("J"),
+        operator(")"),
+    ]);
+    let mut numbers = Vec::new();
+    for share in level.composition.iter().take(3) {
+        if !numbers.is_empty() {
+            numbers.push(operator("+"));
+        }
+        numbers.extend([
+            number(libm::round(share.percent * 100.0) / 1e4),
+            name("g"),
+            operator("("),
+            name(&share.name),
+            operator(")"),
+        ]);
+    }
+    let numbers = row(numbers);
+    let result = level
+        .rich
+        .clone()
+        .say(": ")
+        .number(level.g?, None, Kind::Computed);
+    let step = Working::new(
+        "Landé factor in intermediate coupling",
+        formula,
+        "Condon & Shortley (1935), ch. XVI; g_s from CODATA 2022",
+    );
+    Some(step.numbers(numbers, result))
+}
+
+pub fn limits(told: &Told) -> Vec<String> {
+    let mut limits = Vec::new();
+    let document = told.document;
+    match told.solved.case() {
+        EnergyCase::OneElectron { .. } => limits.push(
+            "One electron in the field of a point nucleus of finite mass; the Lamb shift and the spin of the nucleus are left out (in hydrogen 0.035 cm⁻¹ for 2s, less for others; from memory)."
+                .to_owned(),
+        ),
+        EnergyCase::Model { case, .. } => {
+            if case.computed {
+                limits.push(COMPUTED.to_owned());
+            } else {
+                limits.push(
+                    "Energies follow from the given parameters alone; what is not given is zero."
+                        .to_owned(),
+                );
+            }
+            if !case.mixing {
+                limits.push("Configurations do not mix, as the sheet asks.".to_owned());
+            }
+        }
+    }
+    if told.placed.pinned {
+        limits.push(
+            "Measured levels stand at their measured energies; a level without one keeps its computed distance from the nearest measured level of its configuration."
+                .to_owned(),
+        );
+    }
+    if let Some(anchor) = told
+        .placed
+        .anchor
+        .and_then(|place| told.solved.levels.get(place))
+    {
+        limits.push(format!(
+            "The measured energies count from {}, which is taken as zero.",
+            anchor.label
+        ));
+    }
+    let spectrum = told.solved.spectrum.as_ref();
+    if let Some(cross) = spectrum.and_then(|s| s.largest_cross.as_ref()) {
+        let overlap = cross.cross.overlap.abs();
+        if overlap > 0.3 {
+            limits.push(format!(
+                "Orbitals of two configurations that mix overlap by {overlap:.2}: above 0.3 they are no sound basis together, and energies between them are rough."
+            ));
+        }
+    }
+    limits.extend(document.unused());
+    limits
+}
+
+/// How far computed energies usually are from measured ones.
+pub const COMPUTED: &str = "Computed from radial functions of each configuration; what the electrons do to avoid each other is left out except for the mixing of the configurations entered. Pin measured energies for wavelengths that are to be compared with a spectrometer.";
+
+pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Kind> {
+    let own = match document.energies() {
+        Energies::Computed => Kind::Computed,
+        Energies::Given => Kind::Entered,
+    };
+    let energy = if placed.pinned { Kind::Measured } else { own };
+    [
+        ("levels.energy", energy),
+        ("levels.above_lowest", energy),
+        ("levels.computed_energy", own),
+        ("levels.J", Kind::Exact),
+        ("levels.g", Kind::Computed),
+        ("levels.composition.percent", Kind::Computed),
+        ("levels.composition_jj.percent", Kind::Computed),
+        ("levels.composition_jk.percent", Kind::Computed),
+        ("levels.leading", Kind::Computed),
+        ("levels.lifetime", Kind::Computed),
+        ("levels.population", Kind::Computed),
+        ("parameters.value", own),
+        ("parameters.computed", Kind::Computed),
+        ("parameters.scale", Kind::Entered),
+        ("schemes.mean_leading", Kind::Computed),
+        ("ground.hund", Kind::Exact),
+        ("ground.observed", Kind::Measured),
+        ("intervals.interval", energy),
+        ("intervals.expected_ratio", Kind::Exact),
+        ("intervals.ratio", Kind::Computed),
+        ("series.limit", Kind::Computed),
+        ("blocks.rows", Kind::Exact),
+        ("partition.value", Kind::Computed),
+    ]
+    .into_iter()
+    .collect()
+}

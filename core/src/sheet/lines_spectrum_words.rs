@@ -1,0 +1,321 @@
+//! The sentence, the working and the limits of lines whose energies are known.
+
+use crate::numerics::sorted_map::SortedMap;
+use crate::radiation::Multipole;
+use crate::radiation::rates::wavelength_factor;
+
+use super::answer::Working;
+use super::document::Document;
+use super::energy_case::EnergyCase;
+use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
+use super::levels_words::{COMPUTED, rounded};
+use super::light::{Surroundings, air_range};
+use super::line_rows::{LineRow, WindowRow};
+use super::lines_energies::WEAK;
+use super::placed::Placed;
+use super::rich::{Kind, Rich};
+use super::solved::Solved;
+use super::structure::Energies;
+
+/// What the words are about.
+pub struct Told<'a> {
+    pub document: &'a Document,
+    pub solved: &'a Solved,
+    pub placed: &'a Placed,
+    pub lines: &'a [LineRow],
+    pub surroundings: &'a Surroundings,
+    pub window: Option<&'a WindowRow>,
+    pub refused_listed: bool,
+}
+
+/// Six digits, as a wavelength is read aloud.
+fn six_digits(value: f64) -> f64 {
+    format!("{value:.5e}").parse().unwrap_or(value)
+}
+
+fn three_digits(value: f64) -> f64 {
+    format!("{value:.2e}").parse().unwrap_or(value)
+}
+
+/// The strongest line: by emitted power where a temperature is entered, otherwise by gf.
+fn strongest<'a>(lines: impl Iterator<Item = &'a LineRow>) -> Option<&'a LineRow> {
+    let size = |line: &LineRow| line.intensity.or(line.gf).unwrap_or(0.0);
+    let mut best: Option<&LineRow> = None;
+    for line in lines.filter(|line| line.wavenumber.is_some()) {
+        if best.is_none_or(|known| size(line) > size(known)) {
+            best = Some(line);
+        }
+    }
+    best
+}
+
+pub fn sentence(told: &Told) -> Rich {
+    if let Some(window) = told.window {
+        return in_window(told, window);
+    }
+    let species = told.document.species_rich();
+    let say = match species.0.is_empty() {
+        true => Rich::words("There are "),
+        false => species.say(" has "),
+    };
+    let many = |multipole| {
+        let of = |line: &&LineRow| line.multipole == multipole;
+        told.lines.iter().filter(of).count()
+    };
+    let (dipole, others) = (
+        many(Multipole::E1),
+        many(Multipole::M1) + many(Multipole::E2),
+    );
+    let say = say
+        .count(dipole, "electric dipole line", "electric dipole lines")
+        .say(" and ")
+        .count(others, "forbidden line here", "forbidden lines here");
+    match strongest(told.lines.iter()) {
+        Some(line) => named(told, say.say("; the strongest is "), line).say("."),
+        None => say.say("."),
+    }
+}
+
+fn in_window(told: &Told, window: &WindowRow) -> Rich {
+    let between = |say: Rich| {
+        say.number(window.from, None, Kind::Entered)
+            .say(" and ")
+            .number(window.to, Some("nm"), Kind::Entered)
+            .say(told.surroundings.words())
+    };
+    if window.lines == 0 {
+        let say = between(Rich::words("No line lies between "));
+        return match &window.nearest {
+            Some(nearest) => say
+                .say("; the nearest is ")
+                .number(six_digits(nearest.nm), Some("nm"), Kind::Computed)
+                .say(format!(
+                    ", from {} to {}, by {}.",
+                    nearest.upper.0, nearest.lower.0, nearest.multipole
+                )),
+            None => say.say(", and none lies anywhere else."),
+        };
+    }
+    let inside = |line: &&LineRow| {
+        let nm = line.vacuum_nm.unwrap_or(0.0);
+        (window.from_nm..=window.to_nm).contains(&nm)
+    };
+    let say = between(Rich::words("Between ")).say(match window.lines {
+        1 => " lies ",
+        _ => " lie ",
+    });
+    let say = say.count(window.lines, "line", "lines");
+    match strongest(told.lines.iter().filter(inside)) {
+        Some(line) if window.lines > 1 => {
+            named(told, say.say("; the strongest is "), line).say(".")
+        }
+        Some(line) => named(told, say.say(": "), line).say("."),
+        None => say.say("."),
+    }
+}
+
+/// A line with its wavelength and how that is known.
+fn named(told: &Told, say: Rich, line: &LineRow) -> Rich {
+    let vacuum = line.vacuum_nm.unwrap_or(0.0);
+    let (nm, words) = match told.surroundings.name {
+        // A table's wavelength: in air where air has one.
+        "vacuum" => (vacuum, " in vacuum"),
+        _ => (
+            told.surroundings.medium_nm(vacuum),
+            told.surroundings.words(),
+        ),
+    };
+    let kind = line.energy_kind.unwrap_or(Kind::Computed);
+    let say = say
+        .number(six_digits(nm), Some("nm"), kind)
+        .say(words)
+        .say(format!(
+            ", {} from {} to {}",
+            line.multipole, line.upper.0, line.lower.0
+        ));
+    say.say(match kind {
+        Kind::Measured => ", between measured levels",
+        Kind::Entered => ", by the given parameters",
+        _ => ", computed",
+    })
+}
+
+pub fn working(told: &Told) -> Vec<Working> {
+    let mut steps = Vec::new();
+    let electric = |line: &&LineRow| line.multipole == Multipole::E1;
+    let case = strongest(told.lines.iter().filter(electric));
+    let weight = |text: &str| sub(name("g"), name(text));
+    let formula = row([
+        name("A"),
+        operator("="),
+        name("C"),
+        fraction(name("S"), row([weight("u"), sup(name("λ"), number(3))])),
+    ]);
+    let step = Working::new(
+        "Transition probability of an electric dipole line, λ in Å in vacuum",
+        formula,
+        "G. W. F. Drake (ed.), Springer Handbook of Atomic, Molecular, and Optical Physics, ch. 10 (Martin & Wiese, Atomic spectroscopy); C from CODATA 2022",
+    );
+    steps.push(match case {
+        Some(line) => {
+            let angstrom = line.vacuum_nm.unwrap_or(0.0) * 10.0;
+            let factor = wavelength_factor(Multipole::E1);
+            let numbers = row([
+                number(format!("{factor:.5e}")),
+                operator("×"),
+                fraction(
+                    number(six_digits(line.s.unwrap_or(0.0))),
+                    row([
+                        number(line.upper_j.degeneracy()),
+                        operator("×"),
+                        sup(number(six_digits(angstrom)), number(3)),
+                    ]),
+                ),
+            ]);
+            let result = Rich::words("A = ")
+                .number(
+                    three_digits(line.a.unwrap_or(0.0)),
+                    Some("s-1"),
+                    Kind::Computed,
+                )
+                .say(format!(" for {} to {}", line.upper.0, line.lower.0));
+            step.numbers(numbers, result)
+        }
+        None => step,
+    });
+    steps.extend(air(told, case));
+    steps
+}
+
+fn air(told: &Told, case: Option<&LineRow>) -> Option<Working> {
+    let line = case?;
+    let (vacuum, air) = (line.vacuum_nm?, line.air_nm?);
+    let formula: Formula = row([
+        sub(name("λ"), name("air")),
+        operator("="),
+        fraction(sub(name("λ"), name("vac")), name("n")),
+    ]);
+    let numbers = row([
+        fraction(
+            number(format!("{vacuum:.4}")),
+            number(format!("{:.8}", vacuum / air)),
+        ),
+        operator("="),
+        number(format!("{air:.4}")),
+    ]);
+    let words = match told.document.conditions.air {
+        entered if entered == Default::default() => {
+            "dry air of 15 °C and 101 325 Pa with 450 ppm CO₂"
+        }
+        _ => "the air of the sheet",
+    };
+    let step = Working::new(
+        "Wavelength in air",
+        formula,
+        "P. E. Ciddor, Appl. Opt. 35, 1566 (1996)",
+    );
+    Some(
+        step.numbers(
+            numbers,
+            Rich::new()
+                .number(
+                    rounded(air * 1e3) / 1e3,
+                    Some("nm"),
+                    line.energy_kind.unwrap_or(Kind::Computed),
+                )
+                .say(format!(
+                    " in {words}; outside {} wavelengths are those in vacuum",
+                    air_range()
+                )),
+        ),
+    )
+}
+
+pub fn limits(told: &Told) -> Vec<String> {
+    let mut limits = Vec::new();
+    let computed = told
+        .lines
+        .iter()
+        .any(|line| line.energy_kind == Some(Kind::Computed));
+    match told.solved.case() {
+        EnergyCase::OneElectron { .. } => limits.push(
+            "Electric dipole lines of one electron between Dirac’s levels, strengths without relativity; the Lamb shift and the spin of the nucleus are left out."
+                .to_owned(),
+        ),
+        EnergyCase::Model { .. } if computed => limits.push(COMPUTED.to_owned()),
+        EnergyCase::Model { .. } => {}
+    }
+    if told.lines.iter().any(|line| line.weak) {
+        limits.push(format!(
+            "Lines marked weak are what little is left of large terms that cancel (factor below {WEAK}): their strengths may be far off (common practice, no source)."
+        ));
+    }
+    if !told.refused_listed {
+        limits.push(format!(
+            "With more than {} pairs of levels the refused ones are counted, not listed.",
+            super::pairs::MAX_PAIRS
+        ));
+    }
+    if told.document.conditions.temperature.is_some() {
+        limits.push(
+            "Intensities are those of a thin source in equilibrium at its temperature, populated among the listed levels alone."
+                .to_owned(),
+        );
+    }
+    if let Some(anchor) = told
+        .placed
+        .anchor
+        .and_then(|place| told.solved.levels.get(place))
+    {
+        limits.push(format!(
+            "The measured energies count from {}, which is taken as zero.",
+            anchor.label
+        ));
+    }
+    limits.extend(told.document.unused());
+    limits
+}
+
+pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Kind> {
+    let own = match document.energies() {
+        Energies::Computed => Kind::Computed,
+        Energies::Given => Kind::Entered,
+    };
+    let energy = if placed.pinned { Kind::Measured } else { own };
+    [
+        ("lines.wavenumber", energy),
+        ("lines.vacuum_nm", energy),
+        ("lines.air_nm", energy),
+        ("lines.medium_nm", energy),
+        ("lines.multipole", Kind::Exact),
+        ("lines.S", Kind::Computed),
+        ("lines.gf", Kind::Computed),
+        ("lines.f", Kind::Computed),
+        ("lines.A", Kind::Computed),
+        ("lines.branching", Kind::Computed),
+        ("lines.cancellation", Kind::Computed),
+        ("lines.intensity", Kind::Computed),
+        ("lines.absorption", Kind::Computed),
+        ("lines.optical_depth", Kind::Computed),
+        ("lines.relative", Kind::Computed),
+        ("levels.energy", energy),
+        ("levels.above_lowest", energy),
+        ("levels.population", Kind::Computed),
+        ("refused.rule", Kind::Exact),
+        ("refused_total", Kind::Exact),
+        ("multiplets.lines", Kind::Exact),
+        ("multiplets.sum", Kind::Computed),
+        ("multiplets.upper_sums.sum", Kind::Computed),
+        ("multiplets.upper_sums.expected", Kind::Exact),
+        ("multiplets.lower_sums.sum", Kind::Computed),
+        ("multiplets.lower_sums.expected", Kind::Exact),
+        ("multiplets_total", Kind::Exact),
+        ("pairs", Kind::Exact),
+        ("window.from", Kind::Entered),
+        ("window.to", Kind::Entered),
+        ("window.lines", Kind::Exact),
+        ("conversions", Kind::Exact),
+    ]
+    .into_iter()
+    .collect()
+}

@@ -1,0 +1,348 @@
+//! The answer on levels: closed forms, names, pins, given and scaled parameters, series, populations,
+//! and what each bad question is told.
+
+use std::collections::BTreeSet;
+
+use rungline_core::sheet::{Document, Question, answer_text};
+use serde_json::{Value, json};
+
+fn asked(sheet: &Value, question: Question) -> Result<Value, Vec<String>> {
+    match answer_text(&sheet.to_string(), Some(question)) {
+        Ok(text) => {
+            let whole: Value = serde_json::from_str(&text).expect("JSON");
+            Ok(whole["answers"][question.name()].clone())
+        }
+        Err(faults) => Err(faults
+            .into_iter()
+            .map(|fault| {
+                assert!(fault.message.ends_with('.'), "{}", fault.message);
+                fault.code.to_owned()
+            })
+            .collect()),
+    }
+}
+
+fn levels(sheet: &Value) -> Value {
+    asked(sheet, Question::Levels).expect("levels")
+}
+
+fn sheet(species: &str, configurations: &[&str], extra: Value) -> Value {
+    let mut sheet = json!({"rungline": 1, "species": species, "configurations": configurations});
+    for (key, value) in extra.as_object().expect("a group") {
+        sheet[key] = value.clone();
+    }
+    sheet
+}
+
+fn number(value: &Value) -> f64 {
+    value
+        .as_f64()
+        .unwrap_or_else(|| panic!("{value} is no number"))
+}
+
+fn level<'a>(answer: &'a Value, label: &str) -> &'a Value {
+    let rows = answer["levels"].as_array().expect("levels");
+    let found = rows.iter().find(|row| row["label"] == label);
+    found.unwrap_or_else(|| panic!("no level {label}"))
+}
+
+fn near(value: f64, wanted: f64, within: f64, what: &str) {
+    assert!(
+        (value - wanted).abs() <= within,
+        "{what}: {value} is not {wanted}"
+    );
+}
+
+/// E(³P, ¹D, ¹S) of p² and E(⁴S, ²D, ²P) of p³ in F²: Condon & Shortley, *The Theory of Atomic Spectra*
+/// (1935), ch. VII (there in F₂ = F²/25); ζ of p: E(²P₃⸝₂) = ζ/2, E(²P₁⸝₂) = −ζ, ch. V.
+#[test]
+fn closed_forms_come_out() {
+    let of = |configuration: &str, given: Value| {
+        levels(&sheet(
+            "*",
+            &[configuration],
+            json!({"structure": {"given": given}}),
+        ))
+    };
+    let p2 = of("3p2", json!({"F2(3p,3p)": "25000 cm-1"}));
+    for (label, energy) in [
+        ("3p2 3P1", -3000.0),
+        ("3p2 1D2", 3000.0),
+        ("3p2 1S0", 12000.0),
+    ] {
+        near(number(&level(&p2, label)["energy"]), energy, 1e-6, label);
+    }
+    let p3 = of(
+        "3p3",
+        json!({"F2(3p,3p)": "25000 cm-1", "E(3p3)": "100 cm-1"}),
+    );
+    let quartet = number(&level(&p3, "3p3 4S3/2")["energy"]);
+    let d = number(&level(&p3, "3p3 2D5/2")["energy"]);
+    let p = number(&level(&p3, "3p3 2P3/2")["energy"]);
+    // E(²D) − E(⁴S) = 9 F₂, E(²P) − E(⁴S) = 15 F₂.
+    near(d - quartet, 9.0 * 1000.0, 1e-6, "2D above 4S");
+    near(p - quartet, 15.0 * 1000.0, 1e-6, "2P above 4S");
+    near(
+        (4.0 * quartet + 10.0 * d + 6.0 * p) / 20.0,
+        100.0,
+        1e-6,
+        "mean of p3",
+    );
+    let one = of("3p", json!({"zeta(3p)": "10 cm-1"}));
+    near(number(&level(&one, "3p 2P3/2")["energy"]), 5.0, 1e-9, "3/2");
+    near(
+        number(&level(&one, "3p 2P1/2")["energy"]),
+        -10.0,
+        1e-9,
+        "1/2",
+    );
+    assert_eq!(level(&one, "3p 2P1/2")["energy_kind"], "entered");
+}
+
+/// The labels of both answers are one set, and unique.
+#[test]
+fn levels_are_named_as_the_states_are() {
+    for (species, configurations) in [
+        ("Fe", vec!["3d6 4s2", "3d7 4s", "3d6 4s 4p"]),
+        ("Nd 3+", vec!["4f3"]),
+        ("Eu 3+", vec!["4f6"]),
+        ("Ne", vec!["2p6", "2p5 3s", "2p5 3p", "2p5 3d"]),
+        ("C", vec!["2p2", "2s 2p3"]),
+        ("Ce", vec!["4f 5d 6s2"]),
+    ] {
+        let sheet = sheet(species, &configurations, json!({}));
+        let named = |answer: &Value| -> BTreeSet<String> {
+            let rows = answer["levels"].as_array().expect("levels");
+            let names = rows
+                .iter()
+                .map(|row| row["label"].as_str().unwrap().to_owned());
+            let set: BTreeSet<String> = names.collect();
+            assert_eq!(set.len(), rows.len(), "{species}: names are not unique");
+            set
+        };
+        let found = named(&levels(&sheet));
+        let states = asked(&sheet, Question::States).expect("states");
+        let listed: BTreeSet<String> = states["by_configuration"]
+            .as_array()
+            .expect("configurations")
+            .iter()
+            .flat_map(named)
+            .collect();
+        assert_eq!(found, listed, "{species}");
+    }
+}
+
+#[test]
+fn shares_and_kinds_are_told() {
+    let iron = levels(&sheet("Fe", &["3d6 4s2"], json!({})));
+    assert_eq!(iron["ground"]["label"], "3d6 4s2 5D4");
+    assert_eq!(iron["ground"]["observed"]["agrees"], true);
+    assert_eq!(iron["ground"]["hund"]["agrees"], true);
+    assert_eq!(iron["kinds"]["levels.energy"], "computed");
+    for row in iron["levels"].as_array().unwrap() {
+        let sum: f64 = row["composition"]
+            .as_array()
+            .unwrap()
+            .iter()
+            .map(|share| number(&share["percent"]))
+            .sum();
+        assert!(sum > 99.0 && sum < 100.000001, "{}: {sum}", row["label"]);
+        assert_eq!(row["g"].is_null(), row["J"] == "0", "{}", row["label"]);
+        assert_eq!(row["parity"], "even");
+    }
+    let schemes = iron["schemes"].as_array().unwrap();
+    assert_eq!(schemes.iter().filter(|s| s["best"] == true).count(), 1);
+    // Second-order spin–orbit bends Landé’s rule: the measured intervals of this term (415.9, 288.1, 184.1,
+    // 89.9 cm⁻¹, from memory) depart from it by up to 14 %, the computed ones by less.
+    let quintet: Vec<&Value> = iron["intervals"]
+        .as_array()
+        .unwrap()
+        .iter()
+        .filter(|row| row["term"] == "5D")
+        .collect();
+    assert_eq!(quintet.len(), 4);
+    for row in quintet {
+        let ratio = number(&row["ratio"]) / number(&row["expected_ratio"]);
+        near(ratio, 1.0, 0.14, "interval");
+    }
+}
+
+#[test]
+fn given_values_replace_computed_ones_and_are_never_scaled() {
+    let of = |structure: Value| levels(&sheet("C", &["2p2"], json!({"structure": structure})));
+    let parameter = |answer: &Value, name: &str| -> Value {
+        let rows = answer["parameters"].as_array().unwrap();
+        rows.iter()
+            .find(|row| row["name"] == name)
+            .cloned()
+            .unwrap_or_default()
+    };
+    let plain = of(json!({}));
+    let f2 = parameter(&plain, "F2(2p,2p)");
+    assert_eq!(f2["kind"], "computed");
+    assert_eq!(f2["unit"], "cm-1");
+    let scaled = of(json!({"scale": {"F": 0.8}, "given": {"zeta(2p)": "30 cm-1"}}));
+    let less = parameter(&scaled, "F2(2p,2p)");
+    near(
+        number(&less["value"]),
+        0.8 * number(&f2["value"]),
+        1e-9,
+        "F2",
+    );
+    assert_eq!(less["scale"], 0.8);
+    near(
+        number(&less["computed"]),
+        number(&f2["value"]),
+        1e-9,
+        "F2 computed",
+    );
+    let zeta = parameter(&scaled, "zeta(2p)");
+    assert_eq!(
+        (&zeta["value"], &zeta["kind"]),
+        (&json!(30.0), &json!("entered"))
+    );
+    let spelled = of(json!({"scale": {"F": 0.8}, "given": {"F²(2p, 2p)": "50000 cm-1"}}));
+    let given = parameter(&spelled, "F²(2p, 2p)");
+    assert_eq!(given["value"], 50000.0);
+    assert!(given["computed"].is_number());
+    // A qualified name wins.
+    let qualified = levels(&sheet(
+        "*",
+        &["3p2", "3p 4p"],
+        json!({"structure": {"given": {"zeta(3p)": "10 cm-1", "zeta(3p) @ 3p2": "20 cm-1"}}}),
+    ));
+    let values: Vec<(String, f64)> = qualified["parameters"]
+        .as_array()
+        .unwrap()
+        .iter()
+        .filter(|row| row["kind"] == "entered")
+        .map(|row| {
+            (
+                row["configuration"].as_str().unwrap().to_owned(),
+                number(&row["value"]),
+            )
+        })
+        .collect();
+    assert_eq!(
+        values,
+        [("3p2".to_owned(), 20.0), ("3p 4p".to_owned(), 10.0)]
+    );
+}
+
+/// Levels of C I from published tables, from memory.
+#[test]
+fn pins_place_levels_and_say_so() {
+    let carbon = levels(&sheet(
+        "C",
+        &["2p2"],
+        json!({"measured": {"2p2 3P1": "16.40 cm-1", "2p2 1D2": "10192.63 cm-1"}}),
+    ));
+    let of = |label: &str| {
+        let row = level(&carbon, label);
+        (number(&row["energy"]), row["energy_kind"].as_str().unwrap())
+    };
+    assert_eq!(of("2p2 3P1"), (16.40, "measured"));
+    assert_eq!(of("2p2 1D2"), (10192.63, "measured"));
+    // Nobody pinned the lowest level: pins count from it.
+    assert_eq!(of("2p2 3P0"), (0.0, "measured"));
+    let (energy, kind) = of("2p2 3P2");
+    assert_eq!(kind, "computed");
+    let apart = |a: &str, b: &str| {
+        number(&level(&carbon, a)["computed_energy"])
+            - number(&level(&carbon, b)["computed_energy"])
+    };
+    near(
+        energy,
+        16.40 + apart("2p2 3P2", "2p2 3P1"),
+        1e-9,
+        "beside its neighbour",
+    );
+    assert_eq!(carbon["kinds"]["levels.energy"], "measured");
+}
+
+/// Levels of Na I from published tables, from memory; the limit 41449.45 cm⁻¹.
+#[test]
+fn a_series_leads_to_its_limit() {
+    let sodium = levels(&sheet(
+        "Na",
+        &["3s", "4s", "5s", "6s", "7s"],
+        json!({"measured": {
+            "3s 2S1/2": "0 cm-1", "4s 2S1/2": "25739.999 cm-1", "5s 2S1/2": "33200.673 cm-1",
+            "6s 2S1/2": "36372.618 cm-1", "7s 2S1/2": "38012.042 cm-1"
+        }}),
+    ));
+    let series = &sodium["series"][0];
+    assert_eq!(series["name"], "ns");
+    near(number(&series["limit"]), 41449.45, 5.0, "limit");
+    assert_eq!(series["limit_kind"], "measured");
+    let members = series["members"].as_array().unwrap();
+    assert_eq!(members.len(), 10);
+    near(number(&members[3]["defect"]), 1.35, 0.01, "defect of 6s");
+    assert_eq!(members[5]["kind"], "extrapolated");
+    // 8s at 38968.5 cm⁻¹, from memory.
+    near(number(&members[5]["energy"]), 38968.5, 2.0, "8s");
+}
+
+#[test]
+fn populations_add_up_to_one() {
+    let carbon = levels(&sheet(
+        "C",
+        &["2p2"],
+        json!({"source": {"temperature": "6000 K"}}),
+    ));
+    let rows = carbon["levels"].as_array().unwrap();
+    let sum: f64 = rows.iter().map(|row| number(&row["population"])).sum();
+    near(sum, 1.0, 1e-12, "all");
+    assert_eq!(carbon["partition"]["temperature"], 6000.0);
+    assert!(number(&carbon["partition"]["value"]) > 8.0);
+}
+
+/// Dirac's levels with the proton's mass: 2p₃⸝₂ − 2p₁⸝₂ is 0.3652 cm⁻¹ (Bethe & Salpeter 1957, from memory).
+#[test]
+fn one_electron_has_dirac_s_levels() {
+    let hydrogen = levels(&sheet("H", &["n=2", "n=3"], json!({})));
+    assert_eq!(hydrogen["levels"].as_array().unwrap().len(), 8);
+    let apart = number(&level(&hydrogen, "2p 2P3/2")["energy"])
+        - number(&level(&hydrogen, "2p 2P1/2")["energy"]);
+    near(apart, 0.3652, 2e-4, "fine structure");
+    let above = number(&level(&hydrogen, "3d 2D5/2")["above_lowest"]);
+    near(above, 15233.4, 0.1, "n = 3");
+}
+
+#[test]
+fn what_cannot_be_answered_is_told() {
+    let codes = |sheet: &Value| asked(sheet, Question::Levels).expect_err("a fault");
+    assert_eq!(
+        codes(&sheet(
+            "*",
+            &["3p2", "3p3"],
+            json!({"structure": {"given": {"F2(3p,3p)": "1 cm-1"}}})
+        )),
+        ["electron-numbers-differ"]
+    );
+    assert_eq!(
+        codes(&sheet("Ne", &["2p6"], json!({}))),
+        ["needs-a-configuration"]
+    );
+    assert_eq!(
+        codes(&sheet("*", &["3p2"], json!({}))),
+        ["needs-parameters"]
+    );
+    assert_eq!(
+        codes(&sheet("Og", &["[Rn] 5f14 6d10 7s2 7p5 8s"], json!({}))),
+        ["needs-a-lighter-nucleus"]
+    );
+    assert_eq!(
+        codes(&sheet("C", &["n=2"], json!({}))),
+        ["needs-a-configuration"]
+    );
+    assert_eq!(codes(&sheet("*", &[], json!({}))), ["needs-an-atom"]);
+    let large = sheet(
+        "*",
+        &["4f7 5d5 6p3"],
+        json!({"structure": {"given": {"zeta(4f)": "1 cm-1"}}}),
+    );
+    assert_eq!(codes(&large), ["basis-too-large"]);
+    let document = Document::read(&serde_json::from_value(large).unwrap());
+    assert!(document.faults.is_empty());
+}
