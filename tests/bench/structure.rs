@@ -1,9 +1,11 @@
 //! Times of the levels of configurations: coefficients from nothing, then all levels; and of lines.
 
+use rungline_core::structure::model::{Case, MultipoleKind};
 use rungline_core::structure::{
     Basis, Hamiltonian, Integral, JjTransformation, Levels, Multipole, Parameter, amplitudes,
     estimate,
 };
+use rungline_tests::model::{case, spectrum};
 use std::time::Instant;
 
 fn value(parameter: &Parameter) -> f64 {
@@ -63,6 +65,34 @@ fn measure_iron() {
     println!("d6 s2 + d7 s, d6 s p + d7 p, {lines} E1 lines: {best:.2} ms");
 }
 
+/// Levels and E1 lines of an atom from nothing, radial functions included.
+fn measure_atom(name: &str, case: &Case) {
+    let mut best = [f64::INFINITY; 3];
+    let (mut levels, mut lines) = (0, 0);
+    for _ in 0..3 {
+        let start = Instant::now();
+        let spectrum = spectrum(case);
+        let after = Instant::now();
+        let found = spectrum
+            .lines(&[MultipoleKind::E1], &mut |_| true)
+            .expect("lines");
+        let end = Instant::now();
+        let (_, parity) = (&found, &spectrum.parities[0]);
+        let jj = parity.jj().expect("jj states");
+        let means = parity.means(&jj, None);
+        assert!(means.ls > 0.0);
+        let times = [after - start, end - after, end.elapsed()];
+        for (best, time) in best.iter_mut().zip(times) {
+            *best = best.min(time.as_secs_f64() * 1e3);
+        }
+        (levels, lines) = (spectrum.levels.len(), found.lines.len());
+    }
+    println!(
+        "{name}: {levels} levels {:.2} ms, {lines} E1 lines {:.2} ms, jj of one parity {:.2} ms",
+        best[0], best[1], best[2]
+    );
+}
+
 /// The composition of every level in jj coupling, the levels being there.
 fn measure_jj(name: &str, shells: &[u8], configurations: &[Vec<u32>]) {
     let (basis, levels) = solve(shells, configurations, &mut [0.0; 2]);
@@ -99,4 +129,8 @@ fn main() {
     measure_jj("f7", &[3], &[vec![7]]);
     measure_jj("d6 s p + d7 p", &[2, 0, 1], &[vec![6, 1, 1], vec![7, 0, 1]]);
     measure_jj("f7 d", &[3, 2], &[vec![7, 1]]);
+    let iron = ["3d6 4s2", "3d7 4s", "3d6 4s 4p", "3d7 4p"];
+    measure_atom("Fe I from nothing", &case(26, 56, 18, &iron));
+    measure_atom("Gd IV from nothing", &case(64, 158, 54, &["4f7"]));
+    measure_atom("Mn III from nothing", &case(25, 55, 18, &["3d5"]));
 }

@@ -288,3 +288,81 @@ fn work_that_is_stopped_says_so() {
         "electron-numbers-differ"
     );
 }
+
+#[test]
+fn the_sum_of_all_strengths_does_not_depend_on_mixing() {
+    let (mut worst, mut count): (f64, usize) = (0.0, 0);
+    for case in cases().into_iter().take(3) {
+        let mut pure = case.clone();
+        pure.mixing = false;
+        pure.scale.zeta = 0.0;
+        let sum = |case: &Case, kind| -> f64 {
+            let spectrum = spectrum(case);
+            let lines = spectrum.lines(&[kind], &mut |_| true).expect("lines");
+            lines.lines.iter().map(|line| line.s).sum()
+        };
+        let (one, two) = (sum(&case, MultipoleKind::E1), sum(&pure, MultipoleKind::E1));
+        worst = worst.max((one / two - 1.0).abs());
+        count += 1;
+    }
+    report(
+        "structure_model_sum",
+        Row {
+            quantity: "sum of all E1 strengths of an atom, mixed and pure".into(),
+            cases: count,
+            worst,
+            tolerance: 1e-10,
+            measure: "relative".into(),
+            source: "Condon & Shortley 1935, chapter 9".into(),
+        },
+    );
+}
+
+#[test]
+fn levels_are_pure_in_the_limits_of_both_schemes() {
+    // 3d² 4s 4p, 2p³ and 4f 5d, ζ times 10⁶ or nothing.
+    for (z, core, text) in [
+        (22, 18, "3d2 4s 4p"),
+        (7, 2, "2s2 2p3"),
+        (58, 54, "4f 5d 6s2"),
+    ] {
+        for (factor, in_jj) in [(1e6, true), (0.0, false)] {
+            let mut case = case(z, 2 * u16::from(z), core, &[text]);
+            case.scale.zeta = factor;
+            let spectrum = spectrum(&case);
+            let parity = &spectrum.parities[0];
+            let jj = parity.jj().expect("jj states");
+            let means = parity.means(&jj, None);
+            if in_jj {
+                // Levels of one set of j are told apart by what is left of F^k and G^k: mixed states of one
+                // set count together.
+                let mut least: f64 = 100.0;
+                for level in &parity.levels.levels {
+                    let scheme = &jj[parity.rows_place(level).expect("its J")];
+                    let mut sets: std::collections::BTreeMap<Vec<u32>, f64> = Default::default();
+                    for (place, share) in scheme.composition(level) {
+                        let set = scheme.states[place].subshells.iter().map(|s| s.upper);
+                        *sets.entry(set.collect()).or_default() += share;
+                    }
+                    least = least.min(sets.values().copied().fold(0.0, f64::max));
+                }
+                assert!(least > 99.99, "{text}: {least}");
+            } else {
+                assert!(
+                    means.ls > 60.0
+                        && parity.levels.levels.iter().all(|level| {
+                            // One S and L each.
+                            let shares = parity.levels.composition(level);
+                            let totals: BTreeSet<_> = shares
+                                .iter()
+                                .filter(|share| share.1 > 1e-9)
+                                .map(|share| parity.basis().states()[share.0].total())
+                                .collect();
+                            totals.len() == 1
+                        }),
+                    "{text}"
+                );
+            }
+        }
+    }
+}

@@ -1,7 +1,7 @@
 //! The levels of a case.
 
 use super::case::Case;
-use super::integrals::{CrossOverlap, Source};
+use super::integrals::{CrossOverlap, Source, larger};
 use super::names::{Name, Value};
 use crate::angular::equivalent::EquivalentTerm;
 use crate::configuration::Orbital;
@@ -60,8 +60,7 @@ pub struct Spectrum {
     pub levels: Vec<Place>,
     /// Places in [`Case::given`] of what no configuration has, dipole and quadrupole integrals aside.
     pub unused: Vec<usize>,
-    /// The largest overlap of unlike functions between configurations that mix: what is left out of
-    /// their mixing is of its square. Above about 0.3 the configurations are no sound basis together.
+    /// Of the overlaps of unlike functions between configurations that mix, the one that falsifies most.
     pub largest_cross: Option<CrossOverlap>,
     /// E_av of the first configuration, hartree, where it was computed.
     pub origin: Option<f64>,
@@ -130,13 +129,7 @@ pub fn solve(
         let (parity, values, cross) = spectrum.parity(odd, configurations, &mut progress)?;
         spectrum.parities.push(parity);
         spectrum.parameters.extend(values);
-        let larger = |known: &CrossOverlap, found: &CrossOverlap| {
-            known.cross.overlap.abs() >= found.cross.overlap.abs()
-        };
-        spectrum.largest_cross = match (spectrum.largest_cross, cross) {
-            (Some(known), Some(found)) if larger(&known, &found) => Some(known),
-            (known, found) => found.or(known),
-        };
+        spectrum.largest_cross = larger(spectrum.largest_cross, cross);
     }
     spectrum.order();
     spectrum.find_unused();
