@@ -27,7 +27,12 @@ pub struct LevelEntry {
     pub population: Option<f64>,
 }
 
-/// One line by one multipole. There can be very many: nothing is typeset here.
+fn is_false(value: &bool) -> bool {
+    !value
+}
+
+/// One line by one multipole. There can be very many: nothing is typeset here, and keys beyond those of
+/// every line are left out where they hold nothing.
 #[derive(Debug, Serialize)]
 pub struct LineRow {
     pub upper: Shared,
@@ -55,17 +60,23 @@ pub struct LineRow {
     pub branching: Option<f64>,
     pub cancellation: Option<f64>,
     /// Whether so little is left of large terms that S is uncertain.
+    #[serde(skip_serializing_if = "is_false")]
     pub weak: bool,
     /// Emitted power beside the strongest line.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub intensity: Option<f64>,
     /// Absorbed share of a continuum, thin column, beside the strongest line.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub absorption: Option<f64>,
     /// At the line's centre, where a column is entered.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub optical_depth: Option<f64>,
     /// Share of the multiplet in pure LS coupling.
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub relative: Option<f64>,
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub multiplet: Option<Shared>,
+    #[serde(skip_serializing_if = "Option::is_none")]
     pub spin_note: Option<Shared>,
 }
 

@@ -170,22 +170,13 @@ fn with_energies(document: &Document, watch: &mut Watch) -> Result<Lines, Proble
         refused = judged.refused;
         multiplets = judged.multiplets;
     }
-    let joined: SortedMap<(&str, &str), ()> = lines
-        .iter()
-        .map(|line| {
-            let (one, other) = (&*line.upper.0, &*line.lower.0);
-            ((one.min(other), one.max(other)), ())
-        })
-        .collect();
+    let joined = Joined::new(&solved, &radiation);
     // A pair that pure coupling refuses may be joined by mixing.
-    refused.retain(|row| {
-        let (one, other) = (row.upper.as_str(), row.lower.as_str());
-        joined.get(&(one.min(other), one.max(other))).is_none()
-    });
+    refused.retain(|row| !joined.has(&row.upper, &row.lower));
     let levels_count = solved.levels.len();
     let pairs = levels_count * levels_count.saturating_sub(1) / 2;
     let refused_total = match many {
-        true => pairs.saturating_sub(joined.entries().len()),
+        true => pairs.saturating_sub(joined.pairs.len()),
         false => refused.len(),
     };
     // What comes nearest to being allowed first.
@@ -228,6 +219,36 @@ fn with_energies(document: &Document, watch: &mut Watch) -> Result<Lines, Proble
         lines,
         order: "Of two levels the one of higher energy is called the upper one.",
     })
+}
+
+/// The pairs of levels that some line joins.
+struct Joined<'a> {
+    places: SortedMap<&'a str, usize>,
+    /// The lower place first, rising.
+    pairs: Vec<(usize, usize)>,
+}
+
+impl Joined<'_> {
+    fn new<'a>(solved: &'a Solved, radiation: &Radiation) -> Joined<'a> {
+        let lines = radiation.lines.iter();
+        let ends = lines.map(|line| (line.upper.min(line.lower), line.upper.max(line.lower)));
+        let mut pairs: Vec<(usize, usize)> = ends.collect();
+        crate::numerics::order::sort(&mut pairs);
+        pairs.dedup();
+        let labels = solved.levels.iter().enumerate();
+        Joined {
+            places: labels.map(|(place, level)| (&*level.label, place)).collect(),
+            pairs,
+        }
+    }
+
+    fn has(&self, one: &str, other: &str) -> bool {
+        let (Some(one), Some(other)) = (self.places.get(&one), self.places.get(&other)) else {
+            return false;
+        };
+        let pair = (*one.min(other), *one.max(other));
+        self.pairs.binary_search(&pair).is_ok()
+    }
 }
 
 fn level_entries(document: &Document, solved: &Solved, placed: &Placed) -> Vec<LevelEntry> {

@@ -373,7 +373,7 @@ pub fn estimate(document: &Document, lines: bool) -> (f64, f64) {
 
 /// Measured: lines of all multipoles, written out, over the pairs of levels.
 const SECONDS_FOR_EACH_PAIR: f64 = 1.5e-6;
-const BYTES_FOR_EACH_PAIR: f64 = 60.0;
+const BYTES_FOR_EACH_PAIR: f64 = 400.0;
 
 fn orbitals_missing(atom: &crate::radial::hartree_fock::Atom) -> bool {
     !orbitals_cache::has(atom)
