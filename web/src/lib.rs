@@ -104,6 +104,12 @@ pub fn record(sheet: JsValue) -> Result<String, JsValue> {
     Ok(sheet::record_message_watched(&json(sheet)?, &mut teller()))
 }
 
+/// The measured levels in a table, as the sheet's pins.
+#[wasm_bindgen]
+pub fn measured_csv(text: &str, sheet: JsValue) -> Result<String, JsValue> {
+    Ok(sheet::measured_message(text, &json(sheet)?))
+}
+
 /// The angular part of orbitals with this ℓ, in section.
 #[wasm_bindgen]
 pub fn sections(l: u32) -> String {

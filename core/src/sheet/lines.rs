@@ -237,7 +237,9 @@ impl Joined<'_> {
         pairs.dedup();
         let labels = solved.levels.iter().enumerate();
         Joined {
-            places: labels.map(|(place, level)| (&*level.label, place)).collect(),
+            places: labels
+                .map(|(place, level)| (&*level.label, place))
+                .collect(),
             pairs,
         }
     }

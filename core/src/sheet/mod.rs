@@ -23,6 +23,7 @@ mod lack;
 mod level_names;
 mod levels;
 mod levels_facts;
+mod levels_file;
 mod levels_rows;
 mod levels_words;
 mod light;
@@ -259,6 +260,12 @@ pub fn curves_message(sheet: &Json, watch: &mut Watch) -> String {
         Ok(curves) => to_json(&curves),
         Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
     }
+}
+
+/// The pins in a table of levels for the levels of a sheet:
+/// `{"measured":{…},"taken":…,"left":…,"left_rows":[…],"faults":[…]}`.
+pub fn measured_message(text: &str, sheet: &Json) -> String {
+    to_json(&levels_file::read(&Document::read(sheet), text))
 }
 
 /// The version, the year of the constants and the questions of this build.
