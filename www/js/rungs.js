@@ -161,8 +161,13 @@ export function runNodes(entry, kept, act) {
 /** What is under way: where it stands, if it tells, and how long it takes. */
 export function runWords({ progress, estimate }) {
   const of = progress?.of > 1 ? `, ${progress.configuration + 1} of ${progress.of}` : "";
-  const step = progress ? ` ${progress.label}${of}: iteration ${progress.iteration}, residual ${trueMinus(progress.residual.toExponential(1))}` : "";
+  const step = progress ? ` ${progress.label}${of}: ${stepWords(progress)}` : "";
   return `Calculating${step}${estimate?.seconds ? `, estimated ${duration(estimate.seconds)} in all` : ""}. The sheet can be changed meanwhile.`;
+}
+
+// Radial functions tell iteration and residual, an energy matrix how much of it is done.
+function stepWords({ done, iteration, residual }) {
+  return typeof residual === "number" ? `iteration ${iteration}, residual ${trueMinus(residual.toExponential(1))}` : `${Math.round(100 * (done ?? 0))}\u00a0%`;
 }
 
 /** What is shown when a calculation ended by itself. */

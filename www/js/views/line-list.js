@@ -33,8 +33,8 @@ export function lineList(rows, { answer, levels, filters, context }) {
     caption: rows.length === total ? `${total} ${total === 1 ? "line" : "lines"}` : `${rows.length} of ${total} lines`,
     rows, context, file: "lines", sorting,
     columns: [
-      ...levelColumns(levels),
       ...places.filter(({ copied }) => !copied),
+      ...levelColumns(levels),
       { name: "multipole", type: "text", value: (row) => row.multipole },
       strength("A", "A", "s-1", { digits: "power" }), strength("gf", "gf"),
       strength("S", "S", multipoles.size === 1 ? S_UNITS[[...multipoles][0]] : null),

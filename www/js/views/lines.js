@@ -117,10 +117,9 @@ class Lines {
   #links() {
     const { measure, rows } = this.#filters;
     const chosen = this.#context.choice.get();
-    const byStrength = (lines) => [...lines].sort((a, b) => (b[measure] ?? 0) - (a[measure] ?? 0));
     const own = chosen?.startsWith("line:") ? this.#answer.lines.filter((line) => lineId(line) === chosen)
-      : chosen === null ? [] : byStrength(this.#answer.lines.filter((line) => isOf(this.#levels, line, chosen))).slice(0, LINKS_OF_LEVEL);
-    const lines = own.length > 0 ? own : byStrength(rows).slice(0, LINKS);
+      : chosen === null ? [] : strongest(this.#answer.lines.filter((line) => isOf(this.#levels, line, chosen)), measure, LINKS_OF_LEVEL);
+    const lines = own.length > 0 ? own : strongest(rows, measure, LINKS);
     const refused = chosen === null || !this.#refused?.value() ? [] : this.#answer.refused.filter((pair) => isOf(this.#levels, pair, chosen)).slice(0, LINKS_OF_LEVEL);
     const link = (line, more) => ({ id: lineId(line), ids: idsOf(this.#levels, line), upper: `level:${line.upper}`, lower: `level:${line.lower}`, multipole: line.multipole, ...more });
     return [
@@ -138,7 +137,7 @@ class Lines {
       groups.get(key).levels.push(this.#rung(by, level));
     }
     const lowest = ({ levels }) => Math.min(...levels.map(({ energy }) => energy));
-    const order = by === "configuration" ? (a, b) => a.odd - b.odd || lowest(a) - lowest(b) : (a, b) => a.odd - b.odd || a.key.localeCompare(b.key, "en", { numeric: true });
+    const order = by === "J" ? (a, b) => a.odd - b.odd || a.key.localeCompare(b.key, "en", { numeric: true }) : (a, b) => a.odd - b.odd || lowest(a) - lowest(b);
     return [...groups.values()].sort(order);
   }
 
@@ -175,6 +174,19 @@ class Lines {
       }),
     });
   }
+}
+
+// Tens of thousands of lines are not sorted to find a few.
+function strongest(lines, measure, count) {
+  const found = [];
+  for (const line of lines) {
+    const value = line[measure] ?? 0;
+    if (found.length === count && value <= (found.at(-1)[measure] ?? 0)) continue;
+    const at = found.findIndex((other) => (other[measure] ?? 0) < value);
+    found.splice(at < 0 ? found.length : at, 0, line);
+    if (found.length > count) found.pop();
+  }
+  return found;
 }
 
 // Labels of the chosen line's levels, looked for once for each choice.
