@@ -104,6 +104,7 @@ class DataTable {
     const look = () => {
       const more = this.#region.scrollLeft + this.#region.clientWidth < this.#region.scrollWidth - 2;
       mark.hidden = !more;
+      this.node.classList.toggle("moved-on", this.#region.scrollLeft > 0);
       this.node.classList.toggle("goes-on", more);
     };
     // Before a window of rows draws others: looking afterwards would lay the table out twice.

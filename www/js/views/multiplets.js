@@ -38,19 +38,19 @@ export class Multiplets {
     this.#ordered = [...lines].sort((a, b) => rank(a) - rank(b));
     const multipoles = [...new Set(this.#ordered.map((line) => line.multipole))];
     const listed = (multiplets ?? []).filter((one) => one.lines !== 0).slice(0, LISTED);
-    this.multipole = select(context, "lines:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], () => this.#fill());
-    this.multiplet = select(context, "lines:multiplet", "Multiplet", [["", "all"], ...listed.map((one) => [`${one.name}|${one.multipole}`, `${dashed(one.name)}, ${one.multipole}`])], () => {
+    this.multipole = select(context, "multiplets:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], () => this.#fill());
+    this.multiplet = select(context, "multiplets:multiplet", "Multiplet", [["", "all"], ...listed.map((one) => [`${one.name}|${one.multipole}`, `${dashed(one.name)}, ${one.multipole}`])], () => {
       this.#fill();
       this.#redraw();
     });
-    this.dotted = check(context, "lines:refused", "Show refused pairs, dotted", () => this.#redraw());
+    this.dotted = check(context, "multiplets:refused", "Show refused pairs, dotted", () => this.#redraw());
     this.#fill();
     this.node = element("div", { class: "evidence-parts" },
       element("div", { class: "choices" }, this.multipole.node, this.multiplet.node, this.dotted.node),
-      multiplets?.length > listed.length ? element("p", { class: "note", text: `The list has the first ${listed.length} multiplets with lines.` }) : null,
+      Math.max(multiplets?.length ?? 0, answer.multiplets_total ?? 0) > listed.length ? element("p", { class: "note", text: `The list has the first ${listed.length} multiplets with lines.` }) : null,
       tableAndPicture(this.#tableBox, this.#picture(), "picture-stays"),
       element("div", { class: "parts" },
-        refused?.length ? fold(context, "lines:refused-table", [`Refused pairs and the rules that refuse them (${refused.length})`], () => this.#refusedTable()) : null,
+        refused?.length ? fold(context, "lines:refused-table", [`Refused pairs and the rules that refuse them (${refused.length}${answer.refused_total > refused.length ? ` of ${answer.refused_total}` : ""})`], () => this.#refusedTable()) : null,
         multiplets?.length ? fold(context, "lines:sums", ["Sum rules of each multiplet"], () => this.#sums()) : null));
     context.choice.subscribe(() => this.#redraw());
   }
