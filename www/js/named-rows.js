@@ -5,6 +5,7 @@ import { keysOf, pointerOf, valueAt } from "./pointer.js";
 
 /** Fields on show; the others are in the sheet all the same. */
 const SHOWN = 40;
+const PLAIN = { type: "text", class: "key", autocomplete: "off", autocapitalize: "off", autocorrect: "off", spellcheck: "false" };
 
 /**
  * The entries of the group at `path`. `words`: {name, value, hint, add, one}; `suggestions()`: names;
@@ -21,7 +22,7 @@ export function namedRows({ fields, store, path, words, suggestions, usual = () 
     const wanted = new Set(names.slice(0, SHOWN));
     for (const [name, node] of rows) {
       // Whoever empties a field is about to type something else there.
-      if (wanted.has(name) || node.contains(document.activeElement)) continue;
+      if (wanted.has(name) || node.querySelector("input") === document.activeElement) continue;
       fields.remove(pathOf(name));
       node.remove();
       rows.delete(name);
@@ -32,24 +33,27 @@ export function namedRows({ fields, store, path, words, suggestions, usual = () 
         fields.make(pathOf(name), { label: name, hint: words.hint }),
         element("button", {
           type: "button", class: "action", text: "Take it out", "aria-label": `Take out ${name}`,
-          on: { click: () => store.put([[pathOf(name), undefined]], `Take out ${name}`) },
+          on: { click: () => {
+            store.put([[pathOf(name), undefined]], `Take out ${name}`);
+            box.focus();
+          } },
         }));
       rows.set(name, node);
       list.append(node);
     }
     more.textContent = names.length > SHOWN ? `The first ${SHOWN} of ${names.length}.` : "";
   };
+  const box = element("input", { ...PLAIN, id: freshId("name") });
   list.addEventListener("focusout", () => setTimeout(arrange, 0));
   store.subscribe(arrange);
   arrange();
   return element("div", { class: "named-rows" }, list, more, adder());
 
   function adder() {
-    const [nameId, valueId] = [freshId("name"), freshId("value")];
-    const plain = { type: "text", class: "key", autocomplete: "off", autocapitalize: "off", autocorrect: "off", spellcheck: "false" };
-    const names = element("datalist", { id: `${nameId}-list` });
-    const name = element("input", { ...plain, id: nameId, list: names.id });
-    const value = element("input", { ...plain, id: valueId });
+    const name = box;
+    const names = element("datalist", { id: `${name.id}-list` });
+    const value = element("input", { ...PLAIN, id: freshId("value") });
+    name.setAttribute("list", names.id);
     name.addEventListener("focus", () => names.replaceChildren(...suggestions().map((text) => element("option", { value: text }))));
     name.addEventListener("change", () => {
       if (value.value === "") value.value = usual(name.value.trim());
@@ -68,8 +72,8 @@ export function namedRows({ fields, store, path, words, suggestions, usual = () 
       if (event.key === "Enter") add();
     });
     return element("div", { class: "field-row" },
-      element("div", { class: "field" }, element("label", { for: nameId, text: words.name }), element("span", { class: "hint", text: words.one }), name, names),
-      element("div", { class: "field" }, element("label", { for: valueId, text: words.value }), element("span", { class: "hint", text: words.hint }), value),
+      element("div", { class: "field" }, element("label", { for: name.id, text: words.name }), element("span", { class: "hint", text: words.one }), name, names),
+      element("div", { class: "field" }, element("label", { for: value.id, text: words.value }), element("span", { class: "hint", text: words.hint }), value),
       element("div", { class: "field adder" }, element("button", { type: "button", class: "action", text: words.add, on: { click: add } })));
   }
 }

@@ -5,6 +5,7 @@ import { lineFields } from "./line-fields.js";
 
 /** Lines in the list; a longer one is no help to anybody. */
 const LISTED = 500;
+const MANY = 20_000;
 /** Strongest first. */
 const MULTIPOLES = ["E1", "M1", "E2"];
 
@@ -45,7 +46,8 @@ function linePicker(questions, put, { choice, store }) {
     const lines = questions.entries.get("lines")?.answer?.lines ?? [];
     if (lines === shown) return;
     shown = lines;
-    pairs = linePairs(lines);
+    // Nobody picks a forbidden line from tens of thousands in a list.
+    pairs = linePairs(lines.length > MANY ? lines.filter(({ multipole }) => multipole === MULTIPOLES[0]) : lines);
     node.hidden = pairs.length === 0;
     note.textContent = pairs.length > LISTED ? `The first ${LISTED} of ${pairs.length}; type the levels for the others.` : "";
     box.replaceChildren(element("option", { value: "", text: "Choose …" }), ...pairs.slice(0, LISTED).map((line, index) => element("option", {

@@ -1,5 +1,7 @@
 // What stands at each question: its reading, its last answer, and whether that answer is fresh.
 
+import { parseLarge } from "./large-answer.js";
+
 /** A folded question is asked once the sheet has rested this long, so that typing is not held up. */
 const FOLDED_REST_MS = 150;
 /** Levels and lines are computed once the sheet has rested this long; folded, a little later. */
@@ -165,7 +167,8 @@ export class Questions {
       result = await engine.request(`answer:${question}`, "answer", [sheet, question], { asked, onEstimate: note("estimate"), onProgress: note("progress") });
       if (entry.run !== run) return;
       if (result.text === undefined) break;
-      const message = JSON.parse(result.text);
+      const message = await parseLarge(result.text);
+      if (entry.run !== run) return;
       answers[question] = message.answer;
       faults = message.answer ? null : message.faults;
       if (faults !== null) break;

@@ -100,7 +100,7 @@ everyDoor("a level is walked to, read and chosen in the rung diagram by keys alo
   await door.press("Enter");
   await door.until(() => [...document.querySelectorAll('#lines .lines-table tr[aria-current="true"]')].length >= 2);
   assert.match(await door.text("#lines .chosen-one"), /lines down\s*\d/);
-  await door.press("+");
+  await door.press("=");
   await door.until(() => [...document.querySelectorAll("#lines .picture-tools button")].some((each) => each.textContent === "Whole picture" && each.checkVisibility()));
   await door.press("0", "Escape");
 }, { fragment: SODIUM, browsers: ["chromium", "firefox"] });
@@ -115,10 +115,11 @@ everyDoor("choices narrow list and pictures: multipole, lower level, least stren
   assert.ok((await list(door)).every(({ id }) => id.startsWith("line:3p ")));
   assert.match(await door.text("#lines .lines-table caption"), /^\d+ of \d+ lines/);
   await take(door, "Lower level", "");
+  await take(door, "Multipole", "");
   await take(door, "At least", "0.1");
   const strong = await list(door);
   const most = Math.max(...strong.map(({ A }) => shown(A)));
-  assert.ok(strong.length < electric.length && strong.every(({ A }) => shown(A) >= 0.1 * most));
+  assert.ok(strong.length > 0 && strong.length < all && strong.every(({ A }) => shown(A) >= 0.1 * most));
   await take(door, "At least", "0");
   // One end alone leaves the sheet as it is; both make a window.
   await door.type("Window from", "580 nm");
@@ -197,7 +198,7 @@ everyDoor("a value of one’s own replaces a computed parameter, and the table s
   assert.equal(row.entered, true);
   await door.click("Take out zeta(2p) @ 2p2");
   await door.sentence("lines");
-  assert.equal(await door.evaluate(() => document.querySelector('[data-path^="/structure/given"]')), null);
+  assert.equal(await door.evaluate(() => document.querySelectorAll('[data-path^="/structure/given"]').length), 0);
   assert.deepEqual(door.troubles, []);
 }, { fragment: CARBON });
 

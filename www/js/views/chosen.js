@@ -3,6 +3,7 @@
 import { element } from "../dom.js";
 import { richNode } from "../rich.js";
 import { notesOf } from "./line-list.js";
+import { MEDIA } from "./line-units.js";
 import { lineId } from "./multiplets.js";
 import { kindOf } from "./working.js";
 
@@ -27,9 +28,9 @@ function ofLine(line, answer, levels, context) {
   return [
     element("p", { class: "chosen-name" }, "▸ ", richNode([...lower.rich, " – ", ...upper.rich, `, ${line.multipole}`], context.settings)),
     facts(context, [
-      ["in vacuum", line.vacuum_nm, "nm", line.energy_kind], ["in air", line.air_nm, "nm", line.energy_kind], ["wavenumber", line.wavenumber, "cm-1", line.energy_kind],
+      ...Object.values(MEDIA).map(({ key, words }) => [words, line[key], "nm", line.energy_kind]), ["wavenumber", line.wavenumber, "cm-1", line.energy_kind],
       ["A", line.A, "s-1", kind("A")], ["gf", line.gf, null, kind("gf")], ["f", line.f, null, kind("f")], ["S", line.S, null, kind("S")],
-      ["branching fraction", line.branching, null, kind("branching")], ["cancellation factor", line.cancellation, null, kind("cancellation")],
+      ["branching fraction", line.branching, null, kind("branching")], ["optical depth", line.optical_depth, null, kind("optical_depth")], ["cancellation factor", line.cancellation, null, kind("cancellation")],
     ]),
     ...notesOf(line).map((note) => element("p", { class: "note", text: `To be known: ${note}.` })),
     element("button", {

@@ -23,9 +23,9 @@ export function fold(context, key, title, make) {
 }
 
 /** A choice among words, remembered like a fold: {node, value(), words()}. */
-export function select(context, key, label, options, act) {
+export function select(context, key, label, options, act, initially = null) {
   const view = context.view ?? memory;
-  const kept = view.get(key);
+  const kept = view.get(key) ?? initially;
   const box = element("select", { "aria-label": label }, ...options.map(([value, text]) => element("option", { value, text })));
   if (options.some(([value]) => value === kept)) box.value = kept;
   box.addEventListener("change", () => {

@@ -8,6 +8,8 @@ import { placeUnits } from "./line-units.js";
 
 /** Levels in the list of lower levels; more help nobody. */
 const LISTED = 400;
+/** Of more lines than these the forbidden ones wait until they are asked for. */
+const MANY = 2000;
 const MEASURES = [["intensity", "emitted intensity"], ["absorption", "absorption"], ["A", "A"], ["gf", "gf"]];
 const PARTS = [["0", "all"], ["0.1", "10 % of the strongest"], ["0.01", "1 %"], ["0.001", "0.1 %"], ["1e-4", "10⁻⁴"], ["1e-6", "10⁻⁶"]];
 
@@ -30,12 +32,13 @@ export class LineFilters {
     const measures = MEASURES.filter(([key]) => lines.some((line) => typeof line[key] === "number"));
     this.measureBox = select(context, "lines:measure", "Strength by", measures, act);
     this.least = select(context, "lines:least", "At least", PARTS, act);
-    this.multipole = select(context, "lines:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], act);
+    this.multipole = select(context, "lines:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], act, lines.length > MANY ? multipoles[0] : null);
     this.lower = select(context, "lines:lower", "Lower level", this.#lowerOptions(), act);
     this.unit = select(context, "lines:unit", "Places in", Object.keys(this.units).map((key) => [key, key === "cm-1" ? "cm⁻¹" : key]), act);
+    this.more = check(context, "lines:more", "More columns", act);
     this.inWindow = window ? check(context, "lines:window", `Only the window, ${window.lines} ${window.lines === 1 ? "line" : "lines"}`, act, true) : null;
     this.node = element("div", { class: "choices filters" },
-      ...[this.inWindow, this.measureBox, this.least, this.multipole, this.lower, this.unit].filter(Boolean).map(({ node }) => node));
+      ...[this.inWindow, this.measureBox, this.least, this.multipole, this.lower, this.unit, this.more].filter(Boolean).map(({ node }) => node));
   }
 
   /** The key by which strength is measured. */
@@ -62,7 +65,7 @@ export class LineFilters {
     const [multipole, lower, { measure }] = [this.multipole.value(), this.lower.value(), this];
     const inWindow = this.inWindow?.value() === true;
     const part = Number(this.least.value());
-    const own = lines.filter((line) => line.wavenumber !== null
+    const own = lines.filter((line) => typeof line.wavenumber === "number"
       && (multipole === "" || line.multipole === multipole)
       && (lower === "" || line.lower === lower || lower === `of ${this.#levels.get(line.lower)?.configuration}`)
       && (!inWindow || (line.vacuum_nm >= window.from_nm && line.vacuum_nm <= window.to_nm)));

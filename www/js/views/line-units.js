@@ -2,7 +2,7 @@
 
 /** key → {unit, title, digits (before the point, usually), value(line, medium)}; wavelengths are those of the medium where it has one. */
 export function placeUnits({ conversions = null }) {
-  const wave = (line, medium) => (medium === "air" ? line.air_nm ?? line.vacuum_nm : line.vacuum_nm);
+  const wave = (line, medium) => line[MEDIA[medium].key] ?? line.vacuum_nm;
   const units = {
     nm: { unit: "nm", digits: 3, title: "Wavelength", wave: true, value: wave },
     "cm-1": { unit: "cm-1", digits: 5, title: "Wavenumber", value: (line) => line.wavenumber },
@@ -16,7 +16,19 @@ export function placeUnits({ conversions = null }) {
   return units;
 }
 
-/** The wavelength that a reader of a spectrum would write down: that of the medium. */
-export function mediumOf(context) {
-  return context.sheet.medium === "air" ? "air" : "vacuum";
+/** Where wavelengths are told: key of the line, and words. */
+export const MEDIA = {
+  vacuum: { key: "vacuum_nm", words: "in vacuum" },
+  air: { key: "air_nm", words: "in air" },
+  index: { key: "medium_nm", words: "in the medium" },
+};
+
+/** The medium in which a reader of the spectrum measures. */
+export function mediumOf({ sheet }) {
+  return sheet.refractive_index ? "index" : sheet.medium === "air" ? "air" : "vacuum";
+}
+
+/** How the wavelength of a line is told: in the medium, or in vacuum where that has none. */
+export function mediumWords(line, medium) {
+  return MEDIA[typeof line[MEDIA[medium].key] === "number" ? medium : "vacuum"].words;
 }

@@ -11,8 +11,8 @@ import { chosenBlock } from "./chosen.js";
 import { check, fold, pointerWords, select } from "./fold.js";
 import { LineFilters } from "./line-filters.js";
 import { lineList, lineReading } from "./line-list.js";
-import { mediumOf } from "./line-units.js";
-import { Multiplets, idsOf, isOf, levelsOf, lineId } from "./multiplets.js";
+import { MEDIA, mediumOf } from "./line-units.js";
+import { Multiplets, idsOf, levelsOf, lineId } from "./multiplets.js";
 import { kindOf, workingNode } from "./working.js";
 
 /** Links that are drawn at once: more would be a hatching. */
@@ -118,14 +118,20 @@ class Lines {
     const { measure, rows } = this.#filters;
     const chosen = this.#context.choice.get();
     const own = chosen?.startsWith("line:") ? this.#answer.lines.filter((line) => lineId(line) === chosen)
-      : chosen === null ? [] : strongest(this.#answer.lines.filter((line) => isOf(this.#levels, line, chosen)), measure, LINKS_OF_LEVEL);
+      : chosen === null ? [] : strongest(this.#touching(this.#answer.lines, chosen), measure, LINKS_OF_LEVEL);
     const lines = own.length > 0 ? own : strongest(rows, measure, LINKS);
-    const refused = chosen === null || !this.#refused?.value() ? [] : this.#answer.refused.filter((pair) => isOf(this.#levels, pair, chosen)).slice(0, LINKS_OF_LEVEL);
+    const refused = chosen === null || !this.#refused?.value() ? [] : this.#touching(this.#answer.refused, chosen).slice(0, LINKS_OF_LEVEL);
     const link = (line, more) => ({ id: lineId(line), ids: idsOf(this.#levels, line), upper: `level:${line.upper}`, lower: `level:${line.lower}`, multipole: line.multipole, ...more });
     return [
       ...lines.map((line) => link(line, { strength: line[measure], refused: false, reading: this.#reading(line) })),
       ...refused.map((pair) => link(pair, { strength: null, refused: true, reading: [...this.#levels.get(pair.lower).rich, " – ", ...this.#levels.get(pair.upper).rich, `, ${pair.multipole}, refused: ${pair.rule}`] })),
     ];
+  }
+
+  // Those of a chosen level or term.
+  #touching(lines, chosen) {
+    const labels = new Set([...this.#levels.values()].filter(({ label, termId }) => chosen === termId || chosen === `level:${label}`).map(({ label }) => label));
+    return lines.filter(({ upper, lower }) => labels.has(upper) || labels.has(lower));
   }
 
   #columnsBy(by) {
@@ -164,7 +170,7 @@ class Lines {
     const [from, to] = extent(sticks);
     const inside = sticks.filter(({ x }) => x >= from && x <= to);
     const beyond = sticks.length - inside.length;
-    const words = wave ? `${title} in ${medium} (` : `${title} (`;
+    const words = wave ? `${title} ${MEDIA[medium].words} (` : `${title} (`;
     this.#spectrum.redraw({
       name: ["Stick spectrum of ", ...(this.#whole.species ?? []), `, ${inside.length} lines`],
       rest: `${STICK_WORDS()}${beyond > 0 ? ` Beyond both ends stand ${beyond} lines, each below a thousandth of the strongest.` : ""}`,
