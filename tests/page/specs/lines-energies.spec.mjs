@@ -2,9 +2,7 @@
 // tests/vectors/resonance_lines_fvalues.csv (wavelengths in air and vacuum, energy, A, f).
 
 import assert from "node:assert/strict";
-import { mkdtempSync, readFileSync, writeFileSync } from "node:fs";
-import { tmpdir } from "node:os";
-import { join } from "node:path";
+import { readFileSync } from "node:fs";
 import { everyDoor } from "../driver/door.mjs";
 
 const SODIUM = "v=1&species=Na&configurations.0=3s&configurations.1=3p&configurations.2=3d";
@@ -201,19 +199,6 @@ everyDoor("a value of one’s own replaces a computed parameter, and the table s
   assert.equal(await door.evaluate(() => document.querySelectorAll('[data-path^="/structure/given"]').length), 0);
   assert.deepEqual(door.troubles, []);
 }, { fragment: CARBON });
-
-everyDoor("a table of measured levels is opened, taken, and taken back", async (door) => {
-  const path = join(mkdtempSync(join(tmpdir(), "rungline-")), "levels.csv");
-  writeFileSync(path, `level,energy (cm-1)\n3s 2S1/2,0\n3p 2P1/2,${energy}\n9z 2Z1/2,5\n`);
-  await openLines(door);
-  await (await door.page.$("#file")).uploadFile(path);
-  await door.until(() => /2 measured levels taken/.test(document.getElementById("notes").textContent));
-  await door.sentence("lines");
-  assert.equal((await resonance(door))["in vacuum"], (Number(vacuumAngstrom) / 10).toFixed(3));
-  await door.click("Undo");
-  await door.sentence("lines");
-  assert.notEqual((await resonance(door))["in vacuum"], (Number(vacuumAngstrom) / 10).toFixed(3));
-}, { fragment: SODIUM, doors: ["file"] });
 
 for (const [width, dark] of [[360, false], [820, true], [1400, false]]) {
   everyDoor(`levels and lines fit ${width} px and are free of what axe finds`, async (door) => {

@@ -9,11 +9,13 @@ import { everyDoor } from "../driver/door.mjs";
 const FOLDER = new URL("../../examples/", import.meta.url);
 const NAMES = readdirSync(FOLDER).filter((name) => name.endsWith(".json")).sort();
 
+const QUESTIONS = ["states", "levels", "lines", "splitting"];
+
 /** Each answer of the native program as the text it printed, by question. */
 function native(name) {
   const path = new URL(name, FOLDER).pathname;
   const answers = {};
-  for (const question of ["states", "lines", "splitting"]) {
+  for (const question of QUESTIONS) {
     let text;
     try {
       text = execFileSync(process.env.RUNGLINE_NATIVE, ["answer", path, "--question", question], {
@@ -44,10 +46,10 @@ everyDoor("every example has the same bytes here and natively", async (door) => 
     assert.ok(Object.keys(expected).length > 0, `${name} answers nothing`);
     const found = await door.evaluate(async (example) => {
       const answers = {};
-      for (const question of ["states", "lines", "splitting"]) answers[question] = await globalThis.askWorker(example, question);
+      for (const question of QUESTIONS) answers[question] = await globalThis.askWorker(example, question);
       return answers;
     }, sheet);
-    for (const question of ["states", "lines", "splitting"]) {
+    for (const question of QUESTIONS) {
       if (expected[question] === undefined) {
         assert.match(found[question], /^\{"faults":/, `${name}, ${question}`);
         continue;
