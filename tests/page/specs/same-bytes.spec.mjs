@@ -44,11 +44,11 @@ everyDoor("every example has the same bytes here and natively", async (door) => 
     const sheet = JSON.parse(readFileSync(new URL(name, FOLDER), "utf8"));
     const expected = native(name);
     assert.ok(Object.keys(expected).length > 0, `${name} answers nothing`);
-    const found = await door.evaluate(async (example) => {
+    const found = await door.evaluate(async (example, questions) => {
       const answers = {};
-      for (const question of QUESTIONS) answers[question] = await globalThis.askWorker(example, question);
+      for (const question of questions) answers[question] = await globalThis.askWorker(example, question);
       return answers;
-    }, sheet);
+    }, sheet, QUESTIONS);
     for (const question of QUESTIONS) {
       if (expected[question] === undefined) {
         assert.match(found[question], /^\{"faults":/, `${name}, ${question}`);
