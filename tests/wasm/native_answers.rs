@@ -6,6 +6,9 @@ use std::path::Path;
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
 use rungline_core::sheet::{Question, answer_text, curves_message, sections_message, unwatched};
 
+/// Longer answers are compared by length and digest: the tables of the tests stay small.
+const LARGE: usize = 1_000_000;
+
 fn main() -> Result<(), Box<dyn std::error::Error>> {
     let out = std::env::var("OUT_DIR")?;
     let examples = Path::new(&std::env::var("CARGO_MANIFEST_DIR")?).join("../examples");
@@ -20,6 +23,7 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
         .collect();
     files.sort();
     let mut answers = String::from("pub const ANSWERS: &[(&str, &str, &str, &str)] = &[\n");
+    let mut large = String::from("pub const LARGE: &[(&str, &str, &str, usize, u64)] = &[\n");
     let mut curves = String::from("pub const CURVES: &[(&str, &str, &str)] = &[\n");
     for file in files {
         let sheet = std::fs::read_to_string(&file)?;
@@ -32,6 +36,14 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
                 continue;
             };
             let question = question.name();
+            if answer.len() > LARGE {
+                let (length, digest) = (answer.len(), digest(answer.as_bytes()));
+                writeln!(
+                    large,
+                    "    ({name:?}, {sheet:?}, {question:?}, {length}, {digest}),"
+                )?;
+                continue;
+            }
             writeln!(
                 answers,
                 "    ({name:?}, {sheet:?}, {question:?}, {answer:?}),"
@@ -41,6 +53,8 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
     answers.push_str("];\n");
     curves.push_str("];\n");
     answers.push_str(&curves);
+    large.push_str("];\n");
+    answers.push_str(&large);
     answers.push_str("pub const SECTIONS: &[(u32, &str)] = &[\n");
     for l in 0..=6 {
         writeln!(answers, "    ({l}, {:?}),", sections_message(l))?;
@@ -57,3 +71,4 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
 }
 
 include!("symbols.rs");
+include!("digest.rs");

@@ -7,6 +7,7 @@ use wasm_bindgen_test::wasm_bindgen_test;
 include!(concat!(env!("OUT_DIR"), "/answers.rs"));
 include!(concat!(env!("OUT_DIR"), "/symbols.rs"));
 include!("symbols.rs");
+include!("digest.rs");
 
 fn named(name: &str) -> Question {
     Question::ALL
@@ -30,6 +31,16 @@ fn every_example_has_the_native_bytes() {
             "{name}, {question}: {}",
             place(&here, native)
         );
+    }
+}
+
+#[wasm_bindgen_test]
+fn every_long_answer_has_the_native_bytes() {
+    assert!(!LARGE.is_empty());
+    for (name, sheet, question, length, native) in LARGE {
+        let here = answer_text(sheet, Some(named(question))).expect("an answer as natively");
+        assert_eq!(here.len(), *length, "{name}, {question}");
+        assert_eq!(digest(here.as_bytes()), *native, "{name}, {question}");
     }
 }
 

@@ -314,16 +314,6 @@ impl Document {
             .map(|(_, energy)| *energy)
     }
 
-    /// The vacuum wavelength of the line in nm: the typed one, or that between measured energies.
-    pub fn line_wavelength(&self) -> Option<f64> {
-        let between_pins = || {
-            let (upper, lower) = self.line.as_ref()?;
-            let wavenumber = (self.pinned(upper)? - self.pinned(lower)?).abs();
-            (wavenumber > 0.0).then(|| 1e7 / wavenumber)
-        };
-        self.wavelength_nm.or_else(between_pins)
-    }
-
     /// Whether the energies of levels come from radial functions or only from what is given.
     pub fn energies(&self) -> Energies {
         let nucleus = self

@@ -8,7 +8,7 @@ use super::answer::Working;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
-use super::levels_words::{COMPUTED, rounded};
+use super::levels_words::{COMPUTED, rounded, too_low};
 use super::light::{Surroundings, air_range};
 use super::line_rows::{LineRow, WindowRow};
 use super::lines_energies::WEAK;
@@ -242,7 +242,10 @@ pub fn limits(told: &Told) -> Vec<String> {
             "Electric dipole lines of one electron between Dirac’s levels, strengths without relativity; the Lamb shift and the spin of the nucleus are left out."
                 .to_owned(),
         ),
-        EnergyCase::Model { .. } if computed => limits.push(COMPUTED.to_owned()),
+        EnergyCase::Model { .. } if computed => {
+            limits.push(COMPUTED.to_owned());
+            limits.extend(too_low(told.document, told.solved));
+        }
         EnergyCase::Model { .. } => {}
     }
     if told.lines.iter().any(|line| line.weak) {

@@ -28,6 +28,7 @@ mod levels_rows;
 mod levels_words;
 mod light;
 mod line_rows;
+mod line_wavelength;
 mod lines;
 mod lines_energies;
 mod lines_relative;

@@ -371,6 +371,14 @@ pub fn estimate(document: &Document, lines: bool) -> (f64, f64) {
     (seconds, bytes * 1e-6)
 }
 
+/// Seconds that the levels take without anything kept; nothing where they cannot be had.
+pub fn cold_seconds(document: &Document) -> Option<f64> {
+    match energy_case(document).ok()? {
+        EnergyCase::OneElectron { .. } => Some(0.0),
+        EnergyCase::Model { case, .. } => Some(model::estimate(&case).ok()?.seconds),
+    }
+}
+
 /// Measured: lines of all multipoles, written out, over the pairs of levels.
 const SECONDS_FOR_EACH_PAIR: f64 = 1.5e-6;
 const BYTES_FOR_EACH_PAIR: f64 = 400.0;

@@ -11,6 +11,7 @@ use crate::terms::lande;
 use super::answer::{Around, Working};
 use super::document::{Document, Field, LevelOf};
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
+use super::line_wavelength::line_wavelength;
 use super::pairs;
 use super::rich::{Kind, Rich};
 
@@ -37,6 +38,7 @@ struct LineOf {
     g_lower: Option<f64>,
     multipole: Multipole,
     wavelength_nm: Option<f64>,
+    wavelength_kind: Option<Kind>,
     #[serde(skip)]
     upper_j: TwiceJ,
     #[serde(skip)]
@@ -101,9 +103,11 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
     };
     let (above, below) = (split(upper, g_upper), split(lower, g_lower));
     let pattern = weak_field::pattern(above, below, multipole).map_err(|p| p.at("/line"))?;
+    let wavelength = line_wavelength(document, upper, lower);
+    let nm = wavelength.map(|(nm, _)| nm);
     let mut components = Vec::new();
     for component in &pattern.components {
-        let offset = weak_field::offset(component.lorentz, field.tesla, document.line_wavelength())
+        let offset = weak_field::offset(component.lorentz, field.tesla, nm)
             .map_err(|p| p.at("/field/flux_density"))?;
         components.push(ComponentRow {
             polarisation: component.polarisation.name(),
@@ -147,18 +151,17 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         g_upper,
         g_lower,
         multipole,
-        wavelength_nm: document.line_wavelength(),
+        wavelength_nm: nm,
+        wavelength_kind: wavelength.map(|(_, kind)| kind),
         upper_j: upper.level.j,
         lower_j: lower.level.j,
     };
     let described = describe(positions, pattern.is_normal_triplet());
     let mut around = Around::saying(sentence(&line, field, &components, &described));
     around.working = working(&line, field, &components);
-    around.limits = limits(document, field, &components);
+    around.limits = limits(document, field, &components, wavelength);
     around.cautions = cautions(field);
-    around
-        .cautions
-        .extend(document.source_cautions(document.line_wavelength()));
+    around.cautions.extend(document.source_cautions(nm));
     around.kinds = [
         ("components.lorentz", Kind::Computed),
         ("components.offset", Kind::Computed),
@@ -178,7 +181,10 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         ("line.g_lower", Kind::Computed),
         ("field.angle_degrees", Kind::Entered),
         ("field.tesla", Kind::Entered),
-        ("line.wavelength_nm", Kind::Entered),
+        (
+            "line.wavelength_nm",
+            wavelength.map_or(Kind::Entered, |(_, kind)| kind),
+        ),
     ]
     .into_iter()
     .collect();
@@ -372,7 +378,12 @@ fn three_j(cells: [String; 6]) -> Formula {
     Formula::ThreeJ([[a, b, c], [d, e, f]])
 }
 
-fn limits(document: &Document, field: &Field, components: &[ComponentRow]) -> Vec<String> {
+fn limits(
+    document: &Document,
+    field: &Field,
+    components: &[ComponentRow],
+    wavelength: Option<(f64, Kind)>,
+) -> Vec<String> {
     let widest = components
         .iter()
         .map(|c| c.offset.abs())
@@ -383,7 +394,10 @@ fn limits(document: &Document, field: &Field, components: &[ComponentRow]) -> Ve
         ),
         "The g factors are those of pure LS coupling; measured ones differ, mostly in heavy atoms. The nucleus is left out: hyperfine structure comparable with the offsets changes the pattern.".to_owned(),
     ];
-    if document.line_wavelength().is_some() {
+    if let Some((nm, Kind::Computed)) = wavelength {
+        limits.push(format!("Nobody entered the wavelength; it is computed, {nm:.1} nm in vacuum, and the offsets in pm are as far off as twice its error."));
+    }
+    if let Some((_, Kind::Entered)) = wavelength {
         limits.push("The wavelength is taken as that in vacuum; typed in air instead, the offsets in pm would be 0.06 % too small.".to_owned());
     }
     if field.angle_degrees == 0.0 {
