@@ -8,10 +8,11 @@ use serde_json::{Map, Value, json};
 
 use crate::Outcome;
 use crate::command::capture;
-use crate::digest::{base64, gzip, hex, integrity};
+use crate::digest::{gzip, hex, integrity};
 use crate::node::Node;
 use crate::paths::{Paths, files_under, read, read_bytes, write};
 use crate::policy;
+use crate::printable::printable;
 use crate::profile::Profile;
 use crate::wasm::Core;
 
@@ -210,7 +211,7 @@ fn one_file(page: &str, style: &str, script: &str, wasm: &[u8]) -> Outcome<Strin
         &format!(
             "<script type=\"application/octet-stream\" id=\"wasm\">{}</script>\n\
              <script>{script}</script>\n</body>",
-            base64(wasm)
+            printable(wasm)
         ),
     )
 }

@@ -23,11 +23,6 @@ pub fn integrity(bytes: &[u8]) -> String {
     format!("sha256-{}", STANDARD.encode(Sha256::digest(bytes)))
 }
 
-/// Base64 with padding.
-pub fn base64(bytes: &[u8]) -> String {
-    STANDARD.encode(bytes)
-}
-
 /// gzip in the smallest form that is found, without a time in it: the same input gives the same
 /// bytes. `quick` takes a larger form that is found at once.
 pub fn gzip(bytes: &[u8], quick: bool) -> Outcome<Vec<u8>> {

@@ -10,6 +10,7 @@ mod digest;
 mod node;
 mod paths;
 mod policy;
+mod printable;
 mod profile;
 mod serve;
 mod steps;
