@@ -5,6 +5,8 @@ export const ALL_DIGITS = 17;
 // A column whose smallest entry would need more decimals than this is shown with powers of ten.
 const MOST_SPAN = 1e8;
 const MAX_DECIMALS = 12;
+// No column is shown with more decimals, so it does not matter how many more there are.
+const MOST_NEEDED = 20;
 
 /** A hyphen before a digit becomes U+2212. */
 export function trueMinus(text) {
@@ -56,7 +58,7 @@ export function columnFormat(values, digits, usual = null) {
     if (!Number.isFinite(size) || size === 0) continue;
     largest = Math.max(largest, size);
     smallest = Math.min(smallest, size);
-    needed = Math.max(needed, decimalsOf(value));
+    if (needed < MOST_NEEDED) needed = Math.max(needed, decimalsOf(value));
   }
   if (largest === 0) return { decimals: 0 };
   if (usual === "power") return { power: Math.max(digits >= ALL_DIGITS ? 15 : digits - 1, 1) };

@@ -14,5 +14,7 @@ export function paperColour(token) {
 /** Token → colour as the page shows it around `node`, for canvases. */
 export function screenColour(node) {
   const style = getComputedStyle(node);
-  return (token) => style.getPropertyValue(`--${token}`).trim() || PAPER[token] || PAPER.ink;
+  // Asked for each of thousands of strokes.
+  const found = {};
+  return (token) => (found[token] ??= style.getPropertyValue(`--${token}`).trim() || PAPER[token] || PAPER.ink);
 }

@@ -31,8 +31,14 @@ function levelsPart(whole, levels, endsOf, context) {
   fill();
   return [
     groundNode(whole, context), schemesNode(whole), element("div", { class: "choices" }, scheme.node), box,
-    whole.partition ? element("p", { class: "note", text: `Partition function at ${whole.partition.temperature}: ${whole.partition.value}, ${whole.partition.cut_off}.` }) : null,
+    whole.partition ? element("p", { class: "note" }, richNode(partitionWords(whole), context.settings)) : null,
   ];
+}
+
+function partitionWords(whole) {
+  const { temperature, value, cut_off: cutOff } = whole.partition;
+  const number = (text, unit, kind) => ({ number: { text: String(text), unit, kind } });
+  return ["Partition function at ", number(temperature, "K", "entered"), ": ", number(value, null, kindOf(whole, "partition.value")), ", of the levels up to ", number(cutOff, "cm-1", null), "."];
 }
 
 function schemesNode({ schemes }) {

@@ -158,6 +158,13 @@ class Lines {
     };
   }
 
+  // A window that narrows the list is the axis.
+  #windowEnds(value, medium) {
+    const { window } = this.#answer;
+    if (!this.#filters.inWindow?.value() || window.medium !== medium) return null;
+    return [window.from, window.to].map((nm) => value({ vacuum_nm: nm, air_nm: nm, medium_nm: nm }, medium));
+  }
+
   #drawSpectrum() {
     const { units, unit, measure, rows } = this.#filters;
     const medium = mediumOf(this.#context);
@@ -167,7 +174,7 @@ class Lines {
       x: value(line, medium), up: measure === "absorption" ? 0 : line[measure] ?? 0, down: (absorbs && line.absorption) || 0,
       multipole: line.multipole, weak: line.weak === true, id: lineId(line), ids: idsOf(this.#levels, line), reading: () => this.#reading(line),
     })).filter(({ x }) => typeof x === "number").sort((a, b) => a.x - b.x);
-    const [from, to] = extent(sticks);
+    const [from, to] = (wave && this.#windowEnds(value, medium)) || extent(sticks);
     const inside = sticks.filter(({ x }) => x >= from && x <= to);
     const beyond = sticks.length - inside.length;
     const words = wave ? `${title} ${MEDIA[medium].words} (` : `${title} (`;
