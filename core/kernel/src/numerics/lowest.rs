@@ -1,9 +1,9 @@
 //! The lowest eigenvalues of large symmetric matrices with their eigenvectors.
 //!
 //! Davidson's method in blocks: eigenpairs are sought in a space that grows by corrections
-//! t = (M − θ)⁻¹(r − ε x) to the pairs that have not converged, r = A x − θ x, where M is the matrix
-//! without what links different parts of its rows, and ε makes t orthogonal to x (Olsen). When the
-//! space is full it shrinks to the best pairs.
+//! t = (M − θ)⁻¹(r − ε x) to the pairs that have not converged, r = A x − θ x, where M is a matrix
+//! [`Nearby`], and ε makes t orthogonal to x (Olsen). When the space is full it shrinks to the best
+//! pairs and what those in work were a turn before.
 //!
 //! Nothing in it is random: the start is made of the lowest eigenvectors of M and of a few vectors
 //! that reach all rows. All sums have one order, so the result has the same bits everywhere.
@@ -11,14 +11,20 @@
 //! Source: Davidson, J. Comput. Phys. 17, 87 (1975); Olsen, Jørgensen & Simons, Chem. Phys. Lett. 169,
 //! 463 (1990); Stathopoulos & Saad, Electron. Trans. Numer. Anal. 7, 163 (1998), for the restart.
 
-use super::block_diagonal::BlockDiagonal;
 use super::lanes::{add, dot, norm};
-use super::sparse::SparseSymmetric;
+use super::nearby::Nearby;
+use super::sparse::{SparseSymmetric, products};
 use super::symmetric::{Eigensystem, eigensystem};
 use nalgebra::DMatrix;
 
 /// Corrections made in one turn.
 const WIDTH: usize = 8;
+
+/// Vectors among which the nearby matrix is the whole one, or six for each pair followed.
+const LOW: usize = 600;
+
+/// Turns of corrections that the space has room for beyond twice the pairs followed.
+const ROOM: usize = 8;
 
 /// How much larger the residual of a pair beyond those wanted may be.
 const COARSER: f64 = 1e4;
@@ -86,17 +92,22 @@ pub fn lowest(
     }
     let count = wanted.count.min(size);
     let followed = (count + 3 + count / 8).min(size);
-    let most = (followed + followed.max(7 * WIDTH)).min(size);
-    let inner = BlockDiagonal::new(matrix, parts).ok_or(Failure::NoMatrix)?;
-    let floor = FLOOR * inner.spread();
+    let most = followed
+        .saturating_mul(2)
+        .saturating_add(ROOM * WIDTH)
+        .min(size);
+    let nearby = Nearby::new(matrix, parts, LOW.max(6 * followed)).ok_or(Failure::NoMatrix)?;
+    let floor = FLOOR * nearby.spread();
     let mut space = Space::default();
-    space.grow(matrix, inner.start(followed));
+    space.grow(matrix, nearby.start(followed));
     // The value each pair had when its residual was small enough; it stays so while the value does.
     let mut settled: Vec<Option<f64>> = vec![None; followed];
     let mut worst = f64::INFINITY;
+    let mut before: Vec<Vec<f64>> = Vec::new();
     for turn in 1..=wanted.turns {
         let pairs = space.pairs().ok_or(Failure::NoMatrix)?;
         let mut corrections = Vec::new();
+        let mut now = Vec::new();
         let mut open = 0_usize;
         worst = 0.0;
         for ((place, known), &value) in settled.iter_mut().enumerate().zip(&pairs.values) {
@@ -118,11 +129,12 @@ pub fn lowest(
             }
             open += 1;
             worst = f64::max(worst, length / coarser);
-            let mut correction = inner.solve(value, floor, &rest);
-            let along = inner.solve(value, floor, &vector);
+            let mut correction = nearby.solve(value, floor, &rest);
+            let along = nearby.solve(value, floor, &vector);
             let epsilon = dot(&vector, &correction) / dot(&vector, &along);
             add(&mut correction, -epsilon, &along);
             corrections.push(correction);
+            now.push(pairs.vectors.column(place).iter().copied().collect());
         }
         if !watch(1.0 - open as f64 / followed as f64) {
             return Err(Failure::Stopped);
@@ -131,8 +143,9 @@ pub fn lowest(
             return finish(matrix, &space, &pairs, wanted, turn);
         }
         if space.vectors.len() + corrections.len() > most {
-            space.shrink(&pairs, followed + WIDTH);
+            now = space.shrink(&pairs, followed, &before, now);
         }
+        before = now;
         if space.grow(matrix, corrections) == 0 {
             break;
         }
@@ -157,7 +170,7 @@ fn finish(
         })
         .collect();
     // The images of the space have gathered rounding: from the matrix itself once more.
-    let mut rests = images(matrix, &vectors);
+    let mut rests = products(matrix, &vectors);
     for ((rest, vector), value) in rests.iter_mut().zip(&vectors).zip(&values) {
         add(rest, -value, vector);
     }
@@ -192,14 +205,14 @@ impl Space {
         let before = self.vectors.len();
         for mut vector in vectors {
             if normalise(&mut vector, 0.0)
-                && self.take_off(&mut vector, INSIDE)
+                && take_off(&self.vectors, &mut vector, INSIDE)
                 // Again, because the first time leaves what rounding brought in.
-                && self.take_off(&mut vector, 0.5)
+                && take_off(&self.vectors, &mut vector, 0.5)
             {
                 self.vectors.push(vector);
             }
         }
-        let fresh = images(matrix, self.vectors.get(before..).unwrap_or(&[]));
+        let fresh = products(matrix, self.vectors.get(before..).unwrap_or(&[]));
         for (place, image) in (before..).zip(fresh) {
             let known = self.vectors.iter().take(place + 1);
             self.elements
@@ -207,16 +220,6 @@ impl Space {
             self.images.push(image);
         }
         self.vectors.len() - before
-    }
-
-    /// Takes what is inside the space off a unit vector and normalises the rest; whether it was
-    /// longer than `least`.
-    fn take_off(&self, vector: &mut [f64], least: f64) -> bool {
-        for known in &self.vectors {
-            let part = dot(known, vector);
-            add(vector, -part, known);
-        }
-        normalise(vector, least)
     }
 
     fn pairs(&self) -> Option<Eigensystem> {
@@ -236,35 +239,87 @@ impl Space {
         (vector, rest)
     }
 
-    /// Keeps the span of the lowest pairs.
-    fn shrink(&mut self, pairs: &Eigensystem, count: usize) {
-        let count = count.min(pairs.values.len());
-        let keep = |old: &[Vec<f64>]| {
-            (0..count)
-                .map(|place| combined(old, pairs, place))
-                .collect()
-        };
-        self.vectors = keep(&self.vectors);
-        self.images = keep(&self.images);
-        let values = pairs.values.iter().take(count).enumerate();
-        self.elements = values
-            .map(|(row, &value)| {
-                let mut elements = vec![0.0; row];
-                elements.push(value);
-                elements
+    /// Keeps the span of the lowest pairs and of what the pairs in work were a turn ago, which is what
+    /// a shrunk space would otherwise forget of their way. Vectors are given by their components in
+    /// the space; what the pairs in work are now is answered by those in the new one.
+    fn shrink(
+        &mut self,
+        pairs: &Eigensystem,
+        count: usize,
+        before: &[Vec<f64>],
+        now: Vec<Vec<f64>>,
+    ) -> Vec<Vec<f64>> {
+        let size = self.vectors.len();
+        let lowest = pairs.vectors.column_iter().take(count);
+        let mut kept: Vec<Vec<f64>> = lowest.map(|c| c.iter().copied().collect()).collect();
+        for old in before {
+            let mut old = old.clone();
+            old.resize(size, 0.0);
+            if take_off(&kept, &mut old, INSIDE) && take_off(&kept, &mut old, 0.5) {
+                kept.push(old);
+            }
+        }
+        let images: Vec<Vec<f64>> = kept.iter().map(|own| self.element_times(own)).collect();
+        self.elements = (kept.iter().enumerate())
+            .map(|(row, own)| {
+                images
+                    .iter()
+                    .take(row + 1)
+                    .map(|image| dot(own, image))
+                    .collect()
             })
             .collect();
+        let combine = |old: &[Vec<f64>]| kept.iter().map(|own| mixed(old, own)).collect();
+        self.vectors = combine(&self.vectors);
+        self.images = combine(&self.images);
+        let inside = |own: Vec<f64>| kept.iter().map(|each| dot(each, &own)).collect();
+        now.into_iter().map(inside).collect()
+    }
+
+    /// The matrix within the space times a vector of it.
+    fn element_times(&self, own: &[f64]) -> Vec<f64> {
+        let mut product = vec![0.0; own.len()];
+        for (row, elements) in self.elements.iter().enumerate() {
+            let mut sum = 0.0;
+            let factor = own.get(row).copied().unwrap_or(0.0);
+            let beside = product.iter_mut().zip(own);
+            for (column, (element, (target, other))) in elements.iter().zip(beside).enumerate() {
+                sum += element * other;
+                if column != row {
+                    *target += element * factor;
+                }
+            }
+            if let Some(target) = product.get_mut(row) {
+                *target += sum;
+            }
+        }
+        product
     }
 }
 
 /// Σ v_j y_j for the pair at this place.
 fn combined(vectors: &[Vec<f64>], pairs: &Eigensystem, place: usize) -> Vec<f64> {
+    let own: Vec<f64> = pairs.vectors.column(place).iter().copied().collect();
+    mixed(vectors, &own)
+}
+
+/// Σ v_j y_j.
+fn mixed(vectors: &[Vec<f64>], factors: &[f64]) -> Vec<f64> {
     let mut sum = vec![0.0; vectors.first().map_or(0, Vec::len)];
-    for (row, vector) in vectors.iter().enumerate() {
-        let factor = pairs.vectors.get((row, place)).copied().unwrap_or(0.0);
+    for (vector, &factor) in vectors.iter().zip(factors) {
         add(&mut sum, factor, vector);
     }
     sum
+}
+
+/// Takes what lies along orthonormal vectors off a unit vector and normalises the rest; whether it
+/// was longer than `least`.
+fn take_off(known: &[Vec<f64>], vector: &mut [f64], least: f64) -> bool {
+    for each in known {
+        let part = dot(each, vector);
+        add(vector, -part, each);
+    }
+    normalise(vector, least)
 }
 
 /// Whether the vector was longer than `least` and of finite length; then it has the length 1.
@@ -275,27 +330,6 @@ fn normalise(vector: &mut [f64], least: f64) -> bool {
     }
     vector.iter_mut().for_each(|entry| *entry /= length);
     true
-}
-
-/// The matrix times each vector.
-fn images(matrix: &SparseSymmetric, vectors: &[Vec<f64>]) -> Vec<Vec<f64>> {
-    let mut all = Vec::with_capacity(vectors.len());
-    for group in vectors.chunks(WIDTH) {
-        let mut beside = vec![[0.0; WIDTH]; matrix.size()];
-        for (place, vector) in group.iter().enumerate() {
-            for (row, &entry) in beside.iter_mut().zip(vector) {
-                if let Some(target) = row.get_mut(place) {
-                    *target = entry;
-                }
-            }
-        }
-        let products = matrix.times(&beside);
-        for place in 0..group.len() {
-            let column = products.iter().filter_map(|row| row.get(place));
-            all.push(column.copied().collect());
-        }
-    }
-    all
 }
 
 #[cfg(test)]

@@ -12,6 +12,9 @@ pub struct SparseSymmetric {
     values: Vec<f64>,
 }
 
+/// Vectors that are multiplied at once.
+const BESIDE: usize = 8;
+
 /// Collects the elements of a matrix.
 #[derive(Clone, Debug, Default)]
 pub struct Elements {
@@ -147,6 +150,27 @@ impl SparseSymmetric {
         }
         product
     }
+}
+
+/// The matrix times each vector, eight at a time.
+pub fn products(matrix: &SparseSymmetric, vectors: &[Vec<f64>]) -> Vec<Vec<f64>> {
+    let mut all = Vec::with_capacity(vectors.len());
+    for group in vectors.chunks(BESIDE) {
+        let mut beside = vec![[0.0; BESIDE]; matrix.size()];
+        for (place, vector) in group.iter().enumerate() {
+            for (row, &entry) in beside.iter_mut().zip(vector) {
+                if let Some(target) = row.get_mut(place) {
+                    *target = entry;
+                }
+            }
+        }
+        let found = matrix.times(&beside);
+        for place in 0..group.len() {
+            let column = found.iter().filter_map(|row| row.get(place));
+            all.push(column.copied().collect());
+        }
+    }
+    all
 }
 
 #[cfg(test)]

@@ -8,6 +8,7 @@ use super::parameters::{Integral, Parameter};
 use super::spin_orbit::{self, Joint};
 use super::symbols::Symbols;
 use crate::angular::NINE_J_CAPACITY;
+use crate::numerics::sparse::{Elements, SparseSymmetric};
 use crate::problem::Problem;
 use nalgebra::DMatrix;
 
@@ -157,17 +158,41 @@ impl Hamiltonian {
         if u64::try_from(size).unwrap_or(u64::MAX) > MOST_ROWS {
             return Err(too_large(size, rows.two_j));
         }
-        if values.len() != self.parameters.len() || !values.iter().all(|v| v.is_finite()) {
-            return Err(not_finite());
-        }
         // By columns, as the eigensolver wants it.
         let mut entries = vec![0.0; size * size];
-        let mut put = |row: usize, column: usize, value: f64| {
+        self.elements(rows, values, |row, column, value| {
             let (row, column) = (row.max(column), row.min(column));
             if let Some(entry) = entries.get_mut(column * size + row) {
                 *entry += value;
             }
-        };
+        })?;
+        Ok(DMatrix::from_vec(size, size, entries))
+    }
+
+    /// The matrix of J without its zeros, whatever its size.
+    ///
+    /// # Errors
+    /// `parameter-not-finite`.
+    pub fn sparse(&self, rows: &Rows, values: &[f64]) -> Result<SparseSymmetric, Problem> {
+        let mut elements = Elements::new(u32::try_from(rows.states.len()).unwrap_or(u32::MAX));
+        self.elements(rows, values, |row, column, value| {
+            if value != 0.0 {
+                elements.add(row, column, value);
+            }
+        })?;
+        Ok(elements.finish())
+    }
+
+    /// Gives every contribution to an element of the matrix of J, its row and column in either order.
+    fn elements(
+        &self,
+        rows: &Rows,
+        values: &[f64],
+        mut put: impl FnMut(usize, usize, f64),
+    ) -> Result<(), Problem> {
+        if values.len() != self.parameters.len() || !values.iter().all(|v| v.is_finite()) {
+            return Err(not_finite());
+        }
         let value_of = |parameter: usize| values.get(parameter).copied().unwrap_or(0.0);
         for &(place, first) in &rows.blocks {
             let Some(block) = self.basis.blocks().get(place) else {
@@ -200,7 +225,7 @@ impl Hamiltonian {
                 put(row + entry.row, column + entry.column, energy);
             }
         }
-        Ok(DMatrix::from_vec(size, size, entries))
+        Ok(())
     }
 }
 
