@@ -1,7 +1,8 @@
 //! How large a problem is, found from counts alone, before anything is built.
 
 use super::basis::{Coupled, check, too_large};
-use super::bounds::MOST_COUNTED;
+use super::bounds::{MOST_COUNTED, MOST_ROWS};
+use super::lowest;
 use crate::angular::equivalent::classify;
 use crate::problem::Problem;
 use std::collections::BTreeMap;
@@ -25,12 +26,16 @@ pub struct Estimate {
     /// Σ 2(2ℓ_<+1)² over the pairs of open subshells, ranks of the tensors times integrals.
     pub products: u64,
     /// Bytes at most at one time: the largest matrix with its eigenvectors and what the eigensolver
-    /// works with, three square matrices, all eigenvectors kept, and the coefficients at 24 bytes
-    /// with six integrals at each place.
+    /// works with, three square matrices or what the search for the lowest levels takes, all
+    /// eigenvectors kept, and the coefficients at 24 bytes with six integrals at each place.
     pub bytes: u64,
-    /// Multiplications of all diagonalisations, 9 n³ each.
+    /// Multiplications of all diagonalisations, 9 n³ each up to [`super::MOST_ROWS`] rows, and of the
+    /// searches for the lowest levels beyond.
     pub multiplications: f64,
 }
+
+/// Levels kept of a J that is not diagonalised as a whole.
+const LEVELS: u64 = lowest::LOWEST_LEVELS as u64;
 
 /// How often each S L occurs.
 type Counts = BTreeMap<Coupled, u64>;
@@ -113,18 +118,24 @@ fn sizes(totals: &Counts) -> Estimate {
         }
     }
     found.rows_by_two_j = by_two_j.into_iter().collect();
-    let mut squares = 0_u64;
+    // Bytes of all levels, and at most for one matrix.
+    let (mut kept, mut work) = (0_u64, 0_u64);
     for &(_, rows) in &found.rows_by_two_j {
         let square = rows.saturating_mul(rows);
-        squares = squares.saturating_add(square);
         found.levels = found.levels.saturating_add(rows);
         found.largest = found.largest.max(rows);
-        found.multiplications += 9.0 * rows as f64 * square as f64;
+        let (components, here) = if rows > MOST_ROWS {
+            found.multiplications += lowest::multiplications(rows as f64);
+            (rows.saturating_mul(LEVELS), lowest::bytes(rows))
+        } else {
+            found.multiplications += 9.0 * rows as f64 * square as f64;
+            (square, square.saturating_mul(24))
+        };
+        kept = kept.saturating_add(components.saturating_mul(8));
+        work = work.max(here);
     }
-    let largest = found.largest.saturating_mul(found.largest);
-    let numbers = largest.saturating_mul(3).saturating_add(squares);
     let coefficients = found.electrostatic_places.saturating_mul(72);
-    found.bytes = numbers.saturating_mul(8).saturating_add(coefficients);
+    found.bytes = kept.saturating_add(work).saturating_add(coefficients);
     found
 }
 

@@ -1,7 +1,9 @@
 //! Energies and eigenvectors in intermediate coupling, with their g and composition.
 
 use super::basis::{Basis, Coupled};
+use super::bounds::MOST_ROWS;
 use super::hamiltonian::{Hamiltonian, Rows};
+use super::lowest::{LOWEST_LEVELS, lowest_of_j};
 use super::ties::{SAME, untie};
 use crate::numerics::order::{sort_by, sort_by_key};
 use crate::numerics::symmetric::eigensystem;
@@ -30,7 +32,8 @@ pub struct Levels {
 }
 
 impl Levels {
-    /// Diagonalises the matrix of every J.
+    /// Diagonalises the matrix of every J; of one with more than [`super::MOST_ROWS`] rows the
+    /// [`LOWEST_LEVELS`] lowest levels are found.
     ///
     /// # Errors
     /// Those of [`Hamiltonian::matrix`]; `levels-not-found` when an iteration does not converge.
@@ -38,8 +41,8 @@ impl Levels {
         Levels::solve_watched(hamiltonian, values, &mut |_| true)
     }
 
-    /// The same; `watch` hears of the rows of each J that is done, and ends the work by answering
-    /// false.
+    /// The same; `watch` hears of the rows of each J that is done, often of none, and ends the work by
+    /// answering false.
     ///
     /// # Errors
     /// Those of [`Levels::solve`]; `stopped`.
@@ -52,7 +55,13 @@ impl Levels {
         let mut levels = Vec::new();
         for two_j in hamiltonian.basis().two_js() {
             let of_j = hamiltonian.rows(two_j);
-            levels.extend(solve_j(hamiltonian, &of_j, values)?);
+            if is_large(&of_j) {
+                let found =
+                    lowest_of_j(hamiltonian, &of_j, values, LOWEST_LEVELS, &mut |_| watch(0));
+                levels.extend(found?);
+            } else {
+                levels.extend(solve_j(hamiltonian, &of_j, values)?);
+            }
             if !watch(of_j.states.len()) {
                 return Err(stopped());
             }
@@ -60,6 +69,13 @@ impl Levels {
         }
         in_order(&mut levels);
         Ok(Levels { rows, levels })
+    }
+
+    /// Whether all levels of a J are there, and not only the lowest.
+    pub fn is_complete(&self, two_j: i32) -> bool {
+        let found = self.levels.iter().filter(|level| level.two_j == two_j);
+        let rows = self.rows.iter().filter(|rows| rows.two_j == two_j);
+        found.count() == rows.map(|rows| rows.states.len()).sum::<usize>()
     }
 
     /// The rows that a level's components belong to.
@@ -108,6 +124,11 @@ pub fn lande(total: Coupled, two_j: i32, g_s: f64) -> f64 {
     let square = |two: i32| f64::from(two) * f64::from(two + 2);
     let (j, s, l) = (square(two_j), square(total.two_s), square(2 * total.l));
     1.0 + (g_s - 1.0) * (j + s - l) / (2.0 * j)
+}
+
+/// Whether a matrix of these rows is too large to be diagonalised as a whole.
+fn is_large(rows: &Rows) -> bool {
+    u64::try_from(rows.states.len()).unwrap_or(u64::MAX) > MOST_ROWS
 }
 
 /// The levels of one J by rising energy.

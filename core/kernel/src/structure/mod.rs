@@ -35,7 +35,7 @@ pub use electrostatic::Entry;
 pub use estimate::{Estimate, estimate};
 pub use hamiltonian::{Hamiltonian, Rows, Terms};
 pub use levels::{Level, Levels, lande, solve_j};
-pub use lowest::{LOWEST_LEVELS, lowest_of_j};
+pub use lowest::{LOWEST_LEVELS, lowest_of_j, multiplications};
 pub use multipole::{Elements, Multipole, Transfer, magnetic_elements};
 pub use parameters::{Effective, Integral, Parameter};
 pub use schemes::{JjCoupled, JjTransformation, JkCoupled, Scheme, jk_scheme};

@@ -2,6 +2,7 @@
 
 use super::case::Case;
 use crate::problem::Problem;
+use crate::structure::{MOST_ROWS, multiplications};
 
 /// Sizes and costs; seconds are those of a browser on a machine of 2020 or so.
 #[derive(Clone, Debug, PartialEq)]
@@ -25,9 +26,14 @@ pub(super) fn coefficient_seconds(sizes: &crate::structure::Estimate) -> f64 {
     2e-8 * sizes.products as f64
 }
 
-/// Seconds to build and diagonalise a matrix.
+/// Seconds to build and diagonalise a matrix, or to find its lowest levels.
 pub(super) fn matrix_seconds(rows: f64) -> f64 {
-    9.0 * rows * rows * rows / 6e8
+    let multiplications = if rows > MOST_ROWS as f64 {
+        multiplications(rows)
+    } else {
+        9.0 * rows * rows * rows
+    };
+    multiplications / 6e8
 }
 
 /// Sizes and costs of a case.
