@@ -26,7 +26,8 @@ fn hamiltonian(shells: &[u8], configurations: &[Vec<u32>]) -> Hamiltonian {
 fn the_lowest_levels_are_those_of_the_whole_matrix() {
     // f⁶ d s: 748 rows of J = 4, of which 600 states are diagonalised beforehand; two configurations
     // that mix; two that do not.
-    let cases: [(&[u8], Vec<Vec<u32>>, i32); 3] = [
+    type Case = (&'static [u8], Vec<Vec<u32>>, i32);
+    let cases: [Case; 3] = [
         (&[3, 2, 0], vec![vec![6, 1, 1]], 8),
         (&[2, 0, 1], vec![vec![5, 1, 1], vec![6, 0, 1]], 5),
         (&[3, 2, 0, 1], vec![vec![5, 1, 1, 0], vec![6, 0, 0, 1]], 15),
@@ -106,9 +107,10 @@ fn a_search_can_be_stopped() {
 fn what_is_beyond_the_whole_way_is_estimated_as_the_other_one() {
     let large = estimate(&[3, 2, 0], &[vec![6, 2, 1]]).expect("sizes");
     assert!(large.largest > MOST_ROWS);
-    let cube = 9.0 * (large.largest as f64).powi(3);
+    let whole_way = |rows: u64| 9.0 * rows as f64 * rows as f64 * rows as f64;
+    let cube = whole_way(large.largest);
     let whole: f64 = (large.rows_by_two_j.iter())
-        .map(|&(_, rows)| 9.0 * (rows as f64).powi(3))
+        .map(|&(_, rows)| whole_way(rows))
         .sum();
     assert!(large.multiplications < whole - 0.5 * cube);
     assert!(large.bytes < 1 << 30);

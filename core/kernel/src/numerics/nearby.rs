@@ -115,11 +115,11 @@ impl Nearby {
                     if let Some(entry) = unit.last_mut() {
                         *entry = 1.0;
                     }
-                    self.from_parts(&unit)
+                    self.of_components(&unit)
                 })
                 .collect();
             for (&column, image) in group.iter().zip(products(matrix, &vectors)) {
-                for (row, element) in self.to_parts(&image).into_iter().take(low).enumerate() {
+                for (row, element) in self.components_of(&image).into_iter().take(low).enumerate() {
                     if let Some(entry) = own.get_mut((row, column)) {
                         *entry = element;
                     }
@@ -130,7 +130,7 @@ impl Nearby {
     }
 
     /// Components along the eigenvectors of all parts, eigenvalues rising.
-    fn to_parts(&self, x: &[f64]) -> Vec<f64> {
+    fn components_of(&self, x: &[f64]) -> Vec<f64> {
         let mut components = vec![0.0; self.size];
         for part in &self.parts {
             let rows = x.get(part.first..).unwrap_or(&[]);
@@ -144,7 +144,7 @@ impl Nearby {
     }
 
     /// The vector of these components; what is not given is zero.
-    fn from_parts(&self, components: &[f64]) -> Vec<f64> {
+    fn of_components(&self, components: &[f64]) -> Vec<f64> {
         let mut vector = vec![0.0; self.size];
         for part in &self.parts {
             let rows = vector.get_mut(part.first..).unwrap_or(&mut []);
@@ -162,7 +162,7 @@ impl Nearby {
     /// pattern without symmetry.
     pub fn start(&self, count: usize) -> Vec<Vec<f64>> {
         let lowest = self.low.pairs().take(count);
-        let mut vectors: Vec<Vec<f64>> = lowest.map(|(_, own)| self.from_parts(own)).collect();
+        let mut vectors: Vec<Vec<f64>> = lowest.map(|(_, own)| self.of_components(own)).collect();
         let bottom = self.values.first().copied().unwrap_or(0.0);
         let scale = self.values.get(count).map_or(1.0, |value| value - bottom);
         for seed in 1..=BROAD {
@@ -174,7 +174,7 @@ impl Nearby {
                     (turn - 0.5) / (1.0 + (value - bottom) / scale.max(f64::MIN_POSITIVE))
                 })
                 .collect();
-            vectors.push(self.from_parts(&components));
+            vectors.push(self.of_components(&components));
         }
         vectors
     }
@@ -189,7 +189,7 @@ impl Nearby {
                 gap
             }
         };
-        let mut components = self.to_parts(x);
+        let mut components = self.components_of(x);
         let low = self.low.values.len();
         let among: Vec<f64> = components.iter().take(low).copied().collect();
         for (component, &value) in components.iter_mut().zip(&self.values) {
@@ -200,7 +200,7 @@ impl Nearby {
         for (value, own) in self.low.pairs() {
             add(result, dot(own, &among) / distance(value), own);
         }
-        self.from_parts(&components)
+        self.of_components(&components)
     }
 
     /// The highest less the lowest eigenvalue of the parts.
