@@ -346,3 +346,30 @@ fn what_cannot_be_answered_is_told() {
     let document = Document::read(&serde_json::from_value(large).unwrap());
     assert!(document.faults.is_empty());
 }
+
+/// n_ion n_e/n_atom = 2.4146·10²¹ m⁻³ (T/K)^(3/2) (2 Z_ion/Z_atom) e^(−χ/kT), the constant standard, from memory;
+/// χ of hydrogen 109678.77 cm⁻¹, k/hc 0.695035 cm⁻¹/K.
+#[test]
+fn the_next_ion_is_in_balance() {
+    let light = json!({"source": {"temperature": "10000 K", "electron_density": "1e20 m-3"}});
+    let hydrogen = levels(&sheet("H", &["1s"], light.clone()));
+    let balance = &hydrogen["ionisation"];
+    // Without the Lamb shift of 1s, 0.27 cm⁻¹ (from memory).
+    near(number(&balance["limit"]), 109_678.77 + 0.27, 0.01, "limit");
+    // e^(−109678.77/6950.35) = 1.401821e-07.
+    let expected = 2.4146e21 * 1e6 * 1.401821e-07 / 1e20;
+    near(number(&balance["ratio"]) / expected, 1.0, 0.01, "ratio");
+    near(number(&balance["lowering"]), 24.0, 5.0, "lowering");
+    // 41449.45 cm⁻¹ from tables, from memory; a frozen core binds the electron some per cent less.
+    let sodium = levels(&sheet("Na", &["3s", "3p"], light));
+    let balance = &sodium["ionisation"];
+    near(
+        number(&balance["limit"]) / 41_449.45,
+        0.96,
+        0.02,
+        "limit of Na",
+    );
+    assert_eq!(balance["limit_kind"], "computed");
+    assert_eq!(balance["higher_partition"], 1.0);
+    assert!(levels(&sheet("Na", &["3s"], json!({})))["ionisation"].is_null());
+}

@@ -147,6 +147,10 @@ pub fn energy_case(document: &Document) -> Result<EnergyCase, Problem> {
         .iter()
         .filter_map(|given| given_value(given, &entries))
         .collect();
+    let configurations = named
+        .iter()
+        .map(|(_, _, named)| named.configuration.subshells().to_vec())
+        .collect();
     let case = Case {
         nucleus: (z > 0).then_some((z, mass_number)),
         computed,
@@ -159,11 +163,8 @@ pub fn energy_case(document: &Document) -> Result<EnergyCase, Problem> {
             zeta: scale.zeta,
         },
         polarisation,
-        configurations: named
-            .iter()
-            .map(|(_, _, named)| named.configuration.subshells().to_vec())
-            .collect(),
         given,
+        ..Case::new(z, mass_number, configurations)
     };
     Ok(EnergyCase::Model { case, entries })
 }

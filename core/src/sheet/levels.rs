@@ -13,8 +13,8 @@ use super::decays::Radiation;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::levels_rows::{
-    BlockRow, GroundRow, IntervalRow, LevelRow, ParameterRow, PartitionRow, SchemeRow, SeriesRow,
-    ShareRow, Shared,
+    BlockRow, GroundRow, IntervalRow, IonisationRow, LevelRow, ParameterRow, PartitionRow,
+    SchemeRow, SeriesRow, ShareRow, Shared,
 };
 use super::levels_words::{Told, kinds, limits, sentence, working};
 use super::placed::Placed;
@@ -22,7 +22,7 @@ use super::rich::{Rich, TermName};
 use super::solved::{Solved, solved};
 use super::states::chain_rich;
 use super::watch::Watch;
-use super::{levels_facts, parameter_rows};
+use super::{ionised, levels_facts, parameter_rows};
 
 /// Above this many levels their lines, and so lifetimes, are not worked out.
 pub const MOST_LEVELS_WITH_LINES: usize = 2500;
@@ -41,6 +41,7 @@ pub struct Levels {
     series: Vec<SeriesRow>,
     blocks: Vec<BlockRow>,
     partition: Option<PartitionRow>,
+    ionisation: Option<IonisationRow>,
 }
 
 /// The answer on levels.
@@ -77,6 +78,10 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
     let schemes = schemes(&solved.compositions().means);
     let ground = levels_facts::ground(document, &solved, &placed);
     let intervals = levels_facts::intervals(document, &solved, &placed);
+    let series = levels_facts::series(document, &solved, &placed);
+    let ionisation = filled
+        .as_ref()
+        .and_then(|filled| ionised::row(document, &solved, &placed, &series, filled));
     let told = Told {
         document,
         solved: &solved,
@@ -85,6 +90,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
         parameters: &parameters,
         ground: ground.as_ref(),
         intervals: &intervals,
+        ionisation: ionisation.as_ref(),
     };
     let mut around = Around::saying(sentence(&told));
     around.working = working(&told);
@@ -93,7 +99,8 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
     Ok(Levels {
         around,
         species: document.species_rich(),
-        series: levels_facts::series(document, &solved, &placed),
+        series,
+        ionisation,
         blocks: blocks(&solved),
         partition: filled.map(|found| PartitionRow {
             temperature: found.temperature,

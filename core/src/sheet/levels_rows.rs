@@ -154,3 +154,27 @@ pub struct PartitionRow {
     pub cut_off_by: &'static str,
     pub levels: usize,
 }
+
+/// The balance with the next ion.
+#[derive(Debug, Serialize)]
+pub struct IonisationRow {
+    /// K.
+    pub temperature: f64,
+    /// m⁻³.
+    pub electron_density: f64,
+    /// Energy of ionisation from the lowest level, cm⁻¹.
+    pub limit: f64,
+    pub limit_kind: Kind,
+    /// By how much the plasma lowers it, cm⁻¹.
+    pub lowering: f64,
+    /// m.
+    pub debye_length: f64,
+    pub lower_partition: f64,
+    pub higher_partition: f64,
+    /// The configuration whose levels the higher one counts.
+    pub higher_configuration: Option<String>,
+    /// Ions of the higher charge for each of this one.
+    pub ratio: f64,
+    /// Their share among both.
+    pub ionised: f64,
+}

@@ -6,7 +6,7 @@ use super::answer::Working;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
-use super::levels_rows::{GroundRow, IntervalRow, LevelRow, ParameterRow};
+use super::levels_rows::{GroundRow, IntervalRow, IonisationRow, LevelRow, ParameterRow};
 use super::placed::Placed;
 use super::rich::{Kind, Rich};
 use super::solved::Solved;
@@ -21,6 +21,7 @@ pub struct Told<'a> {
     pub parameters: &'a [ParameterRow],
     pub ground: Option<&'a GroundRow>,
     pub intervals: &'a [IntervalRow],
+    pub ionisation: Option<&'a IonisationRow>,
 }
 
 /// A wavenumber as it is read aloud.
@@ -110,7 +111,70 @@ pub fn working(told: &Told) -> Vec<Working> {
     let mut steps = vec![matrix(told)];
     steps.extend(interval_rule(told));
     steps.extend(factor(told));
+    steps.extend(told.ionisation.map(balance));
     steps
+}
+
+/// Saha's equation with this case's numbers.
+fn balance(row_of: &IonisationRow) -> Working {
+    let ratio = || fraction(sub(name("n"), name("ion")), sub(name("n"), name("atom")));
+    let exponent = |over: Formula, under: Formula| row([operator("−"), fraction(over, under)]);
+    let formula = row([
+        ratio(),
+        operator("="),
+        fraction(
+            number(2),
+            row([sub(name("n"), name("e")), sup(name("Λ"), number(3))]),
+        ),
+        fraction(sub(name("Z"), name("ion")), sub(name("Z"), name("atom"))),
+        sup(
+            name("e"),
+            exponent(
+                row([name("χ"), operator("−"), name("Δχ")]),
+                row([name("k"), name("T")]),
+            ),
+        ),
+    ]);
+    let three = |value: f64| number(format!("{value:.3}"));
+    let numbers = row([
+        ratio(),
+        operator("="),
+        fraction(
+            number(2),
+            row([
+                number(format!("{:.3e}", row_of.electron_density)),
+                sup(name("Λ"), number(3)),
+            ]),
+        ),
+        fraction(
+            three(row_of.higher_partition),
+            three(row_of.lower_partition),
+        ),
+        sup(
+            name("e"),
+            exponent(
+                number(rounded(row_of.limit - row_of.lowering)),
+                number(rounded(
+                    crate::constants::BOLTZMANN_WAVENUMBER.value * row_of.temperature,
+                )),
+            ),
+        ),
+    ]);
+    let result = Rich::new()
+        .number(
+            format!("{:.3e}", row_of.ratio)
+                .parse()
+                .unwrap_or(row_of.ratio),
+            None,
+            Kind::Computed,
+        )
+        .say(" ions of the next charge for each of this one");
+    Working::new(
+        "Balance with the next ion, Λ the thermal wavelength of the electron",
+        formula,
+        "M. N. Saha, Phil. Mag. 40, 472 (1920); limit lowered by Debye and Hückel’s screening",
+    )
+    .numbers(numbers, result)
 }
 
 /// The energy matrix with the first parameters of this case.
@@ -269,7 +333,7 @@ pub fn limits(told: &Told) -> Vec<String> {
     let document = told.document;
     match told.solved.case() {
         EnergyCase::OneElectron { .. } => limits.push(
-            "One electron in the field of a point nucleus of finite mass; the Lamb shift and the spin of the nucleus are left out (in hydrogen 0.035 cm⁻¹ for 2s, less for others; from memory)."
+            "One electron in the field of a point nucleus of finite mass; the Lamb shift and the spin of the nucleus are left out (in hydrogen 0.27 cm⁻¹ for 1s and 0.035 cm⁻¹ for 2s, from memory)."
                 .to_owned(),
         ),
         EnergyCase::Model { case, .. } => {
@@ -303,6 +367,16 @@ pub fn limits(told: &Told) -> Vec<String> {
         ));
     }
     limits.extend(too_low(document, told.solved));
+    if let Some(balance) = told.ionisation {
+        limits.push(format!(
+            "The balance with the next ion counts the levels listed here and those of its {}; the limit is {}.",
+            balance.higher_configuration.as_deref().unwrap_or("bare nucleus"),
+            match balance.limit_kind {
+                Kind::Measured => "that of the measured series",
+                _ => "computed, mostly some thousand cm⁻¹ too low (common practice, no source)",
+            }
+        ));
+    }
     limits.extend(document.unused());
     limits
 }
@@ -363,6 +437,8 @@ pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Ki
         ("series.limit", Kind::Computed),
         ("blocks.rows", Kind::Exact),
         ("partition.value", Kind::Computed),
+        ("ionisation.ratio", Kind::Computed),
+        ("ionisation.lowering", Kind::Computed),
     ]
     .into_iter()
     .collect()

@@ -17,6 +17,7 @@ mod entry;
 mod formula;
 mod given;
 mod ground;
+mod ionised;
 mod json;
 mod json_repair;
 mod lack;
