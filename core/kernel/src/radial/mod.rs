@@ -4,6 +4,7 @@
 
 pub mod average;
 pub mod blume_watson;
+pub mod correlation;
 pub mod expectation;
 pub mod hartree_fock;
 pub mod hydrogenic;

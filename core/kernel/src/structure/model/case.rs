@@ -42,6 +42,9 @@ pub struct Case {
     pub relativity: bool,
     /// Whether configurations of one parity mix.
     pub mixing: bool,
+    /// Whether correlation within subshells is added to what is computed ([`super::Correlation`]); a
+    /// configuration that mixes in beside it then counts twice.
+    pub correlation: bool,
     /// Factors on what is computed.
     pub scale: Scale,
     /// Core polarisation with its core.
@@ -53,13 +56,14 @@ pub struct Case {
 }
 
 impl Case {
-    /// Computed from nothing but the nucleus, relativistic, mixing, unscaled.
+    /// Computed from nothing but the nucleus, relativistic, mixing, without correlation, unscaled.
     pub fn new(z: u8, mass_number: u16, configurations: Vec<Vec<Subshell>>) -> Self {
         Case {
             nucleus: Some((z, mass_number)),
             computed: true,
             relativity: true,
             mixing: true,
+            correlation: false,
             scale: Scale::default(),
             polarisation: None,
             configurations,

@@ -56,6 +56,11 @@ pub fn estimate(case: &Case) -> Result<Estimate, Problem> {
         if let Some(atom) = case.atom(place) {
             let shells = atom.subshells.len() as f64;
             found.field_seconds += 0.006 + 3e-4 * shells * shells;
+            if case.correlation {
+                let open = atom.subshells.iter().filter(|s| s.is_open());
+                let several = open.filter(|s| s.electrons() > 1 && s.orbital().l() > 0);
+                found.field_seconds += 0.2 * several.count() as f64;
+            }
         }
     }
     found.seconds = found.field_seconds;

@@ -21,6 +21,7 @@
 //! average functions are no good ones for such a ¹S; so there is none.
 
 use super::case::Case;
+use super::correlation::Correlation;
 use super::names::{Kind, Name, Value};
 use crate::configuration::Orbital;
 use crate::constants::HARTREE_WAVENUMBER;
@@ -29,7 +30,7 @@ use crate::radial::hartree_fock::{RadialOrbital, Solution};
 use crate::radial::mixing::{Between, Cross};
 use crate::structure::basis::Basis;
 use crate::structure::hamiltonian::Hamiltonian;
-use crate::structure::parameters::{Integral, Parameter};
+use crate::structure::parameters::{Effective, Integral, Parameter};
 use std::rc::Rc;
 
 /// The runs of all configurations; nothing for one that was not computed.
@@ -62,6 +63,7 @@ impl Source<'_> {
     pub fn values(&self, hamiltonian: &Hamiltonian) -> (Vec<Value>, Option<CrossOverlap>) {
         let mut values: Vec<Value> = Vec::with_capacity(hamiltonian.parameters().len());
         let mut largest: Option<CrossOverlap> = None;
+        let correlations = self.correlations();
         // Parameters of one pair of configurations stand together.
         let mut pair: Option<((usize, usize), Option<Between>)> = None;
         for parameter in hamiltonian.parameters() {
@@ -84,11 +86,30 @@ impl Source<'_> {
             let Some(name) = Name::of(parameter, self.orbitals, self.configurations) else {
                 continue;
             };
-            let computed = self.computed(name, configurations, between);
+            let mut computed = self.computed(name, configurations, between);
+            if let Some(more) = correlation(&correlations, name, configurations.0) {
+                computed = Some(computed.unwrap_or(0.0) + more * HARTREE_WAVENUMBER.value);
+            }
             values.push(Value::new(self.case, name, configurations, computed));
         }
         stationary(hamiltonian.basis(), hamiltonian.parameters(), &mut values);
         (values, largest)
+    }
+
+    /// What correlation adds, by configuration and subshell.
+    fn correlations(&self) -> Vec<((usize, Orbital), Correlation)> {
+        let mut found = Vec::new();
+        for &place in self.configurations {
+            let Some(run) = self.run(place).filter(|_| self.case.correlation) else {
+                continue;
+            };
+            for &orbital in self.orbitals {
+                let function = run.orbital(orbital);
+                let correlation = function.and_then(|function| Correlation::of(run, function));
+                found.extend(correlation.map(|correlation| ((place, orbital), correlation)));
+            }
+        }
+        found
     }
 
     fn configurations_of(&self, (first, second): (usize, usize)) -> Option<(usize, usize)> {
@@ -171,6 +192,27 @@ impl Source<'_> {
             _ => return None,
         };
         Some(hartree * HARTREE_WAVENUMBER.value)
+    }
+}
+
+/// What correlation adds to an integral, hartree.
+fn correlation(
+    correlations: &[((usize, Orbital), Correlation)],
+    name: Name,
+    configuration: usize,
+) -> Option<f64> {
+    let of = |orbital: Orbital| {
+        let found = correlations
+            .iter()
+            .find(|(key, _)| *key == (configuration, orbital));
+        found.map(|(_, correlation)| correlation)
+    };
+    match name {
+        Name::Direct { k, a, b } if a == b => of(a).map(|found| found.change(k)),
+        Name::Alpha(a) => of(a)?.parameter(Effective::Alpha),
+        Name::Beta(a) => of(a)?.parameter(Effective::Beta),
+        Name::Gamma(a) => of(a)?.parameter(Effective::Gamma),
+        _ => None,
     }
 }
 

@@ -4,6 +4,7 @@
 //! Energies outside are in cm⁻¹, lengths in a₀; radial functions are in hartree.
 
 mod case;
+mod correlation;
 mod estimate;
 mod integrals;
 mod lines;
@@ -11,6 +12,7 @@ mod names;
 mod spectrum;
 
 pub use case::{Case, Scale};
+pub use correlation::Correlation;
 pub use estimate::{Estimate, estimate};
 pub use integrals::CrossOverlap;
 pub use lines::{Kind as MultipoleKind, LineStrength, Lines};

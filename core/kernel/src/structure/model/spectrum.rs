@@ -168,10 +168,10 @@ impl Spectrum {
             .collect();
         let sizes = crate::structure::estimate(&subshells, &occupations)?;
         let basis = Basis::new(&subshells, &occupations)?;
-        let effective = case
-            .given
-            .iter()
-            .any(|given| matches!(given.name, Name::Alpha(_) | Name::Beta(_) | Name::Gamma(_)));
+        let is_effective =
+            |name: &Name| matches!(name, Name::Alpha(_) | Name::Beta(_) | Name::Gamma(_));
+        let given = case.given.iter().any(|given| is_effective(&given.name));
+        let effective = given || (case.computed && case.correlation);
         let terms = Terms {
             mixing: case.mixing,
             effective,
