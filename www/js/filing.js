@@ -9,8 +9,8 @@ const NO_SHEET = {
   bound: "A sheet is one JSON object, in braces, with at least \"rungline\": 1.", ways: [],
 };
 
-/** Faults of a table that are shown; the others are as its first ones. */
-const FAULTS = 8;
+/** Rows of a table that are told of one by one. */
+const TOLD = 8;
 
 export class Filing {
   #engine;
@@ -47,16 +47,19 @@ export class Filing {
     const { sheet } = this.#store;
     const result = await this.#engine.request("open", "measured_csv", [text, sheet]);
     if (result.text === undefined) return;
-    const { measured, taken, left, faults } = JSON.parse(result.text);
+    const { measured, taken, left, left_rows: leftRows = [], faults = [] } = JSON.parse(result.text);
+    const told = [...faults.map((fault) => [fault.message, fault.bound].filter(Boolean).join(" ")), ...leftRows.map(({ line, why }) => `Line ${line}: ${why}`)];
     if (taken > 0) this.#store.put([["/measured", { ...sheet.measured, ...measured }]], `Take ${taken} levels from "${name}"`);
     this.#notes.put("file", {
       kind: taken > 0 ? "note" : "fault", text: levelWords(name, taken, left),
-      more: faults?.length > 0 ? element("ul", {}, ...faults.slice(0, FAULTS).map((fault) => element("li", { text: [fault.message, fault.bound].filter(Boolean).join(" ") }))) : null,
+      more: told.length > 0 ? element("ul", {}, ...told.slice(0, TOLD).map((text) => element("li", { text }))) : null,
     });
   }
 
   async #openText(text, name) {
-    const result = await this.#engine.request("open", "open", [text]);
+    // A record is computed again while it is opened.
+    const engine = /"answers"\s*:/.test(text) ? this.#heavy() : this.#engine;
+    const result = await engine.request("open", "open", [text]);
     if (result.text === undefined) {
       if (result.panic) {
         this.#notes.put("file", { kind: "fault", more: panicNode(result.panic, () => this.#openText(text, name), () => this.saveSheet()) });

@@ -2,7 +2,9 @@
 // tests/vectors/resonance_lines_fvalues.csv (wavelengths in air and vacuum, energy, A, f).
 
 import assert from "node:assert/strict";
-import { readFileSync } from "node:fs";
+import { mkdtempSync, readFileSync, writeFileSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
 import { everyDoor } from "../driver/door.mjs";
 
 const SODIUM = "v=1&species=Na&configurations.0=3s&configurations.1=3p&configurations.2=3d";
@@ -177,7 +179,7 @@ everyDoor("energies are computed apart from typing, and only where the sheet cha
   assert.equal(await door.text("#lines .say"), sentence);
   await door.evaluate(() => [...document.querySelectorAll("#lines .run button")].find((each) => each.textContent === "Start").click());
   await door.sentence("lines");
-  assert.match(await door.evaluate(() => location.hash), /structure\.scale\.F=~0\.5/);
+  await door.until(() => location.hash.includes("structure.scale.F=~0.5"));
   await door.until((old) => document.querySelector("#lines .say").textContent !== old, sentence);
 }, { fragment: CARBON, before: countAsked });
 
@@ -199,6 +201,20 @@ everyDoor("a value of one’s own replaces a computed parameter, and the table s
   assert.equal(await door.evaluate(() => document.querySelectorAll('[data-path^="/structure/given"]').length), 0);
   assert.deepEqual(door.troubles, []);
 }, { fragment: CARBON });
+
+everyDoor("a table of measured levels is opened, taken, and taken back", async (door) => {
+  const path = join(mkdtempSync(join(tmpdir(), "rungline-")), "levels.csv");
+  writeFileSync(path, `level,energy (cm-1)\n3s 2S1/2,0\n3p 2P1/2,${energy}\n9z 2Z1/2,5\n`);
+  await openLines(door);
+  await (await door.page.$("#file")).uploadFile(path);
+  await door.until(() => /2 measured levels taken/.test(document.getElementById("notes").textContent));
+  assert.match(await door.text("#notes"), /1 row was left out.*Line 4:/s);
+  await door.sentence("lines");
+  assert.equal((await resonance(door))["in vacuum"], (Number(vacuumAngstrom) / 10).toFixed(3));
+  await door.click("Undo");
+  await door.sentence("lines");
+  assert.notEqual((await resonance(door))["in vacuum"], (Number(vacuumAngstrom) / 10).toFixed(3));
+}, { fragment: SODIUM, doors: ["file"] });
 
 for (const [width, dark] of [[360, false], [820, true], [1400, false]]) {
   everyDoor(`levels and lines fit ${width} px and are free of what axe finds`, async (door) => {
