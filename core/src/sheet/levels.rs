@@ -27,6 +27,9 @@ use super::{ionised, levels_facts, parameter_rows};
 /// Above this many levels their lines, and so lifetimes, are not worked out.
 pub const MOST_LEVELS_WITH_LINES: usize = 2500;
 
+/// The most levels that are listed, the lowest ones; all of them count for everything else.
+pub const MAX_LEVELS: usize = 20_000;
+
 /// The answer.
 #[derive(Debug, Serialize)]
 pub struct Levels {
@@ -34,6 +37,7 @@ pub struct Levels {
     around: Around,
     species: Rich,
     levels: Vec<LevelRow>,
+    levels_total: usize,
     parameters: Vec<ParameterRow>,
     schemes: Vec<SchemeRow>,
     ground: Option<GroundRow>,
@@ -110,6 +114,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
             levels: found.counted,
         }),
         levels,
+        levels_total: solved.levels.len(),
         parameters,
         schemes,
         ground,
@@ -133,7 +138,7 @@ fn level_rows(
     let lowest = placed.lowest();
     let compositions = solved.compositions();
     let mut rows = Vec::with_capacity(solved.levels.len());
-    for place in &placed.order {
+    for place in placed.order.iter().take(MAX_LEVELS) {
         let Some(level) = solved.levels.get(*place) else {
             continue;
         };
@@ -215,9 +220,9 @@ fn ls_shares(
             let chain = chains.get(*state)?;
             let configuration = parity.configuration_of(parity.basis().states().get(*state)?)?;
             let entry = document.entries.get(*entries.get(configuration)?)?;
-            let times = often(chains, parity.basis().states(), *state);
+            let several = *solved.several.get(at.parity)?.get(*state)?;
             rows.push(ShareRow {
-                name: format!("{} {}", entry.label, term_name(chain, parity.odd, times)),
+                name: format!("{} {}", entry.label, term_name(chain, parity.odd, several)),
                 rich: chain_rich(chain, parity.odd),
                 percent: *percent,
             });
@@ -225,19 +230,6 @@ fn ls_shares(
         Some(rows)
     };
     parts().or_else(whole).unwrap_or_default()
-}
-
-/// Whether the term of a state occurs more than once in its configuration.
-fn often(chains: &[Chain], states: &[crate::structure::State], state: usize) -> bool {
-    let (Some(chain), Some(own)) = (chains.get(state), states.get(state)) else {
-        return false;
-    };
-    let twin = |(other, of): (&Chain, &crate::structure::State)| {
-        of.configuration == own.configuration
-            && other.term == chain.term
-            && other.index != chain.index
-    };
-    chains.iter().zip(states).any(twin)
 }
 
 fn term_name(chain: &Chain, odd: bool, several: bool) -> String {

@@ -37,7 +37,7 @@ pub fn sentence(told: &Told) -> Rich {
     } else {
         species.say(" has ")
     };
-    let say = say.count(told.levels.len(), "level here", "levels here");
+    let say = say.count(told.solved.levels.len(), "level here", "levels here");
     let Some(lowest) = told.levels.first() else {
         return say.say(".");
     };
@@ -367,6 +367,14 @@ pub fn limits(told: &Told) -> Vec<String> {
         ));
     }
     limits.extend(too_low(document, told.solved));
+    limits.extend(incomplete(told.solved));
+    if told.levels.len() < told.solved.levels.len() {
+        limits.push(format!(
+            "Of {} levels the {} lowest are listed.",
+            told.solved.levels.len(),
+            told.levels.len()
+        ));
+    }
     if let Some(balance) = told.ionisation {
         limits.push(format!(
             "The balance with the next ion counts the levels listed here and those of its {}; the limit is {}.",
@@ -405,6 +413,30 @@ pub fn too_low(document: &Document, solved: &Solved) -> Option<String> {
         "Levels of {other} that have the S and L of one of {one} can lie up to {:.0} cm⁻¹ too low, because their functions overlap: ⟨{}|{}′⟩ = {:.2}.",
         cross.too_low, cross.cross.a, cross.cross.c, cross.cross.overlap
     ))
+}
+
+/// Blocks too large to be diagonalised whole, of which the lowest levels were sought.
+pub fn incomplete(solved: &Solved) -> Option<String> {
+    let spectrum = solved.spectrum.as_ref()?;
+    let mut blocks = Vec::new();
+    for parity in &spectrum.parities {
+        let of = &parity.levels;
+        for rows in of.rows.iter().filter(|rows| !of.is_complete(rows.two_j)) {
+            let found = of.levels.iter().filter(|l| l.two_j == rows.two_j).count();
+            blocks.push(format!(
+                "{found} of {} with J = {}, {}",
+                rows.states.len(),
+                crate::quantity::TwiceJ::from_doubled(rows.two_j),
+                super::levels::parity(parity.odd)
+            ));
+        }
+    }
+    (!blocks.is_empty()).then(|| {
+        format!(
+            "Only the lowest levels were sought where there are very many: {}. What lies above is missing, also among the lines.",
+            blocks.join("; ")
+        )
+    })
 }
 
 pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Kind> {

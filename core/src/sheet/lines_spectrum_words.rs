@@ -8,7 +8,7 @@ use super::answer::Working;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
-use super::levels_words::{COMPUTED, rounded, too_low};
+use super::levels_words::{COMPUTED, incomplete, rounded, too_low};
 use super::light::{Surroundings, air_range};
 use super::line_rows::{LineRow, WindowRow};
 use super::lines_energies::WEAK;
@@ -248,6 +248,7 @@ pub fn limits(told: &Told) -> Vec<String> {
         }
         EnergyCase::Model { .. } => {}
     }
+    limits.extend(incomplete(told.solved));
     if told.lines.iter().any(|line| line.weak) {
         limits.push(format!(
             "Lines marked weak are what little is left of large terms that cancel (factor below {WEAK}): their strengths may be far off (common practice, no source)."

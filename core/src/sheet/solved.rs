@@ -10,6 +10,7 @@ use std::rc::Rc;
 use crate::configuration::{Orbital, Subshell};
 use crate::constants::HARTREE_WAVENUMBER;
 use crate::numerics::order::sort_by;
+use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::radial::hydrogenic::dirac;
@@ -92,6 +93,8 @@ pub struct Solved {
     pub spectrum: Option<Spectrum>,
     /// The coupling chain of every basis state, by parity.
     pub chains: Vec<Vec<Chain>>,
+    /// Whether the term of each of these states occurs more than once in its configuration.
+    pub several: Vec<Vec<bool>>,
     strengths: OnceCell<Strengths>,
     compositions: OnceCell<Compositions>,
 }
@@ -129,6 +132,7 @@ pub fn solved(document: &Document, watch: &mut Watch) -> Result<Rc<Solved>, Prob
             levels: one_electron(*z, *mass, orbitals)?,
             spectrum: None,
             chains: Vec::new(),
+            several: Vec::new(),
             case: case.clone(),
             labels,
             strengths: OnceCell::new(),
@@ -144,10 +148,12 @@ pub fn solved(document: &Document, watch: &mut Watch) -> Result<Rc<Solved>, Prob
                 .iter()
                 .map(|parity| basis_names::chains(parity.basis(), &spectrum.orbitals))
                 .collect();
+            let several = several(&spectrum, &chains);
             Solved {
-                levels: model_levels(&spectrum, &chains, entries, &labels),
+                levels: model_levels(&spectrum, (&chains, &several), entries, &labels),
                 spectrum: Some(spectrum),
                 chains,
+                several,
                 case: case.clone(),
                 labels,
                 strengths: OnceCell::new(),
@@ -171,7 +177,21 @@ fn place(document: &Document, problem: Problem) -> Problem {
         return problem;
     }
     let typed = document.entries.iter().any(|e| !e.path.is_empty());
+    let bound = problem.bound.as_deref().map(as_sentence);
+    let problem = Problem { bound, ..problem };
     problem.at(if typed { "/configurations" } else { "/species" })
+}
+
+/// A bound as the sheet tells it.
+fn as_sentence(bound: &str) -> String {
+    let mut letters = bound.chars();
+    let first = letters.next().map(|c| c.to_ascii_uppercase());
+    let end = if bound.ends_with('.') { "" } else { "." };
+    format!(
+        "{}{}{end}",
+        first.map(String::from).unwrap_or_default(),
+        letters.as_str()
+    )
 }
 
 fn spectrum(
@@ -214,30 +234,35 @@ pub fn told(label: &str, done: f64) -> Progress<'_> {
     }
 }
 
+/// A term that occurs once in its configuration has no number.
+fn several(spectrum: &Spectrum, chains: &[Vec<Chain>]) -> Vec<Vec<bool>> {
+    let of_parity = |(parity, chains): (&model::Parity, &Vec<Chain>)| {
+        let states = || parity.basis().states().iter().zip(chains);
+        let repeated: SortedMap<(usize, Term), ()> = states()
+            .filter(|(_, chain)| chain.index == 2)
+            .map(|(state, chain)| ((state.configuration, chain.term), ()))
+            .collect();
+        states()
+            .map(|(state, chain)| repeated.get(&(state.configuration, chain.term)).is_some())
+            .collect()
+    };
+    spectrum
+        .parities
+        .iter()
+        .zip(chains)
+        .map(of_parity)
+        .collect()
+}
+
 fn model_levels(
     spectrum: &Spectrum,
-    chains: &[Vec<Chain>],
+    (chains, several): (&[Vec<Chain>], &[Vec<bool>]),
     entries: &[usize],
     labels: &[String],
 ) -> Vec<SolvedLevel> {
     let names: Vec<Rc<str>> = labels
         .iter()
         .map(|label| Rc::from(label.as_str()))
-        .collect();
-    // A term that occurs once in its configuration has no number.
-    let times: Vec<crate::numerics::sorted_map::SortedMap<(usize, Term), u128>> = spectrum
-        .parities
-        .iter()
-        .zip(chains)
-        .map(|(parity, chains)| {
-            let mut times = crate::numerics::sorted_map::SortedMap::default();
-            for (state, chain) in parity.basis().states().iter().zip(chains) {
-                let key = (state.configuration, chain.term);
-                let so_far = times.get(&key).copied().unwrap_or(0);
-                times.insert(key, so_far.max(chain.index));
-            }
-            times
-        })
         .collect();
     let mut levels = Vec::with_capacity(spectrum.levels.len());
     for place in &spectrum.levels {
@@ -246,12 +271,11 @@ fn model_levels(
             let named = *parity.named.get(place.level)?;
             let state = parity.basis().states().get(named)?;
             let chain = chains.get(place.parity)?.get(named)?;
-            let times = times.get(place.parity)?;
-            let often = times.get(&(state.configuration, chain.term)).copied();
+            let several = *several.get(place.parity)?.get(named)?;
             let entry = *entries.get(parity.configuration_of(state)?)?;
             let own = Level {
                 term: chain.term,
-                index: (often > Some(1)).then_some(chain.index),
+                index: several.then_some(chain.index),
                 j: TwiceJ::from_doubled(level.two_j),
             };
             let configuration = Rc::clone(names.get(entry)?);
