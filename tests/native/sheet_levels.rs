@@ -373,3 +373,23 @@ fn the_next_ion_is_in_balance() {
     assert_eq!(balance["higher_partition"], 1.0);
     assert!(levels(&sheet("Na", &["3s"], json!({})))["ionisation"].is_null());
 }
+
+/// ³P₀ to ¹D₂ of Si I 3p²: 6298.85 cm⁻¹ by published tables, from memory.
+#[test]
+fn correlation_brings_terms_together() {
+    let above = |correlation: bool| {
+        let silicon = levels(&sheet(
+            "Si",
+            &["3p2"],
+            json!({"structure": {"correlation": correlation}}),
+        ));
+        let limits = silicon["limits"].to_string();
+        assert_eq!(limits.contains("in second order"), correlation, "{limits}");
+        let rows = silicon["parameters"].as_array().unwrap();
+        let alpha = rows.iter().find(|row| row["name"] == "alpha(3p)");
+        assert_eq!(alpha.is_some(), correlation);
+        number(&level(&silicon, "3p2 1D2")["above_lowest"])
+    };
+    near(above(true) / 6298.85, 1.0, 0.05, "with correlation");
+    assert!(above(false) > 1.2 * 6298.85);
+}

@@ -156,7 +156,7 @@ pub fn energy_case(document: &Document) -> Result<EnergyCase, Problem> {
         computed,
         relativity: document.structure.relativity,
         mixing: document.structure.mixing,
-        correlation: false,
+        correlation: document.structure.correlation,
         scale: Scale {
             f: scale.f,
             g: scale.g,

@@ -93,6 +93,7 @@ fn next(document: &Document, solved: &Solved, temperature: f64) -> Option<Next> 
     let asked = Case {
         relativity: case.relativity,
         scale: case.scale,
+        correlation: case.correlation,
         polarisation: case.polarisation.clone().filter(|_| !bare),
         ..Case::new(z, mass_number, vec![subshells])
     };

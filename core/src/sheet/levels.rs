@@ -12,11 +12,12 @@ use super::compositions::{Composition, Mean};
 use super::decays::Radiation;
 use super::document::Document;
 use super::energy_case::EnergyCase;
+use super::levels_limits::limits;
 use super::levels_rows::{
     BlockRow, GroundRow, IntervalRow, IonisationRow, LevelRow, ParameterRow, PartitionRow,
     SchemeRow, SeriesRow, ShareRow, Shared,
 };
-use super::levels_words::{Told, kinds, limits, sentence, working};
+use super::levels_words::{Told, kinds, sentence, working};
 use super::placed::Placed;
 use super::rich::{Rich, TermName};
 use super::solved::{Solved, solved};

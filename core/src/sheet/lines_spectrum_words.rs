@@ -8,7 +8,8 @@ use super::answer::Working;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
-use super::levels_words::{COMPUTED, incomplete, rounded, too_low};
+use super::levels_limits::{computed, incomplete, too_low};
+use super::levels_words::rounded;
 use super::light::{Surroundings, air_range};
 use super::line_rows::{LineRow, WindowRow};
 use super::lines_energies::WEAK;
@@ -233,7 +234,7 @@ fn air(told: &Told, case: Option<&LineRow>) -> Option<Working> {
 
 pub fn limits(told: &Told) -> Vec<String> {
     let mut limits = Vec::new();
-    let computed = told
+    let any_computed = told
         .lines
         .iter()
         .any(|line| line.energy_kind == Some(Kind::Computed));
@@ -242,8 +243,8 @@ pub fn limits(told: &Told) -> Vec<String> {
             "Electric dipole lines of one electron between Dirac’s levels, strengths without relativity; the Lamb shift and the spin of the nucleus are left out."
                 .to_owned(),
         ),
-        EnergyCase::Model { .. } if computed => {
-            limits.push(COMPUTED.to_owned());
+        EnergyCase::Model { case, .. } if any_computed => {
+            limits.extend(computed(case));
             limits.extend(too_low(told.document, told.solved));
         }
         EnergyCase::Model { .. } => {}

@@ -25,6 +25,7 @@ mod level_names;
 mod levels;
 mod levels_facts;
 mod levels_file;
+mod levels_limits;
 mod levels_rows;
 mod levels_words;
 mod light;

@@ -68,6 +68,7 @@ pub const SHEET: Shape = Group(&[
             ("energies", Choice(&ENERGIES)),
             ("relativity", Bool),
             ("mixing", Bool),
+            ("correlation", Bool),
             (
                 "scale",
                 Group(&[

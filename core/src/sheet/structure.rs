@@ -55,6 +55,8 @@ pub struct Structure {
     pub energies: Option<Energies>,
     /// Whether configurations of one parity mix.
     pub mixing: bool,
+    /// Whether correlation within subshells is added in second order.
+    pub correlation: bool,
     /// Of computed integrals.
     pub scale: Scale,
     /// Whether the radial equation holds the relativistic terms.
@@ -68,6 +70,7 @@ impl Default for Structure {
         Structure {
             energies: None,
             mixing: true,
+            correlation: false,
             scale: Scale::default(),
             relativity: true,
             polarisation: None,
@@ -87,6 +90,9 @@ impl Structure {
         }
         if let Some(Json::Bool(mixing)) = group.get("mixing") {
             structure.mixing = *mixing;
+        }
+        if let Some(Json::Bool(correlation)) = group.get("correlation") {
+            structure.correlation = *correlation;
         }
         let energies = group.get("energies").and_then(Json::as_text);
         structure.energies = match energies.and_then(|typed| choice(typed, &ENERGIES)) {

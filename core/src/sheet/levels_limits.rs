@@ -1,0 +1,158 @@
+//! What the answers on levels and lines leave out, and how far off that puts them.
+
+use crate::quantity::TwiceJ;
+use crate::structure::model::Case;
+
+use super::document::Document;
+use super::energy_case::EnergyCase;
+use super::levels::parity;
+use super::levels_words::Told;
+use super::rich::Kind;
+use super::solved::Solved;
+
+/// The limits of the answer on levels.
+pub fn limits(told: &Told) -> Vec<String> {
+    let mut limits = Vec::new();
+    let document = told.document;
+    match told.solved.case() {
+        EnergyCase::OneElectron { .. } => limits.push(
+            "One electron in the field of a point nucleus of finite mass; the Lamb shift and the spin of the nucleus are left out (in hydrogen 0.27 cm⁻¹ for 1s and 0.035 cm⁻¹ for 2s, from memory)."
+                .to_owned(),
+        ),
+        EnergyCase::Model { case, .. } => {
+            if case.computed {
+                limits.extend(computed(case));
+            } else {
+                limits.push(
+                    "Energies follow from the given parameters alone; what is not given is zero."
+                        .to_owned(),
+                );
+            }
+            if !case.mixing {
+                limits.push("Configurations do not mix, as the sheet asks.".to_owned());
+            }
+        }
+    }
+    if told.placed.pinned {
+        limits.push(
+            "Measured levels stand at their measured energies; a level without one keeps its computed distance from the nearest measured level of its configuration."
+                .to_owned(),
+        );
+    }
+    if let Some(anchor) = told
+        .placed
+        .anchor
+        .and_then(|place| told.solved.levels.get(place))
+    {
+        limits.push(format!(
+            "The measured energies count from {}, which is taken as zero.",
+            anchor.label
+        ));
+    }
+    limits.extend(too_low(document, told.solved));
+    limits.extend(incomplete(told.solved));
+    if told.levels.len() < told.solved.levels.len() {
+        limits.push(format!(
+            "Of {} levels the {} lowest are listed.",
+            told.solved.levels.len(),
+            told.levels.len()
+        ));
+    }
+    if let Some(balance) = told.ionisation {
+        limits.push(format!(
+            "The balance with the next ion counts the levels listed here and those of its {}; the limit is {}.",
+            balance.higher_configuration.as_deref().unwrap_or("bare nucleus"),
+            match balance.limit_kind {
+                Kind::Measured => "that of the measured series",
+                _ => "computed, mostly some thousand cm⁻¹ too low (common practice, no source)",
+            }
+        ));
+    }
+    limits.extend(document.unused());
+    limits
+}
+
+/// How far computed energies usually are from measured ones, by the validation report.
+pub fn computed(case: &Case) -> Vec<String> {
+    let terms = if case.correlation {
+        "first excited terms of one configuration within 2 % (worst 11 %), with correlation within subshells in second order"
+    } else {
+        "first excited terms of one configuration 6 to 46 % too high, unless correlation within subshells is asked for"
+    };
+    let mut limits = vec![format!(
+        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions with core polarisation, 2 % (worst 14 %) in alkaline-earth-like ones with mixing; {terms}; fine-structure intervals 5 %, nine of ten within 13 %. Pin measured energies for wavelengths to be compared with a spectrometer."
+    )];
+    if case.correlation && case.mixing && pairs_of_one_subshell(case) {
+        limits.push(
+            "Two of these configurations differ by two electrons of one subshell and mix, and correlation within subshells is added: what both describe counts twice. Without mixing or without correlation it counts once."
+                .to_owned(),
+        );
+    }
+    limits
+}
+
+/// Whether two configurations of one parity differ by two electrons that leave one subshell.
+fn pairs_of_one_subshell(case: &Case) -> bool {
+    let electrons = |place: usize, orbital| i64::from(case.electrons(place, orbital));
+    let places = 0..case.configurations.len();
+    places.clone().any(|one| {
+        places.clone().skip(one + 1).any(|other| {
+            let orbitals = case.orbitals();
+            let differences = || {
+                orbitals
+                    .iter()
+                    .map(|o| electrons(one, *o) - electrons(other, *o))
+            };
+            case.is_odd(one) == case.is_odd(other)
+                && differences().map(i64::abs).sum::<i64>() == 4
+                && differences().any(|difference| difference.abs() == 2)
+        })
+    })
+}
+
+/// The smallest fault of overlapping functions that is told, cm⁻¹.
+const LEAST_TOO_LOW: f64 = 100.0;
+
+/// What overlapping functions of two mixing configurations do to the upper one.
+pub fn too_low(document: &Document, solved: &Solved) -> Option<String> {
+    let EnergyCase::Model { entries, .. } = solved.case() else {
+        return None;
+    };
+    let cross = solved.spectrum.as_ref()?.largest_cross.as_ref()?;
+    if cross.too_low < LEAST_TOO_LOW {
+        return None;
+    }
+    let label = |place: usize| Some(&document.entries.get(*entries.get(place)?)?.label);
+    let (one, other) = (
+        label(cross.configurations.0)?,
+        label(cross.configurations.1)?,
+    );
+    Some(format!(
+        "Levels of {other} that have the S and L of one of {one} can lie up to {:.0} cm⁻¹ too low, because their functions overlap: ⟨{}|{}′⟩ = {:.2}.",
+        cross.too_low, cross.cross.a, cross.cross.c, cross.cross.overlap
+    ))
+}
+
+/// Blocks too large to be diagonalised whole, of which the lowest levels were sought.
+pub fn incomplete(solved: &Solved) -> Option<String> {
+    let spectrum = solved.spectrum.as_ref()?;
+    let mut blocks = Vec::new();
+    for of_parity in &spectrum.parities {
+        let of = &of_parity.levels;
+        for rows in of.rows.iter().filter(|rows| !of.is_complete(rows.two_j)) {
+            let found = of.levels.iter().filter(|l| l.two_j == rows.two_j).count();
+            blocks.push(format!(
+                "{found} of {} with J = {}, {}",
+                rows.states.len(),
+                TwiceJ::from_doubled(rows.two_j),
+                parity(of_parity.odd)
+            ));
+        }
+    }
+    (!blocks.is_empty()).then(|| {
+        format!(
+            "Only the lowest levels were sought where there are very many: {}. What lies above is missing, also among the lines.",
+            blocks.join("; ")
+        )
+    })
+}
