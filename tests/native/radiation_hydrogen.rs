@@ -2,10 +2,11 @@
 
 use rungline_core::configuration::Orbital;
 use rungline_core::quantity::TwiceJ;
-use rungline_core::radiation::Medium;
 use rungline_core::radiation::air::Air;
-use rungline_core::radiation::hydrogenic_lines::{binding, strength, transition};
+use rungline_core::radiation::hydrogenic_lines::{binding, gross_wavenumber, strength, transition};
 use rungline_core::radiation::isotope::{in_electron_masses, light_nucleus, normal_mass_shift};
+use rungline_core::radiation::rates::rates;
+use rungline_core::radiation::{Medium, Multipole};
 use rungline_tests::{Row, relative_error, report, vector_rows};
 
 fn mass(z: u8, mass_number: u32) -> f64 {
@@ -181,6 +182,17 @@ fn rates_grow_like_the_fourth_power_of_the_charge() {
     );
     assert!(relative_error(many.a, 4096.0 * one.a) < 1e-14);
     assert!(relative_error(many.gf, one.gf) < 1e-14);
+    let line = rates(
+        Multipole::E1,
+        1.0,
+        gross_wavenumber(2, 1, 8, None),
+        6.0,
+        2.0,
+    );
+    let component = many.components[0];
+    let expected = component.rates.gf / component.strength;
+    assert!(relative_error(line.expect("a line").gf, expected) < 1e-15);
+    assert_eq!(gross_wavenumber(2, 2, 1, None), 0.0);
     // (2/3)⁸ α³ of the atomic unit of rate, 4.134 137 333e16 s⁻¹ (CODATA): A of 2p – 1s in closed form,
     // 3/4 of which is the mean over the shell.
     let alpha = 0.007_297_352_564_3_f64;

@@ -103,15 +103,7 @@ pub fn transition(upper: u8, lower: u8, z: u8, mass: NuclearMass) -> Result<Tran
         fine_structure(upper, z, mass)?,
         fine_structure(lower, z, mass)?,
     );
-    let reduced = mass.map_or(1.0, |mass| mass / (1.0 + mass));
-    let [top, bottom] = [upper, lower].map(|n| f64::from(n) * f64::from(n));
-    // E_h = 2R∞: what S belongs to.
-    let gross = 0.5
-        * HARTREE_WAVENUMBER.value
-        * reduced
-        * f64::from(z)
-        * f64::from(z)
-        * (1.0 / bottom - 1.0 / top);
+    let gross = gross_wavenumber(upper, lower, z, mass);
     let mut components = Vec::new();
     for high in &above {
         for low in &below {
@@ -143,9 +135,25 @@ pub fn transition(upper: u8, lower: u8, z: u8, mass: NuclearMass) -> Result<Tran
         strength,
         centre: sum(|line| line.strength * line.wavenumber) / strength,
         gf: sum(|line| line.rates.gf),
-        a: sum(|line| line.upper.j.degeneracy() as f64 * line.rates.a) / (2.0 * top),
+        a: sum(|line| line.upper.j.degeneracy() as f64 * line.rates.a)
+            / (2.0 * f64::from(upper) * f64::from(upper)),
         components,
     })
+}
+
+/// Z² R_M (1/n′² − 1/n²) in cm⁻¹: the wavenumber without relativity, which the rates of a line between
+/// two shells belong to (see the module's head). Zero within one shell, whose lines only relativity
+/// makes: their rates are those of the true wavenumber.
+#[must_use]
+pub fn gross_wavenumber(upper: u8, lower: u8, z: u8, mass: NuclearMass) -> f64 {
+    let reduced = mass.map_or(1.0, |mass| mass / (1.0 + mass));
+    let [top, bottom] = [upper, lower].map(|n| f64::from(n) * f64::from(n));
+    // E_h = 2 R∞.
+    0.5 * HARTREE_WAVENUMBER.value
+        * reduced
+        * f64::from(z)
+        * f64::from(z)
+        * (1.0 / bottom - 1.0 / top)
 }
 
 /// The limit of ionisation above the level, cm⁻¹: its binding energy.
