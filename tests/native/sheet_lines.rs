@@ -263,3 +263,43 @@ fn the_splitting_takes_its_wavelength_from_the_energies() {
     assert_eq!(pinned["wavelength_kind"], "measured");
     near(number(&pinned["wavelength_nm"]), 589.7558, 1e-4, "pinned");
 }
+
+/// Hα of deuterium lies 4.15 cm⁻¹ above that of hydrogen (Urey's 1.79 Å at 6563 Å: published, from memory).
+#[test]
+fn isotopes_are_apart_by_their_masses() {
+    let answer = lines(&sheet("2H", &["n=2", "n=3"], json!({})));
+    let line = row(&answer, "3d 2D5/2", "2p 2P3/2", "E1");
+    near(number(&line["mass_shift"]), 4.15, 0.01, "normal mass shift");
+    let usual = lines(&sheet("H", &["n=2", "n=3"], json!({})));
+    let other = row(&usual, "3d 2D5/2", "2p 2P3/2", "E1");
+    let apart = number(&line["wavenumber"]) - number(&other["wavenumber"]);
+    near(apart, 4.15, 0.01, "both computed");
+    assert!(other["mass_shift"].is_null());
+}
+
+/// σ₀ = 1.4·10⁻¹⁵ m² scale of D2 at 500 K: √(ln 2/π) · 2πr₀cf/Δν_D with f = 0.64 and a Doppler width of
+/// 1.7 GHz is 1.2·10⁻¹⁵ m²; saturation 13 mW/cm² for light of all polarisations (both from memory).
+#[test]
+fn a_column_absorbs() {
+    let answer = lines(&sheet(
+        "Na",
+        &["3s", "3p"],
+        json!({"source": {"temperature": "500 K", "column": "1e15 m-2"},
+            "measured": {"3s 2S1/2": "0 cm-1", "3p 2P1/2": "16956.17 cm-1", "3p 2P3/2": "16973.366 cm-1"}}),
+    ));
+    let line = row(&answer, "3p 2P3/2", "3s 2S1/2", "E1");
+    let section = number(&line["cross_section"]);
+    near(section / 1.25e-15, 1.0, 0.25, "cross-section");
+    near(
+        number(&line["optical_depth"]) / (section * 1e15),
+        1.0,
+        1e-6,
+        "depth",
+    );
+    near(
+        number(&line["saturation_intensity"]) / 130.0,
+        1.0,
+        0.35,
+        "saturation",
+    );
+}

@@ -13,8 +13,8 @@ use crate::problem::Problem;
 /// The largest sheet that is read, in bytes of UTF-8.
 pub const MAX_SHEET_BYTES: usize = 5_000_000;
 
-/// The largest record that is read: it holds the answers too.
-pub const MAX_BYTES: usize = 40_000_000;
+/// The largest record that is read: it holds the answers too, with every line.
+pub const MAX_BYTES: usize = 120_000_000;
 
 /// The longest corrected text that a way out carries.
 pub const MAX_REPAIRED_BYTES: usize = 100_000;

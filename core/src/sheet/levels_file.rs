@@ -63,7 +63,7 @@ struct Columns {
 /// The pins in a table, for the levels of this document.
 pub fn read(document: &Document, text: &str) -> LevelsFile {
     let mut file = LevelsFile::default();
-    if text.len() > super::json::MAX_BYTES {
+    if text.len() > super::json::MAX_SHEET_BYTES {
         let problem = Problem::new(
             "file-too-large",
             format!("This table has {} bytes.", text.len()),
@@ -72,7 +72,7 @@ pub fn read(document: &Document, text: &str) -> LevelsFile {
         );
         file.faults.push(problem.bound(format!(
             "At most {} bytes are read.",
-            super::json::MAX_BYTES
+            super::json::MAX_SHEET_BYTES
         )));
         return file;
     }

@@ -71,6 +71,15 @@ pub struct LineRow {
     /// At the line's centre, where a column is entered.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub optical_depth: Option<f64>,
+    /// At the line's centre in absorption, m², where a column is entered.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub cross_section: Option<f64>,
+    /// W/m², where a column is entered.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub saturation_intensity: Option<f64>,
+    /// Normal mass shift from the usual isotope, cm⁻¹, where another one is entered.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub mass_shift: Option<f64>,
     /// Share of the multiplet in pure LS coupling.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub relative: Option<f64>,
@@ -109,6 +118,9 @@ impl LineRow {
             intensity: None,
             absorption: None,
             optical_depth: None,
+            cross_section: None,
+            saturation_intensity: None,
+            mass_shift: None,
             relative: None,
             multiplet: None,
             spin_note: None,

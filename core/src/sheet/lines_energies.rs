@@ -4,9 +4,9 @@ use std::rc::Rc;
 
 use crate::constants::BOLTZMANN_WAVENUMBER;
 use crate::numerics::sorted_map::SortedMap;
-use crate::radiation::Multipole;
-use crate::radiation::absorption::{centre_cross_section, optical_depth};
+use crate::radiation::absorption::{centre_cross_section, optical_depth, saturation_intensity};
 use crate::radiation::populations::{Partition, Weighted};
+use crate::radiation::{Multipole, isotope};
 
 use super::compositions::Composition;
 use super::decays::{Line, Radiation};
@@ -17,6 +17,7 @@ use super::levels_rows::Shared;
 use super::light::Surroundings;
 use super::line_rows::LineRow;
 use super::lines_relative::Judgement;
+use super::orbitals_closed::mass_number_of;
 use super::placed::Placed;
 use super::rich::Kind;
 use super::solved::{Solved, SolvedLevel};
@@ -59,6 +60,7 @@ impl Source<'_> {
         let mut rows = Vec::with_capacity(self.radiation.lines.len());
         let (mut brightest, mut darkest) = (0.0_f64, 0.0_f64);
         let mut notes = Notes::default();
+        let isotopes = self.isotopes();
         for line in &self.radiation.lines {
             let (Some(upper), Some(lower)) = (self.level(line.upper), self.level(line.lower))
             else {
@@ -70,6 +72,8 @@ impl Source<'_> {
                 row.relative = *relative;
                 row.multiplet = multiplet.cloned();
             }
+            row.mass_shift = isotopes
+                .and_then(|(from, to)| isotope::normal_mass_shift(row.wavenumber?, from, to).ok());
             if line.multipole == Multipole::E1 {
                 row.spin_note = self.spin_note(line, &mut notes);
             }
@@ -151,14 +155,18 @@ impl Source<'_> {
             return;
         };
         let decay = |place: usize| self.radiation.decays.get(place).map_or(0.0, |d| d.rate);
-        row.optical_depth = self.mass().and_then(|mass| {
-            let cross_section = centre_cross_section(
-                rates.f,
-                line.wavenumber,
-                filled.temperature,
-                mass,
-                decay(line.upper) + decay(line.lower),
-            )?;
+        let (total, own) = (decay(line.upper) + decay(line.lower), decay(line.upper));
+        row.saturation_intensity = saturation_intensity(
+            line.wavenumber,
+            rates.a,
+            own,
+            lower.weight(),
+            upper.weight(),
+        );
+        row.cross_section = self.mass().and_then(|mass| {
+            centre_cross_section(rates.f, line.wavenumber, filled.temperature, mass, total)
+        });
+        row.optical_depth = row.cross_section.and_then(|cross_section| {
             optical_depth(
                 cross_section,
                 column,
@@ -168,13 +176,25 @@ impl Source<'_> {
         });
     }
 
+    /// Masses of the nuclei of the usual and of the entered isotope in u, where another one is entered.
+    fn isotopes(&self) -> Option<(f64, f64)> {
+        let species = self.document.species?;
+        let (z, entered) = (species.element?, species.mass_number?);
+        let (usual, _) = mass_number_of(z, None);
+        let mass = |number: u16| {
+            isotope::light_nucleus(z, number.into())
+                .unwrap_or_else(|| isotope::nuclear_mass(number.into(), z))
+        };
+        (usual != entered).then(|| (mass(usual), mass(entered)))
+    }
+
     /// Mass of the atom in u, by its mass number.
     fn mass(&self) -> Option<f64> {
         match self.solved.case() {
             EnergyCase::Model { case, .. } => case.nucleus.map(|(_, number)| f64::from(number)),
             EnergyCase::OneElectron { z, .. } => {
                 let typed = self.document.species.and_then(|s| s.mass_number);
-                let (number, _) = super::orbitals_closed::mass_number_of(*z, typed);
+                let (number, _) = mass_number_of(*z, typed);
                 Some(f64::from(number))
             }
         }

@@ -255,6 +255,12 @@ pub fn limits(told: &Told) -> Vec<String> {
             "Lines marked weak are what little is left of large terms that cancel (factor below {WEAK}): their strengths may be far off (common practice, no source)."
         ));
     }
+    if told.lines.iter().any(|line| line.mass_shift.is_some()) {
+        limits.push(
+            "The mass shift is the normal one, from the usual isotope to the one entered; the specific mass shift and that by the size of the nucleus are left out, and can be as large or larger (common practice, no source)."
+                .to_owned(),
+        );
+    }
     if !told.refused_listed {
         limits.push(format!(
             "With more than {} pairs of levels the refused ones are counted, not listed.",
@@ -302,6 +308,9 @@ pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Ki
         ("lines.intensity", Kind::Computed),
         ("lines.absorption", Kind::Computed),
         ("lines.optical_depth", Kind::Computed),
+        ("lines.cross_section", Kind::Computed),
+        ("lines.saturation_intensity", Kind::Computed),
+        ("lines.mass_shift", Kind::Computed),
         ("lines.relative", Kind::Computed),
         ("levels.energy", energy),
         ("levels.above_lowest", energy),

@@ -203,18 +203,7 @@ fn compare(name: &str, was: Option<&Json>, now: Option<&Json>, moved: &mut Vec<M
 pub fn record(sheet: &Json, watch: &mut Watch) -> Result<String, Vec<Problem>> {
     let document = Document::read(sheet);
     let answers = answers(&document, None, watch)?;
-    let mut cautions = Vec::new();
-    if let Some(Json::Object(entries)) = json::read_own(&answers) {
-        for (_, answer) in entries {
-            if let Some(Json::List(texts)) = answer.get("cautions") {
-                for caution in texts.iter().filter_map(Json::as_text) {
-                    if !cautions.iter().any(|c| c == caution) {
-                        cautions.push(caution.to_owned());
-                    }
-                }
-            }
-        }
-    }
+    let cautions = cautions(&answers);
     let indented = super::pretty(sheet).trim_end().replace('\n', "\n  ");
     let parts = [
         "\"rungline\": 1".to_owned(),
@@ -225,4 +214,23 @@ pub fn record(sheet: &Json, watch: &mut Watch) -> Result<String, Vec<Problem>> {
         format!("\"answers\": {answers}"),
     ];
     Ok(format!("{{\n  {}\n}}\n", parts.join(",\n  ")))
+}
+
+/// The cautions of all answers, each once.
+///
+/// They are looked for in the text, which can be very long: a quotation mark inside a text is escaped, so
+/// the key stands nowhere else.
+fn cautions(answers: &str) -> Vec<String> {
+    const KEY: &str = "\"cautions\":";
+    let mut cautions: Vec<String> = Vec::new();
+    for (start, _) in answers.match_indices(KEY) {
+        let rest = answers.get(start + KEY.len()..).unwrap_or_default();
+        let mut values = serde_json::Deserializer::from_str(rest).into_iter::<Vec<String>>();
+        for caution in values.next().and_then(Result::ok).unwrap_or_default() {
+            if !cautions.contains(&caution) {
+                cautions.push(caution);
+            }
+        }
+    }
+    cautions
 }
