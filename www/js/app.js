@@ -306,7 +306,7 @@ class Page {
     if (fault === undefined) return;
     if (/^\/(species|configurations)/.test(fault.path)) this.head.unfold(true, false);
     else if (/^\/(field|line)/.test(fault.path)) this.rungs.find((rung) => rung.name === "splitting")?.rung.unfold(true);
-    else if (/^\/(window|medium|source|refractive_index|air|measured|structure\/(energies|mixing|scale|given))/.test(fault.path)) this.rungOf("lines").unfold(true);
+    else if (/^\/(window|medium|source|refractive_index|air|measured|structure\/(energies|mixing|correlation|scale|given))/.test(fault.path)) this.rungOf("lines").unfold(true);
     else if (/^\/structure/.test(fault.path)) {
       this.rungOf("states").unfold(true);
       this.orbitalsPart.open();

@@ -184,13 +184,14 @@ export class Fields {
   }
 }
 
-/** A yes-or-no entry that is yes unless the sheet says no. */
-export function flagField({ store, setField }, path, label, short) {
+/** A yes-or-no entry; what it `usual`ly is need not stand in the sheet. */
+export function flagField({ store, setField }, path, label, short, usual = true) {
   const box = element("input", { type: "checkbox", "data-path": path });
   const fill = () => {
-    box.checked = valueAt(store.sheet, path) !== false;
+    const value = valueAt(store.sheet, path);
+    box.checked = typeof value === "boolean" ? value : usual;
   };
-  box.addEventListener("change", () => setField(path, box.checked ? undefined : false, `${short} ${box.checked ? "on" : "off"}`));
+  box.addEventListener("change", () => setField(path, box.checked === usual ? undefined : box.checked, `${short} ${box.checked ? "on" : "off"}`));
   store.subscribe(fill);
   fill();
   return element("label", { class: "check" }, box, element("span", { text: label }));

@@ -76,6 +76,7 @@ export const UNITS = {
   "Å": { runs: [{ text: "Å" }], speech: "ångström", latex: "\\AA{}" },
   eV: { runs: [{ text: "eV" }], speech: "electron volts" },
   THz: { runs: [{ text: "THz" }], speech: "terahertz" },
+  "m-3": { runs: [{ text: "m" }, { up: "\u22123" }], speech: "per cubic metre", latex: "m$^{-3}$" },
   K: { runs: [{ text: "K" }], speech: "kelvins" },
   "°": { runs: [{ text: "°" }], speech: "degrees", latex: "$^\\circ$" },
   "%": { runs: [{ text: "%" }], speech: "per cent", latex: "\\%" },

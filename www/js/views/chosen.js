@@ -57,7 +57,8 @@ export function shares(composition) {
   return composition.flatMap(({ rich, name, percent }, i) => [`${i > 0 ? ", " : ""}${Number(percent.toPrecision(3))} % `, ...(rich?.length ? rich : [name])]);
 }
 
-function facts(context, rows) {
+/** Named numbers with unit and kind: [[name, value, unit, kind]]; unknown ones are left out. */
+export function facts(context, rows) {
   return element("dl", { class: "facts" }, ...rows.filter(([, value]) => value !== null && value !== undefined).map(([name, value, unit, kind]) => element("div", { class: "pair-line" },
     element("dt", { text: name }), element("dd", {}, richNode([{ number: { text: String(value), unit, kind } }], context.settings)))));
 }

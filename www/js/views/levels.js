@@ -3,7 +3,7 @@
 import { element } from "../dom.js";
 import { richNode, richPlain } from "../rich.js";
 import { dataTable } from "../table.js";
-import { shares } from "./chosen.js";
+import { facts, shares } from "./chosen.js";
 import { fold, select } from "./fold.js";
 import { kindOf } from "./working.js";
 
@@ -31,8 +31,18 @@ function levelsPart(whole, levels, endsOf, context) {
   fill();
   return [
     groundNode(whole, context), schemesNode(whole), element("div", { class: "choices" }, scheme.node), box,
+    whole.ionisation ? balanceNode(whole, context) : null,
     whole.partition ? element("p", { class: "note" }, richNode(partitionWords(whole), context.settings)) : null,
   ];
+}
+
+function balanceNode({ ionisation: found, kinds }, context) {
+  const kind = (key) => kinds[`ionisation.${key}`] ?? null;
+  return element("div", {}, element("p", { class: "note", text: "Balance with the next ion, by Saha’s equation:" }), facts(context, [
+    ["next ions for each of these", found.ratio, null, kind("ratio")], ["share ionised", found.ionised, null, kind("ratio")],
+    ["ionisation limit", found.limit, "cm-1", found.limit_kind], ["lowered by", found.lowering, "cm-1", kind("lowering")],
+    ["temperature", found.temperature, "K", "entered"], ["electron density", found.electron_density, "m-3", "entered"],
+  ]));
 }
 
 function partitionWords(whole) {
