@@ -202,6 +202,21 @@ everyDoor("a value of one’s own replaces a computed parameter, and the table s
   assert.deepEqual(door.troubles, []);
 }, { fragment: CARBON });
 
+// Carbon's 2p² ¹D₂ lies 10192.66 cm⁻¹ above ³P₀ and 10149.25 above ³P₂ (from memory).
+everyDoor("correlation in a subshell is a choice, and brings carbon’s first excited term where it is observed", async (door) => {
+  await openLines(door);
+  const above = () => door.evaluate(() => {
+    const row = document.querySelector('#lines tr[data-id="line:2p2 3P2/2p2 1D2/M1"]');
+    return row && Number(row.cells[2].textContent);
+  });
+  const without = await above();
+  assert.ok(without / 10149.25 > 1.15, String(without));
+  await door.click("Electrons of a subshell avoid each other (second order)");
+  await door.until((old) => Number(document.querySelector('#lines tr[data-id="line:2p2 3P2/2p2 1D2/M1"]').cells[2].textContent) !== old, without);
+  assert.ok(Math.abs((await above()) / 10149.25 - 1) < 0.1, String(await above()));
+  await door.until(() => location.hash.includes("structure.correlation=~true"));
+}, { fragment: "v=1&species=C&configurations.0=2p2" });
+
 everyDoor("a table of measured levels is opened, taken, and taken back", async (door) => {
   const path = join(mkdtempSync(join(tmpdir(), "rungline-")), "levels.csv");
   writeFileSync(path, `level,energy (cm-1)\n3s 2S1/2,0\n3p 2P1/2,${energy}\n9z 2Z1/2,5\n`);
