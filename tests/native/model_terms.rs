@@ -92,10 +92,10 @@ fn row(quantity: String, deviations: &[f64], worst: f64, tolerance: f64) -> Row 
     }
 }
 
-#[test]
-fn intervals_of_ground_terms() {
+/// The intervals, and how far half and nine tenths of them deviate.
+fn intervals(correlation: bool, name: &str, what: &str) {
     let mut deviations = Vec::new();
-    for (name, pairs) in ions(false) {
+    for (ion, pairs) in ions(correlation) {
         for pair in pairs.windows(2) {
             let [a, b] = pair else { continue };
             if a.term != b.term || a.term != pairs[0].term {
@@ -104,7 +104,7 @@ fn intervals_of_ground_terms() {
             let (observed, computed) = (b.observed - a.observed, b.computed - a.computed);
             let deviation = computed / observed - 1.0;
             println!(
-                "{name} 2J = {} to {}: {computed:.1}, observed {observed:.1}, {:+.1} %",
+                "{ion} 2J = {} to {}: {computed:.1}, observed {observed:.1}, {:+.1} %",
                 a.two_j,
                 b.two_j,
                 100.0 * deviation
@@ -113,26 +113,29 @@ fn intervals_of_ground_terms() {
         }
     }
     let worst = quantile(&deviations, 1.0);
-    println!("worst {worst:.2}");
-    report(
-        "structure_model_intervals_median",
-        row(
-            "fine-structure intervals of ground terms, Z ≤ 54, nothing fitted: median".into(),
-            &deviations,
-            quantile(&deviations, 0.5),
-            0.10,
-        ),
-    );
-    report(
-        "structure_model_intervals",
-        row(
-            format!(
-                "fine-structure intervals of ground terms, Z ≤ 54, nothing fitted: 90 % of them (worst {worst:.2})"
-            ),
-            &deviations,
-            quantile(&deviations, 0.9),
-            0.25,
-        ),
+    for (part, share, tolerance) in [("median", 0.5, 0.10), ("90 % of them", 0.9, 0.25)] {
+        let quantity = format!(
+            "fine-structure intervals of ground terms, Z ≤ 54, nothing fitted, {what}: {part} (worst {worst:.2})"
+        );
+        let reached = quantile(&deviations, share);
+        report(
+            &format!("{name}_{}", (100.0 * share) as u8),
+            row(quantity, &deviations, reached, tolerance),
+        );
+    }
+}
+
+#[test]
+fn intervals_of_ground_terms() {
+    intervals(false, "structure_model_intervals", "average functions");
+}
+
+#[test]
+fn intervals_of_ground_terms_with_correlation() {
+    intervals(
+        true,
+        "structure_model_intervals_correlation",
+        "correlation in second order",
     );
 }
 

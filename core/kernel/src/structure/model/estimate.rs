@@ -59,7 +59,7 @@ pub fn estimate(case: &Case) -> Result<Estimate, Problem> {
             if case.correlation {
                 let open = atom.subshells.iter().filter(|s| s.is_open());
                 let several = open.filter(|s| s.electrons() > 1 && s.orbital().l() > 0);
-                found.field_seconds += 0.2 * several.count() as f64;
+                found.field_seconds += 0.1 * several.count() as f64;
             }
         }
     }
