@@ -26,7 +26,7 @@ export function lineFields(fields, questions, { store, view, setField, openCsv }
         row(wordField({ store, setField }, "/structure/energies", "Energies", [["", "computed"], ["given", "from given values alone"]]),
           element("div", { class: "flags" },
             flagField({ store, setField }, "/structure/mixing", "Configurations mix", "Mixing"),
-            flagField({ store, setField }, "/structure/correlation", "Electrons of a subshell avoid each other (second order)", "Correlation", false))),
+            flagField({ store, setField }, "/structure/correlation", "Correlation within subshells, second order", "Correlation", false))),
         row(scale("F", "Scale of F"), scale("G", "Scale of G"), scale("R", "Scale of R"), scale("zeta", "Scale of ζ")),
         namedRows({
           fields, store, path: "/structure/given",

@@ -211,7 +211,7 @@ everyDoor("correlation in a subshell is a choice, and brings carbon’s first ex
   });
   const without = await above();
   assert.ok(without / 10149.25 > 1.15, String(without));
-  await door.click("Electrons of a subshell avoid each other (second order)");
+  await door.click("Correlation within subshells, second order");
   await door.until((old) => Number(document.querySelector('#lines tr[data-id="line:2p2 3P2/2p2 1D2/M1"]').cells[2].textContent) !== old, without);
   assert.ok(Math.abs((await above()) / 10149.25 - 1) < 0.1, String(await above()));
   await door.until(() => location.hash.includes("structure.correlation=~true"));
