@@ -4,7 +4,7 @@
 import { BOTTOM_AXIS, bottomAxis, linearScale, tickText } from "./axis.js";
 
 const LEFT = 62;
-const RIGHT = 16;
+const RIGHT = 24;
 const TOP = 34;
 /** Powers of ten that a logarithmic height spans. */
 export const DECADES = 6;
@@ -60,7 +60,8 @@ export function stickLayout({ sticks, from, to, title, height: heightTitle, loga
           if (stick.weak && wedges) pen.polygon([[x - 5, up(stick) - 10], [x + 5, up(stick) - 10], [x, up(stick) - 2]], { fill: "sheet", stroke: "ink", width: 1.5 });
         }
         const decimals = Math.max(0, 2 - Math.floor(Math.log10((high - low) / 10)));
-        for (const stick of named(shown, scale, width)) pen.text(scale(stick.x), up(stick) - (stick.weak ? 13 : 5), tickText(stick.x, decimals), { anchor: "middle" });
+        for (const stick of named(shown, scale, width)) pen.text(scale(stick.x), up(stick) - (stick.weak ? 13 : 5), tickText(stick.x, decimals), { anchor: anchorAt(scale(stick.x), width) });
+        if (absorbs) pen.text(LEFT + 6, bottom - 12, "absorbed, strongest = 1", { fill: "quiet", halo: "sheet" });
         bottomAxis(pen, { scale, from: low, to: high, left: LEFT, right: width - RIGHT, y: bottom, title });
       },
     };
@@ -71,6 +72,10 @@ function heights(logarithmic) {
   return logarithmic ? [1, 2 / 3, 1 / 3, 0].map((share) => [share, [{ text: "10" }, { up: `\u2212${Math.round((1 - share) * DECADES)}`.replace("\u22120", "0") }]]) : [[1, "1"], [0.5, "0.5"], [0, "0"]];
 }
 
+function anchorAt(x, width) {
+  return x < LEFT + 24 ? "start" : x > width - RIGHT - 24 ? "end" : "middle";
+}
+
 // The strongest sticks that have room for a name.
 function named(shown, scale, width) {
   const chosen = [];
@@ -78,7 +83,6 @@ function named(shown, scale, width) {
   for (const stick of [...shown].sort((a, b) => b.up - a.up)) {
     if (chosen.length >= most || stick.up <= 0) break;
     const x = scale(stick.x);
-    if (x < LEFT + 24 || x > width - RIGHT - 24) continue;
     if (chosen.every((other) => Math.abs(scale(other.x) - x) >= APART)) chosen.push(stick);
   }
   return chosen;
