@@ -64,7 +64,7 @@ impl Radiation {
                 rates: rates(
                     found.multipole,
                     found.s,
-                    wavenumber,
+                    found.rated_at.unwrap_or(wavenumber),
                     weight(upper),
                     weight(lower),
                 ),

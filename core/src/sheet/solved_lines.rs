@@ -2,7 +2,8 @@
 
 use crate::configuration::Orbital;
 use crate::problem::Problem;
-use crate::radiation::{Multipole, hydrogenic_lines};
+use crate::radiation::Multipole;
+use crate::radiation::hydrogenic_lines::{self, gross_wavenumber};
 use crate::structure::model::{MultipoleKind, Value};
 
 use super::energy_case::EnergyCase;
@@ -22,6 +23,8 @@ pub struct Strength {
     pub s: f64,
     /// Cancellation factor.
     pub cancellation: f64,
+    /// The wavenumber that rates belong to, where it is not the line's own.
+    pub rated_at: Option<f64>,
 }
 
 /// All of them, with the radial integrals behind.
@@ -53,6 +56,7 @@ pub fn strengths(solved: &Solved, watch: &mut Watch) -> Result<Strengths, Proble
         },
         s: line.s,
         cancellation: line.cancellation,
+        rated_at: None,
     };
     Ok(Strengths {
         lines: found.lines.iter().map(line).collect(),
@@ -72,6 +76,7 @@ fn one_electron(solved: &Solved) -> Result<Strengths, Problem> {
                 continue;
             };
             let s = hydrogenic_lines::strength(b, a, *z, Some(*mass))?;
+            let gross = gross_wavenumber(b.0.n(), a.0.n(), *z, Some(*mass)).abs();
             if s > 0.0 {
                 lines.push(Strength {
                     upper,
@@ -79,6 +84,8 @@ fn one_electron(solved: &Solved) -> Result<Strengths, Problem> {
                     multipole: Multipole::E1,
                     s,
                     cancellation: 1.0,
+                    // Strengths without relativity and the gross wavenumber belong together.
+                    rated_at: (gross > 0.0).then_some(gross),
                 });
             }
         }
