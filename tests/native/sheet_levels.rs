@@ -322,7 +322,7 @@ fn what_cannot_be_answered_is_told() {
     );
     assert_eq!(
         codes(&sheet("Ne", &["2p6"], json!({}))),
-        ["needs-a-configuration"]
+        ["needs-an-open-shell"]
     );
     assert_eq!(
         codes(&sheet("*", &["3p2"], json!({}))),
@@ -392,4 +392,27 @@ fn correlation_brings_terms_together() {
     };
     near(above(true) / 6298.85, 1.0, 0.05, "with correlation");
     assert!(above(false) > 1.2 * 6298.85);
+}
+
+#[test]
+fn what_is_kept_costs_nothing_again() {
+    let estimate = |sheet: &Value, question: &str| -> (f64, f64) {
+        let text = rungline_core::sheet::estimate_message(
+            &serde_json::from_value(sheet.clone()).unwrap(),
+            question,
+        );
+        let found: Value = serde_json::from_str(&text).unwrap();
+        (number(&found["seconds"]), number(&found["megabytes"]))
+    };
+    let chromium = sheet("Cr", &["3d5 4s", "3d5 4p"], json!({}));
+    let (cold, megabytes) = estimate(&chromium, "levels");
+    assert!(cold > 0.05 && megabytes > 5.0, "{cold} s, {megabytes} MB");
+    let lines = estimate(&chromium, "lines").0;
+    levels(&chromium);
+    assert!(estimate(&chromium, "levels").0 < 0.5 * cold);
+    // Another temperature or window asks for rows alone.
+    let mut warm = chromium;
+    warm["source"] = json!({"temperature": "4000 K"});
+    warm["window"] = json!(["400 nm", "500 nm"]);
+    assert!(estimate(&warm, "lines").0 < 0.8 * lines);
 }

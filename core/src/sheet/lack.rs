@@ -81,7 +81,10 @@ pub fn lack(document: &Document, question: Question) -> Option<Lack> {
         }),
         Question::Levels => super::energy_case::need(document).map(|(code, needs)| {
             if code == "needs-an-open-shell" {
-                return second_configuration(document, first, &needs);
+                return Lack {
+                    code,
+                    ..second_configuration(document, first, &needs)
+                };
             }
             Lack {
                 code,

@@ -236,7 +236,7 @@ pub fn estimate_message(sheet: &Json, question: &str) -> String {
     let (seconds, megabytes) = match Question::named(question) {
         Some(Question::States) => rows(states::rows(&document)),
         Some(Question::Orbitals) => orbitals::estimate(&document),
-        Some(Question::Levels) => solved::estimate(&document, true),
+        Some(Question::Levels) => solved::estimate(&document, false),
         Some(Question::Lines) if energy_case::need(&document).is_none() => {
             solved::estimate(&document, true)
         }

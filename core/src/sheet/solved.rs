@@ -22,6 +22,7 @@ use super::basis_names;
 use super::compositions::{Compositions, compositions};
 use super::document::{Document, LevelOf};
 use super::energy_case::{EnergyCase, energy_case};
+use super::levels::MOST_LEVELS_WITH_LINES;
 use super::orbitals_cache;
 use super::orbitals_field::solution;
 use super::rich::{Piece, Rich, TermName};
@@ -363,7 +364,7 @@ impl Solved {
     }
 }
 
-/// Seconds and megabytes that levels, and with `lines` also lines, take beyond what is kept.
+/// Seconds and megabytes that the answer on levels, or with `lines` on lines, takes beyond what is kept.
 pub fn estimate(document: &Document, lines: bool) -> (f64, f64) {
     let Ok(case) = energy_case(document) else {
         return (0.0, 0.0);
@@ -388,9 +389,18 @@ pub fn estimate(document: &Document, lines: bool) -> (f64, f64) {
         seconds += fields + (expected.seconds - expected.field_seconds).max(0.0);
         bytes += expected.bytes as f64;
     }
-    if lines && known.is_none_or(|solved| solved.strengths.get().is_none()) {
-        seconds += SECONDS_FOR_EACH_PAIR * rows;
-        bytes += BYTES_FOR_EACH_PAIR * rows;
+    if levels <= MOST_LEVELS_WITH_LINES as f64
+        && known.is_none_or(|solved| solved.strengths.get().is_none())
+    {
+        seconds += SECONDS_FOR_A_PAIR * rows;
+        bytes += BYTES_FOR_A_PAIR * rows;
+    }
+    if lines {
+        seconds += SECONDS_FOR_A_PAIR_IN_ROWS * rows;
+        bytes += BYTES_FOR_A_PAIR_IN_ROWS * rows;
+    } else {
+        seconds += SECONDS_FOR_A_LEVEL * levels;
+        bytes += BYTES_FOR_A_LEVEL * levels;
     }
     (seconds, bytes * 1e-6)
 }
@@ -403,9 +413,14 @@ pub fn cold_seconds(document: &Document) -> Option<f64> {
     }
 }
 
-/// Measured: lines of all multipoles, written out, over the pairs of levels.
-const SECONDS_FOR_EACH_PAIR: f64 = 1.5e-6;
-const BYTES_FOR_EACH_PAIR: f64 = 400.0;
+/// Measured with four configurations of neutral iron and with f⁷, natively times 1.6 for a browser: strengths
+/// of all multipoles and the rows of lines over the pairs of levels, compositions and rows over the levels.
+const SECONDS_FOR_A_PAIR: f64 = 3.5e-7;
+const BYTES_FOR_A_PAIR: f64 = 60.0;
+const SECONDS_FOR_A_PAIR_IN_ROWS: f64 = 9e-7;
+const BYTES_FOR_A_PAIR_IN_ROWS: f64 = 340.0;
+const SECONDS_FOR_A_LEVEL: f64 = 1e-4;
+const BYTES_FOR_A_LEVEL: f64 = 2e4;
 
 fn orbitals_missing(atom: &crate::radial::hartree_fock::Atom) -> bool {
     !orbitals_cache::has(atom)
