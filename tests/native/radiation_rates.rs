@@ -1,7 +1,13 @@
 //! Strength, oscillator strength and transition probability against published factors and tables.
 
+use rungline_core::configuration::Orbital;
+use rungline_core::constants::RYDBERG;
+use rungline_core::quantity::TwiceJ;
+use rungline_core::radial::hydrogenic::multipole;
 use rungline_core::radiation::Multipole;
 use rungline_core::radiation::rates::{decays, rates, wavelength_factor};
+use rungline_core::radiation::strengths::magnetic_dipole;
+use rungline_core::terms::Term;
 use rungline_tests::{Row, relative_error, report, vector_rows};
 
 #[test]
@@ -30,6 +36,59 @@ fn factors_of_the_handbook() {
             source: "Martin & Wiese 2006, from memory".into(),
         },
     );
+}
+
+#[test]
+fn forbidden_lines_within_a_term() {
+    // M1 lines within one term need no radial function: S of pure LS coupling gives A to the part of
+    // the level that is pure. J and J′ doubled, wavelength in vacuum in Å, A in s⁻¹ (from memory, every
+    // table of forbidden lines, e.g. Osterbrock & Ferland, *Astrophysics of Gaseous Nebulae*, 2006).
+    let published = [
+        ("[C II] 158 µm", (2, 1), (3, 1), 1_577_409.0, 2.29e-6),
+        ("[O I] 63 µm", (3, 1), (2, 4), 631_837.0, 8.91e-5),
+        ("[C I] 609 µm", (3, 1), (2, 0), 6_091_350.0, 7.93e-8),
+        ("[O III] 88 µm", (3, 1), (2, 0), 883_560.0, 2.61e-5),
+        ("[Ne II] 12.8 µm", (2, 1), (1, 3), 128_135.0, 8.59e-3),
+        ("[Fe XIV] 530 nm", (2, 1), (3, 1), 5_304.5, 60.2),
+    ];
+    let mut worst = 0.0_f64;
+    for (_, (multiplicity, l), (upper, lower), wavelength, a) in published {
+        let term = Term {
+            two_s: multiplicity - 1,
+            l,
+        };
+        let [upper, lower] = [upper, lower].map(TwiceJ::from_doubled);
+        let strength = magnetic_dipole(term, upper, lower);
+        let [above, below] = [upper, lower].map(|j| j.degeneracy() as f64);
+        let line = rates(Multipole::M1, strength, 1e8 / wavelength, above, below);
+        let found = line.expect("a line").a;
+        worst = worst.max(relative_error(found, a));
+    }
+    report(
+        "radiation-forbidden",
+        Row {
+            quantity: "A of M1 lines within one term".into(),
+            cases: published.len(),
+            worst,
+            tolerance: 1e-2,
+            measure: "relative".into(),
+            source: "tables of forbidden lines, from memory".into(),
+        },
+    );
+}
+
+#[test]
+fn a_quadrupole_line_of_hydrogen() {
+    // 3d – 1s, 594 s⁻¹ (from memory). S = 2 ⟨0‖C²‖2⟩² (∫P r² P dr)², the square of the angular part
+    // being 1; with the nucleus at rest and the gross wavenumber.
+    let [d, s] = [(3, 2), (1, 0)].map(|(n, l)| Orbital::new(n, l).expect("an orbital"));
+    let radial = multipole(d, s, 2, 1.0)
+        .expect("a charge")
+        .expect("converges");
+    let wavenumber = RYDBERG.value * 8.0 / 9.0;
+    let line = rates(Multipole::E2, 2.0 * radial * radial, wavenumber, 10.0, 2.0);
+    let found = line.expect("a line").a;
+    assert!(relative_error(found, 594.0) < 1e-3, "{found}");
 }
 
 #[test]

@@ -51,11 +51,21 @@ impl Levels {
         values: &[f64],
         watch: &mut dyn FnMut(usize) -> bool,
     ) -> Result<Levels, Problem> {
+        Levels::solve_up_to(hamiltonian, values, MOST_ROWS, watch)
+    }
+
+    /// The same with another number of rows up to which all levels of a J are found.
+    fn solve_up_to(
+        hamiltonian: &Hamiltonian,
+        values: &[f64],
+        most: u64,
+        watch: &mut dyn FnMut(usize) -> bool,
+    ) -> Result<Levels, Problem> {
         let mut rows = Vec::new();
         let mut levels = Vec::new();
         for two_j in hamiltonian.basis().two_js() {
             let of_j = hamiltonian.rows(two_j);
-            if is_large(&of_j) {
+            if u64::try_from(of_j.states.len()).unwrap_or(u64::MAX) > most {
                 let found =
                     lowest_of_j(hamiltonian, &of_j, values, LOWEST_LEVELS, &mut |_| watch(0));
                 levels.extend(found?);
@@ -124,11 +134,6 @@ pub fn lande(total: Coupled, two_j: i32, g_s: f64) -> f64 {
     let square = |two: i32| f64::from(two) * f64::from(two + 2);
     let (j, s, l) = (square(two_j), square(total.two_s), square(2 * total.l));
     1.0 + (g_s - 1.0) * (j + s - l) / (2.0 * j)
-}
-
-/// Whether a matrix of these rows is too large to be diagonalised as a whole.
-fn is_large(rows: &Rows) -> bool {
-    u64::try_from(rows.states.len()).unwrap_or(u64::MAX) > MOST_ROWS
 }
 
 /// The levels of one J by rising energy.
@@ -245,4 +250,45 @@ fn not_found() -> Problem {
         0,
         0,
     )
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn large_matrices_give_their_lowest_levels() {
+        // f³ d: some J have more rows than 55.
+        let basis = Basis::new(&[3, 2], &[vec![3, 1]]).expect("a basis");
+        let own = Hamiltonian::new(basis).expect("coefficients");
+        let values: Vec<f64> = (0..own.parameters().len())
+            .map(|place| 9000.0 / (1 + place) as f64)
+            .collect();
+        let all = Levels::solve(&own, &values).expect("levels");
+        let mut calls = 0;
+        let some = Levels::solve_up_to(&own, &values, 55, &mut |_| {
+            calls += 1;
+            true
+        });
+        let some = some.expect("levels");
+        assert_eq!(some.rows, all.rows);
+        assert!(calls > some.rows.len());
+        for rows in &all.rows {
+            let of_j = |levels: &Levels| -> Vec<f64> {
+                let own = levels.levels.iter().filter(|l| l.two_j == rows.two_j);
+                own.map(|level| level.energy).collect()
+            };
+            let (known, found) = (of_j(&all), of_j(&some));
+            let large = rows.states.len() > 55;
+            assert_eq!(some.is_complete(rows.two_j), !large);
+            assert!(all.is_complete(rows.two_j));
+            let expected = if large { LOWEST_LEVELS } else { known.len() };
+            assert_eq!(found.len(), expected);
+            for (one, other) in found.iter().zip(known) {
+                assert!((one - other).abs() < 1e-7, "{one} {other}");
+            }
+        }
+        let stopped = Levels::solve_up_to(&own, &values, 55, &mut |_| false);
+        assert_eq!(stopped.expect_err("stopped").code, "stopped");
+    }
 }
