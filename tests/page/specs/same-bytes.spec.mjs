@@ -56,8 +56,9 @@ everyDoor("every example has the same bytes here and natively", async (door) => 
       }
       // Compared as one: a difference is shown by its place, not by two pages of numbers.
       const here = inner(found[question], '{"answer":', "}");
+      if (here === expected[question]) continue;
       const at = [...here].findIndex((character, index) => character !== expected[question][index]);
-      assert.ok(here === expected[question], `${name}, ${question}: differs at ${at}: ${here.slice(at - 60, at + 60)} | ${expected[question].slice(at - 60, at + 60)}`);
+      assert.fail(`${name}, ${question}: differs at ${at}: ${here.slice(at - 60, at + 60)} | ${expected[question].slice(at - 60, at + 60)}`);
     }
   }
 }, {

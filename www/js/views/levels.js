@@ -14,7 +14,7 @@ const sorting = {};
 export function levelParts(whole, levels, endsOf, context) {
   const part = (key, title, rows, make) => (rows?.length ? fold(context, `lines:${key}`, [title], make) : null);
   return [
-    fold(context, "lines:levels", [`Levels and what they are made of (${whole.levels.length})`], () => levelsPart(whole, levels, endsOf, context)),
+    fold(context, "lines:levels", [`Levels and what they are made of (${whole.levels.length}${whole.levels_total > whole.levels.length ? ` of ${whole.levels_total}` : ""})`], () => levelsPart(whole, levels, endsOf, context)),
     part("parameters", "Parameters of the energies", whole.parameters, () => parametersTable(whole, context)),
     part("intervals", "Fine-structure intervals and Landé’s rule", whole.intervals, () => intervalsTable(whole, context)),
     part("series", "Series and their limits", whole.series, () => whole.series.map((series) => seriesTable(series, levels, context))),
