@@ -14,8 +14,9 @@
 //! The spin factor is that of σ₁·σ₂.
 //!
 //! The empty orbitals are all eigenfunctions, on the splines, of the field that an electron of the
-//! subshell sees, exchange by Slater's average, orthogonal to what is occupied. Left out: single electrons that
-//! leave the subshell, third order, and what three electrons do together.
+//! subshell sees, exchange by Slater's average, orthogonal to what is occupied. Left out: states close by
+//! or below, which have to be mixed in; single electrons that leave the subshell, third order, and what
+//! three electrons do together.
 //!
 //! Source: Lindgren and Morrison, *Atomic Many-Body Theory* (1986), chapters 9 and 13; the diagrams
 //! reduced for LS terms here.
@@ -30,6 +31,9 @@ use nalgebra::DMatrix;
 const HIGHEST: u8 = 6;
 /// Empty orbitals above this energy, in hartree, are left out.
 const TOP: f64 = 60.0;
+/// States less than this above the one in question are left out, hartree: no perturbation is small there,
+/// and 4s² beside 3d² has to be mixed in.
+const LEAST: f64 = 0.1;
 /// Where occupied orbitals of equal ℓ are moved out of the way, hartree.
 const ASIDE: f64 = 1e6;
 
@@ -109,13 +113,15 @@ impl Solution {
             })
             .collect();
         for_pairs(&mesh, orbital, &empty, |term, square, energies| {
-            if let Some(term) = terms.get_mut(term) {
-                term.pair -= square / (energies - 2.0 * orbital.energy);
+            let gap = energies - 2.0 * orbital.energy;
+            if let (Some(term), true) = (terms.get_mut(term), gap > LEAST) {
+                term.pair -= square / gap;
             }
         });
         for_pairs(&mesh, orbital, &cores, |term, square, energies| {
-            if let Some(term) = terms.get_mut(term) {
-                term.exclusion -= square / (2.0 * orbital.energy - energies);
+            let gap = 2.0 * orbital.energy - energies;
+            if let (Some(term), true) = (terms.get_mut(term), gap > LEAST) {
+                term.exclusion -= square / gap;
             }
         });
         screening_of_pairs(&mesh, orbital, (&cores, &empty), &mut terms);
@@ -325,7 +331,8 @@ fn screening_of_pairs(
         .collect();
     let rank = |k: i32| usize::try_from(k).unwrap_or(usize::MAX);
     for core in cores {
-        for r in empty.iter().filter(|r| (r.l + core.l) % 2 == 0) {
+        let far = |r: &&Partner| r.energy - core.energy > LEAST;
+        for r in empty.iter().filter(|r| (r.l + core.l) % 2 == 0).filter(far) {
             let with = |field: Option<&Vec<f64>>, f: &[f64], g: &[f64]| {
                 let parts = field.into_iter().flatten().zip(f.iter().zip(g));
                 mesh.integral(parts.map(|(u, (f, g))| u * f * g))
