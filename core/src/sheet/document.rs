@@ -17,7 +17,7 @@ use super::schema;
 use super::structure::{Energies, Structure};
 
 /// A level of one of the sheet's configurations.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub struct LevelOf {
     /// Index into [`Document::entries`].
     pub entry: usize,
@@ -57,7 +57,7 @@ pub struct Document {
     pub given: Vec<Given>,
     /// The source of light and the medium of its wavelengths.
     pub conditions: Conditions,
-    /// Level energies from measurements, in cm⁻¹.
+    /// Level energies from measurements, in cm⁻¹, sorted by level.
     pub measured: Vec<(LevelOf, f64)>,
     /// Keys that no question of this version uses.
     pub(super) unused_keys: Vec<String>,
@@ -304,14 +304,6 @@ impl Document {
             }),
             None => Rich::new(),
         }
-    }
-
-    /// The measured energy of a level, in cm⁻¹.
-    pub fn pinned(&self, of: &LevelOf) -> Option<f64> {
-        self.measured
-            .iter()
-            .find(|(level, _)| level == of)
-            .map(|(_, energy)| *energy)
     }
 
     /// Whether the energies of levels come from radial functions or only from what is given.

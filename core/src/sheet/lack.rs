@@ -4,6 +4,7 @@ use serde::Serialize;
 
 use crate::configuration::{Configuration, Orbital, Subshell};
 use crate::problem::Problem;
+use crate::radiation::selection::pair_count;
 
 use super::Question;
 use super::document::{Document, LevelOf};
@@ -133,8 +134,8 @@ fn lines(document: &Document, first: &Entry) -> Option<Lack> {
     {
         return None;
     }
-    let pairs = pairs::pairs(document);
-    if pairs == 0 {
+    let levels = pairs::level_count(document);
+    if levels < 2 {
         return Some(second_configuration(
             document,
             first,
@@ -142,12 +143,13 @@ fn lines(document: &Document, first: &Entry) -> Option<Lack> {
         ));
     }
     let needs = if super::energy_case::need(document).is_none() {
-        let (levels, most) = (pairs::level_count(document), MOST_LEVELS_WITH_LINES);
+        let most = MOST_LEVELS_WITH_LINES;
         (levels > most as u128).then(|| {
             format!("fewer configurations or fewer open shells: these have {levels} levels, and lines are listed between at most {most}")
         })
     } else {
-        (!pairs::few(document)).then(|| {
+        let pairs = pair_count(levels, None);
+        (pairs > pairs::MAX_PAIRS).then(|| {
             format!(
                 "fewer configurations or fewer open shells: these have {pairs} pairs of levels, and at most {} are listed",
                 pairs::MAX_PAIRS
