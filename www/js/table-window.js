@@ -3,7 +3,7 @@
 import { element } from "./dom.js";
 
 // Rows drawn beyond each edge, so that a short scroll shows no gap.
-const SPARE = 12;
+const SPARE = 8;
 // How wide typeset text is, as part of the same text spelled out.
 const NARROW = 0.85;
 // Until a row has been measured.
