@@ -4,7 +4,6 @@
 //! configurations than the sheet's are left out and counted, for a table mostly holds many more; a row
 //! that cannot be read is a fault with its line.
 
-use csv_core::{ReadRecordResult, ReaderBuilder};
 use serde::Serialize;
 
 use crate::numerics::sorted_map::SortedMap;
@@ -284,73 +283,55 @@ fn value(cell: &str, unit: Option<&'static str>) -> Result<String, Problem> {
 }
 
 /// The separator of the first line: a tab, a semicolon or a comma.
-fn separator(text: &str) -> u8 {
+fn separator(text: &str) -> char {
     let line = text.lines().find(|line| !line.trim().is_empty());
     let line = line.unwrap_or_default();
-    [b'\t', b';']
+    let marks = ['\t', ';'].into_iter();
+    marks
         .into_iter()
-        .find(|mark| line.as_bytes().contains(mark))
-        .unwrap_or(b',')
+        .find(|mark| line.contains(*mark))
+        .unwrap_or(',')
 }
 
-/// The records of a separated text, cells trimmed and freed from a spreadsheet's `="…"`.
+/// The records of a separated text, cells trimmed and freed from a spreadsheet's `="…"`: separators and
+/// line ends inside quotation marks belong to the cell, and two marks there are one (RFC 4180).
 fn records(text: &str) -> Vec<Record> {
-    let mut reader = ReaderBuilder::new().delimiter(separator(text)).build();
+    let separator = separator(text);
     let mut records = Vec::new();
-    let (mut output, mut ends) = (vec![0; 1024], vec![0; 64]);
-    let (mut written, mut ended) = (0, 0);
-    let mut input = text.as_bytes();
-    // What the record so far was read from, and the lines before that.
-    let (mut source, mut lines) = (input, 0);
-    let breaks = |bytes: &[u8]| bytes.iter().filter(|&&byte| byte == b'\n').count() as u64;
-    loop {
-        let (free, free_ends) = (
-            output.get_mut(written..).unwrap_or_default(),
-            ends.get_mut(ended..).unwrap_or_default(),
-        );
-        let (result, read, wrote, found) = reader.read_record(input, free, free_ends);
-        input = input.get(read..).unwrap_or_default();
-        written += wrote;
-        ended += found;
-        match result {
-            // What follows is the end: read once more without input.
-            ReadRecordResult::InputEmpty => {}
-            ReadRecordResult::OutputFull => output.resize(output.len().saturating_mul(2), 0),
-            ReadRecordResult::OutputEndsFull => ends.resize(ends.len().saturating_mul(2), 0),
-            ReadRecordResult::Record => {
-                let mut start = 0;
-                let mut cells = Vec::new();
-                for end in ends.iter().take(ended) {
-                    let bytes = output.get(start..*end).unwrap_or_default();
-                    cells.push(cell(&String::from_utf8_lossy(bytes)));
-                    start = *end;
+    let (mut cells, mut current) = (Vec::new(), String::new());
+    let (mut line, mut quoted) = (1, false);
+    for c in text.chars().chain(['\n']) {
+        match c {
+            '"' => quoted = !quoted,
+            '\n' if !quoted => {
+                cells.push(cell(&current));
+                records.push(Record {
+                    line,
+                    cells: std::mem::take(&mut cells),
+                });
+                current.clear();
+                if records.len() > MAX_ROWS {
+                    return records;
                 }
-                let used = source.len().saturating_sub(input.len());
-                let used = source.get(..used).unwrap_or_default();
-                let line = lines + breaks(used.trim_ascii_end()) + 1;
-                lines += breaks(used);
-                source = input;
-                records.push(Record { line, cells });
-                (written, ended) = (0, 0);
             }
-            ReadRecordResult::End => return records,
+            c if c == separator && !quoted => {
+                cells.push(cell(&current));
+                current.clear();
+                continue;
+            }
+            _ => {}
         }
-        if records.len() > MAX_ROWS {
-            return records;
+        line += u64::from(c == '\n');
+        if c != '\n' {
+            current.push(c);
         }
     }
+    records
 }
 
 fn cell(text: &str) -> String {
-    let trimmed = text.trim();
-    let inside = trimmed
-        .strip_prefix("=\"")
-        .and_then(|rest| rest.strip_suffix('"'));
-    inside
-        .unwrap_or(trimmed)
-        .trim_matches('"')
-        .trim()
-        .to_owned()
+    let bare = text.trim().trim_start_matches('=').trim_matches('"');
+    bare.trim().to_owned()
 }
 
 #[cfg(test)]

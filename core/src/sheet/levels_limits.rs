@@ -80,7 +80,7 @@ pub fn computed(case: &Case) -> Vec<String> {
         "first excited terms of one configuration 6 to 46 % too high, unless correlation within subshells is asked for"
     };
     let mut limits = vec![format!(
-        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions with core polarisation, 2 % (worst 14 %) in alkaline-earth-like ones with mixing; {terms}; fine-structure intervals 5 %, nine of ten within 13 %. Pin measured energies for wavelengths to be compared with a spectrometer."
+        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; {terms}; fine-structure intervals 5 %, nine of ten within 13 %. Pin measured energies for wavelengths to be compared with a spectrometer."
     )];
     if case.correlation && case.mixing && pairs_of_one_subshell(case) {
         limits.push(

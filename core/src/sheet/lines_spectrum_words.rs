@@ -9,13 +9,14 @@ use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
 use super::levels_limits::{computed, incomplete, too_low};
+use super::levels_rows::Shared;
 use super::levels_words::rounded;
 use super::light::{Surroundings, air_range};
 use super::line_rows::{LineRow, WindowRow};
 use super::lines_energies::WEAK;
 use super::placed::Placed;
 use super::rich::{Kind, Rich};
-use super::solved::Solved;
+use super::solved::{Solved, SolvedLevel};
 use super::structure::Energies;
 
 /// What the words are about.
@@ -36,6 +37,23 @@ fn six_digits(value: f64) -> f64 {
 
 fn three_digits(value: f64) -> f64 {
     format!("{value:.2e}").parse().unwrap_or(value)
+}
+
+/// A level of a row, typeset.
+fn level(told: &Told, label: &Shared) -> Rich {
+    let of_label = |level: &&SolvedLevel| *level.label == *label.0;
+    let level = told.solved.levels.iter().find(of_label);
+    level
+        .map(|level| level.rich(told.document))
+        .unwrap_or_default()
+}
+
+/// ", E1 from upper to lower".
+fn ends(told: &Told, say: Rich, multipole: Multipole, upper: &Shared, lower: &Shared) -> Rich {
+    say.say(format!(", {multipole} from "))
+        .then(&level(told, upper))
+        .say(" to ")
+        .then(&level(told, lower))
 }
 
 /// The strongest line: by emitted power where a temperature is entered, otherwise by gf.
@@ -87,13 +105,12 @@ fn in_window(told: &Told, window: &WindowRow) -> Rich {
     if window.lines == 0 {
         let say = between(Rich::words("No line lies between "));
         return match &window.nearest {
-            Some(nearest) => say
-                .say("; the nearest is ")
-                .number(six_digits(nearest.nm), Some("nm"), Kind::Computed)
-                .say(format!(
-                    ", from {} to {}, by {}.",
-                    nearest.upper.0, nearest.lower.0, nearest.multipole
-                )),
+            Some(nearest) => {
+                let say = say.say("; the nearest is ");
+                let say = say.number(six_digits(nearest.nm), Some("nm"), Kind::Computed);
+                let (upper, lower) = (&nearest.upper, &nearest.lower);
+                ends(told, say, nearest.multipole, upper, lower).say(".")
+            }
             None => say.say(", and none lies anywhere else."),
         };
     }
@@ -127,13 +144,8 @@ fn named(told: &Told, say: Rich, line: &LineRow) -> Rich {
         ),
     };
     let kind = line.energy_kind.unwrap_or(Kind::Computed);
-    let say = say
-        .number(six_digits(nm), Some("nm"), kind)
-        .say(words)
-        .say(format!(
-            ", {} from {} to {}",
-            line.multipole, line.upper.0, line.lower.0
-        ));
+    let say = say.number(six_digits(nm), Some("nm"), kind).say(words);
+    let say = ends(told, say, line.multipole, &line.upper, &line.lower);
     say.say(match kind {
         Kind::Measured => ", between measured levels",
         Kind::Entered => ", by the given parameters",
@@ -179,7 +191,10 @@ pub fn working(told: &Told) -> Vec<Working> {
                     Some("s-1"),
                     Kind::Computed,
                 )
-                .say(format!(" for {} to {}", line.upper.0, line.lower.0));
+                .say(" for ")
+                .then(&level(told, &line.upper))
+                .say(" to ")
+                .then(&level(told, &line.lower));
             step.numbers(numbers, result)
         }
         None => step,

@@ -190,7 +190,7 @@ pub fn limits(first: &Allowed, document: &Document) -> Vec<String> {
         return limits;
     }
     limits.push(
-        "Terms, levels and counts follow from symmetry alone. Energies are not computed, so nothing here says how far apart the levels lie."
+        "Terms, levels and counts follow from symmetry alone. Nothing here says how far apart the levels lie: that is computed under Which lines."
             .to_owned(),
     );
     limits.push(
