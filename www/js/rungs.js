@@ -134,8 +134,13 @@ export class QuestionRung {
   }
 
   #showRun(entry, state) {
-    const key = JSON.stringify([state, entry.waits, entry.panic, entry.stopped]);
-    if (this.#run.dataset.shown === key) return;
+    const running = entry.run?.shown === true;
+    const key = running ? "run" : JSON.stringify([state.kind, state.words, entry.waits, entry.panic, entry.stopped]);
+    if (this.#run.dataset.shown === key) {
+      // The button stays under the finger while the words tell how far it is.
+      if (running) setText(this.#run.querySelector("p"), runWords(entry.run));
+      return;
+    }
     this.#run.dataset.shown = key;
     const inside = this.#run.contains(document.activeElement);
     this.#run.replaceChildren(...runNodes(entry, entry.answer !== null, {
@@ -167,7 +172,7 @@ export function runWords({ progress, estimate }) {
 
 // Radial functions tell iteration and residual, an energy matrix how much of it is done.
 function stepWords({ done, iteration, residual }) {
-  return typeof residual === "number" ? `iteration ${iteration}, residual ${trueMinus(residual.toExponential(1))}` : `${Math.round(100 * (done ?? 0))}\u00a0%`;
+  return typeof done === "number" ? `${Math.round(100 * done)}\u00a0%` : `iteration ${iteration}, residual ${trueMinus(residual.toExponential(1))}`;
 }
 
 /** What is shown when a calculation ended by itself. */

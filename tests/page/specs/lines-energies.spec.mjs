@@ -146,6 +146,12 @@ function countAsked() {
     postMessage(message) {
       const [sheet, question] = message.arguments ?? [];
       if (message.door === "answer") window.asked.push({ question, worker: this.name });
+      if (question === "levels" && sheet.title === "slow") {
+        const say = (data) => setTimeout(() => this.onmessage?.({ data }), 0);
+        say({ id: message.id, estimate: { seconds: 1.5, megabytes: 10 } });
+        say({ progress: { configuration: 0, of: 1, label: "even, J 2", iteration: 37, residual: 0, done: 0.37 } });
+        return;
+      }
       const waits = question === "levels" && sheet.structure?.scale?.F === 0.5 && !message.asked;
       if (waits) setTimeout(() => this.onmessage?.({ data: { id: message.id, waits: { seconds: 12, megabytes: 40 } } }), 0);
       else this.real.postMessage(message);
@@ -182,6 +188,13 @@ everyDoor("energies are computed apart from typing, and only where the sheet cha
   await door.until(() => location.hash.includes("structure.scale.F=~0.5"));
   await door.until((old) => document.querySelector("#lines .say").textContent !== old, sentence);
 }, { fragment: CARBON, before: countAsked });
+
+everyDoor("a long run tells how far it is in words and in the stroke, and Stop ends it", async (door) => {
+  await door.until(() => /even, J 2: 37\s%, estimated 1\.5\ss in all/.test(document.querySelector("#lines .run").textContent));
+  assert.equal(await door.evaluate(() => document.querySelector("#lines .stroke .first").style.width), "37%");
+  await door.evaluate(() => [...document.querySelectorAll("#lines .run button")].find((each) => each.textContent === "Stop").click());
+  await door.until(() => /^Stopped/.test(document.querySelector("#lines .run").textContent));
+}, { fragment: `${CARBON}&title=slow`, before: countAsked });
 
 everyDoor("a value of one’s own replaces a computed parameter, and the table says so", async (door) => {
   await openLines(door);
