@@ -22,17 +22,28 @@ export async function compileCore() {
   }
 }
 
-/** Something that starts a worker each time it is called. */
+/** Something that gives a fresh worker each time it is called. */
 export function workerStarter() {
   if (typeof Worker !== "function") throw new CannotStart("no-worker");
   const url = URL.createObjectURL(new Blob([RUNGLINE_WORKER_SOURCE], { type: "text/javascript" }));
   const trusted = scriptAddress(url);
-  return () => {
+  const fresh = () => {
     try {
       return new Worker(trusted);
     } catch (error) {
       throw new CannotStart("no-worker", String(error));
     }
+  };
+  // The first one starts while the core compiles. If it fails before anybody listens, it fails once more.
+  let first = fresh();
+  first.onerror = (event) => {
+    event.preventDefault();
+    first = null;
+  };
+  return () => {
+    const worker = first ?? fresh();
+    first = null;
+    return worker;
   };
 }
 
