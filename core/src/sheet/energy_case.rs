@@ -3,7 +3,7 @@
 use crate::configuration::{Orbital, Subshell};
 use crate::problem::Problem;
 use crate::radial::hartree_fock::{HEAVIEST, Polarisation};
-use crate::structure::model::{Case, Given as GivenValue, Name, Scale};
+use crate::structure::model::{Case, Given as GivenValue, Name};
 
 use super::document::Document;
 use super::entry::{Content, Entry, Named};
@@ -141,7 +141,6 @@ pub fn energy_case(document: &Document) -> Result<EnergyCase, Problem> {
         }
         None => None,
     };
-    let scale = document.structure.scale;
     let given = document
         .given
         .iter()
@@ -157,12 +156,7 @@ pub fn energy_case(document: &Document) -> Result<EnergyCase, Problem> {
         relativity: document.structure.relativity,
         mixing: document.structure.mixing,
         correlation: document.structure.correlation,
-        scale: Scale {
-            f: scale.f,
-            g: scale.g,
-            r: scale.r,
-            zeta: scale.zeta,
-        },
+        scale: document.structure.scale,
         polarisation,
         given,
         ..Case::new(z, mass_number, configurations)

@@ -39,16 +39,7 @@ pub fn limits(told: &Told) -> Vec<String> {
                 .to_owned(),
         );
     }
-    if let Some(anchor) = told
-        .placed
-        .anchor
-        .and_then(|place| told.solved.levels.get(place))
-    {
-        limits.push(format!(
-            "The measured energies count from {}, which is taken as zero.",
-            anchor.label
-        ));
-    }
+    limits.extend(told.placed.anchored(told.solved));
     limits.extend(too_low(document, told.solved));
     limits.extend(incomplete(told.solved));
     if told.levels.len() < told.solved.levels.len() {

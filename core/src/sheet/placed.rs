@@ -29,6 +29,15 @@ pub struct Placed {
 }
 
 impl Placed {
+    /// From which level measured energies count where none of them says so.
+    pub fn anchored(&self, solved: &Solved) -> Option<String> {
+        let anchor = solved.levels.get(self.anchor?)?;
+        Some(format!(
+            "The measured energies count from {}, which is taken as zero.",
+            anchor.label
+        ))
+    }
+
     /// The energies of the levels of a sheet.
     pub fn new(document: &Document, solved: &Solved) -> Placed {
         let levels = &solved.levels;

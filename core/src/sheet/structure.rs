@@ -2,6 +2,7 @@
 
 use crate::problem::Problem;
 use crate::quantity::{self, Dimension};
+use crate::structure::model::Scale;
 
 use super::choice::{ENERGIES, choice};
 use super::json::Json;
@@ -22,30 +23,6 @@ pub enum Energies {
     Computed,
     /// Only what is given; the rest is zero.
     Given,
-}
-
-/// By what computed radial integrals are multiplied; given ones are not.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Scale {
-    /// F^k.
-    pub f: f64,
-    /// G^k.
-    pub g: f64,
-    /// R^k.
-    pub r: f64,
-    /// ζ.
-    pub zeta: f64,
-}
-
-impl Default for Scale {
-    fn default() -> Self {
-        Scale {
-            f: 1.0,
-            g: 1.0,
-            r: 1.0,
-            zeta: 1.0,
-        }
-    }
 }
 
 /// The group `structure`, what it gives apart.
