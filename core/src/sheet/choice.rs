@@ -71,7 +71,8 @@ pub fn nearest<'a>(typed: &str, known: impl Iterator<Item = &'a str>) -> Option<
 mod tests {
     use super::*;
     use crate::sheet::json::read;
-    use crate::sheet::schema::{SHEET, check};
+    use crate::sheet::schema::SHEET;
+    use crate::sheet::schema_check::check;
 
     #[test]
     fn a_word_like_none_has_no_nearest() {

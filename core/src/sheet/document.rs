@@ -13,8 +13,8 @@ use super::entry::{Content, Entry, Named, content};
 use super::given::Given;
 use super::json::Json;
 use super::rich::{Piece, Rich};
-use super::schema;
 use super::structure::{Energies, Structure};
+use super::{schema, schema_check};
 
 /// A level of one of the sheet's configurations.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -67,7 +67,7 @@ impl Document {
     /// Reads a sheet; every fault is in `faults`, and what could be read is there all the same.
     pub fn read(json: &Json) -> Document {
         let mut document = Document::default();
-        schema::check(json, &schema::SHEET, "", &mut document.faults);
+        schema_check::check(json, &schema::SHEET, "", &mut document.faults);
         if !matches!(json, Json::Object(_)) {
             return document;
         }

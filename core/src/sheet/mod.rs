@@ -55,6 +55,7 @@ mod reading;
 mod record;
 mod rich;
 mod schema;
+mod schema_check;
 mod sections;
 mod shells;
 mod solved;
