@@ -21,7 +21,7 @@ use super::levels_words::{Told, kinds, sentence, working};
 use super::placed::Placed;
 use super::rich::{Rich, TermName};
 use super::solved::{Solved, solved};
-use super::states::chain_rich;
+use super::states_terms::chain_rich;
 use super::watch::Watch;
 use super::{ionised, levels_facts, parameter_rows};
 

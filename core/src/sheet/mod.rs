@@ -62,6 +62,8 @@ mod solved;
 mod solved_lines;
 mod splitting;
 mod states;
+mod states_schemes;
+mod states_terms;
 mod states_words;
 mod structure;
 mod unused;

@@ -13,6 +13,7 @@ pub mod mesh;
 pub mod mixing;
 pub mod multipole;
 pub mod nucleus;
+mod running;
 pub mod slater;
 pub mod spin_orbit;
 pub mod thomas_fermi;
