@@ -11,7 +11,7 @@ use rungline_core::radial::hartree_fock::{Atom, Polarisation};
 use rungline_core::radial::nucleus::stable_mass_number;
 use rungline_core::structure::model::{Case, MultipoleKind};
 use rungline_tests::model::{configuration, field, spectrum};
-use rungline_tests::{Row, report, vector_rows};
+use rungline_tests::{Listing, Row, list, report, vector_rows};
 
 /// One ion: element, stage, Z, α of its core, the core's noble gas and its further full shells, the
 /// configurations outside it, the wavelengths in the table, in Å, of the line with the largest f, by J.
@@ -296,6 +296,9 @@ const ALKALINE_EARTH_LIKE: &[Ion] = &[
 /// A line: ion, J of the upper level, wavenumbers and f.
 struct Line {
     name: String,
+    /// The configurations that mix.
+    outer: String,
+    source: String,
     observed: (f64, f64),
     computed: (f64, f64),
 }
@@ -336,6 +339,7 @@ fn lines(ions: &[Ion]) -> Vec<Line> {
             let number = |column: &str| row[column].parse::<f64>().expect("a number");
             let observed = (number("E_up_cm1") - number("E_low_cm1"), number("f"));
             let two_j = number("g_up") as i32 - 1;
+            let ground = number("g_low") as i32 - 1;
             // The strongest line of that J near the place: what the table's line is.
             let best = (radiation.lines.iter())
                 .filter(|line| line.lower == 0)
@@ -350,7 +354,13 @@ fn lines(ions: &[Ion]) -> Vec<Line> {
                 })
                 .max_by(|a, b| a.1.total_cmp(&b.1));
             found.push(Line {
-                name: format!("{element} {stage} 2J = {two_j}"),
+                name: format!("{element} {stage}, J = {} – {}", half(ground), half(two_j)),
+                outer: outer.join(", "),
+                source: match row["source"].as_str() {
+                    "Morton2000" => "Morton (2000)".into(),
+                    "Morton2003" => "Morton (2003)".into(),
+                    other => panic!("{other}: an unknown source"),
+                },
                 observed,
                 computed: best.expect("a computed line"),
             });
@@ -359,23 +369,58 @@ fn lines(ions: &[Ion]) -> Vec<Line> {
     found
 }
 
+fn half(two_j: i32) -> String {
+    match two_j % 2 {
+        0 => (two_j / 2).to_string(),
+        _ => format!("{two_j}/2"),
+    }
+}
+
+/// A row for each line.
+fn listed(what: &str, lines: &[Line]) -> Listing {
+    let mut listing = Listing::new(
+        &format!("Resonance lines of {what} ions one by one"),
+        "Wavelengths in vacuum, absorption f; mixing and core polarisation on, nothing fitted. Tables: Morton, Astrophys. J. Suppl. 130, 403 (2000) and 149, 205 (2003), as in linetools 0.3.2 (BSD-3-Clause); polarisabilities of the cores from memory of Johnson, Kolb and Huang, At. Data Nucl. Data Tables 28, 333 (1983).",
+        &[
+            "line",
+            "configurations",
+            "tabulated, nm",
+            "computed, nm",
+            "deviation",
+            "f tabulated",
+            "f computed",
+            "deviation",
+            "source",
+        ],
+    );
+    for line in lines {
+        let (computed, observed) = (1e7 / line.computed.0, 1e7 / line.observed.0);
+        listing.rows.push(vec![
+            line.name.clone(),
+            line.outer.clone(),
+            format!("{observed:.3}"),
+            format!("{computed:.1}"),
+            format!("{:+.1} %", 100.0 * (computed / observed - 1.0)),
+            format!("{}", line.observed.1),
+            format!("{:.4}", line.computed.1),
+            format!(
+                "{:+.1} %",
+                100.0 * (line.computed.1 / line.observed.1 - 1.0)
+            ),
+            line.source.clone(),
+        ]);
+    }
+    listing
+}
+
 fn check(name: &str, what: &str, ions: &[Ion], tolerance: f64) {
     let lines = lines(ions);
+    list(name, &listed(what, &lines));
     let mut ratios = Vec::new();
     let mut shifts = Vec::new();
     for line in &lines {
         let ratio = line.computed.1 / line.observed.1 - 1.0;
         let shift = line.computed.0 / line.observed.0 - 1.0;
-        println!(
-            "{}: {:.0} cm⁻¹, observed {:.0} ({:+.1} %), f {:.4}, tabulated {:.4} ({:+.1} %)",
-            line.name,
-            line.computed.0,
-            line.observed.0,
-            100.0 * shift,
-            line.computed.1,
-            line.observed.1,
-            100.0 * ratio
-        );
         ratios.push(ratio.abs());
         shifts.push(shift.abs());
     }

@@ -89,17 +89,73 @@ pub fn report(name: &str, row: Row) {
     );
 }
 
-fn assemble(parts: &Path) {
-    let mut names: Vec<PathBuf> = fs::read_dir(parts)
-        .expect("the parts are there")
+/// Cases of the report one by one, below the rows that sum them up.
+#[derive(Clone, Debug, Default, Serialize, Deserialize)]
+pub struct Listing {
+    /// What is listed: "Fine-structure intervals of ground terms".
+    pub title: String,
+    /// What a reader has to know before the rows: settings, sources, judgements.
+    pub note: String,
+    /// The heads of the columns.
+    pub columns: Vec<String>,
+    /// The cells of each row.
+    pub rows: Vec<Vec<String>>,
+}
+
+impl Listing {
+    /// An empty one.
+    pub fn new(title: &str, note: &str, columns: &[&str]) -> Self {
+        Listing {
+            title: title.into(),
+            note: note.into(),
+            columns: columns.iter().map(|&head| head.into()).collect(),
+            rows: Vec::new(),
+        }
+    }
+
+    fn written(&self) -> String {
+        let line = |cells: &[String]| format!("| {} |\n", cells.join(" | "));
+        let mut text = format!("\n## {}\n\n{}\n\n", self.title, self.note);
+        text.push_str(&line(&self.columns));
+        text.push_str(&format!("|{}\n", "---|".repeat(self.columns.len())));
+        for row in &self.rows {
+            text.push_str(&line(row));
+        }
+        text
+    }
+}
+
+/// Puts a list of cases into `tests/reports/validation.md`; `name` as in [`report`].
+pub fn list(name: &str, listing: &Listing) {
+    assert!(
+        (listing.rows.iter()).all(|row| row.len() == listing.columns.len()),
+        "{name}: a cell for each column"
+    );
+    let _guard = WRITING
+        .lock()
+        .unwrap_or_else(|poisoned| poisoned.into_inner());
+    let lists = folder().join("reports").join("lists");
+    fs::create_dir_all(&lists).expect("the report's folder can be made");
+    let text = serde_json::to_string_pretty(listing).expect("a list is plain data");
+    fs::write(lists.join(format!("{name}.json")), text + "\n").expect("the report can be written");
+    assemble(&folder().join("reports").join("parts"));
+}
+
+/// The files of a folder by name; none where there is no folder.
+fn files(folder: &Path) -> Vec<PathBuf> {
+    let mut names: Vec<PathBuf> = (fs::read_dir(folder).into_iter().flatten())
         .filter_map(|entry| Some(entry.ok()?.path()))
         .collect();
     names.sort();
+    names
+}
+
+fn assemble(parts: &Path) {
     let mut text = String::from(
         "# Validation\n\nWritten by the native tests from what they measured; do not edit.\n\n\
          | quantity | cases | worst | allowed | measure | source |\n|---|---|---|---|---|---|\n",
     );
-    for path in names {
+    for path in files(parts) {
         let part = fs::read_to_string(&path).expect("a part can be read");
         let row: Row = serde_json::from_str(&part).expect("a part is a row");
         text.push_str(&format!(
@@ -107,5 +163,11 @@ fn assemble(parts: &Path) {
             row.quantity, row.cases, row.worst, row.tolerance, row.measure, row.source
         ));
     }
-    fs::write(parts.join("..").join("validation.md"), text).expect("the report can be written");
+    let reports = parts.parent().expect("the parts lie in a folder");
+    for path in files(&reports.join("lists")) {
+        let list = fs::read_to_string(&path).expect("a list can be read");
+        let listing: Listing = serde_json::from_str(&list).expect("a list");
+        text.push_str(&listing.written());
+    }
+    fs::write(reports.join("validation.md"), text).expect("the report can be written");
 }
