@@ -53,7 +53,7 @@ fn an_answer_has_the_stable_keys() {
     assert_eq!(iron["method"], "Hartree-Fock");
     assert_eq!(iron["configuration"]["text"], "3d6 4s2");
     assert_eq!(iron["nucleus"]["model"], "uniform sphere");
-    assert_eq!(iron["nucleus"]["mass_number_by"], "valley of stability");
+    assert_eq!(iron["nucleus"]["mass_number_by"], "most abundant isotope");
     assert_eq!(iron["configurations"], json!([]));
     let labels: Vec<&str> = iron["orbitals"]
         .as_array()
@@ -160,7 +160,10 @@ fn one_electron_is_answered_in_closed_form() {
             -0.500_006_656_596_543_5
         ) < 1e-15
     );
-    assert_eq!(hydrogen["nucleus"]["mass_number_by"], "usual isotope");
+    assert_eq!(
+        hydrogen["nucleus"]["mass_number_by"],
+        "most abundant isotope"
+    );
     assert_eq!(hydrogen["dirac"]["nuclear_mass_by"], "CODATA 2022");
     let mass = hydrogen["dirac"]["nuclear_mass"].as_f64().unwrap();
     assert!(relative_error(mass, 1_836.152_673_426) < 1e-10);

@@ -1,10 +1,12 @@
-//! The elements: symbols, names, observed ground levels.
+//! The elements: symbols, names, isotopes, observed ground levels.
 
 mod ground;
+mod isotopes;
 mod level;
 mod names;
 
 pub use ground::{DOUBTFUL_NEUTRALS, ObservedGround, Status, observed_ground};
+pub use isotopes::{Isotope, isotope, isotopes, most_abundant};
 pub use level::{LevelSymbol, TermSymbol, read_level};
 pub(crate) use names::distance;
 pub use names::{HEAVIEST, by_name, by_symbol, name, nearest, symbol};

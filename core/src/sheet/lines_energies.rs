@@ -3,6 +3,7 @@
 use std::rc::Rc;
 
 use crate::constants::BOLTZMANN_WAVENUMBER;
+use crate::elements;
 use crate::numerics::sorted_map::SortedMap;
 use crate::radiation::absorption::{centre_cross_section, optical_depth, saturation_intensity};
 use crate::radiation::populations::{Partition, Weighted};
@@ -182,8 +183,10 @@ impl Source<'_> {
         let (z, entered) = (species.element?, species.mass_number?);
         let (usual, _) = mass_number_of(z, None);
         let mass = |number: u16| {
-            isotope::light_nucleus(z, number.into())
-                .unwrap_or_else(|| isotope::nuclear_mass(number.into(), z))
+            isotope::light_nucleus(z, number.into()).unwrap_or_else(|| {
+                let tabulated = elements::isotope(z, number).map(|isotope| isotope.mass);
+                isotope::nuclear_mass(tabulated.unwrap_or(number.into()), z)
+            })
         };
         (usual != entered).then(|| (mass(usual), mass(entered)))
     }

@@ -4,6 +4,7 @@ use crate::configuration::Orbital;
 use crate::constants::{
     ALPHA_MASS_U, DEUTERON_MASS_U, ELECTRON_MASS_U, HARTREE_WAVENUMBER, PROTON_MASS_U,
 };
+use crate::elements;
 use crate::problem::Problem;
 use crate::radial::hydrogenic::{Hydrogenic, dirac};
 use crate::radial::nucleus::stable_mass_number;
@@ -122,27 +123,31 @@ fn dirac_row(z: u8, mass_number: u16, orbitals: &[Orbital]) -> Result<DiracRow, 
     })
 }
 
-/// The mass number of a nucleus and how it is known: the typed one, ¹H, ⁴He, otherwise the one on
-/// the valley of stability.
+/// The mass number of a nucleus and how it is known: the typed one, otherwise that of the most abundant
+/// isotope, and where none occurs in nature the one on the valley of stability.
 pub fn mass_number_of(z: u8, typed: Option<u16>) -> (u16, &'static str) {
-    match (typed, z) {
+    match (typed, elements::most_abundant(z)) {
         (Some(number), _) => (number, "typed"),
-        (None, 1) => (1, "usual isotope"),
-        (None, 2) => (4, "usual isotope"),
-        (None, _) => (stable_mass_number(z), "valley of stability"),
+        (None, Some(number)) => (number, "most abundant isotope"),
+        (None, None) => (stable_mass_number(z), "valley of stability"),
     }
 }
 
-/// The mass of a nucleus in electron masses: CODATA for p, d and α, otherwise A u − Z m_e, which is
-/// within a part in 150 of every nucleus's and within a part in 800 from A = 12 on (isotope tables,
-/// from memory: ³He 3.016 u, ⁵⁶Fe 55.935 u).
+/// The mass of a nucleus in electron masses: CODATA for p, d and α, otherwise that of the tabulated atom
+/// less its electrons (their binding, below a part in 10⁶ of the mass, left in), otherwise A u − Z m_e,
+/// which is within a part in 800 from A = 12 on.
 pub fn nuclear_mass(z: u8, mass_number: u16) -> (f64, &'static str) {
-    let by_number = f64::from(mass_number) / ELECTRON_MASS_U.value - f64::from(z);
     let known = match (z, mass_number) {
         (1, 1) => PROTON_MASS_U,
         (1, 2) => DEUTERON_MASS_U,
         (2, 4) => ALPHA_MASS_U,
-        _ => return (by_number, "mass number"),
+        _ => {
+            let (atomic, by) = match elements::isotope(z, mass_number) {
+                Some(isotope) => (isotope.mass, "table of isotopes"),
+                None => (f64::from(mass_number), "mass number"),
+            };
+            return (atomic / ELECTRON_MASS_U.value - f64::from(z), by);
+        }
     };
     (known.value / ELECTRON_MASS_U.value, "CODATA 2022")
 }
