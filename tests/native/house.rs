@@ -20,6 +20,7 @@ const PACKAGES: &[(&str, &[&str])] = &[
             "weights",
             "radial",
             "structure",
+            "splitting",
         ],
     ),
     (

@@ -13,6 +13,7 @@ pub mod problem;
 pub mod projections;
 pub mod quantity;
 pub mod radial;
+pub mod splitting;
 pub mod structure;
 pub mod weights;
 

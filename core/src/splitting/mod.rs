@@ -2,3 +2,6 @@
 
 pub mod weak_field;
 mod wigner_eckart;
+
+/// States in a field of any strength, with or without a nucleus.
+pub use rungline_kernel::splitting as in_field;

@@ -84,7 +84,8 @@ impl Spectrum {
             }
         }
         for (number, &(kind, left, right)) in pairs.iter().enumerate() {
-            let lines = self.amplitudes(kind, (left, right), &mut found.integrals)?;
+            let once = left == right;
+            let lines = self.amplitudes(kind, (left, right), once, &mut found.integrals)?;
             let place = |parity: usize, level: usize| {
                 places.get(parity).and_then(|of| of.get(level)).copied()
             };
@@ -110,10 +111,24 @@ impl Spectrum {
         Ok(found)
     }
 
+    /// ⟨a‖T‖b⟩ of every level a of one parity and b of another, or of the same, where both orders and a = b
+    /// are among them; signed, for they interfere. Their squares are S.
+    ///
+    /// # Errors
+    /// Those of [`Multipole::new`].
+    pub fn reduced(
+        &self,
+        kind: Kind,
+        (left, right): (usize, usize),
+    ) -> Result<Vec<Amplitude>, Problem> {
+        self.amplitudes(kind, (left, right), false, &mut Vec::new())
+    }
+
     fn amplitudes(
         &self,
         kind: Kind,
         (left, right): (usize, usize),
+        once: bool,
         integrals: &mut Vec<Value>,
     ) -> Result<Vec<Amplitude>, Problem> {
         let (Some(one), Some(two)) = (self.parities.get(left), self.parities.get(right)) else {
@@ -126,7 +141,7 @@ impl Spectrum {
                 let electron = ELECTRON_G.value;
                 let elements =
                     |rows: &_, columns: &_| magnetic_elements(one.basis(), electron, rows, columns);
-                return Ok(amplitudes(&one.levels, &one.levels, 1, true, elements));
+                return Ok(amplitudes(&one.levels, &one.levels, 1, once, elements));
             }
         };
         let operator = Multipole::new(one.basis(), two.basis(), rank)?;
@@ -135,7 +150,6 @@ impl Spectrum {
             .collect();
         let lengths: Vec<f64> = values.iter().map(|v| v.map_or(0.0, |v| v.value)).collect();
         integrals.extend(values.into_iter().flatten());
-        let once = left == right;
         Ok(amplitudes(
             &one.levels,
             &two.levels,
@@ -145,7 +159,8 @@ impl Spectrum {
         ))
     }
 
-    fn transfer(
+    /// ⟨a|r|c⟩ (rank 1) or ⟨a|r²|c⟩ between configurations of two parities, given or computed, a₀ and a₀².
+    pub fn transfer(
         &self,
         rank: u8,
         (left, right): (&Parity, &Parity),
