@@ -48,6 +48,8 @@ pub enum Dimension {
     MoleFraction,
     /// Refractive index, a pure number.
     RefractiveIndex,
+    /// Share of a whole, %.
+    Share,
     /// A pure number of any kind.
     Number,
 }
@@ -295,7 +297,7 @@ const fn described(
 
 impl Dimension {
     /// Every dimension.
-    pub const ALL: [Dimension; 21] = [
+    pub const ALL: [Dimension; 22] = [
         Dimension::Wavelength,
         Dimension::Wavenumber,
         Dimension::Frequency,
@@ -316,6 +318,7 @@ impl Dimension {
         Dimension::Humidity,
         Dimension::MoleFraction,
         Dimension::RefractiveIndex,
+        Dimension::Share,
         Dimension::Number,
     ];
 
@@ -347,6 +350,7 @@ impl Dimension {
             Dimension::Humidity => described("relative humidity", HUMIDITY, 0.0, 100.0),
             Dimension::MoleFraction => described("share of a gas", MOLE_FRACTION, 0.0, 1e6),
             Dimension::RefractiveIndex => described("refractive index", &[], 1.0, 10.0),
+            Dimension::Share => described("share", HUMIDITY, 0.0, 100.0),
             Dimension::Number => described("number", &[], -1e15, 1e15),
         }
     }
@@ -375,6 +379,7 @@ impl Dimension {
             Dimension::Humidity => "50 %",
             Dimension::MoleFraction => "450 ppm",
             Dimension::RefractiveIndex => "1.5",
+            Dimension::Share => "50 %",
             Dimension::Number => "1",
         }
     }

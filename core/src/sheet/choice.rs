@@ -16,6 +16,9 @@ pub const ENERGIES: [&str; 2] = ["computed", "given"];
 /// Where wavelengths are measured.
 pub const MEDIA: [&str; 2] = ["air", "vacuum"];
 
+/// What may stand before a detector, beside a linear polariser at an angle.
+pub const POLARISERS: [&str; 3] = ["none", "left circular", "right circular"];
+
 /// The choice that a text names, in any case of letters and with spaces around it.
 pub fn choice(typed: &str, words: &[&'static str]) -> Option<&'static str> {
     let typed = typed.trim();

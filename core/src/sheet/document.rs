@@ -4,14 +4,17 @@ use crate::configuration::{self, Species, filling};
 use crate::numerics::order::sort_by_key;
 use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
-use crate::quantity::{self, Dimension};
 use crate::terms::{self, Level, label, ls};
 
 use super::Question;
 use super::conditions::Conditions;
 use super::entry::{Content, Entry, Named, content};
+use super::field::Field;
 use super::given::Given;
 use super::json::Json;
+use super::level_alone::LevelAlone;
+use super::line_ends::End;
+use super::nucleus::Nuclear;
 use super::rich::{Piece, Rich};
 use super::structure::{Energies, Structure};
 use super::{schema, schema_check};
@@ -25,17 +28,6 @@ pub struct LevelOf {
     pub level: Level,
 }
 
-/// The field of the sheet.
-#[derive(Clone, Debug)]
-pub struct Field {
-    /// B in tesla.
-    pub tesla: f64,
-    /// As it was typed.
-    pub text: String,
-    /// Angle between field and line of sight.
-    pub angle_degrees: f64,
-}
-
 /// A sheet as it was read.
 #[derive(Clone, Debug, Default)]
 pub struct Document {
@@ -47,8 +39,8 @@ pub struct Document {
     pub entries: Vec<Entry>,
     /// The field.
     pub field: Option<Field>,
-    /// Upper and lower level of the line.
-    pub line: Option<(LevelOf, LevelOf)>,
+    /// Upper and lower end of the line.
+    pub line: Option<(End, End)>,
     /// Vacuum wavelength of the line in nanometres.
     pub wavelength_nm: Option<f64>,
     /// How radial functions and energies are computed.
@@ -59,6 +51,14 @@ pub struct Document {
     pub conditions: Conditions,
     /// Level energies from measurements, in cm⁻¹, sorted by level.
     pub measured: Vec<(LevelOf, f64)>,
+    /// The nucleus, or every isotope of the mixture.
+    pub nuclei: Vec<Nuclear>,
+    /// Whether these are isotopes that the sheet lists.
+    pub isotopes_listed: bool,
+    /// Whether hyperfine constants that are not entered are estimated.
+    pub estimate_constants: bool,
+    /// A level that needs no configuration.
+    pub level_alone: Option<LevelAlone>,
     /// Keys that no question of this version uses.
     pub(super) unused_keys: Vec<String>,
 }
@@ -74,6 +74,8 @@ impl Document {
         document.read_atom(json);
         document.read_field(json);
         document.read_line(json);
+        document.read_nuclei(json);
+        document.read_level_alone(json);
         document.read_measured(json);
         document.structure = Structure::read(json, &mut document.faults);
         document.refuse_energies(json);
@@ -91,7 +93,7 @@ impl Document {
             .any(|fault| fault.path == path || fault.path.starts_with(&format!("{path}/")))
     }
 
-    fn add(&mut self, problems: Vec<Problem>, text: &str, path: &str) {
+    pub(super) fn add(&mut self, problems: Vec<Problem>, text: &str, path: &str) {
         self.faults
             .extend(problems.into_iter().map(|p| p.in_utf16(text).at(path)));
     }
@@ -205,86 +207,6 @@ impl Document {
             },
             content: Content::Configuration(named),
         })
-    }
-
-    fn read_field(&mut self, json: &Json) {
-        let Some(field) = json.get("field") else {
-            return;
-        };
-        let Some(text) = field.get("flux_density").and_then(Json::as_text) else {
-            return;
-        };
-        let Ok(density) = quantity::quantity(text, Dimension::FluxDensity) else {
-            return;
-        };
-        let view = field
-            .get("view")
-            .and_then(Json::as_text)
-            .unwrap_or("across");
-        let angle_degrees = match super::choice::choice(view, &super::choice::VIEWS) {
-            Some("along") => Some(0.0),
-            Some(_) => Some(90.0),
-            None => quantity::quantity(view, Dimension::Angle)
-                .ok()
-                .map(|q| q.value),
-        };
-        if let Some(angle_degrees) = angle_degrees {
-            self.field = Some(Field {
-                tesla: density.value,
-                text: text.trim().to_owned(),
-                angle_degrees,
-            });
-        }
-    }
-
-    fn read_line(&mut self, json: &Json) {
-        let Some(line) = json.get("line") else { return };
-        if let Some(text) = line.get("wavelength").and_then(Json::as_text)
-            && let Ok(wavelength) = quantity::quantity(text, Dimension::Wavelength)
-        {
-            self.wavelength_nm = Some(wavelength.value);
-        }
-        let mut ends = [None, None];
-        for (end, key) in ends.iter_mut().zip(["upper", "lower"]) {
-            let Some(text) = line
-                .get(key)
-                .and_then(Json::as_text)
-                .filter(|t| !t.trim().is_empty())
-            else {
-                continue;
-            };
-            match self.level(text) {
-                Ok(level) => *end = level,
-                Err(problems) => {
-                    let problems = problems
-                        .into_iter()
-                        .map(|p| p.way("Leave the line out", ""));
-                    self.add(problems.collect(), text, &format!("/line/{key}"));
-                }
-            }
-        }
-        if let [Some(upper), Some(lower)] = ends {
-            if upper == lower {
-                let text = line
-                    .get("upper")
-                    .and_then(Json::as_text)
-                    .unwrap_or_default();
-                let mut problem = Problem::new(
-                    "line-without-change",
-                    "Upper and lower level are the same.",
-                    0,
-                    text.len(),
-                )
-                .bound("A line joins two different levels.");
-                for name in self.other_ends(&lower) {
-                    problem = problem.way(format!("Use {name}"), name);
-                }
-                problem = problem.way("Leave the line out", "");
-                self.add(vec![problem], text, "/line/upper");
-            } else {
-                self.line = Some((upper, lower));
-            }
-        }
     }
 
     /// How the atom or ion fills its subshells, by rule and as tabulated.

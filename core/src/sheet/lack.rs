@@ -9,8 +9,11 @@ use crate::radiation::selection::pair_count;
 use super::Question;
 use super::document::{Document, LevelOf};
 use super::entry::{Entry, Named};
+use super::field::Field;
 use super::json::Json;
+use super::level_alone::LevelAlone;
 use super::levels::MOST_LEVELS_WITH_LINES;
+use super::nucleus::natural;
 use super::pairs;
 
 /// What a question lacks, and a usual value that would do.
@@ -61,6 +64,9 @@ fn text(value: &str) -> Json {
 
 /// What a question lacks in this document.
 pub fn lack(document: &Document, question: Question) -> Option<Lack> {
+    if let (Question::Splitting, Some(level)) = (question, &document.level_alone) {
+        return alone(level, document.field.as_ref());
+    }
     let first = document.entries.first();
     let Some(first) = first else {
         return Some(Lack {
@@ -94,37 +100,105 @@ pub fn lack(document: &Document, question: Question) -> Option<Lack> {
             }
         }),
         Question::Lines => lines(document, first),
-        Question::Splitting => {
-            if document.line.is_none() {
-                return Some(match pairs::first_allowed(document) {
-                    Some((upper, lower)) => line_lack(document, &upper, &lower),
-                    None if document.entries.len() > 1 => Lack {
-                        code: "needs-a-line",
-                        needs: "a line: an upper and a lower level of these configurations"
-                            .to_owned(),
-                        way: None,
-                    },
-                    None => second_configuration(
-                        document,
-                        first,
-                        "a line, and so a second configuration",
-                    ),
-                });
-            }
-            document.field.is_none().then(|| Lack {
-                code: "needs-a-field",
-                needs: "a field".to_owned(),
-                way: Some(Way {
-                    label: "Put in 0.5 T".to_owned(),
-                    path: "/field".to_owned(),
-                    value: Json::Object(vec![
-                        ("flux_density".to_owned(), text("0.5 T")),
-                        ("view".to_owned(), text("across")),
-                    ]),
-                }),
-            })
-        }
+        Question::Splitting => splitting(document, first),
     }
+}
+
+fn field_lack() -> Lack {
+    Lack {
+        code: "needs-a-field",
+        needs: "a field or a nucleus".to_owned(),
+        way: Some(Way {
+            label: "Put in 0.5 T".to_owned(),
+            path: "/field".to_owned(),
+            value: Json::Object(vec![
+                ("flux_density".to_owned(), text("0.5 T")),
+                ("view".to_owned(), text("across")),
+            ]),
+        }),
+    }
+}
+
+/// A level alone needs its numbers; otherwise a field or a nucleus is needed, and where energies are not
+/// known a line.
+fn splitting(document: &Document, first: &Entry) -> Option<Lack> {
+    if super::energy_case::need(document).is_some() && document.line.is_none() {
+        return Some(match pairs::first_allowed(document) {
+            Some((upper, lower)) => line_lack(document, &upper, &lower),
+            None if document.entries.len() > 1 => Lack {
+                code: "needs-a-line",
+                needs: "a line: an upper and a lower level of these configurations".to_owned(),
+                way: None,
+            },
+            None => second_configuration(document, first, "a line, and so a second configuration"),
+        });
+    }
+    if let (Some(nucleus), false) = (document.nuclei.first(), document.isotopes_listed)
+        && nucleus.spin.is_none()
+    {
+        return Some(spin_lack(document));
+    }
+    if let (Some((code, needs)), false, None) = (
+        super::energy_case::need(document),
+        document.nuclei.is_empty(),
+        &document.field,
+    ) {
+        return Some(Lack {
+            code,
+            needs,
+            way: None,
+        });
+    }
+    (document.field.is_none() && document.nuclei.is_empty()).then(field_lack)
+}
+
+/// The spin of the nucleus, with a natural isotope's as a way.
+fn spin_lack(document: &Document) -> Lack {
+    let z = document.species.and_then(|species| species.element);
+    let isotopes = z.map(natural).unwrap_or_default();
+    let usual = isotopes
+        .iter()
+        .find_map(|i| i.spin.filter(|spin| spin.doubled() > 0));
+    let named = document.species.and_then(|species| species.mass_number);
+    Lack {
+        code: "needs-a-spin",
+        needs: match named {
+            Some(_) => "the spin of the nucleus, which the table of isotopes does not have",
+            None => "the spin of the nucleus, or the mass number of an isotope",
+        }
+        .to_owned(),
+        way: usual.map(|spin| Way {
+            label: format!("Put in {spin}"),
+            path: "/nucleus/spin".to_owned(),
+            value: text(&spin.to_string()),
+        }),
+    }
+}
+
+/// What a level alone still needs.
+fn alone(level: &LevelAlone, field: Option<&Field>) -> Option<Lack> {
+    let lack = |code, needs: &str, key: &str, usual: &str| {
+        Some(Lack {
+            code,
+            needs: needs.to_owned(),
+            way: Some(Way {
+                label: format!("Put in {usual}"),
+                path: format!("/level/{key}"),
+                value: text(usual),
+            }),
+        })
+    };
+    let tesla = field.map_or(0.0, |field| field.tesla);
+    if level.j.is_none() {
+        return lack("needs-a-j", "the J of the level", "J", "1/2");
+    }
+    if level.g.is_none() && tesla > 0.0 && level.j.is_some_and(|j| j.doubled() > 0) {
+        return lack("needs-a-g", "the g of the level", "g", "2.0023");
+    }
+    if level.spin.is_none() && (level.a != 0.0 || level.b != 0.0) {
+        return lack("needs-a-spin", "the spin I of the nucleus", "I", "3/2");
+    }
+    None
 }
 
 /// Lines need two levels, and not too many: fewer where their energies are not known.

@@ -14,6 +14,7 @@ mod decays;
 mod document;
 mod energy_case;
 mod entry;
+mod field;
 mod formula;
 mod given;
 mod ground;
@@ -21,6 +22,7 @@ mod ionised;
 mod json;
 mod json_repair;
 mod lack;
+mod level_alone;
 mod level_names;
 mod levels;
 mod levels_facts;
@@ -29,6 +31,7 @@ mod levels_limits;
 mod levels_rows;
 mod levels_words;
 mod light;
+mod line_ends;
 mod line_rows;
 mod line_wavelength;
 mod lines;
@@ -37,6 +40,7 @@ mod lines_relative;
 mod lines_spectrum_words;
 mod lines_words;
 mod measured;
+mod nucleus;
 mod orbitals;
 mod orbitals_between;
 mod orbitals_cache;
@@ -61,6 +65,9 @@ mod shells;
 mod solved;
 mod solved_lines;
 mod splitting;
+mod splitting_keeps;
+mod splitting_linear;
+mod splitting_rows;
 mod states;
 mod states_schemes;
 mod states_terms;
@@ -139,7 +146,7 @@ pub fn answer(
         Question::Orbitals => orbitals::answer(document, watch).map(|a| to_json(&a)),
         Question::Levels => levels::answer(document, watch).map(|a| to_json(&a)),
         Question::Lines => lines::answer(document, watch).map(|a| to_json(&a)),
-        Question::Splitting => splitting::answer(document).map(|a| to_json(&a)),
+        Question::Splitting => splitting::answer(document, watch).map(|a| to_json(&a)),
     };
     text.map_err(|problem| vec![problem])
 }

@@ -34,11 +34,15 @@ pub fn check(json: &Json, faults: &mut Vec<Problem>) {
         not_negative(level.get("J"), "/level/J", faults);
         not_negative(level.get("I"), "/level/I", faults);
     }
-    not_negative(
-        json.get("nucleus").and_then(|n| n.get("spin")),
-        "/nucleus/spin",
-        faults,
-    );
+    if let Some(nucleus) = json.get("nucleus") {
+        not_negative(nucleus.get("spin"), "/nucleus/spin", faults);
+        typed(
+            nucleus.get("g_I"),
+            Dimension::Number,
+            "/nucleus/g_I",
+            faults,
+        );
+    }
 }
 
 /// A list that must hold two wavelengths.

@@ -3,12 +3,14 @@
 use serde::Serialize;
 
 use crate::problem::Problem;
+use crate::quantity::TwiceJ;
 use crate::terms::label;
 
 use super::document::Document;
 use super::entry::{Content, Entry};
 use super::json::Json;
 use super::lack::Way;
+use super::nucleus::{isotope_name, natural};
 use super::rich::{Kind, Rich};
 use super::{Question, to_json};
 
@@ -22,6 +24,15 @@ struct Reading<'a> {
     /// Labels of levels that the sheet's configurations have, for choosing a line.
     levels: Vec<String>,
     questions: Vec<QuestionState>,
+    /// The natural isotopes of the element.
+    isotopes: Vec<NaturalIsotope>,
+}
+
+#[derive(Serialize)]
+struct NaturalIsotope {
+    isotope: String,
+    share: String,
+    spin: Option<TwiceJ>,
 }
 
 #[derive(Serialize)]
@@ -68,6 +79,7 @@ pub fn reading(sheet: &Json) -> String {
             .into_iter()
             .map(|question| state(&document, question))
             .collect(),
+        isotopes: natural_isotopes(&document),
         faults: &document.faults,
     })
 }
@@ -110,6 +122,18 @@ fn level_names(document: &Document) -> Vec<String> {
         );
     }
     names
+}
+
+fn natural_isotopes(document: &Document) -> Vec<NaturalIsotope> {
+    let z = document.species.and_then(|species| species.element);
+    let rows = z.map(natural).unwrap_or_default();
+    rows.iter()
+        .map(|isotope| NaturalIsotope {
+            isotope: isotope_name(isotope),
+            share: format!("{} %", isotope.abundance.unwrap_or(0.0)),
+            spin: isotope.spin,
+        })
+        .collect()
 }
 
 fn electrons(rich: Rich, entry: &Entry) -> Rich {
@@ -189,9 +213,10 @@ fn echoes(document: &Document) -> Vec<Echo> {
                 .say(" between field and line of sight"),
         );
     }
+    splitting_echoes(document, &mut add);
     if let Some((upper, lower)) = &document.line {
-        add("/line/upper", document.level_rich(upper));
-        add("/line/lower", document.level_rich(lower));
+        add("/line/upper", document.end_rich(upper));
+        add("/line/lower", document.end_rich(lower));
     }
     if let Some(polarisation) = &document.structure.polarisation {
         add(
@@ -242,6 +267,69 @@ fn echoes(document: &Document) -> Vec<Echo> {
         );
     }
     echoes
+}
+
+/// Fields of the question on splitting beside the flux density.
+fn splitting_echoes(document: &Document, add: &mut dyn FnMut(&str, Rich)) {
+    let entered = |value: f64, unit| Rich::new().number(value, unit, Kind::Entered);
+    if let Some(field) = &document.field {
+        if let Some(end) = field.up_to {
+            add("/field/up_to", entered(end, Some("T")));
+        }
+        if let Some(words) = field.polariser_words() {
+            add("/field/polariser", Rich::words(words));
+        }
+    }
+    for (index, nuclear) in document.nuclei.iter().enumerate() {
+        let known = match (nuclear.spin, nuclear.g) {
+            (Some(spin), Some(g)) if spin.doubled() > 0 => {
+                Rich::words(format!("I = {spin}, g_I = ")).number(
+                    g,
+                    None,
+                    if nuclear.typed {
+                        Kind::Entered
+                    } else {
+                        Kind::Measured
+                    },
+                )
+            }
+            (Some(spin), _) => Rich::words(format!("I = {spin}")),
+            (None, _) => Rich::words("a nucleus whose spin the table does not have"),
+        };
+        let known = match &nuclear.name {
+            Some(name) => Rich::words(format!("{name}: ")).then(&known),
+            None => known,
+        };
+        match nuclear.share {
+            None => add("/nucleus/spin", known),
+            Some((share, _)) => {
+                add(&format!("/isotopes/{index}/isotope"), known);
+                add(
+                    &format!("/isotopes/{index}/share"),
+                    entered(share, Some("%")),
+                );
+            }
+        }
+    }
+    let Some(level) = &document.level_alone else {
+        return;
+    };
+    if let Some(j) = level.j {
+        add("/level/J", Rich::words(format!("J = {j}")));
+    }
+    if let Some(spin) = level.spin {
+        add("/level/I", Rich::words(format!("I = {spin}")));
+    }
+    for (path, value, unit) in [
+        ("/level/g", level.g, None),
+        ("/level/A", Some(level.a), Some("MHz")),
+        ("/level/B", Some(level.b), Some("MHz")),
+        ("/level/g_I", level.g_i, None),
+    ] {
+        if let Some(value) = value.filter(|value| *value != 0.0) {
+            add(path, entered(value, unit));
+        }
+    }
 }
 
 /// "neutral iron", "iron with charge 2+".

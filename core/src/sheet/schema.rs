@@ -6,13 +6,16 @@
 
 use crate::quantity::Dimension;
 
-use super::choice::{ENERGIES, MEDIA, VIEWS};
+use super::choice::{ENERGIES, MEDIA, POLARISERS, VIEWS};
 
 /// The document version that is read and written.
 pub const VERSION: f64 = 1.0;
 
 /// The most configurations of a sheet.
 pub const MAX_CONFIGURATIONS: usize = 40;
+
+/// The most isotopes of a sheet.
+pub const MAX_ISOTOPES: usize = 40;
 
 /// What may stand under a key.
 #[derive(Debug)]
@@ -51,6 +54,9 @@ use Shape::{
     Bool, Choice, ChoiceOr, Group, HalfInteger, Label, List, Named, Notation, Number, Quantity,
     Reading, Text,
 };
+
+/// Hyperfine constants of levels.
+const CONSTANTS: Shape = Named(&Quantity(Dimension::Frequency), 1000);
 
 /// The whole document.
 pub const SHEET: Shape = Group(&[
@@ -91,6 +97,10 @@ pub const SHEET: Shape = Group(&[
         Group(&[
             ("flux_density", Quantity(Dimension::FluxDensity)),
             ("view", ChoiceOr(&VIEWS, Dimension::Angle)),
+            ("up_to", Quantity(Dimension::FluxDensity)),
+            ("diamagnetic", Bool),
+            ("tolerance", Reading),
+            ("polariser", ChoiceOr(&POLARISERS, Dimension::Angle)),
         ]),
     ),
     (
@@ -131,15 +141,24 @@ pub const SHEET: Shape = Group(&[
         "nucleus",
         Group(&[
             ("spin", HalfInteger),
-            (
-                "magnetic_dipole",
-                Named(&Quantity(Dimension::Frequency), 1000),
-            ),
-            (
-                "electric_quadrupole",
-                Named(&Quantity(Dimension::Frequency), 1000),
-            ),
+            ("g_I", Reading),
+            ("magnetic_dipole", CONSTANTS),
+            ("electric_quadrupole", CONSTANTS),
+            ("estimate", Bool),
         ]),
+    ),
+    (
+        "isotopes",
+        List(
+            &Group(&[
+                ("isotope", Text(80)),
+                ("share", Quantity(Dimension::Share)),
+                ("shift", Quantity(Dimension::Frequency)),
+                ("magnetic_dipole", CONSTANTS),
+                ("electric_quadrupole", CONSTANTS),
+            ]),
+            MAX_ISOTOPES,
+        ),
     ),
     (
         "level",

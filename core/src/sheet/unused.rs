@@ -5,7 +5,7 @@ use super::json::Json;
 use super::schema;
 
 /// Keys at the top that are used.
-const USED: [&str; 14] = [
+const USED: [&str; 17] = [
     "rungline",
     "title",
     "note",
@@ -15,6 +15,9 @@ const USED: [&str; 14] = [
     "measured",
     "field",
     "line",
+    "nucleus",
+    "isotopes",
+    "level",
     "source",
     "window",
     "medium",

@@ -1,5 +1,6 @@
 //! Splitting of levels and lines in a magnetic field.
 
+pub mod seen;
 pub mod weak_field;
 mod wigner_eckart;
 

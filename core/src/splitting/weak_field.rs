@@ -8,6 +8,7 @@
 //! Seen at an angle to the field each q is weighted by its own directions, so that the whole line
 //! stays 1. E1 and M1 are seen alike without a polariser.
 
+use super::seen::{Polariser, weight};
 use super::wigner_eckart::{dipole_share, quadrupole_share};
 use crate::constants::BOHR_MAGNETON_WAVENUMBER;
 use crate::numerics::order::sort_by;
@@ -76,23 +77,6 @@ impl Polarisation {
             Polarisation::PlusTwo => 2,
         }
     }
-
-    /// The intensity at the angle θ between field and line of sight, given c = cos²θ, its mean over
-    /// all directions being 1.
-    ///
-    /// Dipole: (3/2) sin²θ and (3/4)(1 + cos²θ). Quadrupole, for |ΔM| = 0, 1, 2: (15/2) sin²θ cos²θ,
-    /// (5/4)(1 − 3 cos²θ + 4 cos⁴θ), (5/4)(1 − cos⁴θ) (the squared vector spherical harmonics of
-    /// l = 1 and 2; Jackson, *Classical Electrodynamics*, table 9.1).
-    fn weight(self, rank: u32, c: f64) -> f64 {
-        match (rank, self.change_of_m().abs()) {
-            (1, 0) => 1.5 * (1.0 - c),
-            (1, 1) => 0.75 * (1.0 + c),
-            (2, 0) => 7.5 * (1.0 - c) * c,
-            (2, 1) => 1.25 * (1.0 - 3.0 * c + 4.0 * c * c),
-            (2, 2) => 1.25 * (1.0 - c * c),
-            _ => 0.0,
-        }
-    }
 }
 
 /// One component.
@@ -108,8 +92,8 @@ pub struct Component {
     pub lorentz: f64,
     /// Strength over all directions, 1 for the line.
     pub strength: f64,
-    /// Rank of the radiation, which decides how it is seen.
-    rank: u32,
+    /// The radiation, which decides how it is seen.
+    multipole: Multipole,
 }
 
 /// Components that coincide.
@@ -169,7 +153,7 @@ pub fn pattern(
                     // A sum with +0 has no negative zero.
                     lorentz: energy(upper, m_upper) - energy(lower, m_lower) + 0.0,
                     strength,
-                    rank,
+                    multipole,
                 });
             }
         }
@@ -253,34 +237,19 @@ fn check(upper: SplitLevel, lower: SplitLevel, multipole: Multipole) -> Result<(
 impl Component {
     /// What is seen of it at the angle between field and line of sight, in degrees, without polariser.
     pub fn seen(&self, angle_degrees: f64) -> f64 {
-        self.strength
-            * self
-                .polarisation
-                .weight(self.rank, cos_squared(angle_degrees))
+        let q = self.polarisation.change_of_m();
+        self.strength * weight(self.multipole, q, angle_degrees, Polariser::None)
     }
 
     /// What is seen along the field.
     pub fn along(&self) -> f64 {
-        self.strength * self.polarisation.weight(self.rank, 1.0)
+        self.seen(0.0)
     }
 
     /// What is seen across the field.
     pub fn across(&self) -> f64 {
-        self.strength * self.polarisation.weight(self.rank, 0.0)
+        self.seen(90.0)
     }
-}
-
-/// cos²θ for an angle in degrees, exact at multiples of 90°; an angle that is no number is taken as 90°.
-fn cos_squared(angle_degrees: f64) -> f64 {
-    if !angle_degrees.is_finite() {
-        return 0.0;
-    }
-    let folded = (angle_degrees % 180.0).abs();
-    if folded == 90.0 {
-        return 0.0;
-    }
-    let cosine = libm::cos(folded * (core::f64::consts::PI / 180.0));
-    cosine * cosine
 }
 
 impl Pattern {
