@@ -136,4 +136,12 @@ impl Field {
             Polariser::Linear(angle) => Some(format!("linear at {angle}° from the field")),
         }
     }
+
+    /// The tolerance of the linear pattern in words.
+    pub fn tolerance_words(&self) -> String {
+        match self.tolerance {
+            Tolerance::Relative(share) => format!("{} %", share * 100.0),
+            Tolerance::Absolute(value) => format!("{value} cm-1"),
+        }
+    }
 }

@@ -122,7 +122,8 @@ fn field_lack() -> Lack {
 /// A level alone needs its numbers; otherwise a field or a nucleus is needed, and where energies are not
 /// known a line.
 fn splitting(document: &Document, first: &Entry) -> Option<Lack> {
-    if super::energy_case::need(document).is_some() && document.line.is_none() {
+    let is_full = super::splitting::is_full(document);
+    if !is_full && document.line.is_none() {
         return Some(match pairs::first_allowed(document) {
             Some((upper, lower)) => line_lack(document, &upper, &lower),
             None if document.entries.len() > 1 => Lack {
@@ -138,16 +139,8 @@ fn splitting(document: &Document, first: &Entry) -> Option<Lack> {
     {
         return Some(spin_lack(document));
     }
-    if let (Some((code, needs)), false, None) = (
-        super::energy_case::need(document),
-        document.nuclei.is_empty(),
-        &document.field,
-    ) {
-        return Some(Lack {
-            code,
-            needs,
-            way: None,
-        });
+    if !is_full && document.field.is_none() {
+        return Some(field_lack());
     }
     (document.field.is_none() && document.nuclei.is_empty()).then(field_lack)
 }

@@ -65,9 +65,15 @@ mod shells;
 mod solved;
 mod solved_lines;
 mod splitting;
+mod splitting_estimate;
+mod splitting_full;
+mod splitting_joins;
 mod splitting_keeps;
+mod splitting_limits;
 mod splitting_linear;
 mod splitting_rows;
+mod splitting_sets;
+mod splitting_words;
 mod states;
 mod states_schemes;
 mod states_terms;
@@ -251,7 +257,9 @@ pub fn estimate_message(sheet: &Json, question: &str) -> String {
             solved::estimate(&document, true)
         }
         Some(Question::Lines) => rows(pairs::rows(&document)),
-        Some(Question::Splitting) | None => (0.0, 0.0),
+        Some(Question::Splitting) => splitting_estimate::estimate(&document, 2.0),
+        None if question == "splitting_map" => splitting_estimate::estimate(&document, 200.0),
+        None => (0.0, 0.0),
     };
     to_json(&Estimate {
         seconds: 0.002 + seconds,

@@ -405,6 +405,27 @@ pub fn estimate(document: &Document, lines: bool) -> (f64, f64) {
     (seconds, bytes * 1e-6)
 }
 
+/// Seconds and megabytes that levels take beyond what is kept, without lines or rows.
+pub fn estimate_levels(document: &Document) -> (f64, f64) {
+    let Ok(case) = energy_case(document) else {
+        return (0.0, 0.0);
+    };
+    let (EnergyCase::Model { case: model, .. }, None) = (&case, kept(&case, &labels(document)))
+    else {
+        return (0.0, 0.0);
+    };
+    let Ok(expected) = model::estimate(model) else {
+        return (0.0, 0.0);
+    };
+    let mut seconds = (expected.seconds - expected.field_seconds).max(0.0);
+    for place in 0..model.configurations.len() {
+        if let Some(atom) = model.atom(place).filter(orbitals_missing) {
+            seconds += super::orbitals_field::cost(&atom).0;
+        }
+    }
+    (seconds, expected.bytes as f64 * 1e-6)
+}
+
 /// Seconds that the levels take without anything kept; nothing where they cannot be had.
 pub fn cold_seconds(document: &Document) -> Option<f64> {
     match energy_case(document).ok()? {

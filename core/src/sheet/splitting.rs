@@ -4,17 +4,41 @@ use crate::problem::Problem;
 
 use super::Question;
 use super::document::Document;
+use super::energy_case;
 use super::field::Field;
+use super::splitting_full;
 use super::splitting_linear;
 use super::splitting_rows::{FieldOf, Splitting};
+use super::structure::Energies;
 use super::watch::Watch;
 
 /// The answer to *How does it split?*
-pub fn answer(document: &Document, _watch: &mut Watch) -> Result<Splitting, Problem> {
+pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Problem> {
     if let Some(lack) = document.lacks(Question::Splitting) {
         return Err(lack.problem());
     }
-    splitting_linear::answer(document)
+    if is_full(document) {
+        splitting_full::answer(document, watch)
+    } else {
+        splitting_linear::answer(document)
+    }
+}
+
+/// Whether energies are known, so that the field can be diagonalised.
+///
+/// What is not given is zero, and without any parameter all levels of a configuration lie together: that
+/// is meant where the sheet says so or asks for no line.
+pub fn is_full(document: &Document) -> bool {
+    if document.level_alone.is_some() {
+        return true;
+    }
+    match energy_case::need(document) {
+        None => true,
+        Some(("needs-parameters", _)) => {
+            document.line.is_none() || document.structure.energies == Some(Energies::Given)
+        }
+        Some(_) => false,
+    }
 }
 
 /// The field as answers carry it.

@@ -350,8 +350,8 @@ fn checked_wavelength(nm: f64) -> Result<f64, Problem> {
     .bound("0.001 to 1000000000 nm"))
 }
 
-/// Δλ in pm of a line at `nm` shifted by `wavenumber` cm⁻¹.
-fn pm_offset(nm: f64, wavenumber: f64) -> Option<f64> {
+/// Δλ in pm of a line at `nm` shifted by `wavenumber` cm⁻¹; nothing beyond the line's own wavenumber.
+pub fn pm_offset(nm: f64, wavenumber: f64) -> Option<f64> {
     // λ Δσ without unit: 1 nm·cm⁻¹ = 10⁻⁷.
     let relative = nm * wavenumber * 1.0e-7;
     (relative > -1.0).then(|| 0.0 - 1.0e3 * nm * relative / (1.0 + relative))

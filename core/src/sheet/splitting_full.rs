@@ -1,0 +1,657 @@
+//! States and components by diagonalisation, from weak to strong fields, with or without a nucleus.
+
+use crate::constants::BOHR_MAGNETON_WAVENUMBER;
+use crate::numerics::order::sort_by;
+use crate::problem::Problem;
+use crate::quantity::TwiceJ;
+use crate::radiation::Multipole;
+use crate::splitting::in_field::{AtField, MHZ_PER_WAVENUMBER, Split, State};
+use crate::splitting::seen::{Polariser, effective_g, weight};
+use crate::splitting::weak_field::pm_offset;
+
+use super::document::Document;
+use super::field::Field;
+use super::levels_rows::Shared;
+use super::line_ends::{End, Of};
+use super::nucleus::Nuclear;
+use super::placed::Placed;
+use super::rich::Kind;
+use super::splitting::{cautions, field_of};
+use super::splitting_joins::Join;
+use super::splitting_keeps::{Shown, keeps};
+use super::splitting_limits::limits;
+use super::splitting_rows::{
+    ComponentRow, ConstantRow, DiamagneticRow, IsotopeRow, LineOf, LinearRow, NucleusRow,
+    Splitting, StateRow,
+};
+use super::splitting_sets::{Pass, Prepared, Set, SetLevel, prepared};
+use super::splitting_words::{Told, kinds, sentence, working};
+use super::watch::Watch;
+
+/// Strengths below this share of the whole are rounding.
+pub const LEAST_STRENGTH: f64 = 1e-12;
+
+/// The answer by diagonalisation.
+pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Problem> {
+    let ready = prepared(document, watch)?;
+    let field = document.field.as_ref();
+    if let (Some(true), Err(problem)) = (field.map(|f| f.diamagnetic), &ready.diamagnetic) {
+        let way = problem.clone().way("Leave it out", "false");
+        return Err(way.at("/field/diamagnetic"));
+    }
+    let tesla = field.map_or(0.0, |field| field.tesla);
+    let line = line_of(document, &ready);
+    let mut states = Vec::new();
+    let mut components = Vec::new();
+    for pass in &ready.passes {
+        let now = fields(pass, tesla)?;
+        let weak = fields(pass, 0.0)?;
+        let name = isotope_of(document, pass);
+        for ((set, split), at) in ready.sets.iter().zip(&pass.splits).zip(&now) {
+            for place in ready.order(set, split, document.line.is_some()) {
+                states.extend(state_row(document, set, split, at, place, name.as_ref()));
+            }
+        }
+        for (number, join) in ready.joins.iter().enumerate() {
+            let rows = Rows {
+                document,
+                ready: &ready,
+                pass,
+                join,
+                number,
+                now: &now,
+                weak: &weak,
+                line: line.as_ref(),
+                isotope: name.clone(),
+            };
+            components.extend(rows.rows(field));
+        }
+    }
+    // With a line the upper end first, as one reads it.
+    sort_by(&mut states, |a, b| side_order(a).cmp(&side_order(b)));
+    let positions = positions(&components);
+    let pattern = describe(&components, positions, &line);
+    let linear = linear(field, &components);
+    let nucleus = nucleus_row(document, &ready);
+    let isotopes = isotope_rows(document);
+    let diamagnetic = field.map(|field| DiamagneticRow {
+        included: field.diamagnetic,
+        largest: ready
+            .sets
+            .iter()
+            .filter_map(|set| set.diamagnetic_at_one)
+            .fold(None, |most: Option<f64>, at| {
+                Some(most.unwrap_or(0.0).max(at))
+            })
+            .map(|at_one| at_one * tesla * tesla),
+    });
+    let told = Told {
+        document,
+        ready: &ready,
+        line: line.as_ref(),
+        states: &states,
+        components: &components,
+        pattern: &pattern,
+        linear: linear.as_ref(),
+        diamagnetic: diamagnetic.as_ref(),
+    };
+    let mut around = super::answer::Around::saying(sentence(&told));
+    around.working = working(&told);
+    around.limits = limits(&told);
+    around.cautions = cautions(field);
+    let nm = line.as_ref().and_then(|line| line.wavelength_nm);
+    around.cautions.extend(document.source_cautions(nm));
+    around.kinds = kinds(&told);
+    let shown: Vec<Shown> = components
+        .iter()
+        .map(|c| Shown {
+            polarisation: c.polarisation,
+            offset: c.offset,
+            seen: c.seen,
+        })
+        .collect();
+    Ok(Splitting {
+        field: field.map(|field| field_of(field, keeps(field, &shown))),
+        line,
+        diamagnetic,
+        nucleus,
+        isotopes,
+        states,
+        components,
+        no_components: ready.no_components.clone(),
+        linear,
+        positions,
+        pattern,
+        ..Splitting::new("full", around)
+    })
+}
+
+fn side_order(row: &StateRow) -> u8 {
+    u8::from(row.side == Some("lower"))
+}
+
+/// The states of every set of a pass in a field.
+pub fn fields(pass: &Pass, tesla: f64) -> Result<Vec<AtField>, Problem> {
+    let found = pass.splits.iter().map(|split| split.at(tesla));
+    found
+        .collect::<Result<Vec<_>, _>>()
+        .map_err(|p| p.at("/field/flux_density"))
+}
+
+/// The name of a pass's isotope, where there are several.
+pub fn isotope_of(document: &Document, pass: &Pass) -> Option<Shared> {
+    let nuclear = document.nuclei.get(pass.nuclear?)?;
+    let name = nuclear
+        .name
+        .as_deref()
+        .filter(|_| document.isotopes_listed)?;
+    Some(Shared(name.into()))
+}
+
+/// Share of the light of a pass, from 0 to 1.
+pub fn share_of(document: &Document, pass: &Pass) -> f64 {
+    let own = pass.nuclear.and_then(|place| document.nuclei.get(place));
+    let share = |nuclear: &Nuclear| nuclear.share.map_or(1.0, |(share, _)| share);
+    let whole: f64 = document.nuclei.iter().map(share).sum();
+    match own {
+        Some(own) if whole > 0.0 => share(own) / whole,
+        _ => 1.0,
+    }
+}
+
+/// Where the lines of a pass lie beside the others, cm⁻¹.
+pub fn shift_of(document: &Document, pass: &Pass) -> f64 {
+    let own = pass.nuclear.and_then(|place| document.nuclei.get(place));
+    own.map_or(0.0, |nuclear| nuclear.shift / MHZ_PER_WAVENUMBER)
+}
+
+/// What a state is called: level, F or M_J and M_I, M.
+pub fn state_name(level: &SetLevel, state: &State, isotope: Option<&Shared>) -> String {
+    let isotope = isotope.map_or(String::new(), |name| format!("{} ", name.0));
+    format!("{isotope}{} {}", level.label.0, momenta(state))
+}
+
+fn momenta(state: &State) -> String {
+    let j = TwiceJ::from_doubled;
+    match (state.two_f, state.two_m_j, state.two_m_i) {
+        (Some(f), ..) => format!("F {} M {}", j(f), j(state.two_m)),
+        (None, Some(m_j), Some(m_i)) => format!("M_J {} M_I {}", j(m_j), j(m_i)),
+        _ => format!("M {}", j(state.two_m)),
+    }
+}
+
+/// The same as it is read: "F = 2, M = −1".
+fn momenta_words(state: &State) -> String {
+    let words = momenta(state);
+    let mut parts = Vec::new();
+    let mut words = words.split(' ');
+    while let (Some(name), Some(value)) = (words.next(), words.next()) {
+        parts.push(format!("{name} = {}", value.replace('-', "−")));
+    }
+    parts.join(", ")
+}
+
+fn state_row(
+    document: &Document,
+    set: &Set,
+    split: &Split,
+    at: &AtField,
+    place: usize,
+    isotope: Option<&Shared>,
+) -> Option<StateRow> {
+    let state = split.states().get(place)?;
+    let level = set.levels.get(state.level)?;
+    let shift = *at.shifts.get(place)?;
+    let slope = *at.slopes.get(place)?;
+    let lorentz = match document.nuclei.is_empty() && document.level_alone.is_none() {
+        true if at.tesla > 0.0 => Some(shift / (BOHR_MAGNETON_WAVENUMBER.value * at.tesla)),
+        true => Some(slope / BOHR_MAGNETON_WAVENUMBER.value),
+        false => None,
+    };
+    let doubled = TwiceJ::from_doubled;
+    let coupled = state.two_m_i.is_some();
+    Some(StateRow {
+        name: state_name(level, state, isotope),
+        rich: level
+            .rich
+            .clone()
+            .say(format!(", {}", momenta_words(state))),
+        configuration: level.configuration.clone(),
+        level: level.label.clone(),
+        j: level.j,
+        m: doubled(state.two_m),
+        f: state.two_f.map(doubled),
+        m_j: state.two_m_j.filter(|_| coupled).map(doubled),
+        m_i: state.two_m_i.map(doubled),
+        // A level alone counts from its energy without nucleus and field.
+        energy: at.energies.get(place).copied(),
+        shift,
+        slope,
+        lorentz,
+        side: match (level.is_upper, level.is_lower) {
+            (true, _) => Some("upper"),
+            (_, true) => Some("lower"),
+            _ => None,
+        },
+        isotope: isotope.cloned(),
+    })
+}
+
+/// π, σ+ … by M_upper − M_lower.
+pub fn polarisation(q: i32) -> &'static str {
+    match q {
+        0 => "pi",
+        1 => "sigma+",
+        -1 => "sigma-",
+        2 => "delta-M+2",
+        _ => "delta-M-2",
+    }
+}
+
+/// A component whose ends are told apart by their energies.
+pub struct Ends<'a> {
+    /// Upper and lower level and state, with their places in the answer of their sets.
+    pub upper: (&'a SetLevel, &'a State, usize),
+    pub lower: (&'a SetLevel, &'a State, usize),
+    /// Whether the join's upper set holds the lower end.
+    pub turned: bool,
+    /// M_upper − M_lower.
+    pub q: i32,
+}
+
+/// The ends of a component; without a line the join's upper set may hold the lower level.
+pub fn ends<'a>(
+    document: &Document,
+    ready: &'a Prepared,
+    pass: &'a Pass,
+    join: &Join,
+    component: &crate::splitting::in_field::Component,
+) -> Option<Ends<'a>> {
+    let of = |set: usize, place: usize| {
+        let state = pass.splits.get(set)?.states().get(place)?;
+        Some((ready.sets.get(set)?.levels.get(state.level)?, state, place))
+    };
+    let upper = of(join.upper, component.upper)?;
+    let lower = of(join.lower, component.lower)?;
+    let turned = document.line.is_none() && upper.0.energy < lower.0.energy;
+    Some(match turned {
+        false => Ends {
+            upper,
+            lower,
+            turned,
+            q: component.q,
+        },
+        true => Ends {
+            upper: lower,
+            lower: upper,
+            turned,
+            q: -component.q,
+        },
+    })
+}
+
+/// Components of one join and one nucleus.
+struct Rows<'a> {
+    document: &'a Document,
+    ready: &'a Prepared,
+    pass: &'a Pass,
+    join: &'a Join,
+    number: usize,
+    now: &'a [AtField],
+    weak: &'a [AtField],
+    line: Option<&'a LineOf>,
+    isotope: Option<Shared>,
+}
+
+impl Rows<'_> {
+    fn rows(&self, field: Option<&Field>) -> Vec<ComponentRow> {
+        let Some(components) = self.pass.components.get(self.number) else {
+            return Vec::new();
+        };
+        let (Some(above), Some(below)) =
+            (self.now.get(self.join.upper), self.now.get(self.join.lower))
+        else {
+            return Vec::new();
+        };
+        let strengths = components.strengths(above, below);
+        let whole: f64 = strengths.iter().sum();
+        if whole <= 0.0 {
+            return Vec::new();
+        }
+        let share = share_of(self.document, self.pass);
+        let mut rows = Vec::with_capacity(strengths.len());
+        for (component, strength) in components.list().iter().zip(&strengths) {
+            let strength = strength / whole;
+            if strength > LEAST_STRENGTH {
+                rows.extend(self.row(component, strength * share, field));
+            }
+        }
+        rows
+    }
+
+    fn row(
+        &self,
+        component: &crate::splitting::in_field::Component,
+        strength: f64,
+        field: Option<&Field>,
+    ) -> Option<ComponentRow> {
+        let ends = ends(self.document, self.ready, self.pass, self.join, component)?;
+        let (set_up, set_low) = match ends.turned {
+            false => (self.join.upper, self.join.lower),
+            true => (self.join.lower, self.join.upper),
+        };
+        let value = |fields: &[AtField], of: fn(&AtField) -> &Vec<f64>| -> Option<f64> {
+            let up = *of(fields.get(set_up)?).get(ends.upper.2)?;
+            let low = *of(fields.get(set_low)?).get(ends.lower.2)?;
+            Some(up - low)
+        };
+        let own = match (
+            self.line.and_then(|line| line.centre),
+            ends.upper.0.energy,
+            ends.lower.0.energy,
+        ) {
+            (Some(centre), Some(up), Some(low)) => (up - low) - centre,
+            _ => 0.0,
+        };
+        let away = own + shift_of(self.document, self.pass);
+        let tesla = self.now.first().map_or(0.0, |at| at.tesla);
+        let offset = value(self.now, |at| &at.shifts)? + away + 0.0;
+        let slope = value(self.weak, |at| &at.slopes)?;
+        let linear = value(self.weak, |at| &at.shifts)? + slope * tesla + away + 0.0;
+        let plain = self.document.nuclei.is_empty();
+        let lorentz = match plain {
+            true if tesla > 0.0 => {
+                Some((offset - away) / (BOHR_MAGNETON_WAVENUMBER.value * tesla) + 0.0)
+            }
+            true => Some(slope / BOHR_MAGNETON_WAVENUMBER.value + 0.0),
+            false => None,
+        };
+        let look = |angle: f64, polariser: Polariser| {
+            strength * weight(self.join.multipole, ends.q, angle, polariser)
+        };
+        let doubled = TwiceJ::from_doubled;
+        let name = |end: &(&SetLevel, &State, usize)| {
+            Shared(state_name(end.0, end.1, self.isotope.as_ref()).into())
+        };
+        Some(ComponentRow {
+            polarisation: polarisation(ends.q),
+            upper: name(&ends.upper),
+            lower: name(&ends.lower),
+            level_upper: ends.upper.0.label.clone(),
+            level_lower: ends.lower.0.label.clone(),
+            m_upper: doubled(ends.upper.1.two_m),
+            m_lower: doubled(ends.lower.1.two_m),
+            f_upper: ends.upper.1.two_f.map(doubled),
+            f_lower: ends.lower.1.two_f.map(doubled),
+            lorentz,
+            offset,
+            ghz: offset * MHZ_PER_WAVENUMBER / 1e3,
+            pm: self
+                .line
+                .and_then(|line| pm_offset(line.wavelength_nm?, offset)),
+            strength,
+            along: look(0.0, Polariser::None),
+            across: look(90.0, Polariser::None),
+            seen: field.map_or(look(90.0, Polariser::None), |field| {
+                look(field.angle_degrees, field.polariser)
+            }),
+            linear: Some(linear),
+            isotope: self.isotope.clone(),
+        })
+    }
+}
+
+/// The line with its g, its centre and its wavelength.
+fn line_of(document: &Document, ready: &Prepared) -> Option<LineOf> {
+    let (upper, lower) = document.line.as_ref()?;
+    let join = ready.joins.first()?;
+    let (above, below) = (ready.sets.get(join.upper)?, ready.sets.get(join.lower)?);
+    let centre = centre(join, above, below);
+    let g = |end: &End, set: &Set| {
+        let Of::Level(_) = end.of else { return None };
+        let place = set
+            .levels
+            .iter()
+            .position(|level| level.of.as_ref().is_some_and(|of| end.holds(of)))?;
+        Some((set.manifold.g(place), set.levels.get(place)?.j.value()))
+    };
+    let (g_upper, g_lower) = (g(upper, above), g(lower, below));
+    let g_effective = match (g_upper, g_lower) {
+        (Some((g, j)), Some((other_g, other_j))) if join.multipole != Multipole::E2 => Some(
+            effective_g(j, g.unwrap_or(0.0), other_j, other_g.unwrap_or(0.0)),
+        ),
+        _ => None,
+    };
+    let (wavelength_nm, wavelength_kind) = match document.wavelength_nm {
+        Some(nm) => (Some(nm), Some(Kind::Entered)),
+        None => {
+            let nm = centre.filter(|c| c.abs() > 0.0).map(|c| 1e7 / c.abs());
+            (nm, nm.map(|_| line_kind(document, ready, [above, below])))
+        }
+    };
+    let widest = [upper, lower]
+        .into_iter()
+        .map(|end| match end.of {
+            Of::Level(_) => (0, "level"),
+            Of::Term(..) => (1, "term"),
+            Of::Configuration => (2, "configuration"),
+        })
+        .max();
+    Some(LineOf {
+        upper: document.end_label(upper),
+        lower: document.end_label(lower),
+        upper_rich: document.end_rich(upper),
+        lower_rich: document.end_rich(lower),
+        of: widest.map_or("level", |(_, word)| word),
+        g_upper: g_upper.and_then(|(g, _)| g),
+        g_lower: g_lower.and_then(|(g, _)| g),
+        g_effective,
+        multipole: join.multipole,
+        wavelength_nm,
+        wavelength_kind,
+        centre,
+    })
+}
+
+/// Where the energies of a line's levels come from.
+fn line_kind(document: &Document, ready: &Prepared, sets: [&Set; 2]) -> Kind {
+    let Some(solved) = &ready.solved else {
+        return Kind::Computed;
+    };
+    let placed = Placed::new(document, solved);
+    let ends = sets.into_iter().flat_map(|set| &set.levels);
+    let kinds: Vec<Kind> = ends
+        .filter(|level| level.is_upper || level.is_lower)
+        .filter_map(|level| Some(placed.kind_of(level.place?)))
+        .collect();
+    let all = |kind: Kind| kinds.iter().all(|k| *k == kind);
+    if all(Kind::Measured) {
+        Kind::Measured
+    } else if kinds.contains(&Kind::Entered) {
+        Kind::Entered
+    } else {
+        Kind::Computed
+    }
+}
+
+/// The mean wavenumber of the lines between both ends without field and nucleus, weighted with S.
+fn centre(join: &Join, above: &Set, below: &Set) -> Option<f64> {
+    let mut sum = 0.0;
+    let mut weights = 0.0;
+    let mut only: Option<f64> = None;
+    for element in join.operator.elements() {
+        let (Some(up), Some(low)) = (
+            above.levels.get(element.left),
+            below.levels.get(element.right),
+        ) else {
+            continue;
+        };
+        if let (true, true, Some(high), Some(deep)) =
+            (up.is_upper, low.is_lower, up.energy, low.energy)
+        {
+            let s = element.value * element.value;
+            only = match weights > 0.0 {
+                true => None,
+                false => Some(high - deep),
+            };
+            sum += s * (high - deep);
+            weights += s;
+        }
+    }
+    only.or((weights > 0.0).then(|| sum / weights))
+}
+
+/// Offsets this close, as a share of the largest, are one place.
+const SAME_PLACE: f64 = 1e-9;
+
+/// How many places the components have, by polarisation.
+fn positions(components: &[ComponentRow]) -> usize {
+    let place = |c: &ComponentRow| match c.offset == 0.0 {
+        true => c.lorentz.unwrap_or(0.0),
+        false => c.offset,
+    };
+    let mut all: Vec<(&str, f64)> = components
+        .iter()
+        .map(|c| (c.polarisation, place(c)))
+        .collect();
+    sort_by(&mut all, |a, b| a.0.cmp(b.0).then(a.1.total_cmp(&b.1)));
+    let largest = all.iter().fold(0.0_f64, |most, c| most.max(c.1.abs()));
+    let mut count = 0;
+    let mut last: Option<(&str, f64)> = None;
+    for (polarisation, offset) in all {
+        let same = last.is_some_and(|(known, at)| {
+            known == polarisation && offset - at <= SAME_PLACE * largest
+        });
+        if !same {
+            count += 1;
+        }
+        last = Some((polarisation, offset));
+    }
+    count
+}
+
+/// How near a normal triplet's components lie to 0 and ±μ_B B, in μ_B B.
+const NORMAL: f64 = 2e-3;
+
+fn describe(components: &[ComponentRow], positions: usize, line: &Option<LineOf>) -> String {
+    let step = |c: &ComponentRow| match c.polarisation {
+        "pi" => 0.0,
+        "sigma+" => 1.0,
+        _ => -1.0,
+    };
+    let normal = line
+        .as_ref()
+        .is_some_and(|line| line.multipole != Multipole::E2)
+        && components.len() >= 3
+        && components
+            .iter()
+            .all(|c| c.lorentz.is_some_and(|x| (x - step(c)).abs() < NORMAL));
+    match (positions, normal) {
+        (_, true) => "3 components, the normal triplet".to_owned(),
+        (1, _) => "1 component".to_owned(),
+        (many, _) => format!("{many} components"),
+    }
+}
+
+fn linear(field: Option<&Field>, components: &[ComponentRow]) -> Option<LinearRow> {
+    let field = field.filter(|_| !components.is_empty())?;
+    let differences = components
+        .iter()
+        .map(|c| (c.offset - c.linear.unwrap_or(c.offset)).abs());
+    Some(LinearRow {
+        tolerance: field.tolerance_words(),
+        departs_at: None,
+        largest_difference: differences.fold(0.0, f64::max),
+    })
+}
+
+fn nucleus_row(document: &Document, ready: &Prepared) -> Option<NucleusRow> {
+    if let Some(level) = &document.level_alone {
+        let spin = level.spin.filter(|spin| spin.doubled() > 0)?;
+        let set = ready.sets.first()?.levels.first()?;
+        return Some(NucleusRow {
+            isotope: None,
+            spin,
+            g: level.g_i,
+            kind: Kind::Entered,
+            source: None,
+            levels: vec![ConstantRow {
+                label: set.label.clone(),
+                rich: set.rich.clone(),
+                a: Some(level.a),
+                b: Some(level.b),
+                kind: "entered",
+            }],
+        });
+    }
+    if document.isotopes_listed {
+        return None;
+    }
+    let nuclear = document.nuclei.first()?;
+    Some(NucleusRow {
+        isotope: nuclear.name.clone(),
+        spin: nuclear.spin.unwrap_or_default(),
+        g: nuclear.g,
+        kind: if nuclear.typed {
+            Kind::Entered
+        } else {
+            Kind::Measured
+        },
+        source: (!nuclear.typed).then_some(TABLE),
+        levels: constant_rows(ready, nuclear),
+    })
+}
+
+/// Where spins and g of nuclei are taken from.
+pub const TABLE: &str = "Stone 2014, updated 2019, by the table of isotopes of mendeleev 1.3.0";
+
+/// Constants of the levels that the answer lists.
+fn constant_rows(ready: &Prepared, nuclear: &Nuclear) -> Vec<ConstantRow> {
+    let with_line = ready
+        .sets
+        .iter()
+        .any(|set| set.levels.iter().any(|l| l.is_upper || l.is_lower));
+    let levels = ready.sets.iter().flat_map(|set| &set.levels);
+    levels
+        .filter(|level| !with_line || level.is_upper || level.is_lower)
+        .filter_map(|level| {
+            let of = level.of.as_ref()?;
+            let a = Nuclear::constant(&nuclear.dipole, of);
+            let b = Nuclear::constant(&nuclear.quadrupole, of);
+            Some(ConstantRow {
+                label: level.label.clone(),
+                rich: level.rich.clone(),
+                a: a.map(|c| c.value),
+                b: b.map(|c| c.value),
+                kind: match a.or(b) {
+                    None => "zero",
+                    Some(c) if c.scaled => "scaled",
+                    Some(_) => "entered",
+                },
+            })
+        })
+        .collect()
+}
+
+fn isotope_rows(document: &Document) -> Vec<IsotopeRow> {
+    if !document.isotopes_listed {
+        return Vec::new();
+    }
+    let shares = document.nuclei.iter().filter_map(|n| n.share);
+    let whole: f64 = shares.map(|(share, _)| share).sum();
+    let row = |nuclear: &Nuclear| {
+        let (share, kind) = nuclear.share?;
+        Some(IsotopeRow {
+            isotope: nuclear.name.clone()?,
+            share: if whole > 0.0 {
+                100.0 * share / whole
+            } else {
+                share
+            },
+            shift: nuclear.shift,
+            spin: nuclear.spin,
+            kind,
+        })
+    };
+    document.nuclei.iter().filter_map(row).collect()
+}

@@ -1,0 +1,128 @@
+//! What the answer on splitting by diagonalisation leaves out, and how large that is.
+
+use crate::radiation::Multipole;
+
+use super::document::Document;
+use super::energy_case::EnergyCase;
+use super::rich::Kind;
+use super::splitting_rows::{DiamagneticRow, LineOf};
+use super::splitting_words::Told;
+
+/// What was left out, and how large it is likely to be.
+pub fn limits(told: &Told) -> Vec<String> {
+    let (document, ready) = (told.document, told.ready);
+    let mut limits = Vec::new();
+    if let Some(reason) = &ready.no_components {
+        limits.push(reason.clone());
+    }
+    match told.diamagnetic {
+        Some(diamagnetic) if diamagnetic.included => {}
+        Some(DiamagneticRow {
+            largest: Some(largest),
+            ..
+        }) if *largest > 0.0 => limits.push(format!(
+            "The diamagnetic term is left out; it shifts levels by up to {largest:.3e} cm⁻¹ here, all states of a level nearly alike. The sheet's \"diamagnetic\" counts it."
+        )),
+        Some(DiamagneticRow { largest: None, .. }) if told.tesla() > 0.0 => limits.push(
+            "The diamagnetic term is left out, and its size is not known without radial functions.".to_owned(),
+        ),
+        _ => {}
+    }
+    if document.level_alone.is_some() {
+        limits.push(
+            "The level is alone: nothing mixes other levels into it, which bends its states where μ_B B comes near the distance to a neighbour.".to_owned(),
+        );
+        if !document.entries.is_empty() {
+            limits.push(
+                "The level entered alone is split; the configurations of the sheet are not."
+                    .to_owned(),
+            );
+        }
+    } else {
+        limits.push(match ready.solved.as_ref().map(|s| s.case()) {
+            Some(EnergyCase::Model { case, .. }) if case.computed => {
+                "The field mixes the levels of these configurations and no others. Distances between levels are those of the answer on levels: where they are computed and not measured, crossings move with them."
+            }
+            _ => "The field mixes the levels of these configurations and no others.",
+        }.to_owned());
+    }
+    if told.has_spin() {
+        limits.push("A and B act inside each level; what the nucleus mixes between levels is left out, about A²/ΔE (a part in 10⁴ of A or less where the fine structure is large beside it).".to_owned());
+    } else if told.tesla() > 0.0 {
+        limits.push("The nucleus is left out: hyperfine structure comparable with the shifts changes the pattern. A spin and constants A, B of levels bring it in.".to_owned());
+    }
+    if ready.sets.iter().any(|set| set.reduced) {
+        limits.push("With this nucleus the whole set would have too many states: the field mixes only the levels of the line's terms.".to_owned());
+    }
+    limits.extend(of_nuclei(document));
+    if ready.joins.iter().any(|join| join.unit_integrals) {
+        limits.push("No radial integral of the radiation is given; each is taken as 1, which relative strengths between two subshells do not depend on.".to_owned());
+    }
+    if told.line.is_none() && !told.components.is_empty() {
+        limits.push("Without a line the strengths of all components together are 1, and offsets count from each line's own centre.".to_owned());
+    }
+    if let Some(LineOf {
+        wavelength_nm: Some(nm),
+        wavelength_kind: Some(Kind::Computed),
+        ..
+    }) = told.line
+    {
+        limits.push(format!("Nobody entered the wavelength; it is computed, {nm:.1} nm in vacuum, and the offsets in pm are as far off as twice its error."));
+    }
+    if let Some(LineOf {
+        wavelength_kind: Some(Kind::Entered),
+        ..
+    }) = told.line
+    {
+        limits.push("The wavelength is taken as that in vacuum; typed in air instead, the offsets in pm would be 0.06 % too small.".to_owned());
+    }
+    if let (Some(field), Some(line)) = (&document.field, told.line)
+        && field.angle_degrees == 0.0
+        && line.multipole != Multipole::E2
+        && !told.components.is_empty()
+    {
+        limits.push("Along the field the π components send no light: only σ is seen.".to_owned());
+    }
+    limits.extend(document.unused());
+    limits
+}
+
+fn of_nuclei(document: &Document) -> Vec<String> {
+    let mut limits = Vec::new();
+    for nuclear in &document.nuclei {
+        let name = nuclear.name.as_deref().unwrap_or("the nucleus");
+        if nuclear.spin.is_none() {
+            limits.push(format!(
+                "The table has no spin for {name}: it is taken as 0."
+            ));
+        } else if nuclear.two_i() > 0 && nuclear.g.is_none() {
+            limits.push(format!("g_I of {name} is not known: its own moment in the field is left out, about a thousandth of the electrons'."));
+        }
+        if nuclear.two_i() > 0 && nuclear.dipole.is_empty() && nuclear.quadrupole.is_empty() {
+            limits.push(format!(
+                "No constant A or B of {name} is entered: its levels do not split by it."
+            ));
+        }
+        let scaled = |constants: &[super::nucleus::Constant]| constants.iter().any(|c| c.scaled);
+        if scaled(&nuclear.dipole) || scaled(&nuclear.quadrupole) {
+            limits.push(format!("Constants of {name} that were not entered are scaled from another isotope's: A with g_I, B with the quadrupole moment; the hyperfine anomaly, below 1 %, is left out."));
+        }
+    }
+    if document.isotopes_listed {
+        let shares = document.nuclei.iter().filter_map(|n| n.share);
+        let whole: f64 = shares.map(|(share, _)| share).sum();
+        if (whole - 100.0).abs() > 0.01 {
+            limits.push(format!(
+                "The shares add up to {whole} %; they are taken in their ratio."
+            ));
+        }
+        limits.push("Offsets count from the line of an isotope without shift.".to_owned());
+    }
+    if let Some(level) = &document.level_alone
+        && level.two_i() > 0
+        && level.g_i.is_none()
+    {
+        limits.push("g_I is not entered: the moment of the nucleus in the field is left out unless the sheet names an isotope.".to_owned());
+    }
+    limits
+}

@@ -1,0 +1,553 @@
+//! The levels that a field or a nucleus splits, by parity, with what joins them: prepared once for all
+//! fields and kept by what it depends on.
+
+use std::cell::RefCell;
+use std::rc::Rc;
+
+use crate::numerics::order::sort_by;
+use crate::problem::Problem;
+use crate::quantity::TwiceJ;
+use crate::splitting::in_field::{
+    Components, Diamagnetic, MHZ_PER_WAVENUMBER, Manifold, Nucleus, OneElectron, Size, Split,
+};
+
+use super::document::{Document, LevelOf};
+use super::energy_case::{EnergyCase, energy_case};
+use super::level_alone::LevelAlone;
+use super::levels_rows::Shared;
+use super::line_ends::End;
+use super::nucleus::Nuclear;
+use super::placed::Placed;
+use super::rich::Rich;
+use super::solved::{Solved, SolvedLevel, solved};
+use super::splitting_joins::{Join, joins};
+use super::watch::Watch;
+
+/// The most components of an answer.
+pub const MAX_COMPONENTS: usize = 20_000;
+
+/// The most states of an answer.
+pub const MAX_STATES: usize = 20_000;
+
+/// A level of a set.
+#[derive(Clone, Debug)]
+pub struct SetLevel {
+    /// Its place among the levels that were computed; nothing for a level alone.
+    pub place: Option<usize>,
+    pub of: Option<LevelOf>,
+    pub label: Shared,
+    pub rich: Rich,
+    pub configuration: Option<Shared>,
+    pub j: TwiceJ,
+    /// cm⁻¹; nothing for a level alone.
+    pub energy: Option<f64>,
+    /// Whether it belongs to the ends of the line.
+    pub is_upper: bool,
+    pub is_lower: bool,
+}
+
+/// Levels of one parity, or a level alone.
+#[derive(Clone, Debug)]
+pub struct Set {
+    pub manifold: Manifold,
+    pub levels: Vec<SetLevel>,
+    /// Whether some levels of the parity were left out, for there would have been too many states.
+    pub reduced: bool,
+    /// The largest mean shift by the diamagnetic term at 1 T, cm⁻¹; nothing where radii are not known.
+    pub diamagnetic_at_one: Option<f64>,
+}
+
+impl Set {
+    fn flags(&self, of: impl Fn(&SetLevel) -> bool) -> Vec<bool> {
+        self.levels.iter().map(of).collect()
+    }
+}
+
+/// The sets with one nucleus.
+#[derive(Debug)]
+pub struct Pass {
+    /// Its place in [`Document::nuclei`]; nothing without a nucleus.
+    pub nuclear: Option<usize>,
+    /// By set.
+    pub nuclei: Vec<Option<Nucleus>>,
+    /// By set.
+    pub splits: Vec<Split>,
+    /// By join.
+    pub components: Vec<Components>,
+}
+
+/// Everything that does not depend on the field.
+#[derive(Debug)]
+pub struct Prepared {
+    key: Key,
+    pub solved: Option<Rc<Solved>>,
+    pub sets: Vec<Set>,
+    pub joins: Vec<Join>,
+    /// Why there are no components, where there could be some.
+    pub no_components: Option<String>,
+    pub passes: Vec<Pass>,
+    /// Why the diamagnetic term is not known.
+    pub diamagnetic: Result<(), Problem>,
+    /// Multiplications for one field.
+    pub multiplications: f64,
+}
+
+/// What the preparation depends on, and nothing else.
+#[derive(Clone, Debug, PartialEq)]
+struct Key {
+    case: Option<EnergyCase>,
+    labels: Vec<String>,
+    measured: Vec<(LevelOf, f64)>,
+    line: Option<(End, End)>,
+    nuclei: Vec<Nuclear>,
+    alone: Option<LevelAlone>,
+    diamagnetic: bool,
+}
+
+thread_local! {
+    static KEPT: RefCell<Vec<Rc<Prepared>>> = const { RefCell::new(Vec::new()) };
+}
+
+/// The most preparations that are kept.
+const MOST: usize = 3;
+
+fn key(document: &Document) -> Result<Key, Problem> {
+    let alone = document.level_alone.clone();
+    Ok(Key {
+        case: match alone {
+            Some(_) => None,
+            None => Some(energy_case(document)?),
+        },
+        labels: document.entries.iter().map(|e| e.label.clone()).collect(),
+        measured: document.measured.clone(),
+        line: document.line.clone(),
+        nuclei: document.nuclei.clone(),
+        alone,
+        diamagnetic: diamagnetic_wanted(document),
+    })
+}
+
+fn diamagnetic_wanted(document: &Document) -> bool {
+    document
+        .field
+        .as_ref()
+        .is_some_and(|field| field.diamagnetic)
+}
+
+/// The preparation of a sheet, if it is kept.
+pub fn kept(document: &Document) -> Option<Rc<Prepared>> {
+    let key = key(document).ok()?;
+    KEPT.with_borrow_mut(|kept| {
+        let place = kept.iter().position(|known| known.key == key)?;
+        let known = kept.remove(place);
+        kept.push(Rc::clone(&known));
+        Some(known)
+    })
+}
+
+/// The preparation of a sheet, kept or made.
+///
+/// # Errors
+/// Those of the levels; of the diagonalisation: `splitting-too-large`, `too-many-states`.
+pub fn prepared(document: &Document, watch: &mut Watch) -> Result<Rc<Prepared>, Problem> {
+    if let Some(known) = kept(document) {
+        return Ok(known);
+    }
+    let key = key(document)?;
+    let prepared = match &document.level_alone {
+        Some(level) => alone(document, level, key)?,
+        None => of_levels(document, key, watch)?,
+    };
+    let prepared = Rc::new(prepared);
+    KEPT.with_borrow_mut(|kept| {
+        if kept.len() >= MOST {
+            kept.remove(0);
+        }
+        kept.push(Rc::clone(&prepared));
+    });
+    Ok(prepared)
+}
+
+fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, Problem> {
+    let j = level.j.unwrap_or_default();
+    let manifold =
+        Manifold::alone(j.doubled(), 0.0, level.g.unwrap_or(0.0)).map_err(|p| p.at("/level/J"))?;
+    let text = format!("J = {j}");
+    let set = Set {
+        manifold,
+        levels: vec![SetLevel {
+            place: None,
+            of: None,
+            label: Shared(text.as_str().into()),
+            rich: Rich::words(text),
+            configuration: None,
+            j,
+            energy: None,
+            is_upper: false,
+            is_lower: false,
+        }],
+        reduced: false,
+        diamagnetic_at_one: None,
+    };
+    let nucleus = (level.two_i() > 0).then(|| Nucleus {
+        two_i: level.two_i(),
+        g_i: level.g_i.or_else(|| document.isotope()?.g).unwrap_or(0.0),
+        magnetic_dipole: vec![level.a / MHZ_PER_WAVENUMBER],
+        electric_quadrupole: vec![level.b / MHZ_PER_WAVENUMBER],
+    });
+    let split = Split::new(&set.manifold, nucleus.as_ref()).map_err(|p| p.at("/level/J"))?;
+    let multiplications = Split::size(&set.manifold, nucleus.as_ref()).multiplications;
+    Ok(Prepared {
+        key,
+        solved: None,
+        sets: vec![set],
+        joins: Vec::new(),
+        no_components: None,
+        passes: vec![Pass {
+            nuclear: None,
+            nuclei: vec![nucleus],
+            splits: vec![split],
+            components: Vec::new(),
+        }],
+        diamagnetic: Err(Problem::new(
+            "radius-not-known",
+            "A level alone has no radial functions.",
+            0,
+            0,
+        )),
+        multiplications,
+    })
+}
+
+fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepared, Problem> {
+    let solved = solved(document, watch)?;
+    let placed = Placed::new(document, &solved);
+    let mut diamagnetic = Ok(());
+    let mut sets = Vec::new();
+    // By set the parity in the spectrum, and the places of its levels there.
+    let mut origins: Vec<(usize, Vec<usize>)> = Vec::new();
+    for (parity, all) in parities(&solved).into_iter().enumerate() {
+        let levels: Vec<SetLevel> = all
+            .iter()
+            .filter_map(|place| set_level(document, &solved, &placed, *place))
+            .collect();
+        let wanted = |level: &SetLevel| level.is_upper || level.is_lower;
+        if document.line.is_some() && !levels.iter().any(wanted) {
+            continue;
+        }
+        let (manifold, term) = manifold(&solved, parity, &levels, key.diamagnetic)?;
+        let set = Set {
+            manifold,
+            levels,
+            reduced: false,
+            diamagnetic_at_one: term.as_ref().ok().copied().flatten(),
+        };
+        diamagnetic = diamagnetic.and(term.map(|_| ()));
+        let (set, chosen) = small_enough(document, set);
+        origins.push((parity, chosen));
+        sets.push(set);
+    }
+    let joins = joins(document, &solved, &sets, &origins)?;
+    let mut no_components = None;
+    let listed: Vec<Option<usize>> = match document.nuclei.len() {
+        0 => vec![None],
+        many => (0..many).map(Some).collect(),
+    };
+    let mut passes = Vec::with_capacity(listed.len());
+    let (mut multiplications, mut states) = (0.0, 0);
+    for nuclear in listed {
+        let pass = pass(document, &sets, &joins, nuclear)?;
+        for (set, nucleus) in sets.iter().zip(&pass.0.nuclei) {
+            let size = Split::size(&set.manifold, nucleus.as_ref());
+            multiplications += size.multiplications;
+            states += listed_states(document, set, size);
+        }
+        no_components = no_components.or(pass.1);
+        passes.push(pass.0);
+    }
+    if states > MAX_STATES {
+        return Err(Problem::new(
+            "too-many-states",
+            format!("{states} states would be listed."),
+            0,
+            0,
+        )
+        .bound(format!(
+            "At most {MAX_STATES} are listed: choose a line, or fewer configurations."
+        ))
+        .at("/configurations"));
+    }
+    if no_components.is_some() {
+        for pass in &mut passes {
+            pass.components.clear();
+        }
+    }
+    Ok(Prepared {
+        key,
+        solved: Some(solved),
+        sets,
+        joins,
+        no_components,
+        passes,
+        diamagnetic,
+        multiplications,
+    })
+}
+
+/// How many states of a set the answer lists.
+fn listed_states(document: &Document, set: &Set, size: Size) -> usize {
+    let all = usize::try_from(size.states).unwrap_or(usize::MAX);
+    if document.line.is_none() {
+        return all;
+    }
+    let weight = |level: &SetLevel| f64::from(level.j.doubled()) + 1.0;
+    let of = |wanted: bool| -> f64 {
+        let levels = set.levels.iter();
+        levels
+            .filter(|level| !wanted || level.is_upper || level.is_lower)
+            .map(weight)
+            .sum()
+    };
+    let whole = of(false);
+    if whole > 0.0 {
+        (all as f64 * of(true) / whole).round() as usize
+    } else {
+        0
+    }
+}
+
+/// Places of the solved levels by parity, in the order of the spectrum's own levels.
+fn parities(solved: &Solved) -> Vec<Vec<usize>> {
+    let Some(spectrum) = &solved.spectrum else {
+        let of = |odd: bool| {
+            let all = 0..solved.levels.len();
+            all.filter(|place| solved.levels.get(*place).is_some_and(|l| l.odd == odd))
+                .collect::<Vec<_>>()
+        };
+        return [of(false), of(true)]
+            .into_iter()
+            .filter(|all| !all.is_empty())
+            .collect();
+    };
+    let mut found: Vec<Vec<usize>> = spectrum
+        .parities
+        .iter()
+        .map(|parity| vec![0; parity.levels.levels.len()])
+        .collect();
+    for (place, at) in spectrum.levels.iter().enumerate() {
+        let own = found.get_mut(at.parity);
+        if let Some(own) = own.and_then(|own| own.get_mut(at.level)) {
+            *own = place;
+        }
+    }
+    found
+}
+
+fn set_level(
+    document: &Document,
+    solved: &Solved,
+    placed: &Placed,
+    place: usize,
+) -> Option<SetLevel> {
+    let level: &SolvedLevel = solved.levels.get(place)?;
+    let of = level.of();
+    let holds = |end: Option<&End>| end.is_some_and(|end| end.holds(&of));
+    let (upper, lower) = document.line.as_ref().map(|(u, l)| (u, l)).unzip();
+    Some(SetLevel {
+        place: Some(place),
+        label: Shared(level.label.clone()),
+        rich: level.rich(document),
+        configuration: Some(Shared(level.configuration.clone())),
+        j: level.level.j,
+        energy: Some(placed.of(place)),
+        is_upper: holds(upper),
+        is_lower: holds(lower),
+        of: Some(of),
+    })
+}
+
+fn manifold(
+    solved: &Solved,
+    parity: usize,
+    levels: &[SetLevel],
+    with_diamagnetic: bool,
+) -> Result<(Manifold, Result<Option<f64>, Problem>), Problem> {
+    let energies: Vec<f64> = levels.iter().map(|l| l.energy.unwrap_or(0.0)).collect();
+    let Some(spectrum) = &solved.spectrum else {
+        let electrons: Vec<OneElectron> = levels
+            .iter()
+            .zip(&energies)
+            .filter_map(|(level, energy)| {
+                let orbital = solved.levels.get(level.place?)?.orbital?;
+                Some(OneElectron {
+                    n: orbital.n(),
+                    l: orbital.l(),
+                    two_j: level.j.doubled(),
+                    energy: *energy,
+                })
+            })
+            .collect();
+        let problem = Problem::new(
+            "radius-not-known",
+            "The diamagnetic term of one electron in closed form is left out.",
+            0,
+            0,
+        );
+        return Ok((Manifold::one_electron(&electrons)?, Err(problem)));
+    };
+    let plain = Manifold::of_parity(spectrum, parity, &energies)?;
+    // Its size is always told; it acts only where the sheet says so.
+    let term = match Diamagnetic::of_parity(spectrum, parity) {
+        Ok(term) => term,
+        Err(problem) => return Ok((plain, Err(problem))),
+    };
+    let with = plain.clone().with(term);
+    let size = with.diamagnetic_shift(1.0);
+    Ok((if with_diamagnetic { with } else { plain }, Ok(size)))
+}
+
+/// A set within the bounds: as a whole, or where a nucleus makes it too large the levels of the terms of the
+/// line; with the places of its levels in the parity.
+fn small_enough(document: &Document, set: Set) -> (Set, Vec<usize>) {
+    let all: Vec<usize> = (0..set.levels.len()).collect();
+    let two_i = document.nuclei.iter().map(Nuclear::two_i).max();
+    let Some(two_i) = two_i.filter(|two_i| *two_i > 0) else {
+        return (set, all);
+    };
+    let nucleus = Nucleus {
+        two_i,
+        g_i: 0.0,
+        magnetic_dipole: Vec::new(),
+        electric_quadrupole: Vec::new(),
+    };
+    let size = Split::size(&set.manifold, Some(&nucleus));
+    if size.multiplications <= MOST_MULTIPLICATIONS && size.states <= MAX_STATES as u64 {
+        return (set, all);
+    }
+    let is_end = |level: &SetLevel| level.is_upper || level.is_lower;
+    let term = |level: &SetLevel| {
+        let of = level.of.as_ref();
+        of.map(|of| (of.entry, of.level.term, of.level.index))
+    };
+    let ends: Vec<_> = set.levels.iter().filter(|l| is_end(l)).map(term).collect();
+    let chosen: Vec<usize> = (0..set.levels.len())
+        .filter(|place| {
+            set.levels
+                .get(*place)
+                .is_some_and(|level| ends.contains(&term(level)))
+        })
+        .collect();
+    if chosen.is_empty() || chosen.len() == set.levels.len() {
+        return (set, all);
+    }
+    let levels = chosen
+        .iter()
+        .filter_map(|place| set.levels.get(*place).cloned());
+    let smaller = Set {
+        manifold: set.manifold.select(&chosen),
+        levels: levels.collect(),
+        reduced: true,
+        ..set
+    };
+    (smaller, chosen)
+}
+
+/// Multiplications for one field above which a nucleus is joined to fewer levels: about two seconds.
+pub const MOST_MULTIPLICATIONS: f64 = 2e9;
+
+/// All sets with one nucleus, and why components are not listed.
+fn pass(
+    document: &Document,
+    sets: &[Set],
+    joins: &[Join],
+    nuclear: Option<usize>,
+) -> Result<(Pass, Option<String>), Problem> {
+    let known = nuclear.and_then(|place| document.nuclei.get(place));
+    let at = |problem: Problem| match nuclear {
+        Some(_) if problem.code != "splitting-too-large" => problem.at("/nucleus"),
+        _ => problem.at("/configurations"),
+    };
+    let mut found = Pass {
+        nuclear,
+        nuclei: Vec::with_capacity(sets.len()),
+        splits: Vec::with_capacity(sets.len()),
+        components: Vec::with_capacity(joins.len()),
+    };
+    for set in sets {
+        let nucleus = known.map(|nuclear| nucleus(nuclear, set));
+        found
+            .splits
+            .push(Split::new(&set.manifold, nucleus.as_ref()).map_err(at)?);
+        found.nuclei.push(nucleus);
+    }
+    for join in joins {
+        let (Some(above), Some(below)) =
+            (found.splits.get(join.upper), found.splits.get(join.lower))
+        else {
+            continue;
+        };
+        let (Some(upper), Some(lower)) = (sets.get(join.upper), sets.get(join.lower)) else {
+            continue;
+        };
+        let all = document.line.is_none();
+        let flags = (
+            upper.flags(|level| all || level.is_upper),
+            lower.flags(|level| all || level.is_lower),
+        );
+        let most = MAX_COMPONENTS / document.nuclei.len().max(1);
+        match Components::new(above, below, &join.operator, (&flags.0, &flags.1), most) {
+            Ok(components) => found.components.push(components),
+            Err(problem) if problem.code == "too-many-components" => {
+                let reason = format!(
+                    "There would be more than {MAX_COMPONENTS} components, and none is listed: choose a line between levels or terms."
+                );
+                return Ok((found, Some(reason)));
+            }
+            Err(problem) => return Err(at(problem)),
+        }
+    }
+    Ok((found, None))
+}
+
+/// A nucleus with the constants of a set's levels.
+fn nucleus(nuclear: &Nuclear, set: &Set) -> Nucleus {
+    let of = |constants: &[super::nucleus::Constant]| {
+        let value = |level: &SetLevel| {
+            let constant = level
+                .of
+                .as_ref()
+                .and_then(|of| Nuclear::constant(constants, of));
+            constant.map_or(0.0, |c| c.value / MHZ_PER_WAVENUMBER)
+        };
+        set.levels.iter().map(value).collect()
+    };
+    Nucleus {
+        two_i: nuclear.two_i(),
+        g_i: nuclear.g.unwrap_or(0.0),
+        magnetic_dipole: of(&nuclear.dipole),
+        electric_quadrupole: of(&nuclear.quadrupole),
+    }
+}
+
+impl Prepared {
+    /// Places of a set's states in the order of the answer: by rising level, then as the room gives them;
+    /// with a line only those of its ends.
+    pub fn order(&self, set: &Set, split: &Split, with_line: bool) -> Vec<usize> {
+        let level = |state: &usize| split.states().get(*state).map_or(0, |s| s.level);
+        let mut order: Vec<usize> = (0..split.states().len())
+            .filter(|state| {
+                let own = set.levels.get(level(state));
+                !with_line || own.is_some_and(|l| l.is_upper || l.is_lower)
+            })
+            .collect();
+        let energy = |state: &usize| {
+            let own = set.levels.get(level(state));
+            own.and_then(|l| l.energy).unwrap_or(0.0)
+        };
+        sort_by(&mut order, |a, b| {
+            let by_energy = energy(a).total_cmp(&energy(b));
+            by_energy.then(level(a).cmp(&level(b))).then(a.cmp(b))
+        });
+        order
+    }
+}
