@@ -19,6 +19,24 @@ pub struct Component {
     pub q: i32,
 }
 
+impl Component {
+    /// How far it is from its line's centre, the distance of both levels without field and nucleus, cm⁻¹;
+    /// both ends at one field.
+    pub fn offset(&self, upper: &AtField, lower: &AtField) -> f64 {
+        self.difference(&upper.shifts, &lower.shifts)
+    }
+
+    /// d(offset)/dB, cm⁻¹/T.
+    pub fn slope(&self, upper: &AtField, lower: &AtField) -> f64 {
+        self.difference(&upper.slopes, &lower.slopes)
+    }
+
+    fn difference(&self, upper: &[f64], lower: &[f64]) -> f64 {
+        let at = |list: &[f64], state: usize| list.get(state).copied().unwrap_or(0.0);
+        at(upper, self.upper) - at(lower, self.lower)
+    }
+}
+
 /// Components between two manifolds, or inside one, ready for any field.
 #[derive(Clone, Debug)]
 pub struct Components {

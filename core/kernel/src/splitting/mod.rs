@@ -10,19 +10,31 @@
 //! Energies in cm⁻¹, fields in tesla, angular momenta doubled, reduced elements after Edmonds,
 //! *Angular Momentum in Quantum Mechanics* (1957), eq. 5.4.1.
 
+mod component_crossings;
 mod components;
+mod crossings;
 mod eigenpairs;
 mod from_model;
+mod linear;
 mod manifold;
+mod map;
 mod nucleus;
 mod operator;
 mod part;
+mod probe;
 mod projections;
+mod resonances;
+mod root;
 mod rows;
 mod split;
 
+pub use component_crossings::{ComponentCrossing, component_crossings};
 pub use components::{Component, Components};
+pub use crossings::{Crossing, CrossingKind, Found, MOST_COMPARED, Wanted, crossings};
+pub use linear::{Linear, Tolerance};
 pub use manifold::{Diamagnetic, Level, Manifold, OneElectron, Reduced};
+pub use map::{Followed, MOST_NUMBERS, Map, map};
 pub use nucleus::{MHZ_PER_WAVENUMBER, NUCLEAR_MAGNETON_WAVENUMBER, Nucleus, casimir};
 pub use operator::Operator;
+pub use resonances::{Resonance, Resonances};
 pub use split::{AtField, MOST_ROWS, MOST_STATES, MOST_TESLA, Size, Split, State};

@@ -192,6 +192,21 @@ impl Split {
         &self.states
     }
 
+    /// The energy of a state's level, from the origin of its part.
+    pub(super) fn level_of(&self, state: usize) -> Option<f64> {
+        self.levels.get(state).copied()
+    }
+
+    /// How far the level of one state is above that of another, exactly 0 inside a level, cm⁻¹.
+    pub(super) fn level_above(&self, state: usize, other: usize) -> Option<f64> {
+        let (one, two) = (self.states.get(state)?, self.states.get(other)?);
+        if one.level == two.level {
+            return Some(0.0);
+        }
+        let origins = self.parts.get(one.part)?.origin - self.parts.get(two.part)?.origin;
+        Some(origins + (self.level_of(state)? - self.level_of(other)?))
+    }
+
     /// Energies and vectors in a field of 0 to [`MOST_TESLA`]; without one the limit B → 0⁺.
     ///
     /// # Errors

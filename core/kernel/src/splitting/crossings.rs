@@ -1,0 +1,313 @@
+//! Where states cross, avoid each other, or keep their distance.
+//!
+//! A map says roughly where, its states' own matrices exactly. States of one part never cross; those of
+//! different parts do.
+
+use super::map::Followed;
+use super::probe::Probe;
+use super::root::{changes, hidden, root};
+use super::split::Split;
+use crate::constants::BOHR_MAGNETON_WAVENUMBER;
+use crate::numerics::order::sort_by;
+use crate::problem::Problem;
+use std::ops::Range;
+
+/// Pairs of states times fields that are searched at most.
+pub const MOST_COMPARED: usize = 50_000_000;
+
+/// Differences of energies below this share of the energies are rounding.
+const ROUNDING: f64 = 1e-15;
+
+/// Differences of slopes below this, in μ_B, are rounding.
+const LEVEL: f64 = 1e-11;
+
+/// What happens between two states.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub enum CrossingKind {
+    /// They cross: a field does not connect them.
+    Crossing,
+    /// They come closest and repel each other.
+    Avoided,
+    /// Their distance does not depend on the field, in first order: a clock transition.
+    Clock,
+}
+
+/// One of them.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Crossing {
+    /// Which.
+    pub kind: CrossingKind,
+    /// The state that is the lower one before, or all the time.
+    pub first: usize,
+    /// The other state.
+    pub second: usize,
+    /// The field, good to a part in 10¹⁰ where the energies are.
+    pub tesla: f64,
+    /// The energy of the first state there, cm⁻¹.
+    pub energy: f64,
+    /// The second state above the first there, cm⁻¹; 0 for a crossing.
+    pub gap: f64,
+    /// dE/dB of the first and the second state, cm⁻¹/T.
+    pub slopes: (f64, f64),
+}
+
+/// What is looked for.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Wanted {
+    /// Crossings.
+    pub crossings: bool,
+    /// Avoided ones.
+    pub avoided: bool,
+    /// Clock transitions inside a level, by the largest |ΔM|.
+    pub clock: Option<i32>,
+}
+
+/// What was found, by rising field.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Found<T> {
+    /// The first of them.
+    pub found: Vec<T>,
+    /// How many more there are, of which only the fields are known roughly.
+    pub left_out: usize,
+}
+
+/// Where it is, roughly.
+struct Candidate {
+    kind: CrossingKind,
+    first: usize,
+    second: usize,
+    range: Range<f64>,
+}
+
+/// What happens between chosen states within the fields of a map, at most so much of it.
+///
+/// # Errors
+/// `search-too-large` above [`MOST_COMPARED`] pairs times fields.
+pub fn crossings(
+    split: &Split,
+    (tesla, followed): (&[f64], &Followed),
+    chosen: &[usize],
+    wanted: Wanted,
+    most: usize,
+) -> Result<Found<Crossing>, Problem> {
+    let pairs = chosen.len().saturating_mul(chosen.len()) / 2;
+    if pairs.saturating_mul(tesla.len()) > MOST_COMPARED {
+        return Err(too_large(chosen.len()));
+    }
+    let mut search = Search {
+        split,
+        tesla,
+        followed,
+        probe: Probe::new(split),
+        other: Probe::new(split),
+        changes: Vec::new(),
+        candidates: Vec::new(),
+    };
+    for (place, &one) in chosen.iter().enumerate() {
+        for &two in chosen.iter().skip(place + 1) {
+            search.pair(one, two, wanted);
+        }
+    }
+    let mut candidates = std::mem::take(&mut search.candidates);
+    sort_by(&mut candidates, |a, b| a.range.end.total_cmp(&b.range.end));
+    let left_out = candidates.len().saturating_sub(most);
+    let known = candidates.iter().take(most);
+    let mut found: Vec<Crossing> = known.filter_map(|c| search.refine(c)).collect();
+    sort_by(&mut found, |a, b| a.tesla.total_cmp(&b.tesla));
+    Ok(Found { found, left_out })
+}
+
+struct Search<'a> {
+    split: &'a Split,
+    tesla: &'a [f64],
+    followed: &'a Followed,
+    probe: Probe<'a>,
+    other: Probe<'a>,
+    changes: Vec<(Range<f64>, bool)>,
+    candidates: Vec<Candidate>,
+}
+
+impl Search<'_> {
+    fn pair(&mut self, one: usize, two: usize, wanted: Wanted) {
+        let states = self.split.states();
+        let (Some(a), Some(b)) = (states.get(one), states.get(two)) else {
+            return;
+        };
+        if one == two {
+            return;
+        }
+        let level = LEVEL * BOHR_MAGNETON_WAVENUMBER.value;
+        let same_level = a.level == b.level;
+        if a.part != b.part && wanted.crossings {
+            self.crossing(one, two, same_level);
+        }
+        let (lower, higher) = if a.rank < b.rank {
+            (one, two)
+        } else {
+            (two, one)
+        };
+        if a.part == b.part && wanted.avoided && a.rank.abs_diff(b.rank) == 1 {
+            let Search {
+                tesla,
+                followed,
+                changes: found,
+                candidates,
+                ..
+            } = self;
+            changes(
+                tesla,
+                difference(&followed.slopes, higher, lower),
+                level,
+                found,
+            );
+            let nearest = found.drain(..).filter(|(_, rises)| *rises);
+            candidates.extend(nearest.map(|(range, _)| Candidate {
+                kind: CrossingKind::Avoided,
+                first: lower,
+                second: higher,
+                range,
+            }));
+        }
+        let near = wanted
+            .clock
+            .is_some_and(|most| (a.two_m - b.two_m).abs() <= 2 * most);
+        if same_level && near {
+            self.clock(one, two, level);
+        }
+    }
+
+    fn crossing(&mut self, one: usize, two: usize, same_level: bool) {
+        let Search {
+            tesla,
+            followed,
+            changes: found,
+            candidates,
+            ..
+        } = self;
+        // Inside a level shifts have more digits.
+        let lists = if same_level {
+            &followed.shifts
+        } else {
+            &followed.energies
+        };
+        let largest = |state: usize| {
+            let list = lists.get(state).map_or(&[][..], Vec::as_slice);
+            list.iter().fold(0.0_f64, |most, e| most.max(e.abs()))
+        };
+        let tolerance = ROUNDING * largest(one).max(largest(two));
+        changes(tesla, difference(lists, two, one), tolerance, found);
+        let mut add = |range: Range<f64>, rises: bool| {
+            let (first, second) = if rises { (two, one) } else { (one, two) };
+            candidates.push(Candidate {
+                kind: CrossingKind::Crossing,
+                first,
+                second,
+                range,
+            });
+        };
+        for (range, rises) in found.drain(..) {
+            add(range, rises);
+        }
+        let values = difference(lists, two, one).zip(difference(&followed.slopes, two, one));
+        let mut last: Option<(f64, f64, f64)> = None;
+        for (&field, (value, slope)) in tesla.iter().zip(values) {
+            if let Some((before, v, s)) = last
+                && let Some(middle) = hidden(&(before..field), (v, value), (s, slope))
+            {
+                add(before..middle, v < 0.0);
+                add(middle..field, v > 0.0);
+            }
+            last = Some((field, value, slope));
+        }
+    }
+
+    fn clock(&mut self, one: usize, two: usize, level: f64) {
+        let Search {
+            tesla,
+            followed,
+            changes: found,
+            candidates,
+            ..
+        } = self;
+        let start = |lists: &[Vec<f64>]| difference(lists, two, one).next().unwrap_or(0.0);
+        let mut slopes = difference(&followed.slopes, two, one);
+        let still = slopes.next().is_some_and(|slope| slope.abs() <= level);
+        let moves = slopes.any(|slope| slope.abs() > level);
+        let (first, second) = if start(&followed.shifts) < 0.0 {
+            (two, one)
+        } else {
+            (one, two)
+        };
+        let mut add = |range: Range<f64>| {
+            candidates.push(Candidate {
+                kind: CrossingKind::Clock,
+                first,
+                second,
+                range,
+            });
+        };
+        if still && moves && tesla.first() == Some(&0.0) {
+            add(0.0..0.0);
+        }
+        changes(tesla, difference(&followed.slopes, two, one), level, found);
+        for (range, _) in found.drain(..) {
+            add(range);
+        }
+    }
+
+    /// Exactly where, if it is there at all.
+    fn refine(&mut self, candidate: &Candidate) -> Option<Crossing> {
+        let Candidate {
+            kind,
+            first,
+            second,
+            ..
+        } = *candidate;
+        let (probe, other) = (&mut self.probe, &mut self.other);
+        let mut both = |tesla: f64| Some((probe.state(first, tesla)?, other.state(second, tesla)?));
+        let range = &candidate.range;
+        let tesla = if range.end == 0.0 {
+            0.0
+        } else {
+            root(range, |tesla| {
+                let (a, b) = both(tesla)?;
+                Some(match kind {
+                    CrossingKind::Crossing => b.above(&a),
+                    _ => b.slope - a.slope,
+                })
+            })?
+        };
+        let (a, b) = both(tesla)?;
+        let gap = match kind {
+            CrossingKind::Crossing => 0.0,
+            _ => b.above(&a),
+        };
+        let (first, second, a, b, gap) = if gap < 0.0 {
+            (second, first, b, a, -gap)
+        } else {
+            (first, second, a, b, gap)
+        };
+        Some(Crossing {
+            kind,
+            first,
+            second,
+            tesla,
+            energy: a.origin + a.energy,
+            gap,
+            slopes: (a.slope, b.slope),
+        })
+    }
+}
+
+/// One state's list less another's, by field.
+fn difference(lists: &[Vec<f64>], one: usize, two: usize) -> impl Iterator<Item = f64> + '_ {
+    let list = |state: usize| lists.get(state).map_or(&[][..], Vec::as_slice);
+    list(one).iter().zip(list(two)).map(|(a, b)| a - b)
+}
+
+#[inline(never)]
+pub(super) fn too_large(count: usize) -> Problem {
+    let message = format!("{count} are too many to be searched for crossings at so many fields.");
+    Problem::new("search-too-large", message, 0, 0)
+        .bound(format!("at most {MOST_COMPARED} pairs times fields"))
+}
