@@ -444,3 +444,96 @@ fn the_keys_are_used() {
         assert!(!limits.contains(&format!("sheet: {key}")), "{limits}");
     }
 }
+
+fn map(sheet: &Value) -> Value {
+    let sheet: Json = serde_json::from_value(sheet.clone()).unwrap();
+    let text = sheet::splitting_map_message(&sheet, &mut sheet::unwatched);
+    let map: Value = serde_json::from_str(&text).unwrap();
+    assert!(map["map"].is_object(), "{text}");
+    map["map"].clone()
+}
+
+#[test]
+fn the_map_holds_the_answers_of_its_fields() {
+    let sheet = |tesla: &str| {
+        json!({
+            "rungline": 1, "species": "87Rb", "configurations": ["5s", "5p"],
+            "line": {"upper": "5p 2P3/2", "lower": "5s 2S1/2"},
+            "nucleus": {"magnetic_dipole": {"5s 2S1/2": "3417.341 MHz", "5p 2P3/2": "84.7185 MHz"},
+                        "electric_quadrupole": {"5p 2P3/2": "12.4965 MHz"}},
+            "field": {"flux_density": tesla, "up_to": "0.199 T", "view": "45 deg", "polariser": "30 deg"}
+        })
+    };
+    let whole = map(&sheet("0.199 T"));
+    let fields = rows(&whole, "tesla");
+    assert_eq!(fields.len(), 200);
+    for step in [0, 1, 100, 199] {
+        let tesla = fields[step].as_f64().unwrap();
+        let found = answer(&sheet(&format!("{tesla} T")));
+        let at = |row: &Value, key: &str| row[key][step].as_f64().unwrap();
+        let states = rows(&found, "states");
+        assert_eq!(states.len(), rows(&whole, "states").len());
+        for (one, other) in states.iter().zip(rows(&whole, "states")) {
+            assert_eq!(one["name"], other["name"]);
+            assert_eq!(number(one, "energy"), at(other, "energies"));
+            assert_eq!(number(one, "slope"), at(other, "slopes"));
+        }
+        let name = |place: &Value| &whole["states"][place.as_u64().unwrap() as usize]["name"];
+        let mut met = 0;
+        for component in rows(&whole, "components") {
+            let own = rows(&found, "components").iter().find(|c| {
+                c["upper"] == *name(&component["upper"]) && c["lower"] == *name(&component["lower"])
+            });
+            let Some(own) = own else {
+                assert!(at(component, "strengths") <= 1e-12);
+                continue;
+            };
+            met += 1;
+            assert_eq!(number(own, "strength"), at(component, "strengths"));
+            assert!((number(own, "seen") - at(component, "seen")).abs() < 1e-15);
+            assert!((number(own, "offset") - at(component, "offsets")).abs() < 1e-15);
+        }
+        assert_eq!(met, rows(&found, "components").len());
+    }
+    // Slopes are those of the energies: the cubic through two fields meets the field between them.
+    for state in rows(&whole, "states") {
+        let of = |key: &str, step: usize| state[key][step].as_f64().unwrap();
+        let h = fields[2].as_f64().unwrap() - fields[0].as_f64().unwrap();
+        for step in [40, 120, 180] {
+            let middle = 0.5 * (of("shifts", step) + of("shifts", step + 2))
+                + h / 8.0 * (of("slopes", step) - of("slopes", step + 2));
+            assert!(
+                (middle - of("shifts", step + 1)).abs() < 1e-6,
+                "{} {step}",
+                state["name"]
+            );
+        }
+    }
+}
+
+#[test]
+fn a_map_that_cannot_be_had_says_why() {
+    let fault = |sheet: Value| {
+        let sheet: Json = serde_json::from_value(sheet).unwrap();
+        let text = sheet::splitting_map_message(&sheet, &mut sheet::unwatched);
+        let found: Value = serde_json::from_str(&text).unwrap();
+        found["faults"][0]["code"].as_str().unwrap().to_owned()
+    };
+    let line = json!({"upper": "3p 2P1/2", "lower": "3s 2S1/2"});
+    assert_eq!(
+        fault(
+            json!({"rungline": 1, "species": "*", "configurations": ["3s", "3p"], "line": line, "field": {"flux_density": "1 T"}})
+        ),
+        "map-needs-energies"
+    );
+    assert_eq!(
+        fault(json!({"rungline": 1, "species": "Na"})),
+        "needs-a-field"
+    );
+    let sheet: Json = serde_json::from_value(
+        json!({"rungline": 1, "species": "Na I", "configurations": ["3s", "3p"], "field": {"flux_density": "1 T"}}),
+    )
+    .unwrap();
+    let text = sheet::splitting_map_message(&sheet, &mut |_| false);
+    assert!(text.contains("\"stopped\""), "{text}");
+}

@@ -80,7 +80,13 @@ pub fn curves(sheet: JsValue) -> Result<String, JsValue> {
     Ok(sheet::curves_message(&json(sheet)?, &mut teller()))
 }
 
-/// Seconds and megabytes that an answer is likely to take.
+/// States and components over the field for their picture, or the faults before them.
+#[wasm_bindgen]
+pub fn splitting_map(sheet: JsValue) -> Result<String, JsValue> {
+    Ok(sheet::splitting_map_message(&json(sheet)?, &mut teller()))
+}
+
+/// Seconds and megabytes that an answer is likely to take; `splitting_map` names the map.
 #[wasm_bindgen]
 pub fn estimate(sheet: JsValue, question: &str) -> Result<String, JsValue> {
     Ok(sheet::estimate_message(&json(sheet)?, question))

@@ -70,7 +70,10 @@ mod splitting_full;
 mod splitting_joins;
 mod splitting_keeps;
 mod splitting_limits;
+mod splitting_line;
 mod splitting_linear;
+mod splitting_map;
+mod splitting_nuclei;
 mod splitting_rows;
 mod splitting_sets;
 mod splitting_words;
@@ -279,6 +282,20 @@ pub fn curves_message(sheet: &Json, watch: &mut Watch) -> String {
     };
     match curves {
         Ok(curves) => to_json(&curves),
+        Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
+    }
+}
+
+/// States and components of a sheet over the field, for their picture: `{"map":{…}}` or `{"faults":[…]}`.
+pub fn splitting_map_message(sheet: &Json, watch: &mut Watch) -> String {
+    let document = Document::read(sheet);
+    let map = if document.faults.is_empty() {
+        splitting_map::map(&document, watch).map_err(|problem| vec![problem])
+    } else {
+        Err(document.faults)
+    };
+    match map {
+        Ok(map) => format!("{{\"map\":{}}}", to_json(&map)),
         Err(faults) => format!("{{\"faults\":{}}}", faults_json(&faults)),
     }
 }

@@ -6,24 +6,21 @@ use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::radiation::Multipole;
 use crate::splitting::in_field::{AtField, MHZ_PER_WAVENUMBER, Split, State};
-use crate::splitting::seen::{Polariser, effective_g, weight};
+use crate::splitting::seen::{Polariser, weight};
 use crate::splitting::weak_field::pm_offset;
 
 use super::document::Document;
 use super::field::Field;
 use super::levels_rows::Shared;
-use super::line_ends::{End, Of};
 use super::nucleus::Nuclear;
-use super::placed::Placed;
-use super::rich::Kind;
+use super::rich::Rich;
 use super::splitting::{cautions, field_of};
 use super::splitting_joins::Join;
 use super::splitting_keeps::{Shown, keeps};
 use super::splitting_limits::limits;
-use super::splitting_rows::{
-    ComponentRow, ConstantRow, DiamagneticRow, IsotopeRow, LineOf, LinearRow, NucleusRow,
-    Splitting, StateRow,
-};
+use super::splitting_line::line_of;
+use super::splitting_nuclei::{isotope_rows, nucleus_row};
+use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, Splitting, StateRow};
 use super::splitting_sets::{Pass, Prepared, Set, SetLevel, prepared};
 use super::splitting_words::{Told, kinds, sentence, working};
 use super::watch::Watch;
@@ -191,6 +188,14 @@ fn momenta_words(state: &State) -> String {
     parts.join(", ")
 }
 
+/// The same, typeset.
+pub fn state_rich(level: &SetLevel, state: &State) -> Rich {
+    level
+        .rich
+        .clone()
+        .say(format!(", {}", momenta_words(state)))
+}
+
 fn state_row(
     document: &Document,
     set: &Set,
@@ -228,11 +233,7 @@ fn state_row(
         shift,
         slope,
         lorentz,
-        side: match (level.is_upper, level.is_lower) {
-            (true, _) => Some("upper"),
-            (_, true) => Some("lower"),
-            _ => None,
-        },
+        side: level.side(),
         isotope: isotope.cloned(),
     })
 }
@@ -401,106 +402,6 @@ impl Rows<'_> {
     }
 }
 
-/// The line with its g, its centre and its wavelength.
-fn line_of(document: &Document, ready: &Prepared) -> Option<LineOf> {
-    let (upper, lower) = document.line.as_ref()?;
-    let join = ready.joins.first()?;
-    let (above, below) = (ready.sets.get(join.upper)?, ready.sets.get(join.lower)?);
-    let centre = centre(join, above, below);
-    let g = |end: &End, set: &Set| {
-        let Of::Level(_) = end.of else { return None };
-        let place = set
-            .levels
-            .iter()
-            .position(|level| level.of.as_ref().is_some_and(|of| end.holds(of)))?;
-        Some((set.manifold.g(place), set.levels.get(place)?.j.value()))
-    };
-    let (g_upper, g_lower) = (g(upper, above), g(lower, below));
-    let g_effective = match (g_upper, g_lower) {
-        (Some((g, j)), Some((other_g, other_j))) if join.multipole != Multipole::E2 => Some(
-            effective_g(j, g.unwrap_or(0.0), other_j, other_g.unwrap_or(0.0)),
-        ),
-        _ => None,
-    };
-    let (wavelength_nm, wavelength_kind) = match document.wavelength_nm {
-        Some(nm) => (Some(nm), Some(Kind::Entered)),
-        None => {
-            let nm = centre.filter(|c| c.abs() > 0.0).map(|c| 1e7 / c.abs());
-            (nm, nm.map(|_| line_kind(document, ready, [above, below])))
-        }
-    };
-    let widest = [upper, lower]
-        .into_iter()
-        .map(|end| match end.of {
-            Of::Level(_) => (0, "level"),
-            Of::Term(..) => (1, "term"),
-            Of::Configuration => (2, "configuration"),
-        })
-        .max();
-    Some(LineOf {
-        upper: document.end_label(upper),
-        lower: document.end_label(lower),
-        upper_rich: document.end_rich(upper),
-        lower_rich: document.end_rich(lower),
-        of: widest.map_or("level", |(_, word)| word),
-        g_upper: g_upper.and_then(|(g, _)| g),
-        g_lower: g_lower.and_then(|(g, _)| g),
-        g_effective,
-        multipole: join.multipole,
-        wavelength_nm,
-        wavelength_kind,
-        centre,
-    })
-}
-
-/// Where the energies of a line's levels come from.
-fn line_kind(document: &Document, ready: &Prepared, sets: [&Set; 2]) -> Kind {
-    let Some(solved) = &ready.solved else {
-        return Kind::Computed;
-    };
-    let placed = Placed::new(document, solved);
-    let ends = sets.into_iter().flat_map(|set| &set.levels);
-    let kinds: Vec<Kind> = ends
-        .filter(|level| level.is_upper || level.is_lower)
-        .filter_map(|level| Some(placed.kind_of(level.place?)))
-        .collect();
-    let all = |kind: Kind| kinds.iter().all(|k| *k == kind);
-    if all(Kind::Measured) {
-        Kind::Measured
-    } else if kinds.contains(&Kind::Entered) {
-        Kind::Entered
-    } else {
-        Kind::Computed
-    }
-}
-
-/// The mean wavenumber of the lines between both ends without field and nucleus, weighted with S.
-fn centre(join: &Join, above: &Set, below: &Set) -> Option<f64> {
-    let mut sum = 0.0;
-    let mut weights = 0.0;
-    let mut only: Option<f64> = None;
-    for element in join.operator.elements() {
-        let (Some(up), Some(low)) = (
-            above.levels.get(element.left),
-            below.levels.get(element.right),
-        ) else {
-            continue;
-        };
-        if let (true, true, Some(high), Some(deep)) =
-            (up.is_upper, low.is_lower, up.energy, low.energy)
-        {
-            let s = element.value * element.value;
-            only = match weights > 0.0 {
-                true => None,
-                false => Some(high - deep),
-            };
-            sum += s * (high - deep);
-            weights += s;
-        }
-    }
-    only.or((weights > 0.0).then(|| sum / weights))
-}
-
 /// Offsets this close, as a share of the largest, are one place.
 const SAME_PLACE: f64 = 1e-9;
 
@@ -563,95 +464,4 @@ fn linear(field: Option<&Field>, components: &[ComponentRow]) -> Option<LinearRo
         departs_at: None,
         largest_difference: differences.fold(0.0, f64::max),
     })
-}
-
-fn nucleus_row(document: &Document, ready: &Prepared) -> Option<NucleusRow> {
-    if let Some(level) = &document.level_alone {
-        let spin = level.spin.filter(|spin| spin.doubled() > 0)?;
-        let set = ready.sets.first()?.levels.first()?;
-        return Some(NucleusRow {
-            isotope: None,
-            spin,
-            g: level.g_i,
-            kind: Kind::Entered,
-            source: None,
-            levels: vec![ConstantRow {
-                label: set.label.clone(),
-                rich: set.rich.clone(),
-                a: Some(level.a),
-                b: Some(level.b),
-                kind: "entered",
-            }],
-        });
-    }
-    if document.isotopes_listed {
-        return None;
-    }
-    let nuclear = document.nuclei.first()?;
-    Some(NucleusRow {
-        isotope: nuclear.name.clone(),
-        spin: nuclear.spin.unwrap_or_default(),
-        g: nuclear.g,
-        kind: if nuclear.typed {
-            Kind::Entered
-        } else {
-            Kind::Measured
-        },
-        source: (!nuclear.typed).then_some(TABLE),
-        levels: constant_rows(ready, nuclear),
-    })
-}
-
-/// Where spins and g of nuclei are taken from.
-pub const TABLE: &str = "Stone 2014, updated 2019, by the table of isotopes of mendeleev 1.3.0";
-
-/// Constants of the levels that the answer lists.
-fn constant_rows(ready: &Prepared, nuclear: &Nuclear) -> Vec<ConstantRow> {
-    let with_line = ready
-        .sets
-        .iter()
-        .any(|set| set.levels.iter().any(|l| l.is_upper || l.is_lower));
-    let levels = ready.sets.iter().flat_map(|set| &set.levels);
-    levels
-        .filter(|level| !with_line || level.is_upper || level.is_lower)
-        .filter_map(|level| {
-            let of = level.of.as_ref()?;
-            let a = Nuclear::constant(&nuclear.dipole, of);
-            let b = Nuclear::constant(&nuclear.quadrupole, of);
-            Some(ConstantRow {
-                label: level.label.clone(),
-                rich: level.rich.clone(),
-                a: a.map(|c| c.value),
-                b: b.map(|c| c.value),
-                kind: match a.or(b) {
-                    None => "zero",
-                    Some(c) if c.scaled => "scaled",
-                    Some(_) => "entered",
-                },
-            })
-        })
-        .collect()
-}
-
-fn isotope_rows(document: &Document) -> Vec<IsotopeRow> {
-    if !document.isotopes_listed {
-        return Vec::new();
-    }
-    let shares = document.nuclei.iter().filter_map(|n| n.share);
-    let whole: f64 = shares.map(|(share, _)| share).sum();
-    let row = |nuclear: &Nuclear| {
-        let (share, kind) = nuclear.share?;
-        Some(IsotopeRow {
-            isotope: nuclear.name.clone()?,
-            share: if whole > 0.0 {
-                100.0 * share / whole
-            } else {
-                share
-            },
-            shift: nuclear.shift,
-            spin: nuclear.spin,
-            kind,
-        })
-    };
-    document.nuclei.iter().filter_map(row).collect()
 }

@@ -46,6 +46,17 @@ pub struct SetLevel {
     pub is_lower: bool,
 }
 
+impl SetLevel {
+    /// Which end of the line it belongs to.
+    pub fn side(&self) -> Option<&'static str> {
+        match (self.is_upper, self.is_lower) {
+            (true, _) => Some("upper"),
+            (_, true) => Some("lower"),
+            _ => None,
+        }
+    }
+}
+
 /// Levels of one parity, or a level alone.
 #[derive(Clone, Debug)]
 pub struct Set {
