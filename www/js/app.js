@@ -2,6 +2,7 @@
 
 import { sameSheet } from "./address.js";
 import { makeAnnouncer } from "./announce.js";
+import { showCannotStart } from "./cannot-start.js";
 import { makeChoice } from "./choice.js";
 import { element, setText, wordButton } from "./dom.js";
 import { Engine } from "./engine.js";
@@ -22,7 +23,7 @@ import { RecordRung } from "./record.js";
 import { QuestionRung, ladderList, panicNode } from "./rungs.js";
 import { Settings, settingsPanel } from "./settings.js";
 import { SheetStore } from "./sheet.js";
-import { compileCore, showCannotStart, workerStarter } from "./startup.js";
+import { compileCore, workerStarter } from "./startup.js";
 import { Storage } from "./storage.js";
 import { ViewState } from "./view-state.js";
 import { OrbitalsPart } from "./views/orbitals.js";
@@ -33,7 +34,8 @@ async function start() {
   // The core compiles while the page is put together.
   const compiling = compileCore();
   compiling.catch(() => {});
-  const startWorker = workerStarter();
+  const workers = workerStarter();
+  const startWorker = () => workers.start();
 
   const notes = new Notes(byId("notes"));
   const storage = new Storage((trouble) => showStorageTrouble(notes, trouble));

@@ -18,11 +18,13 @@ const USUAL = Object.freeze({ rungline: 1, species: "Fe", configurations: ["3d6 
 let memory = null;
 let resting = null;
 let ready = false;
+let warmed = false;
 
 self.onmessage = ({ data }) => {
   if (data.module) {
     memory = core.initSync({ module: data.module }).memory;
     self.postMessage({ ready: true });
+    if (data.warm) warm();
     return;
   }
   try {
@@ -46,9 +48,12 @@ self.onmessage = ({ data }) => {
   prepare();
 };
 
-// A browser compiles a function when it is first called, and the first reading calls most of them. "about"
-// is what the page asks first; while it then puts itself together, the functions are called once.
+// A browser compiles a function when it is first called, and the first reading calls most of them. While
+// the page puts itself together, they are called once: before it asks for anything in the one file, which
+// has the core before the page's script, and after "about", which the page asks first, on the site.
 function warm() {
+  if (warmed) return;
+  warmed = true;
   core.read(USUAL);
   core.answer(USUAL, "states");
 }

@@ -58,15 +58,31 @@ pub fn assemble(paths: &Paths, profile: Profile, node: &Node, core: &Core) -> Ou
             ("RUNGLINE_PROFILE", json!(profile.name())),
             ("RUNGLINE_DOOR", json!(door)),
             ("RUNGLINE_WASM", json!(wasm_name)),
-            ("RUNGLINE_WORKER_SOURCE", json!(worker)),
+            // The one file's worker starts before the page's script.
+            (
+                "RUNGLINE_WORKER_SOURCE",
+                wasm_name.map_or(Value::Null, |_| json!(worker)),
+            ),
             ("RUNGLINE_EXAMPLES", examples.clone()),
         ])
     };
 
     let file_script = bundler.script("app.js", Some(&constants("file", None)))?;
+    let unpack = bundler.script("unpack.js", None)?;
     let quick = profile == Profile::Quick;
-    let packed = gzip(&wasm, quick)?;
-    let one_file = one_file(&page, &style, &file_script, &packed)?;
+    let packed = [
+        ("worker", gzip(worker.as_bytes(), quick)?),
+        ("core", gzip(&wasm, quick)?),
+        ("app", gzip(file_script.as_bytes(), quick)?),
+    ];
+    let one_file = OneFile {
+        page: &page,
+        style: &style,
+        unpack: &unpack,
+        script: &file_script,
+        packed: &packed,
+    };
+    let one_file = one_file.text()?;
 
     let wasm_name = hashed("core", "wasm", &wasm);
     let site_script = bundler.script("app.js", Some(&constants("site", Some(&wasm_name))))?;
@@ -100,8 +116,8 @@ pub fn assemble(paths: &Paths, profile: Profile, node: &Node, core: &Core) -> Ou
 
     let gzip_bytes = gzip(page.as_bytes(), quick)?.len()
         + gzip(style.as_bytes(), quick)?.len()
-        + gzip(file_script.as_bytes(), quick)?.len()
-        + packed.len();
+        + gzip(unpack.as_bytes(), quick)?.len()
+        + packed.iter().map(|(_, part)| part.len()).sum::<usize>();
     let built = Built {
         one_file: paths.site.join("rungline.html"),
         one_file_digest: hex(one_file.as_bytes()),
@@ -193,27 +209,65 @@ fn examples(paths: &Paths) -> Outcome<Value> {
     Ok(Value::Array(examples))
 }
 
-fn one_file(page: &str, style: &str, script: &str, wasm: &[u8]) -> Outcome<String> {
-    for (what, text, end) in [("script", script, "</script"), ("style", style, "</style")] {
-        if text.to_lowercase().contains(end) || text.contains("<!--") {
-            return Err(format!(
-                "The {what} holds {end} or <!-- and cannot be put into a page."
-            ));
+/// What the one file is made of.
+struct OneFile<'a> {
+    page: &'a str,
+    style: &'a str,
+    /// The script that stands in it as it is, and unpacks the others.
+    unpack: &'a str,
+    /// The page's script, which runs once it is unpacked.
+    script: &'a str,
+    /// What it unpacks, in the order in which it is needed.
+    packed: &'a [(&'a str, Vec<u8>)],
+}
+
+impl OneFile<'_> {
+    fn text(&self) -> Outcome<String> {
+        for (what, text, end) in [
+            ("script", self.unpack, "</script"),
+            ("style", self.style, "</style"),
+        ] {
+            if text.to_lowercase().contains(end) || text.contains("<!--") {
+                return Err(format!(
+                    "The {what} holds {end} or <!-- and cannot be put into a page."
+                ));
+            }
         }
+        let scripts = [self.unpack, self.script].map(|script| integrity(script.as_bytes()));
+        let policy = policy::one_file(&scripts, &integrity(self.style.as_bytes()));
+        let page = once(self.page, CHARSET, &with_policy(&policy))?;
+        let page = once(&page, STYLE, &format!("<style>{}</style>", self.style))?;
+        let page = once(&page, SCRIPT, "")?;
+        let pieces: String = self
+            .packed
+            .iter()
+            .map(|(part, packed)| pieces(part, packed))
+            .collect();
+        once(
+            &page,
+            "</body>",
+            &format!("<script>{}</script>\n{pieces}</body>", self.unpack),
+        )
     }
-    let policy = policy::one_file(&integrity(script.as_bytes()), &integrity(style.as_bytes()));
-    let page = once(page, CHARSET, &with_policy(&policy))?;
-    let page = once(&page, STYLE, &format!("<style>{style}</style>"))?;
-    let page = once(&page, SCRIPT, "")?;
-    once(
-        &page,
-        "</body>",
-        &format!(
-            "<script type=\"application/octet-stream\" id=\"wasm\">{}</script>\n\
-             <script>{script}</script>\n</body>",
-            printable(wasm)
-        ),
-    )
+}
+
+/// Bytes of a piece: 13 fill 16 characters, so that no piece but the last has a fill.
+const PIECE: usize = 13 << 11;
+
+/// A packed part as text in pieces, which `www/js/unpack.js` takes while the next ones are read.
+fn pieces(part: &str, packed: &[u8]) -> String {
+    let count = packed.chunks(PIECE).len();
+    packed
+        .chunks(PIECE)
+        .enumerate()
+        .map(|(place, piece)| {
+            let last = if place + 1 == count { " data-last" } else { "" };
+            format!(
+                "<script type=\"text/plain\" data-part=\"{part}\"{last}>{}</script>\n",
+                printable(piece)
+            )
+        })
+        .collect()
 }
 
 fn site_page(page: &str, style: &str, script: &str) -> Outcome<String> {

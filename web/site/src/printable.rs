@@ -4,7 +4,7 @@
 //! element of a page and survives every tool that keeps text. A number v < 2¹³ ≤ 91² is written as
 //! v mod 91, then ⌊v/91⌋; bits are taken from the lowest up; up to six that are left at the end take one
 //! character, so that the fill is never as long as a byte. The text is 23 % longer than the bytes where
-//! base64 is 33 %. `www/js/startup.js` reads it.
+//! base64 is 33 %. `www/js/printable.js` reads it.
 
 const BITS: u32 = 13;
 const BASE: u32 = 91;
@@ -40,7 +40,7 @@ pub fn printable(bytes: &[u8]) -> String {
 mod tests {
     use super::*;
 
-    /// What `www/js/startup.js` does.
+    /// What `www/js/printable.js` does.
     fn read(text: &str) -> Vec<u8> {
         let digits: String = ('!'..='~').filter(|c| !"<>&".contains(*c)).collect();
         let value = |c: char| u32::try_from(digits.find(c).expect("a digit")).expect("small");
