@@ -6,6 +6,7 @@ import { showCannotStart } from "./cannot-start.js";
 import { makeChoice } from "./choice.js";
 import { element, setText, wordButton } from "./dom.js";
 import { Engine } from "./engine.js";
+import { FieldSweep } from "./field-sweep.js";
 import { FaultTiming, Fields, faultNode, faultWords, wayButton } from "./fields.js";
 import { acceptDrops } from "./files.js";
 import { Filing } from "./filing.js";
@@ -20,7 +21,8 @@ import { valueAt } from "./pointer.js";
 import { Questions, WORDS } from "./questions.js";
 import { questionFields } from "./question-fields.js";
 import { RecordRung } from "./record.js";
-import { QuestionRung, ladderList, panicNode } from "./rungs.js";
+import { QuestionRung, ladderList } from "./rungs.js";
+import { panicNode } from "./run-nodes.js";
 import { Settings, settingsPanel } from "./settings.js";
 import { SheetStore } from "./sheet.js";
 import { compileCore, workerStarter } from "./startup.js";
@@ -57,9 +59,10 @@ async function start() {
   };
   const questions = new Questions(engine, heavy, store);
   const orbitals = new Orbitals(heavy, store, questions);
+  const sweep = new FieldSweep(heavy, store, questions);
   await questions.begin();
 
-  new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, heavy, questions, orbitals }).begin();
+  new Page({ notes, storage, settings, view, store, examples, keeper, announcer, engine, heavy, questions, orbitals, sweep }).begin();
   byId("cannot-start").remove();
   keepForOffline(notes);
 }
@@ -137,6 +140,9 @@ class Page {
     this.store.subscribe((change) => this.changed(change));
     this.questions.subscribe((what) => (what === "reading" ? this.showReading() : this.showQuestion(what)));
     this.orbitals.subscribe(() => this.showStop());
+    this.sweep.subscribe((what) => {
+      if (what === "run" || what === "map") this.showStop();
+    });
     this.settings.subscribe(() => this.showAll());
     this.changed({ kind: "load" });
     measureHead();
@@ -147,7 +153,12 @@ class Page {
       settings: this.settings, store: this.store, view: this.view, choice: makeChoice(),
       setField: (path, value, label) => this.put(path, value, label),
       announce: (text) => this.announcer.now(text),
-      chart: (charge) => this.chart(charge),
+      chart: (charge) => this.chart(charge), sweep: this.sweep,
+      toField: (path) => this.toField(path),
+      act: {
+        start: () => this.sweep.start(), stop: () => this.stop(), save: () => this.filing.saveSheet(),
+        putField: () => this.takeQuestionWay("splitting", { path: "/field/flux_density", value: "0.5 T", label: "Put in 0.5 T" }),
+      },
     };
     const act = {
       takeWay: (name, way) => this.takeQuestionWay(name, way),
@@ -163,7 +174,7 @@ class Page {
     this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
       name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,
       open: index === 0, more: name === "states" ? this.orbitalsPart.node : null,
-      fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label), { choice: context.choice, store: this.store, view: this.view, openCsv: () => byId("file").click() }),
+      fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label), { choice: context.choice, store: this.store, view: this.view, sweep: this.sweep, openCsv: () => byId("file").click() }),
     }));
     this.questions.isUnfolded = (name) => this.rungOf(name).open;
     this.record = new RecordRung({
@@ -293,9 +304,13 @@ class Page {
   }
 
   showStop() {
-    const running = this.questions.running || this.orbitals.running;
+    const running = this.isRunning();
     this.stopButton.hidden = !running;
     byId("foot-bar").classList.toggle("running", running);
+  }
+
+  isRunning() {
+    return this.questions.running || this.orbitals.running || this.sweep.running;
   }
 
   showAll() {
@@ -307,7 +322,7 @@ class Page {
     const [fault] = this.shownFaults();
     if (fault === undefined) return;
     if (/^\/(species|configurations)/.test(fault.path)) this.head.unfold(true, false);
-    else if (/^\/(field|line)/.test(fault.path)) this.rungs.find((rung) => rung.name === "splitting")?.rung.unfold(true);
+    else if (/^\/(field|line|nucleus|isotopes|level)(\/|$)/.test(fault.path)) this.rungs.find((rung) => rung.name === "splitting")?.rung.unfold(true);
     else if (/^\/(window|medium|source|refractive_index|air|measured|structure\/(energies|mixing|correlation|scale|given))/.test(fault.path)) this.rungOf("lines").unfold(true);
     else if (/^\/structure/.test(fault.path)) {
       this.rungOf("states").unfold(true);
@@ -315,6 +330,12 @@ class Page {
     } else if (/^\/(title|note)$/.test(fault.path)) this.record.rung.unfold(true);
     this.head.makeRoom(fault.path);
     if (!this.fields.focus(fault.path)) document.querySelector('[data-note="elsewhere"] button')?.focus();
+  }
+
+  toField(path) {
+    if (/^\/(field|line|nucleus|isotopes|level)(\/|$)/.test(path)) this.rungOf("splitting").unfold(true);
+    this.head.makeRoom(path);
+    this.fields.focus(path);
   }
 
   put(path, value, label) {
@@ -350,11 +371,12 @@ class Page {
   stop() {
     this.questions.stop();
     this.orbitals.stop();
+    this.sweep.stop();
     this.announcer.now("Stopped.");
   }
 
   escape() {
-    if (this.questions.running || this.orbitals.running) {
+    if (this.isRunning()) {
       this.stop();
       return true;
     }

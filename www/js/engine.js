@@ -25,13 +25,14 @@ export class Engine {
 
   /**
    * One call of the core. A newer request with the same key supersedes an older one. Resolves to
-   * {text}, {waits: estimate}, {superseded: true}, {stopped: true} or {panic: words}.
+   * {text}, {waits: estimate}, {superseded: true}, {stopped: true} or {panic: words}. Once superseded
+   * it is awaited for `patience` milliseconds from its start, for what its worker keeps is worth that.
    */
-  request(key, door, parameters, { asked = false, onEstimate = null, onProgress = null } = {}) {
+  request(key, door, parameters, { asked = false, patience = AWAIT_MS, onEstimate = null, onProgress = null } = {}) {
     return new Promise((resolve) => {
       this.#waiting.get(key)?.resolve({ superseded: true });
       this.#waiting.delete(key);
-      const request = { key, door, parameters, asked, onEstimate, onProgress, resolve, id: 0, since: 0 };
+      const request = { key, door, parameters, asked, patience, onEstimate, onProgress, resolve, id: 0, since: 0 };
       if (key === "read") this.#waiting = new Map([[key, request], ...this.#waiting]);
       else this.#waiting.set(key, request);
       if (this.#running?.key === key) this.#abandon();
@@ -66,7 +67,7 @@ export class Engine {
       this.#running = null;
       this.#fresh();
     };
-    const left = AWAIT_MS - (performance.now() - request.since);
+    const left = request.patience - (performance.now() - request.since);
     if (left > 0) setTimeout(end, left);
     else end();
   }

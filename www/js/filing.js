@@ -2,7 +2,7 @@
 
 import { element } from "./dom.js";
 import { fileFaults, fileName, saveFile, textOf } from "./files.js";
-import { panicNode } from "./rungs.js";
+import { panicNode } from "./run-nodes.js";
 
 const NO_SHEET = {
   message: "This file is JSON, but not a sheet.", path: "", start: 0, end: 0,

@@ -22,6 +22,10 @@ const KEYS = [
     ["Enter or Space", "choose the mark"],
     ["Esc", "leave the mark"],
   ]],
+  ["Field map in focus", [
+    ["Left, Right", "move the reading rule; with Shift ten times as far"],
+    ["Up, Down", "over states and crossings"],
+  ]],
   ["Row of a table in focus", [
     ["Up, Down, Home, End", "from row to row; first or last row"],
     ["Enter or Space", "choose the row"],

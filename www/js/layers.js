@@ -101,7 +101,8 @@ export class Layers {
     this.#choice.release();
     try {
       const { evidence, working } = this.#render(answer, this.#viewContext());
-      this.#evidenceBody.replaceChildren(evidence);
+      // Evidence that outlives its answers stays where it is, with the finger on it.
+      if (evidence !== this.#evidenceBody.firstChild) this.#evidenceBody.replaceChildren(evidence);
       this.#workingBody.replaceChildren(working);
     } catch (error) {
       // The sentence and the limits stand; what cannot be drawn says so where it would have been.
@@ -117,7 +118,7 @@ export class Layers {
   // The view's subscriptions end when its nodes go.
   #viewContext() {
     const { settings, ...rest } = this.#context;
-    return { ...rest, view: this.#view, settings: settings.values, sheet: this.#context.store.sheet, choice: this.#choice };
+    return { ...rest, view: this.#view, settings: settings.values, sheet: this.#context.store.sheet, choice: this.#choice, lastingChoice: this.#context.choice };
   }
 
   #copy(event) {
@@ -161,6 +162,7 @@ export function focusPlace(container) {
   const index = all().indexOf(focused);
   const { id, tagName } = focused;
   return () => {
+    if (document.activeElement === focused) return;
     const again = (id && document.getElementById(id)) || all()[index];
     if (again && again.tagName === tagName) again.focus();
     else container.closest("section, details")?.focus();

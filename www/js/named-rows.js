@@ -8,7 +8,7 @@ const SHOWN = 40;
 const PLAIN = { type: "text", class: "key", autocomplete: "off", autocapitalize: "off", autocorrect: "off", spellcheck: "false" };
 
 /**
- * The entries of the group at `path`. `words`: {name, value, hint, add, one}; `suggestions()`: names;
+ * The entries of the group at `path`. `words`: {name, value, hint, add, one, of}, `of` before the name in labels; `suggestions()`: names;
  * `usual(name)`: what the box for the value starts from.
  */
 export function namedRows({ fields, store, path, words, suggestions, usual = () => "" }) {
@@ -30,9 +30,9 @@ export function namedRows({ fields, store, path, words, suggestions, usual = () 
     for (const name of wanted) {
       if (rows.has(name)) continue;
       const node = element("div", { class: "named-row" },
-        fields.make(pathOf(name), { label: name, hint: words.hint }),
+        fields.make(pathOf(name), { label: `${words.of ?? ""}${name}`, hint: words.hint }),
         element("button", {
-          type: "button", class: "action", text: "Take it out", "aria-label": `Take out ${name}`,
+          type: "button", class: "action", text: "Take it out", "aria-label": `Take out ${words.of ?? ""}${name}`,
           on: { click: () => {
             store.put([[pathOf(name), undefined]], `Take out ${name}`);
             box.focus();

@@ -4,11 +4,13 @@ import { parseLarge } from "./large-answer.js";
 
 /** A folded question is asked once the sheet has rested this long, so that typing is not held up. */
 const FOLDED_REST_MS = 150;
-/** Levels and lines are computed once the sheet has rested this long; folded, a little later. */
+/** What is computed is asked for once the sheet has rested this long; folded, a little later. */
 const COMPUTED_REST_MS = 250;
 const COMPUTED_FOLDED_REST_MS = 600;
-/** What they hang on: another field never asks for them again. */
-const MATTERS = ["species", "configurations", "structure", "measured", "window", "medium", "source", "refractive_index", "air"];
+/** What levels and lines hang on: another field never asks for them again. */
+const OF_LINES = ["species", "configurations", "structure", "measured", "window", "medium", "source", "refractive_index", "air"];
+/** What the worker has computed of an atom is kept there: a superseded question about its splitting is awaited so long. */
+export const PATIENCE_MS = 400;
 /** A run shorter than this is not shown as one. */
 export const SHOW_RUN_MS = 300;
 
@@ -19,8 +21,11 @@ export const WORDS = {
   splitting: "How does it split?",
 };
 
-/** Questions whose answer is computed, in a worker of its own, and what is asked there with them. */
-const COMPUTED = { lines: ["levels", "lines"] };
+/** Questions whose answer is computed, in a worker of its own: what is asked there with them, and the keys on which they hang. */
+const COMPUTED = {
+  lines: { asks: ["levels", "lines"], matters: OF_LINES },
+  splitting: { asks: ["splitting"], patience: PATIENCE_MS, matters: [...OF_LINES, "field", "line", "nucleus", "isotopes", "level"] },
+};
 
 export class Questions {
   #engine;
@@ -53,7 +58,7 @@ export class Questions {
       this.entries.set(name, {
         name, status: null, needs: null, way: null, answer: null, fresh: false,
         run: null, waits: null, panic: null, stopped: false, unread: true,
-        computed: COMPUTED[name] ?? null, key: null, answered: null, found: [], rest: 0,
+        computed: COMPUTED[name]?.asks ?? null, key: null, answered: null, found: [], rest: 0, hasty: false,
       });
     }
   }
@@ -72,15 +77,15 @@ export class Questions {
     this.#turn += 1;
     const turn = this.#turn;
     this.#engine.supersede("answer:");
-    const key = computedKey(this.#store.sheet);
+    const { sheet } = this.#store;
     for (const entry of this.entries.values()) {
-      if (entry.computed && entry.key === key) continue;
+      if (entry.computed && entry.key === computedKey(entry.name, sheet)) continue;
       if (entry.computed) this.#leave(entry);
       this.#endRun(entry);
       entry.unread = true;
       this.#tell(entry.name);
     }
-    const result = await this.#engine.request("read", "read", [this.#store.sheet]);
+    const result = await this.#engine.request("read", "read", [sheet]);
     if (turn !== this.#turn || result.superseded || result.stopped) return;
     if (result.panic !== undefined) {
       this.broken = result.panic;
@@ -94,7 +99,7 @@ export class Questions {
       const entry = this.entries.get(question.name);
       if (entry === undefined) continue;
       Object.assign(entry, { status: question.status, needs: question.needs, way: question.way, unread: false });
-      if (entry.computed) this.#settle(entry, key);
+      if (entry.computed) this.#settle(entry, computedKey(entry.name, sheet));
       else Object.assign(entry, { fresh: false, waits: null, panic: null, stopped: false });
       if (question.status === "lacks") entry.answer = null;
     }
@@ -124,15 +129,23 @@ export class Questions {
       Object.assign(entry, { key, found: [], waits: null, panic: null, stopped: false, fresh: entry.answer !== null && entry.answered === key });
       if (entry.fresh) return;
       entry.unread = true;
-      const rest = this.isUnfolded(entry.name) ? (first ? 0 : COMPUTED_REST_MS) : COMPUTED_FOLDED_REST_MS;
-      entry.rest = setTimeout(() => this.ask(entry.name), rest);
+      const rest = this.isUnfolded(entry.name) ? (first || entry.hasty ? 0 : COMPUTED_REST_MS) : COMPUTED_FOLDED_REST_MS;
+      entry.hasty = false;
+      if (rest === 0) this.ask(entry.name);
+      else entry.rest = setTimeout(() => this.ask(entry.name), rest);
     }
+  }
+
+  /** The next change of the sheet does not have to rest before this question is asked. */
+  hasten(name) {
+    const entry = this.entries.get(name);
+    if (entry) entry.hasty = true;
   }
 
   // Nothing of it is wanted any more; the answer on show is from before the change.
   #leave(entry) {
     this.#unrest(entry);
-    if (entry.run !== null) this.#heavy().supersede("answer:");
+    if (entry.run !== null) this.#heavy().supersede(`answer:${entry.name}:`);
     this.#endRun(entry);
     entry.key = null;
   }
@@ -164,7 +177,7 @@ export class Questions {
     let result;
     let faults = null;
     for (const question of this.#askedFor(entry)) {
-      result = await engine.request(`answer:${question}`, "answer", [sheet, question], { asked, onEstimate: note("estimate"), onProgress: note("progress") });
+      result = await engine.request(`answer:${name}:${question}`, "answer", [sheet, question], { asked, patience: COMPUTED[name]?.patience, onEstimate: note("estimate"), onProgress: note("progress") });
       if (entry.run !== run) return;
       if (result.text === undefined) break;
       const message = await parseLarge(result.text);
@@ -223,8 +236,13 @@ export class Questions {
   }
 }
 
-function computedKey(sheet) {
-  return JSON.stringify(MATTERS.map((key) => sheet[key] ?? null));
+/** The keys of the sheet on which a computed question hangs. */
+export function matters(name) {
+  return COMPUTED[name].matters;
+}
+
+function computedKey(name, sheet) {
+  return JSON.stringify(matters(name).map((key) => sheet[key] ?? null));
 }
 
 /**

@@ -72,6 +72,8 @@ export const UNITS = {
   "a0^-2": bohr("-2", "inverse Bohr radii squared"),
   "a0^-3": bohr("-3", "inverse Bohr radii cubed"),
   "s-1": { runs: [{ text: "s" }, { up: "\u22121" }], speech: "per second", latex: "s$^{-1}$" },
+  "cm-1 T-1": { runs: [{ text: "cm" }, { up: "\u22121" }, { text: "/T" }], speech: "inverse centimetres per tesla", latex: "cm$^{-1}$\\,T$^{-1}$" },
+  "MHz/mT": { runs: [{ text: "MHz/mT" }], speech: "megahertz per millitesla" },
   s: { runs: [{ text: "s" }], speech: "seconds" },
   "Å": { runs: [{ text: "Å" }], speech: "ångström", latex: "\\AA{}" },
   eV: { runs: [{ text: "eV" }], speech: "electron volts" },

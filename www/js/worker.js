@@ -28,8 +28,9 @@ self.onmessage = ({ data }) => {
     return;
   }
   try {
-    if (data.door === "answer") {
-      const estimate = JSON.parse(core.estimate(...data.arguments));
+    const asked = data.door === "answer" ? data.arguments : data.door === "splitting_map" ? [data.arguments[0], "splitting_map"] : null;
+    if (asked !== null) {
+      const estimate = JSON.parse(core.estimate(...asked));
       const large = estimate.seconds > WAIT_SECONDS || estimate.megabytes > WAIT_MEGABYTES;
       if (large && !data.asked) {
         self.postMessage({ id: data.id, waits: estimate });

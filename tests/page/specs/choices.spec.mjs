@@ -3,7 +3,7 @@
 import assert from "node:assert/strict";
 import { test } from "node:test";
 import { everyDoor } from "../driver/door.mjs";
-import { linePairs } from "../../../www/js/question-fields.js";
+import { linePairs } from "../../../www/js/line-picker.js";
 
 const SODIUM = "v=1&species=Na&configurations.0=3s&configurations.1=3p&field.flux_density=0.5+T&field.view=across&line.upper=3p+2P3/2&line.lower=3s+2S1/2&line.wavelength=589.158+nm";
 const CARBON = "v=1&species=*&configurations.0=2p2&configurations.1=2p+3d";

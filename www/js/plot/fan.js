@@ -12,11 +12,11 @@ const BOTTOM = 46;
 const GAP = 48;
 
 /**
- * The layout for `picture`. `upper`, `lower`: {runs, states: [{M, energy}]} with energies from the
+ * The layout for `picture`. `upper`, `lower`: {runs, states: [{M, shift}]} with shifts from the
  * level in cm⁻¹; `components` as in the answer; `fieldText` "0.5 T"; `kind` of the energies.
  */
 export function fanLayout({ upper, lower, components, fieldText, kind }) {
-  const reach = Math.max(...[...upper.states, ...lower.states].map((state) => Math.abs(state.energy)), 0) || 1;
+  const reach = Math.max(...[...upper.states, ...lower.states].map((state) => Math.abs(state.shift)), 0) || 1;
   const ordered = [...components].sort((a, b) => a.offset - b.offset);
   return (width) => {
     const height = Math.round(Math.min(Math.max((width * 9) / 16, 340), 460));
@@ -27,11 +27,11 @@ export function fanLayout({ upper, lower, components, fieldText, kind }) {
     const knee = LEFT + Math.max(70, (width - LEFT - LABELS) * 0.3);
     const right = width - LABELS;
     const slot = (right - knee) / (ordered.length + 1);
-    const yOf = (side, M) => y[side](bands[side].states.find((state) => state.M === M)?.energy ?? 0);
+    const yOf = (side, M) => y[side](bands[side].states.find((state) => state.M === M)?.shift ?? 0);
     const stateMarks = bands.flatMap((band, side) => band.states.map((state) => ({
-      x: right - 2, y: y[side](state.energy) - 6, w: LABELS - 4, h: 12, id: null,
+      x: right - 2, y: y[side](state.shift) - 6, w: LABELS - 4, h: 12, id: null,
       reading: [{ sign: { runs: band.runs, plain: band.plain, speech: band.speech } }, `, M ${trueMinus(state.M)}: `,
-        { number: { text: String(state.energy), unit: "cm-1", kind } }, " from the level without field"],
+        { number: { text: String(state.shift), unit: "cm-1", kind } }, " from the level without field"],
     })));
     const linkMarks = ordered.map((component, i) => {
       const x = knee + (i + 1) * slot;
@@ -51,8 +51,8 @@ export function fanLayout({ upper, lower, components, fieldText, kind }) {
           pen.text(LEFT, band.top - 8, band.runs, { weight: 600 });
           pen.line(LEFT, middle, LEFT + 18, middle, { stroke: "ink", width: 2 });
           let last = -Infinity;
-          for (const state of [...band.states].sort((a, b) => b.energy - a.energy)) {
-            const level = y[side](state.energy);
+          for (const state of [...band.states].sort((a, b) => b.shift - a.shift)) {
+            const level = y[side](state.shift);
             pen.line(LEFT + 18, middle, knee, level, { stroke: "edge" });
             pen.line(knee, level, right, level, { stroke: "ink", width: 1.5 });
             // States that lie too close share the room of one label.

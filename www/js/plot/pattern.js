@@ -1,8 +1,9 @@
-// The pattern of a line in a weak field: π plain bars above the axis; σ⁺ below with a filled triangle
+// The pattern of a line in a field: π plain bars above the axis; σ⁺ below with a filled triangle
 // that points to higher energy, σ⁻ below with a hollow one that points to lower.
 
 import { trueMinus } from "../digits.js";
 import { BOTTOM_AXIS, bottomAxis, linearScale, tickText } from "./axis.js";
+import { pictureHeight } from "./field-map.js";
 import { unitOf } from "../spoken.js";
 
 /** The units in which offsets are shown: key in the answer, unit, and which way energy grows. */
@@ -28,6 +29,8 @@ const RIGHT = 20;
 const TOP = 44;
 const TRIANGLE = 7;
 const BELOW = 36;
+/** Members of one place that are named. */
+const FEW = 4;
 // Offsets closer than this part of the pattern's width are one component to the eye and in fact.
 const SAME = 1e-9;
 
@@ -47,22 +50,41 @@ export function placesOf(components, unit, view) {
   return places.sort((a, b) => a.x - b.x || a.polarisation.localeCompare(b.polarisation));
 }
 
-/** The layout of a pattern for `picture`. `viewWords` says the view; `kindOf` key → kind. */
-export function patternLayout({ components, unit, view, viewWords, kindOf }) {
+// Ends that are round: while the field changes the axis stands still as long as it can.
+function roundExtent(places) {
+  let low = Infinity;
+  let high = -Infinity;
+  for (const { x } of places) {
+    low = Math.min(low, x);
+    high = Math.max(high, x);
+  }
+  if (!(low <= high)) return [-1, 1];
+  const span = high - low || Math.abs(high) || 1;
+  const rough = span / 8;
+  const power = 10 ** Math.floor(Math.log10(rough));
+  const step = [1, 2, 5, 10].map((factor) => factor * power).find((size) => size >= rough * 0.999999) ?? 10 * power;
+  return [Math.floor((low - 0.05 * span) / step) * step, Math.ceil((high + 0.05 * span) / step) * step];
+}
+
+/**
+ * The layout of a pattern for `picture`. `viewWords` says the view; `kindOf` key → kind; `idsOf` component → ids
+ * of the shared choice, its own first; `rough` values are read from a map, and marked so.
+ */
+export function patternLayout({ components, unit, view, viewWords, kindOf, idsOf = () => [], rough = false }) {
   const places = placesOf(components, unit, view);
   const seen = places.filter((place) => place.strength > 0);
   const strongest = Math.max(...seen.map((place) => place.strength), 0) || 1;
-  const reach = Math.max(...places.map((place) => Math.abs(place.x)), 0) || 1;
+  const [first, last] = roundExtent(places);
+  const whole = last - first;
   const { energy } = OFFSET_UNITS[unit];
   return (width, [from, to]) => {
-    const height = Math.round(Math.min(Math.max((width * 7) / 16, 300), 420));
+    const height = pictureHeight(width);
     const bottom = height - BOTTOM_AXIS;
     // Triangles and names of the downward bars keep clear of the offset axis.
     const axis = TOP + (bottom - TOP - BELOW) / 2;
     const tall = axis - TOP - 10;
-    const whole = 2.3 * reach;
-    const low = -whole / 2 + from * whole;
-    const high = -whole / 2 + to * whole;
+    const low = first + from * whole;
+    const high = first + to * whole;
     const scale = linearScale(low, high, LEFT, width - RIGHT);
     const shown = seen.filter((place) => place.x >= low && place.x <= high);
     const ends = (place) => axis + (place.polarisation === "pi" ? -1 : 1) * (place.strength / strongest) * tall;
@@ -72,13 +94,15 @@ export function patternLayout({ components, unit, view, viewWords, kindOf }) {
         const x = scale(place.x);
         const end = ends(place);
         const wing = place.polarisation === "pi" ? 3 : TRIANGLE;
+        const [id = null, ...others] = place.members.flatMap(idsOf);
         return {
           x: x - wing, w: 2 * wing, y: Math.min(axis, end) - (place.polarisation === "pi" ? 0 : -2), h: Math.abs(end - axis) + (place.polarisation === "pi" ? 0 : TRIANGLE),
-          part: (place.x + whole / 2) / whole, id: null, reading: readingOf(place, unit, { view, viewWords, kindOf }),
+          part: (place.x - first) / whole, id, ids: others, get reading() { return readingOf(place, unit, { view, viewWords, kindOf, rough }); },
         };
       }),
       draw(pen) {
         pen.text(LEFT, 16, "Relative strength", { fill: "quiet" });
+        if (rough) pen.text(width - RIGHT, 16, "~ between computed fields", { anchor: "end", fill: "quiet" });
         for (const [y, sign] of [[TOP + 10, 1], [axis + tall, -1]]) {
           pen.line(LEFT - 5, y, LEFT, y, { stroke: "edge" });
           pen.text(LEFT - 8, y + 4, tickText(strongest, strongest < 0.1 ? 3 : 2), { anchor: "end", fill: "quiet" });
@@ -124,14 +148,16 @@ function labels(pen, shown, scale, ends) {
   }
 }
 
-function readingOf(place, unit, { view, viewWords, kindOf }) {
+function readingOf(place, unit, { view, viewWords, kindOf, rough }) {
   const { unit: unitName } = OFFSET_UNITS[unit];
-  const jumps = place.members.map((member) => `M ${trueMinus(member.M_lower)} to ${trueMinus(member.M_upper)}`).join(", ");
+  const number = (value, name, key) => ({ number: rough ? { text: `~${trueMinus(Number(value.toPrecision(5)))}`, unit: name } : { text: String(value), unit: name, kind: kindOf(key) } });
+  const few = place.members.slice(0, FEW);
+  const jumps = few.map((member) => (member.F_upper === null || member.F_upper === undefined ? "" : `F ${member.F_lower} to ${member.F_upper}, `) + `M ${trueMinus(member.M_lower)} to ${trueMinus(member.M_upper)}`).join("; ");
   return [
     { sign: { runs: SIGNS[place.polarisation].runs, plain: SIGNS[place.polarisation].plain, speech: SIGNS[place.polarisation].speech } },
-    `, ${jumps}: offset `,
-    { number: { text: String(place.x), unit: unitName, kind: kindOf(unit) } },
+    `, ${jumps}${place.members.length > FEW ? ` and ${place.members.length - FEW} more` : ""}: offset `,
+    number(place.x, unitName, unit),
     `; strength ${viewWords} `,
-    { number: { text: String(place.strength), unit: null, kind: kindOf(view) } },
+    number(place.strength, null, view),
   ];
 }

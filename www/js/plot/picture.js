@@ -17,13 +17,15 @@ const MOST_ZOOM = 200;
 /**
  * A picture.
  *
- * `layout(width, view)` → {height, marks, draw(pen), width?}; `view` is the part of the horizontal extent (of the
+ * `layout(width, view, file)` → {height, marks, draw(pen), width?}; `file` is true for a file, without what lies over the stage; `view` is the part of the horizontal extent (of the
  *   vertical one, counted upwards, when `vertical` is true) that is shown, [0, 1] unzoomed, or ignored when `zoomable` is false.
  *   A mark: {x, y, w, h (its box, for ring and touch), reading: rich text, id: shared choice or null,
  *   ids: those of what else it belongs to, whose choice rings it too; chooses: what Enter chooses on
  *   a mark that is not ringed for it}.
  * `rest`: rich text of the reading line while nobody is on a mark.
  * `walk(index, key, marks)` → next index, for pictures that are walked in two directions.
+ * `steer(key, far)` → whether an arrow did something else than walk; `overlay`: a node that lies over the stage.
+ * A layout may have `find(x, y)` → index of the mark there, or −1 (where boxes do not tell), and `placed()`, called once it is on the page.
  * `table`: node shown by "Show as table", or null when the table stands beside the picture already;
  * then `tableNear` is a function that brings it into view.
  */
@@ -93,8 +95,28 @@ class Picture {
     this.#surface = this.#marks.length > CANVAS_FROM ? this.#onCanvas(shown) : this.#onSvg(shown);
     this.#ring = svgElement("g", { class: "rings", "aria-hidden": "true" });
     const over = svgElement("svg", { class: "over", ...sizeOf(this.#shownWidth(), shown.height), "aria-hidden": "true" }, this.#ring);
-    this.#stage.replaceChildren(this.#surface, over);
+    const { overlay = null } = this.#options;
+    // What lies over the stage may hold the pointer: it stays where it is.
+    for (const old of [...this.#stage.children]) if (old !== overlay) old.remove();
+    this.#stage.prepend(this.#surface, over);
+    if (overlay !== null && !overlay.isConnected) this.#stage.append(overlay);
+    shown.placed?.();
     this.#ringAt();
+    if (this.#at < 0) this.#rest();
+  }
+
+  /** The marks have moved, while what is drawn stays. */
+  moveMarks(marks) {
+    this.#marks = marks;
+    if (this.#shown !== null) this.#shown.marks = marks;
+    this.#ringAt();
+    if (this.#at >= marks.length) this.#at = -1;
+    if (this.#at >= 0) this.#read(this.#at);
+  }
+
+  /** What the reading line says while nobody is on a mark. */
+  say(rest) {
+    this.#options.rest = rest;
     if (this.#at < 0) this.#rest();
   }
 
@@ -134,7 +156,9 @@ class Picture {
       this.#stage.blur();
       event.stopPropagation();
     } else if (key === "Home" || key === "End") this.#to(key === "Home" ? 0 : last);
-    else if (/^Arrow/.test(key)) {
+    else if (/^Arrow/.test(key) && this.#options.steer?.(key, far)) {
+      // Done.
+    } else if (/^Arrow/.test(key)) {
       if (this.#options.walk && this.#at >= 0) {
         let at = this.#at;
         for (let step = 0; step < far; step += 1) at = this.#options.walk(at, key, this.#marks);
@@ -193,6 +217,7 @@ class Picture {
   }
 
   #nearest(x, y) {
+    if (this.#shown?.find) return this.#shown.find(x, y);
     let best = -1;
     let least = 24;
     this.#marks.forEach((mark, i) => {
@@ -290,7 +315,7 @@ class Picture {
 
   /** The picture as the text of an SVG file, in ink on white. */
   svgText() {
-    const shown = this.#options.layout(Math.max(this.#width, 320), this.#view);
+    const shown = this.#options.layout(Math.max(this.#width, 320), this.#view, true);
     const width = shown.width ?? Math.max(this.#width, 320);
     const title = richPlain(this.#options.name);
     const group = svgElement("g");

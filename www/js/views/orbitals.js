@@ -6,7 +6,7 @@ import { FaultTiming, Fields, faultNode, flagField, wayButton } from "../fields.
 import { focusPlace } from "../layers.js";
 import { valueAt } from "../pointer.js";
 import { richSpeech } from "../rich.js";
-import { runNodes, runWords } from "../rungs.js";
+import { runNodes, runWords } from "../run-nodes.js";
 import { SheetStore } from "../sheet.js";
 import { POLARISATION, evidence } from "./orbital-evidence.js";
 

@@ -1,0 +1,180 @@
+// What the field map shows: the states of one level or of all, one panel for each stretch of energy,
+// or the offsets of the components.
+
+import { trueMinus } from "../digits.js";
+import { STROKES } from "../plot/field-map.js";
+import { placeIn, cubicAt } from "../plot/hermite.js";
+import { SIGNS } from "../plot/pattern.js";
+import { richRuns } from "../rich.js";
+import { unitOf } from "../spoken.js";
+import { componentId, idsOfComponent, idsOfState, stateRich } from "./splitting-names.js";
+
+/** A gap so many times wider than what lies beside it parts two panels. */
+const GAP = 12;
+const MOST_PANELS = 4;
+
+/** What can be shown: [[key, words]]. */
+export function mapChoices(map) {
+  const levels = new Map(map.states.map((state) => [state.level, state]));
+  return [
+    ["", levels.size > 1 ? "all levels" : "the level"],
+    ...(levels.size > 1 ? [...levels.keys()].map((level) => [`level:${level}`, level]) : []),
+    ...(map.components.length > 0 ? [["components", "offsets of the components"]] : []),
+  ];
+}
+
+/**
+ * The panels of one choice. `unit`: {name, energyFactor, offsetFactor} of energies and of offsets;
+ * `crossings`, `componentCrossings`: those of the map.
+ */
+export function mapPanels(map, choice, unit, multipole) {
+  if (choice === "components") return [componentPanel(map, unit, multipole)];
+  const own = map.states.map((state, at) => ({ state, at })).filter(({ state }) => choice === "" || choice === `level:${state.level}`);
+  const groups = choice === "" && own.some(({ state }) => state.side) ? bySide(own) : byStretch(own);
+  return groups.slice(0, MOST_PANELS).map((group) => statePanel(group, map, unit));
+}
+
+function bySide(own) {
+  return ["upper", "lower"].map((side) => own.filter(({ state }) => state.side === side)).filter((group) => group.length > 0);
+}
+
+// From the top: a panel ends where a wide gap follows.
+function byStretch(own) {
+  const spans = own.map(({ state, at }) => ({ state, at, low: Math.min(...state.energies), high: Math.max(...state.energies) })).sort((a, b) => b.high - a.high);
+  const groups = [];
+  for (const span of spans) {
+    const last = groups.at(-1);
+    if (last && last.low - span.high <= GAP * Math.max(last.high - last.low, span.high - span.low)) {
+      last.members.push(span);
+      last.low = Math.min(last.low, span.low);
+    } else groups.push({ members: [span], high: span.high, low: span.low });
+  }
+  if (groups.length <= MOST_PANELS) return groups.map(({ members }) => members);
+  return [spans];
+}
+
+function statePanel(group, map, { name, energyFactor: factor }) {
+  const reference = zeroOf(group.map(({ state }) => state));
+  const levels = [...new Set(group.map(({ state }) => state.level))];
+  const keys = [...new Set(group.map(({ state }) => groupKey(state)))];
+  const inside = new Map(group.map(({ state }) => [nameOf(state), state]));
+  const title = [
+    ...(levels.length === 1 ? richRuns(group[0].state.rich ?? [levels[0]]) : [{ text: "E" }]),
+    { text: `, E − ${trueMinus(String(Number(reference.toPrecision(10))))} cm` }, { up: "\u22121" }, { text: " (" }, ...unitOf(name).runs, { text: ")" },
+  ];
+  return {
+    title: levels.length === 1 ? title : title.slice(1).map((run, i) => (i === 0 ? { text: run.text.slice(2) } : run)), factor, reference,
+    series: group.map(({ state, at }) => {
+      const stroke = strokeOf(keys.indexOf(groupKey(state)));
+      return {
+        at, state, id: idsOfState(state)[0], ids: idsOfState(state).slice(1), label: [{ text: trueMinus(state.M) }],
+        groupKey: groupKey(state), group: groupRuns(state, levels.length), values: state.energies, slopes: state.slopes, ...stroke,
+      };
+    }),
+    signs: (map.crossings ?? []).filter((crossing) => inside.has(crossing.first) && inside.has(crossing.second ?? crossing.first)).map((crossing) => ({
+      kind: crossing.kind, tesla: crossing.tesla, id: crossingId(crossing), ids: [], value: signHeight(crossing, inside, map.tesla), reading: crossingReading(crossing, inside),
+    })),
+  };
+}
+
+// Where the two states meet; a pair that does not is marked at its first.
+function signHeight(crossing, inside, fields) {
+  if (typeof crossing.energy === "number" && crossing.kind !== "clock") return crossing.energy;
+  const state = inside.get(crossing.first);
+  return cubicAt(state.energies, state.slopes, placeIn(fields, crossing.tesla));
+}
+
+/** The name by which crossings and components know a state. */
+export function nameOf(state) {
+  return state.name;
+}
+
+export function crossingId({ kind, first, second, tesla }) {
+  return `crossing:${kind}/${first}/${second ?? ""}/${Number(tesla.toPrecision(6))}`;
+}
+
+const KINDS = { crossing: "Crossing", avoided: "Avoided crossing", clock: "Clock point, no slope", farthest: "Farthest apart" };
+
+/** Words for the kinds of crossings. */
+export function kindWords(kind) {
+  return KINDS[kind] ?? kind;
+}
+
+function crossingReading(crossing, inside) {
+  const end = (name) => stateRich(inside.get(name));
+  return [
+    `${kindWords(crossing.kind)}: `, ...end(crossing.first), ...(crossing.second ? [" and ", ...end(crossing.second)] : []), " at ",
+    { number: { text: String(crossing.tesla), unit: "T", kind: "computed" } },
+    ...(crossing.kind === "avoided" && typeof crossing.gap === "number" ? ["; gap ", { number: { text: String(crossing.gap), unit: "cm-1", kind: "computed" } }] : []),
+    ...(typeof crossing.mhz === "number" ? ["; ", { number: { text: String(crossing.mhz), unit: "MHz", kind: "computed" } }] : []),
+  ];
+}
+
+function componentPanel(map, { name, offsetFactor: factor }, multipole) {
+  const names = new Map(map.states.map((state) => [nameOf(state), state]));
+  const series = map.components.map((component, at) => {
+    const [upper, lower] = [map.states[component.upper], map.states[component.lower]];
+    const sign = SIGNS[component.polarisation];
+    const row = rowOf(component, upper, lower);
+    const ids = idsOfComponent(row, multipole);
+    return {
+      at, component, upper, lower, row, id: componentId(row), ids: ids.slice(1), label: null, group: null, groupKey: component.polarisation,
+      values: component.offsets, slopes: slopesOf(upper, lower), colour: sign.colour, dash: sign.dash, shown: component.strengths.some((strength) => strength > 0),
+    };
+  }).filter(({ shown }) => shown);
+  const byName = new Map(series.map((each) => [`${nameOf(each.upper)}\n${nameOf(each.lower)}`, each]));
+  return {
+    title: [{ text: "Offset (" }, ...unitOf(name).runs, { text: ")" }], factor, reference: 0, series,
+    signs: (map.component_crossings ?? []).filter(({ kind, apart }) => kind !== "farthest" || apart !== undefined).flatMap((crossing) => {
+      const first = byName.get(pairKey(crossing.first)) ?? seriesNamed(series, crossing.first);
+      if (first === undefined) return [];
+      return [{
+        kind: crossing.kind, tesla: crossing.tesla, id: crossingId(crossing), ids: [], value: cubicAt(first.values, first.slopes, placeIn(map.tesla, crossing.tesla)),
+        reading: [`${kindWords(crossing.kind)}: ${crossing.first} and ${crossing.second} at `, { number: { text: String(crossing.tesla), unit: "T", kind: "computed" } }],
+      }];
+    }),
+    names,
+  };
+}
+
+function pairKey(name) {
+  return Array.isArray(name) ? name.join("\n") : name;
+}
+
+function seriesNamed(series, name) {
+  return series.find((each) => each.component.name === name);
+}
+
+function rowOf(component, upper, lower) {
+  return {
+    isotope: upper.isotope ?? null, polarisation: component.polarisation, level_upper: upper.level, level_lower: lower.level,
+    F_upper: upper.F ?? null, F_lower: lower.F ?? null, M_upper: upper.M, M_lower: lower.M,
+  };
+}
+
+function slopesOf(upper, lower) {
+  return upper.slopes.map((slope, i) => slope - lower.slopes[i]);
+}
+
+// The lowest level without field: the mean over its states, where its nucleus takes nothing away.
+function zeroOf(states) {
+  const levels = new Map();
+  for (const state of states) levels.set(state.level, [...(levels.get(state.level) ?? []), state.energies[0]]);
+  return Math.min(...[...levels.values()].map((energies) => energies.reduce((sum, energy) => sum + energy, 0) / energies.length));
+}
+
+function groupKey(state) {
+  return `${state.isotope ?? ""}/${state.level}/${state.F ?? ""}`;
+}
+
+function groupRuns(state, levels) {
+  const f = state.F === null || state.F === undefined ? [] : [{ text: `F ${state.F}` }];
+  const level = levels > 1 ? richRuns(state.rich ?? [state.level]) : [];
+  return [...level, ...(level.length > 0 && f.length > 0 ? [{ text: " " }] : []), ...f];
+}
+
+// Sixteen levels differ in dash or colour; farther ones begin again.
+function strokeOf(index) {
+  const turn = Math.floor(index / STROKES.length);
+  return { colour: STROKES[(index + turn) % STROKES.length].colour, dash: STROKES[index % STROKES.length].dash };
+}

@@ -1,0 +1,61 @@
+// What a map says at a field between those it was computed for.
+
+import { cubicAt, cubicSlopeAt, straightAt } from "../plot/hermite.js";
+
+/** Factors that turn an offset in cm⁻¹ into the other units, from the answer or, failing that, its largest component. */
+export function offsetFactors(answer) {
+  const { conversions = {} } = answer;
+  const largest = answer.components.reduce((best, row) => (Math.abs(row.offset) > Math.abs(best?.offset ?? 0) ? row : best), null);
+  const ratio = (key) => (typeof largest?.[key] === "number" ? largest[key] / largest.offset : null);
+  return {
+    offset: 1,
+    ghz: conversions.ghz_per_wavenumber ?? ratio("ghz"),
+    pm: conversions.pm_per_wavenumber ?? ratio("pm"),
+    // Per tesla: an offset in units of μ_B B is smaller the stronger the field.
+    lorentzTesla: conversions.mu_b_per_tesla ? 1 / conversions.mu_b_per_tesla : ratio("lorentz") === null ? null : ratio("lorentz") * answer.field.tesla,
+  };
+}
+
+/** How much of a component's strength each view has, by polarisation: the field does not change that. */
+export function viewFactors(components) {
+  const found = {};
+  for (const row of components) {
+    if (found[row.polarisation] || !(row.strength > 0)) continue;
+    found[row.polarisation] = { along: row.along / row.strength, across: row.across / row.strength };
+  }
+  return found;
+}
+
+/** The components of a map at a place in its fields, like rows of the answer but without kinds. */
+export function componentsAt(map, place, tesla, factors, views) {
+  const { states } = map;
+  return map.components.map((component) => {
+    const [upper, lower] = [states[component.upper], states[component.lower]];
+    const offset = differenceAt(component.offsets, upper.slopes, lower.slopes, place);
+    const strength = Math.max(straightAt(component.strengths, place), 0);
+    const view = views[component.polarisation] ?? {};
+    return {
+      polarisation: component.polarisation, isotope: upper.isotope ?? null,
+      level_upper: upper.level, level_lower: lower.level, M_upper: upper.M, M_lower: lower.M, F_upper: upper.F ?? null, F_lower: lower.F ?? null,
+      offset, ghz: scaled(offset, factors.ghz), pm: scaled(offset, factors.pm), lorentz: tesla > 0 ? scaled(offset / tesla, factors.lorentzTesla) : null,
+      strength, seen: Math.max(straightAt(component.seen, place), 0), along: strength * (view.along ?? 0), across: strength * (view.across ?? 0),
+    };
+  });
+}
+
+/** Energy and slope of a state of the map. */
+export function stateAt(state, place) {
+  return { energy: cubicAt(state.energies, state.slopes, place), slope: cubicSlopeAt(state.energies, state.slopes, place) };
+}
+
+// The cubic of a difference is the difference of the cubics.
+function differenceAt(offsets, above, below, place) {
+  const { i, t, h } = place;
+  if (offsets.length < 2) return offsets[0];
+  const s = 1 - t;
+  return offsets[i] * s * s * (1 + 2 * t) + offsets[i + 1] * t * t * (3 - 2 * t) + h * t * s * ((above[i] - below[i]) * s - (above[i + 1] - below[i + 1]) * t);
+}
+
+function scaled(value, factor) {
+  return factor === null ? null : value * factor;
+}
