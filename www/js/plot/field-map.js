@@ -15,6 +15,8 @@ const MARGIN = 0.06;
 const POINTS = 96;
 /** Labels closer than this would touch. */
 const APART = 12;
+/** Height that each further panel adds. */
+const MORE = 60;
 const SIGN = 5;
 /** How far from a curve or a sign a finger may be. */
 const REACH = 24;
@@ -43,7 +45,7 @@ export function fieldMapLayout({ fields, panels, at, reading, chosen, axis, line
     const [low, high] = [a * end, b * end];
     const right = width - RIGHT;
     const scale = linearScale(low, high, LEFT, right);
-    const tall = pictureHeight(width) + Math.max(0, panels.length - 2) * 120;
+    const tall = pictureHeight(width) + (panels.length - 1) * MORE;
     const bottom = tall - BOTTOM_AXIS;
     const part = (bottom - TOP - GAP * (panels.length - 1)) / panels.length;
     const samples = sampled(fields, low, high);

@@ -58,12 +58,13 @@ function statePanel(group, map, { name, energyFactor: factor }) {
   const levels = [...new Set(group.map(({ state }) => state.level))];
   const keys = [...new Set(group.map(({ state }) => groupKey(state)))];
   const inside = new Map(group.map(({ state }) => [nameOf(state), state]));
-  const title = [
-    ...(levels.length === 1 ? richRuns(group[0].state.rich ?? [levels[0]]) : [{ text: "E" }]),
-    { text: `, E − ${trueMinus(String(Number(reference.toPrecision(10))))} cm` }, { up: "\u22121" }, { text: " (" }, ...unitOf(name).runs, { text: ")" },
-  ];
+  const from = Number(reference.toPrecision(10));
   return {
-    title: levels.length === 1 ? title : title.slice(1).map((run, i) => (i === 0 ? { text: run.text.slice(2) } : run)), factor, reference,
+    title: [
+      ...(levels.length === 1 ? [...richRuns(group[0].state.rich ?? [levels[0]]), { text: ", E" }] : [{ text: "E" }]),
+      ...(from === 0 ? [] : [{ text: ` − ${trueMinus(String(from))}\u00a0cm` }, { up: "\u22121" }]), { text: " (" }, ...unitOf(name).runs, { text: ")" },
+    ],
+    factor, reference,
     series: group.map(({ state, at }) => {
       const stroke = strokeOf(keys.indexOf(groupKey(state)));
       return {

@@ -34,6 +34,7 @@ export function componentsTable(answer, context, unit, view) {
   });
   const firstOf = (keys, key) => [key, ...keys.filter((other) => other !== key)];
   const levels = richOfLevels(answer);
+  const narrow = has(components, "F_upper") || has(components, "F_lower") || several(components, "level_upper") || several(components, "level_lower");
   const end = (side) => [
     several(components, `level_${side}`) && { name: `${side} level`, type: "text", value: (row) => row[`level_${side}`], rich: (row) => levels.get(row[`level_${side}`]) ?? [row[`level_${side}`]] },
     has(components, `F_${side}`) && { name: `F ${side}`, type: "half", value: (row) => row[`F_${side}`] },
@@ -50,7 +51,7 @@ export function componentsTable(answer, context, unit, view) {
       column(view, `strength, ${VIEW_NAMES[view]}`),
       has(components, "linear") && column("linear", "offset, linear pattern", "cm-1", { reason: "the linear pattern has no such component" }),
       ...firstOf(Object.keys(OFFSET_UNITS), unit).slice(1).map((key) => ({ ...column(key, "offset", OFFSET_UNITS[key].unit), copied: true })),
-      ...firstOf(Object.keys(VIEW_NAMES), view).slice(1).map((key) => column(key, `strength, ${VIEW_NAMES[key]}`, null, { copied: components.length > 40 })),
+      ...firstOf(Object.keys(VIEW_NAMES), view).slice(1).map((key) => column(key, `strength, ${VIEW_NAMES[key]}`, null, { copied: narrow })),
     ].filter(Boolean),
     identify: componentId, concerns: componentConcerned,
   });
