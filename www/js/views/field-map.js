@@ -118,7 +118,7 @@ export class FieldMapView {
     }
     const { row } = series;
     const value = (stateAt({ energies: series.values, slopes: series.slopes }, place).energy) * panel.factor;
-    return [...stateRich({ ...series.lower }), " – ", ...stateRich({ ...series.upper }), `, ${row.polarisation.replace("sigma", "σ").replace("pi", "π")}, at ${this.#ruleText()}: `, rough(Number(value.toPrecision(6)), this.#unit.name)];
+    return [...stateRich(series.lower), " – ", ...stateRich(series.upper), `, ${row.polarisation.replace("sigma", "σ").replace("pi", "π")}, at ${this.#ruleText()}: `, rough(Number(value.toPrecision(6)), this.#unit.name)];
   }
 
   /** How the run of the map stands, in its place. */
@@ -138,5 +138,6 @@ export class FieldMapView {
         element("button", { type: "button", class: "action", text: "Put in 0.5 T", on: { click: putField } }),
       ] : runNodes({ ...slot, answer: null }, false, { stop, start, again: start, save });
     this.#empty.replaceChildren(...nodes);
+    this.node.hidden = map === null && nodes.length === 0;
   }
 }

@@ -7,7 +7,7 @@ import { placeIn, cubicAt } from "../plot/hermite.js";
 import { SIGNS } from "../plot/pattern.js";
 import { richRuns } from "../rich.js";
 import { unitOf } from "../spoken.js";
-import { componentId, idsOfComponent, idsOfState, stateRich } from "./splitting-names.js";
+import { componentId, idsOfComponent, idsOfState, levelRich, stateRich } from "./splitting-names.js";
 
 /** A gap so many times wider than what lies beside it parts two panels. */
 const GAP = 12;
@@ -57,11 +57,11 @@ function statePanel(group, map, { name, energyFactor: factor }) {
   const reference = zeroOf(group.map(({ state }) => state));
   const levels = [...new Set(group.map(({ state }) => state.level))];
   const keys = [...new Set(group.map(({ state }) => groupKey(state)))];
-  const inside = new Map(group.map(({ state }) => [nameOf(state), state]));
+  const inside = new Map(group.map(({ state }) => [state.name, state]));
   const from = Number(reference.toPrecision(10));
   return {
     title: [
-      ...(levels.length === 1 ? [...richRuns(group[0].state.rich ?? [levels[0]]), { text: ", E" }] : [{ text: "E" }]),
+      ...(levels.length === 1 ? [...richRuns(levelRich(group[0].state)), { text: ", E" }] : [{ text: "E" }]),
       ...(from === 0 ? [] : [{ text: ` − ${trueMinus(String(from))}\u00a0cm` }, { up: "\u22121" }]), { text: " (" }, ...unitOf(name).runs, { text: ")" },
     ],
     factor, reference,
@@ -72,7 +72,7 @@ function statePanel(group, map, { name, energyFactor: factor }) {
         groupKey: groupKey(state), group: groupRuns(state, levels.length), values: state.energies, slopes: state.slopes, ...stroke,
       };
     }),
-    signs: (map.crossings ?? []).filter((crossing) => inside.has(crossing.first) && inside.has(crossing.second ?? crossing.first)).map((crossing) => ({
+    signs: map.crossings.filter((crossing) => inside.has(crossing.first) && inside.has(crossing.second ?? crossing.first)).map((crossing) => ({
       kind: crossing.kind, tesla: crossing.tesla, id: crossingId(crossing), ids: [], value: signHeight(crossing, inside, map.tesla), reading: crossingReading(crossing, inside),
     })),
   };
@@ -83,11 +83,6 @@ function signHeight(crossing, inside, fields) {
   if (typeof crossing.energy === "number" && crossing.kind !== "clock") return crossing.energy;
   const state = inside.get(crossing.first);
   return cubicAt(state.energies, state.slopes, placeIn(fields, crossing.tesla));
-}
-
-/** The name by which crossings and components know a state. */
-export function nameOf(state) {
-  return state.name;
 }
 
 export function crossingId({ kind, first, second, tesla }) {
@@ -112,7 +107,6 @@ function crossingReading(crossing, inside) {
 }
 
 function componentPanel(map, { name, offsetFactor: factor }, multipole) {
-  const names = new Map(map.states.map((state) => [nameOf(state), state]));
   const series = map.components.map((component, at) => {
     const [upper, lower] = [map.states[component.upper], map.states[component.lower]];
     const sign = SIGNS[component.polarisation];
@@ -123,34 +117,22 @@ function componentPanel(map, { name, offsetFactor: factor }, multipole) {
       values: component.offsets, slopes: slopesOf(upper, lower), colour: sign.colour, dash: sign.dash, shown: component.strengths.some((strength) => strength > 0),
     };
   }).filter(({ shown }) => shown);
-  const byName = new Map(series.map((each) => [`${nameOf(each.upper)}\n${nameOf(each.lower)}`, each]));
+  const byName = new Map(series.map((each) => [`${each.upper.name} to ${each.lower.name}`, each]));
   return {
     title: [{ text: "Offset (" }, ...unitOf(name).runs, { text: ")" }], factor, reference: 0, series,
-    signs: (map.component_crossings ?? []).filter(({ kind, apart }) => kind !== "farthest" || apart !== undefined).flatMap((crossing) => {
-      const first = byName.get(pairKey(crossing.first)) ?? seriesNamed(series, crossing.first);
+    signs: map.component_crossings.flatMap((crossing) => {
+      const first = byName.get(crossing.first);
       if (first === undefined) return [];
       return [{
         kind: crossing.kind, tesla: crossing.tesla, id: crossingId(crossing), ids: [], value: cubicAt(first.values, first.slopes, placeIn(map.tesla, crossing.tesla)),
         reading: [`${kindWords(crossing.kind)}: ${crossing.first} and ${crossing.second} at `, { number: { text: String(crossing.tesla), unit: "T", kind: "computed" } }],
       }];
     }),
-    names,
   };
-}
-
-function pairKey(name) {
-  return Array.isArray(name) ? name.join("\n") : name;
-}
-
-function seriesNamed(series, name) {
-  return series.find((each) => each.component.name === name);
 }
 
 function rowOf(component, upper, lower) {
-  return {
-    isotope: upper.isotope ?? null, polarisation: component.polarisation, level_upper: upper.level, level_lower: lower.level,
-    F_upper: upper.F ?? null, F_lower: lower.F ?? null, M_upper: upper.M, M_lower: lower.M,
-  };
+  return { polarisation: component.polarisation, upper: upper.name, lower: lower.name, level_upper: upper.level, level_lower: lower.level };
 }
 
 function slopesOf(upper, lower) {
@@ -170,7 +152,7 @@ function groupKey(state) {
 
 function groupRuns(state, levels) {
   const f = state.F === null || state.F === undefined ? [] : [{ text: `F ${state.F}` }];
-  const level = levels > 1 ? richRuns(state.rich ?? [state.level]) : [];
+  const level = levels > 1 ? richRuns(levelRich(state)) : [];
   return [...level, ...(level.length > 0 && f.length > 0 ? [{ text: " " }] : []), ...f];
 }
 

@@ -14,7 +14,7 @@ import { crossingId, kindWords, mapChoices } from "./field-panels.js";
 import { fold, pointerWords, select } from "./fold.js";
 import { componentId, idsOfComponent, stateId, stateRich } from "./splitting-names.js";
 import {
-  componentCrossingsTable, componentsTable, constantsTable, crossingsTable, fieldWords, lineName, resonancesTable, richOfLevels, statesTable,
+  componentCrossingsTable, componentsTable, constantsTable, crossingsTable, fieldWords, lineName, resonancesTable, statesTable,
 } from "./splitting-tables.js";
 import { componentsAt, offsetFactors, viewFactors } from "./sweep-values.js";
 import { kindOf } from "./working.js";
@@ -154,7 +154,7 @@ export class SplittingEvidence {
     const { components, field } = this.#answer;
     const empty = components.length === 0;
     this.#pattern.node.hidden = empty;
-    this.#none.replaceChildren(...(empty ? [element("p", { text: this.#answer.pattern || "There are no components to draw." }),
+    this.#none.replaceChildren(...(empty ? [element("p", { text: this.#answer.no_components ?? "A line has a pattern; all states of these levels are in the table below." }),
       element("button", { type: "button", class: "action", text: "Choose a line", on: { click: () => this.#context.toField("/line/upper") } })] : []));
     if (empty) return;
     const rough = this.#sweep.at !== null && this.#sweep.map !== null;
@@ -251,18 +251,19 @@ export class SplittingEvidence {
   }
 
   #ofState(state) {
-    const rich = richOfLevels(this.#answer).get(state.level);
     const kind = (key) => kindOf(this.#answer, `states.${key}`);
-    return [this.#head([...stateRich({ ...state, rich: state.rich ?? rich }), ` ${fieldWords(this.#answer)}`]), facts({ settings: this.#settings }, [
+    return [this.#head([...stateRich(state), ` ${fieldWords(this.#answer)}`]), facts({ settings: this.#settings }, [
       ["energy", state.energy, "cm-1", kind("energy")], ["from the level", state.shift, "cm-1", kind("shift")], ["slope", state.slope, "cm-1 T-1", kind("slope")],
     ])];
   }
 
   #ofComponent(row) {
     const kind = (key) => kindOf(this.#answer, `components.${key}`);
-    const levels = richOfLevels(this.#answer);
-    const end = (side) => stateRich({ isotope: null, level: row[`level_${side}`], rich: levels.get(row[`level_${side}`]), F: row[`F_${side}`], M: row[`M_${side}`] });
-    return [this.#head([...(row.isotope ? [`${row.isotope} `] : []), ...end("lower"), " – ", ...end("upper"), ` ${fieldWords(this.#answer)}`]), facts({ settings: this.#settings }, [
+    const end = (name) => {
+      const state = this.#answer.states.find((each) => each.name === name);
+      return state ? stateRich(state) : [name];
+    };
+    return [this.#head([...end(row.lower), " – ", ...end(row.upper), ` ${fieldWords(this.#answer)}`]), facts({ settings: this.#settings }, [
       ["offset", row.offset, "cm-1", kind("offset")], ["", row.ghz, "GHz", kind("ghz")], ["by the linear pattern", row.linear, "cm-1", kind("linear")],
       ["strength", row.strength, null, kind("strength")], ["seen", row.seen, null, kind("seen")],
     ])];

@@ -1,10 +1,11 @@
 // Names, ids and places of states and components, the same in tables, map and pattern.
 
-import { trueMinus } from "../digits.js";
+/** How the core ends the rich text of a state: ", F = 2, M = −1". */
+const MOMENTA = /,? ?(?:F|M|M_J|M_I) = \S+(?:, (?:M|M_I) = \S+)?$/;
 
 /** The id of a state in the shared choice. */
 export function stateId(state) {
-  return `state:${[state.isotope, state.level, state.F, state.M, state.side].map((part) => part ?? "").join("/")}`;
+  return `state:${state.name}`;
 }
 
 /** What else marks a state: its level. */
@@ -12,22 +13,27 @@ export function idsOfState(state) {
   return [stateId(state), `level:${state.level}`];
 }
 
-/** Rich text of a state: its level, F where there is a nucleus, M. */
+/** Rich text of a state: its isotope among several, its level, F and M. */
 export function stateRich(state) {
-  const isotope = state.isotope ? [`${state.isotope} `] : [];
-  const f = state.F === null || state.F === undefined ? "" : ` F ${state.F},`;
-  return [...isotope, ...(state.rich?.length ? state.rich : [state.level ?? ""]), `${f} M ${trueMinus(state.M)}`];
+  return [...(state.isotope ? [`${state.isotope} `] : []), ...state.rich];
+}
+
+/** Rich text of a state's level. */
+export function levelRich({ rich }) {
+  const last = rich.at(-1);
+  return [...rich.slice(0, -1), ...(typeof last === "string" ? [last.replace(MOMENTA, "")] : [last])].filter((part) => part !== "");
 }
 
 /** The id of a component in the shared choice. */
 export function componentId(row) {
-  return `component:${[row.isotope, row.polarisation, row.level_lower, row.F_lower, row.M_lower, row.level_upper, row.F_upper, row.M_upper].map((part) => part ?? "").join("/")}`;
+  return `component:${row.polarisation}/${row.lower}/${row.upper}`;
 }
 
 /** What else marks a component: its line, whatever its multipole, and both its levels and states. */
 export function idsOfComponent(row, multipole) {
-  const end = (side) => ({ isotope: row.isotope, level: row[`level_${side}`], F: row[`F_${side}`], M: row[`M_${side}`], side });
-  return [componentId(row), `line:${row.level_lower}/${row.level_upper}/${multipole}`, `level:${row.level_upper}`, `level:${row.level_lower}`, stateId(end("upper")), stateId(end("lower"))];
+  return [
+    componentId(row), `line:${row.level_lower}/${row.level_upper}/${multipole}`, `level:${row.level_upper}`, `level:${row.level_lower}`, `state:${row.upper}`, `state:${row.lower}`,
+  ];
 }
 
 /** Whether what is chosen concerns a component. */

@@ -3,7 +3,7 @@
 import { SIGNS, OFFSET_UNITS } from "../plot/pattern.js";
 import { dataTable } from "../table.js";
 import { crossingId, kindWords } from "./field-panels.js";
-import { componentConcerned, componentId, stateId } from "./splitting-names.js";
+import { componentConcerned, componentId, levelRich, stateId, stateRich } from "./splitting-names.js";
 import { kindOf } from "./working.js";
 
 const VIEW_NAMES = { strength: "over all directions", across: "across", along: "along", seen: "as seen" };
@@ -60,9 +60,9 @@ export function componentsTable(answer, context, unit, view) {
 /** Levels of the answer by label, as rich text. */
 export function richOfLevels({ line = null, states = [], nucleus = null }) {
   const found = new Map();
-  for (const { label, rich } of nucleus?.levels ?? []) if (rich?.length) found.set(label, rich);
-  for (const { level, rich } of states) if (rich?.length) found.set(level, rich);
-  if (line && line.of !== "term" && line.of !== "configuration") {
+  for (const { label, rich } of nucleus?.levels ?? []) found.set(label, rich);
+  for (const state of states) if (!found.has(state.level)) found.set(state.level, levelRich(state));
+  if (line?.of === "level") {
     found.set(line.upper, line.upper_rich);
     found.set(line.lower, line.lower_rich);
   }
@@ -89,6 +89,7 @@ export function statesTable(answer, context) {
       { name: "level", type: "text", value: (row) => row.level, rich: (row) => levels.get(row.level) ?? [row.level] },
       has(states, "isotope") && { name: "isotope", type: "text", value: (row) => row.isotope },
       has(states, "F") && { name: "F", type: "half", value: (row) => row.F },
+      has(states, "M_J") && { name: "M_J", type: "half", value: (row) => row.M_J }, has(states, "M_I") && { name: "M_I", type: "half", value: (row) => row.M_I },
       { name: "M", type: "half", value: (row) => row.M },
       number("energy", "energy", "cm-1"), number("shift", "from the level", "cm-1"), number("slope", "slope", "cm-1 T-1"),
     ].filter(Boolean),
@@ -100,13 +101,20 @@ function lineHas(chosen, level) {
   return chosen.slice("line:".length).split("/").length > 0 && (chosen.startsWith(`line:${level}/`) || chosen.includes(`/${level}/`));
 }
 
+// Names of states as they are read.
+function namesIn(answer) {
+  const states = new Map(answer.states.map((state) => [state.name, state]));
+  return (key) => ({ name: key, type: "text", value: (row) => row[key], rich: (row) => (states.has(row[key]) ? stateRich(states.get(row[key])) : [row[key] ?? ""]) });
+}
+
 export function crossingsTable(rows, answer, context, name) {
+  const end = namesIn(answer);
   const number = (key, heading, unit) => has(rows, key) && { name: heading, unit, type: "number", kind: kindFor(answer, "crossings", key) ?? "computed", value: (row) => row[key] };
   return dataTable({
     caption: name, rows, context, file: name, sorting: sortings.crossings,
     columns: [
       { name: "what", type: "text", value: (row) => kindWords(row.kind) },
-      { name: "first", type: "text", value: (row) => row.first }, { name: "second", type: "text", value: (row) => row.second },
+      end("first"), end("second"),
       number("tesla", "field", "T"), number("energy", "energy", "cm-1"), number("gap", "gap", "cm-1"), number("mhz", "frequency", "MHz"),
       number("slope_first", "slope of the first", "cm-1 T-1"), number("slope_second", "slope of the second", "cm-1 T-1"),
     ].filter(Boolean),
@@ -129,11 +137,12 @@ export function componentCrossingsTable(rows, answer, context) {
 
 export function resonancesTable(answer, context) {
   const rows = answer.resonances;
+  const end = namesIn(answer);
   const number = (key, name, unit) => ({ name, unit, type: "number", kind: kindOf(answer, `resonances.${key}`) ?? "computed", value: (row) => row[key] });
   return dataTable({
     caption: `Resonance frequencies ${fieldWords(answer)}`, rows, context, file: `resonances ${answer.field?.text ?? ""}`, sorting: sortings.resonances,
     columns: [
-      { name: "from", type: "text", value: (row) => row.from }, { name: "to", type: "text", value: (row) => row.to },
+      end("from"), end("to"),
       number("mhz", "frequency", "MHz"), number("slope", "slope", "MHz/mT"), number("strength", "strength", null),
       { name: "oscillating field", type: "text", value: (row) => RESONANCES[row.kind] ?? row.kind },
     ],

@@ -11,9 +11,17 @@ export function offsetFactors(answer) {
     offset: 1,
     ghz: conversions.ghz_per_wavenumber ?? ratio("ghz"),
     pm: conversions.pm_per_wavenumber ?? ratio("pm"),
-    // Per tesla: an offset in units of μ_B B is smaller the stronger the field.
-    lorentzTesla: conversions.mu_b_per_tesla ? 1 / conversions.mu_b_per_tesla : ratio("lorentz") === null ? null : ratio("lorentz") * answer.field.tesla,
+    lorentz: lorentzFactor(answer),
   };
+}
+
+// 1/μ_B in T/cm⁻¹: the states tell their shifts both ways, in no field their slopes.
+function lorentzFactor({ states, field }) {
+  const { tesla } = field;
+  const key = tesla > 0 ? "shift" : "slope";
+  const known = states.filter((state) => typeof state.lorentz === "number");
+  const largest = known.reduce((best, state) => (Math.abs(state[key]) > Math.abs(best?.[key] ?? 0) ? state : best), null);
+  return largest === null ? null : (largest.lorentz / largest[key]) * (tesla > 0 ? tesla : 1);
 }
 
 /** How much of a component's strength each view has, by polarisation: the field does not change that. */
@@ -35,9 +43,10 @@ export function componentsAt(map, place, tesla, factors, views) {
     const strength = Math.max(straightAt(component.strengths, place), 0);
     const view = views[component.polarisation] ?? {};
     return {
-      polarisation: component.polarisation, isotope: upper.isotope ?? null,
+      polarisation: component.polarisation, isotope: upper.isotope ?? null, upper: upper.name, lower: lower.name,
       level_upper: upper.level, level_lower: lower.level, M_upper: upper.M, M_lower: lower.M, F_upper: upper.F ?? null, F_lower: lower.F ?? null,
-      offset, ghz: scaled(offset, factors.ghz), pm: scaled(offset, factors.pm), lorentz: tesla > 0 ? scaled(offset / tesla, factors.lorentzTesla) : null,
+      offset, ghz: scaled(offset, factors.ghz), pm: scaled(offset, factors.pm), // In units of μ_B B counts what the field does, not how far apart several lines lie.
+      lorentz: tesla > 0 ? scaled((offset - component.offsets[0]) / tesla, factors.lorentz) : null,
       strength, seen: Math.max(straightAt(component.seen, place), 0), along: strength * (view.along ?? 0), across: strength * (view.across ?? 0),
     };
   });
