@@ -16,7 +16,7 @@ test("each pair of levels is listed once, by its strongest multipole, E1 first",
 
 everyDoor("a chosen term marks its lines; a chosen line marks its levels and itself where it is split", async (door) => {
   for (const name of ["states", "lines", "splitting"]) await door.unfold(name);
-  await door.until(() => document.querySelector("#lines .stage svg") && document.querySelector("#splitting table"));
+  await door.until(() => document.querySelector("#lines .stage svg") && document.querySelector("#splitting .components-table table"));
   const marked = (rung) => door.evaluate((id) => document.querySelectorAll(`#${id} tr[aria-current="true"]`).length, rung);
   await door.evaluate(() => [...document.querySelectorAll('#states tr[data-id^="term:"]')].find((row) => row.querySelector('[aria-label="doublet P, odd"]')).click());
   await door.until(() => document.querySelector('#lines tr[aria-current="true"]'));
@@ -46,7 +46,7 @@ everyDoor("E1 lines come first, and the picture says which multiplet it shows", 
 for (const width of [360, 820, 1400]) {
   everyDoor(`a table that goes on to the right says so, ${width} px`, async (door) => {
     for (const name of ["states", "lines", "splitting"]) await door.unfold(name);
-    await door.until(() => document.querySelector("#lines .stage svg") && document.querySelector("#splitting table"));
+    await door.until(() => document.querySelector("#lines .stage svg") && document.querySelector("#splitting .components-table table"));
     await door.evaluate(() => new Promise((done) => { setTimeout(done, 300); }));
     const tables = await door.evaluate(() => [...document.querySelectorAll(".table")].filter((table) => table.checkVisibility()).map((table) => {
       const region = table.querySelector(".table-region");
@@ -59,8 +59,8 @@ for (const width of [360, 820, 1400]) {
   }, { fragment: SODIUM, width });
 }
 
-everyDoor("the boxes for field and view stand level", async (door) => {
+everyDoor("the boxes for both levels of a line stand level", async (door) => {
   await door.unfold("splitting");
-  const tops = await door.evaluate(() => ["/field/flux_density", "/field/view"].map((path) => document.querySelector(`[data-path="${path}"]`).getBoundingClientRect().top));
+  const tops = await door.evaluate(() => ["/line/upper", "/line/lower"].map((path) => document.querySelector(`[data-path="${path}"]`).getBoundingClientRect().top));
   assert.ok(Math.abs(tops[0] - tops[1]) < 1, String(tops));
 }, { fragment: SODIUM, width: 360 });
