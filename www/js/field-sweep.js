@@ -70,7 +70,8 @@ export class FieldSweep {
     this.exact = field?.tesla ?? null;
     this.end = Math.max(field?.up_to ?? 0, field?.tesla ?? 0);
     if (this.at !== null && !this.#held && this.exact !== null && same(this.at, this.exact)) this.at = null;
-    if (!(this.end > 0)) {
+    // Factors g alone need no map: they make straight lines.
+    if (!(this.end > 0) || answer.method !== "full") {
       this.#leave(null);
       return;
     }

@@ -28,10 +28,6 @@ self.onmessage = ({ data }) => {
     return;
   }
   try {
-    if (core[data.door] === undefined) {
-      self.postMessage({ id: data.id, text: "{}", bytes: 0 });
-      return;
-    }
     const asked = data.door === "answer" ? data.arguments : data.door === "splitting_map" ? [data.arguments[0], "splitting_map"] : null;
     if (asked !== null) {
       const estimate = JSON.parse(core.estimate(...asked));

@@ -25,6 +25,7 @@ export class FieldMapView {
   #choice = "";
   #multipole = null;
   #linearTo = null;
+  #found = { crossings: [], component_crossings: [] };
   #empty = element("div", { class: "map-status" });
   #drawn = null;
 
@@ -44,12 +45,13 @@ export class FieldMapView {
     context.choice.subscribe(() => this.redraw());
   }
 
-  /** `what`: {unit, choice, multipole, linearTo, name, context}. */
+  /** `what`: {unit, choice, multipole, linearTo, found (crossings), name, settings}. */
   set(what) {
     this.#unit = what.unit;
     this.#choice = what.choice;
     this.#multipole = what.multipole;
     this.#linearTo = what.linearTo;
+    this.#found = what.found;
     this.#context = { ...this.#context, settings: what.settings };
     this.redraw({ name: what.name });
   }
@@ -65,7 +67,7 @@ export class FieldMapView {
     this.#figure.redraw({
       ...changes,
       layout: fieldMapLayout({
-        fields: map.tesla, panels: mapPanels(map, this.#choice, this.#unit, this.#multipole), at: () => this.#sweep.place,
+        fields: map.tesla, panels: mapPanels(map, this.#choice, this.#unit, this.#multipole, this.#found), at: () => this.#sweep.place,
         reading: (series, panel, place) => this.#reading(series, panel, place),
         chosen: (series) => chosen !== null && (series.id === chosen || series.ids.includes(chosen)),
         axis: [{ text: "Field (T)" }], linearTo: this.#linearTo, ruleText: () => this.#ruleText(),

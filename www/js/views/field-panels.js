@@ -25,13 +25,13 @@ export function mapChoices(map) {
 
 /**
  * The panels of one choice. `unit`: {name, energyFactor, offsetFactor} of energies and of offsets;
- * `crossings`, `componentCrossings`: those of the map.
+ * `found`: the answer's crossings and component_crossings, up to the end of the map.
  */
-export function mapPanels(map, choice, unit, multipole) {
-  if (choice === "components") return [componentPanel(map, unit, multipole)];
+export function mapPanels(map, choice, unit, multipole, found) {
+  if (choice === "components") return [componentPanel(map, unit, multipole, found.component_crossings)];
   const own = map.states.map((state, at) => ({ state, at })).filter(({ state }) => choice === "" || choice === `level:${state.level}`);
   const groups = choice === "" && own.some(({ state }) => state.side) ? bySide(own) : byStretch(own);
-  return groups.slice(0, MOST_PANELS).map((group) => statePanel(group, map, unit));
+  return groups.slice(0, MOST_PANELS).map((group) => statePanel(group, map, unit, found.crossings));
 }
 
 function bySide(own) {
@@ -53,7 +53,7 @@ function byStretch(own) {
   return [spans];
 }
 
-function statePanel(group, map, { name, energyFactor: factor }) {
+function statePanel(group, map, { name, energyFactor: factor }, crossings) {
   const reference = zeroOf(group.map(({ state }) => state));
   const levels = [...new Set(group.map(({ state }) => state.level))];
   const keys = [...new Set(group.map(({ state }) => groupKey(state)))];
@@ -72,7 +72,7 @@ function statePanel(group, map, { name, energyFactor: factor }) {
         groupKey: groupKey(state), group: groupRuns(state, levels.length), values: state.energies, slopes: state.slopes, ...stroke,
       };
     }),
-    signs: map.crossings.filter((crossing) => inside.has(crossing.first) && inside.has(crossing.second ?? crossing.first)).map((crossing) => ({
+    signs: crossings.filter((crossing) => inside.has(crossing.first) && inside.has(crossing.second ?? crossing.first)).map((crossing) => ({
       kind: crossing.kind, tesla: crossing.tesla, id: crossingId(crossing), ids: [], value: signHeight(crossing, inside, map.tesla), reading: crossingReading(crossing, inside),
     })),
   };
@@ -106,7 +106,7 @@ function crossingReading(crossing, inside) {
   ];
 }
 
-function componentPanel(map, { name, offsetFactor: factor }, multipole) {
+function componentPanel(map, { name, offsetFactor: factor }, multipole, crossings) {
   const series = map.components.map((component, at) => {
     const [upper, lower] = [map.states[component.upper], map.states[component.lower]];
     const sign = SIGNS[component.polarisation];
@@ -114,13 +114,13 @@ function componentPanel(map, { name, offsetFactor: factor }, multipole) {
     const ids = idsOfComponent(row, multipole);
     return {
       at, component, upper, lower, row, id: componentId(row), ids: ids.slice(1), label: null, group: null, groupKey: component.polarisation,
-      values: component.offsets, slopes: slopesOf(upper, lower), colour: sign.colour, dash: sign.dash, shown: component.strengths.some((strength) => strength > 0),
+      values: component.offsets, slopes: component.slopes, colour: sign.colour, dash: sign.dash, shown: component.strengths.some((strength) => strength > 0),
     };
   }).filter(({ shown }) => shown);
   const byName = new Map(series.map((each) => [`${each.upper.name} to ${each.lower.name}`, each]));
   return {
     title: [{ text: "Offset (" }, ...unitOf(name).runs, { text: ")" }], factor, reference: 0, series,
-    signs: map.component_crossings.flatMap((crossing) => {
+    signs: crossings.flatMap((crossing) => {
       const first = byName.get(crossing.first);
       if (first === undefined) return [];
       return [{
@@ -133,10 +133,6 @@ function componentPanel(map, { name, offsetFactor: factor }, multipole) {
 
 function rowOf(component, upper, lower) {
   return { polarisation: component.polarisation, upper: upper.name, lower: lower.name, level_upper: upper.level, level_lower: lower.level };
-}
-
-function slopesOf(upper, lower) {
-  return upper.slopes.map((slope, i) => slope - lower.slopes[i]);
 }
 
 // The lowest level without field: the mean over its states, where its nucleus takes nothing away.

@@ -145,7 +145,7 @@ export class SplittingEvidence {
     const factor = offsetFactors(this.#answer)[unit] ?? 1;
     this.#map.set({
       unit: { name: OFFSET_UNITS[unit].unit, energyFactor: factor, offsetFactor: factor },
-      choice: this.#show?.value() ?? "", multipole: line?.multipole ?? null, linearTo: linear?.departs_at ?? null, settings: this.#settings,
+      choice: this.#show?.value() ?? "", multipole: line?.multipole ?? null, linearTo: linear?.departs_at ?? null, found: this.#answer, settings: this.#settings,
       name: ["Field map", ...lineName(this.#answer), ` from 0 to ${trueMinus(this.#sweep.textOf(this.#sweep.end))}${field ? "" : ", without field"}`],
     });
   }
@@ -186,7 +186,7 @@ export class SplittingEvidence {
     const part = (key, title, make) => fold(this.#context, `splitting:${key}`, [title], make);
     this.#parts.replaceChildren(...[
       states.length > 0 && part("states", line === null || line.of !== "level" ? `States, ${states.length}` : "Both levels in the field", () => [this.#fan(), statesTable(answer, this.#tableContext)]),
-      (crossings.length > 0 || this.#sweep.map !== null) && part("crossings", `Crossings of levels and clock points${upTo}`, () => (crossings.length === 0
+      part("crossings", `Crossings of levels and clock points${upTo}`, () => (crossings.length === 0
         ? element("p", { text: upTo === "" ? "Without a field nothing crosses." : `No two of these states cross or come near each other${upTo}, and none has a clock point. A higher end of the map looks further.` })
         : crossingsTable(crossings, answer, this.#tableContext, `Crossings of levels and clock points${upTo}`))),
       meetings.length > 0 && part("meetings", "Where components meet", () => componentCrossingsTable(meetings, answer, this.#tableContext)),

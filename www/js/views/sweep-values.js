@@ -39,7 +39,7 @@ export function componentsAt(map, place, tesla, factors, views) {
   const { states } = map;
   return map.components.map((component) => {
     const [upper, lower] = [states[component.upper], states[component.lower]];
-    const offset = differenceAt(component.offsets, upper.slopes, lower.slopes, place);
+    const offset = cubicAt(component.offsets, component.slopes, place);
     const strength = Math.max(straightAt(component.strengths, place), 0);
     const view = views[component.polarisation] ?? {};
     return {
@@ -55,14 +55,6 @@ export function componentsAt(map, place, tesla, factors, views) {
 /** Energy and slope of a state of the map. */
 export function stateAt(state, place) {
   return { energy: cubicAt(state.energies, state.slopes, place), slope: cubicSlopeAt(state.energies, state.slopes, place) };
-}
-
-// The cubic of a difference is the difference of the cubics.
-function differenceAt(offsets, above, below, place) {
-  const { i, t, h } = place;
-  if (offsets.length < 2) return offsets[0];
-  const s = 1 - t;
-  return offsets[i] * s * s * (1 + 2 * t) + offsets[i + 1] * t * t * (3 - 2 * t) + h * t * s * ((above[i] - below[i]) * s - (above[i + 1] - below[i + 1]) * t);
 }
 
 function scaled(value, factor) {
