@@ -4,6 +4,7 @@ use super::document::Document;
 use super::nucleus::Nuclear;
 use super::solved;
 use super::splitting::is_full;
+use super::splitting_searched::fields_of_search;
 use super::splitting_sets::{MOST_MULTIPLICATIONS, kept};
 
 /// Multiplications of one second in a browser.
@@ -26,6 +27,10 @@ pub fn estimate(document: &Document, fields: f64) -> (f64, f64) {
             multiplications(document)
         }
     };
+    let search = fields_of_search(multiplications) as f64 * multiplications;
+    if kept(document).is_none_or(|known| known.kept_search.borrow().is_none()) {
+        seconds += search / PER_SECOND;
+    }
     let rows = states(document);
     seconds += multiplications * fields / PER_SECOND + rows * fields * SECONDS_FOR_A_ROW;
     megabytes += rows * fields * BYTES_FOR_A_ROW * 1e-6;

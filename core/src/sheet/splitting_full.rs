@@ -20,6 +20,7 @@ use super::splitting_keeps::{Shown, keeps};
 use super::splitting_limits::limits;
 use super::splitting_line::line_of;
 use super::splitting_nuclei::{isotope_rows, nucleus_row};
+use super::splitting_resonances;
 use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, Splitting, StateRow};
 use super::splitting_sets::{Pass, Prepared, Set, SetLevel, prepared};
 use super::splitting_words::{Told, kinds, sentence, working};
@@ -40,9 +41,12 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
     let line = line_of(document, &ready);
     let mut states = Vec::new();
     let mut components = Vec::new();
+    let (mut resonances, mut resonances_left_out) = (Vec::new(), 0);
+    let searched = ready.searched(document)?;
     for pass in &ready.passes {
         let now = fields(pass, tesla)?;
-        let weak = fields(pass, 0.0)?;
+        resonances_left_out +=
+            splitting_resonances::add(document, &ready, (pass, &now), &mut resonances)?;
         let name = isotope_of(document, pass);
         for ((set, split), at) in ready.sets.iter().zip(&pass.splits).zip(&now) {
             for place in ready.order(set, split, document.line.is_some()) {
@@ -57,7 +61,6 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
                 join,
                 number,
                 now: &now,
-                weak: &weak,
                 line: line.as_ref(),
                 isotope: name.clone(),
             };
@@ -68,7 +71,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
     sort_by(&mut states, |a, b| side_order(a).cmp(&side_order(b)));
     let positions = positions(&components);
     let pattern = describe(&components, positions, &line);
-    let linear = linear(field, &components);
+    let linear = linear(field, &components, searched.departs_at);
     let nucleus = nucleus_row(document, &ready);
     let isotopes = isotope_rows(document);
     let diamagnetic = field.map(|field| DiamagneticRow {
@@ -90,6 +93,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         components: &components,
         pattern: &pattern,
         linear: linear.as_ref(),
+        searched: &searched,
         diamagnetic: diamagnetic.as_ref(),
     };
     let mut around = super::answer::Around::saying(sentence(&told));
@@ -119,6 +123,12 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         linear,
         positions,
         pattern,
+        crossings: searched.crossings.clone(),
+        crossings_left_out: searched.crossings_left_out,
+        component_crossings: searched.component_crossings.clone(),
+        component_crossings_left_out: searched.component_crossings_left_out,
+        resonances,
+        resonances_left_out,
         ..Splitting::new("full", around)
     })
 }
@@ -299,7 +309,6 @@ struct Rows<'a> {
     join: &'a Join,
     number: usize,
     now: &'a [AtField],
-    weak: &'a [AtField],
     line: Option<&'a LineOf>,
     isotope: Option<Shared>,
 }
@@ -321,21 +330,17 @@ impl Rows<'_> {
         }
         let share = share_of(self.document, self.pass);
         let mut rows = Vec::with_capacity(strengths.len());
-        for (component, strength) in components.list().iter().zip(&strengths) {
+        for (place, strength) in strengths.iter().enumerate() {
             let strength = strength / whole;
             if strength > LEAST_STRENGTH {
-                rows.extend(self.row(component, strength * share, field));
+                rows.extend(self.row(place, strength * share, field));
             }
         }
         rows
     }
 
-    fn row(
-        &self,
-        component: &crate::splitting::in_field::Component,
-        strength: f64,
-        field: Option<&Field>,
-    ) -> Option<ComponentRow> {
+    fn row(&self, place: usize, strength: f64, field: Option<&Field>) -> Option<ComponentRow> {
+        let component = self.pass.components.get(self.number)?.list().get(place)?;
         let ends = ends(self.document, self.ready, self.pass, self.join, component)?;
         let (set_up, set_low) = match ends.turned {
             false => (self.join.upper, self.join.lower),
@@ -357,14 +362,17 @@ impl Rows<'_> {
         let away = own + shift_of(self.document, self.pass);
         let tesla = self.now.first().map_or(0.0, |at| at.tesla);
         let offset = value(self.now, |at| &at.shifts)? + away + 0.0;
-        let slope = value(self.weak, |at| &at.slopes)?;
-        let linear = value(self.weak, |at| &at.shifts)? + slope * tesla + away + 0.0;
+        let linear = self.pass.linear.get(self.number);
+        let linear = linear.and_then(|linear| linear.offset(place, tesla));
+        // Without a line the join's upper set may hold the lower end.
+        let linear = linear.map(|linear| if ends.turned { -linear } else { linear } + away + 0.0);
         let plain = self.document.nuclei.is_empty();
         let lorentz = match plain {
             true if tesla > 0.0 => {
                 Some((offset - away) / (BOHR_MAGNETON_WAVENUMBER.value * tesla) + 0.0)
             }
-            true => Some(slope / BOHR_MAGNETON_WAVENUMBER.value + 0.0),
+            // In the limit of no field.
+            true => Some(value(self.now, |at| &at.slopes)? / BOHR_MAGNETON_WAVENUMBER.value + 0.0),
             false => None,
         };
         let look = |angle: f64, polariser: Polariser| {
@@ -396,7 +404,7 @@ impl Rows<'_> {
             seen: field.map_or(look(90.0, Polariser::None), |field| {
                 look(field.angle_degrees, field.polariser)
             }),
-            linear: Some(linear),
+            linear,
             isotope: self.isotope.clone(),
         })
     }
@@ -454,14 +462,18 @@ fn describe(components: &[ComponentRow], positions: usize, line: &Option<LineOf>
     }
 }
 
-fn linear(field: Option<&Field>, components: &[ComponentRow]) -> Option<LinearRow> {
+fn linear(
+    field: Option<&Field>,
+    components: &[ComponentRow],
+    departs_at: Option<f64>,
+) -> Option<LinearRow> {
     let field = field.filter(|_| !components.is_empty())?;
     let differences = components
         .iter()
         .map(|c| (c.offset - c.linear.unwrap_or(c.offset)).abs());
     Some(LinearRow {
         tolerance: field.tolerance_words(),
-        departs_at: None,
+        departs_at,
         largest_difference: differences.fold(0.0, f64::max),
     })
 }

@@ -6,6 +6,7 @@ use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::rich::Kind;
 use super::splitting_rows::{DiamagneticRow, LineOf};
+use super::splitting_searched::MOST_COMPONENTS;
 use super::splitting_words::Told;
 
 /// What was left out, and how large it is likely to be.
@@ -55,6 +56,13 @@ pub fn limits(told: &Told) -> Vec<String> {
         limits.push("With this nucleus the whole set would have too many states: the field mixes only the levels of the line's terms.".to_owned());
     }
     limits.extend(of_nuclei(document));
+    limits.extend(told.searched.missing.clone());
+    let each = told.components.len() / ready.passes.len().max(1);
+    if !told.searched.component_crossings.is_empty() && each > MOST_COMPONENTS {
+        limits.push(format!(
+            "Crossings of components are looked for among the {MOST_COMPONENTS} strongest."
+        ));
+    }
     if ready.joins.iter().any(|join| join.unit_integrals) {
         limits.push("No radial integral of the radiation is given; each is taken as 1, which relative strengths between two subshells do not depend on.".to_owned());
     }

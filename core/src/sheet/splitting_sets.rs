@@ -8,7 +8,8 @@ use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::splitting::in_field::{
-    Components, Diamagnetic, MHZ_PER_WAVENUMBER, Manifold, Nucleus, OneElectron, Size, Split,
+    Components, Diamagnetic, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus, OneElectron, Size,
+    Split,
 };
 
 use super::document::{Document, LevelOf};
@@ -21,6 +22,7 @@ use super::placed::Placed;
 use super::rich::Rich;
 use super::solved::{Solved, SolvedLevel, solved};
 use super::splitting_joins::{Join, joins};
+use super::splitting_searched::{Range, Searched};
 use super::watch::Watch;
 
 /// The most components of an answer.
@@ -85,6 +87,8 @@ pub struct Pass {
     pub splits: Vec<Split>,
     /// By join.
     pub components: Vec<Components>,
+    /// By join.
+    pub linear: Vec<Linear>,
 }
 
 /// Everything that does not depend on the field.
@@ -101,6 +105,8 @@ pub struct Prepared {
     pub diamagnetic: Result<(), Problem>,
     /// Multiplications for one field.
     pub multiplications: f64,
+    /// Crossings, with the range that they belong to.
+    pub kept_search: RefCell<Option<(Range, Rc<Searched>)>>,
 }
 
 /// What the preparation depends on, and nothing else.
@@ -219,7 +225,9 @@ fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, 
             nuclei: vec![nucleus],
             splits: vec![split],
             components: Vec::new(),
+            linear: Vec::new(),
         }],
+        kept_search: RefCell::new(None),
         diamagnetic: Err(Problem::new(
             "radius-not-known",
             "A level alone has no radial functions.",
@@ -291,6 +299,7 @@ fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepare
     if no_components.is_some() {
         for pass in &mut passes {
             pass.components.clear();
+            pass.linear.clear();
         }
     }
     Ok(Prepared {
@@ -302,6 +311,7 @@ fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepare
         passes,
         diamagnetic,
         multiplications,
+        kept_search: RefCell::new(None),
     })
 }
 
@@ -483,6 +493,7 @@ fn pass(
         nuclei: Vec::with_capacity(sets.len()),
         splits: Vec::with_capacity(sets.len()),
         components: Vec::with_capacity(joins.len()),
+        linear: Vec::with_capacity(joins.len()),
     };
     for set in sets {
         let nucleus = known.map(|nuclear| nucleus(nuclear, set));
@@ -507,7 +518,11 @@ fn pass(
         );
         let most = MAX_COMPONENTS / document.nuclei.len().max(1);
         match Components::new(above, below, &join.operator, (&flags.0, &flags.1), most) {
-            Ok(components) => found.components.push(components),
+            Ok(components) => {
+                let linear = Linear::new(above, below, &components).map_err(at)?;
+                found.components.push(components);
+                found.linear.push(linear);
+            }
             Err(problem) if problem.code == "too-many-components" => {
                 let reason = format!(
                     "There would be more than {MAX_COMPONENTS} components, and none is listed: choose a line between levels or terms."

@@ -9,6 +9,7 @@ use super::document::Document;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
 use super::rich::{Kind, Rich};
 use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, StateRow};
+use super::splitting_searched::Searched;
 use super::splitting_sets::Prepared;
 
 /// What the words are about.
@@ -20,6 +21,7 @@ pub struct Told<'a> {
     pub components: &'a [ComponentRow],
     pub pattern: &'a str,
     pub linear: Option<&'a LinearRow>,
+    pub searched: &'a Searched,
     pub diamagnetic: Option<&'a DiamagneticRow>,
 }
 
@@ -123,7 +125,7 @@ pub fn sentence(told: &Told) -> Rich {
     );
     match told.linear {
         Some(linear) if linear.largest_difference > 0.0 => say
-            .say(", and g M alone would be wrong by up to ")
+            .say(", and a pattern in proportion to the field would be off by up to ")
             .number(linear.largest_difference, Some("cm-1"), Kind::Computed)
             .say("."),
         _ => say.say("."),
