@@ -191,7 +191,7 @@ impl Search<'_> {
             &followed.energies
         };
         let largest = |state: usize| {
-            let list = lists.get(state).map_or(&[][..], Vec::as_slice);
+            let list = lists.get(state).map(Vec::as_slice).unwrap_or_default();
             list.iter().fold(0.0_f64, |most, e| most.max(e.abs()))
         };
         let tolerance = ROUNDING * largest(one).max(largest(two));
@@ -301,7 +301,7 @@ impl Search<'_> {
 
 /// One state's list less another's, by field.
 fn difference(lists: &[Vec<f64>], one: usize, two: usize) -> impl Iterator<Item = f64> + '_ {
-    let list = |state: usize| lists.get(state).map_or(&[][..], Vec::as_slice);
+    let list = |state: usize| lists.get(state).map(Vec::as_slice).unwrap_or_default();
     list(one).iter().zip(list(two)).map(|(a, b)| a - b)
 }
 

@@ -77,7 +77,7 @@ pub fn map(
         return Err(Problem::new("field-out-of-range", message, 0, 0));
     }
     let states = upper.states().len() + lower.map_or(0, |lower| lower.states().len());
-    let list = components.map_or(&[][..], Components::list);
+    let list = components.map(Components::list).unwrap_or_default();
     let numbers = (3 * states + 2 * list.len()).saturating_mul(fields);
     if fields < 2 || numbers > MOST_NUMBERS {
         return Err(too_large(states, list.len(), fields));
