@@ -7,6 +7,7 @@ use rungline_core::splitting::in_field::{
     AtField, Components, CrossingKind, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus, OneElectron,
     Operator, Reduced, Split, Tolerance, Wanted, component_crossings, crossings, map,
 };
+use rungline_tests::{Row, report};
 
 fn level(n: u8, l: u8, two_j: i32, energy: f64) -> OneElectron {
     OneElectron {
@@ -21,14 +22,15 @@ fn level(n: u8, l: u8, two_j: i32, energy: f64) -> OneElectron {
 fn doublet(n: u8, lower: f64, upper: f64) -> (Manifold, Manifold, Operator) {
     let p = Manifold::one_electron(&[level(n, 1, 1, lower), level(n, 1, 3, upper)]);
     let s = Manifold::one_electron(&[level(n, 0, 1, 0.0)]);
-    // ⟨½ℓj‖C¹‖½ℓ′j′⟩ ∝ (−1)^(½+ℓ+j′+1) √[(2j+1)(2j′+1)] {ℓ j ½; j′ ℓ′ 1} (Edmonds, eq. 7.1.8).
+    // ⟨½ℓj‖C¹‖½ℓ′j′⟩ ∝ (−1)^(½+ℓ′+j+1) √[(2j+1)(2j′+1)] {ℓ j ½; j′ ℓ′ 1} (Edmonds, eq. 7.1.8).
     let element = |left: usize, two_j: i32| {
         let six = rungline_core::angular::wigner_6j(2, two_j, 1, 1, 0, 2);
         let root = (f64::from(two_j + 1) * 2.0).sqrt();
+        let sign = if two_j == 1 { 1.0 } else { -1.0 };
         Reduced {
             left,
             right: 0,
-            value: -root * six,
+            value: sign * root * six,
         }
     };
     let operator = Operator::between(1, vec![element(0, 1), element(1, 3)]);
@@ -91,7 +93,7 @@ fn sodium_d_lines_from_weak_to_strong() {
             let share: f64 = all.iter().filter(|c| c.0 == q).map(|c| c.2).sum();
             assert!((share - 1.0 / 3.0).abs() < 1e-13, "{tesla} {q}: {share}");
         }
-        // The whole line's centre of gravity moves with no polarisation's: Σ s σ = ⟨…⟩ is linear in B.
+        // Tr over both levels: the mean over all components stays where it is without a field.
         let mean: f64 = all.iter().map(|c| c.1 * c.2).sum();
         assert!((mean - centre).abs() < 1e-9, "{tesla}: {mean} {centre}");
     }
@@ -209,18 +211,10 @@ fn a_doublet_crosses_in_closed_form() {
     let first = at(CrossingKind::Crossing, state(1, -3), state(0, 1));
     let second = at(CrossingKind::Crossing, state(1, -3), state(0, -1));
     let expected = tesla((2.0 + g) / (2.0 * (1.0 + g)));
-    assert!(
-        (first.tesla / expected - 1.0).abs() < 1e-10,
-        "{} {expected}",
-        first.tesla
-    );
+    let mut crossed = (first.tesla / expected - 1.0).abs();
     assert!((first.tesla - 0.32).abs() < 0.005);
     let expected = tesla((1.0 + g / 2.0) / g);
-    assert!(
-        (second.tesla / expected - 1.0).abs() < 1e-10,
-        "{} {expected}",
-        second.tesla
-    );
+    crossed = crossed.max((second.tesla / expected - 1.0).abs());
     assert!((second.tesla - 0.48).abs() < 0.005);
     // M = −½ of both levels come closest at b = 1/[2(g_s − 1)], √2 ζ apart.
     let avoided = at(CrossingKind::Avoided, state(1, -1), state(0, -1));
@@ -238,6 +232,18 @@ fn a_doublet_crosses_in_closed_form() {
     for pair in found.found.windows(2) {
         assert!(pair[0].tesla <= pair[1].tesla);
     }
+    report(
+        "splitting-crossings",
+        Row {
+            quantity: "crossing fields of a 2p doublet".to_owned(),
+            cases: 2,
+            worst: crossed,
+            tolerance: 1e-10,
+            measure: "relative".to_owned(),
+            source: "2 × 2 matrices in closed form; 3.2 and 4.8 kG of ⁷Li observed by Brog, Eck & Wieder (1967)"
+                .to_owned(),
+        },
+    );
     // No more than asked for, and how many are left out.
     let few = crossings(split, fields, &chosen, wanted, 1).expect("crossings");
     assert_eq!((few.found.len(), few.left_out), (1, found.found.len() - 1));

@@ -1,7 +1,7 @@
 //! Alkali atoms with their nuclei: the closed form of Breit and Rabi, published frequencies and fields.
 //!
-//! A, g_J and g_I: Arimondo, Inguscio & Violino, Rev. Mod. Phys. 49, 31 (1977), moments of ⁴⁰K and the light
-//! nuclei from memory. Frequencies and fields: sources beside each.
+//! A, g_J and g_I: Arimondo, Inguscio & Violino, Rev. Mod. Phys. 49, 31 (1977), of ⁸⁷Rb in the
+//! atom, shielded: −g_I′ = 0.000 995 141 4; the other g_I those of bare nuclei, from memory. Frequencies and fields: sources beside each.
 
 use rungline_core::constants::BOHR_MAGNETON_WAVENUMBER;
 use rungline_core::splitting::in_field::{
@@ -20,7 +20,7 @@ const ATOMS: [(&str, i32, f64, f64, f64); 10] = [
     ("40K", 8, -0.324_525, -285.730_8, 2.002_294_21),
     ("41K", 3, 0.143_247, 127.006_935_2, 2.002_294_21),
     ("85Rb", 5, 0.541_341, 1_011.910_813_0, 2.002_331_13),
-    ("87Rb", 3, 1.834_216, 3_417.341_305_452_15, 2.002_331_13),
+    ("87Rb", 3, 1.827_232, 3_417.341_305_452_15, 2.002_331_13),
     ("133Cs", 7, 0.737_721, 2_298.157_942_5, 2.002_540_261),
 ];
 
@@ -246,8 +246,8 @@ fn published_levels_of_p_electrons() {
 
 #[test]
 fn centre_of_gravity_of_a_level_stays() {
-    // Σ (2F+1) E = 0 for any A and B, and with F(F+1) as weight only A, with the quadrupole only B survives:
-    // orthogonality of I·J and its square (Casimir 1936).
+    // Both terms of Casimir's formula are traceless and orthogonal: Σ (2F+1) E = 0, and so is the sum of the
+    // quadrupole's energies times I·J.
     for (two_i, two_j) in [(2, 2), (3, 3), (5, 3), (7, 5), (9, 8), (12, 15)] {
         let low = i32::abs(two_i - two_j);
         let all = (low..=two_i + two_j).step_by(2);
