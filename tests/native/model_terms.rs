@@ -3,8 +3,8 @@
 //! Observed levels: Moore, *Atomic Energy Levels*, NBS Circular 467 (1949–1958), from memory.
 
 use rungline_core::radial::nucleus::stable_mass_number;
-use rungline_core::structure::model::Spectrum;
-use rungline_tests::model::{case, spectrum};
+use rungline_core::structure::model::{Spectrum, UsualDeviation};
+use rungline_tests::model::{case, orbital, spectrum};
 use rungline_tests::{Listing, Row, list, report, vector_rows};
 use std::collections::BTreeMap;
 use std::sync::LazyLock;
@@ -315,5 +315,39 @@ fn first_excited_terms_without_correlation() {
         );
         let worst = quantile(&of_shells, 1.0);
         report(name, row(quantity, &of_shells, worst, tolerance));
+    }
+}
+
+#[test]
+fn what_the_answers_say_of_correlation_is_what_is_found() {
+    let subshells = [
+        ("2p", &["2p"][..]),
+        ("3p", &["3p", "4p", "5p"]),
+        ("3d", &["3d"]),
+    ];
+    for (name, members) in subshells {
+        let usual = UsualDeviation::of(orbital(name)).expect("what is usual");
+        let percent = |correlation: bool| -> Vec<f64> {
+            (excited_terms(correlation).iter())
+                // The subshell that is open comes last, but for s² beside d.
+                .filter(|term| {
+                    let words = term.ion.split(' ').skip(2);
+                    let open = words.filter(|word| !word.contains("d10") && !word.contains('s'));
+                    open.last()
+                        .is_some_and(|word| members.contains(&&word[..2]))
+                })
+                .map(|term| 100.0 * term.deviation())
+                .collect()
+        };
+        let (bare, correlated) = (percent(false), percent(true));
+        let within = |value: f64, bound: u8| {
+            let bound = f64::from(bound);
+            value <= bound && value > bound - 1.5
+        };
+        let least = bare.iter().copied().fold(f64::INFINITY, f64::min);
+        assert_eq!(least.floor(), f64::from(usual.without.0), "{name}");
+        assert!(within(quantile(&bare, 1.0), usual.without.1), "{name}");
+        let worst = correlated.iter().fold(0.0_f64, |most, d| most.max(d.abs()));
+        assert!(within(worst, usual.with), "{name}: {worst}");
     }
 }

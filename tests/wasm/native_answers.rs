@@ -5,6 +5,7 @@ use std::path::Path;
 
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
 use rungline_core::sheet::{Question, answer_text, curves_message, sections_message, unwatched};
+use rungline_core::structure::{Basis, Hamiltonian, Integral, lowest_of_j};
 
 /// Longer answers are compared by length and digest: the tables of the tests stay small.
 const LARGE: usize = 1_000_000;
@@ -62,6 +63,18 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
     answers.push_str("];\n");
     std::fs::write(Path::new(&out).join("answers.rs"), answers)?;
 
+    let lowest: Vec<u8> = (lowest_levels().iter())
+        .flat_map(|value| value.to_bits().to_le_bytes())
+        .collect();
+    std::fs::write(
+        Path::new(&out).join("lowest.rs"),
+        format!(
+            "pub const LOWEST_BYTES: usize = {};\npub const LOWEST_DIGEST: u64 = {};\n",
+            lowest.len(),
+            digest(&lowest)
+        ),
+    )?;
+
     let bits: Vec<u64> = symbols().iter().map(|value| value.to_bits()).collect();
     std::fs::write(
         Path::new(&out).join("symbols.rs"),
@@ -71,4 +84,5 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
 }
 
 include!("symbols.rs");
+include!("lowest.rs");
 include!("digest.rs");

@@ -2,11 +2,14 @@
 
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
 use rungline_core::sheet::{Question, answer_text};
+use rungline_core::structure::{Basis, Hamiltonian, Integral, lowest_of_j};
 use wasm_bindgen_test::wasm_bindgen_test;
 
 include!(concat!(env!("OUT_DIR"), "/answers.rs"));
 include!(concat!(env!("OUT_DIR"), "/symbols.rs"));
+include!(concat!(env!("OUT_DIR"), "/lowest.rs"));
 include!("symbols.rs");
+include!("lowest.rs");
 include!("digest.rs");
 
 fn named(name: &str) -> Question {
@@ -89,6 +92,15 @@ fn symbols_have_the_native_bits() {
     for (number, (value, &bits)) in here.iter().zip(SYMBOL_BITS).enumerate() {
         assert_eq!(value.to_bits(), bits, "symbol {number}: {value:e}");
     }
+}
+
+#[wasm_bindgen_test]
+fn the_lowest_levels_of_large_matrices_have_the_native_bits() {
+    let here: Vec<u8> = (lowest_levels().iter())
+        .flat_map(|value| value.to_bits().to_le_bytes())
+        .collect();
+    assert_eq!(here.len(), LOWEST_BYTES);
+    assert_eq!(digest(&here), LOWEST_DIGEST);
 }
 
 #[wasm_bindgen_test]

@@ -14,8 +14,8 @@ use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::levels_limits::limits;
 use super::levels_rows::{
-    BlockRow, GroundRow, IntervalRow, IonisationRow, LevelRow, ParameterRow, PartitionRow,
-    SchemeRow, SeriesRow, ShareRow, Shared,
+    BlockRow, CorrelationRow, GroundRow, IntervalRow, IonisationRow, LevelRow, ParameterRow,
+    PartitionRow, SchemeRow, SeriesRow, ShareRow, Shared,
 };
 use super::levels_words::{Told, kinds, sentence, working};
 use super::placed::Placed;
@@ -23,7 +23,7 @@ use super::rich::{Rich, TermName};
 use super::solved::{Solved, solved};
 use super::states_terms::chain_rich;
 use super::watch::Watch;
-use super::{ionised, levels_facts, parameter_rows};
+use super::{ionised, levels_facts, levels_limits, parameter_rows};
 
 /// Above this many levels their lines, and so lifetimes, are not worked out.
 pub const MOST_LEVELS_WITH_LINES: usize = 2500;
@@ -41,6 +41,7 @@ pub struct Levels {
     levels_total: usize,
     parameters: Vec<ParameterRow>,
     schemes: Vec<SchemeRow>,
+    correlation: Option<CorrelationRow>,
     ground: Option<GroundRow>,
     intervals: Vec<IntervalRow>,
     series: Vec<SeriesRow>,
@@ -87,6 +88,10 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
     let ionisation = filled
         .as_ref()
         .and_then(|filled| ionised::row(document, &solved, &placed, &series, filled));
+    let correlation = match solved.case() {
+        EnergyCase::Model { case, .. } => levels_limits::correlation(case),
+        EnergyCase::OneElectron { .. } => None,
+    };
     let told = Told {
         document,
         solved: &solved,
@@ -118,6 +123,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
         levels_total: solved.levels.len(),
         parameters,
         schemes,
+        correlation,
         ground,
         intervals,
     })

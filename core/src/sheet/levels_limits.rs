@@ -1,11 +1,15 @@
 //! What the answers on levels and lines leave out, and how far off that puts them.
 
+use crate::configuration::{Orbital, Subshell};
 use crate::quantity::TwiceJ;
-use crate::structure::model::Case;
+use crate::structure::model::{Case, Correlation, UsualDeviation};
 
 use super::document::Document;
 use super::energy_case::EnergyCase;
+use super::json::Json;
+use super::lack::Way;
 use super::levels::parity;
+use super::levels_rows::{CorrelatedRow, CorrelationRow};
 use super::levels_words::Told;
 use super::rich::Kind;
 use super::solved::Solved;
@@ -65,13 +69,9 @@ pub fn limits(told: &Told) -> Vec<String> {
 
 /// How far computed energies usually are from measured ones, by the validation report.
 pub fn computed(case: &Case) -> Vec<String> {
-    let terms = if case.correlation {
-        "first excited terms of one configuration within 2 % (worst 11 %), with correlation within subshells in second order"
-    } else {
-        "first excited terms of one configuration 6 to 46 % too high, unless correlation within subshells is asked for"
-    };
+    let terms = correlation(case).map_or(String::new(), |row| format!(" {}", row.say));
     let mut limits = vec![format!(
-        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; {terms}; fine-structure intervals 5 %, nine of ten within 13 %. Pin measured energies for wavelengths to be compared with a spectrometer."
+        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; fine-structure intervals 5 %, nine of ten within 13 %.{terms} Pin measured energies for wavelengths to be compared with a spectrometer."
     )];
     if case.correlation && case.mixing && pairs_of_one_subshell(case) {
         limits.push(
@@ -80,6 +80,68 @@ pub fn computed(case: &Case) -> Vec<String> {
         );
     }
     limits
+}
+
+/// What correlation within subshells does for the terms of this case; nothing where no subshell has
+/// several, and where nothing is computed.
+pub fn correlation(case: &Case) -> Option<CorrelationRow> {
+    let many = |orbital: &Orbital| {
+        (0..case.configurations.len()).any(|place| {
+            let electrons = case.electrons(place, *orbital);
+            Subshell::new(*orbital, electrons).is_some_and(Correlation::matters)
+        })
+    };
+    let subshells: Vec<CorrelatedRow> = case
+        .orbitals()
+        .into_iter()
+        .filter(many)
+        .filter_map(|orbital| {
+            let usual = UsualDeviation::of(orbital)?;
+            Some(CorrelatedRow {
+                orbital: orbital.to_string(),
+                without: usual.without,
+                with: usual.with,
+            })
+        })
+        .collect();
+    if subshells.is_empty() || !case.computed {
+        return None;
+    }
+    let parts: Vec<String> = subshells
+        .iter()
+        .map(|row| {
+            let (least, most) = row.without;
+            let (orbital, with) = (&row.orbital, row.with);
+            match case.correlation {
+                true => {
+                    format!("{orbital} within {with} % (without it {least} to {most} % too large)")
+                }
+                false => {
+                    format!("{orbital} {least} to {most} % too large (with it within {with} %)")
+                }
+            }
+        })
+        .collect();
+    let parts = parts.join(", ");
+    let on = case.correlation;
+    let say = match on {
+        true => format!(
+            "Correlation within subshells is in these energies in second order: distances between terms of {parts}, by the validation report."
+        ),
+        false => format!(
+            "Correlation within subshells is left out: distances between terms of {parts}, by the validation report."
+        ),
+    };
+    Some(CorrelationRow {
+        on,
+        subshells,
+        say,
+        way: (!on).then(|| Way {
+            label: "Put in correlation within subshells".to_owned(),
+            path: "/structure/correlation".to_owned(),
+            value: Json::Bool(true),
+        }),
+    })
 }
 
 /// Whether two configurations of one parity differ by two electrons that leave one subshell.

@@ -6,6 +6,7 @@ use serde::{Serialize, Serializer};
 
 use crate::quantity::TwiceJ;
 
+use super::lack::Way;
 use super::rich::{Kind, Rich};
 
 /// One level; energies in cm⁻¹.
@@ -68,6 +69,28 @@ pub struct ParameterRow {
     pub scale: Option<f64>,
     /// Whether the sheet may give it.
     pub can_be_given: bool,
+}
+
+/// What correlation within subshells does for these terms, in percent of the distances between them.
+#[derive(Debug, Serialize)]
+pub struct CorrelationRow {
+    /// Whether it is in these energies.
+    pub on: bool,
+    pub subshells: Vec<CorrelatedRow>,
+    /// In words.
+    pub say: String,
+    /// What puts it in.
+    pub way: Option<Way>,
+}
+
+/// One kind of subshell: how far distances between its terms usually are off, percent.
+#[derive(Debug, Serialize)]
+pub struct CorrelatedRow {
+    pub orbital: String,
+    /// Least and most without correlation: too large.
+    pub without: (u8, u8),
+    /// At most with it.
+    pub with: u8,
 }
 
 #[derive(Debug, Serialize)]

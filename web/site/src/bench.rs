@@ -59,7 +59,7 @@ pub fn run(paths: &Paths) -> Outcome<()> {
         println!("{row}");
         writeln!(text, "{row}").map_err(|error| error.to_string())?;
     }
-    for bench in ["angular", "terms", "radial", "structure"] {
+    for bench in ["angular", "terms", "radial", "structure", "memory"] {
         let lines = cargo_bench(paths, bench)?;
         print!("{lines}");
         write!(text, "\nNative, `{bench}`:\n\n```\n{lines}```\n")

@@ -1,6 +1,7 @@
 // Levels: what they are made of, how their intervals go, from which parameters they come, and series.
 
 import { element } from "../dom.js";
+import { wayButton } from "../fields.js";
 import { richNode, richPlain } from "../rich.js";
 import { dataTable } from "../table.js";
 import { facts, shares } from "./chosen.js";
@@ -19,6 +20,15 @@ export function levelParts(whole, levels, endsOf, context) {
     part("intervals", "Fine-structure intervals and Landé’s rule", whole.intervals, () => intervalsTable(whole, context)),
     part("series", "Series and their limits", whole.series, () => whole.series.map((series) => seriesTable(series, levels, context))),
   ].filter(Boolean);
+}
+
+/** How much correlation would help here, with the button that puts it in; nothing where it is in, or no level is computed. */
+export function correlationNode({ correlation, levels }, { setField }) {
+  if (!correlation?.way || !levels.some(({ energy_kind: kind }) => kind === "computed")) return null;
+  const { label, path, value } = correlation.way;
+  return element("div", { class: "ways offer" },
+    wayButton({ label }, () => setField(path, value, label)),
+    element("span", { class: "note", text: correlation.say }));
 }
 
 function levelsPart(whole, levels, endsOf, context) {

@@ -6,7 +6,7 @@ import { rungLayout, walkRungs } from "../plot/rung-diagram.js";
 import { stickLayout } from "../plot/sticks.js";
 import { richRuns } from "../rich.js";
 import { unitOf } from "../spoken.js";
-import { levelParts } from "./levels.js";
+import { correlationNode, levelParts } from "./levels.js";
 import { chosenBlock } from "./chosen.js";
 import { check, fold, pointerWords, select } from "./fold.js";
 import { LineFilters } from "./line-filters.js";
@@ -74,6 +74,7 @@ class Lines {
       this.#filters.node,
       element("div", { class: "picture-with-choices" },
         element("div", { class: "choices" }, this.#columns.node, this.#refused?.node), this.#diagram.node),
+      correlationNode(whole, context),
       answer.lines.length === 0 ? null : element("div", { class: "picture-with-choices" },
         element("div", { class: "choices" }, this.#logarithmic.node), this.#spectrum.node),
       this.#list,
