@@ -185,6 +185,9 @@ impl Spectrum {
             configurations: &configurations,
         };
         let (parameters, cross) = source.values(&hamiltonian);
+        let correlation = (source.configurations.iter())
+            .map(|&place| super::estimate::correlation_seconds(case, place));
+        progress.step(correlation.sum())?;
         let values: Vec<f64> = parameters.iter().map(|value| value.value).collect();
         let mut refused = Ok(());
         let levels = Levels::solve_watched(&hamiltonian, &values, &mut |rows| {
