@@ -321,7 +321,7 @@ fn what_cannot_be_answered_is_told() {
         ["electron-numbers-differ"]
     );
     assert_eq!(
-        codes(&sheet("Ne", &["2p6"], json!({}))),
+        codes(&sheet("*", &["2p6"], json!({}))),
         ["needs-an-open-shell"]
     );
     assert_eq!(
@@ -372,6 +372,72 @@ fn the_next_ion_is_in_balance() {
     assert_eq!(balance["limit_kind"], "computed");
     assert_eq!(balance["higher_partition"], 1.0);
     assert!(levels(&sheet("Na", &["3s"], json!({})))["ionisation"].is_null());
+}
+
+#[test]
+fn full_shells_have_their_one_level() {
+    for (species, configuration, label) in [
+        ("Ne", "2p6", "2p6 1S0"),
+        ("He", "1s2", "1s2 1S0"),
+        ("Zn", "4s2", "4s2 1S0"),
+    ] {
+        let alone = levels(&sheet(species, &[configuration], json!({})));
+        let rows = alone["levels"].as_array().unwrap();
+        assert_eq!(rows.len(), 1, "{species}");
+        assert_eq!(rows[0]["label"], label);
+        assert_eq!(rows[0]["J"], "0");
+        // Counted from the average of the first configuration, which has no other level.
+        assert_eq!(number(&rows[0]["energy"]), 0.0);
+        assert!(rows[0]["g"].is_null());
+        assert_eq!(rows[0]["composition"][0]["percent"], 100.0);
+        let said = alone["say_plain"].as_str().unwrap();
+        assert!(said.contains("1 level here; the lowest is"), "{said}");
+        assert!(
+            said.contains("full shells have this one level alone, and there is no line"),
+            "{said}"
+        );
+    }
+    // Beside another configuration it stands where it stood.
+    let both = levels(&sheet("Ne", &["2p6", "2p5 3s"], json!({})));
+    assert_eq!(both["levels"].as_array().unwrap().len(), 5);
+    assert!(!both["say_plain"].as_str().unwrap().contains("one level"));
+    let given = levels(&sheet(
+        "*",
+        &["2p6"],
+        json!({"structure": {"given": {"E(2p6)": "12 cm-1"}}}),
+    ));
+    assert_eq!(number(&given["levels"][0]["energy"]), 12.0);
+}
+
+#[test]
+fn what_is_given_without_effect_is_named() {
+    let limits = |species: &str, configurations: &[&str], structure: Value| {
+        let sheet = sheet(species, configurations, json!({"structure": structure}));
+        let both = [Question::Levels, Question::Lines];
+        both.map(|question| asked(&sheet, question).expect("an answer")["limits"].to_string())
+            .concat()
+    };
+    let given =
+        json!({"given": {"F2(3p,3p)": "1 cm-1", "alpha(3p)": "2 cm-1", "zeta(3p)": "11 cm-1"}});
+    let said = limits("Na", &["3s", "3p"], given);
+    let sentence = "none of these configurations has such a parameter: F2(3p,3p), alpha(3p).";
+    assert_eq!(said.matches(sentence).count(), 2, "{said}");
+    let given = json!({"given": {"zeta(3p)": "11 cm-1"}});
+    assert!(!limits("Na", &["3s", "3p"], given).contains("without effect"));
+    let closed = json!({"given": {"zeta(2p)": "1 cm-1"}, "scale": {"F": 0.8}, "relativity": false});
+    let said = limits("H", &["1s", "2p"], closed);
+    let sentence = "use nothing of this: zeta(2p), the scales, “without relativity”.";
+    assert_eq!(said.matches(sentence).count(), 2, "{said}");
+    assert!(!limits("H", &["1s", "2p"], json!({})).contains("use nothing of this"));
+    // With given values alone they count.
+    let entered = json!({"energies": "given", "given": {"zeta(2p)": "2 cm-1"}});
+    let hydrogen = levels(&sheet("H", &["2p"], json!({"structure": entered})));
+    near(
+        number(&hydrogen["levels"][1]["above_lowest"]),
+        3.0,
+        1e-12,
+        "3/2 ζ",
+    );
 }
 
 /// ³P₀ to ¹D₂ of Si I 3p²: 6298.85 cm⁻¹ by published tables, from memory.

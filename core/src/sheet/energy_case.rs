@@ -48,17 +48,13 @@ pub fn need(document: &Document) -> Option<Need> {
     if one_electron(document) {
         return None;
     }
-    let open = |entry: &Entry| {
-        let subshells = entry.configuration().map(|c| c.subshells());
-        subshells.is_some_and(|all| all.iter().any(|s| s.is_open()))
-    };
     if document.entries.iter().any(|e| e.named().is_none()) {
         return needs(
             "needs-a-configuration",
             "a configuration: a bare shell has levels only where the atom has one electron",
         );
     }
-    if !document.entries.iter().any(open) {
+    if !wanted(document) && full_shells_alone(document) {
         return needs(
             "needs-an-open-shell",
             "an open shell: full shells alone have the one level 1S0",
@@ -78,6 +74,15 @@ pub fn need(document: &Document) -> Option<Need> {
         ));
     }
     None
+}
+
+/// Whether no configuration has an open shell.
+pub fn full_shells_alone(document: &Document) -> bool {
+    let full = |entry: &Entry| {
+        let subshells = entry.configuration().map(|c| c.subshells());
+        subshells.is_some_and(|all| all.iter().all(|s| !s.is_open()))
+    };
+    document.entries.iter().all(full)
 }
 
 /// Whether the atom has one electron and its levels are those of Dirac's equation.
@@ -212,7 +217,7 @@ fn core(named: &[(usize, &Entry, &Named)]) -> Vec<Orbital> {
 }
 
 /// A given parameter as the model takes it; configurations are counted as in the case.
-fn given_value(given: &Given, entries: &[usize]) -> Option<GivenValue> {
+pub fn given_value(given: &Given, entries: &[usize]) -> Option<GivenValue> {
     Some(GivenValue {
         name: name_of(given, entries)?,
         configuration: match given.entry {

@@ -212,7 +212,7 @@ fn lines(document: &Document, first: &Entry) -> Option<Lack> {
     let needs = if super::energy_case::need(document).is_none() {
         let most = MOST_LEVELS_WITH_LINES;
         (levels > most as u128).then(|| {
-            format!("fewer configurations or fewer open shells: these have {levels} levels, and lines are listed between at most {most}")
+            format!("fewer configurations or fewer open shells: these have {levels} levels, and lines are listed between at most {most}; a window leaves their number as it is")
         })
     } else {
         let pairs = pair_count(levels, None);

@@ -2,10 +2,11 @@
 
 use crate::configuration::{Orbital, Subshell};
 use crate::quantity::TwiceJ;
-use crate::structure::model::{Case, Correlation, UsualDeviation};
+use crate::structure::model::{Case, Correlation, Scale, UsualDeviation};
 
 use super::document::Document;
-use super::energy_case::EnergyCase;
+use super::energy_case::{EnergyCase, given_value};
+use super::given::Given;
 use super::json::Json;
 use super::lack::Way;
 use super::levels::parity;
@@ -37,6 +38,7 @@ pub fn limits(told: &Told) -> Vec<String> {
             }
         }
     }
+    limits.extend(without_effect(document, told.solved));
     if told.placed.pinned {
         limits.push(
             "Measured levels stand at their measured energies; a level without one keeps its computed distance from the nearest measured level of its configuration."
@@ -65,6 +67,42 @@ pub fn limits(told: &Told) -> Vec<String> {
     }
     limits.extend(document.unused());
     limits
+}
+
+/// What the sheet asks of the energies and these levels have no use for.
+pub fn without_effect(document: &Document, solved: &Solved) -> Option<String> {
+    if let EnergyCase::Model { entries, .. } = solved.case() {
+        let spectrum = solved.spectrum.as_ref()?;
+        // As the case counts them.
+        let given: Vec<&Given> = (document.given.iter())
+            .filter(|given| given_value(given, entries).is_some())
+            .collect();
+        let spelling = |place: &usize| Some(given.get(*place)?.spelling.clone());
+        let unused: Vec<String> = spectrum.unused.iter().filter_map(spelling).collect();
+        return (!unused.is_empty()).then(|| {
+            format!(
+                "Given without effect, for none of these configurations has such a parameter: {}.",
+                unused.join(", ")
+            )
+        });
+    }
+    let structure = &document.structure;
+    let mut unused: Vec<String> = document.given.iter().map(|g| g.spelling.clone()).collect();
+    let switched = [
+        (structure.scale != Scale::default(), "the scales"),
+        (!structure.relativity, "“without relativity”"),
+        (!structure.mixing, "“without mixing”"),
+        (structure.correlation, "correlation within subshells"),
+        (structure.polarisation.is_some(), "core polarisation"),
+    ];
+    let words = switched.iter().filter(|(is, _)| *is);
+    unused.extend(words.map(|(_, words)| (*words).to_owned()));
+    (!unused.is_empty()).then(|| {
+        format!(
+            "One electron has Dirac’s levels in closed form, which use nothing of this: {}. With energies from given values alone, what is given counts.",
+            unused.join(", ")
+        )
+    })
 }
 
 /// How far computed energies usually are from measured ones, by the validation report.

@@ -4,7 +4,7 @@ use crate::numerics::sorted_map::SortedMap;
 
 use super::answer::Working;
 use super::document::Document;
-use super::energy_case::EnergyCase;
+use super::energy_case::{EnergyCase, full_shells_alone};
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
 use super::levels_rows::{GroundRow, IntervalRow, IonisationRow, LevelRow, ParameterRow};
 use super::placed::Placed;
@@ -58,6 +58,9 @@ pub fn sentence(told: &Told) -> Rich {
             .say("; the other lies ")
             .number(rounded(next.above_lowest), Some("cm-1"), kind(next))
             .say(" above it."),
+        _ if full_shells_alone(told.document) => say.say(
+            ": full shells have this one level alone, and there is no line inside the configuration.",
+        ),
         _ => say.say("."),
     }
 }

@@ -98,16 +98,21 @@ impl Case {
         found.map_or(0, |subshell| subshell.electrons())
     }
 
-    /// The orbitals that are not full in every configuration, by n, then ℓ: the order of coupling.
+    /// The orbitals that are not full in every configuration, by n, then ℓ: the order of coupling. The last
+    /// one of all where every one is full, for such a configuration has its one level too.
     pub fn orbitals(&self) -> Vec<Orbital> {
         let all = self.configurations.iter().flatten();
         let mut orbitals: Vec<Orbital> = all.map(|subshell| subshell.orbital()).collect();
         sort(&mut orbitals);
         orbitals.dedup();
+        let last = orbitals.last().copied();
         orbitals.retain(|&orbital| {
             (0..self.configurations.len())
                 .any(|place| self.electrons(place, orbital) != orbital.capacity())
         });
+        if orbitals.is_empty() {
+            orbitals.extend(last);
+        }
         orbitals
     }
 
