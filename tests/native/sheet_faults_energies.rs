@@ -169,12 +169,29 @@ fn windows_and_media_are_checked() {
         []
     );
     assert_eq!(
-        of(json!({"window": ["590 nm", "588 nm"]})),
+        of(json!({"window": ["590 nm", "5900 Å"]})),
         one("window-empty", "/window/1")
     );
+    for allowed in [
+        json!(["590 nm", "588 nm"]),
+        json!(["590 nm"]),
+        json!(["", "590 nm"]),
+        json!(["2 eV", "2.2 eV"]),
+        json!(["500 THz", "17000 cm-1"]),
+    ] {
+        assert_eq!(of(json!({"window": allowed})), [], "{allowed}");
+    }
     assert_eq!(
-        of(json!({"window": ["590 nm"]})),
-        one("two-values-needed", "/window")
+        of(json!({"window": ["-2 eV", "590 nm"]})),
+        one("quantity-out-of-range", "/window/0")
+    );
+    assert_eq!(
+        of(json!({"window": ["588 nm", "590 kg"]})),
+        one("unit-of-another-quantity", "/window/1")
+    );
+    assert_eq!(
+        of(json!({"window": ["588 nm", "589 nm", "590 nm"]})),
+        one("too-many-entries", "/window")
     );
     assert_eq!(
         of(json!({"refractive_index": "17"})),

@@ -127,6 +127,53 @@ fn a_window_without_a_line_names_the_nearest() {
 }
 
 #[test]
+fn a_window_may_be_open_and_in_other_units() {
+    let seen = |window: Value| {
+        let answer = lines(&sheet(
+            "Na",
+            &["3s", "3p", "4s"],
+            json!({"window": window, "medium": "air"}),
+        ));
+        (
+            answer["window"].clone(),
+            answer["say_plain"].as_str().unwrap().to_owned(),
+        )
+    };
+    let (all, _) = seen(json!(["1 nm", "1 m"]));
+    let count = |window: &Value| window["lines"].as_u64().unwrap();
+    let (above, said) = seen(json!(["800 nm"]));
+    assert!(said.starts_with("Above 800 nm in air lie "), "{said}");
+    assert!(above["to"].is_null() && above["to_nm"].is_null());
+    assert_eq!(above["from"], 800.0);
+    let (below, said) = seen(json!(["", "800 nm"]));
+    assert!(said.starts_with("Below 800 nm in air lie "), "{said}");
+    assert_eq!(below["to"], 800.0);
+    assert!(count(&above) > 0 && count(&below) > 0);
+    assert_eq!(count(&above) + count(&below), count(&all));
+    // 12500 cm⁻¹ is 800 nm in vacuum.
+    let (energy, said) = seen(json!(["12500 cm-1", ""]));
+    assert_eq!(number(&energy["to_nm"]), 800.0);
+    assert_eq!(energy["from_nm"], Value::Null);
+    assert!(said.starts_with("Below 799.78 nm in air lie "), "{said}");
+    assert_eq!(count(&energy), count(&below));
+    let (turned, said) = seen(json!(["800 nm", "500 nm"]));
+    assert_eq!(
+        (&turned["from"], &turned["to"]),
+        (&json!(500.0), &json!(800.0))
+    );
+    assert!(
+        said.starts_with("Between 500 and 800 nm in air lie "),
+        "{said}"
+    );
+    let (none, said) = seen(json!(["", "50 nm"]));
+    assert_eq!(count(&none), 0);
+    assert!(
+        said.starts_with("No line lies below 50 nm in air; the nearest is "),
+        "{said}"
+    );
+}
+
+#[test]
 fn a_medium_moves_every_wavelength() {
     let answer = lines(&sheet(
         "*",

@@ -56,7 +56,7 @@ export class Fields {
    * A new field for the text at `path`. `hint` says what may stand there; `suggestions` gives the
    * texts that the browser offers. A fault of the whole `group` is shown while the field is empty.
    * With `number` the sheet gets a number where the text is one. Fields of
-   * one `pair` stand in the sheet together, once all of them are typed.
+   * one `pair` stand in the sheet together, once one of them is typed.
    */
   make(path, { label, hint, suggestions = null, onEmpty = null, group = null, number = false, pair = null }) {
     const id = freshId("field");
@@ -97,7 +97,7 @@ export class Fields {
 
   #typePair(pair, label) {
     const texts = [...this.#fields.values()].filter((field) => field.pair === pair).map(({ input }) => input.value);
-    this.#store.type(pair, texts.every((text) => text.trim() !== "") ? texts : "", `Typing in ${label}`);
+    this.#store.type(pair, texts.some((text) => text.trim() !== "") ? texts : "", `Typing in ${label}`);
   }
 
   /** Takes a field off the page. */
@@ -126,7 +126,7 @@ export class Fields {
   /** The sheet has changed; by `typing`, or by other means. */
   refill(typing = false) {
     for (const field of this.#fields.values()) {
-      // One end of a pair waits for the other.
+      // A pair that is empty but for spaces.
       if (typing && field.pair && valueAt(this.#store.sheet, field.pair) === undefined) continue;
       const text = this.#store.text(field.path);
       // "0." is on its way to 0.85.

@@ -18,7 +18,7 @@ export function lineFields(fields, questions, { store, view, setField, openCsv }
   const scale = (key, label) => field(`/structure/scale/${key}`, label, "a number; empty is 1", { number: true });
   const parameters = () => (levels()?.parameters ?? []).filter((parameter) => parameter.can_be_given !== false);
   return element("div", { class: "question-fields" },
-    row(field("/window/0", "Window from", "such as 580 nm; needs both ends", { pair: "/window" }), field("/window/1", "Window to", "such as 600 nm", { pair: "/window" }),
+    row(field("/window/0", "Window from", "such as 580 nm or 2 eV; empty is open", { pair: "/window" }), field("/window/1", "Window to", "such as 600 nm; empty is open", { pair: "/window" }),
       wordField({ store, setField }, "/medium", "Wavelengths", [["", "in vacuum"], ["air", "in air"]]),
       field("/source/temperature", "Temperature", "for intensities, such as 5000 K")),
     element("div", { class: "parts" },

@@ -6,7 +6,7 @@ use crate::quantity::{self, Dimension};
 use super::choice::{MEDIA, choice};
 use super::json::Json;
 use super::light;
-use super::parameters::two_needed;
+use super::window::Window;
 
 /// The air that wavelengths are measured in; nothing where the standard value stands.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
@@ -24,8 +24,8 @@ pub struct AirOf {
 /// `window`, `medium`, `refractive_index`, `air` and the `source` of light.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Conditions {
-    /// Shortest and longest wavelength that is looked at, nm in the medium.
-    pub window: Option<(f64, f64)>,
+    /// What is looked at.
+    pub window: Option<Window>,
     /// Whether the sheet says that wavelengths are those in air; otherwise they are those in vacuum.
     pub air_wanted: bool,
     /// Of a medium that is neither air nor vacuum.
@@ -50,7 +50,7 @@ impl Conditions {
         let (source, air) = (json.get("source"), json.get("air"));
         let medium = json.get("medium").and_then(Json::as_text);
         let conditions = Conditions {
-            window: window(json, faults),
+            window: Window::read(json, faults),
             air_wanted: medium.and_then(|typed| choice(typed, &MEDIA)) == Some("air"),
             refractive_index: value(Some(json), "refractive_index", Dimension::RefractiveIndex),
             air: AirOf {
@@ -73,46 +73,6 @@ impl Conditions {
     }
 }
 
-/// Two wavelengths, the shorter one first.
-fn window(json: &Json, faults: &mut Vec<Problem>) -> Option<(f64, f64)> {
-    let Some(Json::List(ends)) = json.get("window") else {
-        return None;
-    };
-    let [from, to] = ends.as_slice() else {
-        faults.push(two_needed("window", ends.len()));
-        return None;
-    };
-    let read = |end: &Json| {
-        let text = end.as_text()?;
-        Some((
-            text.to_owned(),
-            quantity::quantity(text, Dimension::Wavelength).ok()?.value,
-        ))
-    };
-    let ((_, from), (text, to)) = (read(from)?, read(to)?);
-    if from < to {
-        return Some((from, to));
-    }
-    let wider = quantity::quantity(&format!("{} nm", from + 1.0), Dimension::Wavelength)
-        .map_or_else(|_| text.clone(), |q| q.text);
-    faults.push(
-        Problem::new(
-            "window-empty",
-            format!(
-                "The window ends at {} and does not begin below it.",
-                text.trim()
-            ),
-            0,
-            text.len(),
-        )
-        .bound("The first wavelength is shorter than the second.")
-        .way(format!("Use {wider}"), wider)
-        .in_utf16(&text)
-        .at("/window/1"),
-    );
-    None
-}
-
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -133,7 +93,11 @@ mod tests {
                 "air":{"temperature":"20 °C","pressure":"1 atm","humidity":"45 %","co2":"400 ppm"}}"#,
         );
         assert_eq!(faults, []);
-        assert_eq!(all.window, Some((588.0, 590.0)));
+        assert_eq!(
+            all.window
+                .map(|window| window.ends.map(|end| end.unwrap().nm)),
+            Some([588.0, 590.0])
+        );
         assert!(!all.air_wanted);
         assert_eq!(all.refractive_index, Some(1.76));
         assert_eq!(all.temperature, Some(1200.0));
@@ -147,19 +111,6 @@ mod tests {
                 humidity: Some(45.0),
                 co2: Some(400.0)
             }
-        );
-    }
-
-    #[test]
-    fn a_window_has_two_rising_ends() {
-        let codes = |text: &str| found(text).1;
-        assert_eq!(
-            codes(r#"{"window":["590 nm","588 nm"]}"#),
-            [("window-empty", "/window/1".to_owned())]
-        );
-        assert_eq!(
-            codes(r#"{"window":["590 nm"]}"#),
-            [("two-values-needed", "/window".to_owned())]
         );
     }
 }

@@ -82,14 +82,22 @@ impl Surroundings {
 
     /// The window with the lines in it.
     pub fn window(&self, conditions: &Conditions, lines: &[LineRow]) -> Option<WindowRow> {
-        let (from, to) = conditions.window?;
-        let (from_nm, to_nm) = (self.medium.vacuum(from), self.medium.vacuum(to));
-        let inside = |nm: f64| (from_nm..=to_nm).contains(&nm);
+        let window = conditions.window?;
+        let ends = window.sorted(|nm| self.medium.vacuum(nm));
+        let [from_nm, to_nm] = ends.map(|end| end.map(|(nm, _)| nm));
+        let [from, to] = ends.map(|end| match end {
+            Some((nm, end)) if end.by_energy => Some(self.medium_nm(nm)),
+            typed => typed.map(|(_, end)| end.nm),
+        });
+        // How far outside the window; zero inside.
+        let distance = |nm: f64| {
+            let short = from_nm.map_or(0.0, |from| from - nm);
+            short.max(to_nm.map_or(0.0, |to| nm - to)).max(0.0)
+        };
         let count = lines
             .iter()
-            .filter(|line| line.vacuum_nm.is_some_and(inside))
+            .filter(|line| line.vacuum_nm.is_some_and(|nm| distance(nm) <= 0.0))
             .count();
-        let distance = |nm: f64| (from_nm - nm).max(nm - to_nm);
         let mut nearest: Option<(f64, &LineRow)> = None;
         for line in lines.iter().filter(|_| count == 0) {
             if let Some(nm) = line.vacuum_nm

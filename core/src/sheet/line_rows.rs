@@ -177,12 +177,12 @@ impl From<&LevelSum> for SumRow {
 /// The window that is looked at.
 #[derive(Debug, Serialize)]
 pub struct WindowRow {
-    /// In vacuum, nm.
-    pub from_nm: f64,
-    pub to_nm: f64,
-    /// As entered, nm in the medium.
-    pub from: f64,
-    pub to: f64,
+    /// Shortest and longest wavelength in vacuum, nm; nothing where it is open.
+    pub from_nm: Option<f64>,
+    pub to_nm: Option<f64>,
+    /// The same in the medium, nm: as entered where they were entered so.
+    pub from: Option<f64>,
+    pub to: Option<f64>,
     /// "vacuum", "air" or "index".
     pub medium: &'static str,
     pub lines: usize,

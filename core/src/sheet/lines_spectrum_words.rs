@@ -8,7 +8,7 @@ use super::answer::Working;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
-use super::levels_limits::{computed, incomplete, too_low};
+use super::levels_limits::{computed, incomplete, too_low, without_effect};
 use super::levels_rows::Shared;
 use super::levels_words::rounded;
 use super::light::{Surroundings, air_range};
@@ -31,7 +31,7 @@ pub struct Told<'a> {
 }
 
 /// Six digits, as a wavelength is read aloud.
-fn six_digits(value: f64) -> f64 {
+pub fn six_digits(value: f64) -> f64 {
     format!("{value:.5e}").parse().unwrap_or(value)
 }
 
@@ -96,14 +96,27 @@ pub fn sentence(told: &Told) -> Rich {
 }
 
 fn in_window(told: &Told, window: &WindowRow) -> Rich {
-    let between = |say: Rich| {
-        say.number(window.from, None, Kind::Entered)
-            .say(" and ")
-            .number(window.to, Some("nm"), Kind::Entered)
-            .say(told.surroundings.words())
+    // As typed, or of an energy six digits.
+    let nm = |nm: f64, typed: bool| if typed { nm } else { six_digits(nm) };
+    let by_energy = (told.document.conditions.window)
+        .is_some_and(|window| window.ends.iter().flatten().any(|end| end.by_energy));
+    let end = |say: Rich, value: f64, unit| say.number(nm(value, !by_energy), unit, Kind::Entered);
+    let between = |say: Rich, words: [&str; 3]| {
+        let [between, above, below] = words;
+        let say = match (window.from, window.to) {
+            (Some(from), Some(to)) => {
+                let say = end(say.say(between), from, None).say(" and ");
+                end(say, to, Some("nm"))
+            }
+            (Some(from), None) => end(say.say(above), from, Some("nm")),
+            (None, Some(to)) => end(say.say(below), to, Some("nm")),
+            (None, None) => say,
+        };
+        say.say(told.surroundings.words())
     };
     if window.lines == 0 {
-        let say = between(Rich::words("No line lies between "));
+        let words = ["between ", "above ", "below "];
+        let say = between(Rich::words("No line lies "), words);
         return match &window.nearest {
             Some(nearest) => {
                 let say = say.say("; the nearest is ");
@@ -116,9 +129,9 @@ fn in_window(told: &Told, window: &WindowRow) -> Rich {
     }
     let inside = |line: &&LineRow| {
         let nm = line.vacuum_nm.unwrap_or(0.0);
-        (window.from_nm..=window.to_nm).contains(&nm)
+        window.from_nm.is_none_or(|from| from <= nm) && window.to_nm.is_none_or(|to| nm <= to)
     };
-    let say = between(Rich::words("Between ")).say(match window.lines {
+    let say = between(Rich::new(), ["Between ", "Above ", "Below "]).say(match window.lines {
         1 => " lies ",
         _ => " lie ",
     });
@@ -264,6 +277,7 @@ pub fn limits(told: &Told) -> Vec<String> {
         }
         EnergyCase::Model { .. } => {}
     }
+    limits.extend(without_effect(told.document, told.solved));
     limits.extend(incomplete(told.solved));
     if told.lines.iter().any(|line| line.weak) {
         limits.push(format!(

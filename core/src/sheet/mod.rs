@@ -86,6 +86,7 @@ mod states_words;
 mod structure;
 mod unused;
 mod watch;
+mod window;
 
 use serde::Serialize;
 

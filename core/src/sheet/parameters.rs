@@ -26,7 +26,7 @@ pub fn check(json: &Json, faults: &mut Vec<Problem>) {
     if let Some(Json::List(ends)) = json.get("pair")
         && ends.len() != 2
     {
-        faults.push(two_needed("pair", ends.len()));
+        faults.push(two_needed(ends.len()));
     }
     if let Some(level) = json.get("level") {
         typed(level.get("g"), Dimension::Number, "/level/g", faults);
@@ -45,16 +45,16 @@ pub fn check(json: &Json, faults: &mut Vec<Problem>) {
     }
 }
 
-/// A list that must hold two wavelengths.
-pub fn two_needed(key: &str, found: usize) -> Problem {
+/// A pair must hold two wavelengths.
+fn two_needed(found: usize) -> Problem {
     Problem::new(
         "two-values-needed",
-        format!("\"{key}\" has {found} of 2 values."),
+        format!("\"pair\" has {found} of 2 values."),
         0,
         0,
     )
     .bound("It takes two wavelengths.")
-    .at(format!("/{key}"))
+    .at("/pair")
 }
 
 fn check_reading(reading: &Json, path: &str, faults: &mut Vec<Problem>) {

@@ -10,6 +10,7 @@ use super::document::Document;
 use super::entry::{Content, Entry};
 use super::json::Json;
 use super::lack::Way;
+use super::lines_spectrum_words::six_digits;
 use super::nucleus::{isotope_name, natural};
 use super::rich::{Kind, Rich};
 use super::{Question, to_json};
@@ -236,11 +237,17 @@ fn echoes(document: &Document) -> Vec<Echo> {
         );
     }
     let conditions = &document.conditions;
-    let (from, to) = conditions.window.unzip();
+    for (place, end) in (0..).zip(conditions.window.into_iter().flat_map(|window| window.ends)) {
+        let Some(end) = end else { continue };
+        let say = |nm: f64| Rich::new().number(nm, Some("nm"), Kind::Entered);
+        let rich = match end.by_energy {
+            true => say(six_digits(end.nm)).say(" in vacuum"),
+            false => say(end.nm),
+        };
+        add(&format!("/window/{place}"), rich);
+    }
     let air = &conditions.air;
     for (path, value, unit) in [
-        ("/window/0", from, Some("nm")),
-        ("/window/1", to, Some("nm")),
         ("/refractive_index", conditions.refractive_index, None),
         ("/air/temperature", air.temperature, Some("K")),
         ("/air/pressure", air.pressure, Some("Pa")),

@@ -40,6 +40,8 @@ pub enum Shape {
     Quantity(Dimension),
     /// A typed quantity whose dimension its neighbour decides: only its length is checked.
     Reading,
+    /// An end of a window: a wavelength, an energy, or nothing.
+    WindowEnd,
     /// A half-integer from 0, as text.
     HalfInteger,
     /// A list of at most so many items.
@@ -52,7 +54,7 @@ pub enum Shape {
 
 use Shape::{
     Bool, Choice, ChoiceOr, Group, HalfInteger, Label, List, Named, Notation, Number, Quantity,
-    Reading, Text,
+    Reading, Text, WindowEnd,
 };
 
 /// Hyperfine constants of levels.
@@ -124,7 +126,7 @@ pub const SHEET: Shape = Group(&[
         "instrument",
         Group(&[("resolving_power", Number(1.0, 1e9))]),
     ),
-    ("window", List(&Quantity(Dimension::Wavelength), 2)),
+    ("window", List(&WindowEnd, 2)),
     ("pair", List(&Quantity(Dimension::Wavelength), 2)),
     ("medium", Choice(&MEDIA)),
     ("refractive_index", Quantity(Dimension::RefractiveIndex)),

@@ -9,7 +9,7 @@ use super::json::Json;
 use super::schema::{MAX_NAME, Shape, VERSION, key_of, pointer};
 use Shape::{
     Bool, Choice, ChoiceOr, Group, HalfInteger, Label, List, Named, Notation, Number, Quantity,
-    Reading, Text,
+    Reading, Text, WindowEnd,
 };
 
 /// Adds every fault of `json` against `shape`, in the order of the input.
@@ -75,6 +75,13 @@ pub fn check(json: &Json, shape: &Shape, path: &str, faults: &mut Vec<Problem>) 
         Quantity(dimension) => {
             if let Some(typed) = text(json, path, MAX_NAME, faults) {
                 quantity(typed, *dimension, path, faults);
+            }
+        }
+        WindowEnd => {
+            if let Some(typed) = text(json, path, MAX_NAME, faults)
+                && let Err(problem) = super::window::end(typed)
+            {
+                faults.push(problem.in_utf16(typed).at(path));
             }
         }
         HalfInteger => {

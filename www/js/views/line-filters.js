@@ -68,7 +68,7 @@ export class LineFilters {
     const own = lines.filter((line) => typeof line.wavenumber === "number"
       && (multipole === "" || line.multipole === multipole)
       && (lower === "" || line.lower === lower || lower === `of ${this.#levels.get(line.lower)?.configuration}`)
-      && (!inWindow || (line.vacuum_nm >= window.from_nm && line.vacuum_nm <= window.to_nm)));
+      && (!inWindow || (line.vacuum_nm >= (window.from_nm ?? 0) && line.vacuum_nm <= (window.to_nm ?? Infinity))));
     if (part === 0) return own;
     const strongest = own.reduce((most, line) => Math.max(most, line[measure] ?? 0), 0);
     return own.filter((line) => line[measure] >= part * strongest);

@@ -159,11 +159,15 @@ class Lines {
     };
   }
 
-  // A window that narrows the list is the axis.
-  #windowEnds(value, medium) {
+  // A window that narrows the list is the axis; where it is open, the lines in it are.
+  #windowEnds(value, medium, sticks) {
     const { window } = this.#answer;
     if (!this.#filters.inWindow?.value() || window.medium !== medium) return null;
-    return [window.from, window.to].map((nm) => value({ vacuum_nm: nm, air_nm: nm, medium_nm: nm }, medium));
+    const ends = [window.from, window.to].map((nm) => (nm === null ? null : value({ vacuum_nm: nm, air_nm: nm, medium_nm: nm }, medium)));
+    if (!ends.includes(null)) return ends;
+    if (sticks.length === 0) return null;
+    const [from, to] = [ends[0] ?? extent(sticks)[0], ends[1] ?? extent(sticks)[1]];
+    return from < to ? [from, to] : null;
   }
 
   #drawSpectrum() {
@@ -175,7 +179,7 @@ class Lines {
       x: value(line, medium), up: measure === "absorption" ? 0 : line[measure] ?? 0, down: (absorbs && line.absorption) || 0,
       multipole: line.multipole, weak: line.weak === true, id: lineId(line), ids: idsOf(this.#levels, line), reading: () => this.#reading(line),
     })).filter(({ x }) => typeof x === "number").sort((a, b) => a.x - b.x);
-    const [from, to] = (wave && this.#windowEnds(value, medium)) || extent(sticks);
+    const [from, to] = (wave && this.#windowEnds(value, medium, sticks)) || extent(sticks);
     const inside = sticks.filter(({ x }) => x >= from && x <= to);
     const beyond = sticks.length - inside.length;
     const words = wave ? `${title} ${MEDIA[medium].words} (` : `${title} (`;
