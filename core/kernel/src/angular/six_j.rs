@@ -1,6 +1,6 @@
 //! Wigner 6j symbols.
 
-use super::racah_sum::Tetrahedron;
+use super::racah_sum::{Tetrahedron, nearest};
 use super::triad::{CAPACITY, beyond, signed_root};
 use crate::numerics::binomial::triangle;
 use crate::problem::Problem;
@@ -48,7 +48,7 @@ pub fn try_wigner_6j(
             let others = one.small_multinomial(triangle)
                 * two.small_multinomial(triangle)
                 * three.small_multinomial(triangle);
-            return Ok(sum as f64 * (base.small_multinomial(triangle) / others).sqrt());
+            return Ok(nearest(sum) * (base.small_multinomial(triangle) / others).sqrt());
         }
     }
     let largest = two_j.into_iter().max().unwrap_or(0);
