@@ -5,6 +5,7 @@ pub mod banded;
 pub mod banded_eigen;
 pub mod binomial;
 pub mod gauss_legendre;
+pub mod generalised;
 pub mod lanes;
 pub mod least_squares;
 pub mod linear;

@@ -24,8 +24,7 @@
 use super::hartree_fock::{RadialOrbital, Solution};
 use super::mesh::Mesh;
 use crate::angular::{wigner_3j, wigner_6j};
-use crate::numerics::symmetric::eigensystem;
-use nalgebra::DMatrix;
+use crate::numerics::generalised::{full, generalised_eigensystem, lift};
 
 /// ℓ of empty orbitals at most.
 const HIGHEST: u8 = 6;
@@ -132,7 +131,6 @@ impl Solution {
     fn empty(&self, mesh: &Mesh, orbital: &RadialOrbital, l: u8) -> Option<Vec<Partner>> {
         let start = (usize::from(l) + 1).min(super::mesh::ORDER - 2);
         let end = mesh.size().checked_sub(1)?;
-        let size = end.checked_sub(start)?;
         let weights = mesh.weights();
         let slopes: Vec<f64> = (orbital.inverse_mass.iter().zip(weights))
             .map(|(m, w)| 0.5 * m * w)
@@ -147,48 +145,22 @@ impl Solution {
         }
         let mut banded = mesh.assemble(&mesh.slopes_with(-1.0), &slopes);
         banded.add(1.0, &mesh.assemble(mesh.values(), &values));
-        let banded = banded.part(start, end);
-        let mut matrix = DMatrix::zeros(size, size);
-        for (i, row) in banded.entries().chunks_exact(banded.width()).enumerate() {
-            for (j, entry) in (i..size).zip(row) {
-                for place in [(i, j), (j, i)] {
-                    if let Some(to) = matrix.get_mut(place) {
-                        *to = *entry;
-                    }
-                }
-            }
-        }
+        let mut matrix = full(&banded.part(start, end));
         for other in self.orbitals.iter().filter(|o| o.orbital.l() == l) {
             let dual = mesh.metric().times(&other.coefficients);
-            let dual = dual.get(start..end)?;
-            for (mut column, d) in matrix.column_iter_mut().zip(dual) {
-                for (entry, e) in column.iter_mut().zip(dual) {
-                    *entry += ASIDE * d * e;
-                }
-            }
+            lift(&mut matrix, ASIDE, dual.get(start..end)?);
         }
-        // With B = L D Lᵀ, an ordinary problem from both sides.
         let factors = mesh.metric().part(start, end).factorise();
-        for _ in 0..2 {
-            for mut column in matrix.column_iter_mut() {
-                let mut values: Vec<f64> = column.iter().copied().collect();
-                factors.solve_half(&mut values);
-                for (entry, value) in column.iter_mut().zip(values) {
-                    *entry = value;
-                }
-            }
-            matrix.transpose_mut();
-        }
-        let system = eigensystem(matrix)?;
+        let system = generalised_eigensystem(matrix, &factors)?;
         let mut found = Vec::new();
         for (&energy, column) in system.values.iter().zip(system.vectors.column_iter()) {
             if energy > TOP {
                 break;
             }
-            let mut vector: Vec<f64> = column.iter().copied().collect();
-            factors.solve_other_half(&mut vector);
             let mut whole = vec![0.0; mesh.size()];
-            whole.get_mut(start..end)?.copy_from_slice(&vector);
+            whole
+                .get_mut(start..end)?
+                .copy_from_slice(column.as_slice());
             found.push(Partner {
                 l: i32::from(l),
                 energy,

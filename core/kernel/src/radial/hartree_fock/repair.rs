@@ -8,7 +8,7 @@ use nalgebra::DMatrix;
 
 use super::field::Coefficients;
 use super::wave::{Case, Wave, active, dot};
-use crate::numerics::symmetric::eigensystem;
+use crate::numerics::generalised::{full, generalised_eigensystem, lift};
 use crate::radial::mesh::POINTS;
 
 /// Where other occupied orbitals of equal ℓ are moved out of the way, hartree.
@@ -54,21 +54,10 @@ pub(super) fn state(
     let wave = waves.get(place)?;
     let mesh = &case.mesh;
     let (start, end) = active(mesh, wave.l);
-    let size = end.checked_sub(start)?;
     let local = case
         .operator(wave.l, &wave.inverse_mass, &wave.local)
         .part(start, end);
-    let factors = mesh.metric().part(start, end).factorise();
-    let mut matrix = DMatrix::zeros(size, size);
-    for (i, row) in local.entries().chunks_exact(local.width()).enumerate() {
-        for (j, entry) in (i..size).zip(row) {
-            for place in [(i, j), (j, i)] {
-                if let Some(to) = matrix.get_mut(place) {
-                    *to = *entry;
-                }
-            }
-        }
-    }
+    let mut matrix = full(&local);
     for other in waves {
         let alike = (other.n, other.l) == (wave.n, wave.l);
         if !alike {
@@ -79,31 +68,16 @@ pub(super) fn state(
     for other in waves.iter().filter(|o| o.l == wave.l && o.n != wave.n) {
         below -= usize::from(other.n < wave.n);
         let dual = mesh.metric().times(&other.coefficients);
-        let dual = dual.get(start..end)?;
-        for (mut column, d) in matrix.column_iter_mut().zip(dual) {
-            for (entry, e) in column.iter_mut().zip(dual) {
-                *entry += ASIDE * d * e;
-            }
-        }
+        lift(&mut matrix, ASIDE, dual.get(start..end)?);
     }
-    // With B = L D Lᵀ, an ordinary problem from both sides.
-    for _ in 0..2 {
-        for mut column in matrix.column_iter_mut() {
-            let mut values: Vec<f64> = column.iter().copied().collect();
-            factors.solve_half(&mut values);
-            for (entry, value) in column.iter_mut().zip(values) {
-                *entry = value;
-            }
-        }
-        matrix.transpose_mut();
-    }
-    let system = eigensystem(matrix)?;
+    let factors = mesh.metric().part(start, end).factorise();
+    let system = generalised_eigensystem(matrix, &factors)?;
     let energy = *system.values.get(below)?;
-    let mut vector: Vec<f64> =
-        (below < size).then(|| system.vectors.column(below).iter().copied().collect())?;
-    factors.solve_other_half(&mut vector);
+    let vector = system.vectors.column_iter().nth(below)?;
     let mut whole = vec![0.0; mesh.size()];
-    whole.get_mut(start..end)?.copy_from_slice(&vector);
+    whole
+        .get_mut(start..end)?
+        .copy_from_slice(vector.as_slice());
     let sign = dot(&whole, &mesh.metric().times(&wave.coefficients));
     if sign < 0.0 {
         whole.iter_mut().for_each(|c| *c = -*c);
