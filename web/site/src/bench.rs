@@ -59,6 +59,7 @@ pub fn run(paths: &Paths) -> Outcome<()> {
         println!("{row}");
         writeln!(text, "{row}").map_err(|error| error.to_string())?;
     }
+    text += &against_numpy(paths)?;
     for bench in ["angular", "terms", "radial", "structure", "memory"] {
         let lines = cargo_bench(paths, bench)?;
         print!("{lines}");
@@ -69,6 +70,40 @@ pub fn run(paths: &Paths) -> Outcome<()> {
     write(file, text)?;
     println!("Written to {}.", file.display());
     Ok(())
+}
+
+/// Our eigensystem and numpy's on one thread, taking turns. Where there is no numpy, the text says so.
+fn against_numpy(paths: &Paths) -> Outcome<String> {
+    println!("Comparing with numpy …");
+    let mut sizes = Vec::new();
+    let (mut ours, mut theirs): (Vec<f64>, Vec<f64>) = (Vec::new(), Vec::new());
+    for _ in 0..TURNS {
+        let script = paths.root.join("tests/bench/eigen.py");
+        let Ok(lines) = capture(program("python3").arg(script), LIMIT) else {
+            let words = "Not compared with numpy's eigh: python3 with numpy is not there.";
+            println!("{words}");
+            return Ok(format!("\n{words}\n"));
+        };
+        keep_best(&mut theirs, &split(&lines)?.0);
+        let (seconds, found) = split(&cargo_bench(paths, "eigen")?)?;
+        sizes = found;
+        keep_best(&mut ours, &seconds);
+    }
+    let mut text = String::from(
+        "\n| all eigenpairs of a full symmetric matrix, native | ours | numpy's eigh, one thread | ratio \
+         |\n|---|---|---|---|\n",
+    );
+    for ((size, ours), theirs) in sizes.iter().zip(&ours).zip(&theirs) {
+        let ratio = ours / theirs;
+        let row = format!(
+            "| n = {size} | {} | {} | {ratio:.2} |",
+            time(*ours),
+            time(*theirs)
+        );
+        println!("{row}");
+        writeln!(text, "{row}").map_err(|error| error.to_string())?;
+    }
+    Ok(text)
 }
 
 fn cargo_bench(paths: &Paths, name: &str) -> Outcome<String> {

@@ -31,8 +31,15 @@ const EVERY_DAY: &[&str] = &[
 ];
 
 /// Native tests that `--quick` leaves out, by a part of their names: sweeps over all atoms, and
-/// comparisons with brute force.
-const LONG: &[&str] = &["sweep", "converge", "determinant"];
+/// comparisons with brute force or with a definition term by term.
+const LONG: &[&str] = &[
+    "sweep",
+    "converge",
+    "determinant",
+    "brute_force",
+    "by_their_share",
+    "definition_says",
+];
 
 /// The packages that run on this machine.
 const NATIVE: &[&str] = &[
@@ -228,22 +235,16 @@ impl Checks<'_> {
         build(self.paths, self.profile)?;
         let (browsers, note) = browsers::find_or_install()?;
         println!("Browsers: {note}.");
-        // The same bytes are asked of the native program.
-        let mut native = self.cargo(&[
-            "build",
-            "--quiet",
-            "--release",
-            "--package",
-            "rungline-core",
-            "--bin",
-            "rungline",
-        ]);
-        if !stream(&mut native, LIMIT)?.0 {
-            return Err("The native program does not compile.".to_string());
-        }
         let specs = self.specs()?;
         if specs.is_empty() {
             return Err(format!("No page test has “{}” in its name.", self.filter));
+        }
+        // Who asks for the same bytes of the native program needs it.
+        if specs
+            .iter()
+            .any(|file| file.ends_with("same-bytes.spec.mjs"))
+        {
+            self.native_program()?;
         }
         let mut node = Node::find()?.program();
         // Times are only measured by the full run, which has the machine to itself.
@@ -268,6 +269,22 @@ impl Checks<'_> {
             node.env(variable, browser);
         }
         counted(&mut node, node_counts)
+    }
+
+    fn native_program(&self) -> Outcome<()> {
+        let mut native = self.cargo(&[
+            "build",
+            "--quiet",
+            "--release",
+            "--package",
+            "rungline-core",
+            "--bin",
+            "rungline",
+        ]);
+        if !stream(&mut native, LIMIT)?.0 {
+            return Err("The native program does not compile.".to_string());
+        }
+        Ok(())
     }
 
     fn specs(&self) -> Outcome<Vec<PathBuf>> {
