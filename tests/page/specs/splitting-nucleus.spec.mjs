@@ -1,0 +1,76 @@
+// The nucleus on the page: constants, isotopes, a level alone, and what is refused at its own field.
+
+import assert from "node:assert/strict";
+import { everyDoor } from "../driver/door.mjs";
+
+const CAESIUM = "v=1&species=133Cs&configurations.0=6s&nucleus.magnetic_dipole.6s+2S1/2=2298.1579425+MHz&field.flux_density=0.01+T";
+const RUBIDIUM = "v=1&species=Rb&configurations.0=5s&field.flux_density=0.01+T";
+const ALONE = "v=1&level.J=1/2&level.g=2.0025&level.I=7/2&level.A=2298.1579425+MHz&field.flux_density=1e-9+T&field.up_to=0.5+T";
+
+const open = async (door, beginning) => {
+  await door.evaluate((words) => {
+    const summary = [...document.querySelectorAll("#splitting .part > summary")].find((each) => each.textContent.startsWith(words));
+    if (!summary.parentElement.open) summary.click();
+  }, beginning);
+};
+const rows = (door, caption) => door.until((words) => {
+  const table = [...document.querySelectorAll("#splitting table")].find((each) => each.caption.textContent.startsWith(words));
+  return table && [...table.tBodies[0].rows].map((row) => [...row.cells].map((cell) => cell.textContent));
+}, caption);
+
+everyDoor("a level with its nucleus has states by F and M, in the table and in the map", async (door) => {
+  await door.unfold("splitting");
+  await open(door, "States");
+  const states = await rows(door, "States");
+  assert.equal(states.length, 16);
+  const head = await door.evaluate(() => [...document.querySelectorAll("#splitting .parts table th")].map((each) => each.textContent));
+  assert.ok(head.some((text) => text.startsWith("F")) && head.some((text) => text.startsWith("M")));
+  await open(door, "Hyperfine constants");
+  const [[, value]] = await rows(door, "Hyperfine constants");
+  assert.match(value, /^2298\.1/);
+  await door.until(() => document.querySelectorAll("#splitting .map-part svg[role=img] polyline").length >= 16);
+  assert.match(await door.text("#splitting .map-part svg[role=img]"), /F 4/);
+  assert.deepEqual(door.troubles, []);
+}, { fragment: CAESIUM });
+
+everyDoor("the natural isotopes are put in with their shares, and taken out again", async (door) => {
+  await door.unfold("splitting");
+  await open(door, "Nucleus and isotopes");
+  await door.until(() => [...document.querySelectorAll("#splitting button")].some((each) => each.textContent === "Put in the natural isotopes" && !each.hidden));
+  await door.click("Put in the natural isotopes");
+  // 85Rb 72.17 %, 87Rb 27.83 % (IUPAC, isotopic compositions of the elements 2009).
+  const value = (path) => door.evaluate((wanted) => document.querySelector(`[data-path="${wanted}"]`)?.value ?? null, path);
+  await door.until(() => document.querySelector('[data-path="/isotopes/1/share"]'));
+  assert.deepEqual([await value("/isotopes/0/isotope"), await value("/isotopes/1/isotope")], ["85Rb", "87Rb"]);
+  assert.match(await value("/isotopes/0/share"), /^72\.1[67]/);
+  assert.match(await door.sentence("splitting"), /isotopes/);
+  const add = await door.page.$('[aria-label="Take out isotope 1"]');
+  await add.evaluate((node) => node.click());
+  await door.until(() => document.querySelector('[data-path="/isotopes/0/isotope"]').value === "87Rb" && document.querySelector('[data-path="/isotopes/1/isotope"]') === null);
+  assert.deepEqual(door.troubles, []);
+}, { fragment: RUBIDIUM });
+
+everyDoor("a spin that is no half-integer, an isotope that is not there and a B where there can be none are refused at their fields", async (door) => {
+  await door.unfold("splitting");
+  await open(door, "Nucleus and isotopes");
+  await door.type("Nuclear spin I", "1/3");
+  await door.until(() => document.querySelector('[data-path="/nucleus/spin"]').getAttribute("aria-invalid") === "true");
+  await door.type("Nuclear spin I", "5/2");
+  await door.sentence("splitting");
+  await door.click("Add an isotope");
+  await door.until(() => document.querySelector('[data-path="/isotopes/0/isotope"]'));
+  await door.type("Isotope 1", "40Rb");
+  await door.until(() => document.querySelector('[data-path="/isotopes/0/isotope"]').getAttribute("aria-invalid") === "true");
+  assert.deepEqual(door.troubles, []);
+}, { fragment: RUBIDIUM });
+
+// 9 192 631 770 Hz is the transition between the two hyperfine levels of the ground state of ¹³³Cs that
+// defines the second (SI Brochure, 9th edition, 2.3.1); A = 2298.1579425 MHz is a quarter of it.
+everyDoor("a level alone is enough: the resonance of caesium without field", async (door) => {
+  await door.unfold("splitting");
+  await open(door, "Resonance frequencies");
+  const found = await rows(door, "Resonance frequencies");
+  const megahertz = found.flatMap((cells) => cells.slice(2, 3)).map((text) => Number(text.replace("\u2212", "-")));
+  assert.ok(megahertz.some((value) => Math.abs(value - 9192.63177) < 0.01), String(megahertz.slice(0, 8)));
+  assert.deepEqual(door.troubles, []);
+}, { fragment: ALONE });
