@@ -36,7 +36,7 @@ export function isotopeRows({ fields, store, put, constants, natural }) {
         fields.make(path("share"), { label: `${nth}, share`, hint: "empty: the natural one" }),
         fields.make(path("shift"), { label: `${nth}, shift`, hint: "of the line, such as 78 MHz" })),
       constants(`${PATH}/${at}`, `${nth}, `),
-      element("button", { type: "button", class: "action", text: "Take it out", "aria-label": `Take out isotope ${at + 1}`, on: { click: () => {
+      element("button", { type: "button", class: "action", text: "Take it out", "aria-label": `Take it out: isotope ${at + 1}`, on: { click: () => {
         put(`${PATH}/${at}`, undefined, `Take out isotope ${at + 1}`);
         add.focus();
       } } }));

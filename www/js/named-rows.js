@@ -32,7 +32,7 @@ export function namedRows({ fields, store, path, words, suggestions, usual = () 
       const node = element("div", { class: "named-row" },
         fields.make(pathOf(name), { label: `${words.of ?? ""}${name}`, hint: words.hint }),
         element("button", {
-          type: "button", class: "action", text: "Take it out", "aria-label": `Take out ${words.of ?? ""}${name}`,
+          type: "button", class: "action", text: "Take it out", "aria-label": `Take it out: ${words.of ?? ""}${name}`,
           on: { click: () => {
             store.put([[pathOf(name), undefined]], `Take out ${name}`);
             box.focus();

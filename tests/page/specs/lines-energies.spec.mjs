@@ -211,7 +211,7 @@ everyDoor("a value of one’s own replaces a computed parameter, and the table s
   });
   assert.match(row.text, /100/);
   assert.equal(row.entered, true);
-  await door.click("Take out zeta(2p) @ 2p2");
+  await door.click("Take it out: zeta(2p) @ 2p2");
   await door.sentence("lines");
   assert.equal(await door.evaluate(() => document.querySelectorAll('[data-path^="/structure/given"]').length), 0);
   assert.deepEqual(door.troubles, []);

@@ -5,7 +5,7 @@ import { everyDoor } from "../driver/door.mjs";
 
 const CAESIUM = "v=1&species=133Cs&configurations.0=6s&nucleus.magnetic_dipole.6s+2S1/2=2298.1579425+MHz&field.flux_density=0.01+T";
 const RUBIDIUM = "v=1&species=Rb&configurations.0=5s&field.flux_density=0.01+T";
-const ALONE = "v=1&level.J=1/2&level.g=2.0025&level.I=7/2&level.A=2298.1579425+MHz&field.flux_density=1e-9+T&field.up_to=0.5+T";
+const ALONE = "v=1&level.J=1/2&level.g=2.0025&level.I=7/2&level.A=2298.1579425+MHz&field.flux_density=0.1+T&field.up_to=0.5+T";
 
 const open = async (door, beginning) => {
   await door.evaluate((words) => {
@@ -44,7 +44,7 @@ everyDoor("the natural isotopes are put in with their shares, and taken out agai
   assert.deepEqual([await value("/isotopes/0/isotope"), await value("/isotopes/1/isotope")], ["85Rb", "87Rb"]);
   assert.match(await value("/isotopes/0/share"), /^72\.1[67]/);
   assert.match(await door.sentence("splitting"), /isotopes/);
-  const add = await door.page.$('[aria-label="Take out isotope 1"]');
+  const add = await door.page.$('[aria-label="Take it out: isotope 1"]');
   await add.evaluate((node) => node.click());
   await door.until(() => document.querySelector('[data-path="/isotopes/0/isotope"]').value === "87Rb" && document.querySelector('[data-path="/isotopes/1/isotope"]') === null);
   assert.deepEqual(door.troubles, []);
@@ -66,11 +66,15 @@ everyDoor("a spin that is no half-integer, an isotope that is not there and a B 
 
 // 9 192 631 770 Hz is the transition between the two hyperfine levels of the ground state of ¹³³Cs that
 // defines the second (SI Brochure, 9th edition, 2.3.1); A = 2298.1579425 MHz is a quarter of it.
-everyDoor("a level alone is enough: the resonance of caesium without field", async (door) => {
+everyDoor("a level alone is enough: the clock point of caesium without field", async (door) => {
   await door.unfold("splitting");
+  await open(door, "Crossings of levels");
+  const [first] = await rows(door, "Crossings of levels");
+  assert.match(first[0], /^Clock point/);
+  assert.match(first[1], /F = 3, M = 0$/);
+  assert.match(first[6], /^9192\.63/);
   await open(door, "Resonance frequencies");
-  const found = await rows(door, "Resonance frequencies");
-  const megahertz = found.flatMap((cells) => cells.slice(2, 3)).map((text) => Number(text.replace("\u2212", "-")));
-  assert.ok(megahertz.some((value) => Math.abs(value - 9192.63177) < 0.01), String(megahertz.slice(0, 8)));
+  assert.ok((await rows(door, "Resonance frequencies")).length > 20);
+  assert.deepEqual(await door.axe(), []);
   assert.deepEqual(door.troubles, []);
 }, { fragment: ALONE });

@@ -58,7 +58,9 @@ function statePanel(group, map, { name, energyFactor: factor }, crossings) {
   const levels = [...new Set(group.map(({ state }) => state.level))];
   const keys = [...new Set(group.map(({ state }) => groupKey(state)))];
   const inside = new Map(group.map(({ state }) => [state.name, state]));
-  const from = Number(reference.toPrecision(10));
+  const spread = Math.max(...group.map(({ state }) => Math.max(...state.energies.map((energy) => Math.abs(energy - reference)))));
+  // What a centre of gravity leaves of nothing is rounding.
+  const from = Math.abs(reference) < 1e-9 * spread ? 0 : Number(reference.toPrecision(10));
   return {
     title: [
       ...(levels.length === 1 ? [...richRuns(levelRich(group[0].state)), { text: ", E" }] : [{ text: "E" }]),
@@ -117,7 +119,7 @@ function componentPanel(map, { name, offsetFactor: factor }, multipole, crossing
       values: component.offsets, slopes: component.slopes, colour: sign.colour, dash: sign.dash, shown: component.strengths.some((strength) => strength > 0),
     };
   }).filter(({ shown }) => shown);
-  const byName = new Map(series.map((each) => [`${each.upper.name} to ${each.lower.name}`, each]));
+  const byName = new Map(series.map((each) => [`${each.upper.name} - ${each.lower.name}`, each]));
   return {
     title: [{ text: "Offset (" }, ...unitOf(name).runs, { text: ")" }], factor, reference: 0, series,
     signs: crossings.flatMap((crossing) => {

@@ -101,10 +101,11 @@ function lineHas(chosen, level) {
   return chosen.slice("line:".length).split("/").length > 0 && (chosen.startsWith(`line:${level}/`) || chosen.includes(`/${level}/`));
 }
 
-// Names of states as they are read.
+// Names of states, and of components by their two states, as they are read.
 function namesIn(answer) {
   const states = new Map(answer.states.map((state) => [state.name, state]));
-  return (key) => ({ name: key, type: "text", value: (row) => row[key], rich: (row) => (states.has(row[key]) ? stateRich(states.get(row[key])) : [row[key] ?? ""]) });
+  const one = (name) => (states.has(name) ? stateRich(states.get(name)) : [name]);
+  return (key) => ({ name: key, type: "text", value: (row) => row[key], rich: (row) => row[key].split(" - ").flatMap((name, i) => (i === 0 ? one(name) : [" – ", ...one(name)])) });
 }
 
 export function crossingsTable(rows, answer, context, name) {
@@ -123,11 +124,12 @@ export function crossingsTable(rows, answer, context, name) {
 }
 
 export function componentCrossingsTable(rows, answer, context) {
+  const end = namesIn(answer);
   return dataTable({
     caption: "Where components meet, and where they are farthest apart", rows, context, file: "crossings of components", sorting: sortings.component_crossings,
     columns: [
       { name: "what", type: "text", value: (row) => kindWords(row.kind) },
-      { name: "first", type: "text", value: (row) => row.first }, { name: "second", type: "text", value: (row) => row.second },
+      end("first"), end("second"),
       { name: "field", unit: "T", type: "number", kind: "computed", value: (row) => row.tesla },
       has(rows, "apart") && { name: "apart", unit: "cm-1", type: "number", kind: "computed", value: (row) => row.apart },
     ].filter(Boolean),
