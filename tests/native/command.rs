@@ -106,3 +106,32 @@ fn the_command_answers_streams_faults_and_records() {
     assert_eq!(command(&["recheck", hollow.to_str().unwrap()], "").0, 2);
     std::fs::remove_dir_all(folder).unwrap();
 }
+
+/// The energies of ¹³³Cs in a field from the command, by the formula of Breit & Rabi, Phys. Rev. 38, 2082 (1931), for
+/// the two states of largest |M|: E = 7A/4 ± (g_J μ_B/2 − 7 g_I μ_N/2) B.
+#[test]
+fn the_command_splits_a_level_with_its_nucleus() {
+    let sheet = r#"{"rungline":1,"species":"133Cs","configurations":["6s"],
+        "nucleus":{"spin":"7/2","g_I":"0.7377","magnetic_dipole":{"6s 2S1/2":"2298.1579425 MHz"}},
+        "field":{"flux_density":"0.01 T"}}"#;
+    let (code, out, err) = command(&["answer", "-", "--question", "splitting"], sheet);
+    assert_eq!((code, err.as_str()), (0, ""));
+    let answer: Value = serde_json::from_str(&out).unwrap();
+    let states = answer["answers"]["splitting"]["states"].as_array().unwrap();
+    assert_eq!(states.len(), 16);
+    let (mhz, mu_b, mu_n) = (
+        29_979.245_8,
+        0.466_864_477_19,
+        7.622_593_218_8 / 29_979.245_8,
+    );
+    for (m, sign) in [("4", 1.0), ("-4", -1.0)] {
+        let state = states.iter().find(|s| s["M"] == m).unwrap();
+        let moment = 2.002_319_304_36 / 2.0 * mu_b - 3.5 * 0.7377 * mu_n;
+        let expected = 1.75 * 2_298.157_942_5 / mhz + sign * moment * 0.01;
+        let found = state["energy"].as_f64().unwrap();
+        assert!(
+            (found / expected - 1.0).abs() < 1e-9,
+            "{m}: {found} {expected}"
+        );
+    }
+}

@@ -124,7 +124,7 @@ pub fn sentence(told: &Told) -> Rich {
         Kind::Computed,
     );
     match told.linear {
-        Some(linear) if linear.largest_difference > 0.0 => say
+        Some(linear) if linear.largest_difference > 1e-3 * widest => say
             .say(", and a pattern in proportion to the field would be off by up to ")
             .number(linear.largest_difference, Some("cm-1"), Kind::Computed)
             .say("."),
