@@ -70,6 +70,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
     // With a line the upper end first, as one reads it.
     sort_by(&mut states, |a, b| side_order(a).cmp(&side_order(b)));
     let positions = positions(&components);
+    let groups = groups(&components);
     let pattern = describe(&components, positions, &line);
     let linear = linear(field, &components, searched.departs_at);
     let nucleus = nucleus_row(document, &ready);
@@ -91,6 +92,8 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         line: line.as_ref(),
         states: &states,
         components: &components,
+        groups,
+        positions,
         pattern: &pattern,
         linear: linear.as_ref(),
         searched: &searched,
@@ -111,7 +114,10 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
             seen: c.seen,
         })
         .collect();
+    let plain = Splitting::new("full", around);
     Ok(Splitting {
+        conversions: plain.conversions.at(nm),
+        groups,
         field: field.map(|field| field_of(field, keeps(field, &shown))),
         line,
         diamagnetic,
@@ -129,7 +135,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         component_crossings_left_out: searched.component_crossings_left_out,
         resonances,
         resonances_left_out,
-        ..Splitting::new("full", around)
+        ..plain
     })
 }
 
@@ -437,6 +443,30 @@ fn positions(components: &[ComponentRow]) -> usize {
         last = Some((polarisation, offset));
     }
     count
+}
+
+/// Components below this share of the strongest one are faint: neither the largest offset nor the groups of a
+/// pattern count them.
+pub const FAINT: f64 = 0.01;
+
+/// The components that are not faint.
+pub fn bright(components: &[ComponentRow]) -> impl Iterator<Item = &ComponentRow> {
+    let strengths = components.iter().map(|c| c.strength);
+    let strongest = strengths.fold(0.0_f64, f64::max);
+    let is_bright = move |c: &&ComponentRow| c.strength >= FAINT * strongest;
+    components.iter().filter(is_bright)
+}
+
+/// Groups of the bright components, a twentieth of their spread or more apart.
+fn groups(components: &[ComponentRow]) -> usize {
+    let mut offsets: Vec<f64> = bright(components).map(|c| c.offset).collect();
+    sort_by(&mut offsets, f64::total_cmp);
+    let (Some(first), Some(last)) = (offsets.first(), offsets.last()) else {
+        return 0;
+    };
+    let apart = (last - first) / 20.0;
+    let gap = |pair: &&[f64]| matches!(pair, [a, b] if b - a > apart);
+    1 + offsets.windows(2).filter(gap).count()
 }
 
 /// How near a normal triplet's components lie to 0 and ±μ_B B, in μ_B B.

@@ -5,6 +5,7 @@ use crate::radiation::Multipole;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::rich::Kind;
+use super::splitting_full::bright;
 use super::splitting_rows::{DiamagneticRow, LineOf};
 use super::splitting_searched::MOST_COMPONENTS;
 use super::splitting_words::Told;
@@ -54,6 +55,9 @@ pub fn limits(told: &Told) -> Vec<String> {
     }
     if ready.sets.iter().any(|set| set.reduced) {
         limits.push("With this nucleus the whole set would have too many states: the field mixes only the levels of the line's terms.".to_owned());
+    }
+    if bright(told.components).count() < told.components.len() {
+        limits.push("Components below 1 % of the strongest are listed, but neither the largest offset nor the groups in the sentence count them.".to_owned());
     }
     limits.extend(of_nuclei(document));
     limits.extend(told.searched.missing.clone());

@@ -119,14 +119,17 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         offset: c.offset,
         seen: c.seen,
     });
+    let plain = Splitting::new("linear", around);
     Ok(Splitting {
+        conversions: plain.conversions.at(nm),
+        groups: positions,
         field: Some(field_of(field, keeps(field, &shown.collect::<Vec<_>>()))),
         line: Some(line),
         states,
         components,
         positions,
         pattern: described,
-        ..Splitting::new("linear", around)
+        ..plain
     })
 }
 

@@ -50,6 +50,10 @@ struct MapState {
     m: TwiceJ,
     #[serde(rename = "F")]
     f: Option<TwiceJ>,
+    #[serde(rename = "M_J", skip_serializing_if = "Option::is_none")]
+    m_j: Option<TwiceJ>,
+    #[serde(rename = "M_I", skip_serializing_if = "Option::is_none")]
+    m_i: Option<TwiceJ>,
     side: Option<&'static str>,
     isotope: Option<Shared>,
     /// cm⁻¹, of the level without field and nucleus.
@@ -154,6 +158,8 @@ fn outline(document: &Document, ready: &Prepared) -> Map {
                     level: level.label.clone(),
                     m: TwiceJ::from_doubled(state.two_m),
                     f: state.two_f.map(TwiceJ::from_doubled),
+                    m_j: state.two_m_i.and(state.two_m_j).map(TwiceJ::from_doubled),
+                    m_i: state.two_m_i.map(TwiceJ::from_doubled),
                     side: level.side(),
                     isotope: isotope.clone(),
                     level_energy: level.energy,

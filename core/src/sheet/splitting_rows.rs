@@ -2,8 +2,10 @@
 
 use serde::Serialize;
 
+use crate::constants::BOHR_MAGNETON_WAVENUMBER;
 use crate::quantity::TwiceJ;
 use crate::radiation::Multipole;
+use crate::splitting::in_field::MHZ_PER_WAVENUMBER;
 
 use super::answer::Around;
 use super::levels_rows::Shared;
@@ -27,7 +29,10 @@ pub struct Splitting {
     pub no_components: Option<String>,
     pub linear: Option<LinearRow>,
     pub positions: usize,
+    /// Groups of the components that are not faint.
+    pub groups: usize,
     pub pattern: String,
+    pub conversions: Conversions,
     pub crossings: Vec<CrossingRow>,
     pub crossings_left_out: usize,
     pub component_crossings: Vec<ComponentCrossingRow>,
@@ -52,6 +57,12 @@ impl Splitting {
             no_components: None,
             linear: None,
             positions: 0,
+            groups: 0,
+            conversions: Conversions {
+                ghz_per_wavenumber: MHZ_PER_WAVENUMBER / 1e3,
+                mu_b_per_tesla: BOHR_MAGNETON_WAVENUMBER.value,
+                pm_per_wavenumber: None,
+            },
             pattern: String::new(),
             crossings: Vec::new(),
             crossings_left_out: 0,
@@ -59,6 +70,27 @@ impl Splitting {
             component_crossings_left_out: 0,
             resonances: Vec::new(),
             resonances_left_out: 0,
+        }
+    }
+}
+
+/// Factors to other units, for offsets that the page interpolates.
+#[derive(Clone, Copy, Debug, Serialize)]
+pub struct Conversions {
+    pub ghz_per_wavenumber: f64,
+    /// cm⁻¹/T.
+    pub mu_b_per_tesla: f64,
+    /// For small offsets; nothing without a wavelength.
+    pub pm_per_wavenumber: Option<f64>,
+}
+
+impl Conversions {
+    /// With the line's vacuum wavelength in nm.
+    #[must_use]
+    pub fn at(self, nm: Option<f64>) -> Self {
+        Conversions {
+            pm_per_wavenumber: nm.map(|nm| -1e-4 * nm * nm),
+            ..self
         }
     }
 }

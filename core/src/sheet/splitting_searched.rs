@@ -258,7 +258,7 @@ impl SearchOf<'_> {
         Ok(())
     }
 
-    /// "upper state - lower state".
+    /// "upper state to lower state".
     fn component(
         &self,
         join: &Join,
@@ -268,6 +268,6 @@ impl SearchOf<'_> {
         let name = |end: &(&super::splitting_sets::SetLevel, &State, usize)| {
             state_name(end.0, end.1, self.isotope.as_ref())
         };
-        Some(format!("{} - {}", name(&ends.upper), name(&ends.lower)))
+        Some(format!("{} to {}", name(&ends.upper), name(&ends.lower)))
     }
 }

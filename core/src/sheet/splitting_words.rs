@@ -8,6 +8,7 @@ use super::answer::Working;
 use super::document::Document;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
 use super::rich::{Kind, Rich};
+use super::splitting_full::bright;
 use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, StateRow};
 use super::splitting_searched::Searched;
 use super::splitting_sets::Prepared;
@@ -19,6 +20,8 @@ pub struct Told<'a> {
     pub line: Option<&'a LineOf>,
     pub states: &'a [StateRow],
     pub components: &'a [ComponentRow],
+    pub groups: usize,
+    pub positions: usize,
     pub pattern: &'a str,
     pub linear: Option<&'a LinearRow>,
     pub searched: &'a Searched,
@@ -31,7 +34,7 @@ impl Told<'_> {
     }
 
     fn widest(&self) -> f64 {
-        let offsets = self.components.iter().map(|c| c.offset.abs());
+        let offsets = bright(self.components).map(|c| c.offset.abs());
         offsets.fold(0.0, f64::max)
     }
 
@@ -114,6 +117,12 @@ pub fn sentence(told: &Told) -> Rich {
         ));
     }
     let say = named(start("Without a field, ")).say(format!(" {verb} into {}", told.pattern));
+    let say = match told.groups {
+        groups if groups > 1 && 2 * groups <= told.positions && groups < 10 => {
+            say.say(format!(" in {groups} groups"))
+        }
+        _ => say,
+    };
     let widest = told.widest();
     if widest == 0.0 {
         return say.say(", which stays where the line is.");
