@@ -59,7 +59,6 @@ fn a_sheet_with_all_keys_has_no_fault() {
     sheet["field"] = json!({"flux_density": "0.5 T", "up_to": "1 T", "view": "along", "diamagnetic": true,
         "tolerance": "0.01 cm-1", "polariser": "left circular"});
     sheet["nucleus"]["g_I"] = json!("1.8342");
-    sheet["nucleus"]["estimate"] = json!(true);
     sheet["isotopes"] = json!([
         {"isotope": "85Rb", "share": "72.17 %", "shift": "78 MHz", "magnetic_dipole": {"5s 2S1/2": "1011.91 MHz"}},
         {"isotope": "Rb-87"}

@@ -55,8 +55,6 @@ pub struct Document {
     pub nuclei: Vec<Nuclear>,
     /// Whether these are isotopes that the sheet lists.
     pub isotopes_listed: bool,
-    /// Whether hyperfine constants that are not entered are estimated.
-    pub estimate_constants: bool,
     /// A level that needs no configuration.
     pub level_alone: Option<LevelAlone>,
     /// Keys that no question of this version uses.

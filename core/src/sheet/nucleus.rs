@@ -66,10 +66,6 @@ impl Document {
     /// Reads `nucleus` and `isotopes` once atom and configurations are known.
     pub(super) fn read_nuclei(&mut self, json: &Json) {
         let single = json.get("nucleus").map(|nucleus| self.single(nucleus));
-        self.estimate_constants = matches!(
-            json.get("nucleus").and_then(|n| n.get("estimate")),
-            Some(Json::Bool(true))
-        );
         let listed = match json.get("isotopes") {
             Some(Json::List(items)) if !items.is_empty() => self.isotopes(items),
             _ => {

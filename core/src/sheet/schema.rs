@@ -146,7 +146,6 @@ pub const SHEET: Shape = Group(&[
             ("g_I", Reading),
             ("magnetic_dipole", CONSTANTS),
             ("electric_quadrupole", CONSTANTS),
-            ("estimate", Bool),
         ]),
     ),
     (

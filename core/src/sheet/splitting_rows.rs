@@ -155,7 +155,7 @@ pub struct ConstantRow {
     pub a: Option<f64>,
     #[serde(rename = "B_MHz")]
     pub b: Option<f64>,
-    /// "entered", "scaled" from another isotope, "estimated", or "zero".
+    /// "entered", "scaled" from another isotope, or "zero".
     pub kind: &'static str,
 }
 

@@ -123,19 +123,7 @@ impl RacahSum {
             let negative = negative != (terms & 1 == 0);
             return Some(i128::from(if negative { -sum } else { sum }));
         }
-        let [lone, second, third] = widths;
-        let narrow = width(outer) < 64 && lone < 64 && second + third < 64;
-        if BY_RESIDUE && bits <= RESIDUE_BITS && narrow {
-            let (mut residue, mut nearly) = (0_u64, 0.0);
-            for ((&c0, &c1), (&c2, &c3)) in entries {
-                let pair = c2 * c3;
-                residue = c0.wrapping_mul(c1).wrapping_mul(pair).wrapping_sub(residue);
-                nearly = real(c0) * real(c1) * real(pair) - nearly;
-            }
-            let sum = from_residue(residue, nearly);
-            let negative = negative != (terms & 1 == 0);
-            return Some(if negative { -sum } else { sum });
-        }
+        let [_, second, third] = widths;
         if bits > 127 || second + third > 64 {
             return None;
         }
@@ -179,35 +167,6 @@ pub(super) fn step(term: &mut Natural, factor: i64, divisor: i64) {
     term.divide_small(u32::try_from(divisor).unwrap_or(1));
 }
 
-/// Whether S₀ beyond 64 bits is had from its residue, by far faster where the machine multiplies no
-/// 64 bits to 128: in a browser. The integer is the same; tests go both ways on every machine.
-const BY_RESIDUE: bool = cfg!(any(test, target_arch = "wasm32"));
-
-/// Up to so many binary digits of all terms together, S₀ follows from its residue and its rounded value.
-///
-/// A term rounds five times and the sum of T ≤ 68 terms T times, each by 2⁻⁵³ of Σ|terms| < 2^107 at
-/// most: the rounded value is off by less than 2⁷ · 2^(107−53) = 2⁶¹.
-const RESIDUE_BITS: u32 = 107;
-
-/// The integer with this residue modulo 2⁶⁴ that is nearest to a value off by less than 2⁶².
-///
-/// 64-bit multiplication leaves the residue and plain floating point the value; a browser has both,
-/// but no product of 128 bits.
-#[inline]
-fn from_residue(residue: u64, nearly: f64) -> i128 {
-    const WRAP: f64 = 18_446_744_073_709_551_616.0;
-    let low = residue as i64;
-    let wraps = (nearly - low as f64) / WRAP;
-    let wraps = (wraps + 0.5_f64.copysign(wraps)) as i64;
-    (i128::from(wraps) << 64) + i128::from(low)
-}
-
-/// A number below 2⁶³: a browser converts signed ones at once.
-#[inline]
-fn real(value: u64) -> f64 {
-    value as i64 as f64
-}
-
 /// The nearest number of 53 bits; most sums fit 64 bits, which convert at once.
 #[inline]
 pub(super) fn nearest(sum: i128) -> f64 {
@@ -224,23 +183,6 @@ pub(super) fn width(value: u64) -> u32 {
 mod tests {
     use super::*;
     use crate::numerics::binomial::triangle;
-
-    #[test]
-    fn an_integer_follows_from_its_residue() {
-        let large = (1_i128 << 106) + 12_345;
-        for exact in [0, 1, 1 << 63, (1 << 64) - 1, 3 << 90, large] {
-            for sum in [exact, -exact] {
-                // As far off as the bound of the rounding allows.
-                for off in [
-                    0.0,
-                    2_305_843_009_213_693_952.0,
-                    -2_305_843_009_213_693_952.0,
-                ] {
-                    assert_eq!(from_residue(sum as u64, sum as f64 + off), sum);
-                }
-            }
-        }
-    }
 
     /// In 64 bits, in 128 bits and in digits, near the bounds between them and on both sides.
     #[test]
