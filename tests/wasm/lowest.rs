@@ -3,13 +3,13 @@
 /// Energies and components of the lowest levels of large J by iteration: two configurations that mix, and
 /// one with f electrons.
 fn lowest_levels() -> Vec<f64> {
-    let cases: [(&[u8], Vec<Vec<u32>>, i32); 2] = [
-        (&[2, 0, 1], vec![vec![5, 1, 1], vec![6, 0, 1]], 5),
-        (&[3, 2, 0], vec![vec![4, 1, 1]], 8),
+    let cases = [
+        ([2, 0, 1], vec![vec![5, 1, 1], vec![6, 0, 1]], 5),
+        ([3, 2, 0], vec![vec![4, 1, 1]], 8),
     ];
     let mut found = Vec::new();
     for (shells, configurations, two_j) in cases {
-        let basis = Basis::new(shells, &configurations).expect("a basis");
+        let basis = Basis::new(&shells, &configurations).expect("a basis");
         let own = Hamiltonian::new(basis).expect("coefficients");
         let values = own.values(|parameter| match parameter.integral {
             Integral::Average => 10_000.0 * parameter.first as f64,

@@ -1,4 +1,4 @@
-// The one file's own script: unpacks the worker, the core and the page's script, which stand after it as
+// The one file's own script: unpacks the rest of the style, the worker, the core and the page's script, which stand after it as
 // text in pieces, while the rest of the file is still being read, and starts each as soon as it can.
 
 import { CannotStart, showCannotStart } from "./cannot-start.js";
@@ -46,15 +46,24 @@ async function compiled(response) {
   }
 }
 
+// The content policy knows the style's hash too.
+function addStyle(text) {
+  const style = document.createElement("style");
+  style.textContent = text;
+  document.head.append(style);
+}
+
 async function start() {
   if (typeof DecompressionStream !== "function") throw new CannotStart("broken", "This browser has no DecompressionStream.");
-  const parts = { worker: part("text/javascript"), core: part("application/wasm"), app: part("text/javascript") };
+  const parts = { style: part("text/css"), worker: part("text/javascript"), core: part("application/wasm"), app: part("text/javascript") };
   feed(parts);
   const core = compiled(parts.core.unpacked);
   const app = parts.app.unpacked.text();
+  const styled = parts.style.unpacked.text().then(addStyle);
   // Each is awaited below; that one fails while another is awaited is no fault of its own.
   core.catch(() => {});
   app.catch(() => {});
+  styled.catch(() => {});
   // The policy is made once, and its rule for scripts knows but one text.
   let text = null;
   const policy = scriptPolicy((given) => {
@@ -64,6 +73,7 @@ async function start() {
   const workers = new WorkerStarter(await parts.worker.unpacked.text());
   core.then((module) => workers.prepare(module), showCannotStart);
   text = await app;
+  await styled;
   // The content policy knows the script's hash: no other text would run.
   const script = document.createElement("script");
   script.text = policy?.createScript(text) ?? text;

@@ -46,7 +46,7 @@ const folder = mkdtempSync(join(tmpdir(), "rungline-cut-"));
 after(() => rmSync(folder, { recursive: true, force: true }));
 const whole = readFileSync(join(SITE, "rungline.html"));
 
-for (const part of ["worker", "core", "app"]) {
+for (const part of ["style", "worker", "core", "app"]) {
   // In the middle of the part's last piece: what stands before it is whole, the rest is missing.
   const tag = `data-part="${part}" data-last>`;
   const begin = whole.indexOf(tag) + tag.length;

@@ -50,7 +50,9 @@ pub fn assemble(paths: &Paths, profile: Profile, node: &Node, core: &Core) -> Ou
         work: &work,
     };
     let worker = bundler.script("worker.js", None)?;
-    let style = bundler.style()?;
+    let style = bundler.style("main.css")?;
+    let first_style = bundler.style("first.css")?;
+    let rest_style = bundler.style("rest.css")?;
     let examples = examples(paths)?;
     let constants = |door: &str, wasm_name: Option<&str>| {
         BTreeMap::from([
@@ -71,13 +73,14 @@ pub fn assemble(paths: &Paths, profile: Profile, node: &Node, core: &Core) -> Ou
     let unpack = bundler.script("unpack.js", None)?;
     let quick = profile == Profile::Quick;
     let packed = [
+        ("style", gzip(rest_style.as_bytes(), quick)?),
         ("worker", gzip(worker.as_bytes(), quick)?),
         ("core", gzip(&wasm, quick)?),
         ("app", gzip(file_script.as_bytes(), quick)?),
     ];
     let one_file = OneFile {
         page: &page,
-        style: &style,
+        styles: [&first_style, &rest_style],
         unpack: &unpack,
         script: &file_script,
         packed: &packed,
@@ -115,7 +118,7 @@ pub fn assemble(paths: &Paths, profile: Profile, node: &Node, core: &Core) -> Ou
     site.insert("sw.js".to_string(), keeper.into_bytes());
 
     let gzip_bytes = gzip(page.as_bytes(), quick)?.len()
-        + gzip(style.as_bytes(), quick)?.len()
+        + gzip(first_style.as_bytes(), quick)?.len()
         + gzip(unpack.as_bytes(), quick)?.len()
         + packed.iter().map(|(_, part)| part.len()).sum::<usize>();
     let built = Built {
@@ -167,9 +170,9 @@ impl Bundler<'_> {
         read(&output)
     }
 
-    fn style(&self) -> Outcome<String> {
-        let output = self.work.join("main.css");
-        let source = self.paths.www.join("style").join("main.css");
+    fn style(&self, name: &str) -> Outcome<String> {
+        let output = self.work.join(name);
+        let source = self.paths.www.join("style").join(name);
         capture(&mut self.esbuild(&source, &output), Duration::from_secs(60))?;
         read(&output)
     }
@@ -212,7 +215,8 @@ fn examples(paths: &Paths) -> Outcome<Value> {
 /// What the one file is made of.
 struct OneFile<'a> {
     page: &'a str,
-    style: &'a str,
+    /// The style that stands in it as it is, and the one that is unpacked.
+    styles: [&'a str; 2],
     /// The script that stands in it as it is, and unpacks the others.
     unpack: &'a str,
     /// The page's script, which runs once it is unpacked.
@@ -223,9 +227,10 @@ struct OneFile<'a> {
 
 impl OneFile<'_> {
     fn text(&self) -> Outcome<String> {
+        let [style, _] = self.styles;
         for (what, text, end) in [
             ("script", self.unpack, "</script"),
-            ("style", self.style, "</style"),
+            ("style", style, "</style"),
         ] {
             if text.to_lowercase().contains(end) || text.contains("<!--") {
                 return Err(format!(
@@ -234,9 +239,10 @@ impl OneFile<'_> {
             }
         }
         let scripts = [self.unpack, self.script].map(|script| integrity(script.as_bytes()));
-        let policy = policy::one_file(&scripts, &integrity(self.style.as_bytes()));
+        let styles = self.styles.map(|style| integrity(style.as_bytes()));
+        let policy = policy::one_file(&scripts, &styles);
         let page = once(self.page, CHARSET, &with_policy(&policy))?;
-        let page = once(&page, STYLE, &format!("<style>{}</style>", self.style))?;
+        let page = once(&page, STYLE, &format!("<style>{style}</style>"))?;
         let page = once(&page, SCRIPT, "")?;
         let pieces: String = self
             .packed

@@ -3,11 +3,15 @@
 //! Both start the worker from a Blob, because a worker from an address does not inherit a policy
 //! set by a meta element; `frame-ancestors` is not allowed there.
 
-/// Policy of the one file: only the inline scripts and style with these hashes.
-pub fn one_file(scripts: &[String], style: &str) -> String {
-    let scripts: String = scripts.iter().map(|hash| format!("'{hash}' ")).collect();
+/// Policy of the one file: only the inline scripts and styles with these hashes.
+pub fn one_file(scripts: &[String], styles: &[String]) -> String {
+    let quoted = |hashes: &[String]| -> Vec<String> {
+        hashes.iter().map(|hash| format!("'{hash}'")).collect()
+    };
+    let scripts = quoted(scripts).join(" ");
+    let styles = quoted(styles).join(" ");
     format!(
-        "default-src 'none'; script-src {scripts}'wasm-unsafe-eval'; style-src '{style}'; \
+        "default-src 'none'; script-src {scripts} 'wasm-unsafe-eval'; style-src {styles}; \
          worker-src blob:; img-src data: blob:; base-uri 'none'; form-action 'none'; \
          require-trusted-types-for 'script'; trusted-types rungline"
     )
