@@ -109,7 +109,8 @@ impl Linear {
                 high = up_to;
             }
             if departs(high)? {
-                while high - low > 1e-9 * high {
+                // Levels that are alike without a field part from it in the weakest one.
+                while low > 0.0 && high - low > 1e-9 * high {
                     let middle = 0.5 * (low + high);
                     if departs(middle)? {
                         high = middle;
