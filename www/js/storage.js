@@ -1,8 +1,9 @@
 // The browser's storage. Every access may be refused or full; nothing here throws.
 
+import { SETTINGS_KEY as SETTINGS } from "./theme.js";
+
 const OWN = "rungline.sheet";
 const VISIT = "rungline.visit";
-const SETTINGS = "rungline.settings";
 const VIEW = "rungline.view";
 
 /** Keeps the sheet, the settings and what is folded out. `available` is false once refused. */

@@ -3,6 +3,7 @@
 
 import { CannotStart, showCannotStart } from "./cannot-start.js";
 import { fromPrintable } from "./printable.js";
+import { paintKeptTheme } from "./theme.js";
 import { scriptPolicy } from "./trusted.js";
 import { WorkerStarter } from "./worker-starter.js";
 
@@ -82,4 +83,5 @@ async function start() {
   script.remove();
 }
 
+paintKeptTheme();
 start().catch(showCannotStart);

@@ -16,7 +16,7 @@ async function show(door, example) {
   await door.evaluate(() => {
     for (const button of document.querySelectorAll('.rung-button[aria-expanded="false"], #atom[aria-expanded="false"]')) button.click();
   });
-  await door.sentence("states");
+  await door.sentence(example.level ? "splitting" : "states");
   await door.until(() => [...document.querySelectorAll(".rung:not(#record)")].every((rung) => rung.dataset.state === "lacks"
     || (rung.dataset.state === "answered" && rung.querySelector(".evidence-body").childElementCount > 0)));
 }
@@ -41,6 +41,8 @@ everyDoor("axe finds nothing with every panel open, at fault and lacking", async
   assert.deepEqual(await door.axe(), []);
   await door.click("Chart of the elements");
   await door.until(() => document.querySelector(".chart-box").childElementCount > 0);
+  // The click has scrolled the page; what is half under the sticky head is no target of its own size there.
+  await door.evaluate(() => scrollTo(0, 0));
   assert.deepEqual(await door.axe(), []);
   await door.type("Configuration", "2p7");
   await door.press("Tab");
