@@ -4,6 +4,7 @@ pub mod anderson;
 pub mod banded;
 pub mod banded_eigen;
 pub mod binomial;
+pub mod connected;
 pub mod gauss_legendre;
 pub mod generalised;
 pub mod lanes;

@@ -6,7 +6,8 @@ use super::part::{Part, PartField};
 use super::projections::Factors;
 use super::rows::{Between, Block, blocks};
 use crate::constants::BOHR_MAGNETON_WAVENUMBER;
-use crate::numerics::order::{sort_by, sort_by_key};
+use crate::numerics::connected::connected;
+use crate::numerics::order::sort_by_key;
 use crate::problem::Problem;
 
 /// The strongest field, tesla.
@@ -325,7 +326,14 @@ impl<'a> Builder<'a> {
             });
             matrix
         });
-        for places in connected(size, &zeeman, diamagnetic.as_deref()) {
+        let linked = |row: usize, other: usize| {
+            let is_there = |matrix: &[f64]| {
+                let entry = matrix.get(row * size + other);
+                entry.is_some_and(|&entry| entry != 0.0)
+            };
+            is_there(&zeeman) || diamagnetic.as_deref().is_some_and(is_there)
+        };
+        for places in connected(size, linked) {
             let mut part = self.part(&block, &places, &zeeman, diamagnetic.as_deref());
             part.name(self.scale)?;
             parts.push(part);
@@ -387,38 +395,6 @@ fn add(matrix: &mut [f64], size: usize, row: usize, column: usize, value: f64) {
     {
         *entry += value;
     }
-}
-
-/// Rows that a matrix connects, each part rising, in the order of their first rows.
-fn connected(size: usize, matrix: &[f64], other: Option<&[f64]>) -> Vec<Vec<usize>> {
-    let mut seen = vec![false; size];
-    let mut found = Vec::new();
-    for start in 0..size {
-        if seen.get(start) != Some(&false) {
-            continue;
-        }
-        let mut part = Vec::new();
-        let mut open = vec![start];
-        if let Some(mark) = seen.get_mut(start) {
-            *mark = true;
-        }
-        while let Some(row) = open.pop() {
-            part.push(row);
-            let range = row * size..(row + 1) * size;
-            let own = matrix.get(range.clone()).unwrap_or(&[]);
-            let more = other.and_then(|other| other.get(range)).unwrap_or(&[]);
-            for (place, mark) in seen.iter_mut().enumerate() {
-                let is_there = |row: &[f64]| row.get(place).is_some_and(|&entry| entry != 0.0);
-                if !*mark && (is_there(own) || is_there(more)) {
-                    *mark = true;
-                    open.push(place);
-                }
-            }
-        }
-        sort_by(&mut part, usize::cmp);
-        found.push(part);
-    }
-    found
 }
 
 /// # Errors

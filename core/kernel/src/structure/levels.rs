@@ -5,6 +5,7 @@ use super::bounds::MOST_ROWS;
 use super::hamiltonian::{Hamiltonian, Rows};
 use super::lowest::{LOWEST_LEVELS, lowest_of_j};
 use super::ties::{SAME, untie};
+use crate::numerics::connected::connected;
 use crate::numerics::order::{sort_by, sort_by_key};
 use crate::numerics::symmetric::eigensystem;
 use crate::problem::Problem;
@@ -148,7 +149,12 @@ pub fn solve_j(
     let matrix = hamiltonian.matrix(rows, values)?;
     let size = rows.states.len();
     let mut levels = Vec::with_capacity(size);
-    for part in parts(&matrix) {
+    // What is not mixed stays pure, however close.
+    let linked = |row: usize, other: usize| {
+        let at = (row.max(other), row.min(other));
+        matrix.get(at).is_some_and(|&entry| entry != 0.0)
+    };
+    for part in connected(size, linked) {
         let inner = DMatrix::from_fn(part.len(), part.len(), |row, column| {
             match (part.get(row), part.get(column)) {
                 (Some(&row), Some(&column)) if column <= row => {
@@ -180,36 +186,6 @@ pub fn solve_j(
     }
     sort_by(&mut levels, |a, b| a.energy.total_cmp(&b.energy));
     Ok(levels)
-}
-
-/// Rows that the matrix connects, each part rising: what is not mixed stays pure, however close.
-fn parts(matrix: &DMatrix<f64>) -> Vec<Vec<usize>> {
-    let size = matrix.nrows();
-    let mut seen = vec![false; size];
-    let mut found = Vec::new();
-    for start in 0..size {
-        if seen.get(start) != Some(&false) {
-            continue;
-        }
-        let mut part = Vec::new();
-        let mut open = vec![start];
-        if let Some(mark) = seen.get_mut(start) {
-            *mark = true;
-        }
-        while let Some(row) = open.pop() {
-            part.push(row);
-            for (other, mark) in seen.iter_mut().enumerate() {
-                let at = (row.max(other), row.min(other));
-                if !*mark && matrix.get(at).is_some_and(|&entry| entry != 0.0) {
-                    *mark = true;
-                    open.push(other);
-                }
-            }
-        }
-        crate::numerics::order::sort(&mut part);
-        found.push(part);
-    }
-    found
 }
 
 /// By energy, and what cannot be told apart by J and largest component.
