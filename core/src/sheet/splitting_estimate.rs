@@ -4,8 +4,9 @@ use super::document::Document;
 use super::nucleus::Nuclear;
 use super::solved;
 use super::splitting::is_full;
+use super::splitting_manifolds::MOST_MULTIPLICATIONS;
 use super::splitting_searched::fields_of_search;
-use super::splitting_sets::{MOST_MULTIPLICATIONS, kept};
+use super::splitting_sets::kept;
 
 /// Multiplications of one second in a browser.
 const PER_SECOND: f64 = 1e9;

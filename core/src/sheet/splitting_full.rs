@@ -4,7 +4,6 @@ use crate::constants::BOHR_MAGNETON_WAVENUMBER;
 use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
-use crate::radiation::Multipole;
 use crate::splitting::in_field::{AtField, MHZ_PER_WAVENUMBER, Split, State};
 use crate::splitting::seen::{Polariser, weight};
 use crate::splitting::weak_field::pm_offset;
@@ -13,17 +12,19 @@ use super::document::Document;
 use super::field::Field;
 use super::levels_rows::Shared;
 use super::nucleus::Nuclear;
-use super::rich::Rich;
 use super::splitting::{cautions, field_of};
 use super::splitting_joins::Join;
 use super::splitting_keeps::{Shown, keeps};
 use super::splitting_limits::limits;
 use super::splitting_line::line_of;
+use super::splitting_names::{state_name, state_rich};
 use super::splitting_nuclei::{isotope_rows, nucleus_row};
+use super::splitting_pattern::{describe, groups, positions};
 use super::splitting_resonances;
 use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, Splitting, StateRow};
 use super::splitting_sets::{Pass, Prepared, Set, SetLevel, prepared};
-use super::splitting_words::{Told, kinds, sentence, working};
+use super::splitting_words::{Told, kinds, sentence};
+use super::splitting_working::working;
 use super::watch::Watch;
 
 /// Strengths below this share of the whole are rounding.
@@ -178,40 +179,6 @@ pub fn shift_of(document: &Document, pass: &Pass) -> f64 {
     own.map_or(0.0, |nuclear| nuclear.shift / MHZ_PER_WAVENUMBER)
 }
 
-/// What a state is called: level, F or M_J and M_I, M.
-pub fn state_name(level: &SetLevel, state: &State, isotope: Option<&Shared>) -> String {
-    let isotope = isotope.map_or(String::new(), |name| format!("{} ", name.0));
-    format!("{isotope}{} {}", level.label.0, momenta(state))
-}
-
-fn momenta(state: &State) -> String {
-    let j = TwiceJ::from_doubled;
-    match (state.two_f, state.two_m_j, state.two_m_i) {
-        (Some(f), ..) => format!("F {} M {}", j(f), j(state.two_m)),
-        (None, Some(m_j), Some(m_i)) => format!("M_J {} M_I {}", j(m_j), j(m_i)),
-        _ => format!("M {}", j(state.two_m)),
-    }
-}
-
-/// The same as it is read: "F = 2, M = −1".
-fn momenta_words(state: &State) -> String {
-    let words = momenta(state);
-    let mut parts = Vec::new();
-    let mut words = words.split(' ');
-    while let (Some(name), Some(value)) = (words.next(), words.next()) {
-        parts.push(format!("{name} = {}", value.replace('-', "−")));
-    }
-    parts.join(", ")
-}
-
-/// The same, typeset.
-pub fn state_rich(level: &SetLevel, state: &State) -> Rich {
-    level
-        .rich
-        .clone()
-        .say(format!(", {}", momenta_words(state)))
-}
-
 fn state_row(
     document: &Document,
     set: &Set,
@@ -233,10 +200,7 @@ fn state_row(
     let coupled = state.two_m_i.is_some();
     Some(StateRow {
         name: state_name(level, state, isotope),
-        rich: level
-            .rich
-            .clone()
-            .say(format!(", {}", momenta_words(state))),
+        rich: state_rich(level, state),
         configuration: level.configuration.clone(),
         level: level.label.clone(),
         j: level.j,
@@ -413,82 +377,6 @@ impl Rows<'_> {
             linear,
             isotope: self.isotope.clone(),
         })
-    }
-}
-
-/// Offsets this close, as a share of the largest, are one place.
-const SAME_PLACE: f64 = 1e-9;
-
-/// How many places the components have, by polarisation.
-fn positions(components: &[ComponentRow]) -> usize {
-    let place = |c: &ComponentRow| match c.offset == 0.0 {
-        true => c.lorentz.unwrap_or(0.0),
-        false => c.offset,
-    };
-    let mut all: Vec<(&str, f64)> = components
-        .iter()
-        .map(|c| (c.polarisation, place(c)))
-        .collect();
-    sort_by(&mut all, |a, b| a.0.cmp(b.0).then(a.1.total_cmp(&b.1)));
-    let largest = all.iter().fold(0.0_f64, |most, c| most.max(c.1.abs()));
-    let mut count = 0;
-    let mut last: Option<(&str, f64)> = None;
-    for (polarisation, offset) in all {
-        let same = last.is_some_and(|(known, at)| {
-            known == polarisation && offset - at <= SAME_PLACE * largest
-        });
-        if !same {
-            count += 1;
-        }
-        last = Some((polarisation, offset));
-    }
-    count
-}
-
-/// Components below this share of the strongest one are faint: neither the largest offset nor the groups of a
-/// pattern count them.
-pub const FAINT: f64 = 0.01;
-
-/// The components that are not faint.
-pub fn bright(components: &[ComponentRow]) -> impl Iterator<Item = &ComponentRow> {
-    let strengths = components.iter().map(|c| c.strength);
-    let strongest = strengths.fold(0.0_f64, f64::max);
-    let is_bright = move |c: &&ComponentRow| c.strength >= FAINT * strongest;
-    components.iter().filter(is_bright)
-}
-
-/// Groups of the bright components, a twentieth of their spread or more apart.
-fn groups(components: &[ComponentRow]) -> usize {
-    let mut offsets: Vec<f64> = bright(components).map(|c| c.offset).collect();
-    sort_by(&mut offsets, f64::total_cmp);
-    let (Some(first), Some(last)) = (offsets.first(), offsets.last()) else {
-        return 0;
-    };
-    let apart = (last - first) / 20.0;
-    let gap = |pair: &&[f64]| matches!(pair, [a, b] if b - a > apart);
-    1 + offsets.windows(2).filter(gap).count()
-}
-
-/// How near a normal triplet's components lie to 0 and ±μ_B B, in μ_B B.
-const NORMAL: f64 = 2e-3;
-
-fn describe(components: &[ComponentRow], positions: usize, line: &Option<LineOf>) -> String {
-    let step = |c: &ComponentRow| match c.polarisation {
-        "pi" => 0.0,
-        "sigma+" => 1.0,
-        _ => -1.0,
-    };
-    let normal = line
-        .as_ref()
-        .is_some_and(|line| line.multipole != Multipole::E2)
-        && components.len() >= 3
-        && components
-            .iter()
-            .all(|c| c.lorentz.is_some_and(|x| (x - step(c)).abs() < NORMAL));
-    match (positions, normal) {
-        (_, true) => "3 components, the normal triplet".to_owned(),
-        (1, _) => "1 component".to_owned(),
-        (many, _) => format!("{many} components"),
     }
 }
 

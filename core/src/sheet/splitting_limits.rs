@@ -5,7 +5,7 @@ use crate::radiation::Multipole;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::rich::Kind;
-use super::splitting_full::bright;
+use super::splitting_pattern::bright;
 use super::splitting_rows::{DiamagneticRow, LineOf};
 use super::splitting_searched::MOST_COMPONENTS;
 use super::splitting_words::Told;

@@ -16,10 +16,10 @@ use super::rich::Rich;
 use super::solved::told;
 use super::splitting::is_full;
 use super::splitting_full::{
-    LEAST_STRENGTH, ends, fields, isotope_of, polarisation, share_of, shift_of, state_name,
-    state_rich,
+    LEAST_STRENGTH, ends, fields, isotope_of, polarisation, share_of, shift_of,
 };
 use super::splitting_line::centre_of;
+use super::splitting_names::{state_name, state_rich};
 use super::splitting_sets::{Pass, Prepared, prepared};
 use super::watch::Watch;
 

@@ -6,7 +6,8 @@ use crate::splitting::in_field::{AtField, MHZ_PER_WAVENUMBER, Resonance, Resonan
 
 use super::document::Document;
 use super::levels_rows::Shared;
-use super::splitting_full::{isotope_of, state_name};
+use super::splitting_full::isotope_of;
+use super::splitting_names::state_name;
 use super::splitting_rows::ResonanceRow;
 use super::splitting_sets::{Pass, Prepared, Set, SetLevel};
 

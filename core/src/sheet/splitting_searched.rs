@@ -13,8 +13,9 @@ use crate::splitting::in_field::{
 use super::document::Document;
 use super::field::Tolerance;
 use super::levels_rows::Shared;
-use super::splitting_full::{ends, isotope_of, state_name};
+use super::splitting_full::{ends, isotope_of};
 use super::splitting_joins::Join;
+use super::splitting_names::state_name;
 use super::splitting_rows::{ComponentCrossingRow, CrossingRow};
 use super::splitting_sets::{Pass, Prepared, Set};
 

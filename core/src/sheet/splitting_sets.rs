@@ -8,8 +8,7 @@ use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
 use crate::splitting::in_field::{
-    Components, Diamagnetic, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus, OneElectron, Size,
-    Split,
+    Components, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus, Size, Split,
 };
 
 use super::document::{Document, LevelOf};
@@ -20,8 +19,9 @@ use super::line_ends::End;
 use super::nucleus::Nuclear;
 use super::placed::Placed;
 use super::rich::Rich;
-use super::solved::{Solved, SolvedLevel, solved};
+use super::solved::{Solved, solved};
 use super::splitting_joins::{Join, joins};
+use super::splitting_manifolds::{manifold, parities, set_level, small_enough};
 use super::splitting_searched::{Range, Searched};
 use super::watch::Watch;
 
@@ -336,145 +336,6 @@ fn listed_states(document: &Document, set: &Set, size: Size) -> usize {
         0
     }
 }
-
-/// Places of the solved levels by parity, in the order of the spectrum's own levels.
-fn parities(solved: &Solved) -> Vec<Vec<usize>> {
-    let Some(spectrum) = &solved.spectrum else {
-        let of = |odd: bool| {
-            let all = 0..solved.levels.len();
-            all.filter(|place| solved.levels.get(*place).is_some_and(|l| l.odd == odd))
-                .collect::<Vec<_>>()
-        };
-        return [of(false), of(true)]
-            .into_iter()
-            .filter(|all| !all.is_empty())
-            .collect();
-    };
-    let mut found: Vec<Vec<usize>> = spectrum
-        .parities
-        .iter()
-        .map(|parity| vec![0; parity.levels.levels.len()])
-        .collect();
-    for (place, at) in spectrum.levels.iter().enumerate() {
-        let own = found.get_mut(at.parity);
-        if let Some(own) = own.and_then(|own| own.get_mut(at.level)) {
-            *own = place;
-        }
-    }
-    found
-}
-
-fn set_level(
-    document: &Document,
-    solved: &Solved,
-    placed: &Placed,
-    place: usize,
-) -> Option<SetLevel> {
-    let level: &SolvedLevel = solved.levels.get(place)?;
-    let of = level.of();
-    let holds = |end: Option<&End>| end.is_some_and(|end| end.holds(&of));
-    let (upper, lower) = document.line.as_ref().map(|(u, l)| (u, l)).unzip();
-    Some(SetLevel {
-        place: Some(place),
-        label: Shared(level.label.clone()),
-        rich: level.rich(document),
-        configuration: Some(Shared(level.configuration.clone())),
-        j: level.level.j,
-        energy: Some(placed.of(place)),
-        is_upper: holds(upper),
-        is_lower: holds(lower),
-        of: Some(of),
-    })
-}
-
-fn manifold(
-    solved: &Solved,
-    parity: usize,
-    levels: &[SetLevel],
-    with_diamagnetic: bool,
-) -> Result<(Manifold, Result<Option<f64>, Problem>), Problem> {
-    let energies: Vec<f64> = levels.iter().map(|l| l.energy.unwrap_or(0.0)).collect();
-    let Some(spectrum) = &solved.spectrum else {
-        let electrons: Vec<OneElectron> = levels
-            .iter()
-            .zip(&energies)
-            .filter_map(|(level, energy)| {
-                let orbital = solved.levels.get(level.place?)?.orbital?;
-                Some(OneElectron {
-                    n: orbital.n(),
-                    l: orbital.l(),
-                    two_j: level.j.doubled(),
-                    energy: *energy,
-                })
-            })
-            .collect();
-        let problem = Problem::new(
-            "radius-not-known",
-            "The diamagnetic term of one electron in closed form is left out.",
-            0,
-            0,
-        );
-        return Ok((Manifold::one_electron(&electrons)?, Err(problem)));
-    };
-    let plain = Manifold::of_parity(spectrum, parity, &energies)?;
-    // Its size is always told; it acts only where the sheet says so.
-    let term = match Diamagnetic::of_parity(spectrum, parity) {
-        Ok(term) => term,
-        Err(problem) => return Ok((plain, Err(problem))),
-    };
-    let with = plain.clone().with(term);
-    let size = with.diamagnetic_shift(1.0);
-    Ok((if with_diamagnetic { with } else { plain }, Ok(size)))
-}
-
-/// A set within the bounds: as a whole, or where a nucleus makes it too large the levels of the terms of the
-/// line; with the places of its levels in the parity.
-fn small_enough(document: &Document, set: Set) -> (Set, Vec<usize>) {
-    let all: Vec<usize> = (0..set.levels.len()).collect();
-    let two_i = document.nuclei.iter().map(Nuclear::two_i).max();
-    let Some(two_i) = two_i.filter(|two_i| *two_i > 0) else {
-        return (set, all);
-    };
-    let nucleus = Nucleus {
-        two_i,
-        g_i: 0.0,
-        magnetic_dipole: Vec::new(),
-        electric_quadrupole: Vec::new(),
-    };
-    let size = Split::size(&set.manifold, Some(&nucleus));
-    if size.multiplications <= MOST_MULTIPLICATIONS && size.states <= MAX_STATES as u64 {
-        return (set, all);
-    }
-    let is_end = |level: &SetLevel| level.is_upper || level.is_lower;
-    let term = |level: &SetLevel| {
-        let of = level.of.as_ref();
-        of.map(|of| (of.entry, of.level.term, of.level.index))
-    };
-    let ends: Vec<_> = set.levels.iter().filter(|l| is_end(l)).map(term).collect();
-    let chosen: Vec<usize> = (0..set.levels.len())
-        .filter(|place| {
-            set.levels
-                .get(*place)
-                .is_some_and(|level| ends.contains(&term(level)))
-        })
-        .collect();
-    if chosen.is_empty() || chosen.len() == set.levels.len() {
-        return (set, all);
-    }
-    let levels = chosen
-        .iter()
-        .filter_map(|place| set.levels.get(*place).cloned());
-    let smaller = Set {
-        manifold: set.manifold.select(&chosen),
-        levels: levels.collect(),
-        reduced: true,
-        ..set
-    };
-    (smaller, chosen)
-}
-
-/// Multiplications for one field above which a nucleus is joined to fewer levels: about two seconds.
-pub const MOST_MULTIPLICATIONS: f64 = 2e9;
 
 /// All sets with one nucleus, and why components are not listed.
 fn pass(
