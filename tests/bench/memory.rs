@@ -1,7 +1,8 @@
 //! One dense block near the largest that is diagonalised in full, alone: its time, and the most memory
 //! that stood allocated at one time.
 
-use rungline_core::structure::{Basis, Hamiltonian, Integral, MOST_ROWS, Parameter, solve_j};
+use rungline_core::structure::{Basis, Hamiltonian, MOST_ROWS, solve_j};
+use rungline_tests::figures::round_figures;
 use std::alloc::{GlobalAlloc, Layout, System};
 use std::sync::atomic::{AtomicUsize, Ordering};
 use std::time::Instant;
@@ -43,22 +44,11 @@ static ALLOCATOR: Counting = Counting;
 /// What a block of that size may take, bytes.
 const BOUND: usize = 1_000_000_000;
 
-fn value(parameter: &Parameter) -> f64 {
-    match parameter.integral {
-        Integral::Average => 10_000.0 * parameter.first as f64,
-        Integral::Direct { k, .. } => 60_000.0 / f64::from(k),
-        Integral::Exchange { k, .. } => 9_000.0 / f64::from(k + 1),
-        Integral::SpinOrbit { a } => 1_500.0 / (a + 1) as f64,
-        Integral::Mixing { k, .. } => 6_000.0 / f64::from(k + 1),
-        Integral::OneElectron { .. } | Integral::Effective { .. } => 0.0,
-    }
-}
-
 fn measure(name: &str, shells: &[u8], configurations: &[Vec<u32>], least: usize) {
     let start = Instant::now();
     let basis = Basis::new(shells, configurations).expect("a basis");
     let own = Hamiltonian::new(basis).expect("coefficients");
-    let values = own.values(value);
+    let values = own.values(round_figures);
     let rows = own
         .basis()
         .two_js()

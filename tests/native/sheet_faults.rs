@@ -5,28 +5,13 @@
 //! 2(2ℓ+1) electrons, ℓ < n: common practice, no source).
 
 use rungline_core::sheet::{self, Document};
+use rungline_tests::sheets::{self, OddTexts, answered_or_faulted};
 use serde_json::{Value, json};
 
 fn faults(sheet: &Value) -> Vec<(String, String, String)> {
-    let json = serde_json::from_value(sheet.clone()).expect("a sheet is JSON");
-    Document::read(&json)
-        .faults
-        .into_iter()
-        .map(|fault| {
-            let text = sheet
-                .pointer(&fault.path)
-                .and_then(Value::as_str)
-                .unwrap_or_default();
-            let units: Vec<u16> = text.encode_utf16().collect();
-            let span = units
-                .get(fault.start..fault.end)
-                .map(String::from_utf16_lossy);
-            (
-                fault.code.to_owned(),
-                fault.path.clone(),
-                span.unwrap_or_else(|| "outside the text".to_owned()),
-            )
-        })
+    let found = sheets::faults(sheet).into_iter();
+    found
+        .map(|(fault, span)| (fault.code.to_owned(), fault.path.clone(), span))
         .collect()
 }
 
@@ -214,23 +199,11 @@ fn malformed_files_point_into_the_file() {
 #[test]
 fn no_text_in_any_field_panics() {
     // A fixed stream of awkward characters: digits, letters, signs, other scripts, halves of pairs.
-    let alphabet: Vec<char> =
-        "0123456789spdfghijklSPDF[]()^.,;:*+-−–/#= \u{a0}\u{202f}⁰⁶²₃½∞🙂אe'\"\\{}\u{200f}\u{0301}"
-            .chars()
-            .collect();
-    let mut state = 0x9e37_79b9_u64;
-    let mut next = |bound: usize| {
-        state = state
-            .wrapping_mul(6_364_136_223_846_793_005)
-            .wrapping_add(1_442_695_040_888_963_407);
-        (state >> 33) as usize % bound
-    };
+    let alphabet =
+        "0123456789spdfghijklSPDF[]()^.,;:*+-−–/#= \u{a0}\u{202f}⁰⁶²₃½∞🙂אe'\"\\{}\u{200f}\u{0301}";
+    let mut odd = OddTexts::new(alphabet, 0x9e37_79b9);
     for _ in 0..1500 {
-        let mut text = || {
-            (0..next(24))
-                .map(|_| alphabet[next(alphabet.len())])
-                .collect::<String>()
-        };
+        let mut text = || odd.text(24);
         let sheet = json!({
             "rungline": 1, "species": text(), "configurations": [text(), text()],
             "line": {"upper": text(), "lower": text(), "wavelength": text()},
@@ -238,15 +211,7 @@ fn no_text_in_any_field_panics() {
             "measured": {text(): text()},
             "level": {"J": text(), "g": text()}, "window": [text(), text()],
         });
-        let json = serde_json::from_value(sheet).unwrap();
-        let reading: Value =
-            serde_json::from_str(&sheet::reading(&json)).expect("a reading is JSON");
-        assert!(reading["faults"].is_array());
-        for question in ["states", "lines", "splitting"] {
-            let answer: Value = serde_json::from_str(&sheet::answer_message(&json, question))
-                .expect("an answer is JSON");
-            assert!(answer.get("answer").is_some() || answer.get("faults").is_some());
-        }
+        answered_or_faulted(sheet, &["states", "lines", "splitting"]);
     }
 }
 

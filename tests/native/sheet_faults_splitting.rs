@@ -5,27 +5,18 @@
 //! least 1 (Kopfermann, *Nuclear Moments*, 1958, § 4); isotopes by the table in `tests/vectors`.
 
 use rungline_core::sheet::{self, Document};
+use rungline_tests::sheets::{self, OddTexts, answered_or_faulted};
 use serde_json::{Value, json};
 
 fn faults(sheet: &Value) -> Vec<(String, String, String)> {
-    let json = serde_json::from_value(sheet.clone()).expect("a sheet is JSON");
-    Document::read(&json)
-        .faults
-        .into_iter()
-        .map(|fault| {
-            let text = sheet.pointer(&fault.path).and_then(Value::as_str);
-            let units: Vec<u16> = text.unwrap_or_default().encode_utf16().collect();
-            let span = units.get(fault.start..fault.end);
-            let span = span.map(String::from_utf16_lossy);
+    let found = sheets::faults(sheet).into_iter();
+    found
+        .map(|(fault, span)| {
             assert!(
                 fault.message.ends_with(['.', '?']) && fault.bound.is_some(),
                 "{fault:?}"
             );
-            (
-                fault.code.to_owned(),
-                fault.path.clone(),
-                span.unwrap_or_else(|| "outside the text".to_owned()),
-            )
+            (fault.code.to_owned(), fault.path.clone(), span)
         })
         .collect()
 }
@@ -382,22 +373,10 @@ fn the_natural_isotopes_are_offered() {
 /// A fixed sequence of odd texts in every new place; nothing panics, everything is JSON.
 #[test]
 fn odd_input_in_every_place_is_answered_or_faulted() {
-    let alphabet: Vec<char> = "0123456789./-+%eE TMHzcm-1 spdPSF#*🙂ש⁸½°\u{0}\"\\RbNa~ "
-        .chars()
-        .collect();
-    let mut state = 88_172_645_463_325_252_u64;
-    let mut next = |bound: usize| {
-        state = state
-            .wrapping_mul(6_364_136_223_846_793_005)
-            .wrapping_add(1_442_695_040_888_963_407);
-        (state >> 33) as usize % bound
-    };
+    let alphabet = "0123456789./-+%eE TMHzcm-1 spdPSF#*🙂ש⁸½°\u{0}\"\\RbNa~ ";
+    let mut odd = OddTexts::new(alphabet, 88_172_645_463_325_252);
     for _ in 0..400 {
-        let mut text = || -> String {
-            (0..next(14))
-                .map(|_| alphabet[next(alphabet.len())])
-                .collect()
-        };
+        let mut text = || odd.text(14);
         let sheet = json!({
             "rungline": 1, "species": "Rb", "configurations": ["5s", "5p"],
             "line": {"upper": text(), "lower": text()},
@@ -406,12 +385,6 @@ fn odd_input_in_every_place_is_answered_or_faulted() {
             "isotopes": [{"isotope": text(), "share": text(), "shift": text(), "magnetic_dipole": {text(): text()}}],
             "level": {"J": text(), "g": text(), "I": text(), "A": text(), "B": text(), "g_I": text()},
         });
-        let json = serde_json::from_value(sheet).unwrap();
-        let reading: Value =
-            serde_json::from_str(&sheet::reading(&json)).expect("a reading is JSON");
-        assert!(reading["faults"].is_array());
-        let answer: Value =
-            serde_json::from_str(&sheet::answer_message(&json, "splitting")).expect("JSON");
-        assert!(answer.get("answer").is_some() || answer.get("faults").is_some());
+        answered_or_faulted(sheet, &["splitting"]);
     }
 }

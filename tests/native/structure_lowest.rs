@@ -1,21 +1,10 @@
 //! The lowest levels of a large J against all of them.
 
 use rungline_core::structure::{
-    Basis, Hamiltonian, Integral, Levels, MOST_ROWS, Parameter, estimate, lowest_of_j, solve_j,
+    Basis, Hamiltonian, Levels, MOST_ROWS, estimate, lowest_of_j, solve_j,
 };
+use rungline_tests::figures::round_figures;
 use rungline_tests::{Row, report};
-
-/// Round figures of the size of a lanthanide's; spin–orbit interaction large enough to mix all terms.
-fn value(parameter: &Parameter) -> f64 {
-    match parameter.integral {
-        Integral::Average => 10_000.0 * parameter.first as f64,
-        Integral::Direct { k, .. } => 60_000.0 / f64::from(k),
-        Integral::Exchange { k, .. } => 9_000.0 / f64::from(k + 1),
-        Integral::SpinOrbit { a } => 1_500.0 / (a + 1) as f64,
-        Integral::Mixing { k, .. } => 6_000.0 / f64::from(k + 1),
-        Integral::OneElectron { .. } | Integral::Effective { .. } => 0.0,
-    }
-}
 
 fn hamiltonian(shells: &[u8], configurations: &[Vec<u32>]) -> Hamiltonian {
     let basis = Basis::new(shells, configurations).expect("a basis");
@@ -35,7 +24,7 @@ fn the_lowest_levels_are_those_of_the_whole_matrix() {
     let (mut energies, mut vectors, mut count) = (0.0_f64, 0.0_f64, 0);
     for (shells, configurations, two_j) in cases {
         let own = hamiltonian(shells, &configurations);
-        let values = own.values(value);
+        let values = own.values(round_figures);
         let rows = own.rows(two_j);
         let all = solve_j(&own, &rows, &values).expect("levels");
         let found = lowest_of_j(&own, &rows, &values, 30, &mut |_| true).expect("levels");
@@ -66,7 +55,7 @@ fn the_lowest_levels_are_those_of_the_whole_matrix() {
 #[test]
 fn the_sparse_matrix_is_the_dense_one() {
     let own = hamiltonian(&[2, 0], &[vec![4, 1], vec![5, 0]]);
-    let values = own.values(value);
+    let values = own.values(round_figures);
     for two_j in own.basis().two_js() {
         let rows = own.rows(two_j);
         let dense = own.matrix(&rows, &values).expect("a matrix");
@@ -87,7 +76,7 @@ fn the_sparse_matrix_is_the_dense_one() {
 #[test]
 fn a_search_can_be_stopped() {
     let own = hamiltonian(&[3, 2, 0], &[vec![6, 1, 1]]);
-    let values = own.values(value);
+    let values = own.values(round_figures);
     let rows = own.rows(8);
     let problem = lowest_of_j(&own, &rows, &values, 30, &mut |_| false).expect_err("stopped");
     assert_eq!(problem.code, "stopped");

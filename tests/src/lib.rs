@@ -1,7 +1,9 @@
 //! Shared by the native checks: where the vectors are, how closely two numbers agree, and the
 //! validation report, which is written from what the checks measured.
 
+pub mod figures;
 pub mod model;
+pub mod sheets;
 
 use std::collections::BTreeMap;
 use std::fs;

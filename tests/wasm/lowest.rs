@@ -11,14 +11,7 @@ fn lowest_levels() -> Vec<f64> {
     for (shells, configurations, two_j) in cases {
         let basis = Basis::new(&shells, &configurations).expect("a basis");
         let own = Hamiltonian::new(basis).expect("coefficients");
-        let values = own.values(|parameter| match parameter.integral {
-            Integral::Average => 10_000.0 * parameter.first as f64,
-            Integral::Direct { k, .. } => 60_000.0 / f64::from(k),
-            Integral::Exchange { k, .. } => 9_000.0 / f64::from(k + 1),
-            Integral::SpinOrbit { a } => 1_500.0 / (a + 1) as f64,
-            Integral::Mixing { k, .. } => 6_000.0 / f64::from(k + 1),
-            Integral::OneElectron { .. } | Integral::Effective { .. } => 0.0,
-        });
+        let values = own.values(round_figures);
         let rows = own.rows(two_j);
         let levels = lowest_of_j(&own, &rows, &values, 12, &mut |_| true).expect("levels");
         for level in levels {

@@ -5,7 +5,12 @@ use std::path::Path;
 
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
 use rungline_core::sheet::{Question, answer_text, curves_message, sections_message, unwatched};
-use rungline_core::structure::{Basis, Hamiltonian, Integral, lowest_of_j};
+use rungline_core::structure::{Basis, Hamiltonian, lowest_of_j};
+
+#[path = "../src/figures.rs"]
+mod figures;
+
+use figures::round_figures;
 
 /// Longer answers are compared by length and digest: the tables of the tests stay small.
 const LARGE: usize = 1_000_000;

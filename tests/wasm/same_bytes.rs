@@ -2,8 +2,13 @@
 
 use rungline_core::angular::{wigner_3j, wigner_6j, wigner_9j};
 use rungline_core::sheet::{Question, answer_text};
-use rungline_core::structure::{Basis, Hamiltonian, Integral, lowest_of_j};
+use rungline_core::structure::{Basis, Hamiltonian, lowest_of_j};
 use wasm_bindgen_test::wasm_bindgen_test;
+
+#[path = "../src/figures.rs"]
+mod figures;
+
+use figures::round_figures;
 
 include!(concat!(env!("OUT_DIR"), "/answers.rs"));
 include!(concat!(env!("OUT_DIR"), "/symbols.rs"));
