@@ -159,6 +159,18 @@ fn isotopes_side_by_side() {
     assert!(relative_error(interval("85Rb", "3", "2"), 3.0 * 1_011.910_813) < 1e-9);
     let scaled = interval("87Rb", "2", "1") / 2.0;
     assert!(relative_error(scaled, 3_417.341) < 5e-3, "{scaled}");
+    // Every isotope has its constants in a row for each level, with where they come from.
+    for (place, kind, is_scaled) in [(0, "entered", false), (1, "computed", true)] {
+        let levels = rows(&found["isotopes"][place], "levels");
+        assert_eq!(levels.len(), 2);
+        for level in levels {
+            assert_eq!(
+                (&level["kind"], &level["scaled"]),
+                (&json!(kind), &json!(is_scaled))
+            );
+            assert!(level["A_MHz"].is_number() && level["B_MHz"].is_null());
+        }
+    }
     let limits = found["limits"].to_string();
     assert!(limits.contains("scaled from another isotope"), "{limits}");
     // The whole pattern of an isotope moves by its shift.
@@ -204,4 +216,20 @@ fn the_keys_are_used() {
     for key in ["isotopes", "level."] {
         assert!(!limits.contains(&format!("sheet: {key}")), "{limits}");
     }
+}
+
+/// A singlet's line: in the classic picture three places, of which no sentence needs to say that they are groups.
+#[test]
+fn a_normal_triplet_is_called_so() {
+    let found = answer(&json!({
+        "rungline": 1, "species": "*", "configurations": ["2s 2p", "2s 3d"],
+        "structure": {"energies": "given", "given": {"E(2s 3d)": "20000 cm-1", "G1(2s,2p)": "9000 cm-1", "G2(2s,3d)": "9000 cm-1"}},
+        "line": {"upper": "2s 3d 1D2", "lower": "2s 2p 1P1"}, "field": {"flux_density": "1 T"}
+    }));
+    assert_eq!(found["pattern"], "3 components, the normal triplet");
+    let said = found["say_plain"].as_str().expect("a sentence");
+    assert!(
+        said.contains("normal triplet") && !said.contains("groups"),
+        "{said}"
+    );
 }

@@ -19,7 +19,7 @@ use super::splitting_limits::limits;
 use super::splitting_line::line_of;
 use super::splitting_names::{state_name, state_rich};
 use super::splitting_nuclei::{isotope_rows, nucleus_row};
-use super::splitting_pattern::{describe, groups, positions};
+use super::splitting_pattern::{describe, groups, is_normal_triplet, positions};
 use super::splitting_resonances;
 use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, Splitting, StateRow};
 use super::splitting_sets::{Pass, Prepared, Set, SetLevel, prepared};
@@ -72,10 +72,11 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
     sort_by(&mut states, |a, b| side_order(a).cmp(&side_order(b)));
     let positions = positions(&components);
     let groups = groups(&components);
-    let pattern = describe(&components, positions, &line);
+    let normal = is_normal_triplet(&components, line.as_ref());
+    let pattern = describe(positions, normal);
     let linear = linear(field, &components, searched.departs_at);
     let nucleus = nucleus_row(document, &ready);
-    let isotopes = isotope_rows(document);
+    let isotopes = isotope_rows(document, &ready);
     let diamagnetic = field.map(|field| DiamagneticRow {
         included: field.diamagnetic,
         largest: ready
@@ -93,7 +94,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         line: line.as_ref(),
         states: &states,
         components: &components,
-        groups,
+        groups: if normal { 0 } else { groups },
         positions,
         pattern: &pattern,
         linear: linear.as_ref(),

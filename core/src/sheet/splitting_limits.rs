@@ -32,7 +32,7 @@ pub fn limits(told: &Told) -> Vec<String> {
     }
     if document.level_alone.is_some() {
         limits.push(
-            "The level is alone: nothing mixes other levels into it, which bends its states where μ_B B comes near the distance to a neighbour.".to_owned(),
+            "The level is alone: nothing mixes other levels into it, which bends its states where μB·B comes near the distance to a neighbour.".to_owned(),
         );
         if !document.entries.is_empty() {
             limits.push(

@@ -17,6 +17,7 @@ use super::pairs;
 use super::rich::{Kind, Rich};
 use super::splitting::{cautions, field_of};
 use super::splitting_keeps::{Shown, keeps};
+use super::splitting_pattern::describe;
 use super::splitting_rows::{ComponentRow, LineOf, Splitting, StateRow};
 
 /// The two levels of the line with their g.
@@ -278,14 +279,6 @@ fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Mu
     )
     .bound(format!("{}.", reason.join("; ")))
     .at("/line"))
-}
-
-fn describe(positions: usize, normal_triplet: bool) -> String {
-    match (positions, normal_triplet) {
-        (_, true) => "3 components, the normal triplet".to_owned(),
-        (1, _) => "1 component".to_owned(),
-        (many, _) => format!("{many} components"),
-    }
 }
 
 fn sentence(line: &LineOf, field: &Field, components: &[ComponentRow], pattern: &str) -> Rich {

@@ -23,6 +23,7 @@ pub fn nucleus_row(document: &Document, ready: &Prepared) -> Option<NucleusRow> 
                 a: Some(level.a),
                 b: Some(level.b),
                 kind: "entered",
+                scaled: false,
             }],
         });
     }
@@ -67,16 +68,17 @@ fn constant_rows(ready: &Prepared, nuclear: &Nuclear) -> Vec<ConstantRow> {
                 b: b.map(|c| c.value),
                 kind: match a.or(b) {
                     None => "zero",
-                    Some(c) if c.scaled => "scaled",
+                    Some(c) if c.scaled => "computed",
                     Some(_) => "entered",
                 },
+                scaled: a.or(b).is_some_and(|c| c.scaled),
             })
         })
         .collect()
 }
 
 /// The isotopes of the mixture.
-pub fn isotope_rows(document: &Document) -> Vec<IsotopeRow> {
+pub fn isotope_rows(document: &Document, ready: &Prepared) -> Vec<IsotopeRow> {
     if !document.isotopes_listed {
         return Vec::new();
     }
@@ -94,6 +96,7 @@ pub fn isotope_rows(document: &Document) -> Vec<IsotopeRow> {
             shift: nuclear.shift,
             spin: nuclear.spin,
             kind,
+            levels: constant_rows(ready, nuclear),
         })
     };
     document.nuclei.iter().filter_map(row).collect()

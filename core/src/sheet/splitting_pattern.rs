@@ -61,21 +61,23 @@ pub fn groups(components: &[ComponentRow]) -> usize {
 /// How near a normal triplet's components lie to 0 and ±μ_B B, in μ_B B.
 const NORMAL: f64 = 2e-3;
 
-/// The pattern in words: how many components, or that it is the normal triplet.
-pub fn describe(components: &[ComponentRow], positions: usize, line: &Option<LineOf>) -> String {
+/// Whether these are π at the centre and σ at ±μ_B B.
+pub fn is_normal_triplet(components: &[ComponentRow], line: Option<&LineOf>) -> bool {
     let step = |c: &ComponentRow| match c.polarisation {
         "pi" => 0.0,
         "sigma+" => 1.0,
         _ => -1.0,
     };
-    let normal = line
-        .as_ref()
-        .is_some_and(|line| line.multipole != Multipole::E2)
+    line.is_some_and(|line| line.multipole != Multipole::E2)
         && components.len() >= 3
         && components
             .iter()
-            .all(|c| c.lorentz.is_some_and(|x| (x - step(c)).abs() < NORMAL));
-    match (positions, normal) {
+            .all(|c| c.lorentz.is_some_and(|x| (x - step(c)).abs() < NORMAL))
+}
+
+/// The pattern in words.
+pub fn describe(positions: usize, normal_triplet: bool) -> String {
+    match (positions, normal_triplet) {
         (_, true) => "3 components, the normal triplet".to_owned(),
         (1, _) => "1 component".to_owned(),
         (many, _) => format!("{many} components"),

@@ -155,8 +155,10 @@ pub struct ConstantRow {
     pub a: Option<f64>,
     #[serde(rename = "B_MHz")]
     pub b: Option<f64>,
-    /// "entered", "scaled" from another isotope, or "zero".
+    /// "entered", "computed" from another isotope's, or "zero".
     pub kind: &'static str,
+    /// Whether it is another isotope's, scaled.
+    pub scaled: bool,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -168,6 +170,7 @@ pub struct IsotopeRow {
     pub shift: f64,
     pub spin: Option<TwiceJ>,
     pub kind: Kind,
+    pub levels: Vec<ConstantRow>,
 }
 
 #[derive(Clone, Debug, Serialize)]

@@ -278,8 +278,7 @@ fn effective(told: &Told) -> Option<Working> {
         true => Rich::new()
             .number(g, None, Kind::Computed)
             .say("; the σ+ components of this field have their centre at ")
-            .number(sum / weights, None, Kind::Computed)
-            .say(" μ_B B"),
+            .number(sum / weights, Some("mu_B B"), Kind::Computed),
         false => Rich::new().number(g, None, Kind::Computed),
     };
     let square = |which: &str| {

@@ -44,6 +44,8 @@ everyDoor("the natural isotopes are put in with their shares, and taken out agai
   assert.deepEqual([await value("/isotopes/0/isotope"), await value("/isotopes/1/isotope")], ["85Rb", "87Rb"]);
   assert.match(await value("/isotopes/0/share"), /^72\.1[67]/);
   assert.match(await door.sentence("splitting"), /isotopes/);
+  await open(door, "Isotopes");
+  assert.deepEqual((await rows(door, "Isotopes")).map(([name, , spin]) => [name, spin]), [["85Rb", "5/2"], ["87Rb", "3/2"]]);
   const add = await door.page.$('[aria-label="Take it out: isotope 1"]');
   await add.evaluate((node) => node.click());
   await door.until(() => document.querySelector('[data-path="/isotopes/0/isotope"]').value === "87Rb" && document.querySelector('[data-path="/isotopes/1/isotope"]') === null);
@@ -75,6 +77,8 @@ everyDoor("a level alone is enough: the clock point of caesium without field", a
   assert.match(first[6], /^9192\.63/);
   await open(door, "Resonance frequencies");
   assert.ok((await rows(door, "Resonance frequencies")).length > 20);
+  // There is no line that could be chosen for it.
+  assert.equal(await door.evaluate(() => [...document.querySelectorAll("#splitting button")].some((each) => each.textContent === "Choose a line")), false);
   assert.deepEqual(await door.axe(), []);
   assert.deepEqual(door.troubles, []);
 }, { fragment: ALONE });

@@ -39,7 +39,10 @@ export function bottomAxis(pen, { scale, from, to, left, right, y, title, at = n
 
 /** A vertical axis at `x`, its numbers to the left of it. */
 export function leftAxis(pen, { scale, from, to, x, top, bottom }) {
-  const { values, decimals } = ticks(from, to, Math.max(2, (bottom - top) / 48));
+  const wanted = Math.max(2, (bottom - top) / 48);
+  const usual = ticks(from, to, wanted);
+  // One number alone is no scale.
+  const { values, decimals } = usual.values.length < 2 ? ticks(from, to, 2 * wanted) : usual;
   pen.line(x, top, x, bottom, { stroke: "edge" });
   for (const value of values) {
     pen.line(x - TICK, scale(value), x, scale(value), { stroke: "edge" });

@@ -7,7 +7,8 @@ import { LABEL } from "./pen.js";
 
 const LEFT = 68;
 const RIGHT = 44;
-const TOP = 30;
+/** Room for what the rule is at, above the first panel's title. */
+const TOP = 50;
 const HEAD = 22;
 const GAP = 30;
 const MARGIN = 0.06;
@@ -45,7 +46,7 @@ export function fieldMapLayout({ fields, panels, at, reading, chosen, axis, line
     const [low, high] = [a * end, b * end];
     const right = width - RIGHT;
     const scale = linearScale(low, high, LEFT, right);
-    const tall = pictureHeight(width) + (panels.length - 1) * MORE;
+    const tall = pictureHeight(width) + 20 + (panels.length - 1) * MORE;
     const bottom = tall - BOTTOM_AXIS;
     const part = (bottom - TOP - GAP * (panels.length - 1)) / panels.length;
     const samples = sampled(fields, low, high);
@@ -95,8 +96,8 @@ export function fieldMapLayout({ fields, panels, at, reading, chosen, axis, line
         return best;
       },
       draw(pen) {
-        drawn.forEach((each, i) => {
-          pen.text(i === 0 ? 8 : 8, each.top - 10, each.panel.title, { fill: "quiet" });
+        drawn.forEach((each) => {
+          pen.text(8, each.top - 10, each.panel.title, { fill: "quiet" });
           leftAxis(pen, { scale: each.y, from: each.from, to: each.to, x: LEFT, top: each.top, bottom: each.bottom });
           for (const { series, points } of each.curves) {
             pen.polyline(points.map((value, k) => [scale(samples[k].tesla), each.y(value)]), { stroke: series.colour, dash: series.dash, width: chosen(series) ? 4 : 1.5 });
@@ -106,14 +107,15 @@ export function fieldMapLayout({ fields, panels, at, reading, chosen, axis, line
         });
         if (linearTo !== null && linearTo > low && linearTo < high) {
           pen.line(scale(linearTo), TOP, scale(linearTo), bottom, { stroke: "edge", dash: "1 4" });
-          pen.text(scale(linearTo) + 4, bottom - 5, "linear up to here", { anchor: scale(linearTo) > right - 110 ? "end" : "start", fill: "quiet", halo: "sheet" });
+          // Beside the names of the levels there is no room for it.
+          if (scale(linearTo) > LEFT + 60) pen.text(scale(linearTo) + 4, bottom - 20, "linear up to here", { anchor: scale(linearTo) > right - 110 ? "end" : "start", fill: "quiet", halo: "sheet" });
         }
         bottomAxis(pen, { scale, from: low, to: high, left: LEFT, right, y: bottom, title: axis });
         if (!file) return;
         const x = shown.rule.x(at());
         if (x === null) return;
         pen.line(x, TOP - 8, x, bottom, { stroke: "ink", width: 2 });
-        pen.text(x, TOP - 14, ruleText(), { anchor: "middle", weight: 600 });
+        pen.text(x, TOP - 30, ruleText(), { anchor: "middle", weight: 600 });
       },
       placed: () => placed(shown),
     };

@@ -14,7 +14,7 @@ import { crossingId, kindWords, mapChoices } from "./field-panels.js";
 import { fold, pointerWords, select } from "./fold.js";
 import { componentId, idsOfComponent, stateId, stateRich } from "./splitting-names.js";
 import {
-  componentCrossingsTable, componentsTable, constantsTable, crossingsTable, fieldWords, lineName, resonancesTable, statesTable,
+  componentCrossingsTable, componentsTable, constantsTable, crossingsTable, fieldWords, isotopesTable, lineName, resonancesTable, statesTable,
 } from "./splitting-tables.js";
 import { componentsAt, offsetFactors, viewFactors } from "./sweep-values.js";
 import { kindOf } from "./working.js";
@@ -154,8 +154,7 @@ export class SplittingEvidence {
     const { components, field } = this.#answer;
     const empty = components.length === 0;
     this.#pattern.node.hidden = empty;
-    this.#none.replaceChildren(...(empty ? [element("p", { text: this.#answer.no_components ?? "A line has a pattern; all states of these levels are in the table below." }),
-      element("button", { type: "button", class: "action", text: "Choose a line", on: { click: () => this.#context.toField("/line/upper") } })] : []));
+    this.#none.replaceChildren(...(empty ? this.#noPattern() : []));
     if (empty) return;
     const rough = this.#sweep.at !== null && this.#sweep.map !== null;
     const { unit, view } = { unit: this.#unit.value(), view: this.#view.value() };
@@ -167,6 +166,13 @@ export class SplittingEvidence {
         kindOf: (key) => kindOf(this.#answer, `components.${key}`), idsOf: (row) => idsOfComponent(row, this.#answer.line?.multipole ?? "E1"),
       }),
     });
+  }
+
+  #noPattern() {
+    const alone = this.#answer.states.every(({ configuration }) => configuration === null);
+    if (alone) return [element("p", { text: "A level alone has no line; its states and resonance frequencies are in the tables below." })];
+    return [element("p", { text: this.#answer.no_components ?? "A line has a pattern; all states of these levels are in the table below." }),
+      element("button", { type: "button", class: "action", text: "Choose a line", on: { click: () => this.#context.toField("/line/upper") } })];
   }
 
   #roughComponents() {
@@ -181,17 +187,18 @@ export class SplittingEvidence {
     this.#fillComponents();
     this.#fillFacts();
     const answer = this.#answer;
-    const { states = [], crossings = [], component_crossings: meetings = [], resonances = [], nucleus = null, line = null, field } = answer;
+    const { states = [], crossings = [], component_crossings: meetings = [], resonances = [], isotopes = [], nucleus = null, line = null, field } = answer;
     const upTo = field?.up_to ? ` up to ${this.#sweep.textOf(field.up_to)}` : "";
     const part = (key, title, make) => fold(this.#context, `splitting:${key}`, [title], make);
     this.#parts.replaceChildren(...[
       states.length > 0 && part("states", line === null || line.of !== "level" ? `States, ${states.length}` : "Both levels in the field", () => [this.#fan(), statesTable(answer, this.#tableContext)]),
       part("crossings", `Crossings of levels and clock points${upTo}`, () => (crossings.length === 0
         ? element("p", { text: upTo === "" ? "Without a field nothing crosses." : `No two of these states cross or come near each other${upTo}, and none has a clock point. A higher end of the map looks further.` })
-        : crossingsTable(crossings, answer, this.#tableContext, `Crossings of levels and clock points${upTo}`))),
-      meetings.length > 0 && part("meetings", "Where components meet", () => componentCrossingsTable(meetings, answer, this.#tableContext)),
-      resonances.length > 0 && part("resonances", "Resonance frequencies", () => resonancesTable(answer, this.#tableContext)),
-      nucleus?.levels?.length > 0 && part("nucleus", "Hyperfine constants", () => constantsTable(answer, this.#tableContext)),
+        : [crossingsTable(crossings, answer, this.#tableContext, `Crossings of levels and clock points${upTo}`), leftOut(answer.crossings_left_out)])),
+      meetings.length > 0 && part("meetings", "Where components meet", () => [componentCrossingsTable(meetings, answer, this.#tableContext), leftOut(answer.component_crossings_left_out)]),
+      resonances.length > 0 && part("resonances", "Resonance frequencies", () => [resonancesTable(answer, this.#tableContext), leftOut(answer.resonances_left_out)]),
+      isotopes.length > 0 && part("isotopes", "Isotopes", () => isotopesTable(answer, this.#tableContext)),
+      (nucleus?.levels ?? isotopes.flatMap(({ levels }) => levels)).length > 0 && part("nucleus", "Hyperfine constants", () => constantsTable(answer, this.#tableContext)),
     ].filter(Boolean));
   }
 
@@ -277,6 +284,11 @@ export class SplittingEvidence {
       this.#sweep.release();
     } } })];
   }
+}
+
+// What a bounded table left out, or nothing.
+function leftOut(count) {
+  return count > 0 ? element("p", { class: "note", text: `${count} more are left out. A line between two levels, or a lower end of the map, has fewer.` }) : null;
 }
 
 /** How the sheet looks at it, in words. */

@@ -13,9 +13,17 @@ export function idsOfState(state) {
   return [stateId(state), `level:${state.level}`];
 }
 
+/** M_J and M_I as signs. */
+export const PROJECTIONS = {
+  M_J: { runs: [{ text: "M" }, { down: "J" }], plain: "M_J", latex: "$M_J$", speech: "M J" },
+  M_I: { runs: [{ text: "M" }, { down: "I" }], plain: "M_I", latex: "$M_I$", speech: "M I" },
+};
+
 /** Rich text of a state: its isotope among several, its level, F and M. */
 export function stateRich(state) {
-  return [...(state.isotope ? [`${state.isotope} `] : []), ...state.rich];
+  const rich = state.rich.flatMap((part) => (typeof part !== "string" ? [part] : part.split(/(M_[JI])/).filter((text) => text !== "")
+    .map((text) => (PROJECTIONS[text] ? { sign: PROJECTIONS[text] } : text))));
+  return [...(state.isotope ? [`${state.isotope} `] : []), ...rich];
 }
 
 /** Rich text of a state's level. */

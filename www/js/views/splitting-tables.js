@@ -3,7 +3,7 @@
 import { SIGNS, OFFSET_UNITS } from "../plot/pattern.js";
 import { dataTable } from "../table.js";
 import { crossingId, kindWords } from "./field-panels.js";
-import { componentConcerned, componentId, levelRich, stateId, stateRich } from "./splitting-names.js";
+import { PROJECTIONS, componentConcerned, componentId, levelRich, stateId, stateRich } from "./splitting-names.js";
 import { kindOf } from "./working.js";
 
 const VIEW_NAMES = { strength: "over all directions", across: "across", along: "along", seen: "as seen" };
@@ -89,7 +89,7 @@ export function statesTable(answer, context) {
       { name: "level", type: "text", value: (row) => row.level, rich: (row) => levels.get(row.level) ?? [row.level] },
       has(states, "isotope") && { name: "isotope", type: "text", value: (row) => row.isotope },
       has(states, "F") && { name: "F", type: "half", value: (row) => row.F },
-      has(states, "M_J") && { name: "M_J", type: "half", value: (row) => row.M_J }, has(states, "M_I") && { name: "M_I", type: "half", value: (row) => row.M_I },
+      ...Object.entries(PROJECTIONS).map(([key, sign]) => has(states, key) && { name: key, head: [{ sign }], type: "half", value: (row) => row[key] }),
       { name: "M", type: "half", value: (row) => row.M },
       number("energy", "energy", "cm-1"), number("shift", "from the level", "cm-1"), number("slope", "slope", "cm-1 T-1"),
     ].filter(Boolean),
@@ -151,15 +151,31 @@ export function resonancesTable(answer, context) {
   });
 }
 
+/** The constants of every nucleus: the one of the sheet, or each isotope's. */
 export function constantsTable(answer, context) {
-  const rows = answer.nucleus.levels;
+  const { nucleus } = answer;
+  const rows = nucleus ? nucleus.levels : answer.isotopes.flatMap(({ isotope, levels }) => levels.map((level) => ({ ...level, isotope })));
+  const constant = (key) => ({ name: key, unit: "MHz", type: "number", kind: (row) => (row.kind === "zero" ? null : row.kind), value: (row) => row[`${key}_MHz`], reason: "not entered" });
   return dataTable({
-    caption: ["Hyperfine constants", ...(answer.nucleus.isotope ? [` of ${answer.nucleus.isotope}`] : []), answer.nucleus.spin ? `, I ${answer.nucleus.spin}` : ""], rows, context, file: "hyperfine constants",
+    caption: ["Hyperfine constants", ...(nucleus?.isotope ? [` of ${nucleus.isotope}`] : []), nucleus?.spin ? `, I ${nucleus.spin}` : ""], rows, context, file: "hyperfine constants",
     columns: [
+      has(rows, "isotope") && { name: "isotope", type: "text", value: (row) => row.isotope },
       { name: "level", type: "text", value: (row) => row.label, rich: (row) => row.rich ?? [row.label] },
-      { name: "A", unit: "MHz", type: "number", kind: (row) => row.kind, value: (row) => row.A_MHz },
-      { name: "B", unit: "MHz", type: "number", kind: (row) => row.kind, value: (row) => row.B_MHz, reason: "none for this level" },
-    ],
+      constant("A"), constant("B"),
+      rows.some(({ scaled }) => scaled) && { name: "from", type: "text", value: (row) => (row.scaled ? "another isotope’s" : "the sheet") },
+    ].filter(Boolean),
     identify: (row) => `level:${row.label}`,
+  });
+}
+
+export function isotopesTable(answer, context) {
+  return dataTable({
+    caption: "Isotopes", rows: answer.isotopes, context, file: "isotopes",
+    columns: [
+      { name: "isotope", type: "text", value: (row) => row.isotope },
+      { name: "share of the light", unit: "%", type: "number", kind: (row) => row.kind, value: (row) => row.share },
+      { name: "I", type: "half", value: (row) => row.spin, reason: "the table has no spin for it" },
+      { name: "shift", unit: "MHz", type: "number", kind: "entered", value: (row) => row.shift_MHz },
+    ],
   });
 }
