@@ -28,7 +28,7 @@ pub fn integrity(bytes: &[u8]) -> String {
 pub fn gzip(bytes: &[u8], quick: bool) -> Outcome<Vec<u8>> {
     let told = |error: std::io::Error| format!("Cannot compress: {error}.");
     if quick {
-        let mut encoder = flate2::GzBuilder::new().write(Vec::new(), flate2::Compression::best());
+        let mut encoder = flate2::GzBuilder::new().write(Vec::new(), flate2::Compression::fast());
         encoder.write_all(bytes).map_err(told)?;
         return encoder.finish().map_err(told);
     }
