@@ -56,7 +56,7 @@ fn line((p, s, operator): (Manifold, Manifold, Operator), nuclei: [Option<&Nucle
 }
 
 /// The D lines of sodium: 16 956.17 and 16 973.37 cm⁻¹ (vacuum 589.755 81 and 589.158 26 nm; Steck, Sodium D
-/// Line Data (2000)).
+/// Line Data (2000), from memory).
 const SODIUM: (f64, f64) = (16_956.170, 16_973.366);
 
 fn sodium() -> Line {
@@ -143,7 +143,7 @@ fn sodium_d_lines_from_weak_to_strong() {
 
 #[test]
 fn polarisations_share_alike_with_a_nucleus_too() {
-    // A and B of ²³Na 3s and 3p, MHz: Steck, Sodium D Line Data (2000).
+    // A and B of ²³Na 3s and 3p, MHz: Steck, Sodium D Line Data (2000), from memory.
     let mhz = |value: f64| value / MHZ_PER_WAVENUMBER;
     let nucleus = |a: Vec<f64>, b: Vec<f64>| Nucleus {
         two_i: 3,

@@ -1,7 +1,8 @@
 //! Alkali atoms with their nuclei: the closed form of Breit and Rabi, published frequencies and fields.
 //!
 //! A, g_J and g_I: Arimondo, Inguscio & Violino, Rev. Mod. Phys. 49, 31 (1977), of ⁸⁷Rb in the
-//! atom, shielded: −g_I′ = 0.000 995 141 4; the other g_I those of bare nuclei, from memory. Frequencies and fields: sources beside each.
+//! atom, shielded: −g_I′ = 0.000 995 141 4; the other g_I those of bare nuclei. Frequencies and fields: sources beside each.
+//! All of these values are written from memory of the sources, but for caesium's, which is exact.
 
 use rungline_core::constants::BOHR_MAGNETON_WAVENUMBER;
 use rungline_core::splitting::in_field::{

@@ -176,7 +176,8 @@ mod tests {
     }
 
     #[test]
-    fn the_unpolarised_forms_of_textbooks() {
+    fn without_a_polariser_the_closed_forms_hold() {
+        // From the squares of d-functions by hand (Edmonds (1957), table 2 and eq. 4.1.15):
         // (3/2) sin², (3/4)(1 + cos²); (15/2) sin² cos², (5/4)(1 − 3cos² + 4cos⁴), (5/4)(1 − cos⁴).
         for angle in [0.0, 10.0, 33.0, 60.0, 90.0, 120.0] {
             let (s, c) = sine_and_cosine(angle);

@@ -38,7 +38,7 @@ everyDoor("the natural isotopes are put in with their shares, and taken out agai
   await open(door, "Nucleus and isotopes");
   await door.until(() => [...document.querySelectorAll("#splitting button")].some((each) => each.textContent === "Put in the natural isotopes" && !each.hidden));
   await door.click("Put in the natural isotopes");
-  // 85Rb 72.17 %, 87Rb 27.83 % (IUPAC, isotopic compositions of the elements 2009).
+  // 85Rb 72.17 %, 87Rb 27.83 % (IUPAC, isotopic compositions of the elements 2009, from memory).
   const value = (path) => door.evaluate((wanted) => document.querySelector(`[data-path="${wanted}"]`)?.value ?? null, path);
   await door.until(() => document.querySelector('[data-path="/isotopes/1/share"]'));
   assert.deepEqual([await value("/isotopes/0/isotope"), await value("/isotopes/1/isotope")], ["85Rb", "87Rb"]);
