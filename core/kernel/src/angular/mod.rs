@@ -3,6 +3,7 @@
 //! Angular momenta are doubled integers throughout, phases those of Condon and Shortley.
 
 pub mod equivalent;
+mod narrow_six_j;
 mod nine_j;
 pub mod parentage;
 mod racah_sum;

@@ -1,5 +1,6 @@
 //! Wigner 6j symbols.
 
+use super::narrow_six_j::narrow_six_j;
 use super::racah_sum::{Tetrahedron, nearest};
 use super::triad::{CAPACITY, beyond, signed_root};
 use crate::numerics::binomial::triangle;
@@ -20,7 +21,9 @@ use crate::problem::Problem;
 /// (1957), §6.3.
 #[must_use]
 pub fn wigner_6j(two_a: i32, two_b: i32, two_c: i32, two_d: i32, two_e: i32, two_f: i32) -> f64 {
-    try_wigner_6j(two_a, two_b, two_c, two_d, two_e, two_f).unwrap_or(f64::INFINITY)
+    let two_j = [two_a, two_b, two_c, two_d, two_e, two_f];
+    // A result with a fault in it travels through memory: not for what is asked millions of times.
+    narrow_six_j(two_j, triangle()).unwrap_or_else(|| general(two_j).unwrap_or(f64::INFINITY))
 }
 
 /// [`wigner_6j`] with the fault `angular-momentum-too-large` where it is not computed.
@@ -36,6 +39,12 @@ pub fn try_wigner_6j(
     two_f: i32,
 ) -> Result<f64, Problem> {
     let two_j = [two_a, two_b, two_c, two_d, two_e, two_f];
+    narrow_six_j(two_j, triangle()).map_or_else(|| general(two_j), Ok)
+}
+
+/// Any arguments, in as many digits as it takes.
+#[inline(never)]
+fn general(two_j: [i32; 6]) -> Result<f64, Problem> {
     let Some(tetrahedron) = Tetrahedron::of(two_j) else {
         return Ok(0.0);
     };

@@ -11,6 +11,10 @@ const WIDTH: usize = LARGEST_ROW + 1;
 /// Pascal's triangle for n ≤ 67 in a square, so that both rows and columns can be walked.
 pub struct Triangle {
     entries: Vec<u64>,
+    /// C(n+k, k) by n and k: a column of the triangle in one piece.
+    rising: Vec<u64>,
+    /// The entries as numbers of 53 bits.
+    nearest: Vec<f64>,
 }
 
 static TRIANGLE: LazyLock<Triangle> = LazyLock::new(Triangle::build);
@@ -37,7 +41,37 @@ impl Triangle {
                 left = above;
             }
         }
-        Triangle { entries }
+        let rising = (0..WIDTH * WIDTH)
+            .map(|place| {
+                let (n, k) = (place / WIDTH, place % WIDTH);
+                entries.get((n + k) * WIDTH + k).copied().unwrap_or(0)
+            })
+            .collect();
+        let nearest = entries.iter().map(|entry| *entry as f64).collect();
+        Triangle {
+            entries,
+            rising,
+            nearest,
+        }
+    }
+
+    /// C(n, k), C(n, k+1), … , so many of them; nothing outside the triangle.
+    #[inline]
+    pub fn row(&self, n: i32, k: i32, count: i32) -> &[u64] {
+        run(&self.entries, n, k, count)
+    }
+
+    /// C(n+k, k), C(n+k+1, k+1), … , so many of them; nothing outside the triangle.
+    #[inline]
+    pub fn rising(&self, n: i32, k: i32, count: i32) -> &[u64] {
+        run(&self.rising, n, k, count)
+    }
+
+    /// C(n, k) as the nearest number of 53 bits; zero outside 0 ≤ k ≤ n ≤ 67.
+    #[inline]
+    pub fn nearest(&self, n: i32, k: i32) -> f64 {
+        let place = (n * WIDTH as i32 + k).cast_unsigned() as usize;
+        self.nearest.get(place).copied().unwrap_or(0.0)
     }
 
     /// C(n, k); zero outside 0 ≤ k ≤ n ≤ 67.
@@ -60,6 +94,14 @@ impl Triangle {
     pub fn down_column(&self, n: usize, k: usize) -> std::iter::StepBy<std::slice::Iter<'_, u64>> {
         self.along_row(n, k).step_by(WIDTH)
     }
+}
+
+/// So many entries of a square, beginning at (n, k).
+#[inline]
+fn run(square: &[u64], n: i32, k: i32, count: i32) -> &[u64] {
+    let from = (n * WIDTH as i32 + k).cast_unsigned() as usize;
+    let to = from.wrapping_add(count.cast_unsigned() as usize);
+    square.get(from..to).unwrap_or(&[])
 }
 
 /// C(n, k) of any size; zero for k > n.
@@ -100,5 +142,12 @@ mod tests {
         assert_eq!(row, [4, 6, 4, 1]);
         let column: Vec<u64> = triangle().down_column(2, 2).take(4).copied().collect();
         assert_eq!(column, [1, 3, 6, 10]);
+        assert_eq!(triangle().row(4, 1, 4), [4, 6, 4, 1]);
+        assert_eq!(triangle().rising(3, 0, 4), [1, 4, 10, 20]);
+        assert_eq!(
+            triangle().nearest(67, 33),
+            14_226_520_737_620_288_370_u64 as f64
+        );
+        assert!(triangle().row(68, 0, 2).is_empty() && triangle().row(-1, 0, 2).is_empty());
     }
 }
