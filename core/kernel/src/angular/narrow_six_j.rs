@@ -101,7 +101,7 @@ mod tests {
                 base.over(one.times(two).times(three)),
             )
         };
-        let mut check = |two_j: [i32; 6]| {
+        let check = |two_j: [i32; 6]| {
             let found = narrow_six_j(two_j, triangle());
             if let Some(value) = found {
                 let expected = by_digits(two_j);
