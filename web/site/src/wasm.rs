@@ -141,7 +141,10 @@ pub fn optimise(paths: &Paths, node: &Node, from: &Path, to: &Path) -> Outcome<(
     capture(
         node.tool(paths, "binaryen/bin/wasm-opt")
             .args([
-                "-O3",
+                // Shorter code, and no slower: what is worth unrolling the compiler has unrolled.
+                "-Os",
+                // What is called from one place alone stands there, however long.
+                "--one-caller-inline-max-function-size=1000",
                 // Functions of one room side by side: they are alike, and gzip sees that.
                 "--reorder-functions-by-name",
                 "--strip-debug",

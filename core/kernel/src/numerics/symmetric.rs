@@ -30,13 +30,15 @@ pub fn eigensystem(matrix: DMatrix<f64>) -> Option<Eigensystem> {
     let system = SymmetricEigen::try_new(matrix, f64::EPSILON, sweeps)?;
     let mut order: Vec<(f64, usize)> = system.eigenvalues.iter().copied().zip(0..).collect();
     sort_by(&mut order, |left, right| left.0.total_cmp(&right.0));
-    let columns: Vec<_> = order
-        .iter()
-        .map(|&(_, place)| system.eigenvectors.column(place).into_owned())
-        .collect();
+    // A column is one piece of memory: copied as such, not element by element.
+    let (size, found) = (order.len(), system.eigenvectors.as_slice());
+    let mut vectors = Vec::with_capacity(found.len());
+    for &(_, place) in &order {
+        vectors.extend_from_slice(found.get(place * size..(place + 1) * size)?);
+    }
     Some(Eigensystem {
-        values: order.iter().map(|&(value, _)| value).collect(),
-        vectors: DMatrix::from_columns(&columns),
+        values: order.into_iter().map(|(value, _)| value).collect(),
+        vectors: DMatrix::from_vec(size, size, vectors),
     })
 }
 

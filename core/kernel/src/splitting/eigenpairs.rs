@@ -57,7 +57,7 @@ pub fn eigenpairs(size: usize, matrix: &mut [f64], found: &mut Eigenpairs) -> Op
         _ => {
             let system = eigensystem(DMatrix::from_column_slice(size, size, matrix))?;
             found.values.extend(system.values);
-            found.vectors.extend(system.vectors.iter());
+            found.vectors.extend_from_slice(system.vectors.as_slice());
         }
     }
     Some(())
