@@ -2,10 +2,12 @@
 //!
 //! Levels of sodium and lithium: published intervals, sources beside them.
 
-use rungline_core::constants::{BOHR_MAGNETON_WAVENUMBER, ELECTRON_G};
+use rungline_core::configuration::Orbital;
+use rungline_core::constants::{BOHR_MAGNETON_WAVENUMBER, ELECTRON_G, HARTREE_WAVENUMBER};
+use rungline_core::radial::hydrogenic::multipole;
 use rungline_core::splitting::in_field::{
-    AtField, Components, CrossingKind, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus, OneElectron,
-    Operator, Reduced, Split, Tolerance, Wanted, component_crossings, crossings, map,
+    AtField, Components, CrossingKind, Diamagnetic, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus,
+    OneElectron, Operator, Reduced, Split, Tolerance, Wanted, component_crossings, crossings, map,
 };
 use rungline_tests::{Row, report};
 
@@ -377,4 +379,84 @@ fn maps_that_cannot_be_are_refused() {
     ] {
         assert_eq!(code(range, 10), "field-out-of-range");
     }
+}
+
+/// ρ² of one electron about a proton in closed form, without fine structure and in fields that leave ℓ and spin apart:
+/// E = μ_B B (m + g_s m_s) + (μ_B² B²/2E_h) ⟨r²⟩ 2(ℓ²+ℓ−1+m²)/[(2ℓ−1)(2ℓ+3)] in a₀, and for 3s with 3d, m = 0, the
+/// two by two of ⟨3s|r²|3d⟩/√5 (Bethe & Salpeter, *Quantum Mechanics of One- and Two-Electron Atoms* (1957), §47 and
+/// eq. 3.20).
+#[test]
+fn the_diamagnetic_term_of_one_electron_is_the_closed_one() {
+    let tesla = 900.0;
+    let linear = BOHR_MAGNETON_WAVENUMBER.value * tesla;
+    let square = linear * linear / (2.0 * HARTREE_WAVENUMBER.value);
+    let split = |levels: &[OneElectron]| {
+        let term = Diamagnetic::one_electron(levels, 1, None).expect("a charge");
+        let manifold = Manifold::one_electron(levels).expect("levels").with(term);
+        let split = Split::new(&manifold, None).expect("a split");
+        let mut found = split.at(tesla).expect("a field").energies;
+        found.sort_by(f64::total_cmp);
+        found
+    };
+    let shift = |n: f64, l: f64, m: f64| {
+        let radius = n * n * (5.0 * n * n + 1.0 - 3.0 * l * (l + 1.0)) / 2.0;
+        radius * 2.0 * (l * l + l - 1.0 + m * m) / ((2.0 * l - 1.0) * (2.0 * l + 3.0))
+    };
+    let mut worst = 0.0_f64;
+    let mut cases = 0;
+    let mut compare = |found: &[f64], mut expected: Vec<f64>| {
+        expected.sort_by(f64::total_cmp);
+        assert_eq!(found.len(), expected.len());
+        for (found, expected) in found.iter().zip(&expected) {
+            worst = worst.max((found - expected).abs() / square);
+            cases += 1;
+        }
+    };
+    let spins = [-0.5, 0.5].map(|m| m * ELECTRON_G.value);
+    for n in 1..=6_u8 {
+        for l in 0..n.min(5) {
+            let two_l = 2 * i32::from(l);
+            let js = [two_l - 1, two_l + 1].into_iter().filter(|j| *j > 0);
+            let levels: Vec<_> = js.map(|two_j| level(n, l, two_j, 0.0)).collect();
+            let (n, l) = (f64::from(n), f64::from(l));
+            let expected = (-two_l / 2..=two_l / 2).flat_map(|m| {
+                let m = f64::from(m);
+                spins.map(|spin| linear * (m + spin) + square * shift(n, l, m))
+            });
+            compare(&split(&levels), expected.collect());
+        }
+    }
+    let between = multipole(
+        Orbital::new(3, 0).expect("3s"),
+        Orbital::new(3, 2).expect("3d"),
+        2,
+        1.0,
+    );
+    let between = between.expect("a charge").expect("it converges") * (2.0 / 3.0) / 5.0_f64.sqrt();
+    let (s, d) = (shift(3.0, 0.0, 0.0), shift(3.0, 2.0, 0.0));
+    let half = ((s - d) * (s - d) / 4.0 + between * between).sqrt();
+    let mut expected = Vec::new();
+    for spin in spins {
+        expected.extend([-half, half].map(|h| linear * spin + square * ((s + d) / 2.0 + h)));
+        for m in [-2.0, -1.0, 1.0, 2.0] {
+            expected.push(linear * (m + spin) + square * shift(3.0, 2.0, m));
+        }
+    }
+    let levels = [
+        level(3, 0, 1, 0.0),
+        level(3, 2, 3, 0.0),
+        level(3, 2, 5, 0.0),
+    ];
+    compare(&split(&levels), expected);
+    report(
+        "splitting_diamagnetic_one_electron",
+        Row {
+            quantity: "⟨ρ²⟩ of states of hydrogen, n up to 6, a₀²".into(),
+            cases,
+            worst,
+            tolerance: 1e-5,
+            measure: "absolute".into(),
+            source: "Bethe & Salpeter, Quantum Mechanics of One- and Two-Electron Atoms (1957), §47: closed forms".into(),
+        },
+    );
 }

@@ -4,6 +4,7 @@ use crate::problem::Problem;
 use crate::splitting::in_field::{Diamagnetic, Manifold, Nucleus, OneElectron, Split};
 
 use super::document::Document;
+use super::energy_case::EnergyCase;
 use super::levels_rows::Shared;
 use super::line_ends::End;
 use super::nucleus::Nuclear;
@@ -85,23 +86,43 @@ pub fn manifold(
                 })
             })
             .collect();
-        let problem = Problem::new(
-            "radius-not-known",
-            "The diamagnetic term of one electron in closed form is left out.",
-            0,
-            0,
-        );
-        return Ok((Manifold::one_electron(&electrons)?, Err(problem)));
+        let EnergyCase::OneElectron { z, mass, .. } = solved.case() else {
+            return Ok((
+                Manifold::one_electron(&electrons)?,
+                Err(no_radial_functions()),
+            ));
+        };
+        let plain = Manifold::one_electron(&electrons)?;
+        let term = Diamagnetic::one_electron(&electrons, *z, Some(*mass))?;
+        return Ok(joined(plain, term, with_diamagnetic));
     };
     let plain = Manifold::of_parity(spectrum, parity, &energies)?;
-    // Its size is always told; it acts only where the sheet says so.
     let term = match Diamagnetic::of_parity(spectrum, parity) {
         Ok(term) => term,
         Err(problem) => return Ok((plain, Err(problem))),
     };
+    Ok(joined(plain, term, with_diamagnetic))
+}
+
+/// Its size is always told; it acts only where the sheet says so.
+fn joined(
+    plain: Manifold,
+    term: Diamagnetic,
+    acts: bool,
+) -> (Manifold, Result<Option<f64>, Problem>) {
     let with = plain.clone().with(term);
     let size = with.diamagnetic_shift(1.0);
-    Ok((if with_diamagnetic { with } else { plain }, Ok(size)))
+    (if acts { with } else { plain }, Ok(size))
+}
+
+/// Why the diamagnetic term cannot act.
+pub fn no_radial_functions() -> Problem {
+    Problem::new(
+        "radius-not-known",
+        "The diamagnetic term needs the mean square radius, and there are no radial functions here.",
+        0,
+        0,
+    )
 }
 
 /// A set within the bounds: as a whole, or where a nucleus makes it too large the levels of the terms of the

@@ -257,8 +257,9 @@ impl OneFile<'_> {
     }
 }
 
-/// Bytes of a piece: 13 fill 16 characters, so that no piece but the last has a fill.
-const PIECE: usize = 13 << 11;
+/// Bytes of a piece: so many that its element's own characters do not count, so few that the first ones
+/// are unpacked while the last are read.
+const PIECE: usize = 1 << 16;
 
 /// A packed part as text in pieces, which `www/js/unpack.js` takes while the next ones are read.
 fn pieces(part: &str, packed: &[u8]) -> String {

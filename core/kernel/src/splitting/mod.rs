@@ -19,6 +19,7 @@ mod linear;
 mod manifold;
 mod map;
 mod nucleus;
+mod one_electron;
 mod operator;
 mod part;
 mod probe;
