@@ -1,7 +1,6 @@
 //! What a case takes, found before anything is built.
 
 use super::case::Case;
-use super::correlation::Correlation;
 use crate::problem::Problem;
 use crate::structure::{MOST_ROWS, multiplications};
 
@@ -43,12 +42,10 @@ pub(super) fn matrix_seconds(rows: f64) -> f64 {
 
 /// Seconds for correlation within the subshells of a configuration: more for larger ℓ.
 pub(super) fn correlation_seconds(case: &Case, configuration: usize) -> f64 {
-    if !(case.correlation && case.computed) {
-        return 0.0;
-    }
     let subshells = case.configurations.get(configuration);
-    let moved = (subshells.into_iter().flatten()).filter(|s| Correlation::matters(**s));
-    moved.fold(0.0, |sum, s| sum + 0.05 * f64::from(s.orbital().l()))
+    let moved = (subshells.into_iter().flatten())
+        .filter(|s| case.correlates(configuration, s.orbital()) == Some(Ok(())));
+    moved.fold(0.0, |sum, s| sum + 5e-4 * f64::from(s.orbital().l()))
 }
 
 /// Sizes and costs of a case.
