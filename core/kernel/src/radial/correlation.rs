@@ -16,7 +16,7 @@
 //! The empty orbitals are all eigenfunctions, on splines, of the field that an electron of the
 //! subshell sees, exchange by Slater's average, orthogonal to what is occupied. Since every integral holds
 //! P_ℓ, the splines reach no farther than it does and need no finer mesh than its own scale: 23 functions
-//! for each ℓ give ΔF^k within 1 % of those of 47 in a box twice as large (C to U). Left out: states close by
+//! for each ℓ give ΔF^k within 1 % of those of 47 in a larger box (C to U). Left out: states close by
 //! or below, which have to be mixed in; single electrons that leave the subshell, third order, and what
 //! three electrons do together.
 //!

@@ -94,10 +94,10 @@ impl UsualDeviation {
     /// Of a subshell p, d or f; of f by all terms of one ion alone.
     pub fn of(orbital: Orbital) -> Option<Self> {
         let (without, with, higher) = match (orbital.n(), orbital.l()) {
-            (2, 1) => ((6, 24), 4, Some((46, 20))),
-            (_, 1) => ((18, 40), 4, Some((46, 20))),
-            (_, 2) => ((23, 46), 12, Some((46, 20))),
-            (_, 3) => ((14, 38), 5, None),
+            (2, 1) => ((6, 24), 4, Some((46, 17))),
+            (_, 1) => ((18, 40), 4, Some((41, 15))),
+            (_, 2) => ((23, 46), 11, Some((50, 13))),
+            (_, 3) => ((14, 38), 4, None),
             _ => return None,
         };
         Some(UsualDeviation {

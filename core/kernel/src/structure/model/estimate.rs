@@ -40,12 +40,14 @@ pub(super) fn matrix_seconds(rows: f64) -> f64 {
     }
 }
 
-/// Seconds for correlation within the subshells of a configuration: more for larger ℓ.
+/// Seconds for correlation within the subshells of a configuration that have it: more for larger ℓ.
 pub(super) fn correlation_seconds(case: &Case, configuration: usize) -> f64 {
     let subshells = case.configurations.get(configuration);
     let moved = (subshells.into_iter().flatten())
         .filter(|s| case.correlates(configuration, s.orbital()) == Some(Ok(())));
-    moved.fold(0.0, |sum, s| sum + 5e-4 * f64::from(s.orbital().l()))
+    moved.fold(0.0, |sum, s| {
+        sum + 0.001 + 4e-4 * f64::from(s.orbital().l())
+    })
 }
 
 /// Sizes and costs of a case.
