@@ -113,18 +113,6 @@ pub fn computed(document: &Document, case: &Case, entries: &[usize]) -> Vec<Stri
         "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; fine-structure intervals of ground terms 5 %, nine of ten within 13 %, but of the outer p electron of an excited alkali up to 44 % too small. Pin measured energies for wavelengths to be compared with a spectrometer.".to_owned(),
     ];
     limits.extend(correlation(document, case, entries).map(|row| row.say));
-    let twice = case.orbitals().into_iter().any(|orbital| {
-        (0..case.configurations.len()).any(|place| {
-            case.correlates(place, orbital) == Some(Ok(()))
-                && case.mixed_pair(place, orbital).is_some()
-        })
-    });
-    if twice {
-        limits.push(
-            "Two of these configurations differ by two electrons of one subshell and mix, and correlation within subshells is added: what both describe counts twice. Without mixing or without correlation it counts once."
-                .to_owned(),
-        );
-    }
     limits
 }
 
@@ -137,30 +125,31 @@ pub fn correlation(document: &Document, case: &Case, entries: &[usize]) -> Optio
     };
     let (mut subshells, mut left_out) = (Vec::new(), Vec::new());
     let (mut parts, mut reasons): (Vec<String>, Vec<String>) = (Vec::new(), Vec::new());
-    let mut refused = false;
+    let (mut refused, mut twice) = (false, false);
     for orbital in case.orbitals() {
         let Some(usual) = UsualDeviation::of(orbital) else {
             continue;
         };
         let name = orbital.to_string();
-        let (mut configurations, mut lacking) = (Vec::new(), false);
+        let mut configurations = Vec::new();
+        let before = left_out.len();
         for place in 0..case.configurations.len() {
             let why = match case.correlates(place, orbital) {
                 None => continue,
                 Some(Ok(())) => {
+                    twice |= case.mixed_pair(place, orbital).is_some();
                     configurations.push(label(place));
                     continue;
                 }
                 Some(Err(why)) => why,
             };
-            lacking = true;
             refused |= why == Uncorrelated::Refused;
             let because = match why {
                 Uncorrelated::Refused => "as the sheet asks".to_owned(),
                 Uncorrelated::Scaled => {
                     "the scale of F stands for the same, and would count twice".to_owned()
                 }
-                Uncorrelated::Given => format!("its F are given: F2({name},{name}) …"),
+                Uncorrelated::Given => "F of its own are given".to_owned(),
                 Uncorrelated::Mixed(other) => format!(
                     "{} mixes with it and differs by two electrons of {name}: part of the same correlation",
                     label(other)
@@ -174,28 +163,20 @@ pub fn correlation(document: &Document, case: &Case, entries: &[usize]) -> Optio
                 because,
             });
         }
-        if configurations.is_empty() && !lacking {
+        if configurations.is_empty() && left_out.len() == before {
             continue;
         }
         let (least, most) = usual.without;
-        let first = match usual.higher {
-            Some(_) => "the first excited term",
-            None => "a level of 4f2 of Pr IV, by that ion alone,",
-        };
-        let (mut with, mut without) = (
-            format!("within {} %", usual.with),
-            format!("{least} to {most} % too far up"),
-        );
-        if let Some((bare, correlated)) = usual.higher {
-            with.push_str(&format!(", higher ones within {correlated} %"));
-            without.push_str(&format!(", higher ones up to {bare} % off"));
-        }
-        let words = match (configurations.is_empty(), lacking) {
-            (true, _) => format!("{without} (with it {with})"),
-            (false, false) => format!("{with} (without it {without})"),
-            (false, true) => format!("with it {with}, without it {without}"),
-        };
-        parts.push(format!("{first} of {name} is {words}"));
+        parts.push(match usual.higher {
+            Some((bare, correlated)) => format!(
+                "the first excited term of {name} is within {} %, higher ones within {correlated} % (without it {least} to {most} % too far up, higher ones up to {bare} % off)",
+                usual.with
+            ),
+            None => format!(
+                "levels of {name} are, by Pr IV 4f2 alone, within {} % (without it {least} to {most} % too far up)",
+                usual.with
+            ),
+        });
         subshells.push(CorrelatedRow {
             orbital: name,
             without: usual.without,
@@ -226,9 +207,12 @@ pub fn correlation(document: &Document, case: &Case, entries: &[usize]) -> Optio
         ));
     }
     say.push_str(&format!(
-        "Above the ground term {}, by the validation report.",
+        "Above the ground term, by the validation report, with it {}.",
         parts.join("; ")
     ));
+    if twice {
+        say.push_str(" Two of these configurations differ by two electrons of one subshell and mix: what correlation and mixing both describe counts twice.");
+    }
     Some(CorrelationRow {
         on,
         subshells,

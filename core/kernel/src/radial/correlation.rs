@@ -109,8 +109,8 @@ impl Solution {
             }
         }
         let twice = 2.0 * orbital.energy;
-        let pair = seen.pairs(&empty, |energies| energies - twice);
-        let exclusion = seen.pairs(&cores, |energies| twice - energies);
+        let pair = seen.pairs(&empty, twice, 1.0);
+        let exclusion = seen.pairs(&cores, twice, -1.0);
         let screening = seen.screening(&cores, &empty);
         let parts = pair.iter().zip(&exclusion).zip(&screening);
         Some(parts.map(|((pair, ex), sc)| -(pair + ex + sc)).collect())
@@ -210,9 +210,9 @@ impl<'a> Seen<'a> {
         Some(Partners { l: l.into(), all })
     }
 
-    /// Σ A_rs²/gap of every term over every pair of these orbitals, of those whose gap, from ε_r + ε_s, is
+    /// Σ A_rs²/gap of every term over every pair of these orbitals above (or with −1 below) 2ε whose gap is
     /// large enough.
-    fn pairs(&self, partners: &[Partners], gap: impl Fn(f64) -> f64) -> Vec<f64> {
+    fn pairs(&self, partners: &[Partners], twice: f64, above: f64) -> Vec<f64> {
         let mut sums = vec![0.0; usize::try_from(2 * self.l + 1).unwrap_or(0)];
         let mut amplitudes = sums.clone();
         for (place, group) in partners.iter().enumerate() {
@@ -230,7 +230,7 @@ impl<'a> Seen<'a> {
                     let own = other.l == group.l;
                     let count = if own { number + 1 } else { other.all.len() };
                     for (of_other, r) in other.all.iter().enumerate().take(count) {
-                        let gap = gap(r.energy + s.energy);
+                        let gap = above * (r.energy + s.energy - twice);
                         if gap <= LEAST {
                             continue;
                         }

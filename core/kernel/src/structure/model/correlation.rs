@@ -31,6 +31,7 @@ pub enum Uncorrelated {
 impl Case {
     /// Whether correlation within a subshell of a configuration is computed; nothing where there is none to be
     /// computed.
+    #[inline(never)]
     pub fn correlates(&self, place: usize, orbital: Orbital) -> Option<Result<(), Uncorrelated>> {
         self.nucleus.filter(|_| self.computed)?;
         let electrons = self.electrons(place, orbital);
@@ -54,6 +55,7 @@ impl Case {
     }
 
     /// The configuration that mixes with this one and differs from it by two electrons of this orbital.
+    #[inline(never)]
     pub fn mixed_pair(&self, place: usize, orbital: Orbital) -> Option<usize> {
         let apart = |other: usize, of: Orbital| {
             self.electrons(place, of)

@@ -4,9 +4,9 @@ use super::case::Case;
 use crate::problem::Problem;
 use crate::structure::{MOST_ROWS, multiplications};
 
-/// Sizes and costs; seconds are those of a browser on a machine of 2020 or so. Levels of eighteen cases from
-/// Na to Eu III 4f⁷ + 4f⁶5d in the full build took 0.43 to 1.6 times as long, and 2.5 times where parentage and
-/// compiled code were not there yet.
+/// Sizes and costs; seconds are those of a browser on a machine of 2020 or so. Levels of twelve cases from
+/// C I to Eu III 4f⁷ + 4f⁶5d, correlation in them, took 0.8 to 1.5 times as long in the full build, and up to 6
+/// times where parentage and compiled code were not there yet.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Estimate {
     /// Whole time.
