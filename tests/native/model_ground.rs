@@ -68,7 +68,8 @@ fn check(correlation: bool, name: &str, what: &str, exceptions: &[&str]) {
             let subshells: Vec<Subshell> = subshells.collect();
             let rules = hund::ground(&subshells).j.map(|j| j.doubled());
             let mut case = Case::new(z, stable_mass_number(z), vec![subshells]);
-            case.correlation = correlation;
+            // With it is what happens by default.
+            case.correlation = (!correlation).then_some(false);
             let spectrum = solve(&case, &mut field, &mut |_| true).expect("levels");
             let lowest = spectrum.levels.first().expect("a level");
             let (parity, level) = spectrum.level(*lowest).expect("a level");

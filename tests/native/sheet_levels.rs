@@ -461,6 +461,74 @@ fn correlation_brings_terms_together() {
 }
 
 #[test]
+fn correlation_is_in_where_it_is_sound_and_the_answer_says_where_not() {
+    let of = |configurations: &[&str], structure: Value| {
+        let found = levels(&sheet(
+            "Ti",
+            configurations,
+            json!({"structure": structure}),
+        ));
+        let rows = found["parameters"].as_array().unwrap().clone();
+        let change = move |name: &str| rows.iter().find(|row| row["name"] == name).cloned();
+        (
+            found["correlation"].clone(),
+            found["limits"].to_string(),
+            change,
+        )
+    };
+    let (told, limits, row) = of(&["3d2 4s2"], json!({}));
+    assert_eq!(told["on"], true);
+    assert_eq!(told["left_out"], json!([]));
+    assert!(
+        told["way"].is_null() && limits.contains("3d of 3d2 4s2"),
+        "{limits}"
+    );
+    // F² stays that of the radial functions; what is added is a row of its own, which cannot be given.
+    let (_, _, bare) = of(&["3d2 4s2"], json!({"correlation": false}));
+    assert_eq!(row("F2(3d,3d)"), bare("F2(3d,3d)"));
+    let added = row("ΔF2(3d,3d)").unwrap();
+    assert!(number(&added["value"]) < -10_000.0 && added["kind"] == "computed");
+    assert_eq!(added["can_be_given"], false);
+    assert!(bare("ΔF2(3d,3d)").is_none() && bare("alpha(3d)").is_none());
+    // A scale of F stands for the same; a word of the sheet wins.
+    let (told, limits, row) = of(&["3d2 4s2"], json!({"scale": {"F": 0.85}}));
+    assert_eq!(told["on"], false);
+    assert!(limits.contains("count twice") && row("alpha(3d)").is_none());
+    let (told, ..) = of(
+        &["3d2 4s2"],
+        json!({"scale": {"F": 0.85}, "correlation": true}),
+    );
+    assert_eq!(told["on"], true);
+    // So does a given F.
+    let (told, limits, row) = of(&["3d2 4s2"], json!({"given": {"F2(3d,3d)": "60000 cm-1"}}));
+    assert_eq!(
+        (told["on"] == true, row("ΔF4(3d,3d)").is_some()),
+        (false, false),
+        "{limits}"
+    );
+    assert_eq!(row("F2(3d,3d)").unwrap()["value"], 60_000.0);
+    // What mixes in describes part of it.
+    let (told, limits, _) = of(&["3d2 4s2", "3d3 4s", "3d4"], json!({}));
+    assert_eq!(told["subshells"][0]["configurations"], json!(["3d3 4s"]));
+    let left: Vec<&Value> = told["left_out"]
+        .as_array()
+        .unwrap()
+        .iter()
+        .map(|row| &row["configuration"])
+        .collect();
+    assert_eq!(left, ["3d2 4s2", "3d4"]);
+    assert!(
+        limits.contains("differs by two electrons of 3d"),
+        "{limits}"
+    );
+    let (told, limits, _) = of(&["3d2 4s2", "3d4"], json!({"correlation": true}));
+    assert_eq!(told["left_out"], json!([]));
+    assert!(limits.contains("counts twice"), "{limits}");
+    let (told, ..) = of(&["3d2 4s2", "3d4"], json!({"mixing": false}));
+    assert_eq!(told["left_out"], json!([]));
+}
+
+#[test]
 fn what_is_kept_costs_nothing_again() {
     let estimate = |sheet: &Value, question: &str| -> (f64, f64) {
         let text = rungline_core::sheet::estimate_message(

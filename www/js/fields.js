@@ -197,15 +197,18 @@ export function flagField({ store, setField }, path, label, short, usual = true)
   return element("label", { class: "check" }, box, element("span", { text: label }));
 }
 
-/** An entry that is one of a few words: [[word, how it is said]]; "" leaves the sheet silent. */
+/** An entry that is one of a few words or yes and no: [[word, how it is said]]; "" leaves the sheet silent. */
 export function wordField({ store, setField }, path, label, words) {
   const id = freshId("word");
   const box = element("select", { id, "data-path": path }, ...words.map(([value, text]) => element("option", { value, text })));
   const fill = () => {
     const value = valueAt(store.sheet, path) ?? "";
-    box.value = words.some(([word]) => word === value) ? value : "";
+    box.selectedIndex = Math.max(0, words.findIndex(([word]) => word === value));
   };
-  box.addEventListener("change", () => setField(path, box.value || undefined, `${label} ${box.selectedOptions[0].textContent}`));
+  box.addEventListener("change", () => {
+    const [word, text] = words[box.selectedIndex];
+    setField(path, word === "" ? undefined : word, `${label} ${text}`);
+  });
   store.subscribe(fill);
   fill();
   return element("div", { class: "field" }, element("label", { for: id, text: label }), element("span", { class: "hint" }), box);

@@ -25,8 +25,8 @@ export function lineFields(fields, questions, { store, view, setField, openCsv }
       fold("energies", "Energies: scales and values of your own",
         row(wordField({ store, setField }, "/structure/energies", "Energies", [["", "computed"], ["given", "from given values alone"]]),
           element("div", { class: "flags" },
-            flagField({ store, setField }, "/structure/mixing", "Configurations mix", "Mixing"),
-            flagField({ store, setField }, "/structure/correlation", "Correlation within subshells, second order", "Correlation", false))),
+            flagField({ store, setField }, "/structure/mixing", "Configurations mix", "Mixing")),
+          wordField({ store, setField }, "/structure/correlation", "Correlation within subshells", [["", "where it is sound"], [true, "everywhere"], [false, "left out"]])),
         row(scale("F", "Scale of F"), scale("G", "Scale of G"), scale("R", "Scale of R"), scale("zeta", "Scale of ζ")),
         namedRows({
           fields, store, path: "/structure/given",

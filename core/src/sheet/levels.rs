@@ -89,7 +89,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
         .as_ref()
         .and_then(|filled| ionised::row(document, &solved, &placed, &series, filled));
     let correlation = match solved.case() {
-        EnergyCase::Model { case, .. } => levels_limits::correlation(case),
+        EnergyCase::Model { case, entries } => levels_limits::correlation(document, case, entries),
         EnergyCase::OneElectron { .. } => None,
     };
     let told = Told {

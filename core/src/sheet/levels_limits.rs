@@ -1,8 +1,7 @@
 //! What the answers on levels and lines leave out, and how far off that puts them.
 
-use crate::configuration::{Orbital, Subshell};
 use crate::quantity::TwiceJ;
-use crate::structure::model::{Case, Correlation, Scale, UsualDeviation};
+use crate::structure::model::{Case, Scale, Uncorrelated, UsualDeviation};
 
 use super::document::Document;
 use super::energy_case::{EnergyCase, given_value};
@@ -10,7 +9,7 @@ use super::given::Given;
 use super::json::Json;
 use super::lack::Way;
 use super::levels::parity;
-use super::levels_rows::{CorrelatedRow, CorrelationRow};
+use super::levels_rows::{CorrelatedRow, CorrelationRow, LeftOutRow};
 use super::levels_words::Told;
 use super::rich::Kind;
 use super::solved::Solved;
@@ -24,9 +23,9 @@ pub fn limits(told: &Told) -> Vec<String> {
             "One electron in the field of a point nucleus of finite mass; the Lamb shift and the spin of the nucleus are left out (in hydrogen 0.27 cm⁻¹ for 1s and 0.035 cm⁻¹ for 2s, from memory)."
                 .to_owned(),
         ),
-        EnergyCase::Model { case, .. } => {
+        EnergyCase::Model { case, entries } => {
             if case.computed {
-                limits.extend(computed(case));
+                limits.extend(computed(document, case, entries));
             } else {
                 limits.push(
                     "Energies follow from the given parameters alone; what is not given is zero."
@@ -92,7 +91,10 @@ pub fn without_effect(document: &Document, solved: &Solved) -> Option<String> {
         (structure.scale != Scale::default(), "the scales"),
         (!structure.relativity, "“without relativity”"),
         (!structure.mixing, "“without mixing”"),
-        (structure.correlation, "correlation within subshells"),
+        (
+            structure.correlation == Some(true),
+            "correlation within subshells",
+        ),
         (structure.polarisation.is_some(), "core polarisation"),
     ];
     let words = switched.iter().filter(|(is, _)| *is);
@@ -106,98 +108,121 @@ pub fn without_effect(document: &Document, solved: &Solved) -> Option<String> {
 }
 
 /// How far computed energies usually are from measured ones, by the validation report.
-pub fn computed(case: &Case) -> Vec<String> {
-    let terms = correlation(case).map_or(String::new(), |row| format!(" {}", row.say));
-    let mut limits = vec![format!(
-        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; fine-structure intervals 5 %, nine of ten within 13 %.{terms} Pin measured energies for wavelengths to be compared with a spectrometer."
-    )];
-    if case.correlation && case.mixing && pairs_of_one_subshell(case) {
-        limits.push(
-            "Two of these configurations differ by two electrons of one subshell and mix, and correlation within subshells is added: what both describe counts twice. Without mixing or without correlation it counts once."
-                .to_owned(),
-        );
-    }
+pub fn computed(document: &Document, case: &Case, entries: &[usize]) -> Vec<String> {
+    let mut limits = vec![
+        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; fine-structure intervals of ground terms 5 %, nine of ten within 13 %, but of the outer p electron of an excited alkali up to 44 % too small. Pin measured energies for wavelengths to be compared with a spectrometer.".to_owned(),
+    ];
+    limits.extend(correlation(document, case, entries).map(|row| row.say));
     limits
 }
 
 /// What correlation within subshells does for the terms of this case; nothing where no subshell has
 /// several, and where nothing is computed.
-pub fn correlation(case: &Case) -> Option<CorrelationRow> {
-    let many = |orbital: &Orbital| {
-        (0..case.configurations.len()).any(|place| {
-            let electrons = case.electrons(place, *orbital);
-            Subshell::new(*orbital, electrons).is_some_and(Correlation::matters)
-        })
+pub fn correlation(document: &Document, case: &Case, entries: &[usize]) -> Option<CorrelationRow> {
+    let label = |place: usize| {
+        let entry = entries.get(place).and_then(|e| document.entries.get(*e));
+        entry.map(|e| e.label.clone()).unwrap_or_default()
     };
-    let subshells: Vec<CorrelatedRow> = case
-        .orbitals()
-        .into_iter()
-        .filter(many)
-        .filter_map(|orbital| {
-            let usual = UsualDeviation::of(orbital)?;
-            Some(CorrelatedRow {
-                orbital: orbital.to_string(),
-                without: usual.without,
-                with: usual.with,
-            })
-        })
-        .collect();
-    if subshells.is_empty() || !case.computed {
+    let (mut subshells, mut left_out) = (Vec::new(), Vec::new());
+    let (mut parts, mut reasons): (Vec<String>, Vec<String>) = (Vec::new(), Vec::new());
+    let (mut refused, mut twice) = (false, false);
+    for orbital in case.orbitals() {
+        let Some(usual) = UsualDeviation::of(orbital) else {
+            continue;
+        };
+        let name = orbital.to_string();
+        let mut configurations = Vec::new();
+        let before = left_out.len();
+        for place in 0..case.configurations.len() {
+            let why = match case.correlates(place, orbital) {
+                None => continue,
+                Some(Ok(())) => {
+                    twice |= case.mixed_pair(place, orbital).is_some();
+                    configurations.push(label(place));
+                    continue;
+                }
+                Some(Err(why)) => why,
+            };
+            refused |= why == Uncorrelated::Refused;
+            let because = match why {
+                Uncorrelated::Refused => "as the sheet asks".to_owned(),
+                Uncorrelated::Scaled => {
+                    "the scale of F stands for the same, and would count twice".to_owned()
+                }
+                Uncorrelated::Given => "F of its own are given".to_owned(),
+                Uncorrelated::Mixed(other) => format!(
+                    "{} mixes with it and differs by two electrons of {name}: part of the same correlation",
+                    label(other)
+                ),
+            };
+            let configuration = label(place);
+            reasons.push(format!("{name} of {configuration} ({because})"));
+            left_out.push(LeftOutRow {
+                orbital: name.clone(),
+                configuration,
+                because,
+            });
+        }
+        if configurations.is_empty() && left_out.len() == before {
+            continue;
+        }
+        let (least, most) = usual.without;
+        parts.push(match usual.higher {
+            Some((bare, correlated)) => format!(
+                "the first excited term of {name} is within {} %, higher ones within {correlated} % (without it {least} to {most} % too far up, higher ones up to {bare} % off)",
+                usual.with
+            ),
+            None => format!(
+                "levels of {name} are, by Pr IV 4f2 alone, within {} % (without it {least} to {most} % too far up)",
+                usual.with
+            ),
+        });
+        subshells.push(CorrelatedRow {
+            orbital: name,
+            without: usual.without,
+            with: usual.with,
+            higher: usual.higher,
+            configurations,
+        });
+    }
+    if subshells.is_empty() {
         return None;
     }
-    let parts: Vec<String> = subshells
-        .iter()
-        .map(|row| {
-            let (least, most) = row.without;
-            let (orbital, with) = (&row.orbital, row.with);
-            match case.correlation {
-                true => {
-                    format!("{orbital} within {with} % (without it {least} to {most} % too large)")
-                }
-                false => {
-                    format!("{orbital} {least} to {most} % too large (with it within {with} %)")
-                }
-            }
-        })
+    let named: Vec<String> = (subshells.iter())
+        .filter(|row| !row.configurations.is_empty())
+        .map(|row| format!("{} of {}", row.orbital, row.configurations.join(", ")))
         .collect();
-    let parts = parts.join(", ");
-    let on = case.correlation;
-    let say = match on {
-        true => format!(
-            "Correlation within subshells is in these energies in second order: distances between terms of {parts}, by the validation report."
-        ),
-        false => format!(
-            "Correlation within subshells is left out: distances between terms of {parts}, by the validation report."
-        ),
-    };
+    let on = !named.is_empty();
+    let mut say = String::new();
+    if on {
+        say.push_str(&format!(
+            "Correlation within subshells is in these energies in second order: {}. ",
+            named.join("; ")
+        ));
+    }
+    if !reasons.is_empty() {
+        say.push_str(&format!(
+            "Correlation within subshells is left out: {}. ",
+            reasons.join("; ")
+        ));
+    }
+    say.push_str(&format!(
+        "Above the ground term, by the validation report, with it {}.",
+        parts.join("; ")
+    ));
+    if twice {
+        say.push_str(" Two of these configurations differ by two electrons of one subshell and mix: what correlation and mixing both describe counts twice.");
+    }
     Some(CorrelationRow {
         on,
         subshells,
+        left_out,
         say,
-        way: (!on).then(|| Way {
+        way: refused.then(|| Way {
             label: "Put in correlation within subshells".to_owned(),
             path: "/structure/correlation".to_owned(),
-            value: Json::Bool(true),
+            value: Json::Null,
         }),
-    })
-}
-
-/// Whether two configurations of one parity differ by two electrons that leave one subshell.
-fn pairs_of_one_subshell(case: &Case) -> bool {
-    let electrons = |place: usize, orbital| i64::from(case.electrons(place, orbital));
-    let places = 0..case.configurations.len();
-    places.clone().any(|one| {
-        places.clone().skip(one + 1).any(|other| {
-            let orbitals = case.orbitals();
-            let differences = || {
-                orbitals
-                    .iter()
-                    .map(|o| electrons(one, *o) - electrons(other, *o))
-            };
-            case.is_odd(one) == case.is_odd(other)
-                && differences().map(i64::abs).sum::<i64>() == 4
-                && differences().any(|difference| difference.abs() == 2)
-        })
     })
 }
 

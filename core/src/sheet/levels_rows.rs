@@ -74,23 +74,38 @@ pub struct ParameterRow {
 /// What correlation within subshells does for these terms, in percent of the distances between them.
 #[derive(Debug, Serialize)]
 pub struct CorrelationRow {
-    /// Whether it is in these energies.
+    /// Whether it is in these energies, for one subshell at least.
     pub on: bool,
     pub subshells: Vec<CorrelatedRow>,
+    /// Subshells of configurations that get none.
+    pub left_out: Vec<LeftOutRow>,
     /// In words.
     pub say: String,
     /// What puts it in.
     pub way: Option<Way>,
 }
 
-/// One kind of subshell: how far distances between its terms usually are off, percent.
+/// One kind of subshell: how far distances of terms from the ground term usually are off, percent.
 #[derive(Debug, Serialize)]
 pub struct CorrelatedRow {
     pub orbital: String,
-    /// Least and most without correlation: too large.
+    /// The first excited term, least and most without correlation: too large.
     pub without: (u8, u8),
     /// At most with it.
     pub with: u8,
+    /// Higher terms without and with correlation, at most in either direction; for f they are above.
+    pub higher: Option<(u8, u8)>,
+    /// The configurations in which it has correlation.
+    pub configurations: Vec<String>,
+}
+
+/// A subshell without correlation.
+#[derive(Debug, Serialize)]
+pub struct LeftOutRow {
+    pub orbital: String,
+    pub configuration: String,
+    /// In words.
+    pub because: String,
 }
 
 #[derive(Debug, Serialize)]

@@ -271,8 +271,8 @@ pub fn limits(told: &Told) -> Vec<String> {
             "Electric dipole lines of one electron between Dirac’s levels, strengths without relativity; the Lamb shift and the spin of the nucleus are left out."
                 .to_owned(),
         ),
-        EnergyCase::Model { case, .. } if any_computed => {
-            limits.extend(computed(case));
+        EnergyCase::Model { case, entries } if any_computed => {
+            limits.extend(computed(told.document, case, entries));
             limits.extend(too_low(told.document, told.solved));
         }
         EnergyCase::Model { .. } => {}

@@ -18,6 +18,8 @@ fn spelling(document: &Document, entries: &[usize], name: Name) -> String {
         Name::Mixing { k, a, b, c, d } => format!("R{k}({a},{b};{c},{d})"),
         Name::OneElectron(a, c) => two("h", a, c),
         Name::SpinOrbit(a) => format!("zeta({a})"),
+        // No name of the sheet's, for what it changes can be given.
+        Name::Change { k, a } => two(&format!("ΔF{k}"), a, a),
         Name::Alpha(a) => format!("alpha({a})"),
         Name::Beta(a) => format!("beta({a})"),
         Name::Gamma(a) => format!("gamma({a})"),
@@ -73,7 +75,7 @@ pub fn rows(document: &Document, solved: &Solved, values: &[Value]) -> Vec<Param
                 },
                 computed: value.computed.map(|computed| computed + 0.0),
                 scale: (value.kind == Kind::Computed && case.computed).then_some(value.scale),
-                can_be_given: !matches!(value.name, Name::OneElectron(..)),
+                can_be_given: !matches!(value.name, Name::OneElectron(..) | Name::Change { .. }),
             }
         })
         .collect()

@@ -32,8 +32,9 @@ pub struct Structure {
     pub energies: Option<Energies>,
     /// Whether configurations of one parity mix.
     pub mixing: bool,
-    /// Whether correlation within subshells is added in second order.
-    pub correlation: bool,
+    /// Whether correlation within subshells is added in second order; where the sheet does not say, where it
+    /// is sound.
+    pub correlation: Option<bool>,
     /// Of computed integrals.
     pub scale: Scale,
     /// Whether the radial equation holds the relativistic terms.
@@ -47,7 +48,7 @@ impl Default for Structure {
         Structure {
             energies: None,
             mixing: true,
-            correlation: false,
+            correlation: None,
             scale: Scale::default(),
             relativity: true,
             polarisation: None,
@@ -69,7 +70,7 @@ impl Structure {
             structure.mixing = *mixing;
         }
         if let Some(Json::Bool(correlation)) = group.get("correlation") {
-            structure.correlation = *correlation;
+            structure.correlation = Some(*correlation);
         }
         let energies = group.get("energies").and_then(Json::as_text);
         structure.energies = match energies.and_then(|typed| choice(typed, &ENERGIES)) {

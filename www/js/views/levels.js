@@ -22,12 +22,12 @@ export function levelParts(whole, levels, endsOf, context) {
   ].filter(Boolean);
 }
 
-/** How much correlation would help here, with the button that puts it in; nothing where it is in, or no level is computed. */
+/** How much correlation would help here, with the button that puts it in; nothing where the sheet does not refuse it, or no level is computed. */
 export function correlationNode({ correlation, levels }, { setField }) {
   if (!correlation?.way || !levels.some(({ energy_kind: kind }) => kind === "computed")) return null;
   const { label, path, value } = correlation.way;
   return element("div", { class: "ways offer" },
-    wayButton({ label }, () => setField(path, value, label)),
+    wayButton({ label }, () => setField(path, value ?? undefined, label)),
     element("span", { class: "note", text: correlation.say }));
 }
 

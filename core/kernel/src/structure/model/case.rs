@@ -42,9 +42,10 @@ pub struct Case {
     pub relativity: bool,
     /// Whether configurations of one parity mix.
     pub mixing: bool,
-    /// Whether correlation within subshells is added to what is computed ([`super::Correlation`]); a
-    /// configuration that mixes in beside it then counts twice.
-    pub correlation: bool,
+    /// Whether correlation within subshells is added to what is computed ([`super::Correlation`]): nowhere,
+    /// everywhere, which counts twice what a configuration describes that mixes in, or without a word where
+    /// that is sound ([`Case::correlates`]).
+    pub correlation: Option<bool>,
     /// Factors on what is computed.
     pub scale: Scale,
     /// Core polarisation with its core.
@@ -56,14 +57,14 @@ pub struct Case {
 }
 
 impl Case {
-    /// Computed from nothing but the nucleus, relativistic, mixing, without correlation, unscaled.
+    /// Computed from nothing but the nucleus, relativistic, mixing, unscaled, with correlation where it is sound.
     pub fn new(z: u8, mass_number: u16, configurations: Vec<Vec<Subshell>>) -> Self {
         Case {
             nucleus: Some((z, mass_number)),
             computed: true,
             relativity: true,
             mixing: true,
-            correlation: false,
+            correlation: None,
             scale: Scale::default(),
             polarisation: None,
             configurations,

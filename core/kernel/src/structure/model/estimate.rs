@@ -1,13 +1,12 @@
 //! What a case takes, found before anything is built.
 
 use super::case::Case;
-use super::correlation::Correlation;
 use crate::problem::Problem;
 use crate::structure::{MOST_ROWS, multiplications};
 
-/// Sizes and costs; seconds are those of a browser on a machine of 2020 or so. Levels of eighteen cases from
-/// Na to Eu III 4f⁷ + 4f⁶5d in the full build took 0.43 to 1.6 times as long, and 2.5 times where parentage and
-/// compiled code were not there yet.
+/// Sizes and costs; seconds are those of a browser on a machine of 2020 or so. Levels of twelve cases from
+/// C I to Eu III 4f⁷ + 4f⁶5d, correlation in them, took 0.8 to 1.5 times as long in the full build, and up to 6
+/// times where parentage and compiled code were not there yet.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Estimate {
     /// Whole time.
@@ -41,14 +40,14 @@ pub(super) fn matrix_seconds(rows: f64) -> f64 {
     }
 }
 
-/// Seconds for correlation within the subshells of a configuration: more for larger ℓ.
+/// Seconds for correlation within the subshells of a configuration that have it: more for larger ℓ.
 pub(super) fn correlation_seconds(case: &Case, configuration: usize) -> f64 {
-    if !(case.correlation && case.computed) {
-        return 0.0;
-    }
     let subshells = case.configurations.get(configuration);
-    let moved = (subshells.into_iter().flatten()).filter(|s| Correlation::matters(**s));
-    moved.fold(0.0, |sum, s| sum + 0.05 * f64::from(s.orbital().l()))
+    let moved = (subshells.into_iter().flatten())
+        .filter(|s| case.correlates(configuration, s.orbital()) == Some(Ok(())));
+    moved.fold(0.0, |sum, s| {
+        sum + 0.001 + 4e-4 * f64::from(s.orbital().l())
+    })
 }
 
 /// Sizes and costs of a case.

@@ -58,10 +58,22 @@ pub(super) struct Source<'a> {
     pub configurations: &'a [usize],
 }
 
+/// The values of the parameters of one parity.
+pub(super) struct Found {
+    /// Of every parameter of the matrix, cm⁻¹.
+    pub used: Vec<f64>,
+    /// What they are made of.
+    pub shown: Vec<Value>,
+    /// The largest overlap of unlike functions.
+    pub cross: Option<CrossOverlap>,
+}
+
 impl Source<'_> {
-    /// The value of every parameter, in their order, and the largest overlap of unlike functions.
-    pub fn values(&self, hamiltonian: &Hamiltonian) -> (Vec<Value>, Option<CrossOverlap>) {
+    /// The value of every parameter in their order, behind F^k what correlation adds to it, and the largest
+    /// overlap of unlike functions.
+    pub fn values(&self, hamiltonian: &Hamiltonian) -> Found {
         let mut values: Vec<Value> = Vec::with_capacity(hamiltonian.parameters().len());
+        let mut changed: Vec<Option<f64>> = Vec::new();
         let mut largest: Option<CrossOverlap> = None;
         let correlations = self.correlations();
         // Parameters of one pair of configurations stand together.
@@ -86,25 +98,43 @@ impl Source<'_> {
             let Some(name) = Name::of(parameter, self.orbitals, self.configurations) else {
                 continue;
             };
-            let mut computed = self.computed(name, configurations, between);
-            if let Some(more) = correlation(&correlations, name, configurations.0) {
-                computed = Some(computed.unwrap_or(0.0) + more * HARTREE_WAVENUMBER.value);
-            }
-            values.push(Value::new(self.case, name, configurations, computed));
+            let added = correlation(&correlations, name, configurations.0)
+                .map(|hartree| hartree * HARTREE_WAVENUMBER.value);
+            let computed = self.computed(name, configurations, between);
+            let is_own = matches!(name, Name::Direct { .. });
+            let computed = if is_own { computed } else { computed.or(added) };
+            let value = Value::new(self.case, name, configurations, computed);
+            let changes = is_own && value.kind == Kind::Computed;
+            values.push(value);
+            changed.push(added.filter(|_| changes));
         }
         stationary(hamiltonian.basis(), hamiltonian.parameters(), &mut values);
-        (values, largest)
+        let (mut used, mut shown) = (Vec::new(), Vec::new());
+        for (value, added) in values.into_iter().zip(changed) {
+            used.push(value.value + added.unwrap_or(0.0));
+            shown.push(value);
+            if let (Name::Direct { k, a, .. }, true) = (value.name, added.is_some()) {
+                let name = Name::Change { k, a };
+                shown.push(Value::new(self.case, name, value.configurations, added));
+            }
+        }
+        Found {
+            used,
+            shown,
+            cross: largest,
+        }
     }
 
     /// What correlation adds, by configuration and subshell.
     fn correlations(&self) -> Vec<((usize, Orbital), Correlation)> {
         let mut found = Vec::new();
         for &place in self.configurations {
-            let Some(run) = self.run(place).filter(|_| self.case.correlation) else {
+            let Some(run) = self.run(place) else {
                 continue;
             };
             for &orbital in self.orbitals {
-                let function = run.orbital(orbital);
+                let sound = self.case.correlates(place, orbital) == Some(Ok(()));
+                let function = run.orbital(orbital).filter(|_| sound);
                 let correlation = function.and_then(|function| Correlation::of(run, function));
                 found.extend(correlation.map(|correlation| ((place, orbital), correlation)));
             }

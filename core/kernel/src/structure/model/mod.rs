@@ -12,7 +12,7 @@ mod names;
 mod spectrum;
 
 pub use case::{Case, Scale};
-pub use correlation::{Correlation, UsualDeviation};
+pub use correlation::{Correlation, Uncorrelated, UsualDeviation};
 pub use estimate::{Estimate, estimate};
 pub use integrals::CrossOverlap;
 pub use lines::{Kind as MultipoleKind, LineStrength, Lines};

@@ -44,6 +44,13 @@ pub enum Name {
     OneElectron(Orbital, Orbital),
     /// ζ.
     SpinOrbit(Orbital),
+    /// ΔF^k(a,a): what correlation within a subshell adds to F^k.
+    Change {
+        /// Rank.
+        k: u8,
+        /// The orbital.
+        a: Orbital,
+    },
     /// α of Trees.
     Alpha(Orbital),
     /// β.

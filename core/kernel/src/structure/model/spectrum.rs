@@ -171,7 +171,11 @@ impl Spectrum {
         let is_effective =
             |name: &Name| matches!(name, Name::Alpha(_) | Name::Beta(_) | Name::Gamma(_));
         let given = case.given.iter().any(|given| is_effective(&given.name));
-        let effective = given || (case.computed && case.correlation);
+        let effective = given
+            || (configurations.iter()).any(|&place| {
+                let mut orbitals = self.orbitals.iter();
+                orbitals.any(|orbital| case.correlates(place, *orbital) == Some(Ok(())))
+            });
         let terms = Terms {
             mixing: case.mixing,
             effective,
@@ -184,13 +188,12 @@ impl Spectrum {
             orbitals: &self.orbitals,
             configurations: &configurations,
         };
-        let (parameters, cross) = source.values(&hamiltonian);
+        let found = source.values(&hamiltonian);
         let correlation = (source.configurations.iter())
             .map(|&place| super::estimate::correlation_seconds(case, place));
         progress.step(correlation.sum())?;
-        let values: Vec<f64> = parameters.iter().map(|value| value.value).collect();
         let mut refused = Ok(());
-        let levels = Levels::solve_watched(&hamiltonian, &values, &mut |rows| {
+        let levels = Levels::solve_watched(&hamiltonian, &found.used, &mut |rows| {
             refused = progress.step(super::estimate::matrix_seconds(rows as f64));
             refused.is_ok()
         })?;
@@ -200,11 +203,11 @@ impl Spectrum {
             odd,
             configurations,
             hamiltonian,
-            values,
+            values: found.used,
             levels,
             named,
         };
-        Ok((parity, parameters, cross))
+        Ok((parity, found.shown, found.cross))
     }
 
     fn order(&mut self) {
