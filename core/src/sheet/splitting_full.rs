@@ -68,6 +68,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
             components.extend(rows.rows(field));
         }
     }
+    resonances_left_out += splitting_resonances::first(&mut resonances);
     // With a line the upper end first, as one reads it.
     sort_by(&mut states, |a, b| side_order(a).cmp(&side_order(b)));
     let positions = positions(&components);

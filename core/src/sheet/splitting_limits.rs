@@ -61,6 +61,14 @@ pub fn limits(told: &Told) -> Vec<String> {
     }
     limits.extend(of_nuclei(document));
     limits.extend(told.searched.missing.clone());
+    if let Some(fields) = &told.searched.fields {
+        let below = fields.rising.map_or(String::new(), |(start, ratio)| {
+            let percent = 100.0 * (ratio - 1.0);
+            format!(" and, from {start:.1e} T, {percent:.0} % of the field")
+        });
+        let end = fields.tesla.last().copied().unwrap_or(0.0);
+        limits.push(format!("Crossings and clock points are looked for in steps of at most {:.2e} T{below}, up to {end} T: two of one pair within a step may be missed.", fields.step));
+    }
     let each = told.components.len() / ready.passes.len().max(1);
     if !told.searched.component_crossings.is_empty() && each > MOST_COMPONENTS {
         limits.push(format!(

@@ -257,6 +257,8 @@ pub struct CrossingRow {
     pub slope_second: f64,
     /// The gap as a frequency.
     pub mhz: f64,
+    /// How many photons drive a clock transition: 1 for |ΔM| ≤ 1, 2 for |ΔM| = 2; nothing for others.
+    pub photons: Option<u8>,
     pub isotope: Option<Shared>,
 }
 
