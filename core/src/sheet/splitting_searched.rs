@@ -6,8 +6,8 @@ use std::rc::Rc;
 use crate::numerics::order::{sort, sort_by};
 use crate::problem::Problem;
 use crate::splitting::in_field::{
-    ComponentCrossing, Crossing, CrossingKind, MHZ_PER_WAVENUMBER, State, Tolerance as Departure,
-    SearchFields, Wanted, component_crossings, crossings, map_at, search_fields,
+    ComponentCrossing, Crossing, CrossingKind, MHZ_PER_WAVENUMBER, SearchFields, State,
+    Tolerance as Departure, Wanted, component_crossings, crossings, map_at, search_fields,
 };
 
 use super::document::Document;
@@ -209,8 +209,11 @@ impl SearchOf<'_> {
             let row = |row: &Crossing| {
                 let change = (two_m(row.first)? - two_m(row.second)?).abs();
                 Some(CrossingRow {
-                    photons: (row.kind == CrossingKind::Clock)
-                        .then_some(if change > 2 { 2 } else { 1 }),
+                    photons: (row.kind == CrossingKind::Clock).then_some(if change > 2 {
+                        2
+                    } else {
+                        1
+                    }),
                     kind: match row.kind {
                         CrossingKind::Crossing => "crossing",
                         CrossingKind::Avoided => "avoided",

@@ -63,7 +63,11 @@ pub fn component_crossings(
             };
             let rest = [one, two].into_iter().filter_map(|place| {
                 let component = components.list().get(place)?;
-                Some(upper.size_at_rest(component.upper).max(below.size_at_rest(component.lower)))
+                Some(
+                    upper
+                        .size_at_rest(component.upper)
+                        .max(below.size_at_rest(component.lower)),
+                )
             });
             let rest = COINCIDE * rest.fold(centres.abs(), f64::max);
             let apart = || b.iter().zip(a).map(|(b, a)| centres + (b - a));

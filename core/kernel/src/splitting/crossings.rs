@@ -21,6 +21,10 @@ const ROUNDING: f64 = 1e-14;
 /// Differences of slopes below this, in μ_B, are rounding.
 const LEVEL: f64 = 1e-11;
 
+/// Differences of slopes without a field below this, in μ_B, are rounding: levels of one term have equal g
+/// but for what spin–orbit coupling far away mixes in.
+const LEVEL_AT_REST: f64 = 1e-8;
+
 /// What happens between two states.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub enum CrossingKind {
@@ -171,7 +175,8 @@ impl Search<'_> {
         if one == two {
             return;
         }
-        let level = LEVEL * BOHR_MAGNETON_WAVENUMBER.value;
+        let mu_b = BOHR_MAGNETON_WAVENUMBER.value;
+        let level = (LEVEL_AT_REST * mu_b, LEVEL * mu_b);
         let same_level = a.level == b.level;
         if a.part != b.part && wanted.crossings {
             self.crossing(one, two, same_level);
@@ -192,7 +197,7 @@ impl Search<'_> {
             changes(
                 tesla,
                 difference(&followed.slopes, higher, lower),
-                (level, level),
+                level,
                 found,
             );
             let nearest = found.drain(..).filter(|(_, rises)| *rises);
@@ -271,7 +276,7 @@ impl Search<'_> {
         }
     }
 
-    fn clock(&mut self, one: usize, two: usize, level: f64) {
+    fn clock(&mut self, one: usize, two: usize, level: (f64, f64)) {
         let Search {
             tesla,
             followed,
@@ -284,8 +289,8 @@ impl Search<'_> {
         } = self;
         let start = |lists: &[Vec<f64>]| difference(lists, two, one).next().unwrap_or(0.0);
         let slopes: Vec<f64> = difference(&followed.slopes, two, one).collect();
-        let still = slopes.first().is_some_and(|slope| slope.abs() <= level);
-        let moves = slopes.iter().any(|slope| slope.abs() > level);
+        let still = slopes.first().is_some_and(|slope| slope.abs() <= level.0);
+        let moves = slopes.iter().any(|slope| slope.abs() > level.0);
         let (first, second) = if start(&followed.shifts) < 0.0 {
             (two, one)
         } else {
@@ -302,7 +307,7 @@ impl Search<'_> {
         if still && moves && tesla.first() == Some(&0.0) {
             add(0.0..0.0);
         }
-        changes(tesla, slopes.iter().copied(), (level, level), found);
+        changes(tesla, slopes.iter().copied(), level, found);
         for (range, _) in found.drain(..) {
             add(range);
         }
@@ -313,7 +318,7 @@ impl Search<'_> {
             };
             let before = tesla.partition_point(|field| *field < range.start);
             let known = slopes.get(before).copied().unwrap_or(0.0);
-            if known.abs() > level && (b.slope - a.slope) * known < 0.0 {
+            if known.abs() > level.0 && (b.slope - a.slope) * known < 0.0 {
                 add(range.start..middle);
                 add(middle..range.end);
             }

@@ -207,7 +207,9 @@ impl Split {
         let mut least: Option<f64> = None;
         for part in &self.parts {
             let values = &part.weak.pairs.values;
-            let largest = values.iter().fold(0.0_f64, |most, value| most.max(value.abs()));
+            let largest = values
+                .iter()
+                .fold(0.0_f64, |most, value| most.max(value.abs()));
             for pair in values.windows(2) {
                 if let &[low, high] = pair
                     && high - low > COINCIDE * largest
@@ -221,7 +223,10 @@ impl Split {
 
     /// How large the energies are that a state's energy without a field is a sum of, cm⁻¹.
     pub(super) fn size_at_rest(&self, state: usize) -> f64 {
-        let own = self.states.get(state).and_then(|s| Some((self.parts.get(s.part)?, s.rank)));
+        let own = self
+            .states
+            .get(state)
+            .and_then(|s| Some((self.parts.get(s.part)?, s.rank)));
         own.map_or(0.0, |(part, rank)| {
             let value = part.weak.pairs.values.get(rank).copied().unwrap_or(0.0);
             let level = self.level_of(state).unwrap_or(0.0);
