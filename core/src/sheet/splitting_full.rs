@@ -113,7 +113,8 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         .iter()
         .map(|c| Shown {
             polarisation: c.polarisation,
-            offset: c.offset,
+            // From the centre of its own isotope's line.
+            offset: c.offset - c.moved,
             seen: c.seen,
         })
         .collect();
@@ -378,6 +379,7 @@ impl Rows<'_> {
             }),
             linear,
             isotope: self.isotope.clone(),
+            moved: shift_of(self.document, self.pass),
         })
     }
 }

@@ -23,7 +23,12 @@ pub fn limits(told: &Told) -> Vec<String> {
             largest: Some(largest),
             ..
         }) if *largest > 0.0 => limits.push(format!(
-            "The diamagnetic term is left out; it shifts levels by up to {largest:.3e} cm⁻¹ here, all states of a level nearly alike. The sheet's \"diamagnetic\" counts it."
+            "The diamagnetic term is left out. In first order it raises the mean of a level's states by up to {largest:.3e} cm⁻¹ here and no state by more than {:.3e} cm⁻¹; states of different M differ.{}",
+            1.5 * largest,
+            match ready.diamagnetic {
+                Ok(()) => " The sheet's \"diamagnetic\" counts it.",
+                Err(_) => "",
+            }
         )),
         Some(DiamagneticRow { largest: None, .. }) if told.tesla() > 0.0 => limits.push(
             "The diamagnetic term is left out, and its size is not known without radial functions.".to_owned(),

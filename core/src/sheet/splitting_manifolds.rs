@@ -1,9 +1,12 @@
 //! The levels of a parity as a field finds them: at their places, within bounds.
 
 use crate::problem::Problem;
-use crate::splitting::in_field::{Diamagnetic, Manifold, Nucleus, OneElectron, Split};
+use crate::splitting::in_field::{
+    Diamagnetic, Manifold, Nucleus, OneElectron, Split, mean_diamagnetic_shift,
+};
 
 use super::document::Document;
+use super::energy_case::EnergyCase;
 use super::levels_rows::Shared;
 use super::line_ends::End;
 use super::nucleus::Nuclear;
@@ -62,14 +65,14 @@ pub fn set_level(
     })
 }
 
-/// The levels of a parity with their moments, and the largest mean shift by the diamagnetic term at 1 T or why it is
-/// not known.
+/// The levels of a parity with their moments, the largest mean shift by the diamagnetic term at 1 T, and why that
+/// term is not to be had.
 pub fn manifold(
     solved: &Solved,
     parity: usize,
     levels: &[SetLevel],
     with_diamagnetic: bool,
-) -> Result<(Manifold, Result<Option<f64>, Problem>), Problem> {
+) -> Result<(Manifold, Option<f64>, Result<(), Problem>), Problem> {
     let energies: Vec<f64> = levels.iter().map(|l| l.energy.unwrap_or(0.0)).collect();
     let Some(spectrum) = &solved.spectrum else {
         let electrons: Vec<OneElectron> = levels
@@ -91,17 +94,30 @@ pub fn manifold(
             0,
             0,
         );
-        return Ok((Manifold::one_electron(&electrons)?, Err(problem)));
+        let squares = electrons.iter().map(|level| square(solved, level));
+        let largest = squares.fold(0.0_f64, f64::max);
+        let size = (largest > 0.0).then(|| mean_diamagnetic_shift(largest, 1.0));
+        return Ok((Manifold::one_electron(&electrons)?, size, Err(problem)));
     };
     let plain = Manifold::of_parity(spectrum, parity, &energies)?;
     // Its size is always told; it acts only where the sheet says so.
     let term = match Diamagnetic::of_parity(spectrum, parity) {
         Ok(term) => term,
-        Err(problem) => return Ok((plain, Err(problem))),
+        Err(problem) => return Ok((plain, None, Err(problem))),
     };
     let with = plain.clone().with(term);
     let size = with.diamagnetic_shift(1.0);
-    Ok((if with_diamagnetic { with } else { plain }, Ok(size)))
+    Ok((if with_diamagnetic { with } else { plain }, size, Ok(())))
+}
+
+/// ⟨(r/a₀)²⟩ = n²[5n² + 1 − 3ℓ(ℓ + 1)]/2Z² of one electron, stretched by (1 + m/M)² (Bethe & Salpeter, § 3).
+fn square(solved: &Solved, level: &OneElectron) -> f64 {
+    let EnergyCase::OneElectron { z, mass, .. } = solved.case() else {
+        return 0.0;
+    };
+    let (n, l, z) = (f64::from(level.n), f64::from(level.l), f64::from(*z));
+    let stretched = 1.0 + 1.0 / mass;
+    n * n * (5.0 * n * n + 1.0 - 3.0 * l * (l + 1.0)) / (2.0 * z * z) * stretched * stretched
 }
 
 /// A set within the bounds: as a whole, or where a nucleus makes it too large the levels of the terms of the

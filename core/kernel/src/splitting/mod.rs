@@ -33,7 +33,7 @@ pub use component_crossings::{ComponentCrossing, component_crossings};
 pub use components::{Component, Components};
 pub use crossings::{Crossing, CrossingKind, Found, MOST_COMPARED, Wanted, crossings};
 pub use linear::{Linear, Tolerance};
-pub use manifold::{Diamagnetic, Level, Manifold, OneElectron, Reduced};
+pub use manifold::{Diamagnetic, Level, Manifold, OneElectron, Reduced, mean_diamagnetic_shift};
 pub use map::{Followed, MOST_NUMBERS, Map, map, map_at};
 pub use nucleus::{MHZ_PER_WAVENUMBER, NUCLEAR_MAGNETON_WAVENUMBER, Nucleus, casimir};
 pub use operator::Operator;
