@@ -265,8 +265,10 @@ fn the_size_of_what_is_left_out_of_hydrogen() {
         "rungline": 1, "species": "H I", "configurations": ["1s", "2s", "2p"],
         "field": {"flux_density": "5 T"}
     }));
-    let wanted = 0.466_864_477_19_f64.powi(2) / (2.0 * 219_474.631_4) * 2.0 / 3.0 * 42.0 * 25.0;
-    let mass = (1.0 + 1.0 / 1836.152_67_f64).powi(2);
+    let (mu_b, hartree) = (0.466_864_477_19_f64, 219_474.631_4_f64);
+    let wanted = mu_b * mu_b / (2.0 * hartree) * 2.0 / 3.0 * 42.0 * 25.0;
+    let stretched = 1.0 + 1.0 / 1_836.152_67;
+    let mass = stretched * stretched;
     let size = number(&found["diamagnetic"], "largest");
     assert!(
         (size / (wanted * mass) - 1.0).abs() < 1e-6,

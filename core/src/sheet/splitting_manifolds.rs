@@ -65,6 +65,10 @@ pub fn set_level(
     })
 }
 
+/// Levels with their moments, the largest mean shift by the diamagnetic term at 1 T in cm⁻¹, and why that term is
+/// not to be had.
+pub type WithDiamagnetic = (Manifold, Option<f64>, Result<(), Problem>);
+
 /// The levels of a parity with their moments, the largest mean shift by the diamagnetic term at 1 T, and why that
 /// term is not to be had.
 pub fn manifold(
@@ -72,7 +76,7 @@ pub fn manifold(
     parity: usize,
     levels: &[SetLevel],
     with_diamagnetic: bool,
-) -> Result<(Manifold, Option<f64>, Result<(), Problem>), Problem> {
+) -> Result<WithDiamagnetic, Problem> {
     let energies: Vec<f64> = levels.iter().map(|l| l.energy.unwrap_or(0.0)).collect();
     let Some(spectrum) = &solved.spectrum else {
         let electrons: Vec<OneElectron> = levels
