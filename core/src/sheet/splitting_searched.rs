@@ -112,6 +112,8 @@ impl Prepared {
             searched.states(&mut found)?;
             searched.components(&mut found)?;
         }
+        // At one field, as without any, those of one photon before those of two.
+        sort_by(&mut found.crossings, |a, b| a.photons.cmp(&b.photons));
         found.crossings_left_out += first(&mut found.crossings, most, |row| row.tesla);
         found.component_crossings_left_out +=
             first(&mut found.component_crossings, most, |row| row.tesla);
