@@ -70,15 +70,17 @@ pub fn component_crossings(
                 )
             });
             let rest = COINCIDE * rest.fold(centres.abs(), f64::max);
-            let apart = || b.iter().zip(a).map(|(b, a)| centres + (b - a));
+            let apart = b.iter().zip(a).map(|(b, a)| centres + (b - a));
+            let apart: Vec<f64> = apart.collect();
             let close = steep * largest;
-            changes(&map.tesla, apart(), (close.max(rest), close), &mut found);
+            changes(&map.tesla, &apart, (close.max(rest), close), &mut found);
             candidates.extend(found.drain(..).map(|(range, _)| (range, false, one, two)));
             let steeper = other.iter().zip(slope).map(|(b, a)| b - a);
-            changes(&map.tesla, steeper, (steep, steep), &mut found);
+            let steeper: Vec<f64> = steeper.collect();
+            changes(&map.tesla, &steeper, (steep, steep), &mut found);
             for (range, rises) in found.drain(..) {
                 let at = map.tesla.partition_point(|&tesla| tesla < range.end);
-                let higher = apart().nth(at).is_some_and(|apart| apart > 0.0);
+                let higher = apart.get(at).is_some_and(|apart| *apart > 0.0);
                 // A distance that falls behind the place was the largest there.
                 if higher != rises {
                     let (low, high) = if higher { (one, two) } else { (two, one) };

@@ -196,7 +196,7 @@ impl Search<'_> {
             } = self;
             changes(
                 tesla,
-                difference(&followed.slopes, higher, lower),
+                &difference(&followed.slopes, higher, lower),
                 level,
                 found,
             );
@@ -247,7 +247,8 @@ impl Search<'_> {
             COINCIDE * rest,
             ROUNDING * rest.max(largest(one)).max(largest(two)),
         );
-        changes(tesla, difference(lists, two, one), tolerance, found);
+        let values = difference(lists, two, one);
+        changes(tesla, &values, tolerance, found);
         let mut add = |range: Range<f64>, rises: bool| {
             let (first, second) = if rises { (two, one) } else { (one, two) };
             candidates.push(Candidate {
@@ -260,9 +261,9 @@ impl Search<'_> {
         for (range, rises) in found.drain(..) {
             add(range, rises);
         }
-        let values = difference(lists, two, one).zip(difference(&followed.slopes, two, one));
+        let slopes = difference(&followed.slopes, two, one);
         let mut last: Option<(f64, f64, f64)> = None;
-        for (&field, (value, slope)) in tesla.iter().zip(values) {
+        for (&field, (&value, &slope)) in tesla.iter().zip(values.iter().zip(&slopes)) {
             if let Some((before, v, s)) = last
                 && v.abs() > tolerance.0
                 && let Some(middle) = hidden(&(before..field), (v, value), (s, slope))
@@ -287,11 +288,11 @@ impl Search<'_> {
             candidates,
             ..
         } = self;
-        let start = |lists: &[Vec<f64>]| difference(lists, two, one).next().unwrap_or(0.0);
-        let slopes: Vec<f64> = difference(&followed.slopes, two, one).collect();
+        let start = |state: usize| followed.shifts.get(state).and_then(|list| list.first());
+        let slopes = difference(&followed.slopes, two, one);
         let still = slopes.first().is_some_and(|slope| slope.abs() <= level.0);
         let moves = slopes.iter().any(|slope| slope.abs() > level.0);
-        let (first, second) = if start(&followed.shifts) < 0.0 {
+        let (first, second) = if start(two) < start(one) {
             (two, one)
         } else {
             (one, two)
@@ -307,7 +308,7 @@ impl Search<'_> {
         if still && moves && tesla.first() == Some(&0.0) {
             add(0.0..0.0);
         }
-        changes(tesla, slopes.iter().copied(), level, found);
+        changes(tesla, &slopes, level, found);
         for (range, _) in found.drain(..) {
             add(range);
         }
@@ -370,9 +371,14 @@ impl Search<'_> {
 }
 
 /// One state's list less another's, by field.
-fn difference(lists: &[Vec<f64>], one: usize, two: usize) -> impl Iterator<Item = f64> + '_ {
+#[inline(never)]
+fn difference(lists: &[Vec<f64>], one: usize, two: usize) -> Vec<f64> {
     let list = |state: usize| lists.get(state).map(Vec::as_slice).unwrap_or_default();
-    list(one).iter().zip(list(two)).map(|(a, b)| a - b)
+    list(one)
+        .iter()
+        .zip(list(two))
+        .map(|(a, b)| a - b)
+        .collect()
 }
 
 #[inline(never)]

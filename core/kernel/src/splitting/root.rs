@@ -12,13 +12,13 @@ const CLOSE: f64 = 1e-13;
 /// not change there.
 pub fn changes(
     tesla: &[f64],
-    values: impl Iterator<Item = f64>,
+    values: &[f64],
     (at_rest, in_field): (f64, f64),
     found: &mut Vec<(Range<f64>, bool)>,
 ) {
     found.clear();
     let mut last: Option<(f64, bool)> = None;
-    for (&field, value) in tesla.iter().zip(values) {
+    for (&field, &value) in tesla.iter().zip(values) {
         let tolerance = if field == 0.0 { at_rest } else { in_field };
         if value.abs() <= tolerance {
             continue;
@@ -167,14 +167,14 @@ mod tests {
         let tesla = [0.0, 1.0, 2.0, 3.0, 4.0];
         changes(
             &tesla,
-            [0.0, 1.0, 0.0, -1.0, -2.0].into_iter(),
+            &[0.0, 1.0, 0.0, -1.0, -2.0],
             (1e-9, 1e-9),
             &mut found,
         );
         assert_eq!(found, [(1.0..3.0, false)]);
         // Rounding without a field is no sign either.
         let rounding = [-1e-12, 1.0, 2.0, 3.0, 4.0];
-        changes(&tesla, rounding.into_iter(), (1e-11, 1e-13), &mut found);
+        changes(&tesla, &rounding, (1e-11, 1e-13), &mut found);
         assert_eq!(found, []);
     }
 }
