@@ -205,3 +205,97 @@ fn questions_keep_their_names() {
         ["states", "orbitals", "levels", "lines", "splitting"]
     );
 }
+
+/// Parts of typeset text, whose numbers are names.
+const TYPESET: [&str; 8] = [
+    "say",
+    "working",
+    "rich",
+    "species",
+    "configuration",
+    "name",
+    "parent",
+    "kept",
+];
+
+/// Every number below a key, by its keys without places in lists.
+fn numbers(value: &Value, path: &str, found: &mut Vec<String>) {
+    match value {
+        Value::Number(_) => found.push(path.to_owned()),
+        Value::Array(all) => all.iter().for_each(|one| numbers(one, path, found)),
+        // A row that says the kind of its numbers itself.
+        Value::Object(all) if !all.contains_key("kind") => {
+            for (key, one) in all {
+                let typeset = TYPESET.contains(&key.as_str()) && !one.is_number();
+                let own_kind = all.contains_key(&format!("{key}_kind"));
+                if typeset || key.ends_with("_rich") || own_kind {
+                    continue;
+                }
+                // Configurations of several have the columns of one.
+                let inner = match key.as_str() {
+                    "by_configuration" | "configurations" => path.to_owned(),
+                    _ if path.is_empty() => key.clone(),
+                    _ => format!("{path}.{key}"),
+                };
+                numbers(one, &inner, found);
+            }
+        }
+        _ => {}
+    }
+}
+
+#[test]
+fn every_number_of_every_answer_has_a_kind() {
+    let mut sheets: Vec<(String, Value)> = examples()
+        .into_iter()
+        .map(|(name, text)| (name, serde_json::from_str(&text).unwrap()))
+        .collect();
+    let more = [
+        json!({"species": "H I", "configurations": ["1s", "2s", "2p"], "field": {"flux_density": "1 T"}}),
+        json!({
+            "species": "Na I", "configurations": ["3s", "4s", "5s", "3p", "4p"], "medium": "air",
+            "source": {"temperature": "2000 K", "electron_density": "1e20 m-3", "column": "1e15 m-2"},
+            "structure": {"polarisation": {"alpha": "0.95 a0^3", "radius": "1.2 a0"}}
+        }),
+        json!({"species": "23Na", "configurations": ["3s", "3p"], "refractive_index": "1.3"}),
+        json!({"species": "*", "configurations": ["3s", "3p"], "line": {"upper": "3p 2P1/2", "lower": "3s 2S1/2"}, "field": {"flux_density": "1 T"}}),
+    ];
+    for (place, mut sheet) in more.into_iter().enumerate() {
+        sheet["rungline"] = json!(1);
+        sheets.push((format!("sheet {place}"), sheet));
+    }
+    let mut missing: Vec<String> = Vec::new();
+    let mut count = 0;
+    for (name, sheet) in sheets {
+        for question in ["states", "orbitals", "levels", "lines", "splitting"] {
+            let json = serde_json::from_value(sheet.clone()).unwrap();
+            let message = sheet::answer_message(&json, question);
+            let message: Value = serde_json::from_str(&message).unwrap();
+            let Some(answer) = message.get("answer") else {
+                continue;
+            };
+            let kinds = answer["kinds"].as_object().unwrap();
+            let mut found = Vec::new();
+            numbers(answer, "", &mut found);
+            found.dedup();
+            count += found.len();
+            for path in found {
+                // The kind of a table is that of its columns.
+                let mut wanted = path.as_str();
+                while !kinds.contains_key(wanted) {
+                    match wanted.rsplit_once('.') {
+                        Some((outer, _)) => wanted = outer,
+                        None => {
+                            missing.push(format!("{question} {path} ({name})"));
+                            break;
+                        }
+                    }
+                }
+            }
+        }
+    }
+    assert!(count > 500, "{count}");
+    missing.sort();
+    missing.dedup_by_key(|text| text.split(" (").next().unwrap().to_owned());
+    assert!(missing.is_empty(), "{missing:#?}");
+}

@@ -47,7 +47,7 @@ fn given_parameters_are_taken_in_every_spelling() {
         ("E(2p 3s)", "60000 cm-1"),
         ("alpha(2p)", "12 cm-1"),
         ("r(2p,3s)", "1.1 a0"),
-        ("r2(2p,2p)", "-3 a0^2"),
+        ("r2(2p,2p)", "3 a0^2"),
     ] {
         assert_eq!(of_given(name, value), [], "{name}: {value}");
     }
@@ -205,4 +205,19 @@ fn windows_and_media_are_checked() {
         of(json!({"source": {"electron_density": "1e20 m-2"}})),
         one("unit-of-another-quantity", "/source/electron_density")
     );
+}
+
+#[test]
+fn a_mean_square_is_never_negative() {
+    let sheet = |name: &str, value: &str| {
+        json!({
+            "rungline": 1, "species": "*", "configurations": ["3s", "3p", "3d"],
+            "structure": {"given": {name: value}}
+        })
+    };
+    let place = "/structure/given/r2(3p,3p)".to_owned();
+    let found = faults(&sheet("r2(3p,3p)", "-3 a0^2"));
+    assert_eq!(found, [("mean-square-negative".to_owned(), place)]);
+    // Between two orbitals it has either sign.
+    assert!(faults(&sheet("r2(3s,3d)", "-3 a0^2")).is_empty());
 }

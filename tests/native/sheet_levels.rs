@@ -550,3 +550,47 @@ fn what_is_kept_costs_nothing_again() {
     warm["window"] = json!(["400 nm", "500 nm"]);
     assert!(estimate(&warm, "lines").0 < 0.8 * lines);
 }
+
+#[test]
+fn only_what_was_measured_is_observed() {
+    // The table of ground levels marks Po III as semi-empirical and Fe I as measured.
+    let say = |species: &str, configurations: &[&str]| {
+        let found = levels(&sheet(species, configurations, json!({})));
+        let kind = found["kinds"]["ground.observed"].clone();
+        (found["say_plain"].as_str().unwrap().to_owned(), kind)
+    };
+    let (polonium, kind) = say("Po III", &[]);
+    assert!(
+        polonium.contains(", as tabulated (semi-empirical) and by Hund’s rules"),
+        "{polonium}"
+    );
+    assert_eq!(kind, "computed");
+    let (carbon, kind) = say("C I", &[]);
+    assert!(
+        carbon.contains(", as observed and by Hund’s rules"),
+        "{carbon}"
+    );
+    assert_eq!(kind, "measured");
+}
+
+#[test]
+fn levels_at_one_energy_are_named_together() {
+    // Dirac's 2s½ and 2p½ agree.
+    let found = levels(&sheet("H I", &["2s", "2p"], json!({})));
+    let say = found["say_plain"].as_str().unwrap();
+    assert!(
+        say.contains(", with another at the same energy; the highest lies 0.37 cm-1"),
+        "{say}"
+    );
+    let given = json!({"structure": {"given": {"E(3p)": "0 cm-1"}}});
+    let found = levels(&sheet("*", &["3p"], given));
+    let say = found["say_plain"].as_str().unwrap();
+    assert!(say.ends_with(", with another at the same energy."), "{say}");
+}
+
+#[test]
+fn full_shells_have_a_name_in_every_coupling() {
+    let found = levels(&sheet("Ne I", &["2p6"], json!({})));
+    let share = &found["levels"][0]["composition_jj"][0];
+    assert_eq!(share["name"], "full shells");
+}

@@ -350,3 +350,74 @@ fn a_column_absorbs() {
         "saturation",
     );
 }
+
+#[test]
+fn an_isotope_shift_starts_from_the_line_that_it_has() {
+    let [hydrogen, deuterium] =
+        ["H I", "D I"].map(|species| lines(&sheet(species, &["1s", "2p"], json!({}))));
+    for (light, heavy) in rows(&hydrogen).iter().zip(rows(&deuterium)) {
+        let (from, to) = (number(&light["wavenumber"]), number(&heavy["wavenumber"]));
+        // Reduced masses by CODATA 2022: σ_D − σ_H = σ_D (1 − μ_H/μ_D).
+        let reduced = |mass: f64| 1.0 / (1.0 + 5.485_799_090_441e-4 / mass);
+        let ratio = reduced(1.007_276_466_578_9) / reduced(2.013_553_212_544);
+        let shift = number(&heavy["mass_shift"]);
+        near(shift, to * (1.0 - ratio), 1e-8, "normal mass shift");
+        // Dirac's terms beyond the first are of the order of α², here below 5·10⁻⁵ of it.
+        near(shift, to - from, 1.2e-3, "difference of both answers");
+    }
+}
+
+#[test]
+fn doppler_widths_have_the_mass_of_the_atoms() {
+    let absorbing = |species: &str| {
+        let source = json!({"source": {"temperature": "500 K", "column": "1e15 m-2"}});
+        let found = lines(&sheet(species, &["5s", "5p"], source));
+        number(&row(&found, "5p 2P3/2", "5s 2S1/2", "E1")["cross_section"])
+    };
+    // σ₀ ∝ √m while the natural width is small: the element as found in nature (IUPAC: 85.4678 u) and ⁸⁵Rb
+    // (84.911 79 u), both with the orbitals of mass number 85.
+    let ratio = absorbing("Rb I") / absorbing("85Rb I");
+    // The natural width, a hundredth of Doppler's, takes 0.3·10⁻⁴ of it; the mass number would be 16·10⁻⁴ off.
+    near(ratio, (85.467_8_f64 / 84.911_79).sqrt(), 5e-5, "mean mass");
+}
+
+#[test]
+fn lines_without_strength_are_told_from_lines_that_are_not() {
+    let given = json!({"structure": {"given": {"zeta(3p)": "11 cm-1", "E(3p)": "16000 cm-1"}}});
+    let found = lines(&sheet("*", &["3s", "3p"], given));
+    let say = found["say_plain"].as_str().unwrap();
+    assert!(
+        say.starts_with("There is 1 forbidden line here; electric dipole lines have no strength"),
+        "{say}"
+    );
+    assert!(found["limits"].to_string().contains("radial integral r(…)"));
+    let hydrogen = lines(&sheet("H I", &["1s", "2p"], json!({})));
+    let say = hydrogen["say_plain"].as_str().unwrap();
+    assert!(
+        say.starts_with("H I has 2 electric dipole lines here;"),
+        "{say}"
+    );
+    let sodium = lines(&sheet("Na I", &["3s", "4s"], json!({})));
+    let say = sodium["say_plain"].as_str().unwrap();
+    assert!(!say.contains(" 0 "), "{say}");
+}
+
+#[test]
+fn the_working_has_the_digits_of_the_sentence() {
+    let found = lines(&sheet("Na I", &["3s", "3p"], json!({"medium": "air"})));
+    let say = found["say"].as_array().unwrap().iter();
+    let nm = |pieces: &Value| -> Vec<String> {
+        let all = pieces.as_array().into_iter().flatten();
+        let numbers = all.filter(|piece| piece["number"]["unit"] == "nm");
+        numbers
+            .map(|n| n["number"]["text"].as_str().unwrap().to_owned())
+            .collect()
+    };
+    let told = nm(&json!(say.collect::<Vec<_>>()));
+    let working = found["working"].as_array().unwrap();
+    let air = working
+        .iter()
+        .find(|step| step["title"] == "Wavelength in air")
+        .unwrap();
+    assert_eq!(nm(&air["result"]), told);
+}

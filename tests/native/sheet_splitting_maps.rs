@@ -218,3 +218,135 @@ fn the_end_of_the_linear_pattern() {
     }
     assert!(relative_error(tesla, low) < 1e-6, "{tesla} {low}");
 }
+
+/// The clock points of a ground state by the formula of Breit & Rabi, Phys. Rev. 38, 2082 (1931): far below the end
+/// of the map they are found as well as near it, those of two photons too.
+#[test]
+fn clock_points_do_not_hang_on_the_end_of_the_map() {
+    // (isotope, configuration, A in MHz, 2I, g_I, published field of the pair of two photons in T): ⁸⁷Rb by
+    // Harber et al., Phys. Rev. A 66, 053616 (2002), with the g_J of rubidium, which moves it by 0.4 %.
+    let cases = [
+        ("87Rb", "5s", "3417.34130545 MHz", 3, Some(3.228_917e-4)),
+        ("133Cs", "6s", "2298.1579425 MHz", 7, None),
+    ];
+    for (isotope, shell, a, two_i, published) in cases {
+        let level = format!("{shell} 2S1/2");
+        let f = [i64::from(two_i - 1) / 2, i64::from(two_i + 1) / 2];
+        let asked = |up_to: &str| {
+            answer(&json!({
+                "rungline": 1, "species": isotope, "configurations": [shell],
+                "nucleus": {"magnetic_dipole": {&level: a}},
+                "field": {"flux_density": "1 mT", "up_to": up_to}
+            }))
+        };
+        for up_to in ["0.01 T", "1 T", "100 T"] {
+            let found = asked(up_to);
+            let clock = |m: i64, n: i64| {
+                let names = [
+                    format!("{level} F {} M {m}", f[0]),
+                    format!("{level} F {} M {n}", f[1]),
+                ];
+                let all = rows(&found, "crossings").iter();
+                let row = all.clone().find(|c| {
+                    c["kind"] == "clock" && c["first"] == names[0] && c["second"] == names[1]
+                });
+                row.unwrap_or_else(|| panic!("{isotope} up to {up_to}: {names:?}"))
+                    .clone()
+            };
+            let zero = clock(0, 0);
+            assert_eq!((number(&zero, "tesla"), &zero["photons"]), (0.0, &json!(1)));
+            let pair = clock(-1, 1);
+            assert_eq!(pair["photons"], 2);
+            let tesla = number(&pair, "tesla");
+            if let Some(published) = published {
+                assert!((tesla / published - 1.0).abs() < 5e-3, "{tesla}");
+            }
+            // ν = E_hfs/2 [√(1 + 4x/(2I+1) + x²) + √(1 − 4x/(2I+1) + x²)] − 2 g_I μ_N B is flat:
+            // its slope in x by hand.
+            let hfs: f64 = number(&zero, "mhz");
+            let g_i = number(&found["nucleus"], "g_I");
+            let nuclear = g_i * 7.622_593_218_8 * tesla;
+            let electron = 2.002_319_304_36 * MU_B * MHZ * tesla;
+            let x = (electron + nuclear) / hfs;
+            let c = 2.0 / f64::from(two_i + 1);
+            let root = |sign: f64| (1.0 + 2.0 * sign * c * x + x * x).sqrt();
+            let slope = hfs / 2.0 * ((x + c) / root(1.0) + (x - c) / root(-1.0)) * x;
+            assert!(
+                (slope / (2.0 * nuclear) - 1.0).abs() < 1e-6,
+                "{isotope} {up_to}: {slope} {nuclear}"
+            );
+            let frequency = hfs / 2.0 * (root(1.0) + root(-1.0)) - 2.0 * nuclear;
+            assert!((number(&pair, "mhz") - frequency).abs() < 1e-6);
+        }
+        // Where it was looked for is said.
+        let limits = asked("1 T")["limits"].to_string();
+        assert!(limits.contains("in steps of at most"), "{limits}");
+    }
+}
+
+/// States and components that coincide without a field part there and do not cross.
+#[test]
+fn nothing_crosses_without_a_field() {
+    for up_to in ["0.001 T", "0.01 T", "1 T", "500 T"] {
+        let found = answer(&json!({
+            "rungline": 1, "species": "23Na", "configurations": ["3s", "3p"],
+            "nucleus": {"magnetic_dipole": {
+                "3s 2S1/2": "885.81 MHz", "3p 2P1/2": "94.44 MHz", "3p 2P3/2": "18.53 MHz"
+            }},
+            "line": {"upper": "3p 2P", "lower": "3s 2S"},
+            "field": {"flux_density": "1 mT", "up_to": up_to}
+        }));
+        for key in ["crossings", "component_crossings"] {
+            for row in rows(&found, key)
+                .iter()
+                .filter(|row| row["kind"] != "clock")
+            {
+                assert!(number(row, "tesla") > 1e-9, "{up_to}: {row}");
+            }
+        }
+    }
+    // Levels of one term have one g but for what lies far away: no distance that is smallest at 10⁻⁹ T.
+    let helium = answer(&json!({
+        "rungline": 1, "species": "He I", "configurations": ["1s 2p", "1s 2s"],
+        "field": {"flux_density": "1 T"}
+    }));
+    for row in rows(&helium, "crossings") {
+        assert!(number(row, "tesla") > 1e-4, "{row}");
+    }
+}
+
+/// Rows that are cut off are those of the highest fields, and their number is told.
+#[test]
+fn the_first_crossings_are_listed() {
+    let asked = |up_to: &str| {
+        answer(&json!({
+            "rungline": 1, "species": "Cr I", "configurations": ["3d5 4s"],
+            "field": {"flux_density": "0.1 T", "up_to": up_to}
+        }))
+    };
+    let (near, far) = (asked("0.3 T"), asked("1 T"));
+    let fields = |answer: &Value| -> Vec<f64> {
+        let all = rows(answer, "crossings").iter();
+        all.map(|row| number(row, "tesla")).collect()
+    };
+    let (few, many) = (fields(&near), fields(&far));
+    assert_eq!(number(&near, "crossings_left_out"), 0.0);
+    assert!(number(&far, "crossings_left_out") > 0.0);
+    assert_eq!(many.len(), 120);
+    for all in [&few, &many] {
+        assert!(all.windows(2).all(|pair| pair[0] <= pair[1]));
+    }
+    let both = few.len().min(many.len());
+    assert!(both > 20, "{both}");
+    for (one, other) in few.iter().zip(&many) {
+        // As good as the energies: 10⁻¹¹ cm⁻¹ beside shifts of 10⁻³ cm⁻¹.
+        assert!((one - other).abs() <= 1e-6 * one.abs(), "{one} {other}");
+    }
+    let resonances = rows(&far, "resonances").iter();
+    let frequencies: Vec<f64> = resonances.clone().map(|r| number(r, "mhz")).collect();
+    assert!(frequencies.windows(2).all(|pair| pair[0] <= pair[1]));
+    for row in resonances {
+        let slope = number(row, "slope");
+        assert!(slope != 0.0 || slope.is_sign_positive(), "{row}");
+    }
+}

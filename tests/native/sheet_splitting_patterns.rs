@@ -233,3 +233,51 @@ fn a_normal_triplet_is_called_so() {
         "{said}"
     );
 }
+
+/// On which side a polariser leaves light is told from the line's own centre, wherever its isotope lies; the
+/// working has the isotope's shift.
+#[test]
+fn an_isotope_far_away_keeps_its_sides() {
+    let asked = |shift: &str| {
+        answer(&json!({
+            "rungline": 1, "species": "Rb I", "configurations": ["5s", "5p"],
+            "line": {"upper": "5p 2P1/2", "lower": "5s 2S1/2"},
+            "isotopes": [{"isotope": "85Rb"}, {"isotope": "87Rb", "shift": shift}],
+            "field": {"flux_density": "5 mT", "view": "along", "polariser": "left circular"}
+        }))
+    };
+    for shift in ["900 GHz", "-900 GHz"] {
+        let found = asked(shift);
+        assert_eq!(
+            found["field"]["keeps"],
+            "σ+ (100 % on the side of higher energy)"
+        );
+    }
+    let working = asked("900 GHz")["working"].to_string();
+    assert!(working.contains("δ_isotope"), "{working}");
+}
+
+/// The diamagnetic term of hydrogen's 2s: (e²B²/8m)(2/3)⟨r²⟩ with ⟨r²⟩ = 42 a₀² (Bethe & Salpeter, § 3), which is
+/// left out and whose size is told.
+#[test]
+fn the_size_of_what_is_left_out_of_hydrogen() {
+    let found = answer(&json!({
+        "rungline": 1, "species": "H I", "configurations": ["1s", "2s", "2p"],
+        "field": {"flux_density": "5 T"}
+    }));
+    let (mu_b, hartree) = (0.466_864_477_19_f64, 219_474.631_4_f64);
+    let wanted = mu_b * mu_b / (2.0 * hartree) * 2.0 / 3.0 * 42.0 * 25.0;
+    let stretched = 1.0 + 1.0 / 1_836.152_67;
+    let mass = stretched * stretched;
+    let size = number(&found["diamagnetic"], "largest");
+    assert!(
+        (size / (wanted * mass) - 1.0).abs() < 1e-6,
+        "{size} {wanted}"
+    );
+    let limits = found["limits"].to_string();
+    assert!(
+        limits.contains("no state by more than 5.220e-4"),
+        "{limits}"
+    );
+    assert!(!limits.contains("not known"), "{limits}");
+}

@@ -63,6 +63,17 @@ pub fn most_abundant(z: u8) -> Option<u16> {
     best.map(|(_, mass_number)| mass_number)
 }
 
+/// The mean mass of an element's atoms in nature in u; nothing where none occurs there.
+pub fn mean_mass(z: u8) -> Option<f64> {
+    let (mut sum, mut shares) = (0.0, 0.0);
+    for isotope in isotopes(z) {
+        let share = isotope.abundance.unwrap_or(0.0);
+        sum += share * isotope.mass;
+        shares += share;
+    }
+    (shares > 0.0).then(|| sum / shares)
+}
+
 /// `87:-90819:27.83:3/2:1.834213:0.1335`
 fn read(z: u8, text: &str) -> Option<Isotope> {
     let mut fields = text.split(':');

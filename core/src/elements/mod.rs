@@ -6,7 +6,7 @@ mod level;
 mod names;
 
 pub use ground::{DOUBTFUL_NEUTRALS, ObservedGround, Status, observed_ground};
-pub use isotopes::{Isotope, isotope, isotopes, most_abundant};
+pub use isotopes::{Isotope, isotope, isotopes, mean_mass, most_abundant};
 pub use level::{LevelSymbol, TermSymbol, read_level};
 pub(crate) use names::distance;
 pub use names::{HEAVIEST, by_name, by_symbol, name, nearest, symbol};

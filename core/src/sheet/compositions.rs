@@ -207,6 +207,9 @@ impl Namer<'_> {
                     }
                 }
             }
+            if groups.is_empty() {
+                return Rich::words("full shells");
+            }
             let several = groups.len() > 1;
             let rich = Rich::new().with(Piece::Jj { subshells, j: None });
             if several {

@@ -1,6 +1,6 @@
 //! Radial parameters that the sheet gives: which integral of which configuration, and its value.
 
-use crate::configuration::{self, Species};
+use crate::configuration::{self, Orbital, Species};
 use crate::problem::Problem;
 use crate::quantity::signs::clipped;
 use crate::quantity::{self};
@@ -67,6 +67,23 @@ impl Document {
                     text.len(),
                 )
                 .bound("F and G are integrals of a charge cloud with itself or another one and never below zero.")
+                .way(format!("Use {positive}"), positive),
+            ));
+        }
+        let same_orbital = |pair: &[Orbital]| matches!(pair, [one, other] if one == other);
+        if typed.value < 0.0
+            && name.parameter == Parameter::Quadrupole
+            && same_orbital(&name.orbitals)
+        {
+            let positive = text.trim().trim_start_matches(quantity::signs::is_minus);
+            return Err(Faulty::Value(
+                Problem::new(
+                    "mean-square-negative",
+                    format!("{} is {}.", clipped(spelling), clipped(text.trim())),
+                    0,
+                    text.len(),
+                )
+                .bound("The mean of r² of one orbital is never below zero; between two orbitals r2 has either sign.")
                 .way(format!("Use {positive}"), positive),
             ));
         }

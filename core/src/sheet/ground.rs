@@ -148,9 +148,9 @@ impl Ground {
         }
     }
 
-    /// Whether it stands in the table of ground levels.
-    pub fn is_tabulated(&self) -> bool {
-        self.status.is_some()
+    /// Whether the table of ground levels has it from measurements.
+    pub fn is_measured(&self) -> bool {
+        self.status == Some(Status::Measured)
     }
 
     /// Term and J, where J is known.

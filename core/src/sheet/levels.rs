@@ -105,7 +105,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Levels, Problem>
     let mut around = Around::saying(sentence(&told));
     around.working = working(&told);
     around.limits = limits(&told);
-    around.kinds = kinds(document, &placed);
+    around.kinds = kinds(&told);
     Ok(Levels {
         around,
         species: document.species_rich(),

@@ -33,6 +33,7 @@ pub fn ground(document: &Document, solved: &Solved, placed: &Placed) -> Option<G
         agrees: rules.is_some_and(|r| r.term == term && r.j.is_none_or(|j| j == level.level.j)),
         term: rules.map(|r| r.term.to_string()),
         j: rules.and_then(|r| r.j),
+        status: None,
         source: None,
     };
     let observed = document
@@ -47,6 +48,7 @@ pub fn ground(document: &Document, solved: &Solved, placed: &Placed) -> Option<G
                     && entry.level.j.is_none_or(|j| j == level.level.j),
                 term: named.map(|term| term.to_string()),
                 j: entry.level.j,
+                status: Some(entry.status_text()),
                 source: Some(entry.source()),
             }
         });

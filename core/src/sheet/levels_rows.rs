@@ -131,6 +131,8 @@ pub struct Agreement {
     #[serde(rename = "J")]
     pub j: Option<TwiceJ>,
     pub agrees: bool,
+    /// How the table has it: "measured", "semi-empirical", "theoretical", …
+    pub status: Option<String>,
     pub source: Option<String>,
 }
 

@@ -24,10 +24,21 @@ pub struct Told<'a> {
     pub ionisation: Option<&'a IonisationRow>,
 }
 
+/// Levels this close, in cm⁻¹, are said to have one energy.
+const SAME_ENERGY: f64 = 1e-6;
+
 /// A wavenumber as it is read aloud.
 pub fn rounded(value: f64) -> f64 {
     let digits = if value.abs() >= 1000.0 { 1.0 } else { 100.0 };
     libm::round(value * digits) / digits
+}
+
+/// The same, with three digits where nothing would be left.
+fn read_aloud(value: f64) -> f64 {
+    match rounded(value) {
+        0.0 => format!("{value:.2e}").parse().unwrap_or(value),
+        some => some,
+    }
 }
 
 pub fn sentence(told: &Told) -> Rich {
@@ -47,16 +58,35 @@ pub fn sentence(told: &Told) -> Rich {
         None => say,
     };
     let kind = |row: &LevelRow| row.energy_kind;
+    // Levels that nothing parts but rounding: Dirac's are good to some 10⁻⁷ cm⁻¹.
+    let together = told
+        .levels
+        .iter()
+        .take_while(|row| row.above_lowest < SAME_ENERGY)
+        .count();
+    if together > 1 {
+        let say = say.say(match together {
+            2 => ", with another at the same energy".to_owned(),
+            many => format!(", with {} others at the same energy", many - 1),
+        });
+        return match (told.levels.get(together), told.levels.last()) {
+            (Some(_), Some(last)) => say
+                .say("; the highest lies ")
+                .number(read_aloud(last.above_lowest), Some("cm-1"), kind(last))
+                .say(" above it."),
+            _ => say.say("."),
+        };
+    }
     match (told.levels.get(1), told.levels.last()) {
         (Some(next), Some(last)) if told.levels.len() > 2 => say
             .say("; the next lies ")
-            .number(rounded(next.above_lowest), Some("cm-1"), kind(next))
+            .number(read_aloud(next.above_lowest), Some("cm-1"), kind(next))
             .say(" above it, the highest ")
-            .number(rounded(last.above_lowest), Some("cm-1"), kind(last))
+            .number(read_aloud(last.above_lowest), Some("cm-1"), kind(last))
             .say("."),
         (Some(next), _) => say
             .say("; the other lies ")
-            .number(rounded(next.above_lowest), Some("cm-1"), kind(next))
+            .number(read_aloud(next.above_lowest), Some("cm-1"), kind(next))
             .say(" above it."),
         _ if full_shells_alone(told.document) => say.say(
             ": full shells have this one level alone, and there is no line inside the configuration.",
@@ -65,21 +95,36 @@ pub fn sentence(told: &Told) -> Rich {
     }
 }
 
-/// The lowest level beside the observed one and Hund's rules.
+/// The lowest level beside the tabulated one and Hund's rules.
 fn beside(say: Rich, ground: &GroundRow) -> Rich {
-    match (&ground.observed, ground.hund.agrees) {
-        (Some(observed), true) if observed.agrees => say.say(", as observed and by Hund’s rules"),
-        (Some(observed), false) if observed.agrees => {
-            say.say(", as observed, where Hund’s rules name another")
-        }
-        (Some(observed), _) => say.say(match (&observed.term, observed.j) {
-            (Some(term), Some(j)) => format!(", but observed is {term}{j}"),
-            (None, Some(j)) => format!(", but observed is a level with J = {j}"),
-            _ => ", but another is observed".to_owned(),
-        }),
-        (None, true) => say.say(", as Hund’s rules say"),
-        (None, false) => say.say(", where Hund’s rules name another"),
+    let Some(known) = &ground.observed else {
+        return say.say(match ground.hund.agrees {
+            true => ", as Hund’s rules say",
+            false => ", where Hund’s rules name another",
+        });
+    };
+    // Only what was measured is observed.
+    let status = known.status.as_deref().unwrap_or_default();
+    let measured = status == "measured";
+    if known.agrees {
+        let say = match measured {
+            true => say.say(", as observed"),
+            false => say.say(format!(", as tabulated ({status})")),
+        };
+        return say.say(match ground.hund.agrees {
+            true => " and by Hund’s rules",
+            false => ", where Hund’s rules name another",
+        });
     }
+    let named = match (&known.term, known.j) {
+        (Some(term), Some(j)) => format!("{term}{j}"),
+        (None, Some(j)) => format!("a level with J = {j}"),
+        _ => "another".to_owned(),
+    };
+    say.say(match measured {
+        true => format!(", but observed is {named}"),
+        false => format!(", but tabulated ({status}) is {named}"),
+    })
 }
 
 fn sum_of(letter: &str, below: &str) -> [Formula; 3] {
@@ -331,7 +376,10 @@ fn factor(told: &Told) -> Option<Working> {
     Some(step.numbers(numbers, result))
 }
 
-pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Kind> {
+pub fn kinds(told: &Told) -> SortedMap<&'static str, Kind> {
+    let (document, placed) = (told.document, told.placed);
+    let known = told.ground.and_then(|ground| ground.observed.as_ref());
+    let measured = known.is_none_or(|known| known.status.as_deref() == Some("measured"));
     let own = match document.energies() {
         Energies::Computed => Kind::Computed,
         Energies::Given => Kind::Entered,
@@ -354,15 +402,31 @@ pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Ki
         ("parameters.scale", Kind::Entered),
         ("schemes.mean_leading", Kind::Computed),
         ("ground.hund", Kind::Exact),
-        ("ground.observed", Kind::Measured),
+        (
+            "ground.observed",
+            match measured {
+                true => Kind::Measured,
+                false => Kind::Computed,
+            },
+        ),
         ("intervals.interval", energy),
         ("intervals.expected_ratio", Kind::Exact),
         ("intervals.ratio", Kind::Computed),
+        ("levels_total", Kind::Exact),
+        ("correlation.subshells", Kind::Computed),
         ("series.limit", Kind::Computed),
+        ("series.limit_uncertainty", Kind::Computed),
+        ("series.coefficients", Kind::Computed),
+        ("series.members", Kind::Computed),
+        ("series.continued", Kind::Computed),
         ("blocks.rows", Kind::Exact),
         ("partition.value", Kind::Computed),
-        ("ionisation.ratio", Kind::Computed),
-        ("ionisation.lowering", Kind::Computed),
+        ("partition.temperature", Kind::Entered),
+        ("partition.levels", Kind::Exact),
+        ("partition.cut_off", energy),
+        ("ionisation", Kind::Computed),
+        ("ionisation.temperature", Kind::Entered),
+        ("ionisation.electron_density", Kind::Entered),
     ]
     .into_iter()
     .collect()

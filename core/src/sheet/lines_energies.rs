@@ -73,8 +73,8 @@ impl Source<'_> {
                 row.relative = *relative;
                 row.multiplet = multiplet.cloned();
             }
-            row.mass_shift = isotopes
-                .and_then(|(from, to)| isotope::normal_mass_shift(row.wavenumber?, from, to).ok());
+            row.mass_shift =
+                isotopes.and_then(|(from, to)| self.mass_shift(row.wavenumber?, from, to));
             if line.multipole == Multipole::E1 {
                 row.spin_note = self.spin_note(line, &mut notes);
             }
@@ -177,6 +177,18 @@ impl Source<'_> {
         });
     }
 
+    /// The normal mass shift of a line from the usual isotope to the one entered. One electron's wavenumber is
+    /// that of the isotope entered, so that the way is gone backwards.
+    fn mass_shift(&self, wavenumber: f64, usual: f64, entered: f64) -> Option<f64> {
+        match self.solved.case() {
+            EnergyCase::OneElectron { .. } => {
+                let back = isotope::normal_mass_shift(wavenumber, entered, usual);
+                back.ok().map(|back| -back)
+            }
+            EnergyCase::Model { .. } => isotope::normal_mass_shift(wavenumber, usual, entered).ok(),
+        }
+    }
+
     /// Masses of the nuclei of the usual and of the entered isotope in u, where another one is entered.
     fn isotopes(&self) -> Option<(f64, f64)> {
         let species = self.document.species?;
@@ -191,16 +203,19 @@ impl Source<'_> {
         (usual != entered).then(|| (mass(usual), mass(entered)))
     }
 
-    /// Mass of the atom in u, by its mass number.
+    /// Mass of the atom in u: of the isotope entered, otherwise the mean of the element in nature; the mass
+    /// number where no table has it.
     fn mass(&self) -> Option<f64> {
-        match self.solved.case() {
-            EnergyCase::Model { case, .. } => case.nucleus.map(|(_, number)| f64::from(number)),
-            EnergyCase::OneElectron { z, .. } => {
-                let typed = self.document.species.and_then(|s| s.mass_number);
-                let (number, _) = mass_number_of(*z, typed);
-                Some(f64::from(number))
-            }
+        let species = self.document.species?;
+        let z = species.element?;
+        if species.mass_number.is_none()
+            && let Some(mean) = elements::mean_mass(z)
+        {
+            return Some(mean);
         }
+        let (number, _) = mass_number_of(z, species.mass_number);
+        let known = elements::isotope(z, number).map(|isotope| isotope.mass);
+        Some(known.unwrap_or(f64::from(number)))
     }
 
     /// What makes a line between levels named with different spins.

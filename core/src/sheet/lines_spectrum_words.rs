@@ -8,12 +8,13 @@ use super::answer::Working;
 use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
+use super::given::Given;
 use super::levels_limits::{computed, incomplete, too_low, without_effect};
 use super::levels_rows::Shared;
-use super::levels_words::rounded;
 use super::light::{Surroundings, air_range};
 use super::line_rows::{LineRow, WindowRow};
 use super::lines_energies::WEAK;
+use super::parameter_name::Parameter;
 use super::placed::Placed;
 use super::rich::{Kind, Rich};
 use super::solved::{Solved, SolvedLevel};
@@ -72,11 +73,6 @@ pub fn sentence(told: &Told) -> Rich {
     if let Some(window) = told.window {
         return in_window(told, window);
     }
-    let species = told.document.species_rich();
-    let say = match species.0.is_empty() {
-        true => Rich::words("There are "),
-        false => species.say(" has "),
-    };
     let many = |multipole| {
         let of = |line: &&LineRow| line.multipole == multipole;
         told.lines.iter().filter(of).count()
@@ -85,14 +81,45 @@ pub fn sentence(told: &Told) -> Rich {
         many(Multipole::E1),
         many(Multipole::M1) + many(Multipole::E2),
     );
-    let say = say
-        .count(dipole, "electric dipole line", "electric dipole lines")
-        .say(" and ")
-        .count(others, "forbidden line here", "forbidden lines here");
+    let lacking = dipole == 0 && lacks_radial_integrals(told.document);
+    let species = told.document.species_rich();
+    let first = if lacking { others } else { dipole };
+    let say = match (species.0.is_empty(), first) {
+        (true, 1) => Rich::words("There is "),
+        (true, _) => Rich::words("There are "),
+        _ => species.say(" has "),
+    };
+    let counted = |say: Rich, count: usize, one: &str, many: &str| match count {
+        0 => say.say(format!("no {many}")),
+        _ => say.count(count, one, many),
+    };
+    let say = if let EnergyCase::OneElectron { .. } = told.solved.case() {
+        let one = "electric dipole line here";
+        counted(say, dipole, one, "electric dipole lines here")
+    } else if lacking {
+        counted(say, others, "forbidden line here", "forbidden lines here").say(
+            "; electric dipole lines have no strength, for their radial integral r(…) is not given",
+        )
+    } else {
+        let one = "electric dipole line";
+        let say = counted(say, dipole, one, "electric dipole lines").say(" and ");
+        let one = "forbidden line here";
+        counted(say, others, one, "forbidden lines here")
+    };
     match strongest(told.lines.iter()) {
         Some(line) => named(told, say.say("; the strongest is "), line).say("."),
         None => say.say("."),
     }
+}
+
+/// Whether nothing but what is given is known, no radial integral of electric dipole lines among it, though
+/// there are levels of both parities.
+fn lacks_radial_integrals(document: &Document) -> bool {
+    let odd = |entry: usize| document.is_odd(entry);
+    let dipole = |given: &Given| given.name.parameter == Parameter::Dipole;
+    document.energies() == Energies::Given
+        && !document.given.iter().any(dipole)
+        && (1..document.entries.len()).any(|entry| odd(entry) != odd(0))
 }
 
 fn in_window(told: &Told, window: &WindowRow) -> Rich {
@@ -248,7 +275,7 @@ fn air(told: &Told, case: Option<&LineRow>) -> Option<Working> {
             numbers,
             Rich::new()
                 .number(
-                    rounded(air * 1e3) / 1e3,
+                    six_digits(air),
                     Some("nm"),
                     line.energy_kind.unwrap_or(Kind::Computed),
                 )
@@ -283,6 +310,12 @@ pub fn limits(told: &Told) -> Vec<String> {
         limits.push(format!(
             "Lines marked weak are what little is left of large terms that cancel (factor below {WEAK}): their strengths may be far off (common practice, no source)."
         ));
+    }
+    if lacks_radial_integrals(told.document) {
+        limits.push(
+            "No radial integral r(…) is given: strengths of electric dipole lines are not known, and these lines are not listed. Relative strengths of pure LS coupling stand under the multiplets."
+                .to_owned(),
+        );
     }
     if told.lines.iter().any(|line| line.mass_shift.is_some()) {
         limits.push(
@@ -347,6 +380,9 @@ pub fn kinds(document: &Document, placed: &Placed) -> SortedMap<&'static str, Ki
         ("pairs", Kind::Exact),
         ("window.from", Kind::Entered),
         ("window.to", Kind::Entered),
+        ("window.from_nm", Kind::Entered),
+        ("window.to_nm", Kind::Entered),
+        ("window.nearest", energy),
         ("window.lines", Kind::Exact),
         ("conversions", Kind::Exact),
     ]

@@ -91,6 +91,12 @@ pub fn kinds(first: &Block) -> SortedMap<&'static str, Kind> {
         ("virial_ratio", Kind::Computed),
         ("residual", Kind::Computed),
         ("history.residual", Kind::Computed),
+        ("iterations", Kind::Exact),
+        ("history.iteration", Kind::Exact),
+        ("mesh", Kind::Exact),
+        ("mesh.end", Kind::Computed),
+        ("orbitals.n", Kind::Exact),
+        ("orbitals.l", Kind::Exact),
         ("orbitals.electrons", Kind::Exact),
         ("orbitals.energy", own),
         ("orbitals.r", own),
@@ -106,6 +112,8 @@ pub fn kinds(first: &Block) -> SortedMap<&'static str, Kind> {
         ("between.bare", own),
         ("between.overlap", own),
         ("between.largest_cross", own),
+        ("nucleus.charge", Kind::Exact),
+        ("nucleus.mass_number", Kind::Exact),
         ("nucleus.rms_radius", Kind::Computed),
     ]
     .into_iter()

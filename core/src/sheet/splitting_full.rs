@@ -68,6 +68,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
             components.extend(rows.rows(field));
         }
     }
+    resonances_left_out += splitting_resonances::first(&mut resonances);
     // With a line the upper end first, as one reads it.
     sort_by(&mut states, |a, b| side_order(a).cmp(&side_order(b)));
     let positions = positions(&components);
@@ -112,7 +113,8 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         .iter()
         .map(|c| Shown {
             polarisation: c.polarisation,
-            offset: c.offset,
+            // From the centre of its own isotope's line.
+            offset: c.offset - c.moved,
             seen: c.seen,
         })
         .collect();
@@ -377,6 +379,7 @@ impl Rows<'_> {
             }),
             linear,
             isotope: self.isotope.clone(),
+            moved: shift_of(self.document, self.pass),
         })
     }
 }

@@ -23,7 +23,12 @@ pub fn limits(told: &Told) -> Vec<String> {
             largest: Some(largest),
             ..
         }) if *largest > 0.0 => limits.push(format!(
-            "The diamagnetic term is left out; it shifts levels by up to {largest:.3e} cm⁻¹ here, all states of a level nearly alike. The sheet's \"diamagnetic\" counts it."
+            "The diamagnetic term is left out. In first order it raises the mean of a level's states by up to {largest:.3e} cm⁻¹ here and no state by more than {:.3e} cm⁻¹; states of different M differ.{}",
+            1.5 * largest,
+            match ready.diamagnetic {
+                Ok(()) => " The sheet's \"diamagnetic\" counts it.",
+                Err(_) => "",
+            }
         )),
         Some(DiamagneticRow { largest: None, .. }) if told.tesla() > 0.0 => limits.push(
             "The diamagnetic term is left out, and its size is not known without radial functions.".to_owned(),
@@ -61,6 +66,14 @@ pub fn limits(told: &Told) -> Vec<String> {
     }
     limits.extend(of_nuclei(document));
     limits.extend(told.searched.missing.clone());
+    if let Some(fields) = &told.searched.fields {
+        let below = fields.rising.map_or(String::new(), |(start, ratio)| {
+            let percent = 100.0 * (ratio - 1.0);
+            format!(" and, from {start:.1e} T, {percent:.0} % of the field")
+        });
+        let end = fields.tesla.last().copied().unwrap_or(0.0);
+        limits.push(format!("Crossings and clock points are looked for in steps of at most {:.2e} T{below}, up to {end} T: two of one pair within a step may be missed.", fields.step));
+    }
     let each = told.components.len() / ready.passes.len().max(1);
     if !told.searched.component_crossings.is_empty() && each > MOST_COMPONENTS {
         limits.push(format!(

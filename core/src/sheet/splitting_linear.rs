@@ -99,6 +99,14 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         ("components.M_upper", Kind::Exact),
         ("components.M_lower", Kind::Exact),
         ("positions", Kind::Exact),
+        ("groups", Kind::Exact),
+        ("crossings_left_out", Kind::Exact),
+        ("component_crossings_left_out", Kind::Exact),
+        ("resonances_left_out", Kind::Exact),
+        ("conversions.ghz_per_wavenumber", Kind::Exact),
+        ("conversions.mu_b_per_tesla", Kind::Measured),
+        ("conversions.pm_per_wavenumber", Kind::Computed),
+        ("field.up_to", Kind::Entered),
         ("states.M", Kind::Exact),
         ("states.shift", Kind::Computed),
         ("states.slope", Kind::Computed),
@@ -234,6 +242,7 @@ fn component_rows(
                 ),
             linear: Some(offset.wavenumber),
             isotope: None,
+            moved: 0.0,
         });
     }
     Ok(rows)

@@ -1,7 +1,9 @@
 //! The levels of a parity as a field finds them: at their places, within bounds.
 
 use crate::problem::Problem;
-use crate::splitting::in_field::{Diamagnetic, Manifold, Nucleus, OneElectron, Split};
+use crate::splitting::in_field::{
+    Diamagnetic, Manifold, Nucleus, OneElectron, Split,
+};
 
 use super::document::Document;
 use super::energy_case::EnergyCase;
@@ -63,14 +65,18 @@ pub fn set_level(
     })
 }
 
-/// The levels of a parity with their moments, and the largest mean shift by the diamagnetic term at 1 T or why it is
-/// not known.
+/// Levels with their moments, the largest mean shift by the diamagnetic term at 1 T in cm⁻¹, and why that term is
+/// not to be had.
+pub type WithDiamagnetic = (Manifold, Option<f64>, Result<(), Problem>);
+
+/// The levels of a parity with their moments, the largest mean shift by the diamagnetic term at 1 T, and why that
+/// term is not to be had.
 pub fn manifold(
     solved: &Solved,
     parity: usize,
     levels: &[SetLevel],
     with_diamagnetic: bool,
-) -> Result<(Manifold, Result<Option<f64>, Problem>), Problem> {
+) -> Result<WithDiamagnetic, Problem> {
     let energies: Vec<f64> = levels.iter().map(|l| l.energy.unwrap_or(0.0)).collect();
     let Some(spectrum) = &solved.spectrum else {
         let electrons: Vec<OneElectron> = levels
@@ -89,6 +95,7 @@ pub fn manifold(
         let EnergyCase::OneElectron { z, mass, .. } = solved.case() else {
             return Ok((
                 Manifold::one_electron(&electrons)?,
+                None,
                 Err(no_radial_functions()),
             ));
         };
@@ -99,20 +106,16 @@ pub fn manifold(
     let plain = Manifold::of_parity(spectrum, parity, &energies)?;
     let term = match Diamagnetic::of_parity(spectrum, parity) {
         Ok(term) => term,
-        Err(problem) => return Ok((plain, Err(problem))),
+        Err(problem) => return Ok((plain, None, Err(problem))),
     };
     Ok(joined(plain, term, with_diamagnetic))
 }
 
 /// Its size is always told; it acts only where the sheet says so.
-fn joined(
-    plain: Manifold,
-    term: Diamagnetic,
-    acts: bool,
-) -> (Manifold, Result<Option<f64>, Problem>) {
+fn joined(plain: Manifold, term: Diamagnetic, acts: bool) -> WithDiamagnetic {
     let with = plain.clone().with(term);
     let size = with.diamagnetic_shift(1.0);
-    (if acts { with } else { plain }, Ok(size))
+    (if acts { with } else { plain }, size, Ok(()))
 }
 
 /// Why the diamagnetic term cannot act.

@@ -20,7 +20,15 @@ const MOST_PAIRS: usize = 60_000;
 /// A strength below this share of the largest is rounding.
 const LEAST: f64 = 1e-12;
 
-/// The resonances of one nucleus by rising frequency, added to the rows; how many were left out.
+/// The first resonances by frequency, of all nuclei and sets together; how many are taken away.
+pub fn first(rows: &mut Vec<ResonanceRow>) -> usize {
+    sort_by(rows, |a, b| a.mhz.total_cmp(&b.mhz));
+    let left_out = rows.len().saturating_sub(MOST);
+    rows.truncate(MOST);
+    left_out
+}
+
+/// The resonances of one nucleus, the first of each set by frequency, added to the rows; how many were left out.
 pub fn add(
     document: &Document,
     ready: &Prepared,
@@ -51,9 +59,8 @@ pub fn add(
             .filter(|r| r.strength > LEAST * largest && r.frequency > 0.0)
             .collect();
         sort_by(&mut found, |a, b| a.frequency.total_cmp(&b.frequency));
-        let room = MOST.saturating_sub(rows.len());
-        left_out += found.len().saturating_sub(room);
-        for resonance in found.iter().take(room) {
+        left_out += found.len().saturating_sub(MOST);
+        for resonance in found.iter().take(MOST) {
             rows.extend(row(set, split.states(), resonance, isotope.as_ref()));
         }
     }
@@ -75,7 +82,8 @@ fn row(
         from: name(resonance.lower)?,
         to: name(resonance.upper)?,
         mhz: resonance.frequency * MHZ_PER_WAVENUMBER,
-        slope: resonance.slope * MHZ_PER_WAVENUMBER / 1e3,
+        // No −0.
+        slope: resonance.slope * MHZ_PER_WAVENUMBER / 1e3 + 0.0,
         strength: resonance.strength,
         kind: if resonance.change_of_m == 0 {
             "parallel"

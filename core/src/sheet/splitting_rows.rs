@@ -131,7 +131,7 @@ pub struct FieldOf {
 #[derive(Clone, Debug, Serialize)]
 pub struct DiamagneticRow {
     pub included: bool,
-    /// cm⁻¹, the largest shift of a state by it in this field; nothing where it is not known.
+    /// cm⁻¹, the largest mean shift of a level's states by it in this field; nothing where it is not known.
     pub largest: Option<f64>,
 }
 
@@ -230,6 +230,9 @@ pub struct ComponentRow {
     /// cm⁻¹: the offset by g M alone.
     pub linear: Option<f64>,
     pub isotope: Option<Shared>,
+    /// cm⁻¹: the shift of its isotope, which is in the offset.
+    #[serde(skip)]
+    pub moved: f64,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -257,6 +260,8 @@ pub struct CrossingRow {
     pub slope_second: f64,
     /// The gap as a frequency.
     pub mhz: f64,
+    /// How many photons drive a clock transition: 1 for |ΔM| ≤ 1, 2 for |ΔM| = 2; nothing for others.
+    pub photons: Option<u8>,
     pub isotope: Option<Shared>,
 }
 

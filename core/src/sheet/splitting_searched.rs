@@ -6,8 +6,8 @@ use std::rc::Rc;
 use crate::numerics::order::{sort, sort_by};
 use crate::problem::Problem;
 use crate::splitting::in_field::{
-    ComponentCrossing, Crossing, CrossingKind, MHZ_PER_WAVENUMBER, State, Tolerance as Departure,
-    Wanted, component_crossings, crossings, map,
+    ComponentCrossing, Crossing, CrossingKind, MHZ_PER_WAVENUMBER, SearchFields, State,
+    Tolerance as Departure, Wanted, component_crossings, crossings, map_at, search_fields,
 };
 
 use super::document::Document;
@@ -19,7 +19,7 @@ use super::splitting_names::state_name;
 use super::splitting_rows::{ComponentCrossingRow, CrossingRow};
 use super::splitting_sets::{Pass, Prepared, Set};
 
-/// The most rows of each kind for one nucleus.
+/// The most rows of each kind for each nucleus.
 const MOST_ROWS: usize = 120;
 
 /// The strongest components among which crossings are looked for.
@@ -30,7 +30,7 @@ const MOST_WORK: f64 = 6e9;
 const USUAL_WORK: f64 = 1e9;
 
 /// Fields of the search.
-const MOST_FIELDS: f64 = 200.0;
+const MOST_FIELDS: f64 = 300.0;
 const LEAST_FIELDS: f64 = 60.0;
 
 /// What was found.
@@ -42,6 +42,8 @@ pub struct Searched {
     pub component_crossings_left_out: usize,
     /// Tesla.
     pub departs_at: Option<f64>,
+    /// Where it was looked for; nothing where it was not.
+    pub fields: Option<SearchFields>,
     /// Why something was not looked for.
     pub missing: Option<String>,
 }
@@ -93,6 +95,9 @@ impl Prepared {
             );
             return Ok(found);
         }
+        let splits = self.passes.iter().flat_map(|pass| &pass.splits);
+        let fields = search_fields(splits, range.up_to, fields);
+        let most = MOST_ROWS * self.passes.len();
         for pass in &self.passes {
             let isotope = isotope_of(document, pass);
             let searched = SearchOf {
@@ -100,14 +105,29 @@ impl Prepared {
                 ready: self,
                 pass,
                 isotope,
-                fields,
+                tesla: &fields.tesla,
                 range,
+                most,
             };
             searched.states(&mut found)?;
             searched.components(&mut found)?;
         }
+        // At one field, as without any, those of one photon before those of two.
+        sort_by(&mut found.crossings, |a, b| a.photons.cmp(&b.photons));
+        found.crossings_left_out += first(&mut found.crossings, most, |row| row.tesla);
+        found.component_crossings_left_out +=
+            first(&mut found.component_crossings, most, |row| row.tesla);
+        found.fields = Some(fields);
         Ok(found)
     }
+}
+
+/// Keeps the first rows by field of all nuclei and sets together; how many it takes away.
+fn first<T>(rows: &mut Vec<T>, most: usize, tesla: impl Fn(&T) -> f64) -> usize {
+    sort_by(rows, |a, b| tesla(a).total_cmp(&tesla(b)));
+    let left_out = rows.len().saturating_sub(most);
+    rows.truncate(most);
+    left_out
 }
 
 struct SearchOf<'a> {
@@ -115,8 +135,10 @@ struct SearchOf<'a> {
     ready: &'a Prepared,
     pass: &'a Pass,
     isotope: Option<Shared>,
-    fields: usize,
+    tesla: &'a [f64],
     range: Range,
+    /// The most rows.
+    most: usize,
 }
 
 /// Places of the components that are strongest in some field of the map, in their own order.
@@ -165,11 +187,12 @@ impl SearchOf<'_> {
         let wanted = Wanted {
             crossings: true,
             avoided: true,
-            clock: Some(1),
+            // Two photons change M by 2.
+            clock: Some(2),
         };
         for (set, split) in self.ready.sets.iter().zip(&self.pass.splits) {
             let chosen = self.ready.order(set, split, with_line);
-            let whole = map(split, None, None, (0.0, self.range.up_to), self.fields);
+            let whole = map_at(split, None, None, self.tesla);
             let Some(whole) = or_missing(whole, &mut found.missing)? else {
                 continue;
             };
@@ -178,14 +201,21 @@ impl SearchOf<'_> {
                 (&whole.tesla, &whole.upper),
                 &chosen,
                 wanted,
-                MOST_ROWS,
+                self.most,
             );
             let Some(rows) = or_missing(rows, &mut found.missing)? else {
                 continue;
             };
             found.crossings_left_out += rows.left_out;
+            let two_m = |place: usize| Some(split.states().get(place)?.two_m);
             let row = |row: &Crossing| {
+                let change = (two_m(row.first)? - two_m(row.second)?).abs();
                 Some(CrossingRow {
+                    photons: (row.kind == CrossingKind::Clock).then_some(if change > 2 {
+                        2
+                    } else {
+                        1
+                    }),
                     kind: match row.kind {
                         CrossingKind::Crossing => "crossing",
                         CrossingKind::Avoided => "avoided",
@@ -231,13 +261,12 @@ impl SearchOf<'_> {
                 continue;
             }
             let lower = (join.upper != join.lower).then_some(below);
-            let range = (0.0, self.range.up_to);
-            let whole = map(above, lower, Some(components), range, self.fields);
+            let whole = map_at(above, lower, Some(components), self.tesla);
             let Some(whole) = or_missing(whole, &mut found.missing)? else {
                 continue;
             };
             let chosen = brightest(&whole.strengths);
-            let rows = component_crossings((above, lower), components, &whole, &chosen, MOST_ROWS);
+            let rows = component_crossings((above, lower), components, &whole, &chosen, self.most);
             let Some(rows) = or_missing(rows, &mut found.missing)? else {
                 continue;
             };

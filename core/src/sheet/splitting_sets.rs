@@ -254,14 +254,15 @@ fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepare
         if document.line.is_some() && !levels.iter().any(wanted) {
             continue;
         }
-        let (manifold, term) = manifold(&solved, parity, &levels, key.diamagnetic)?;
+        let (manifold, diamagnetic_at_one, term) =
+            manifold(&solved, parity, &levels, key.diamagnetic)?;
         let set = Set {
             manifold,
             levels,
             reduced: false,
-            diamagnetic_at_one: term.as_ref().ok().copied().flatten(),
+            diamagnetic_at_one,
         };
-        diamagnetic = diamagnetic.and(term.map(|_| ()));
+        diamagnetic = diamagnetic.and(term);
         let (set, chosen) = small_enough(document, set);
         origins.push((parity, chosen));
         sets.push(set);

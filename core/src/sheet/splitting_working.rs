@@ -195,6 +195,10 @@ fn component(told: &Told, case: &ComponentRow) -> Vec<Working> {
         formula.extend([operator("−"), sub(name("σ"), number(0))]);
         numbers.extend([operator("−"), bracketed(centre)]);
     }
+    if case.moved != 0.0 {
+        formula.extend([operator("+"), sub(name("δ"), name("isotope"))]);
+        numbers.extend([operator("+"), bracketed(case.moved)]);
+    }
     let mut steps = Vec::new();
     let offset = Working::new(
         "Offset of a component from the line's centre without field",

@@ -145,9 +145,11 @@ pub fn answer(document: &Document) -> Result<States, Problem> {
         ("levels.J", Kind::Exact),
         ("levels.g", Kind::Computed),
         ("levels.mu_eff", Kind::Computed),
+        ("levels.index", Kind::Exact),
+        ("levels_listed", Kind::Exact),
         (
             "ground",
-            if first.ground.as_ref().is_some_and(Ground::is_tabulated) {
+            if first.ground.as_ref().is_some_and(Ground::is_measured) {
                 Kind::Measured
             } else {
                 Kind::Computed

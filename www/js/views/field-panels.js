@@ -98,10 +98,15 @@ export function kindWords(kind) {
   return KINDS[kind] ?? kind;
 }
 
+/** The same of one crossing, with the photons that it takes where it takes two. */
+export function crossingWords({ kind, photons }) {
+  return photons === 2 ? `${kindWords(kind)}, two photons` : kindWords(kind);
+}
+
 function crossingReading(crossing, inside) {
   const end = (name) => stateRich(inside.get(name));
   return [
-    `${kindWords(crossing.kind)}: `, ...end(crossing.first), ...(crossing.second ? [" and ", ...end(crossing.second)] : []), " at ",
+    `${crossingWords(crossing)}: `, ...end(crossing.first), ...(crossing.second ? [" and ", ...end(crossing.second)] : []), " at ",
     { number: { text: String(crossing.tesla), unit: "T", kind: "computed" } },
     ...(crossing.kind === "avoided" && typeof crossing.gap === "number" ? ["; gap ", { number: { text: String(crossing.gap), unit: "cm-1", kind: "computed" } }] : []),
     ...(typeof crossing.mhz === "number" ? ["; ", { number: { text: String(crossing.mhz), unit: "MHz", kind: "computed" } }] : []),

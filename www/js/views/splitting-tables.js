@@ -2,7 +2,7 @@
 
 import { SIGNS, OFFSET_UNITS } from "../plot/pattern.js";
 import { dataTable } from "../table.js";
-import { crossingId, kindWords } from "./field-panels.js";
+import { crossingId, crossingWords, kindWords } from "./field-panels.js";
 import { PROJECTIONS, componentConcerned, componentId, levelRich, stateId, stateRich } from "./splitting-names.js";
 import { kindOf } from "./working.js";
 
@@ -110,17 +110,25 @@ function namesIn(answer) {
 
 export function crossingsTable(rows, answer, context, name) {
   const end = namesIn(answer);
-  const number = (key, heading, unit) => has(rows, key) && { name: heading, unit, type: "number", kind: kindFor(answer, "crossings", key) ?? "computed", value: (row) => row[key] };
+  const number = (key, heading, unit, digits) => has(rows, key) && { name: heading, unit, digits, type: "number", kind: kindFor(answer, "crossings", key) ?? "computed", value: (row) => row[key] };
   return dataTable({
     caption: name, rows, context, file: name, sorting: sortings.crossings,
     columns: [
-      { name: "what", type: "text", value: (row) => kindWords(row.kind) },
+      { name: "what", type: "text", value: (row) => crossingWords(row) },
       end("first"), end("second"),
-      number("tesla", "field", "T"), number("energy", "energy", "cm-1"), number("gap", "gap", "cm-1"), number("mhz", "frequency", "MHz"),
+      number("tesla", "field", "T"), number("energy", "energy", "cm-1"), number("gap", "gap", "cm-1"), number("mhz", "frequency", "MHz", digitsOfConstants(answer, context)),
       number("slope_first", "slope of the first", "cm-1 T-1"), number("slope_second", "slope of the second", "cm-1 T-1"),
     ].filter(Boolean),
     identify: crossingId,
   });
+}
+
+// Frequencies have as many decimals as the entered constant A that has fewest, where that is more than usual.
+function digitsOfConstants({ nucleus, isotopes = [] }, context) {
+  const constants = (nucleus?.levels ?? isotopes.flatMap(({ levels }) => levels)).filter(({ kind, A_MHz: a }) => kind === "entered" && typeof a === "number" && a !== 0);
+  if (constants.length === 0) return undefined;
+  const decimals = Math.min(...constants.map(({ A_MHz: a }) => String(a).split(".")[1]?.length ?? 0));
+  return Math.min(4, (context.settings.digits ?? 17) - decimals);
 }
 
 export function componentCrossingsTable(rows, answer, context) {

@@ -1,13 +1,12 @@
 //! Where two components of lines cross, and where they are farthest apart.
 
 use super::components::{Component, Components};
-use super::crossings::{Found, MOST_COMPARED, too_large};
+use super::crossings::{Found, MOST_COMPARED, first_of, too_large};
 use super::map::Map;
 use super::probe::Probe;
 use super::root::{changes, root};
-use super::split::Split;
+use super::split::{COINCIDE, Split};
 use crate::constants::BOHR_MAGNETON_WAVENUMBER;
-use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use std::ops::Range;
 
@@ -62,14 +61,26 @@ pub fn component_crossings(
             let Some(centres) = centres(upper, below, components, one, two) else {
                 continue;
             };
-            let apart = || b.iter().zip(a).map(|(b, a)| centres + (b - a));
-            changes(&map.tesla, apart(), steep * largest, &mut found);
+            let rest = [one, two].into_iter().filter_map(|place| {
+                let component = components.list().get(place)?;
+                Some(
+                    upper
+                        .size_at_rest(component.upper)
+                        .max(below.size_at_rest(component.lower)),
+                )
+            });
+            let rest = COINCIDE * rest.fold(centres.abs(), f64::max);
+            let apart = b.iter().zip(a).map(|(b, a)| centres + (b - a));
+            let apart: Vec<f64> = apart.collect();
+            let close = steep * largest;
+            changes(&map.tesla, &apart, (close.max(rest), close), &mut found);
             candidates.extend(found.drain(..).map(|(range, _)| (range, false, one, two)));
             let steeper = other.iter().zip(slope).map(|(b, a)| b - a);
-            changes(&map.tesla, steeper, steep, &mut found);
+            let steeper: Vec<f64> = steeper.collect();
+            changes(&map.tesla, &steeper, (steep, steep), &mut found);
             for (range, rises) in found.drain(..) {
                 let at = map.tesla.partition_point(|&tesla| tesla < range.end);
-                let higher = apart().nth(at).is_some_and(|apart| apart > 0.0);
+                let higher = apart.get(at).is_some_and(|apart| *apart > 0.0);
                 // A distance that falls behind the place was the largest there.
                 if higher != rises {
                     let (low, high) = if higher { (one, two) } else { (two, one) };
@@ -78,13 +89,14 @@ pub fn component_crossings(
             }
         }
     }
-    sort_by(&mut candidates, |a, b| a.0.end.total_cmp(&b.0.end));
-    let left_out = candidates.len().saturating_sub(most);
     let mut ends = Ends::new(upper, below, components);
-    let known = candidates.iter().take(most);
-    let mut found: Vec<ComponentCrossing> = known.filter_map(|c| ends.refine(c)).collect();
-    sort_by(&mut found, |a, b| a.tesla.total_cmp(&b.tesla));
-    Ok(Found { found, left_out })
+    Ok(first_of(
+        candidates,
+        most,
+        |candidate| candidate.0.start,
+        |crossing: &ComponentCrossing| crossing.tesla,
+        |candidate| ends.refine(candidate),
+    ))
 }
 
 /// How far the centre of the second component's line is above that of the first one's.

@@ -5,21 +5,25 @@
 
 use super::map::Followed;
 use super::probe::Probe;
-use super::root::{changes, hidden, root};
-use super::split::Split;
+use super::root::{changes, dips, hidden, root};
+use super::split::{COINCIDE, Split};
 use crate::constants::BOHR_MAGNETON_WAVENUMBER;
 use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use std::ops::Range;
 
 /// Pairs of states times fields that are searched at most.
-pub const MOST_COMPARED: usize = 50_000_000;
+pub const MOST_COMPARED: usize = 75_000_000;
 
-/// Differences of energies below this share of the energies are rounding.
-const ROUNDING: f64 = 1e-15;
+/// Differences of energies in a field below this share of the energies are rounding.
+const ROUNDING: f64 = 1e-14;
 
 /// Differences of slopes below this, in μ_B, are rounding.
 const LEVEL: f64 = 1e-11;
+
+/// Differences of slopes without a field below this, in μ_B, are rounding: levels of one term have equal g
+/// but for what spin–orbit coupling far away mixes in.
+const LEVEL_AT_REST: f64 = 1e-8;
 
 /// What happens between two states.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -67,7 +71,7 @@ pub struct Wanted {
 pub struct Found<T> {
     /// The first of them.
     pub found: Vec<T>,
-    /// How many more there are, of which only the fields are known roughly.
+    /// How many more there are, at higher fields.
     pub left_out: usize,
 }
 
@@ -101,6 +105,7 @@ pub fn crossings(
         probe: Probe::new(split),
         other: Probe::new(split),
         changes: Vec::new(),
+        dips: Vec::new(),
         candidates: Vec::new(),
     };
     for (place, &one) in chosen.iter().enumerate() {
@@ -108,13 +113,46 @@ pub fn crossings(
             search.pair(one, two, wanted);
         }
     }
-    let mut candidates = std::mem::take(&mut search.candidates);
-    sort_by(&mut candidates, |a, b| a.range.end.total_cmp(&b.range.end));
-    let left_out = candidates.len().saturating_sub(most);
-    let known = candidates.iter().take(most);
-    let mut found: Vec<Crossing> = known.filter_map(|c| search.refine(c)).collect();
-    sort_by(&mut found, |a, b| a.tesla.total_cmp(&b.tesla));
-    Ok(Found { found, left_out })
+    let candidates = std::mem::take(&mut search.candidates);
+    Ok(first_of(
+        candidates,
+        most,
+        |candidate| candidate.range.start,
+        |crossing: &Crossing| crossing.tesla,
+        |candidate| search.refine(candidate),
+    ))
+}
+
+/// The first of what candidates turn out to be, by field. Each has to lie behind its start, so that those
+/// that begin behind the last one that has room need not be looked at.
+pub(super) fn first_of<C, T>(
+    mut candidates: Vec<C>,
+    most: usize,
+    start: impl Fn(&C) -> f64,
+    tesla: impl Fn(&T) -> f64,
+    mut refine: impl FnMut(&C) -> Option<T>,
+) -> Found<T> {
+    sort_by(&mut candidates, |a, b| start(a).total_cmp(&start(b)));
+    let mut found: Vec<T> = Vec::new();
+    let mut left_out = 0;
+    for candidate in &candidates {
+        let last = found.get(most.wrapping_sub(1)).map(&tesla);
+        if most == 0 || last.is_some_and(|last| start(candidate) > last) {
+            left_out += 1;
+            continue;
+        }
+        let Some(one) = refine(candidate) else {
+            continue;
+        };
+        let own = tesla(&one);
+        let place = found.partition_point(|known| tesla(known) <= own);
+        found.insert(place, one);
+        if found.len() > most {
+            found.pop();
+            left_out += 1;
+        }
+    }
+    Found { found, left_out }
 }
 
 struct Search<'a> {
@@ -124,6 +162,7 @@ struct Search<'a> {
     probe: Probe<'a>,
     other: Probe<'a>,
     changes: Vec<(Range<f64>, bool)>,
+    dips: Vec<(Range<f64>, f64)>,
     candidates: Vec<Candidate>,
 }
 
@@ -136,7 +175,8 @@ impl Search<'_> {
         if one == two {
             return;
         }
-        let level = LEVEL * BOHR_MAGNETON_WAVENUMBER.value;
+        let mu_b = BOHR_MAGNETON_WAVENUMBER.value;
+        let level = (LEVEL_AT_REST * mu_b, LEVEL * mu_b);
         let same_level = a.level == b.level;
         if a.part != b.part && wanted.crossings {
             self.crossing(one, two, same_level);
@@ -156,7 +196,7 @@ impl Search<'_> {
             } = self;
             changes(
                 tesla,
-                difference(&followed.slopes, higher, lower),
+                &difference(&followed.slopes, higher, lower),
                 level,
                 found,
             );
@@ -178,8 +218,11 @@ impl Search<'_> {
 
     fn crossing(&mut self, one: usize, two: usize, same_level: bool) {
         let Search {
+            split,
             tesla,
             followed,
+            probe,
+            other,
             changes: found,
             candidates,
             ..
@@ -194,8 +237,18 @@ impl Search<'_> {
             let list = lists.get(state).map(Vec::as_slice).unwrap_or_default();
             list.iter().fold(0.0_f64, |most, e| most.max(e.abs()))
         };
-        let tolerance = ROUNDING * largest(one).max(largest(two));
-        changes(tesla, difference(lists, two, one), tolerance, found);
+        let at_rest = |state: usize| {
+            let first = lists.get(state).and_then(|list| list.first());
+            let first = first.copied().unwrap_or(0.0).abs();
+            first.max(split.size_at_rest(state))
+        };
+        let rest = at_rest(one).max(at_rest(two));
+        let tolerance = (
+            COINCIDE * rest,
+            ROUNDING * rest.max(largest(one)).max(largest(two)),
+        );
+        let values = difference(lists, two, one);
+        changes(tesla, &values, tolerance, found);
         let mut add = |range: Range<f64>, rises: bool| {
             let (first, second) = if rises { (two, one) } else { (one, two) };
             candidates.push(Candidate {
@@ -208,11 +261,14 @@ impl Search<'_> {
         for (range, rises) in found.drain(..) {
             add(range, rises);
         }
-        let values = difference(lists, two, one).zip(difference(&followed.slopes, two, one));
+        let slopes = difference(&followed.slopes, two, one);
         let mut last: Option<(f64, f64, f64)> = None;
-        for (&field, (value, slope)) in tesla.iter().zip(values) {
+        for (&field, (&value, &slope)) in tesla.iter().zip(values.iter().zip(&slopes)) {
             if let Some((before, v, s)) = last
+                && v.abs() > tolerance.0
                 && let Some(middle) = hidden(&(before..field), (v, value), (s, slope))
+                && let (Some(a), Some(b)) = (probe.state(one, middle), other.state(two, middle))
+                && b.above(&a) * v < 0.0
             {
                 add(before..middle, v < 0.0);
                 add(middle..field, v > 0.0);
@@ -221,19 +277,22 @@ impl Search<'_> {
         }
     }
 
-    fn clock(&mut self, one: usize, two: usize, level: f64) {
+    fn clock(&mut self, one: usize, two: usize, level: (f64, f64)) {
         let Search {
             tesla,
             followed,
+            probe,
+            other,
             changes: found,
+            dips: near,
             candidates,
             ..
         } = self;
-        let start = |lists: &[Vec<f64>]| difference(lists, two, one).next().unwrap_or(0.0);
-        let mut slopes = difference(&followed.slopes, two, one);
-        let still = slopes.next().is_some_and(|slope| slope.abs() <= level);
-        let moves = slopes.any(|slope| slope.abs() > level);
-        let (first, second) = if start(&followed.shifts) < 0.0 {
+        let start = |state: usize| followed.shifts.get(state).and_then(|list| list.first());
+        let slopes = difference(&followed.slopes, two, one);
+        let still = slopes.first().is_some_and(|slope| slope.abs() <= level.0);
+        let moves = slopes.iter().any(|slope| slope.abs() > level.0);
+        let (first, second) = if start(two) < start(one) {
             (two, one)
         } else {
             (one, two)
@@ -249,9 +308,21 @@ impl Search<'_> {
         if still && moves && tesla.first() == Some(&0.0) {
             add(0.0..0.0);
         }
-        changes(tesla, difference(&followed.slopes, two, one), level, found);
+        changes(tesla, &slopes, level, found);
         for (range, _) in found.drain(..) {
             add(range);
+        }
+        dips(tesla, &slopes, near);
+        for (range, middle) in near.drain(..) {
+            let (Some(a), Some(b)) = (probe.state(one, middle), other.state(two, middle)) else {
+                continue;
+            };
+            let before = tesla.partition_point(|field| *field < range.start);
+            let known = slopes.get(before).copied().unwrap_or(0.0);
+            if known.abs() > level.0 && (b.slope - a.slope) * known < 0.0 {
+                add(range.start..middle);
+                add(middle..range.end);
+            }
         }
     }
 
@@ -300,9 +371,14 @@ impl Search<'_> {
 }
 
 /// One state's list less another's, by field.
-fn difference(lists: &[Vec<f64>], one: usize, two: usize) -> impl Iterator<Item = f64> + '_ {
+#[inline(never)]
+fn difference(lists: &[Vec<f64>], one: usize, two: usize) -> Vec<f64> {
     let list = |state: usize| lists.get(state).map(Vec::as_slice).unwrap_or_default();
-    list(one).iter().zip(list(two)).map(|(a, b)| a - b)
+    list(one)
+        .iter()
+        .zip(list(two))
+        .map(|(a, b)| a - b)
+        .collect()
 }
 
 #[inline(never)]

@@ -207,8 +207,15 @@ impl Manifold {
         let own = self.diamagnetic.as_ref()?;
         let means = own.scalar.iter().filter(|e| e.left == e.right);
         let largest = means.fold(0.0_f64, |most, e| most.max(e.value.abs()));
-        Some(DIAMAGNETIC * tesla * tesla * largest * 2.0 / 3.0)
+        Some(mean_diamagnetic_shift(largest, tesla))
     }
+}
+
+/// The mean shift of the states of a level by the diamagnetic term, cm⁻¹, from ⟨Σ (r/a₀)²⟩: two thirds of what a
+/// state with its electrons across the field has, the most that is possible.
+#[must_use]
+fn mean_diamagnetic_shift(square: f64, tesla: f64) -> f64 {
+    DIAMAGNETIC * tesla * tesla * square * 2.0 / 3.0
 }
 
 /// μ_B²/(2E_h) = e²a₀²/8m in cm⁻¹/T².

@@ -45,7 +45,7 @@ impl Followed {
 /// What becomes of states and components from field to field.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Map {
-    /// The fields, evenly apart.
+    /// The fields, rising.
     pub tesla: Vec<f64>,
     /// States of the upper manifold, or of the only one.
     pub upper: Followed,
@@ -76,6 +76,26 @@ pub fn map(
         let message = format!("Fields from {from} T to {to} T are no rising range.");
         return Err(Problem::new("field-out-of-range", message, 0, 0));
     }
+    let last = fields.saturating_sub(1).max(1) as f64;
+    // Exact at both ends; more than can be mapped are refused below.
+    let even = (0..fields.min(MOST_NUMBERS)).map(|step| {
+        let share = step as f64 / last;
+        from * (1.0 - share) + to * share
+    });
+    map_at(upper, lower, components, &even.collect::<Vec<f64>>())
+}
+
+/// The same at rising fields of one's own choice.
+///
+/// # Errors
+/// Those of [`map`].
+pub fn map_at(
+    upper: &Split,
+    lower: Option<&Split>,
+    components: Option<&Components>,
+    tesla: &[f64],
+) -> Result<Map, Problem> {
+    let fields = tesla.len();
     let states = upper.states().len() + lower.map_or(0, |lower| lower.states().len());
     let list = components.map(Components::list).unwrap_or_default();
     let numbers = (3 * states + 2 * list.len()).saturating_mul(fields);
@@ -84,7 +104,7 @@ pub fn map(
     }
     let empty = || vec![Vec::with_capacity(fields); list.len()];
     let mut found = Map {
-        tesla: Vec::with_capacity(fields),
+        tesla: tesla.to_vec(),
         upper: Followed::new(upper.states().len(), fields),
         lower: lower.map(|lower| Followed::new(lower.states().len(), fields)),
         offsets: empty(),
@@ -92,12 +112,7 @@ pub fn map(
     };
     let (mut above, mut below) = (AtField::default(), AtField::default());
     let mut strengths = Vec::new();
-    let last = (fields - 1) as f64;
-    for step in 0..fields {
-        let share = step as f64 / last;
-        // Exact at both ends.
-        let tesla = from * (1.0 - share) + to * share;
-        found.tesla.push(tesla);
+    for &tesla in tesla {
         upper.at_into(tesla, &mut above)?;
         found.upper.push(&above);
         if let (Some(lower), Some(followed)) = (lower, &mut found.lower) {

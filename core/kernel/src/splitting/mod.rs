@@ -27,6 +27,7 @@ mod projections;
 mod resonances;
 mod root;
 mod rows;
+mod search_fields;
 mod split;
 
 pub use component_crossings::{ComponentCrossing, component_crossings};
@@ -34,8 +35,9 @@ pub use components::{Component, Components};
 pub use crossings::{Crossing, CrossingKind, Found, MOST_COMPARED, Wanted, crossings};
 pub use linear::{Linear, Tolerance};
 pub use manifold::{Diamagnetic, Level, Manifold, OneElectron, Reduced};
-pub use map::{Followed, MOST_NUMBERS, Map, map};
+pub use map::{Followed, MOST_NUMBERS, Map, map, map_at};
 pub use nucleus::{MHZ_PER_WAVENUMBER, NUCLEAR_MAGNETON_WAVENUMBER, Nucleus, casimir};
 pub use operator::Operator;
 pub use resonances::{Resonance, Resonances};
+pub use search_fields::{SearchFields, search_fields};
 pub use split::{AtField, MOST_ROWS, MOST_STATES, MOST_TESLA, Size, Split, State};

@@ -7,17 +7,19 @@ const CLOSE: f64 = 1e-13;
 
 /// Where a list of values changes its sign: the fields around each change, and whether the value rises there.
 ///
-/// Values within `tolerance` of zero have no sign: a change is looked for between the last that had one and
-/// the next.
+/// Values within a tolerance of zero, the first without a field and the second in one, have no sign: a
+/// change is looked for between the last that had one and the next. What coincides without a field does
+/// not change there.
 pub fn changes(
     tesla: &[f64],
-    values: impl Iterator<Item = f64>,
-    tolerance: f64,
+    values: &[f64],
+    (at_rest, in_field): (f64, f64),
     found: &mut Vec<(Range<f64>, bool)>,
 ) {
     found.clear();
     let mut last: Option<(f64, bool)> = None;
-    for (&field, value) in tesla.iter().zip(values) {
+    for (&field, &value) in tesla.iter().zip(values) {
+        let tolerance = if field == 0.0 { at_rest } else { in_field };
         if value.abs() <= tolerance {
             continue;
         }
@@ -97,6 +99,28 @@ pub fn hidden(range: &Range<f64>, values: (f64, f64), slopes: (f64, f64)) -> Opt
     Some(range.start + x * width)
 }
 
+/// Where a parabola through three neighbours of one sign, the middle one nearest to zero, comes near zero or
+/// beyond it: two changes that a list of values may hide. The fields around it, and where.
+pub fn dips(tesla: &[f64], values: &[f64], found: &mut Vec<(Range<f64>, f64)>) {
+    found.clear();
+    for (fields, three) in tesla.windows(3).zip(values.windows(3)) {
+        let (&[a, b, c], &[u, v, w]) = (fields, three) else {
+            continue;
+        };
+        if u * v <= 0.0 || v * w <= 0.0 || v.abs() >= u.abs() || v.abs() >= w.abs() {
+            continue;
+        }
+        // Newton's divided differences.
+        let (first, second) = ((v - u) / (b - a), (w - v) / (c - b));
+        let bent = (second - first) / (c - a);
+        let middle = 0.5 * (a + b - first / bent);
+        let value = u + (middle - a) * (first + bent * (middle - b));
+        if a < middle && middle < c && value / v < 0.5 {
+            found.push((a..c, middle));
+        }
+    }
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -125,15 +149,32 @@ mod tests {
     }
 
     #[test]
+    fn a_list_of_values_dips_to_zero() {
+        let tesla = [0.0, 1.0, 2.0, 3.0, 4.0];
+        let values = tesla.map(|x| (x - 2.2) * (x - 2.4) + 0.01);
+        let mut found = Vec::new();
+        dips(&tesla, &values, &mut found);
+        assert_eq!(found.len(), 1);
+        assert_eq!(found[0].0, 1.0..3.0);
+        assert!((found[0].1 - 2.3).abs() < 1e-12);
+        dips(&tesla, &values.map(|value| value + 1.0), &mut found);
+        assert_eq!(found, []);
+    }
+
+    #[test]
     fn a_value_without_a_sign_is_passed_over() {
         let mut found = Vec::new();
         let tesla = [0.0, 1.0, 2.0, 3.0, 4.0];
         changes(
             &tesla,
-            [0.0, 1.0, 0.0, -1.0, -2.0].into_iter(),
-            1e-9,
+            &[0.0, 1.0, 0.0, -1.0, -2.0],
+            (1e-9, 1e-9),
             &mut found,
         );
         assert_eq!(found, [(1.0..3.0, false)]);
+        // Rounding without a field is no sign either.
+        let rounding = [-1e-12, 1.0, 2.0, 3.0, 4.0];
+        changes(&tesla, &rounding, (1e-11, 1e-13), &mut found);
+        assert_eq!(found, []);
     }
 }

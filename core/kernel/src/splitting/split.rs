@@ -13,6 +13,9 @@ use crate::problem::Problem;
 /// The strongest field, tesla.
 pub const MOST_TESLA: f64 = 1000.0;
 
+/// Energies this close without a field, as a share of them, coincide.
+pub(super) const COINCIDE: f64 = 1e-12;
+
 /// States of a manifold with a nucleus.
 pub const MOST_STATES: u64 = 40_000;
 
@@ -196,6 +199,39 @@ impl Split {
     /// The energy of a state's level, from the origin of its part.
     pub(super) fn level_of(&self, state: usize) -> Option<f64> {
         self.levels.get(state).copied()
+    }
+
+    /// The smallest distance without a field of two states that a field mixes, cm⁻¹; nothing where it mixes
+    /// none but equal ones.
+    pub(super) fn smallest_distance(&self) -> Option<f64> {
+        let mut least: Option<f64> = None;
+        for part in &self.parts {
+            let values = &part.weak.pairs.values;
+            let largest = values
+                .iter()
+                .fold(0.0_f64, |most, value| most.max(value.abs()));
+            for pair in values.windows(2) {
+                if let &[low, high] = pair
+                    && high - low > COINCIDE * largest
+                {
+                    least = Some(least.unwrap_or(f64::INFINITY).min(high - low));
+                }
+            }
+        }
+        least
+    }
+
+    /// How large the energies are that a state's energy without a field is a sum of, cm⁻¹.
+    pub(super) fn size_at_rest(&self, state: usize) -> f64 {
+        let own = self
+            .states
+            .get(state)
+            .and_then(|s| Some((self.parts.get(s.part)?, s.rank)));
+        own.map_or(0.0, |(part, rank)| {
+            let value = part.weak.pairs.values.get(rank).copied().unwrap_or(0.0);
+            let level = self.level_of(state).unwrap_or(0.0);
+            value.abs().max(level.abs())
+        })
     }
 
     /// How far the level of one state is above that of another, exactly 0 inside a level, cm⁻¹.
