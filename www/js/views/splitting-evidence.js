@@ -222,7 +222,7 @@ export class SplittingEvidence {
     if (this.#answer.components.length === 0) this.#components.replaceChildren();
     else {
       this.#components.replaceChildren(componentsTable(this.#answer, this.#tableContext, this.#unit.value(), this.#view.value()),
-        element("p", { class: "note copies-note", text: "Copies have the offsets in every unit." }));
+        element("p", { class: "note of-screen", text: "Copies have the offsets in every unit." }));
     }
   }
 
