@@ -226,6 +226,7 @@ class Page {
     this.record.changed();
     this.showWords();
     this.showTitle();
+    this.questions.isOther = change.kind === "load" || change.isOther === true;
     this.questions.refresh();
   }
 
@@ -264,7 +265,7 @@ class Page {
     this.fields.read(reading);
     this.head.read(reading, faults);
     this.showElsewhere(faults);
-    for (const rung of this.rungs) rung.show(faults.length);
+    for (const rung of this.rungs) rung.show(this.questions.count(rung.name, faults));
     this.announcer.later("faults", this.newFaultWords(faults));
     this.showStop();
   }
@@ -302,7 +303,7 @@ class Page {
   }
 
   showQuestion(name) {
-    this.rungs.find((rung) => rung.name === name)?.show(this.shownFaults().length);
+    this.rungs.find((rung) => rung.name === name)?.show(this.questions.count(name, this.shownFaults()));
     this.showStop();
     if (this.questions.reading !== null) this.fields.read(this.questions.reading);
   }
@@ -356,10 +357,10 @@ class Page {
 
   replace(sheet, label) {
     this.head.reset();
-    this.store.replace(sheet, label);
+    this.store.replace(sheet, label, true);
     this.head.reset();
     this.togglePanel("open", false);
-    this.toQuestion(questionOf(sheet));
+    if (questionOf(sheet) === "splitting") this.toQuestion("splitting");
     this.announcer.now(`${label}. Undo brings back what was here.`);
   }
 
