@@ -149,8 +149,8 @@ export function patternLayout({ components, unit, view, viewWords, kindOf, idsOf
           }
         }
         labels(pen, shown, scale);
-        const title = [{ text: "Offset from " }, ...(origin.length > 0 && width >= 420 ? origin : [{ text: "the line without field" }]), { text: " (" }, ...unitOf(OFFSET_UNITS[unit].unit).runs, { text: ")" }];
-        bottomAxis(pen, { scale, from: low, to: high, left: LEFT, right: width - RIGHT, y: bottom, title: width < 420 ? [{ text: "Offset (" }, ...title.slice(-2)] : title });
+        const beginning = width < 420 ? [] : [{ text: " from " }, ...(origin.length > 0 ? origin : [{ text: "the line without field" }])];
+        bottomAxis(pen, { scale, from: low, to: high, left: LEFT, right: width - RIGHT, y: bottom, title: [{ text: "Offset" }, ...beginning, { text: " (" }, ...unitOf(OFFSET_UNITS[unit].unit).runs, { text: ")" }] });
       },
     };
   };
