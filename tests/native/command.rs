@@ -135,3 +135,42 @@ fn the_command_splits_a_level_with_its_nucleus() {
         );
     }
 }
+
+#[test]
+fn what_the_command_does_not_know_is_a_plain_fault() {
+    for (arguments, words) in [
+        (
+            vec!["answer", "--questoin", "-"],
+            "\"answer\" has no option \"--questoin\".",
+        ),
+        (
+            vec!["answer", "-q", "-"],
+            "\"answer\" has no option \"-q\".",
+        ),
+        (
+            vec!["recheck", "--question", "-"],
+            "\"recheck\" has no option \"--question\".",
+        ),
+        (
+            vec!["--verbose"],
+            "The option \"--verbose\" stands where a command has to stand.",
+        ),
+        (vec!["anwser", "-"], "There is no command \"anwser\"."),
+        (vec!["answer"], "A file is missing."),
+        (
+            vec!["answer", "-", "--question"],
+            "--question needs a name.",
+        ),
+    ] {
+        let (code, out, err) = command(&arguments, "");
+        assert_eq!((code, out.as_str()), (2, ""), "{arguments:?}");
+        assert!(err.starts_with(&format!("rungline: {words} ")), "{err}");
+    }
+    let (code, _, err) = command(&["answer", "-", "--jsn", "--json"], "");
+    let faults: Value = serde_json::from_str(&err).unwrap();
+    assert_eq!(
+        (code, &faults[0]["code"]),
+        (2, &Value::from("unknown-option"))
+    );
+    assert!(faults[0]["bound"].as_str().unwrap().contains("--question"));
+}

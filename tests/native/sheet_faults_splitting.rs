@@ -388,3 +388,32 @@ fn odd_input_in_every_place_is_answered_or_faulted() {
         answered_or_faulted(sheet, &["splitting"]);
     }
 }
+
+/// A fault is one of the questions that hang on its field; the others are answered all the same.
+#[test]
+fn a_fault_in_the_field_is_none_of_the_other_questions() {
+    let mut sheet = rubidium();
+    sheet["field"]["flux_density"] = json!("strong");
+    let reading = |sheet: &Value| -> Vec<(String, String)> {
+        let json = serde_json::from_value::<sheet::Json>(sheet.clone()).unwrap();
+        let read: Value = serde_json::from_str(&sheet::reading(&json)).unwrap();
+        let questions = read["questions"].as_array().unwrap().iter();
+        let word = |value: &Value| value.as_str().unwrap().to_owned();
+        questions
+            .map(|q| (word(&q["name"]), word(&q["status"])))
+            .collect()
+    };
+    for (name, status) in reading(&sheet) {
+        assert_eq!(status == "fault", name == "splitting", "{name}: {status}");
+        let json = serde_json::from_value::<sheet::Json>(sheet.clone()).unwrap();
+        let told = sheet::answer_message(&json, &name);
+        assert_eq!(
+            told.starts_with("{\"faults\""),
+            name == "splitting",
+            "{name}"
+        );
+    }
+    let mut sheet = rubidium();
+    sheet["configurations"] = json!(["5s3"]);
+    assert!(reading(&sheet).iter().all(|(_, status)| status == "fault"));
+}

@@ -281,3 +281,79 @@ fn the_size_of_what_is_left_out_of_hydrogen() {
     );
     assert!(!limits.contains("not known"), "{limits}");
 }
+
+/// Along the field a dipole line has no π (Jackson, *Classical Electrodynamics*, § 9.7): what is counted, called the
+/// largest and named is what is seen.
+#[test]
+fn the_sentence_counts_what_is_seen() {
+    let told = |view: &str, polariser: &str| {
+        let found = answer(&json!({
+            "rungline": 1, "species": "Na I", "configurations": ["3s", "3p"],
+            "line": {"upper": "3p 2P3/2", "lower": "3s 2S1/2"},
+            "field": {"flux_density": "0.5 T", "view": view, "polariser": polariser}
+        }));
+        let largest = rows(&found, "components")
+            .iter()
+            .filter(|c| number(c, "seen") > 0.0)
+            .map(|c| number(c, "offset").abs())
+            .fold(0.0, f64::max);
+        let said = found["say_plain"].as_str().unwrap().to_owned();
+        let counted = (found["positions"].clone(), found["positions_seen"].clone());
+        (said, counted, largest)
+    };
+    let (said, counted, _) = told("across", "none");
+    assert_eq!(counted, (json!(6), json!(6)));
+    assert!(said.starts_with("In a field of 0.5 T, seen across it, the E1 line from 3p 2P3/2 to 3s 2S1/2 splits into 6 components; the largest offset from the centre is "), "{said}");
+    let (said, counted, _) = told("along", "none");
+    assert_eq!(counted, (json!(6), json!(4)));
+    assert!(
+        said.contains("seen along it")
+            && said.contains(" shows 4 of 6 components; the largest offset of these"),
+        "{said}"
+    );
+    let (said, counted, largest) = told("across", "0 deg");
+    assert_eq!(counted, (json!(6), json!(2)));
+    assert!(
+        said.contains("seen across it through a linear polariser at 0° from the field")
+            && said.contains(" shows 2 of 6 components"),
+        "{said}"
+    );
+    // The π components lie at ±1/3 μ_B B (LS coupling).
+    assert!(relative_error(largest, MU_B * 0.5 / 3.0) < 0.02);
+    assert!(
+        said.contains(&format!("centre is {largest} cm-1")),
+        "{said}"
+    );
+    let (said, counted, _) = told("along", "0.5 rad");
+    assert_eq!(counted.1, json!(4));
+    assert!(said.contains("at 28.64789° from the field"), "{said}");
+    let (said, counted, _) = told("180 deg", "none");
+    assert_eq!(counted.1, json!(4), "{said}");
+}
+
+/// An isotope that is named for nothing says so in the sentence.
+#[test]
+fn a_nucleus_without_constants_is_said_to_be_left_out() {
+    let told = |more: Value| {
+        let mut sheet = json!({
+            "rungline": 1, "species": "133Cs I", "configurations": ["6s", "6p"],
+            "line": {"upper": "6p 2P1/2", "lower": "6s 2S1/2"}, "field": {"flux_density": "0.1 T"}
+        });
+        for (key, value) in more.as_object().unwrap() {
+            sheet[key] = value.clone();
+        }
+        answer(&sheet)["say_plain"].as_str().unwrap().to_owned()
+    };
+    let without = "the nucleus of 133Cs is left out because no A is entered.";
+    assert!(told(json!({})).ends_with(without));
+    let with = told(json!({"nucleus": {"magnetic_dipole": {"6s 2S1/2": "2298.1579425 MHz"}}}));
+    assert!(
+        !with.contains("left out") && with.contains("with its nucleus"),
+        "{with}"
+    );
+    // Without a spin there is nothing to leave out.
+    let even = told(
+        json!({"species": "4He I", "configurations": ["1s 2s", "1s 2p"], "line": {"upper": "1s 2p 1P1", "lower": "1s 2s 1S0"}}),
+    );
+    assert!(!even.contains("left out"), "{even}");
+}

@@ -6,6 +6,7 @@ import { showCannotStart } from "./cannot-start.js";
 import { makeChoice } from "./choice.js";
 import { element, setText, wordButton } from "./dom.js";
 import { Engine } from "./engine.js";
+import { enteredList } from "./entered.js";
 import { FieldSweep } from "./field-sweep.js";
 import { FaultTiming, Fields, faultNode, faultWords, wayButton } from "./fields.js";
 import { acceptDrops } from "./files.js";
@@ -29,6 +30,8 @@ import { compileCore, workerStarter } from "./startup.js";
 import { Storage } from "./storage.js";
 import { ViewState } from "./view-state.js";
 import { OrbitalsPart } from "./views/orbitals.js";
+
+const OF_SPLITTING = ["field", "line", "nucleus", "isotopes", "level"];
 
 const byId = (id) => document.getElementById(id);
 
@@ -126,6 +129,7 @@ class Page {
     this.panels.settings.append(element("h2", { text: "Settings" }), settingsPanel(this.settings, () => this.keeper.clear(), this.questions.about.notices));
     this.makeRungs();
     this.makeFootBar();
+    byId("title-block").after(enteredList(this.store));
     byId("version").textContent = `Rungline ${this.questions.about.version}, constants CODATA ${this.questions.about.codata}.${RUNGLINE_PROFILE === "quick" ? " This is a quick build: slower than the one that is shipped." : ""}`;
     byId("file").addEventListener("change", ({ target }) => {
       const [file] = target.files;
@@ -173,7 +177,7 @@ class Page {
     });
     this.rungs = [...this.questions.entries.keys()].map((name, index) => new QuestionRung({
       name, numeral: index + 1, view: this.view, questions: this.questions, context, announcer: this.announcer, act,
-      open: index === 0, more: name === "states" ? this.orbitalsPart.node : null,
+      open: name === questionOf(this.store.sheet), more: name === "states" ? this.orbitalsPart.node : null,
       fieldsNode: questionFields(name, this.fields, this.questions, (path, value, label) => this.put(path, value, label), { choice: context.choice, store: this.store, view: this.view, sweep: this.sweep, openCsv: () => byId("file").click() }),
     }));
     this.questions.isUnfolded = (name) => this.rungOf(name).open;
@@ -222,6 +226,7 @@ class Page {
     this.record.changed();
     this.showWords();
     this.showTitle();
+    this.questions.isOther = change.kind === "load" || change.isOther === true;
     this.questions.refresh();
   }
 
@@ -242,7 +247,7 @@ class Page {
     block.replaceChildren(
       ...(typeof title === "string" && title.trim() !== "" ? [element("p", { class: "title", text: title })] : []),
       ...(typeof note === "string" && note.trim() !== "" ? [element("p", { class: "note", text: note })] : []),
-      ...(example ? [element("p", { class: "note", text: "This is an example: type over it. Others, and an empty sheet, are under Open." })] : []));
+      ...(example ? [element("p", { class: "note of-screen", text: "This is an example: type over it. Others, and an empty sheet, are under Open." })] : []));
     block.hidden = block.childElementCount === 0;
   }
 
@@ -260,7 +265,7 @@ class Page {
     this.fields.read(reading);
     this.head.read(reading, faults);
     this.showElsewhere(faults);
-    for (const rung of this.rungs) rung.show(faults.length);
+    for (const rung of this.rungs) rung.show(this.questions.count(rung.name, faults));
     this.announcer.later("faults", this.newFaultWords(faults));
     this.showStop();
   }
@@ -298,7 +303,7 @@ class Page {
   }
 
   showQuestion(name) {
-    this.rungs.find((rung) => rung.name === name)?.show(this.shownFaults().length);
+    this.rungs.find((rung) => rung.name === name)?.show(this.questions.count(name, this.shownFaults()));
     this.showStop();
     if (this.questions.reading !== null) this.fields.read(this.questions.reading);
   }
@@ -352,10 +357,19 @@ class Page {
 
   replace(sheet, label) {
     this.head.reset();
-    this.store.replace(sheet, label);
+    this.store.replace(sheet, label, true);
     this.head.reset();
     this.togglePanel("open", false);
+    if (questionOf(sheet) === "splitting") this.toQuestion("splitting");
     this.announcer.now(`${label}. Undo brings back what was here.`);
+  }
+
+  // A sheet that was opened is read where its question stands.
+  toQuestion(name) {
+    const { rung } = this.rungs.find((each) => each.name === name);
+    rung.unfold(true);
+    rung.focus();
+    rung.node.scrollIntoView();
   }
 
   undo() {
@@ -409,6 +423,11 @@ class Page {
     }
     return this.#charts.get(charge);
   }
+}
+
+// The question that a sheet is about.
+function questionOf(sheet) {
+  return OF_SPLITTING.some((key) => sheet[key] !== undefined) ? "splitting" : "states";
 }
 
 // Focus must never land under the head, nor in the words that have scrolled away above it: what

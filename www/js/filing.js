@@ -4,10 +4,16 @@ import { element } from "./dom.js";
 import { fileFaults, fileName, saveFile, textOf } from "./files.js";
 import { panicNode } from "./run-nodes.js";
 
-const NO_SHEET = {
-  message: "This file is JSON, but not a sheet.", path: "", start: 0, end: 0,
-  bound: "A sheet is one JSON object, in braces, with at least \"rungline\": 1.", ways: [],
-};
+// The fault of JSON that is no sheet, or null; what lacks only the first key can be opened with it.
+function noSheet(sheet) {
+  const group = isGroup(sheet);
+  if (group && Object.hasOwn(sheet, "rungline")) return null;
+  return [{
+    message: `This file is JSON, but not a sheet${group ? ": it has no key \"rungline\"" : ""}.`, path: "", start: 0, end: 0,
+    bound: "A sheet is one JSON object, in braces, with at least \"rungline\": 1.",
+    ways: group ? [{ label: "Put in \"rungline\": 1 and open it", replacement: JSON.stringify({ rungline: 1, ...sheet }) }] : [],
+  }];
+}
 
 /** Rows of a table that are told of one by one. */
 const TOLD = 8;
@@ -67,7 +73,7 @@ export class Filing {
       return;
     }
     const message = JSON.parse(result.text);
-    const faults = message.faults ?? (isGroup(message.sheet) ? null : [NO_SHEET]);
+    const faults = message.faults ?? noSheet(message.sheet);
     if (faults !== null) {
       this.#notes.put("file", { kind: "fault", more: fileFaults(name, faults, text, (better) => this.#openText(better, name)) });
       return;

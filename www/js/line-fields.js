@@ -15,19 +15,19 @@ export function lineFields(fields, questions, { store, view, setField, openCsv }
   };
   const row = (...inside) => element("div", { class: "field-row" }, ...inside);
   const field = (path, label, hint, more = {}) => fields.make(path, { label, hint, ...more });
-  const scale = (key, label) => field(`/structure/scale/${key}`, label, "a number; empty is 1", { number: true });
+  const scale = (key, sign = key) => field(`/structure/scale/${key}`, `Multiply computed ${sign} by`, "a number; empty is 1", { number: true });
   const parameters = () => (levels()?.parameters ?? []).filter((parameter) => parameter.can_be_given !== false);
   return element("div", { class: "question-fields" },
-    row(field("/window/0", "Window from", "such as 580 nm or 2 eV; empty is open", { pair: "/window" }), field("/window/1", "Window to", "such as 600 nm; empty is open", { pair: "/window" }),
-      wordField({ store, setField }, "/medium", "Wavelengths", [["", "in vacuum"], ["air", "in air"]]),
+    row(field("/window/0", "Show lines between", "such as 580 nm or 2 eV; empty is open", { pair: "/window" }), field("/window/1", "Show lines up to", "the other end, such as 600 nm; empty is open", { pair: "/window" }),
+      wordField({ store, setField }, "/medium", "Tell wavelengths", [["", "as in vacuum"], ["air", "as in air"]]),
       field("/source/temperature", "Temperature", "for intensities, such as 5000 K")),
     element("div", { class: "parts" },
-      fold("energies", "Energies: scales and values of your own",
+      fold("energies", "Energies: factors and values of your own",
         row(wordField({ store, setField }, "/structure/energies", "Energies", [["", "computed"], ["given", "from given values alone"]]),
           element("div", { class: "flags" },
             flagField({ store, setField }, "/structure/mixing", "Configurations mix", "Mixing")),
           wordField({ store, setField }, "/structure/correlation", "Correlation within subshells", [["", "where it is sound"], [true, "everywhere"], [false, "left out"]])),
-        row(scale("F", "Scale of F"), scale("G", "Scale of G"), scale("R", "Scale of R"), scale("zeta", "Scale of ζ")),
+        row(scale("F"), scale("G"), scale("R"), scale("zeta", "ζ")),
         namedRows({
           fields, store, path: "/structure/given",
           words: { name: "Parameter", value: "Value", hint: "such as 11.46 cm-1", add: "Give a value", one: "such as zeta(3p) or F2(3d,3d) @ 3d6 4s2" },

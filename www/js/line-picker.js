@@ -1,6 +1,7 @@
 // A line taken from the answer to Which lines? into the fields of How does it split?
 
 import { element, freshId, setText } from "./dom.js";
+import { MEDIA, mediumOf } from "./views/line-units.js";
 
 /** Lines in the list; a longer one is no help to anybody. */
 const LISTED = 500;
@@ -25,12 +26,13 @@ export function linePicker(questions, put, { choice, store }) {
     const lines = questions.entries.get("lines")?.answer?.lines ?? [];
     if (lines === shown) return;
     shown = lines;
+    const medium = mediumOf(store);
     // Nobody picks a forbidden line from tens of thousands in a list.
     pairs = linePairs(lines.length > MANY ? lines.filter(({ multipole }) => multipole === MULTIPOLES[0]) : lines);
     node.hidden = pairs.length === 0;
     note.textContent = pairs.length > LISTED ? `The first ${LISTED} of ${pairs.length}; type the levels for the others.` : "";
     box.replaceChildren(element("option", { value: "", text: "Choose …" }), ...pairs.slice(0, LISTED).map((line, index) => element("option", {
-      value: String(index), text: `${line.lower} – ${line.upper} (${line.multipole})`,
+      value: String(index), text: `${line.lower} – ${line.upper} (${line.multipole})${wavelength(line, medium)}`,
     })));
   };
   const mark = () => {
@@ -51,6 +53,12 @@ export function linePicker(questions, put, { choice, store }) {
   choice.subscribe(mark);
   store.subscribe(mark);
   return node;
+}
+
+// As the list of lines tells it.
+function wavelength(line, medium) {
+  const { key, words } = MEDIA[typeof line[MEDIA[medium].key] === "number" ? medium : "vacuum"];
+  return typeof line[key] === "number" ? `, ${line[key].toFixed(3)} nm ${words}` : "";
 }
 
 /** Each pair of levels once, by its strongest multipole; pairs with an E1 line first. */

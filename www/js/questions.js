@@ -47,6 +47,8 @@ export class Questions {
     this.entries = new Map();
     /** Whether a question is unfolded; the page says so. */
     this.isUnfolded = () => true;
+    /** Whether the sheet that is read now is another one, not the same changed. */
+    this.isOther = false;
   }
 
   /** Asks the core which questions it answers. */
@@ -56,7 +58,7 @@ export class Questions {
     this.about = JSON.parse(result.text);
     for (const name of this.about.questions.filter((question) => Object.hasOwn(WORDS, question))) {
       this.entries.set(name, {
-        name, status: null, needs: null, way: null, answer: null, fresh: false,
+        name, status: null, needs: null, way: null, faults: [], answer: null, fresh: false,
         run: null, waits: null, panic: null, stopped: false, unread: true,
         computed: COMPUTED[name]?.asks ?? null, key: null, answered: null, found: [], rest: 0, hasty: false,
       });
@@ -66,6 +68,12 @@ export class Questions {
   /** A listener is told the name of the question that changed, or "reading". */
   subscribe(listener) {
     this.#listeners.add(listener);
+  }
+
+  /** How many of these faults a question hangs on. */
+  count(name, faults) {
+    const entry = this.entries.get(name);
+    return faults.filter((fault) => entry.faults.includes(fault.path) || entry.found.includes(fault)).length;
   }
 
   get running() {
@@ -98,10 +106,11 @@ export class Questions {
     for (const question of this.reading.questions) {
       const entry = this.entries.get(question.name);
       if (entry === undefined) continue;
-      Object.assign(entry, { status: question.status, needs: question.needs, way: question.way, unread: false });
+      Object.assign(entry, { status: question.status, needs: question.needs, way: question.way, faults: question.faults, unread: false });
       if (entry.computed) this.#settle(entry, computedKey(entry.name, sheet));
       else Object.assign(entry, { fresh: false, waits: null, panic: null, stopped: false });
-      if (question.status === "lacks") entry.answer = null;
+      // What was there before a field was emptied stays to be looked at; of another sheet nothing does.
+      if (question.status === "lacks" && (this.isOther || !entry.computed)) entry.answer = null;
     }
     // The worker answers while the page shows how the sheet was read.
     const ready = [...this.entries.values()].filter((entry) => entry.status === "ready" && !entry.computed);

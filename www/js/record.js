@@ -60,6 +60,8 @@ export class RecordRung {
     this.#verdict.replaceChildren(element("p", { class: "say", tabindex: "0", text: sentence }), ...(table ? [table] : []));
     this.rung.state({ kind: "answered", words: reproduces ? "reproduces" : `${moved.length} moved` });
     this.rung.unfold(true);
+    // It is what the person waits for, and the rung may be far away.
+    this.#verdict.firstElementChild.focus();
   }
 
   async #copyAddress() {

@@ -78,11 +78,11 @@ export class SheetStore {
     this.replace(withKeyRenamed(this.#sheet, pointer, name), label);
   }
 
-  /** Another whole sheet, as one step. */
-  replace(sheet, label) {
+  /** Another whole sheet, as one step; `isOther`: not the same sheet with changes. */
+  replace(sheet, label, isOther = false) {
     this.#typing = null;
     this.#step(sheet, label, false);
-    this.#tell({ kind: "step", path: "", label });
+    this.#tell({ kind: "step", path: "", label, isOther });
   }
 
   undo() {

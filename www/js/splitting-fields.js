@@ -31,9 +31,9 @@ export function splittingFields(fields, questions, put, shared) {
   const end = (path, label) => field(path, label, "a level 3p 2P1/2, a term 3p 2P or 3p", { suggestions: named });
   return element("div", { class: "question-fields" },
     row(field("/field/flux_density", "Field", "such as 0.5 T or 5 kG"), fieldSlider(sweep),
-      field("/field/view", "View", "along, across, 60 deg", { suggestions: () => ["along", "across"] })),
-    row(end("/line/upper", "Upper level"), end("/line/lower", "Lower level"),
-      field("/line/wavelength", "Wavelength", "in vacuum, for shifts in pm")),
+      field("/field/view", "View", "along or across the field, or the angle to it: 60 deg", { suggestions: () => ["along", "across"] })),
+    row(end("/line/upper", "Line starts on"), end("/line/lower", "Line ends on"),
+      field("/line/wavelength", "Wavelength", "in vacuum, for pm; empty: from the levels")),
     linePicker(questions, put, shared),
     element("div", { class: "parts" },
       fold("nucleus", "Nucleus and isotopes",
@@ -45,7 +45,7 @@ export function splittingFields(fields, questions, put, shared) {
       fold("field", "Map, polariser, quadratic shift",
         row(field("/field/up_to", "Map up to", "empty: twice the field"),
           field("/field/tolerance", "Tolerance", "for the linear pattern: 1 % or 0.01 cm-1"),
-          field("/field/polariser", "Polariser", "or an angle from the field, 30 deg", { suggestions: () => ["none", "left circular", "right circular"] })),
+          field("/field/polariser", "Polariser", "a circular one, or the angle of what a linear one passes to the field as you see it: 0 deg passes π across the field, 90 deg σ", { suggestions: () => ["none", "left circular", "right circular"] })),
         row(element("div", { class: "flags" }, flagField({ store, setField: put }, "/field/diamagnetic", "Diamagnetic shift, quadratic in the field", "Diamagnetic shift", false))))));
 }
 

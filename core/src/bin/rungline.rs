@@ -54,8 +54,12 @@ fn main() -> ExitCode {
             }
             ExitCode::from(2)
         }),
-        Err(reason) => {
-            eprintln!("rungline: {reason}\n\n{USAGE}");
+        Err(problem) => {
+            if arguments.iter().any(|a| a == "--json") {
+                eprintln!("{}", sheet::faults_json(&[problem]));
+            } else {
+                eprintln!("rungline: {}\n\n{USAGE}", sheet::fault_words(&problem));
+            }
             ExitCode::from(2)
         }
     }
@@ -68,35 +72,70 @@ fn say(text: &str, code: ExitCode) -> ExitCode {
     }
 }
 
-fn job(arguments: &[String]) -> Result<Job, String> {
+const COMMANDS: &str = "The commands are answer and recheck.";
+
+fn fault(code: &'static str, message: impl Into<String>, bound: &str) -> Problem {
+    Problem::new(code, message, 0, 0).bound(bound)
+}
+
+fn unknown_option(option: &str, command: Command) -> Problem {
+    let (name, known) = match command {
+        Command::Answer(_) => (
+            "answer",
+            "--question NAME and --json; a file whose name begins with a hyphen is written ./-name",
+        ),
+        Command::Recheck => (
+            "recheck",
+            "--json alone; a file whose name begins with a hyphen is written ./-name",
+        ),
+    };
+    fault(
+        "unknown-option",
+        format!("\"{name}\" has no option \"{option}\"."),
+        &format!("Its options: {known}."),
+    )
+}
+
+fn job(arguments: &[String]) -> Result<Job, Problem> {
     let mut words = arguments.iter();
     let mut command = match words.next().map(String::as_str) {
         Some("answer") => Command::Answer(None),
         Some("recheck") => Command::Recheck,
-        Some(other) => return Err(format!("there is no command \"{other}\"")),
-        None => return Err("a command is missing".to_owned()),
+        Some(option) if option.starts_with('-') => {
+            let message = format!("The option \"{option}\" stands where a command has to stand.");
+            return Err(fault("command-missing", message, COMMANDS));
+        }
+        Some(other) => {
+            let message = format!("There is no command \"{other}\".");
+            return Err(fault("unknown-command", message, COMMANDS));
+        }
+        None => return Err(fault("command-missing", "A command is missing.", COMMANDS)),
     };
     let (mut json, mut files) = (false, Vec::new());
     while let Some(word) = words.next() {
         match (word.as_str(), command) {
             ("--json", _) => json = true,
             ("--question", Command::Answer(_)) => {
-                let name = words.next().ok_or("--question needs a name")?;
+                let name = words.next().map_or("", String::as_str);
                 command = Command::Answer(Some(question(name)?));
             }
-            (other, command_now) if other.starts_with("--") => {
+            (other, command_now) if other.len() > 1 && other.starts_with('-') => {
                 match (other.strip_prefix("--question="), command_now) {
                     (Some(name), Command::Answer(_)) => {
                         command = Command::Answer(Some(question(name)?))
                     }
-                    _ => return Err(format!("there is no option \"{other}\" here")),
+                    _ => return Err(unknown_option(other, command_now)),
                 }
             }
             (file, _) => files.push(file.to_owned()),
         }
     }
     if files.is_empty() {
-        return Err("a file is missing".to_owned());
+        return Err(fault(
+            "file-missing",
+            "A file is missing.",
+            "Name one or more, or - for standard input.",
+        ));
     }
     Ok(Job {
         command,
@@ -105,16 +144,18 @@ fn job(arguments: &[String]) -> Result<Job, String> {
     })
 }
 
-fn question(name: &str) -> Result<Question, String> {
+fn question(name: &str) -> Result<Question, Problem> {
     Question::ALL
         .into_iter()
         .find(|q| q.name() == name)
         .ok_or_else(|| {
             let known: Vec<&str> = Question::ALL.iter().map(|q| q.name()).collect();
-            format!(
-                "\"{name}\" is not a question that this version answers; it answers {}",
-                known.join(", ")
-            )
+            let message = match name {
+                "" => "--question needs a name.".to_owned(),
+                _ => format!("\"{name}\" is not a question that this version answers."),
+            };
+            let bound = format!("It answers {}.", known.join(", "));
+            fault("unknown-question", message, &bound)
         })
 }
 

@@ -8,6 +8,11 @@ use super::choice::{POLARISERS, VIEWS, choice};
 use super::document::Document;
 use super::json::Json;
 
+/// Six decimals, for words: an angle that was typed in radians has more.
+fn short(value: f64) -> f64 {
+    libm::round(value * 1e6) / 1e6
+}
+
 /// How far the linear pattern may be from the full one.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Tolerance {
@@ -127,20 +132,41 @@ impl Document {
 }
 
 impl Field {
+    /// How the pattern is looked at: "seen across it through a linear polariser at 0° from the field".
+    pub fn looked(&self) -> String {
+        let view = match self.angle_degrees {
+            0.0 => "along it".to_owned(),
+            90.0 => "across it".to_owned(),
+            angle => format!("at {}° to it", short(angle)),
+        };
+        let through = match self.polariser {
+            Polariser::None => String::new(),
+            Polariser::LeftCircular => " through a left circular polariser".to_owned(),
+            Polariser::RightCircular => " through a right circular polariser".to_owned(),
+            Polariser::Linear(angle) => {
+                format!(
+                    " through a linear polariser at {}° from the field",
+                    short(angle)
+                )
+            }
+        };
+        format!("seen {view}{through}")
+    }
+
     /// The polariser in words; nothing without one.
     pub fn polariser_words(&self) -> Option<String> {
         match self.polariser {
             Polariser::None => None,
             Polariser::LeftCircular => Some("left circular".to_owned()),
             Polariser::RightCircular => Some("right circular".to_owned()),
-            Polariser::Linear(angle) => Some(format!("linear at {angle}° from the field")),
+            Polariser::Linear(angle) => Some(format!("linear at {}° from the field", short(angle))),
         }
     }
 
     /// The tolerance of the linear pattern in words.
     pub fn tolerance_words(&self) -> String {
         match self.tolerance {
-            Tolerance::Relative(share) => format!("{} %", share * 100.0),
+            Tolerance::Relative(share) => format!("{} %", short(share * 100.0)),
             Tolerance::Absolute(value) => format!("{value} cm-1"),
         }
     }

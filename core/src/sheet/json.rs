@@ -233,13 +233,18 @@ fn explain(text: &str, error: &serde_json::Error) -> Problem {
             .bound("A sheet is nested at most 127 deep.")
     } else if let Some(key) = words.strip_prefix("repeated key ") {
         let key = key.split(" at line").next().unwrap_or(key);
+        // The reader stops right behind the second one.
+        let again = text.get(..end).and_then(|read| read.rfind(key));
+        let (start, end) = again.map_or((start, end), |at| (at, at + key.len()));
         Problem::new(
             "key-repeated",
-            format!("The key {key} stands twice, the second time before this place."),
+            format!("The key {key} stands twice in its group; this is the second one."),
             start,
             end,
         )
-        .bound("Each key stands at most once in its group.")
+        .bound(
+            "Each key stands at most once in its group: rename one, or take it out with its value.",
+        )
     } else {
         Problem::new(
             "not-json",
@@ -394,6 +399,15 @@ mod tests {
                 assert!(read(&way.replacement).is_ok(), "{text}: {way:?}");
             }
         }
+    }
+
+    #[test]
+    fn a_repeated_key_is_named_and_marked() {
+        let text = r#"{"title": "view", "field": {"view": "along", "view": "across"}}"#;
+        let problem = read(text).unwrap_err();
+        assert!(problem.message.contains("\"view\""), "{}", problem.message);
+        assert_eq!(&text[problem.start..problem.end], "\"view\"");
+        assert_eq!(problem.start, text.rfind("\"view\"").unwrap());
     }
 
     #[test]

@@ -143,6 +143,28 @@ impl Question {
         }
     }
 
+    /// Whether its answer hangs on what stands at a pointer into the sheet.
+    pub fn hangs_on(self, path: &str) -> bool {
+        const OF_SPLITTING: [&str; 5] = ["field", "line", "nucleus", "isotopes", "level"];
+        const OF_LINES: [&str; 6] = [
+            "measured",
+            "window",
+            "medium",
+            "source",
+            "refractive_index",
+            "air",
+        ];
+        let key = path.split('/').nth(1).unwrap_or_default();
+        match self {
+            Question::Splitting => true,
+            _ if OF_SPLITTING.contains(&key) => false,
+            Question::Levels | Question::Lines => true,
+            _ if OF_LINES.contains(&key) => false,
+            Question::Orbitals => true,
+            Question::States => key != "structure",
+        }
+    }
+
     fn named(name: &str) -> Option<Question> {
         Question::ALL.into_iter().find(|q| q.name() == name)
     }
@@ -226,7 +248,10 @@ pub fn answer_message(sheet: &Json, question: &str) -> String {
 pub fn answer_message_watched(sheet: &Json, question: &str, watch: &mut Watch) -> String {
     let result = match Question::named(question) {
         Some(question) => {
-            let document = Document::read(sheet);
+            let mut document = Document::read(sheet);
+            // A fault elsewhere in the sheet is told at its own field.
+            let faults = &mut document.faults;
+            faults.retain(|fault| question.hangs_on(&fault.path));
             if document.faults.is_empty() {
                 answer(&document, question, watch)
             } else {

@@ -24,7 +24,7 @@ struct Reading<'a> {
     defaults: Defaults,
     /// Labels of levels that the sheet's configurations have, for choosing a line.
     levels: Vec<String>,
-    questions: Vec<QuestionState>,
+    questions: Vec<QuestionState<'a>>,
     /// The natural isotopes of the element.
     isotopes: Vec<NaturalIsotope>,
 }
@@ -49,9 +49,11 @@ struct Defaults {
 }
 
 #[derive(Serialize)]
-struct QuestionState {
+struct QuestionState<'a> {
     name: &'static str,
     status: &'static str,
+    /// Places of the faults that it hangs on.
+    faults: Vec<&'a str>,
     needs: Option<String>,
     way: Option<Way>,
 }
@@ -85,12 +87,15 @@ pub fn reading(sheet: &Json) -> String {
     })
 }
 
-fn state(document: &Document, question: Question) -> QuestionState {
+fn state(document: &Document, question: Question) -> QuestionState<'_> {
     let name = question.name();
-    if !document.faults.is_empty() {
+    let all = document.faults.iter().map(|fault| fault.path.as_str());
+    let faults: Vec<&str> = all.filter(|path| question.hangs_on(path)).collect();
+    if !faults.is_empty() {
         return QuestionState {
             name,
             status: "fault",
+            faults,
             needs: None,
             way: None,
         };
@@ -99,12 +104,14 @@ fn state(document: &Document, question: Question) -> QuestionState {
         None => QuestionState {
             name,
             status: "ready",
+            faults,
             needs: None,
             way: None,
         },
         Some(lack) => QuestionState {
             name,
             status: "lacks",
+            faults,
             needs: Some(lack.needs),
             way: lack.way,
         },

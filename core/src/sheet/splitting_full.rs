@@ -19,7 +19,7 @@ use super::splitting_limits::limits;
 use super::splitting_line::line_of;
 use super::splitting_names::{state_name, state_rich};
 use super::splitting_nuclei::{isotope_rows, nucleus_row};
-use super::splitting_pattern::{describe, groups, is_normal_triplet, positions};
+use super::splitting_pattern::{groups, pattern};
 use super::splitting_resonances;
 use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, Splitting, StateRow};
 use super::splitting_sets::{Pass, Prepared, Set, SetLevel, prepared};
@@ -71,10 +71,8 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
     resonances_left_out += splitting_resonances::first(&mut resonances);
     // With a line the upper end first, as one reads it.
     sort_by(&mut states, |a, b| side_order(a).cmp(&side_order(b)));
-    let positions = positions(&components);
+    let counted = pattern(&components, line.as_ref(), tesla);
     let groups = groups(&components);
-    let normal = is_normal_triplet(&components, line.as_ref());
-    let pattern = describe(positions, normal);
     let linear = linear(field, &components, searched.departs_at);
     let nucleus = nucleus_row(document, &ready);
     let isotopes = isotope_rows(document, &ready);
@@ -95,9 +93,8 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         line: line.as_ref(),
         states: &states,
         components: &components,
-        groups: if normal { 0 } else { groups },
-        positions,
-        pattern: &pattern,
+        groups,
+        pattern: counted,
         linear: linear.as_ref(),
         searched: &searched,
         diamagnetic: diamagnetic.as_ref(),
@@ -131,8 +128,9 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         components,
         no_components: ready.no_components.clone(),
         linear,
-        positions,
-        pattern,
+        positions: counted.all,
+        positions_seen: counted.seen,
+        pattern: counted.words(),
         crossings: searched.crossings.clone(),
         crossings_left_out: searched.crossings_left_out,
         component_crossings: searched.component_crossings.clone(),
@@ -374,9 +372,8 @@ impl Rows<'_> {
             strength,
             along: look(0.0, Polariser::None),
             across: look(90.0, Polariser::None),
-            seen: field.map_or(look(90.0, Polariser::None), |field| {
-                look(field.angle_degrees, field.polariser)
-            }),
+            // Without a field there is no direction to look from.
+            seen: field.map_or(strength, |field| look(field.angle_degrees, field.polariser)),
             linear,
             isotope: self.isotope.clone(),
             moved: shift_of(self.document, self.pass),

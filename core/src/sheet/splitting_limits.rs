@@ -61,8 +61,8 @@ pub fn limits(told: &Told) -> Vec<String> {
     if ready.sets.iter().any(|set| set.reduced) {
         limits.push("With this nucleus the whole set would have too many states: the field mixes only the levels of the line's terms.".to_owned());
     }
-    if bright(told.components).count() < told.components.len() {
-        limits.push("Components below 1 % of the strongest are listed, but neither the largest offset nor the groups in the sentence count them.".to_owned());
+    if bright(told.components).len() < told.components.len() {
+        limits.push("Components below 1 % of the strongest that is seen are listed, but neither the largest offset nor the groups in the sentence count them.".to_owned());
     }
     limits.extend(of_nuclei(document));
     limits.extend(told.searched.missing.clone());

@@ -17,8 +17,9 @@ use super::pairs;
 use super::rich::{Kind, Rich};
 use super::splitting::{cautions, field_of};
 use super::splitting_keeps::{Shown, keeps};
-use super::splitting_pattern::describe;
+use super::splitting_pattern::{Pattern, bright, pattern as pattern_of, widest};
 use super::splitting_rows::{ComponentRow, LineOf, Splitting, StateRow};
+use super::splitting_words::{in_field, left_out_words, offset_words, pattern_verb};
 
 /// The two levels of the line with their g.
 struct Ends<'a> {
@@ -63,7 +64,6 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         states.extend(state_rows(document, of, level, field, side)?);
     }
     let components = component_rows(document, &ends, &pattern, field, nm)?;
-    let positions = pattern.positions().len();
     let (one, other) = (upper.level.j.value(), lower.level.j.value());
     let effective = effective_g(one, ends.above.g, other, ends.below.g);
     let line = LineOf {
@@ -80,8 +80,12 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         wavelength_kind: wavelength.map(|(_, kind)| kind),
         centre: None,
     };
-    let described = describe(positions, pattern.is_normal_triplet());
-    let mut around = Around::saying(sentence(&line, field, &components, &described));
+    let counted = pattern_of(&components, Some(&line), field.tesla);
+    let mut around = Around::saying(
+        sentence(&line, document, &components, counted)
+            .say(left_out_words(document))
+            .say("."),
+    );
     around.working = working(&line, &ends, field, &components);
     around.limits = limits(document, field, &components, wavelength);
     around.cautions = cautions(Some(field));
@@ -107,6 +111,7 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
         ("conversions.mu_b_per_tesla", Kind::Measured),
         ("conversions.pm_per_wavenumber", Kind::Computed),
         ("field.up_to", Kind::Entered),
+        ("positions_seen", Kind::Exact),
         ("states.M", Kind::Exact),
         ("states.shift", Kind::Computed),
         ("states.slope", Kind::Computed),
@@ -131,13 +136,14 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
     let plain = Splitting::new("linear", around);
     Ok(Splitting {
         conversions: plain.conversions.at(nm),
-        groups: positions,
+        groups: counted.seen,
         field: Some(field_of(field, keeps(field, &shown.collect::<Vec<_>>()))),
         line: Some(line),
         states,
         components,
-        positions,
-        pattern: described,
+        positions: counted.all,
+        positions_seen: counted.seen,
+        pattern: counted.words(),
         ..plain
     })
 }
@@ -290,33 +296,28 @@ fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Mu
     .at("/line"))
 }
 
-fn sentence(line: &LineOf, field: &Field, components: &[ComponentRow], pattern: &str) -> Rich {
-    let widest = components
-        .iter()
-        .map(|c| c.offset.abs())
-        .fold(0.0, f64::max);
+fn sentence(line: &LineOf, document: &Document, rows: &[ComponentRow], pattern: Pattern) -> Rich {
     let named = |say: Rich| {
         say.say(format!("the {} line from ", line.multipole))
             .then(&line.upper_rich)
             .say(" to ")
             .then(&line.lower_rich)
     };
-    if field.tesla == 0.0 {
+    let words = pattern.words();
+    if document.field.as_ref().is_some_and(|f| f.tesla == 0.0) {
         return named(Rich::words("Without a field "))
-            .say(format!(" does not split; any field makes {pattern} of it."));
+            .say(format!(" does not split; any field makes {words} of it"));
     }
-    let say = named(
-        Rich::words("In a field of ")
-            .number(field.tesla, Some("T"), Kind::Entered)
-            .say(", "),
-    )
-    .say(format!(" splits into {pattern}"));
-    if widest == 0.0 {
-        return say.say(", which stays where the line is.");
+    let say = named(in_field(document, true))
+        .say(pattern_verb(pattern, false))
+        .say(words);
+    match widest(&bright(rows)) {
+        0.0 if pattern.seen == 0 => say,
+        0.0 => say.say(", which stays where the line is"),
+        widest => say
+            .say(offset_words(pattern))
+            .number(widest, Some("cm-1"), Kind::Computed),
     }
-    say.say("; the largest offset from its centre is ")
-        .number(widest, Some("cm-1"), Kind::Computed)
-        .say(".")
 }
 
 fn working(line: &LineOf, ends: &Ends, field: &Field, components: &[ComponentRow]) -> Vec<Working> {

@@ -8,8 +8,52 @@ use super::splitting_rows::{ComponentRow, LineOf};
 /// Offsets this close, as a share of the largest, are one place.
 const SAME_PLACE: f64 = 1e-9;
 
+/// A component of which less than this share passes is not seen: what rounding of an angle leaves.
+const UNSEEN: f64 = 1e-9;
+
+/// The components of which view and polariser let something be seen.
+fn seen(components: &[ComponentRow]) -> Vec<&ComponentRow> {
+    let is_seen = |c: &&ComponentRow| c.seen > UNSEEN * c.strength;
+    components.iter().filter(is_seen).collect()
+}
+
+/// What a pattern has, and how much of it is seen.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Pattern {
+    /// Places of the components by polarisation.
+    pub all: usize,
+    /// Those of the components that are seen.
+    pub seen: usize,
+    pub is_normal_triplet: bool,
+}
+
+/// Counts the places; without a field no direction is marked, and every component is seen from everywhere.
+pub fn pattern(components: &[ComponentRow], line: Option<&LineOf>, tesla: f64) -> Pattern {
+    let is_normal_triplet = is_normal_triplet(components, line);
+    let count = |rows: &[&ComponentRow]| match is_normal_triplet {
+        // Each polarisation is one place but for what the field mixes.
+        true => POLARISATIONS
+            .iter()
+            .filter(|name| rows.iter().any(|c| c.polarisation == **name))
+            .count(),
+        false => positions(rows),
+    };
+    let all = count(&components.iter().collect::<Vec<_>>());
+    let seen = match tesla > 0.0 {
+        true => count(&seen(components)),
+        false => all,
+    };
+    Pattern {
+        all,
+        seen,
+        is_normal_triplet,
+    }
+}
+
+const POLARISATIONS: [&str; 3] = ["pi", "sigma+", "sigma-"];
+
 /// How many places the components have, by polarisation.
-pub fn positions(components: &[ComponentRow]) -> usize {
+fn positions(components: &[&ComponentRow]) -> usize {
     let place = |c: &ComponentRow| match c.offset == 0.0 {
         true => c.lorentz.unwrap_or(0.0),
         false => c.offset,
@@ -34,21 +78,27 @@ pub fn positions(components: &[ComponentRow]) -> usize {
     count
 }
 
-/// Components below this share of the strongest one are faint: neither the largest offset nor the groups of a
-/// pattern count them.
-pub const FAINT: f64 = 0.01;
+/// Components below this share of the strongest one that is seen are faint: neither the largest offset nor the
+/// groups of a pattern count them.
+const FAINT: f64 = 0.01;
 
-/// The components that are not faint.
-pub fn bright(components: &[ComponentRow]) -> impl Iterator<Item = &ComponentRow> {
-    let strengths = components.iter().map(|c| c.strength);
-    let strongest = strengths.fold(0.0_f64, f64::max);
-    let is_bright = move |c: &&ComponentRow| c.strength >= FAINT * strongest;
-    components.iter().filter(is_bright)
+/// The components that are seen and not faint.
+pub fn bright(components: &[ComponentRow]) -> Vec<&ComponentRow> {
+    let mut seen = seen(components);
+    let strongest = seen.iter().map(|c| c.seen).fold(0.0_f64, f64::max);
+    seen.retain(|c| c.seen >= FAINT * strongest);
+    seen
+}
+
+/// The largest offset among them, cm⁻¹.
+pub fn widest(components: &[&ComponentRow]) -> f64 {
+    let offsets = components.iter().map(|c| c.offset.abs());
+    offsets.fold(0.0, f64::max)
 }
 
 /// Groups of the bright components, a twentieth of their spread or more apart.
 pub fn groups(components: &[ComponentRow]) -> usize {
-    let mut offsets: Vec<f64> = bright(components).map(|c| c.offset).collect();
+    let mut offsets: Vec<f64> = bright(components).iter().map(|c| c.offset).collect();
     sort_by(&mut offsets, f64::total_cmp);
     let (Some(first), Some(last)) = (offsets.first(), offsets.last()) else {
         return 0;
@@ -62,7 +112,7 @@ pub fn groups(components: &[ComponentRow]) -> usize {
 const NORMAL: f64 = 2e-3;
 
 /// Whether these are π at the centre and σ at ±μ_B B.
-pub fn is_normal_triplet(components: &[ComponentRow], line: Option<&LineOf>) -> bool {
+fn is_normal_triplet(components: &[ComponentRow], line: Option<&LineOf>) -> bool {
     let step = |c: &ComponentRow| match c.polarisation {
         "pi" => 0.0,
         "sigma+" => 1.0,
@@ -75,11 +125,27 @@ pub fn is_normal_triplet(components: &[ComponentRow], line: Option<&LineOf>) -> 
             .all(|c| c.lorentz.is_some_and(|x| (x - step(c)).abs() < NORMAL))
 }
 
-/// The pattern in words.
-pub fn describe(positions: usize, normal_triplet: bool) -> String {
-    match (positions, normal_triplet) {
-        (_, true) => "3 components, the normal triplet".to_owned(),
-        (1, _) => "1 component".to_owned(),
-        (many, _) => format!("{many} components"),
+impl Pattern {
+    /// How many components there are, or how many of them are seen.
+    pub fn words(self) -> String {
+        let count = match self.all {
+            1 => "1 component".to_owned(),
+            many => format!("{many} components"),
+        };
+        let of = match self.seen {
+            _ if self.is_whole() => String::new(),
+            0 => "none of ".to_owned(),
+            some => format!("{some} of "),
+        };
+        let triplet = match self.is_normal_triplet {
+            true => ", the normal triplet",
+            false => "",
+        };
+        format!("{of}{count}{triplet}")
+    }
+
+    /// Whether every component is seen.
+    pub fn is_whole(self) -> bool {
+        self.seen == self.all
     }
 }

@@ -29,7 +29,9 @@ pub struct Splitting {
     pub no_components: Option<String>,
     pub linear: Option<LinearRow>,
     pub positions: usize,
-    /// Groups of the components that are not faint.
+    /// Those of the components that are seen.
+    pub positions_seen: usize,
+    /// Groups of the components that are seen and not faint.
     pub groups: usize,
     pub pattern: String,
     pub conversions: Conversions,
@@ -57,6 +59,7 @@ impl Splitting {
             no_components: None,
             linear: None,
             positions: 0,
+            positions_seen: 0,
             groups: 0,
             conversions: Conversions {
                 ghz_per_wavenumber: MHZ_PER_WAVENUMBER / 1e3,

@@ -3,8 +3,9 @@
 use crate::numerics::sorted_map::SortedMap;
 
 use super::document::Document;
+use super::nucleus::{Nuclear, isotope_name};
 use super::rich::{Kind, Rich};
-use super::splitting_pattern::bright;
+use super::splitting_pattern::{Pattern, bright, widest};
 use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, StateRow};
 use super::splitting_searched::Searched;
 use super::splitting_sets::Prepared;
@@ -17,8 +18,7 @@ pub struct Told<'a> {
     pub states: &'a [StateRow],
     pub components: &'a [ComponentRow],
     pub groups: usize,
-    pub positions: usize,
-    pub pattern: &'a str,
+    pub pattern: Pattern,
     pub linear: Option<&'a LinearRow>,
     pub searched: &'a Searched,
     pub diamagnetic: Option<&'a DiamagneticRow>,
@@ -27,11 +27,6 @@ pub struct Told<'a> {
 impl Told<'_> {
     pub fn tesla(&self) -> f64 {
         self.document.field.as_ref().map_or(0.0, |f| f.tesla)
-    }
-
-    fn widest(&self) -> f64 {
-        let offsets = bright(self.components).map(|c| c.offset.abs());
-        offsets.fold(0.0, f64::max)
     }
 
     pub fn has_spin(&self) -> bool {
@@ -45,96 +40,170 @@ impl Told<'_> {
     }
 }
 
+/// "In a field of 0.5 T, seen across it, ": the measure of what is counted stands in the sentence.
+pub fn in_field(document: &Document, is_line: bool) -> Rich {
+    let Some(field) = &document.field else {
+        return Rich::new();
+    };
+    let say = Rich::words("In a field of ")
+        .number(field.tesla, Some("T"), Kind::Entered)
+        .say(", ");
+    match is_line {
+        true => say.say(field.looked()).say(", "),
+        false => say,
+    }
+}
+
+/// " splits into " or, where some components are hidden, " shows ".
+pub fn pattern_verb(pattern: Pattern, several_lines: bool) -> &'static str {
+    match (pattern.is_whole(), several_lines) {
+        (true, false) => " splits into ",
+        (true, true) => " split into ",
+        (false, false) => " shows ",
+        (false, true) => " show ",
+    }
+}
+
+/// What stands before the largest offset.
+pub fn offset_words(pattern: Pattern) -> &'static str {
+    match pattern.is_whole() {
+        true => "; the largest offset from the centre is ",
+        false => "; the largest offset of these from the centre is ",
+    }
+}
+
 /// One sentence.
 pub fn sentence(told: &Told) -> Rich {
-    let tesla = told.tesla();
-    let start = |none: &str| match tesla > 0.0 {
-        true => Rich::words("In a field of ")
-            .number(tesla, Some("T"), Kind::Entered)
-            .say(", "),
-        false => Rich::words(none),
+    let said = match told.line {
+        Some(line) => of_line(told, line),
+        None => of_levels(told),
     };
-    let with = match told.document.nuclei.len() {
+    said.say(left_out_words(told.document)).say(".")
+}
+
+/// The nuclei with a spin that split nothing, because no constant is known.
+fn left_out(document: &Document) -> Vec<String> {
+    let lacks = |n: &&Nuclear| n.two_i() > 0 && n.dipole.is_empty() && n.quadrupole.is_empty();
+    let name = |n: &Nuclear| n.name.clone().unwrap_or_else(|| "this spin".to_owned());
+    if document.level_alone.is_some() {
+        return Vec::new();
+    }
+    if !document.nuclei.is_empty() {
+        return document.nuclei.iter().filter(lacks).map(name).collect();
+    }
+    // An isotope that the sheet names, and says nothing more of.
+    let is_named = document.species.is_some_and(|s| s.mass_number.is_some());
+    let isotope = document
+        .isotope()
+        .filter(|isotope| is_named && isotope.spin.is_some_and(|spin| spin.doubled() > 0));
+    isotope.iter().map(isotope_name).collect()
+}
+
+/// The same as the end of the sentence.
+pub fn left_out_words(document: &Document) -> String {
+    let names = left_out(document);
+    match names.is_empty() {
+        true => String::new(),
+        false => format!(
+            "; the nucleus of {} is left out because no A is entered",
+            names.join(", ")
+        ),
+    }
+}
+
+fn of_levels(told: &Told) -> Rich {
+    let shifts = told.states.iter().map(|s| s.shift);
+    let (low, high) = shifts.fold((0.0_f64, 0.0_f64), |(low, high), shift| {
+        (low.min(shift), high.max(shift))
+    });
+    let sets = told.ready.sets.iter();
+    let levels = sets.map(|set| set.levels.len()).sum::<usize>();
+    let say = started(told)
+        .count(levels, "level", "levels")
+        .say(with_nuclei(told))
+        .say(if levels == 1 {
+            " splits into "
+        } else {
+            " split into "
+        })
+        .count(told.states.len(), "state", "states");
+    if low == 0.0 && high == 0.0 {
+        return say.say(", which all keep their energy");
+    }
+    say.say("; shifts reach from ")
+        .number(low, Some("cm-1"), Kind::Computed)
+        .say(" to ")
+        .number(high, Some("cm-1"), Kind::Computed)
+}
+
+fn started(told: &Told) -> Rich {
+    match told.tesla() > 0.0 {
+        true => in_field(told.document, told.line.is_some()),
+        false => Rich::words("Without a field, "),
+    }
+}
+
+fn with_nuclei(told: &Told) -> String {
+    match told.document.nuclei.len() {
         _ if !told.has_spin() => String::new(),
         0 | 1 => " with its nucleus".to_owned(),
         many => format!(" of {many} isotopes"),
-    };
-    let Some(line) = told.line else {
-        let shifts = told.states.iter().map(|s| s.shift);
-        let (low, high) = shifts.fold((0.0_f64, 0.0_f64), |(low, high), shift| {
-            (low.min(shift), high.max(shift))
-        });
-        let levels = told
-            .ready
-            .sets
-            .iter()
-            .map(|set| set.levels.len())
-            .sum::<usize>();
-        let say = start("Without a field, ")
-            .count(levels, "level", "levels")
-            .say(with)
-            .say(if levels == 1 {
-                " splits into "
-            } else {
-                " split into "
-            })
-            .count(told.states.len(), "state", "states");
-        if low == 0.0 && high == 0.0 {
-            return say.say(", which all keep their energy.");
-        }
-        return say
-            .say("; shifts reach from ")
-            .number(low, Some("cm-1"), Kind::Computed)
-            .say(" to ")
-            .number(high, Some("cm-1"), Kind::Computed)
-            .say(".");
-    };
+    }
+}
+
+fn of_line(told: &Told, line: &LineOf) -> Rich {
+    let several = line.of != "level";
     let named = |say: Rich| {
-        let line_or_lines = if line.of == "level" { "line" } else { "lines" };
         say.say(format!(
-            "the {} {line_or_lines}{with} from ",
-            line.multipole
+            "the {} {}{} from ",
+            line.multipole,
+            if several { "lines" } else { "line" },
+            with_nuclei(told)
         ))
         .then(&line.upper_rich)
         .say(" to ")
         .then(&line.lower_rich)
     };
-    let verb = if line.of == "level" {
-        "splits"
-    } else {
-        "split"
-    };
-    if tesla == 0.0 && !told.has_spin() {
+    if told.tesla() == 0.0 && !told.has_spin() {
         return named(Rich::words("Without a field ")).say(format!(
-            " {} not split; any field makes {} of {}.",
-            if line.of == "level" { "does" } else { "do" },
-            told.pattern,
-            if line.of == "level" { "it" } else { "them" }
+            " {} not split; any field makes {} of {}",
+            if several { "do" } else { "does" },
+            told.pattern.words(),
+            if several { "them" } else { "it" }
         ));
     }
-    let say = named(start("Without a field, ")).say(format!(" {verb} into {}", told.pattern));
+    let say = named(started(told))
+        .say(pattern_verb(told.pattern, several))
+        .say(told.pattern.words());
     let say = match told.groups {
-        groups if groups > 1 && 2 * groups <= told.positions && groups < 10 => {
+        groups
+            if groups > 1
+                && !told.pattern.is_normal_triplet
+                && 2 * groups <= told.pattern.seen
+                && groups < 10 =>
+        {
             say.say(format!(" in {groups} groups"))
         }
         _ => say,
     };
-    let widest = told.widest();
+    let bright = bright(told.components);
+    let widest = widest(&bright);
     if widest == 0.0 {
-        return say.say(", which stays where the line is.");
+        return say.say(match told.pattern.seen {
+            0 => "",
+            _ => ", which stays where the line is",
+        });
     }
-    let say = say.say("; the largest offset from the centre is ").number(
-        widest,
-        Some("cm-1"),
-        Kind::Computed,
-    );
-    match told.linear {
-        Some(linear) if linear.largest_difference > 1e-3 * widest => say
-            .say(", and a pattern in proportion to the field would be off by up to ")
-            .number(linear.largest_difference, Some("cm-1"), Kind::Computed)
-            .say("."),
-        _ => say.say("."),
+    let say = say
+        .say(offset_words(told.pattern))
+        .number(widest, Some("cm-1"), Kind::Computed);
+    let away = |c: &&ComponentRow| (c.offset - c.linear.unwrap_or(c.offset)).abs();
+    let largest = bright.iter().map(away).fold(0.0_f64, f64::max);
+    if told.linear.is_none() || largest <= 1e-3 * widest {
+        return say;
     }
+    say.say(", and a pattern in proportion to the field would be off by up to ")
+        .number(largest, Some("cm-1"), Kind::Computed)
 }
 
 /// The kinds of the columns.
@@ -155,6 +224,7 @@ pub fn kinds(told: &Told) -> SortedMap<&'static str, Kind> {
         ("conversions.ghz_per_wavenumber", Kind::Exact),
         ("conversions.mu_b_per_tesla", Kind::Measured),
         ("conversions.pm_per_wavenumber", Kind::Computed),
+        ("positions_seen", Kind::Exact),
         ("field.angle_degrees", Kind::Entered),
         ("field.tesla", Kind::Entered),
         ("field.up_to", Kind::Entered),

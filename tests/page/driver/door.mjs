@@ -195,7 +195,6 @@ export class Door {
     }
   }
 
-  /** Clicks the visible button, link or summary with this text or accessible label. */
   /**
    * Waits until an element stays where it is: an answer that arrives above it moves it away from the
    * pointer. A run that is meant to last is not waited for longer than two seconds.
@@ -213,6 +212,7 @@ export class Door {
     });
   }
 
+  /** Clicks the visible button, link or summary with this text or accessible label. */
   async click(text) {
     const handle = await this.page.evaluateHandle((wanted) => [...document.querySelectorAll("button, a, summary, [role=button], label, option")].find(
       (each) => each.checkVisibility() && (each.getAttribute("aria-label") ?? each.textContent).trim() === wanted,

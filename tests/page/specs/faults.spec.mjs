@@ -117,3 +117,24 @@ everyDoor("an empty sheet asks for an atom", async (door) => {
   await door.click("Undo");
   await door.sentence("states");
 });
+
+const SPLIT = "v=1&species=Na&configurations.0=3s&configurations.1=3p&field.flux_density=0.5+T&line.upper=3p+2P1/2&line.lower=3s+2S1/2";
+
+everyDoor("a fault in the field is one of the splitting alone, and an emptied field keeps the last answer", async (door) => {
+  await door.unfold("splitting");
+  const before = await door.sentence("splitting");
+  await door.sentence("lines");
+  await door.type("Field", "strong");
+  await door.until(() => document.querySelector('[data-path="/field/flux_density"]').getAttribute("aria-invalid") === "true");
+  await door.until(() => document.getElementById("splitting").dataset.state === "fault");
+  assert.match(await door.text("#splitting .words"), /1 fault/);
+  for (const name of ["states", "lines"]) await door.sentence(name);
+  await door.type("Field", "");
+  await door.until(() => document.getElementById("splitting").dataset.state === "lacks" && document.querySelector("#splitting .needs button"));
+  assert.equal(await door.text("#splitting .say"), before);
+  assert.match(await door.text("#splitting .old-note"), /before your change/);
+  assert.ok(await door.evaluate(() => document.querySelector("#splitting .pattern-part svg[role=img]").checkVisibility()));
+  await door.click("Put in 0.5 T");
+  assert.equal(await door.sentence("splitting"), before);
+  assert.deepEqual(door.troubles, []);
+}, { fragment: SPLIT, browsers: ["chromium", "firefox"] });

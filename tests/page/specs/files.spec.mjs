@@ -38,6 +38,7 @@ everyDoor("bad files are a plain fault each, and nothing is lost", async (door) 
     ["deep.json", "[".repeat(100_000), /nesting goes too deep/],
     ["list.json", "[1, 2]", /not a sheet/],
     ["number.json", "42", /not a sheet/],
+    ["other.json", '{"a": 1}', /no key "rungline"/],
     ["image.png", "\u0089PNG\r\n\u001a\n\u0000\u0000", /not valid JSON/],
   ];
   for (const [name, text, words] of bad) {

@@ -57,7 +57,7 @@ everyDoor("sodium’s resonance line from measured levels has the published wave
   await door.type("Measured energy", `${energy} cm-1`);
   await door.click("Add a level");
   await door.sentence("lines");
-  await take(door, "Wavelengths", "air");
+  await take(door, "Tell wavelengths", "air");
   await door.until((id, wanted) => document.querySelector(`#lines tr[data-id="${id}"]`)?.textContent.includes(wanted), RESONANCE, (Number(vacuumAngstrom) / 10).toFixed(3));
   const found = await resonance(door);
   assert.equal(found["in vacuum"], (Number(vacuumAngstrom) / 10).toFixed(3));
@@ -111,22 +111,22 @@ everyDoor("choices narrow list and pictures: multipole, lower level, least stren
   await take(door, "Multipole", "E1");
   const electric = await list(door);
   assert.ok(electric.length < all && electric.every(({ multipole }) => multipole === "E1"));
-  await take(door, "Lower level", "of 3p");
+  await take(door, "Ends on", "of 3p");
   assert.ok((await list(door)).every(({ id }) => id.startsWith("line:3p ")));
   assert.match(await door.text("#lines .lines-table caption"), /^\d+ of \d+ lines/);
-  await take(door, "Lower level", "");
+  await take(door, "Ends on", "");
   await take(door, "Multipole", "");
-  await take(door, "At least", "0.1");
+  await take(door, "Leave out below", "0.1");
   const strong = await list(door);
   const most = Math.max(...strong.map(({ A }) => shown(A)));
   assert.ok(strong.length > 0 && strong.length < all && strong.every(({ A }) => shown(A) >= 0.1 * most));
-  await take(door, "At least", "0");
+  await take(door, "Leave out below", "0");
   // One end alone is open to the other side; an end may be an energy.
-  await door.type("Window from", "580 nm");
+  await door.type("Show lines between", "580 nm");
   await door.until(() => /^Above 580\snm/.test(document.querySelector("#lines .say")?.textContent ?? ""));
   const above = await list(door);
   assert.ok(above.length > 0 && above.length < all && above.every((row) => shown(row["in vacuum"]) >= 580));
-  await door.type("Window to", "700 nm");
+  await door.type("Show lines up to", "700 nm");
   await door.until(() => /^Between 580\D+700\snm/.test(document.querySelector("#lines .say")?.textContent ?? ""));
   await door.until(() => [...document.querySelectorAll("#lines .filters label")].some((each) => each.textContent.startsWith("Only the window")));
   assert.ok((await list(door)).every((row) => shown(row["in vacuum"]) >= 580 && shown(row["in vacuum"]) <= 700));
@@ -182,7 +182,7 @@ everyDoor("energies are computed apart from typing, and only where the sheet cha
   assert.equal(await door.state("lines"), "answered");
   // A long one waits for Start, and the last answer stays.
   const sentence = await door.text("#lines .say");
-  await door.type("Scale of F", "0.5");
+  await door.type("Multiply computed F by", "0.5");
   await door.until(() => /waits for Start/.test(document.querySelector("#lines .words").textContent));
   assert.equal(await door.text("#lines .say"), sentence);
   await door.evaluate(() => [...document.querySelectorAll("#lines .run button")].find((each) => each.textContent === "Start").click());

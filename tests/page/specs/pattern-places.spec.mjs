@@ -2,7 +2,7 @@
 
 import assert from "node:assert/strict";
 import { test } from "node:test";
-import { placesOf } from "../../../www/js/plot/pattern.js";
+import { placesOf, sticksOf } from "../../../www/js/plot/pattern.js";
 import { linearScale, tickText, ticks } from "../../../www/js/plot/axis.js";
 
 // The normal triplet 1D2 – 1P1: nine components on three places (standard; from memory).
@@ -14,6 +14,18 @@ test("components on one place are one bar with their strengths added", () => {
   const places = placesOf(NINE, "lorentz", "strength");
   assert.deepEqual(places.map(({ polarisation, members }) => [polarisation, members.length]), [["sigma-", 3], ["pi", 3], ["sigma+", 3]]);
   for (const place of places) assert.ok(Math.abs(place.strength - 1 / 3) < 1e-12);
+});
+
+test("sticks that a picture cannot tell apart are one, each polarisation a part of it", () => {
+  const one = (polarisation, x, strength) => ({ polarisation, x, strength, members: [{}] });
+  // π stands above the axis: the three below it at nearly one place are one stick.
+  const places = [one("sigma-", -1, 0.1), one("sigma+", -0.999, 0.2), one("sigma-", -0.998, 0.3), one("pi", -0.999, 0.4), one("sigma+", 0.5, 0.6)].sort((a, b) => a.x - b.x);
+  const sticks = sticksOf(places, 0.01);
+  assert.deepEqual(sticks.map(({ up, places: { length } }) => [up, length]).sort(), [[false, 1], [false, 3], [true, 1]]);
+  const three = sticks.find(({ places: { length } }) => length === 3);
+  assert.ok(Math.abs(three.strength - 0.6) < 1e-12);
+  assert.deepEqual(three.parts.map(({ polarisation, strength }) => [polarisation, Number(strength.toFixed(9))]), [["sigma+", 0.2], ["sigma-", 0.4]]);
+  assert.deepEqual(sticksOf(places, 1e-6).map(({ places: { length } }) => length), [1, 1, 1, 1, 1]);
 });
 
 test("a unit without values gives no bars", () => {

@@ -27,3 +27,18 @@ for (const width of [720, 1400]) {
     await door.screenshot(`print-${width}`);
   }, { fragment: SODIUM, width, browsers: ["chromium"] });
 }
+
+everyDoor("on paper stands what was entered, and nothing that only a screen can do", async (door) => {
+  for (const name of ["lines", "splitting"]) await door.unfold(name);
+  await door.until(() => document.querySelector("#splitting .map-part svg[role=img]"));
+  await door.page.emulateMediaType("print");
+  const entered = await door.until(() => document.querySelector(".entered").checkVisibility() && document.querySelector(".entered dt") && [...document.querySelectorAll(".entered > div")].map((row) => [...row.children].map((each) => each.textContent)));
+  const value = (label) => entered.find(([name]) => name === label)?.[1];
+  assert.deepEqual(["Atom or ion", "Configuration", "Configuration 2", "Field", "View", "Line starts on", "Line ends on", "Wavelength", "A of 3s 2S1/2"].map(value),
+    ["Na", "3s", "3p", "0.5 T", "across", "3p 2P3/2", "3s 2S1/2", "589.158 nm", "885.8 MHz"]);
+  // Folded parts say what stands in them all the same.
+  assert.equal(value("Nuclear spin I"), "3/2");
+  const page = await door.evaluate(() => document.body.innerText);
+  assert.doesNotMatch(page, /drag|tap |arrow keys|copies have|type over|choose …|such as/i);
+  assert.deepEqual(door.troubles, []);
+}, { fragment: `${SODIUM}&nucleus.spin=3/2&nucleus.magnetic_dipole.3s+2S1/2=885.8+MHz`, browsers: ["chromium"] });

@@ -30,7 +30,7 @@ async function hold(door) {
   const y = rule.y + rule.height / 2;
   await door.page.mouse.move(rule.x + rule.width / 2, y);
   await door.page.mouse.down();
-  return { to: (part) => door.page.mouse.move(stage.x + 72 + (stage.width - 72 - 48) * part, y), release: () => door.page.mouse.up() };
+  return { to: (part) => door.page.mouse.move(stage.x + 72 + (stage.width - 72 - 60) * part, y), release: () => door.page.mouse.up() };
 }
 
 /** Offsets of the pattern's bars, by their reading. */

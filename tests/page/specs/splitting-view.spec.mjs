@@ -35,7 +35,7 @@ everyDoor("the cursor tells value, unit and kind, in the unit that is chosen", a
   await door.until(() => document.querySelector("#splitting .pattern-part .stage svg"));
   await door.page.focus("#splitting .pattern-part .stage");
   await door.press("End");
-  assert.match(await door.text("#splitting .pattern-part .reading"), /^σ\+, M .+: offset 1\.\d+\sμB\sB\s(computed|exact); strength .+ 0\.\d+\s(computed|exact)/);
+  assert.match(await door.text("#splitting .pattern-part .reading"), /^σ\+, 3s 2S1\/2 M −1\/2 to 3p 2Po?1\/2 M 1\/2: offset 1\.\d+\sμB\sB\s(computed|exact); strength .+ 0\.\d+\s(computed|exact)/);
   await door.evaluate(() => {
     const box = document.querySelector('#splitting select[aria-label="Offsets in"]');
     box.value = "ghz";

@@ -6,7 +6,7 @@ import { cubicAt, placeIn } from "./hermite.js";
 import { LABEL } from "./pen.js";
 
 const LEFT = 68;
-const RIGHT = 44;
+const RIGHT = 56;
 /** Room for what the rule is at, above the first panel's title. */
 const TOP = 50;
 const HEAD = 22;
@@ -14,8 +14,9 @@ const GAP = 30;
 const MARGIN = 0.06;
 /** Points of a curve in a part of the map that is enlarged. */
 const POINTS = 96;
-/** Labels closer than this would touch. */
-const APART = 12;
+/** Labels closer than this would touch; names of levels have raised and lowered parts. */
+const APART = 14;
+const NAMES_APART = 19;
 /** Height that each further panel adds. */
 const MORE = 60;
 const SIGN = 5;
@@ -144,23 +145,38 @@ function extent(curves) {
 }
 
 // Each level is named where its states begin, each state where it ends.
-function labels(pen, { curves, y }, right) {
+function labels(pen, { curves, y, top, bottom }, right) {
   const from = new Map();
   for (const { series, points } of curves) {
     const key = series.groupKey;
     if (series.group && (!from.has(key) || Math.abs(points[0]) < Math.abs(from.get(key).value))) from.set(key, { value: points[0], series });
   }
-  let last = -Infinity;
-  for (const { series, height } of [...from.values()].map(({ value, series }) => ({ series, height: y(value) })).sort((p, q) => p.height - q.height)) {
-    if (height - last < LABEL) continue;
-    pen.text(LEFT + 8, height - 4, series.group, { halo: "sheet" });
-    last = height;
+  const room = Math.floor((bottom - top) / NAMES_APART) - 1;
+  const names = [...from.values()].map(({ value, series }) => ({ series, height: y(value) - 4 })).sort((p, q) => p.height - q.height)
+    .filter((name, i, all) => all.length <= room || i === 0 || name.height - all[i - 1].height >= NAMES_APART).slice(0, room);
+  // Names that would lie upon each other move apart, and stay in the panel.
+  let least = top + NAMES_APART;
+  for (const name of names) {
+    name.height = Math.max(name.height, least);
+    least = name.height + NAMES_APART;
   }
-  last = -Infinity;
-  for (const { series, height } of curves.map(({ series, points }) => ({ series, height: y(points.at(-1)) })).sort((p, q) => p.height - q.height)) {
-    if (!series.label || height - last < APART) continue;
-    pen.text(right + 5, height + LABEL / 3, series.label, { fill: "quiet" });
-    last = height;
+  let most = bottom - 4;
+  for (const name of names.reverse()) {
+    name.height = Math.min(name.height, most);
+    most = name.height - NAMES_APART;
+  }
+  for (const { series, height } of names) pen.text(LEFT + 8, height, series.group, { halo: "sheet" });
+  // States that end together are named together, from the highest to the lowest.
+  const bundles = [];
+  for (const end of curves.map(({ series, points }) => ({ label: series.label, height: y(points.at(-1)) })).filter(({ label }) => label).sort((p, q) => p.height - q.height)) {
+    const last = bundles.at(-1);
+    if (last && end.height - last.from < APART) Object.assign(last, { to: end.height, lowest: end.label });
+    else bundles.push({ from: end.height, to: end.height, highest: end.label, lowest: end.label });
+  }
+  for (const { from: high, to, highest, lowest } of bundles) {
+    const [one, other] = [highest, lowest].map(([{ text }]) => text);
+    const both = one === other ? one : one.length + other.length > 6 ? `${one}…` : `${one}…${other}`;
+    pen.text(right + 5, (high + to) / 2 + LABEL / 3, both, { fill: "quiet" });
   }
 }
 

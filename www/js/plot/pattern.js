@@ -29,8 +29,10 @@ const RIGHT = 20;
 const TOP = 44;
 const TRIANGLE = 7;
 const BELOW = 36;
-/** Members of one place that are named. */
-const FEW = 4;
+/** Members of one stick that are named. */
+const MOST = 24;
+/** Sticks closer than their width cannot be told apart. */
+const APART = 3;
 // Offsets closer than this part of the pattern's width are one component to the eye and in fact.
 const SAME = 1e-9;
 
@@ -48,6 +50,30 @@ export function placesOf(components, unit, view) {
     } else places.push({ polarisation: component.polarisation, x, strength: component[view], members: [component] });
   }
   return places.sort((a, b) => a.x - b.x || a.polarisation.localeCompare(b.polarisation));
+}
+
+/**
+ * Sticks of places that the picture cannot tell apart: `places` sorted by x; `apart`: the least distance of two sticks.
+ * A stick has its places one upon the other, each polarisation together, and their strengths added.
+ */
+export function sticksOf(places, apart) {
+  const sticks = [];
+  for (const up of [true, false]) {
+    let last = null;
+    for (const place of places.filter(({ polarisation }) => (polarisation === "pi") === up)) {
+      if (last !== null && place.x - last.from < apart) {
+        last.places.push(place);
+        last.to = place.x;
+        last.strength += place.strength;
+      } else sticks.push(last = { up, from: place.x, to: place.x, strength: place.strength, places: [place] });
+    }
+  }
+  for (const stick of sticks) {
+    stick.x = stick.strength > 0 ? stick.places.reduce((sum, { x, strength }) => sum + x * strength, 0) / stick.strength : stick.from;
+    stick.parts = Object.keys(SIGNS).map((polarisation) => stick.places.filter((place) => place.polarisation === polarisation)).filter((own) => own.length > 0)
+      .map((own) => ({ polarisation: own[0].polarisation, places: own, strength: own.reduce((sum, { strength }) => sum + strength, 0) }));
+  }
+  return sticks.sort((a, b) => a.x - b.x || Number(b.up) - Number(a.up));
 }
 
 // Ends that are round: while the field changes the axis stands still as long as it can.
@@ -68,12 +94,12 @@ function roundExtent(places) {
 
 /**
  * The layout of a pattern for `picture`. `viewWords` says the view; `kindOf` key → kind; `idsOf` component → ids
- * of the shared choice, its own first; `rough` values are read from a map, and marked so.
+ * of the shared choice, its own first; `levelOf` label of a level → rich text; `origin`: rich text of where offsets count from;
+ * `rough` values are read from a map, and marked so.
  */
-export function patternLayout({ components, unit, view, viewWords, kindOf, idsOf = () => [], rough = false }) {
+export function patternLayout({ components, unit, view, viewWords, kindOf, idsOf = () => [], levelOf = (label) => [label], origin = [], rough = false }) {
   const places = placesOf(components, unit, view);
   const seen = places.filter((place) => place.strength > 0);
-  const strongest = Math.max(...seen.map((place) => place.strength), 0) || 1;
   const [first, last] = roundExtent(places);
   const whole = last - first;
   const { energy } = OFFSET_UNITS[unit];
@@ -86,18 +112,21 @@ export function patternLayout({ components, unit, view, viewWords, kindOf, idsOf
     const low = first + from * whole;
     const high = first + to * whole;
     const scale = linearScale(low, high, LEFT, width - RIGHT);
-    const shown = seen.filter((place) => place.x >= low && place.x <= high);
-    const ends = (place) => axis + (place.polarisation === "pi" ? -1 : 1) * (place.strength / strongest) * tall;
+    const sticks = sticksOf(seen, (APART * (high - low)) / (width - RIGHT - LEFT));
+    const strongest = Math.max(...sticks.map(({ strength }) => strength), 0) || 1;
+    const shown = sticks.filter(({ x }) => x >= low && x <= high);
+    const long = (strength) => (strength / strongest) * tall;
+    const end = (stick) => axis + (stick.up ? -1 : 1) * long(stick.strength);
     return {
       height,
-      marks: seen.map((place) => {
-        const x = scale(place.x);
-        const end = ends(place);
-        const wing = place.polarisation === "pi" ? 3 : TRIANGLE;
-        const [id = null, ...others] = place.members.flatMap(idsOf);
+      marks: shown.map((stick) => {
+        const x = scale(stick.x);
+        const members = stick.places.flatMap((place) => place.members);
+        const strong = members.reduce((best, member) => (member[view] > best[view] ? member : best));
+        const [id = null] = idsOf(strong);
         return {
-          x: x - wing, w: 2 * wing, y: Math.min(axis, end) - (place.polarisation === "pi" ? 0 : -2), h: Math.abs(end - axis) + (place.polarisation === "pi" ? 0 : TRIANGLE),
-          part: (place.x - first) / whole, id, ids: others, get reading() { return readingOf(place, unit, { view, viewWords, kindOf, rough }); },
+          x: x - 5, y: Math.min(axis, end(stick)), w: 10, h: Math.max(Math.abs(end(stick) - axis), 2) + (stick.up ? 0 : TRIANGLE),
+          part: (stick.x - first) / whole, id, ids: members.flatMap(idsOf).filter((other) => other !== id), get reading() { return readingOf(stick, unit, { view, viewWords, kindOf, levelOf, rough }); },
         };
       }),
       draw(pen) {
@@ -110,54 +139,81 @@ export function patternLayout({ components, unit, view, viewWords, kindOf, idsOf
         }
         pen.text(LEFT - 8, axis + 4, "0", { anchor: "end", fill: "quiet" });
         pen.line(LEFT - 5, axis, width - RIGHT, axis, { stroke: "edge" });
-        for (const place of shown) bar(pen, place, scale(place.x), axis, ends(place), energy);
-        labels(pen, shown, scale, ends);
-        const title = [{ text: "Offset from the line without field (" }, ...unitOf(OFFSET_UNITS[unit].unit).runs, { text: ")" }];
-        bottomAxis(pen, { scale, from: low, to: high, left: LEFT, right: width - RIGHT, y: bottom, title: width < 420 ? [{ text: "Offset (" }, ...title.slice(1)] : title });
+        for (const stick of shown) {
+          let strength = 0;
+          for (const part of stick.parts) {
+            const begin = axis + (stick.up ? -1 : 1) * long(strength);
+            strength += part.strength;
+            part.end = axis + (stick.up ? -1 : 1) * long(strength);
+            bar(pen, part.polarisation, scale(stick.x), begin, part.end, energy);
+          }
+        }
+        labels(pen, shown, scale);
+        const beginning = width < 420 ? [] : [{ text: " from " }, ...(origin.length > 0 ? origin : [{ text: "the line without field" }])];
+        bottomAxis(pen, { scale, from: low, to: high, left: LEFT, right: width - RIGHT, y: bottom, title: [{ text: "Offset" }, ...beginning, { text: " (" }, ...unitOf(OFFSET_UNITS[unit].unit).runs, { text: ")" }] });
       },
     };
   };
 }
 
-function bar(pen, place, x, axis, end, energy) {
-  const { colour } = SIGNS[place.polarisation];
-  pen.line(x, axis, x, end, { stroke: colour, width: 3 });
-  if (place.polarisation === "pi") return;
-  const rises = SIGNS[place.polarisation].step > 0;
+function bar(pen, polarisation, x, begin, end, energy) {
+  const { colour } = SIGNS[polarisation];
+  pen.line(x, begin, x, end, { stroke: colour, width: 3 });
+  if (polarisation === "pi") return;
+  const rises = SIGNS[polarisation].step > 0;
   const towards = (rises ? 1 : -1) * energy;
   const tip = [x + towards * TRIANGLE, end + TRIANGLE / 2];
   const base = [[x - towards * TRIANGLE * 0.6, end - TRIANGLE / 2], [x - towards * TRIANGLE * 0.6, end + 1.5 * TRIANGLE]];
   pen.polygon([tip, ...base], rises ? { fill: colour, stroke: colour } : { fill: "sheet", stroke: colour, width: 1.5 });
 }
 
-// Each polarisation is named once, at its strongest bar; σ⁺ and σ⁻ step aside from each other.
-function labels(pen, shown, scale, ends) {
-  const at = {};
+// Each polarisation is named once, at its strongest bar; names at one height step aside from each other.
+function labels(pen, shown, scale) {
+  const at = [];
   for (const polarisation of Object.keys(SIGNS)) {
-    const own = shown.filter((place) => place.polarisation === polarisation);
-    if (own.length > 0) at[polarisation] = own.reduce((best, place) => (place.strength > best.strength * (1 + 1e-9) ? place : best));
+    const own = shown.flatMap((stick) => stick.parts.filter((part) => part.polarisation === polarisation).map((part) => ({ stick, part })));
+    if (own.length === 0) continue;
+    const { stick, part } = own.reduce((best, each) => (each.part.strength > best.part.strength * (1 + 1e-9) ? each : best));
+    at.push({ sign: SIGNS[polarisation], x: scale(stick.x), y: stick.up ? part.end - 7 : part.end + TRIANGLE * 1.5 + 16, isLast: part === stick.parts.at(-1) });
   }
-  const [plus, minus] = [at["sigma+"], at["sigma-"]];
-  const near = plus && minus && Math.abs(scale(plus.x) - scale(minus.x)) < 26;
-  const side = near ? Math.sign(scale(plus.x) - scale(minus.x)) || 1 : 0;
-  for (const [polarisation, place] of Object.entries(at)) {
-    const sign = SIGNS[polarisation];
-    const aside = Math.abs(sign.step) === 1 ? 13 * side * sign.step : 0;
-    const y = polarisation === "pi" ? ends(place) - 7 : ends(place) + TRIANGLE * 1.5 + 16;
-    pen.text(scale(place.x) + aside, y, sign.runs, { anchor: "middle", fill: sign.colour, weight: 600 });
+  for (const one of at) {
+    // Inside a stick the next part goes on below: its name stands beside it.
+    if (!one.isLast) one.x += 3 * TRIANGLE;
+    const other = at.find((each) => each !== one && each.isLast && one.isLast && Math.abs(each.x - one.x) < 26 && Math.abs(each.y - one.y) < 14);
+    const aside = other ? 13 * (Math.sign(one.x - other.x) || Math.sign(one.sign.step - other.sign.step)) : 0;
+    pen.text(one.x + aside, one.isLast ? one.y : one.y - 14, one.sign.runs, { anchor: "middle", fill: one.sign.colour, weight: 600 });
   }
 }
 
-function readingOf(place, unit, { view, viewWords, kindOf, rough }) {
+// Every component of a stick by its levels and M, by polarisation; where it lies and how strong it is.
+function readingOf(stick, unit, { view, viewWords, kindOf, levelOf, rough }) {
   const { unit: unitName } = OFFSET_UNITS[unit];
   const number = (value, name, key) => ({ number: rough ? { text: `~${trueMinus(Number(value.toPrecision(5)))}`, unit: name } : { text: String(value), unit: name, kind: kindOf(key) } });
-  const few = place.members.slice(0, FEW);
-  const jumps = few.map((member) => (member.F_upper === null || member.F_upper === undefined ? "" : `F ${member.F_lower} to ${member.F_upper}, `) + `M ${trueMinus(member.M_lower)} to ${trueMinus(member.M_upper)}`).join("; ");
+  let left = MOST;
+  const parts = stick.parts.flatMap(({ polarisation, places }, i) => {
+    const members = places.flatMap((place) => place.members).sort((a, b) => b[view] - a[view]);
+    const { runs, plain, speech } = SIGNS[polarisation];
+    const rest = Math.max(members.length - Math.max(left, 0), 0);
+    const named = members.slice(0, members.length - rest);
+    left -= members.length;
+    return [i > 0 ? "; " : "", { sign: { runs, plain, speech } }, ...(named.length > 0 ? [", ", ...jumps(named, levelOf)] : []), ...(rest > 0 ? [` and ${rest} more, in the table`] : [])];
+  });
+  const wide = stick.to - stick.from > SAME * Math.max(Math.abs(stick.to), Math.abs(stick.from));
   return [
-    { sign: { runs: SIGNS[place.polarisation].runs, plain: SIGNS[place.polarisation].plain, speech: SIGNS[place.polarisation].speech } },
-    `, ${jumps}${place.members.length > FEW ? ` and ${place.members.length - FEW} more` : ""}: offset `,
-    number(place.x, unitName, unit),
-    `; strength ${viewWords} `,
-    number(place.strength, null, view),
+    ...parts, ": offset ", ...(wide ? [number(stick.from, null, unit), " to "] : []), number(wide ? stick.to : stick.x, unitName, unit),
+    `; strength ${viewWords} `, number(stick.strength, null, view), ...(stick.places.length > 1 ? [" together"] : []),
   ];
+}
+
+// Levels are told where they change from one member to the next.
+function jumps(members, levelOf) {
+  let last = null;
+  return members.flatMap((member, i) => {
+    const levels = `${member.isotope ?? ""} ${member.level_lower} ${member.level_upper}`;
+    const end = (side) => `${member[`F_${side}`] === null || member[`F_${side}`] === undefined ? "" : `F ${member[`F_${side}`]} `}M ${trueMinus(member[`M_${side}`])}`;
+    const same = levels === last;
+    last = levels;
+    const level = (side) => (same ? [] : [...levelOf(member[`level_${side}`]), " "]);
+    return [i > 0 ? ", " : "", ...(same || !member.isotope ? [] : [`${member.isotope} `]), ...level("lower"), end("lower"), " to ", ...level("upper"), end("upper")];
+  });
 }

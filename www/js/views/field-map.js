@@ -3,6 +3,7 @@
 import { element } from "../dom.js";
 import { faultNode } from "../fields.js";
 import { fieldMapLayout } from "../plot/field-map.js";
+import { SIGNS } from "../plot/pattern.js";
 import { picture } from "../plot/picture.js";
 import { ReadingRule } from "../plot/reading-rule.js";
 import { trueMinus } from "../digits.js";
@@ -113,14 +114,18 @@ export class FieldMapView {
 
   // Read from the map, so never with a kind.
   #reading(series, panel, place) {
-    const rough = (value, unit) => ({ number: { text: `~${trueMinus(Number(value.toPrecision(10)))}`, unit } });
+    const rough = (value, unit) => ({ number: { text: `~${trueMinus(value)}`, unit } });
+    const five = (value) => Number(value.toPrecision(5));
     if (series.state) {
       const { energy, slope } = stateAt(series.state, place);
-      return [...stateRich(series.state), ` at ${this.#ruleText()}: `, rough(energy, "cm-1"), ", slope ", rough(Number(slope.toPrecision(5)), "cm-1 T-1")];
+      // As fine as what the field does to the states of this panel.
+      const step = Math.max(...panel.series.flatMap(({ values }) => [values[0], values.at(-1)]).map((value) => Math.abs(value - panel.reference)));
+      const decimals = Math.min(Math.max(4 - Math.floor(Math.log10(step || 1)), 0), 12);
+      return [...stateRich(series.state), ` at ${this.#ruleText()}: `, rough(Number(energy.toFixed(decimals)), "cm-1"), ", slope ", rough(five(slope), "cm-1 T-1")];
     }
     const { row } = series;
     const value = (stateAt({ energies: series.values, slopes: series.slopes }, place).energy) * panel.factor;
-    return [...stateRich(series.lower), " – ", ...stateRich(series.upper), `, ${row.polarisation.replace("sigma", "σ").replace("pi", "π")}, at ${this.#ruleText()}: `, rough(Number(value.toPrecision(6)), this.#unit.name)];
+    return [...stateRich(series.lower), " – ", ...stateRich(series.upper), ", ", { sign: SIGNS[row.polarisation] }, `, at ${this.#ruleText()}: `, rough(five(value), this.#unit.name)];
   }
 
   /** How the run of the map stands, in its place. */

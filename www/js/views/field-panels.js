@@ -54,17 +54,16 @@ function byStretch(own) {
 }
 
 function statePanel(group, map, { name, energyFactor: factor }, crossings) {
-  const reference = zeroOf(group.map(({ state }) => state));
+  const { reference, rich: zero } = zeroOf(group.map(({ state }) => state));
   const levels = [...new Set(group.map(({ state }) => state.level))];
   const keys = [...new Set(group.map(({ state }) => groupKey(state)))];
   const inside = new Map(group.map(({ state }) => [state.name, state]));
   const spread = Math.max(...group.map(({ state }) => Math.max(...state.energies.map((energy) => Math.abs(energy - reference)))));
-  // What a centre of gravity leaves of nothing is rounding.
-  const from = Math.abs(reference) < 1e-9 * spread ? 0 : Number(reference.toPrecision(10));
+  const isZero = Math.abs(reference) < 1e-9 * spread;
   return {
     title: [
-      ...(levels.length === 1 ? [...richRuns(levelRich(group[0].state)), { text: ", E" }] : [{ text: "E" }]),
-      ...(from === 0 ? [] : [{ text: ` − ${trueMinus(String(from))}\u00a0cm` }, { up: "\u22121" }]), { text: " (" }, ...unitOf(name).runs, { text: ")" },
+      ...(levels.length === 1 ? [...richRuns(zero), { text: isZero ? ", E (" : ", E from the level (" }]
+        : isZero ? [{ text: "E (" }] : [{ text: "E from " }, ...richRuns(zero), { text: " (" }]), ...unitOf(name).runs, { text: ")" },
     ],
     factor, reference,
     series: group.map(({ state, at }) => {
@@ -125,6 +124,7 @@ function componentPanel(map, { name, offsetFactor: factor }, multipole, crossing
     };
   }).filter(({ shown }) => shown);
   const byName = new Map(series.map((each) => [`${each.upper.name} - ${each.lower.name}`, each]));
+  const of = (pair) => (byName.has(pair) ? [...stateRich(byName.get(pair).lower), " – ", ...stateRich(byName.get(pair).upper)] : [trueMinus(pair)]);
   return {
     title: [{ text: "Offset (" }, ...unitOf(name).runs, { text: ")" }], factor, reference: 0, series,
     signs: crossings.flatMap((crossing) => {
@@ -132,7 +132,7 @@ function componentPanel(map, { name, offsetFactor: factor }, multipole, crossing
       if (first === undefined) return [];
       return [{
         kind: crossing.kind, tesla: crossing.tesla, id: crossingId(crossing), ids: [], value: cubicAt(first.values, first.slopes, placeIn(map.tesla, crossing.tesla)),
-        reading: [`${kindWords(crossing.kind)}: ${crossing.first} and ${crossing.second} at `, { number: { text: String(crossing.tesla), unit: "T", kind: "computed" } }],
+        reading: [`${kindWords(crossing.kind)}: `, ...of(crossing.first), " and ", ...of(crossing.second), " at ", { number: { text: String(crossing.tesla), unit: "T", kind: "computed" } }],
       }];
     }),
   };
@@ -145,8 +145,9 @@ function rowOf(component, upper, lower) {
 // The lowest level without field: the mean over its states, where its nucleus takes nothing away.
 function zeroOf(states) {
   const levels = new Map();
-  for (const state of states) levels.set(state.level, [...(levels.get(state.level) ?? []), state.energies[0]]);
-  return Math.min(...[...levels.values()].map((energies) => energies.reduce((sum, energy) => sum + energy, 0) / energies.length));
+  for (const state of states) levels.set(state.level, [...(levels.get(state.level) ?? []), state]);
+  const means = [...levels.values()].map((own) => ({ rich: levelRich(own[0]), reference: own.reduce((sum, { energies }) => sum + energies[0], 0) / own.length }));
+  return means.reduce((least, each) => (each.reference < least.reference ? each : least));
 }
 
 function groupKey(state) {
@@ -156,7 +157,7 @@ function groupKey(state) {
 function groupRuns(state, levels) {
   const f = state.F === null || state.F === undefined ? [] : [{ text: `F ${state.F}` }];
   const level = levels > 1 ? richRuns(levelRich(state)) : [];
-  return [...level, ...(level.length > 0 && f.length > 0 ? [{ text: " " }] : []), ...f];
+  return [...(state.isotope ? [{ text: `${state.isotope} ` }] : []), ...level, ...(level.length > 0 && f.length > 0 ? [{ text: " " }] : []), ...f];
 }
 
 // Sixteen levels differ in dash or colour; farther ones begin again.

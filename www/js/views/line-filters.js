@@ -11,7 +11,7 @@ const LISTED = 400;
 /** Of more lines than these the forbidden ones wait until they are asked for. */
 const MANY = 2000;
 const MEASURES = [["intensity", "emitted intensity"], ["absorption", "absorption"], ["A", "A"], ["gf", "gf"]];
-const PARTS = [["0", "all"], ["0.1", "10 % of the strongest"], ["0.01", "1 %"], ["0.001", "0.1 %"], ["1e-4", "10⁻⁴"], ["1e-6", "10⁻⁶"]];
+const PARTS = [["0", "nothing"], ["0.1", "10 % of the strongest"], ["0.01", "1 %"], ["0.001", "0.1 %"], ["1e-4", "10⁻⁴"], ["1e-6", "10⁻⁶"]];
 
 /** `changed()` is called after every choice. */
 export class LineFilters {
@@ -31,9 +31,9 @@ export class LineFilters {
     const multipoles = ["E1", "M1", "E2"].filter((name) => lines.some((line) => line.multipole === name));
     const measures = MEASURES.filter(([key]) => lines.some((line) => typeof line[key] === "number"));
     this.measureBox = select(context, "lines:measure", "Strength by", measures, act);
-    this.least = select(context, "lines:least", "At least", PARTS, act);
+    this.least = select(context, "lines:least", "Leave out below", PARTS, act);
     this.multipole = select(context, "lines:multipole", "Multipole", [["", "all"], ...multipoles.map((name) => [name, name])], act, lines.length > MANY ? multipoles[0] : null);
-    this.lower = select(context, "lines:lower", "Lower level", this.#lowerOptions(), act);
+    this.lower = select(context, "lines:lower", "Ends on", this.#lowerOptions(), act);
     this.unit = select(context, "lines:unit", "Places in", Object.keys(this.units).map((key) => [key, key === "cm-1" ? "cm⁻¹" : key]), act);
     this.more = check(context, "lines:more", "More columns", act);
     this.inWindow = window ? check(context, "lines:window", `Only the window, ${window.lines} ${window.lines === 1 ? "line" : "lines"}`, act, true) : null;

@@ -5,7 +5,7 @@ import { trueMinus } from "../digits.js";
 import { element } from "../dom.js";
 import { fanLayout } from "../plot/fan.js";
 import { placeIn } from "../plot/hermite.js";
-import { OFFSET_UNITS, VIEWS, patternLayout } from "../plot/pattern.js";
+import { OFFSET_UNITS, SIGNS, VIEWS, patternLayout } from "../plot/pattern.js";
 import { picture } from "../plot/picture.js";
 import { richNode, richPlain, richRuns, richSpeech } from "../rich.js";
 import { facts } from "./chosen.js";
@@ -14,7 +14,7 @@ import { crossingId, kindWords, mapChoices } from "./field-panels.js";
 import { fold, pointerWords, select } from "./fold.js";
 import { componentId, idsOfComponent, stateId, stateRich } from "./splitting-names.js";
 import {
-  componentCrossingsTable, componentsTable, constantsTable, crossingsTable, fieldWords, isotopesTable, lineName, resonancesTable, statesTable,
+  componentCrossingsTable, componentsTable, constantsTable, crossingsTable, fieldWords, isotopesTable, lineName, resonancesTable, richOfLevels, seenWords, stateNames, statesTable,
 } from "./splitting-tables.js";
 import { componentsAt, offsetFactors, viewFactors } from "./sweep-values.js";
 import { kindOf } from "./working.js";
@@ -43,6 +43,7 @@ export class SplittingEvidence {
   #parts = element("div", { class: "parts" });
   #ruleBox;
   #pairOf = null;
+  #levelsOf = null;
 
   constructor(context) {
     this.#context = context;
@@ -65,6 +66,8 @@ export class SplittingEvidence {
   update(answer, { settings, sheet }) {
     this.#answer = answer;
     this.#settings = settings;
+    // The pictures keep this very object.
+    this.#context.settings = settings;
     this.#makeChoices();
     this.#sweep.answered(answer, sheet);
     this.#drawMap();
@@ -104,7 +107,8 @@ export class SplittingEvidence {
     const key = JSON.stringify([units, views, shows]);
     if (this.#choices.dataset.shown === key) return;
     this.#choices.dataset.shown = key;
-    const usual = nucleus !== null ? "ghz" : line !== null && line.of && line.of !== "level" ? "offset" : null;
+    // Whoever enters a wavelength asks for shifts of it.
+    const usual = line?.wavelength_kind === "entered" ? "pm" : nucleus !== null ? "ghz" : line !== null && line.of && line.of !== "level" ? "offset" : null;
     this.#unit = select(this.#context, "splitting:unit", "Offsets in", units, () => this.#chose(), usual);
     this.#view = select(this.#context, "splitting:view", "Strength seen", views, () => this.#chose());
     this.#show = shows.length > 1 ? select(this.#context, "splitting:map", "Map of", shows, () => this.#drawMap()) : null;
@@ -163,9 +167,21 @@ export class SplittingEvidence {
       name: ["Pattern", ...lineName(this.#answer), rough ? ` in about ${this.#sweep.textOf(this.#sweep.at)}, ${words}` : ` ${fieldWords(this.#answer)}, ${words}`],
       layout: patternLayout({
         components: rough ? this.#roughComponents() : components, unit, view, viewWords: words, rough,
+        levelOf: (label) => this.#levels().get(label) ?? [label], origin: this.#origin(),
         kindOf: (key) => kindOf(this.#answer, `components.${key}`), idsOf: (row) => idsOfComponent(row, this.#answer.line?.multipole ?? "E1"),
       }),
     });
+  }
+
+  #levels() {
+    if (this.#levelsOf?.answer !== this.#answer) this.#levelsOf = { answer: this.#answer, levels: richOfLevels(this.#answer) };
+    return this.#levelsOf.levels;
+  }
+
+  // Where offsets count from, by the wavelength that turns them into pm.
+  #origin() {
+    const nm = this.#answer.line?.wavelength_nm;
+    return typeof nm === "number" ? [{ text: "the line without field, " }, ...richRuns([{ number: { text: String(nm), unit: "nm" } }], this.#settings)] : [];
   }
 
   #noPattern() {
@@ -206,7 +222,7 @@ export class SplittingEvidence {
     if (this.#answer.components.length === 0) this.#components.replaceChildren();
     else {
       this.#components.replaceChildren(componentsTable(this.#answer, this.#tableContext, this.#unit.value(), this.#view.value()),
-        element("p", { class: "note copies-note", text: "Copies have the offsets in every unit." }));
+        element("p", { class: "note of-screen", text: "Copies have the offsets in every unit." }));
     }
   }
 
@@ -214,6 +230,7 @@ export class SplittingEvidence {
     const { line = null, linear = null, diamagnetic = null } = this.#answer;
     const kind = (key) => kindOf(this.#answer, key);
     this.#facts.replaceChildren(facts({ settings: this.#settings }, [
+      ["line without field, in vacuum", line?.wavelength_nm, "nm", kind("line.wavelength_nm")],
       ["g, upper", line?.g_upper, null, kind("line.g_upper")], ["g, lower", line?.g_lower, null, kind("line.g_lower")],
       ["g of the line", line?.g_effective, null, kind("line.g_effective") ?? "computed"],
       ["the linear pattern holds up to", linear?.departs_at, "T", kind("linear.departs_at") ?? "computed"],
@@ -266,18 +283,16 @@ export class SplittingEvidence {
 
   #ofComponent(row) {
     const kind = (key) => kindOf(this.#answer, `components.${key}`);
-    const end = (name) => {
-      const state = this.#answer.states.find((each) => each.name === name);
-      return state ? stateRich(state) : [name];
-    };
-    return [this.#head([...end(row.lower), " – ", ...end(row.upper), ` ${fieldWords(this.#answer)}`]), facts({ settings: this.#settings }, [
+    const end = stateNames(this.#answer);
+    return [this.#head([{ sign: SIGNS[row.polarisation] }, ", ", ...end(row.lower), " – ", ...end(row.upper), ` ${fieldWords(this.#answer)}`]), facts({ settings: this.#settings }, [
       ["offset", row.offset, "cm-1", kind("offset")], ["", row.ghz, "GHz", kind("ghz")], ["by the linear pattern", row.linear, "cm-1", kind("linear")],
       ["strength", row.strength, null, kind("strength")], ["seen", row.seen, null, kind("seen")],
     ])];
   }
 
   #ofCrossing(row) {
-    return [this.#head([`${kindWords(row.kind)}: ${row.first}${row.second ? ` and ${row.second}` : ""}`]), facts({ settings: this.#settings }, [
+    const name = stateNames(this.#answer);
+    return [this.#head([`${kindWords(row.kind)}: `, ...name(row.first), ...(row.second ? [" and ", ...name(row.second)] : [])]), facts({ settings: this.#settings }, [
       ["field", row.tesla, "T", "computed"], ["energy", row.energy, "cm-1", "computed"], ["gap", row.gap, "cm-1", "computed"], ["frequency", row.mhz, "MHz", "computed"],
     ]), element("button", { type: "button", class: "action", text: "Put the rule there", on: { click: () => {
       this.#sweep.move(row.tesla);
@@ -291,10 +306,3 @@ function leftOut(count) {
   return count > 0 ? element("p", { class: "note", text: `${count} more are left out. A line between two levels, or a lower end of the map, has fewer.` }) : null;
 }
 
-/** How the sheet looks at it, in words. */
-function seenWords(field) {
-  if (field === null) return "over all directions";
-  const { angle_degrees: angle, view, polariser = null } = field;
-  const where = angle === null || angle === undefined ? view ?? "across the field" : angle === 90 ? "across the field" : angle === 0 ? "along the field" : `at ${angle}° to the field`;
-  return polariser ? `${where}, ${polariser}` : where;
-}

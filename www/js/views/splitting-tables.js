@@ -1,6 +1,7 @@
 // The tables of How does it split?: components, states, crossings, resonances, constants.
 
 import { SIGNS, OFFSET_UNITS } from "../plot/pattern.js";
+import { trueMinus } from "../digits.js";
 import { dataTable } from "../table.js";
 import { crossingId, crossingWords, kindWords } from "./field-panels.js";
 import { PROJECTIONS, componentConcerned, componentId, levelRich, stateId, stateRich } from "./splitting-names.js";
@@ -41,7 +42,7 @@ export function componentsTable(answer, context, unit, view) {
     { name: `M ${side}`, type: "half", value: (row) => row[`M_${side}`] },
   ];
   return dataTable({
-    caption: ["Components", ...lineName(answer), ` ${fieldWords(answer)}: ${answer.pattern}`], rows: components, context, sorting: sortings.components,
+    caption: ["Components", ...lineName(answer), ` ${fieldWords(answer)}; seen ${seenWords(answer.field ?? null)}: ${answer.pattern}`], rows: components, context, sorting: sortings.components,
     file: `pattern ${answer.line ? `${answer.line.upper} to ${answer.line.lower} ` : ""}${answer.field?.text ?? ""}`,
     columns: [
       { name: "polarisation", type: "text", value: (row) => SIGNS[row.polarisation].plain, rich: (row) => [{ sign: SIGNS[row.polarisation] }] },
@@ -79,6 +80,14 @@ export function fieldWords({ field = null }) {
   return field === null || field.tesla === 0 ? "without field" : `in ${field.text}`;
 }
 
+/** How the sheet looks at it, in words. */
+export function seenWords(field) {
+  if (field === null) return "over all directions";
+  const { angle_degrees: angle, polariser = null } = field;
+  const where = angle === 90 ? "across the field" : angle === 0 ? "along the field" : `at ${Number(angle.toFixed(6))}° to the field`;
+  return polariser ? `${where}, ${polariser}` : where;
+}
+
 export function statesTable(answer, context) {
   const { states } = answer;
   const levels = richOfLevels(answer);
@@ -86,8 +95,8 @@ export function statesTable(answer, context) {
   return dataTable({
     caption: `States ${fieldWords(answer)}`, rows: states, context, file: `states ${answer.field?.text ?? ""}`, sorting: sortings.states,
     columns: [
-      { name: "level", type: "text", value: (row) => row.level, rich: (row) => levels.get(row.level) ?? [row.level] },
-      has(states, "isotope") && { name: "isotope", type: "text", value: (row) => row.isotope },
+      // Rows of several isotopes are told apart by their heads.
+      { name: "level", type: "text", value: (row) => (row.isotope ? `${row.isotope} ${row.level}` : row.level), rich: (row) => [...(row.isotope ? [`${row.isotope} `] : []), ...levels.get(row.level) ?? [row.level]] },
       has(states, "F") && { name: "F", type: "half", value: (row) => row.F },
       ...Object.entries(PROJECTIONS).map(([key, sign]) => has(states, key) && { name: key, head: [{ sign }], type: "half", value: (row) => row[key] }),
       { name: "M", type: "half", value: (row) => row.M },
@@ -101,11 +110,16 @@ function lineHas(chosen, level) {
   return chosen.slice("line:".length).split("/").length > 0 && (chosen.startsWith(`line:${level}/`) || chosen.includes(`/${level}/`));
 }
 
-// Names of states, and of components by their two states, as they are read.
-function namesIn(answer) {
+/** Names of states, and of components by their two states, as they are read: name → rich text. */
+export function stateNames(answer) {
   const states = new Map(answer.states.map((state) => [state.name, state]));
-  const one = (name) => (states.has(name) ? stateRich(states.get(name)) : [name]);
-  return (key) => ({ name: key, type: "text", value: (row) => row[key], rich: (row) => row[key].split(" - ").flatMap((name, i) => (i === 0 ? one(name) : [" – ", ...one(name)])) });
+  const one = (name) => (states.has(name) ? stateRich(states.get(name)) : [trueMinus(name)]);
+  return (names) => names.split(" - ").flatMap((name, i) => (i === 0 ? one(name) : [" – ", ...one(name)]));
+}
+
+function namesIn(answer) {
+  const rich = stateNames(answer);
+  return (key) => ({ name: key, type: "text", value: (row) => row[key], rich: (row) => rich(row[key]) });
 }
 
 export function crossingsTable(rows, answer, context, name) {
@@ -183,7 +197,7 @@ export function isotopesTable(answer, context) {
       { name: "isotope", type: "text", value: (row) => row.isotope },
       { name: "share of the light", unit: "%", type: "number", kind: (row) => row.kind, value: (row) => row.share },
       { name: "I", type: "half", value: (row) => row.spin, reason: "the table has no spin for it" },
-      { name: "shift", unit: "MHz", type: "number", kind: "entered", value: (row) => row.shift_MHz },
+      { name: "shift", unit: "MHz", type: "number", kind: (row) => (row.shift_MHz === 0 ? null : "entered"), value: (row) => row.shift_MHz },
     ],
   });
 }
