@@ -4,7 +4,7 @@ use super::document::Document;
 use super::nucleus::Nuclear;
 use super::rich::Kind;
 use super::splitting_rows::{ConstantRow, IsotopeRow, NucleusRow};
-use super::splitting_sets::Prepared;
+use super::splitting_sets::{Found, Prepared};
 
 /// The nucleus, unless there are several isotopes.
 pub fn nucleus_row(document: &Document, ready: &Prepared) -> Option<NucleusRow> {
@@ -24,6 +24,7 @@ pub fn nucleus_row(document: &Document, ready: &Prepared) -> Option<NucleusRow> 
                 b: Some(level.b),
                 kind: "entered",
                 scaled: false,
+                estimated: None,
             }],
         });
     }
@@ -58,20 +59,22 @@ fn constant_rows(ready: &Prepared, nuclear: &Nuclear) -> Vec<ConstantRow> {
     levels
         .filter(|level| !with_line || level.is_upper || level.is_lower)
         .filter_map(|level| {
-            let of = level.of.as_ref()?;
-            let a = Nuclear::constant(&nuclear.dipole, of);
-            let b = Nuclear::constant(&nuclear.quadrupole, of);
+            level.of.as_ref()?;
+            let [a, b] = level.constants(nuclear);
+            let estimated = |c: Option<Found>| c.is_some_and(|c| c.estimated);
             Some(ConstantRow {
                 label: level.label.clone(),
                 rich: level.rich.clone(),
                 a: a.map(|c| c.value),
                 b: b.map(|c| c.value),
-                kind: match a.or(b) {
-                    None => "zero",
-                    Some(c) if c.scaled => "computed",
-                    Some(_) => "entered",
-                },
+                kind: a.or(b).map_or("zero", |c| c.kind),
                 scaled: a.or(b).is_some_and(|c| c.scaled),
+                estimated: match (estimated(a), estimated(b)) {
+                    (true, true) => Some("A, B"),
+                    (true, false) => Some("A"),
+                    (false, true) => Some("B"),
+                    _ => None,
+                },
             })
         })
         .collect()

@@ -5,7 +5,9 @@ use crate::numerics::sorted_map::SortedMap;
 use super::document::Document;
 use super::rich::{Kind, Rich};
 use super::splitting_pattern::bright;
-use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, StateRow};
+use super::splitting_rows::{
+    ComponentRow, DiamagneticRow, EstimateRow, LineOf, LinearRow, StateRow,
+};
 use super::splitting_searched::Searched;
 use super::splitting_sets::Prepared;
 
@@ -22,6 +24,7 @@ pub struct Told<'a> {
     pub linear: Option<&'a LinearRow>,
     pub searched: &'a Searched,
     pub diamagnetic: Option<&'a DiamagneticRow>,
+    pub estimate: Option<&'a EstimateRow>,
 }
 
 impl Told<'_> {
@@ -58,6 +61,10 @@ pub fn sentence(told: &Told) -> Rich {
         _ if !told.has_spin() => String::new(),
         0 | 1 => " with its nucleus".to_owned(),
         many => format!(" of {many} isotopes"),
+    };
+    let with = match told.estimate {
+        Some(row) if row.included => format!("{with} (A and B estimated)"),
+        _ => with,
     };
     let Some(line) = told.line else {
         let shifts = told.states.iter().map(|s| s.shift);

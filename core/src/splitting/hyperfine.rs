@@ -94,7 +94,9 @@ pub fn of_parity(spectrum: &Spectrum, parity: &Parity) -> Result<Vec<Unit>, Prob
         if values.iter().all(|value| value.abs() < ZERO) {
             continue;
         }
-        let of_levels = diagonal(&parity.levels, |rows| operator.elements(&values, rows, rows));
+        let of_levels = diagonal(&parity.levels, |rows| {
+            operator.elements(&values, rows, rows)
+        });
         for ((level, sum), value) in (parity.levels.levels.iter().zip(&mut sums)).zip(of_levels) {
             match rank {
                 1 => sum.a += dipole(level.two_j, value),
@@ -201,7 +203,9 @@ pub fn one_electron(z: u8, mass: f64, orbital: Orbital, j: TwiceJ) -> Result<Uni
     let reduced = 1.0 / (recoil * recoil * recoil);
     let inverse = match orbital.l() {
         0 => 0.0,
-        _ => Hydrogenic::new(orbital, z.into())?.expectation(-3)?.unwrap_or(0.0),
+        _ => Hydrogenic::new(orbital, z.into())?
+            .expectation(-3)?
+            .unwrap_or(0.0),
     };
     Ok(Unit {
         a: MAGNETIC * radial * (orbit + spin) * reduced,

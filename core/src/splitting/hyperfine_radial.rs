@@ -40,6 +40,8 @@ pub struct Functions {
     l: u8,
     own: Vec<Function>,
     overlap: f64,
+    /// Whether small components have densities.
+    relative: bool,
 }
 
 /// The κ of ℓ: j = ℓ − ½ first.
@@ -74,13 +76,18 @@ impl Functions {
                 own.iter_mut().for_each(|c| *c *= scale);
                 scale.is_finite().then_some(own)
             });
-            let coefficients = turned.as_deref().unwrap_or(&orbital.coefficients);
-            Function::new(&run.mesh, coefficients, kappa, orbital, relative)
+            let coefficients = match turned {
+                Some(turned) => turned,
+                None if relative => orthogonal(run, orbital, kappa),
+                None => orbital.coefficients.clone(),
+            };
+            Function::new(&run.mesh, &coefficients, kappa, orbital, relative)
         });
         Some(Functions {
             l,
             own: own.collect(),
             overlap: 1.0,
+            relative,
         })
     }
 
@@ -105,6 +112,7 @@ impl Functions {
             l,
             own: own.collect(),
             overlap,
+            relative: from.atom.relativity,
         })
     }
 }
@@ -119,10 +127,7 @@ impl Function {
         relative: bool,
     ) -> Function {
         let mut p = mesh.sample(mesh.values(), coefficients);
-        let mut small = mesh.sample(&mesh.slopes_with(kappa.into()), coefficients);
-        for (small, mass) in small.iter_mut().zip(&orbital.inverse_mass) {
-            *small *= mass;
-        }
+        let mut small = small(mesh, coefficients, kappa, orbital);
         if relative {
             let of = |f: &[f64]| mesh.integral(f.iter().map(|f| f * f));
             let large = of(&p);
@@ -131,6 +136,40 @@ impl Function {
         }
         Function { kappa, p, small }
     }
+}
+
+/// S(P′ + κP/r).
+fn small(mesh: &Mesh, coefficients: &[f64], kappa: i32, orbital: &RadialOrbital) -> Vec<f64> {
+    let mut small = mesh.sample(&mesh.slopes_with(kappa.into()), coefficients);
+    for (small, mass) in small.iter_mut().zip(&orbital.inverse_mass) {
+        *small *= mass;
+    }
+    small
+}
+
+/// An orbital made orthogonal to those below it with their small components.
+///
+/// The run has ∫ P P_b dr = 0 in place of ∫ (P P_b + small components) dr = 0, and so too much of the inner
+/// functions at the nucleus: 9 % of the density of Cs 6s.
+fn orthogonal(run: &Solution, orbital: &RadialOrbital, kappa: i32) -> Vec<f64> {
+    let mesh = &run.mesh;
+    let own = small(mesh, &orbital.coefficients, kappa, orbital);
+    let mut coefficients = orbital.coefficients.clone();
+    for below in &run.orbitals {
+        if below.orbital.l() != orbital.orbital.l() || below.orbital.n() >= orbital.orbital.n() {
+            continue;
+        }
+        let inner = small(mesh, &below.coefficients, kappa, below);
+        let with = |f: &[f64]| {
+            let parts = inner.iter().zip(f);
+            QUARTER_ALPHA_SQUARED * mesh.integral(parts.map(|(a, b)| a * b))
+        };
+        let share = with(&own) / (1.0 + with(&inner));
+        for (c, b) in coefficients.iter_mut().zip(&below.coefficients) {
+            *c -= share * b;
+        }
+    }
+    coefficients
 }
 
 /// (α/2)².
@@ -209,13 +248,17 @@ pub fn elements(mesh: &Mesh, a: &Functions, c: &Functions, rank: u8) -> Vec<Elem
             let radial = if rank == 1 {
                 let sum = f64::from(bra.kappa + ket.kappa);
                 -0.5 * sum
-                    * mesh.integral(
-                        parts.map(|(((p, s), (p2, s2)), r)| (p * s2 + s * p2) / (r * r)),
-                    )
+                    * mesh
+                        .integral(parts.map(|(((p, s), (p2, s2)), r)| (p * s2 + s * p2) / (r * r)))
             } else {
-                mesh.integral(parts.map(|(((p, s), (p2, s2)), r)| {
-                    (p * p2 + QUARTER_ALPHA_SQUARED * s * s2) / (r * r * r)
-                }))
+                let share = if a.relative {
+                    QUARTER_ALPHA_SQUARED
+                } else {
+                    0.0
+                };
+                mesh.integral(
+                    parts.map(|(((p, s), (p2, s2)), r)| (p * p2 + share * s * s2) / (r * r * r)),
+                )
             };
             found.push(Element {
                 two_j,

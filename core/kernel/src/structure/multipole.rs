@@ -212,7 +212,9 @@ impl Multipole {
             } else {
                 let Ranks { spin, orbital } = self.ranks;
                 let two_sp = ket.two_s;
-                symbols.step([two_s, two_sp, spin, two_l, two_lp, orbital, two_j, two_jp, two_k])
+                symbols.step([
+                    two_s, two_sp, spin, two_l, two_lp, orbital, two_j, two_jp, two_k,
+                ])
             };
             if factor == 0.0 {
                 continue;
