@@ -5,8 +5,10 @@ use rungline_core::elements::isotope;
 use rungline_core::numerics::order::sort_by;
 use rungline_core::quantity::TwiceJ;
 use rungline_core::radial::hartree_fock::{Atom, Polarisation, polarisability};
+use rungline_core::radial::hydrogenic::Hydrogenic;
 use rungline_core::sheet::splitting_estimated::{OFF, POLARISED, PUBLISHED};
 use rungline_core::splitting::hyperfine::{Unit, of_parity, one_electron};
+use rungline_core::splitting::hyperfine_radial::{Functions, elements};
 use rungline_core::splitting::in_field::MHZ_PER_WAVENUMBER;
 use rungline_core::structure::model::{Case, Scale, Spectrum};
 use rungline_tests::model::{case, field, orbital, spectrum};
@@ -439,7 +441,7 @@ fn open_shells_add_up_where_one_determinant_is_all() {
 #[test]
 fn a_sheet_estimates_what_is_not_entered() {
     let sheet = |nucleus: Value| {
-        json!({"species": "87Rb", "configurations": ["5s", "5p"], "nucleus": nucleus,
+        json!({"rungline": 1, "species": "87Rb", "configurations": ["5s", "5p"], "nucleus": nucleus,
                "line": {"upper": "5p 2P3/2", "lower": "5s 2S1/2"}})
     };
     let off = answer(&sheet(json!({})), "splitting");
@@ -498,7 +500,7 @@ fn a_sheet_estimates_what_is_not_entered() {
     let levels = rows(&typed["nucleus"], "levels");
     assert!(levels.iter().all(|l| l["estimated"] == "A"));
     // Every isotope of a mixture, each with its own moment.
-    let mixture = json!({"species": "Rb", "configurations": ["5s"], "nucleus": {"estimate": true, "spin": "3/2"},
+    let mixture = json!({"rungline": 1, "species": "Rb", "configurations": ["5s"], "nucleus": {"estimate": true, "spin": "3/2"},
         "isotopes": [{"isotope": "85Rb"}, {"isotope": "87Rb"}]});
     let mixed = answer(&mixture, "splitting");
     let of = |place: usize| number(&mixed["isotopes"][place]["levels"][0], "A_MHz");
@@ -509,24 +511,79 @@ fn a_sheet_estimates_what_is_not_entered() {
 
 #[test]
 fn hydrogen_in_a_sheet_has_its_hyperfine_structure() {
-    let sheet = json!({"species": "1H", "configurations": ["1s"], "nucleus": {"estimate": true}});
+    let sheet = json!({"rungline": 1, "species": "1H", "configurations": ["1s"], "nucleus": {"estimate": true}});
     let found = answer(&sheet, "splitting");
     let a = number(&found["nucleus"]["levels"][0], "A_MHz");
     assert!((a - 1420.4).abs() < 0.2, "{a}");
 }
 
 #[test]
+fn elements_between_configurations_are_those_of_hydrogen() {
+    let all = case(7, 15, 0, &["1s", "3s", "3d"]);
+    let spectrum = spectrum(&plain(all));
+    let run = |place| spectrum.run(place).expect("radial functions");
+    let left = Functions::of(run(0), orbital("1s")).expect("occupied");
+    // √(3/2) (2/3) R R at the nucleus, R = 2 (Z/n)^(3/2) for s.
+    let with = Functions::beside((run(0), orbital("1s")), (run(1), orbital("3s"))).expect("a jump");
+    let found = elements(&run(0).mesh, &left, &with, 1);
+    let exact = f64::sqrt(1.5) * 2.0 / 3.0 * 4.0 * f64::powf(7.0 * 7.0 / 3.0, 1.5);
+    let mut worst = (found[0].value / exact - 1.0).abs();
+    // ∫ R R r² r⁻³ dr of 1s and 3d, by the trapezium rule.
+    let one = Hydrogenic::new(orbital("1s"), 7.0).expect("1s");
+    let other = Hydrogenic::new(orbital("3d"), 7.0).expect("3d");
+    let step = 1e-4;
+    let integral: f64 = (1..100_000)
+        .map(|i| f64::from(i) * step)
+        .map(|r| step * one.radial(r) * other.radial(r) / r)
+        .sum();
+    let with = Functions::beside((run(0), orbital("1s")), (run(2), orbital("3d"))).expect("a jump");
+    // |⟨½‖C²‖j⟩|² over both j is 2 |⟨0‖C²‖2⟩|² = 2; each j has its share (2j+1)/10.
+    for element in elements(&run(0).mesh, &left, &with, 2) {
+        let share = f64::from(element.two_jp + 1) / 10.0 * 2.0;
+        let off = element.value * element.value / (share * integral * integral) - 1.0;
+        worst = worst.max(off.abs());
+    }
+    report(
+        "splitting_estimates_between",
+        Row {
+            quantity: "contact and quadrupole elements between 1s and 3s, 3d of one electron"
+                .into(),
+            cases: 3,
+            worst,
+            tolerance: 1e-6,
+            measure: "relative".into(),
+            source: "closed forms of hydrogenic functions".into(),
+        },
+    );
+}
+
+#[test]
 fn without_radial_functions_there_is_a_way_out() {
-    for sheet in [
-        json!({"species": "*", "configurations": ["3p"], "structure": {"given": {"zeta(3p)": "11.5 cm-1"}},
-            "nucleus": {"spin": "3/2", "g_I": "1.5", "estimate": true}}),
-        json!({"species": "23Na", "configurations": ["3p"], "structure": {"energies": "given"},
-            "nucleus": {"estimate": true}}),
-        json!({"level": {"J": "1/2", "g": "2", "I": "3/2"}, "nucleus": {"estimate": true},
-            "field": {"flux_density": "1 mT"}}),
-    ] {
+    let asked = |sheet: Value| -> Value {
         let json = serde_json::from_value(sheet).expect("a sheet");
         let text = rungline_core::sheet::answer_message(&json, "splitting");
-        println!("{}", &text[..text.len().min(1500)]);
+        serde_json::from_str(&text).expect("JSON")
+    };
+    for sheet in [
+        json!({"rungline": 1, "species": "*", "configurations": ["3p"],
+            "structure": {"given": {"zeta(3p)": "11.5 cm-1"}},
+            "nucleus": {"spin": "3/2", "g_I": "1.5", "estimate": true}}),
+        json!({"rungline": 1, "species": "23Na", "configurations": ["3p"], "structure": {"energies": "given"},
+            "nucleus": {"estimate": true}}),
+    ] {
+        let found = asked(sheet);
+        let fault = &found["faults"][0];
+        assert_eq!(fault["code"], "no-radial-functions", "{found}");
+        assert_eq!(fault["path"], "/nucleus/estimate");
+        assert_eq!(fault["ways"][0]["replacement"], "false");
     }
+    let alone = asked(
+        json!({"rungline": 1, "level": {"J": "1/2", "g": "2", "I": "3/2"},
+        "nucleus": {"estimate": true}, "field": {"flux_density": "1 mT"}}),
+    );
+    let limits = alone["answer"]["limits"].to_string();
+    assert!(
+        limits.contains("a level alone are those entered"),
+        "{limits}"
+    );
 }

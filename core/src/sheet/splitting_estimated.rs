@@ -16,7 +16,7 @@ pub const OFF: [u32; 4] = [21, 92, 21, 53];
 pub const PUBLISHED: [usize; 2] = [39, 12];
 
 /// Median departures of A of one electron outside full shells, percent: without core polarisation, and with it.
-pub const POLARISED: [u32; 2] = [35, 20];
+pub const POLARISED: [u32; 2] = [35, 19];
 
 /// Whether some constant of this nucleus is an estimate.
 pub fn is_estimated(ready: &Prepared, nuclear: &Nuclear) -> bool {
@@ -66,7 +66,7 @@ fn could_be(document: &Document, ready: &Prepared) -> bool {
 }
 
 /// What estimates leave out, and what is not estimated.
-pub fn limits(document: &Document, ready: &Prepared, row: Option<&EstimateRow>) -> Vec<String> {
+pub fn limits(document: &Document, row: Option<&EstimateRow>) -> Vec<String> {
     let mut limits = Vec::new();
     if let Some(EstimateRow {
         included: true,

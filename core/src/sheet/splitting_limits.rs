@@ -60,7 +60,7 @@ pub fn limits(told: &Told) -> Vec<String> {
         limits.push("Components below 1 % of the strongest are listed, but neither the largest offset nor the groups in the sentence count them.".to_owned());
     }
     limits.extend(of_nuclei(told));
-    limits.extend(splitting_estimated::limits(document, ready, told.estimate));
+    limits.extend(splitting_estimated::limits(document, told.estimate));
     limits.extend(told.searched.missing.clone());
     let each = told.components.len() / ready.passes.len().max(1);
     if !told.searched.component_crossings.is_empty() && each > MOST_COMPONENTS {
