@@ -107,6 +107,12 @@ pub fn manifold(
     Ok((if with_diamagnetic { with } else { plain }, Ok(size)))
 }
 
+/// A fault of estimates, at the key that asks for them.
+#[inline(never)]
+pub fn no_estimate(problem: Problem) -> Problem {
+    problem.way("Leave it out", "false").at("/nucleus/estimate")
+}
+
 /// A and B of a unit nucleus of every level, by its place in the parity.
 ///
 /// # Errors
@@ -131,7 +137,7 @@ pub fn units(solved: &Solved, parity: usize, levels: &mut [SetLevel]) -> Result<
             levels.iter().map(of).collect()
         }
     };
-    let found = found.map_err(|p| p.way("Leave it out", "false").at("/nucleus/estimate"))?;
+    let found = found.map_err(no_estimate)?;
     for (level, unit) in levels.iter_mut().zip(found) {
         level.unit = Some(unit);
     }

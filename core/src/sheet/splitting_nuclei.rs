@@ -4,7 +4,7 @@ use super::document::Document;
 use super::nucleus::Nuclear;
 use super::rich::Kind;
 use super::splitting_rows::{ConstantRow, IsotopeRow, NucleusRow};
-use super::splitting_sets::{Found, Prepared};
+use super::splitting_sets::Prepared;
 
 /// The nucleus, unless there are several isotopes.
 pub fn nucleus_row(document: &Document, ready: &Prepared) -> Option<NucleusRow> {
@@ -61,18 +61,21 @@ fn constant_rows(ready: &Prepared, nuclear: &Nuclear) -> Vec<ConstantRow> {
         .filter_map(|level| {
             level.of.as_ref()?;
             let [a, b] = level.constants(nuclear);
-            let estimated = |c: Option<Found>| c.is_some_and(|c| c.estimated);
             Some(ConstantRow {
                 label: level.label.clone(),
                 rich: level.rich.clone(),
                 a: a.map(|c| c.value),
                 b: b.map(|c| c.value),
-                kind: a.or(b).map_or("zero", |c| c.kind),
+                kind: match a.or(b) {
+                    None => "zero",
+                    Some(c) if c.scaled || c.estimated => "computed",
+                    Some(_) => "entered",
+                },
                 scaled: a.or(b).is_some_and(|c| c.scaled),
-                estimated: match (estimated(a), estimated(b)) {
-                    (true, true) => Some("A, B"),
-                    (true, false) => Some("A"),
-                    (false, true) => Some("B"),
+                estimated: match [a, b].map(|c| c.is_some_and(|c| c.estimated)) {
+                    [true, true] => Some("A, B"),
+                    [true, false] => Some("A"),
+                    [false, true] => Some("B"),
                     _ => None,
                 },
             })

@@ -173,7 +173,7 @@ pub struct ConstantRow {
 pub struct EstimateRow {
     pub included: bool,
     /// How far off they usually are.
-    pub say: String,
+    pub say: &'static str,
     /// How to put them in.
     pub way: Option<Way>,
 }

@@ -7,7 +7,7 @@ use std::rc::Rc;
 use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
-use crate::splitting::hyperfine::Unit;
+use crate::splitting::hyperfine::{self, Unit};
 use crate::splitting::in_field::{
     Components, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus, Size, Split,
 };
@@ -22,7 +22,7 @@ use super::placed::Placed;
 use super::rich::Rich;
 use super::solved::{Solved, solved};
 use super::splitting_joins::{Join, joins};
-use super::splitting_manifolds::{manifold, parities, set_level, small_enough, units};
+use super::splitting_manifolds::{manifold, no_estimate, parities, set_level, small_enough, units};
 use super::splitting_searched::{Range, Searched};
 use super::watch::Watch;
 
@@ -63,22 +63,26 @@ impl SetLevel {
 
     /// A and B in MHz: estimated where they are not entered; nothing where neither is known.
     pub fn constants(&self, nuclear: &Nuclear) -> [Option<Found>; 2] {
-        let of = |constants| Nuclear::constant(constants, self.of.as_ref()?).map(Found::of);
-        let quadrupole = nuclear.isotope.and_then(|i| i.quadrupole);
         let least = nuclear.two_i().min(self.j.doubled());
-        let estimated = |moment: Option<f64>, per: fn(Unit) -> f64| {
-            Some(Found {
-                value: moment? * per(self.unit?),
-                kind: "computed",
+        let find = |rank: i32, constants: &[Constant], moment: Option<f64>, unit: Option<f64>| {
+            if let Some(known) = Nuclear::constant(constants, self.of.as_ref()?) {
+                return Some(Found {
+                    value: known.value,
+                    scaled: known.scaled,
+                    estimated: false,
+                });
+            }
+            (least >= rank).then_some(Found {
+                value: moment? * unit?,
                 scaled: false,
                 estimated: true,
             })
         };
-        let a = || estimated(nuclear.g.filter(|_| least >= 1), |unit| unit.a);
-        let b = || estimated(quadrupole.filter(|_| least >= 2), |unit| unit.b);
+        let (a, b) = self.unit.map(|unit| (unit.a, unit.b)).unzip();
+        let q = nuclear.isotope.and_then(|i| i.quadrupole);
         [
-            of(&nuclear.dipole).or_else(a),
-            of(&nuclear.quadrupole).or_else(b),
+            find(1, &nuclear.dipole, nuclear.g, a),
+            find(2, &nuclear.quadrupole, q, b),
         ]
     }
 }
@@ -87,25 +91,9 @@ impl SetLevel {
 #[derive(Clone, Copy, Debug)]
 pub struct Found {
     pub value: f64,
-    pub kind: &'static str,
     /// Whether it is another isotope's, scaled.
     pub scaled: bool,
     pub estimated: bool,
-}
-
-impl Found {
-    fn of(constant: &Constant) -> Found {
-        Found {
-            value: constant.value,
-            kind: if constant.scaled {
-                "computed"
-            } else {
-                "entered"
-            },
-            scaled: constant.scaled,
-            estimated: false,
-        }
-    }
 }
 
 /// Levels of one parity, or a level alone.
@@ -237,6 +225,9 @@ pub fn prepared(document: &Document, watch: &mut Watch) -> Result<Rc<Prepared>, 
 }
 
 fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, Problem> {
+    if document.estimate {
+        return Err(no_estimate(hyperfine::without_functions()));
+    }
     let j = level.j.unwrap_or_default();
     let manifold =
         Manifold::alone(j.doubled(), 0.0, level.g.unwrap_or(0.0)).map_err(|p| p.at("/level/J"))?;
@@ -453,14 +444,18 @@ fn pass(
 
 /// A nucleus with the constants of a set's levels.
 fn nucleus(nuclear: &Nuclear, set: &Set) -> Nucleus {
-    let value = |found: Option<Found>| found.map_or(0.0, |c| c.value / MHZ_PER_WAVENUMBER);
-    let levels = set.levels.iter().map(|level| level.constants(nuclear));
-    let (dipole, quadrupole) = levels.map(|[a, b]| (value(a), value(b))).unzip();
+    let mut found = [Vec::new(), Vec::new()];
+    for level in &set.levels {
+        for (list, constant) in found.iter_mut().zip(level.constants(nuclear)) {
+            list.push(constant.map_or(0.0, |c| c.value / MHZ_PER_WAVENUMBER));
+        }
+    }
+    let [magnetic_dipole, electric_quadrupole] = found;
     Nucleus {
         two_i: nuclear.two_i(),
         g_i: nuclear.g.unwrap_or(0.0),
-        magnetic_dipole: dipole,
-        electric_quadrupole: quadrupole,
+        magnetic_dipole,
+        electric_quadrupole,
     }
 }
 

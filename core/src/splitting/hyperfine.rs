@@ -162,10 +162,12 @@ fn of_transfer(
     }))
 }
 
-fn without_functions() -> Problem {
+/// Where nothing can be estimated.
+#[inline(never)]
+pub fn without_functions() -> Problem {
     Problem::new(
         "no-radial-functions",
-        "A and B are estimated from radial functions, and these energies are given without them.",
+        "A and B are estimated from radial functions, which given energies and a level alone do not have.",
         0,
         0,
     )

@@ -55,37 +55,65 @@ fn two_j(kappa: i32) -> i32 {
     2 * kappa.abs() - 1
 }
 
+/// ∫ f g r⁻ᵏ dr.
+fn integral(mesh: &Mesh, f: &[f64], g: &[f64], k: u32) -> f64 {
+    let mut sum = 0.0;
+    for ((f, g), (w, r)) in f.iter().zip(g).zip(mesh.weights().iter().zip(mesh.radii())) {
+        let mut term = w * f * g;
+        for _ in 0..k {
+            term /= r;
+        }
+        sum += term;
+    }
+    sum
+}
+
+fn multiply(f: &mut [f64], factor: f64) {
+    for f in f {
+        *f *= factor;
+    }
+}
+
 impl Functions {
     /// Of an orbital of a run; nothing where it is not occupied.
     pub fn of(run: &Solution, orbital: Orbital) -> Option<Functions> {
         let orbital = run.orbital(orbital)?;
         let l = orbital.orbital.l();
         let relative = run.atom.relativity;
-        let scalar = |coefficients: &[f64]| {
+        let inverse_cube = |coefficients: &[f64]| {
             let p = run.mesh.sample(run.mesh.values(), coefficients);
-            let parts = p.iter().zip(run.mesh.radii());
-            run.mesh.integral(parts.map(|(p, r)| p * p / (r * r * r)))
+            integral(&run.mesh, &p, &p, 3)
         };
-        let average = (relative && l > 0)
-            .then(|| in_field(run, orbital, None))
-            .flatten();
-        let own = kappas(l).into_iter().map(|kappa| {
-            let turned = average.as_ref().and_then(|average| {
-                let mut own = in_field(run, orbital, Some(kappa))?;
-                let scale = (scalar(&orbital.coefficients) / scalar(average)).sqrt();
-                own.iter_mut().for_each(|c| *c *= scale);
-                scale.is_finite().then_some(own)
-            });
-            let coefficients = match turned {
-                Some(turned) => turned,
-                None if relative => orthogonal(run, orbital, kappa),
-                None => orbital.coefficients.clone(),
+        let mut own = Vec::new();
+        let average = match (relative, l) {
+            (true, 1..) => in_field(run, orbital, None),
+            _ => None,
+        };
+        for kappa in kappas(l) {
+            let turned = match &average {
+                Some(_) => in_field(run, orbital, Some(kappa)),
+                None => None,
             };
-            Function::new(&run.mesh, &coefficients, kappa, orbital, relative)
-        });
+            let coefficients = match (turned, &average) {
+                (Some(mut turned), Some(average)) => {
+                    let share = inverse_cube(&orbital.coefficients) / inverse_cube(average);
+                    multiply(&mut turned, share.sqrt());
+                    turned
+                }
+                _ if relative => orthogonal(run, orbital, kappa),
+                _ => orbital.coefficients.clone(),
+            };
+            own.push(Function::new(
+                &run.mesh,
+                &coefficients,
+                kappa,
+                orbital,
+                relative,
+            ));
+        }
         Some(Functions {
             l,
-            own: own.collect(),
+            own,
             overlap: 1.0,
             relative,
         })
@@ -129,10 +157,11 @@ impl Function {
         let mut p = mesh.sample(mesh.values(), coefficients);
         let mut small = small(mesh, coefficients, kappa, orbital);
         if relative {
-            let of = |f: &[f64]| mesh.integral(f.iter().map(|f| f * f));
-            let large = of(&p);
-            let scale = (large / (large + QUARTER_ALPHA_SQUARED * of(&small))).sqrt();
-            p.iter_mut().chain(&mut small).for_each(|f| *f *= scale);
+            let large = integral(mesh, &p, &p, 0);
+            let other = QUARTER_ALPHA_SQUARED * integral(mesh, &small, &small, 0);
+            let scale = (large / (large + other)).sqrt();
+            multiply(&mut p, scale);
+            multiply(&mut small, scale);
         }
         Function { kappa, p, small }
     }
@@ -160,10 +189,7 @@ fn orthogonal(run: &Solution, orbital: &RadialOrbital, kappa: i32) -> Vec<f64> {
             continue;
         }
         let inner = small(mesh, &below.coefficients, kappa, below);
-        let with = |f: &[f64]| {
-            let parts = inner.iter().zip(f);
-            QUARTER_ALPHA_SQUARED * mesh.integral(parts.map(|(a, b)| a * b))
-        };
+        let with = |f: &[f64]| QUARTER_ALPHA_SQUARED * integral(mesh, &inner, f, 0);
         let share = with(&own) / (1.0 + with(&inner));
         for (c, b) in coefficients.iter_mut().zip(&below.coefficients) {
             *c -= share * b;
@@ -211,9 +237,8 @@ fn in_field(run: &Solution, orbital: &RadialOrbital, kappa: Option<i32>) -> Opti
     }
     // As the orbital's own sign.
     let p = mesh.sample(mesh.values(), &coefficients);
-    let overlap = mesh.integral(p.iter().zip(&orbital.p).map(|(p, q)| p * q));
-    if overlap < 0.0 {
-        coefficients.iter_mut().for_each(|c| *c = -*c);
+    if integral(mesh, &p, &orbital.p, 0) < 0.0 {
+        multiply(&mut coefficients, -1.0);
     }
     Some(coefficients)
 }
@@ -242,23 +267,17 @@ pub fn elements(mesh: &Mesh, a: &Functions, c: &Functions, rank: u8) -> Vec<Elem
             let order = |l: u8, two_j: i32| (2 * i32::from(l) + 1 - two_j) / 2;
             let phase = (two_j + 1) / 2 + order(a.l, two_j) + order(c.l, two_jp);
             let angular = if phase % 2 == 0 { root } else { -root } * three;
-            let parts = (bra.p.iter().zip(&bra.small))
-                .zip(ket.p.iter().zip(&ket.small))
-                .zip(mesh.radii());
+            let with = |f: &[f64], g: &[f64], k: u32| integral(mesh, f, g, k);
             let radial = if rank == 1 {
-                let sum = f64::from(bra.kappa + ket.kappa);
-                -0.5 * sum
-                    * mesh
-                        .integral(parts.map(|(((p, s), (p2, s2)), r)| (p * s2 + s * p2) / (r * r)))
+                let sum = with(&bra.p, &ket.small, 2) + with(&bra.small, &ket.p, 2);
+                -0.5 * f64::from(bra.kappa + ket.kappa) * sum
             } else {
                 let share = if a.relative {
                     QUARTER_ALPHA_SQUARED
                 } else {
                     0.0
                 };
-                mesh.integral(
-                    parts.map(|(((p, s), (p2, s2)), r)| (p * p2 + share * s * s2) / (r * r * r)),
-                )
+                with(&bra.p, &ket.p, 3) + share * with(&bra.small, &ket.small, 3)
             };
             found.push(Element {
                 two_j,
