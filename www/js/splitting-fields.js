@@ -38,6 +38,7 @@ export function splittingFields(fields, questions, put, shared) {
     element("div", { class: "parts" },
       fold("nucleus", "Nucleus and isotopes",
         row(field("/nucleus/spin", "Nuclear spin I", "empty: of the named isotope"), field("/nucleus/g_I", "Nuclear g", "in nuclear magnetons")),
+        row(element("div", { class: "flags" }, flagField({ store, setField: put }, "/nucleus/estimate", "Estimate A and B where none is entered", "Estimates of A and B", false))),
         constants("/nucleus"), isotopes.node),
       fold("alone", "A level alone, without a configuration",
         row(field("/level/J", "J", "such as 1/2"), field("/level/g", "g", "such as 2.0023"), field("/level/I", "I", "such as 3/2; empty: no nucleus")),

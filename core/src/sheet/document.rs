@@ -55,6 +55,8 @@ pub struct Document {
     pub nuclei: Vec<Nuclear>,
     /// Whether these are isotopes that the sheet lists.
     pub isotopes_listed: bool,
+    /// Whether constants A and B that are not entered are estimated.
+    pub estimate: bool,
     /// A level that needs no configuration.
     pub level_alone: Option<LevelAlone>,
     /// Keys that no question of this version uses.

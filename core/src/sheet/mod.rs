@@ -66,6 +66,7 @@ mod solved;
 mod solved_lines;
 mod splitting;
 mod splitting_estimate;
+pub mod splitting_estimated;
 mod splitting_full;
 mod splitting_joins;
 mod splitting_keeps;

@@ -66,6 +66,8 @@ impl Document {
     /// Reads `nucleus` and `isotopes` once atom and configurations are known.
     pub(super) fn read_nuclei(&mut self, json: &Json) {
         let single = json.get("nucleus").map(|nucleus| self.single(nucleus));
+        let estimate = json.get("nucleus").and_then(|n| n.get("estimate"));
+        self.estimate = matches!(estimate, Some(Json::Bool(true)));
         let listed = match json.get("isotopes") {
             Some(Json::List(items)) if !items.is_empty() => self.isotopes(items),
             _ => {

@@ -146,6 +146,8 @@ pub const SHEET: Shape = Group(&[
             ("g_I", Reading),
             ("magnetic_dipole", CONSTANTS),
             ("electric_quadrupole", CONSTANTS),
+            // A and B that are not entered are computed, for listed isotopes too.
+            ("estimate", Bool),
         ]),
     ),
     (

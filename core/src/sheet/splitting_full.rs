@@ -13,6 +13,7 @@ use super::field::Field;
 use super::levels_rows::Shared;
 use super::nucleus::Nuclear;
 use super::splitting::{cautions, field_of};
+use super::splitting_estimated::estimate_row;
 use super::splitting_joins::Join;
 use super::splitting_keeps::{Shown, keeps};
 use super::splitting_limits::limits;
@@ -75,6 +76,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
     let groups = groups(&components);
     let linear = linear(field, &components, searched.departs_at);
     let nucleus = nucleus_row(document, &ready);
+    let estimate = estimate_row(document, &ready);
     let isotopes = isotope_rows(document, &ready);
     let diamagnetic = field.map(|field| DiamagneticRow {
         included: field.diamagnetic,
@@ -98,6 +100,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         linear: linear.as_ref(),
         searched: &searched,
         diamagnetic: diamagnetic.as_ref(),
+        estimate: estimate.as_ref(),
     };
     let mut around = super::answer::Around::saying(sentence(&told));
     around.working = working(&told);
@@ -123,6 +126,7 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
         line,
         diamagnetic,
         nucleus,
+        estimate,
         isotopes,
         states,
         components,

@@ -2,9 +2,9 @@
 
 use crate::radiation::Multipole;
 
-use super::document::Document;
 use super::energy_case::EnergyCase;
 use super::rich::Kind;
+use super::splitting_estimated::{self, is_estimated};
 use super::splitting_pattern::bright;
 use super::splitting_rows::{DiamagneticRow, LineOf};
 use super::splitting_searched::MOST_COMPONENTS;
@@ -64,7 +64,8 @@ pub fn limits(told: &Told) -> Vec<String> {
     if bright(told.components).len() < told.components.len() {
         limits.push("Components below 1 % of the strongest that is seen are listed, but neither the largest offset nor the groups in the sentence count them.".to_owned());
     }
-    limits.extend(of_nuclei(document));
+    limits.extend(of_nuclei(told));
+    limits.extend(splitting_estimated::limits(document, told.estimate));
     limits.extend(told.searched.missing.clone());
     if let Some(fields) = &told.searched.fields {
         let below = fields.rising.map_or(String::new(), |(start, ratio)| {
@@ -112,7 +113,8 @@ pub fn limits(told: &Told) -> Vec<String> {
     limits
 }
 
-fn of_nuclei(document: &Document) -> Vec<String> {
+fn of_nuclei(told: &Told) -> Vec<String> {
+    let document = told.document;
     let mut limits = Vec::new();
     for nuclear in &document.nuclei {
         let name = nuclear.name.as_deref().unwrap_or("the nucleus");
@@ -123,7 +125,8 @@ fn of_nuclei(document: &Document) -> Vec<String> {
         } else if nuclear.two_i() > 0 && nuclear.g.is_none() {
             limits.push(format!("g_I of {name} is not known: its own moment in the field is left out, about a thousandth of the electrons'."));
         }
-        if nuclear.two_i() > 0 && nuclear.dipole.is_empty() && nuclear.quadrupole.is_empty() {
+        let entered = !nuclear.dipole.is_empty() || !nuclear.quadrupole.is_empty();
+        if nuclear.two_i() > 0 && !entered && !is_estimated(told.ready, nuclear) {
             limits.push(format!(
                 "No constant A or B of {name} is entered: its levels do not split by it."
             ));

@@ -1,9 +1,8 @@
 //! The levels of a parity as a field finds them: at their places, within bounds.
 
 use crate::problem::Problem;
-use crate::splitting::in_field::{
-    Diamagnetic, Manifold, Nucleus, OneElectron, Split,
-};
+use crate::splitting::hyperfine::{self, Unit};
+use crate::splitting::in_field::{Diamagnetic, Manifold, Nucleus, OneElectron, Split};
 
 use super::document::Document;
 use super::energy_case::EnergyCase;
@@ -62,6 +61,7 @@ pub fn set_level(
         is_upper: holds(upper),
         is_lower: holds(lower),
         of: Some(of),
+        unit: None,
     })
 }
 
@@ -126,6 +126,43 @@ pub fn no_radial_functions() -> Problem {
         0,
         0,
     )
+}
+
+/// A fault of estimates, at the key that asks for them.
+#[inline(never)]
+pub fn no_estimate(problem: Problem) -> Problem {
+    problem.way("Leave it out", "false").at("/nucleus/estimate")
+}
+
+/// A and B of a unit nucleus of every level, by its place in the parity.
+///
+/// # Errors
+/// Those of [`hyperfine::of_parity`], at the key that asks for them.
+pub fn units(solved: &Solved, parity: usize, levels: &mut [SetLevel]) -> Result<(), Problem> {
+    let found = match &solved.spectrum {
+        Some(spectrum) => match spectrum.parities.get(parity) {
+            Some(own) => hyperfine::of_parity(spectrum, own),
+            None => Ok(Vec::new()),
+        },
+        None => {
+            let EnergyCase::OneElectron { z, mass, .. } = solved.case() else {
+                return Ok(());
+            };
+            let of = |level: &SetLevel| match level.place.and_then(|p| solved.levels.get(p)) {
+                Some(SolvedLevel {
+                    orbital: Some(orbital),
+                    ..
+                }) => hyperfine::one_electron(*z, *mass, *orbital, level.j),
+                _ => Ok(Unit::default()),
+            };
+            levels.iter().map(of).collect()
+        }
+    };
+    let found = found.map_err(no_estimate)?;
+    for (level, unit) in levels.iter_mut().zip(found) {
+        level.unit = Some(unit);
+    }
+    Ok(())
 }
 
 /// A set within the bounds: as a whole, or where a nucleus makes it too large the levels of the terms of the

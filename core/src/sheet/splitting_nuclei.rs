@@ -24,6 +24,7 @@ pub fn nucleus_row(document: &Document, ready: &Prepared) -> Option<NucleusRow> 
                 b: Some(level.b),
                 kind: "entered",
                 scaled: false,
+                estimated: None,
             }],
         });
     }
@@ -58,9 +59,8 @@ fn constant_rows(ready: &Prepared, nuclear: &Nuclear) -> Vec<ConstantRow> {
     levels
         .filter(|level| !with_line || level.is_upper || level.is_lower)
         .filter_map(|level| {
-            let of = level.of.as_ref()?;
-            let a = Nuclear::constant(&nuclear.dipole, of);
-            let b = Nuclear::constant(&nuclear.quadrupole, of);
+            level.of.as_ref()?;
+            let [a, b] = level.constants(nuclear);
             Some(ConstantRow {
                 label: level.label.clone(),
                 rich: level.rich.clone(),
@@ -68,10 +68,16 @@ fn constant_rows(ready: &Prepared, nuclear: &Nuclear) -> Vec<ConstantRow> {
                 b: b.map(|c| c.value),
                 kind: match a.or(b) {
                     None => "zero",
-                    Some(c) if c.scaled => "computed",
+                    Some(c) if c.scaled || c.estimated => "computed",
                     Some(_) => "entered",
                 },
                 scaled: a.or(b).is_some_and(|c| c.scaled),
+                estimated: match [a, b].map(|c| c.is_some_and(|c| c.estimated)) {
+                    [true, true] => Some("A, B"),
+                    [true, false] => Some("A"),
+                    [false, true] => Some("B"),
+                    _ => None,
+                },
             })
         })
         .collect()

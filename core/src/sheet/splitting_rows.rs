@@ -8,6 +8,7 @@ use crate::radiation::Multipole;
 use crate::splitting::in_field::MHZ_PER_WAVENUMBER;
 
 use super::answer::Around;
+use super::lack::Way;
 use super::levels_rows::Shared;
 use super::rich::{Kind, Rich};
 
@@ -22,6 +23,8 @@ pub struct Splitting {
     pub field: Option<FieldOf>,
     pub diamagnetic: Option<DiamagneticRow>,
     pub nucleus: Option<NucleusRow>,
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub estimate: Option<EstimateRow>,
     pub isotopes: Vec<IsotopeRow>,
     pub states: Vec<StateRow>,
     pub components: Vec<ComponentRow>,
@@ -53,6 +56,7 @@ impl Splitting {
             field: None,
             diamagnetic: None,
             nucleus: None,
+            estimate: None,
             isotopes: Vec::new(),
             states: Vec::new(),
             components: Vec::new(),
@@ -158,10 +162,23 @@ pub struct ConstantRow {
     pub a: Option<f64>,
     #[serde(rename = "B_MHz")]
     pub b: Option<f64>,
-    /// "entered", "computed" from another isotope's, or "zero".
+    /// Of A, or of B where there is no A: "entered", "computed" (estimated, or from another isotope's) or "zero".
     pub kind: &'static str,
     /// Whether it is another isotope's, scaled.
     pub scaled: bool,
+    /// Which of both are estimates: "A", "B" or "A, B".
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub estimated: Option<&'static str>,
+}
+
+/// Estimates of A and B: that they are used, or could be.
+#[derive(Clone, Debug, Serialize)]
+pub struct EstimateRow {
+    pub included: bool,
+    /// How far off they usually are.
+    pub say: &'static str,
+    /// How to put them in.
+    pub way: Option<Way>,
 }
 
 #[derive(Clone, Debug, Serialize)]

@@ -7,6 +7,7 @@ use std::rc::Rc;
 use crate::numerics::order::sort_by;
 use crate::problem::Problem;
 use crate::quantity::TwiceJ;
+use crate::splitting::hyperfine::{self, Unit};
 use crate::splitting::in_field::{
     Components, Linear, MHZ_PER_WAVENUMBER, Manifold, Nucleus, Size, Split,
 };
@@ -16,12 +17,12 @@ use super::energy_case::{EnergyCase, energy_case};
 use super::level_alone::LevelAlone;
 use super::levels_rows::Shared;
 use super::line_ends::End;
-use super::nucleus::Nuclear;
+use super::nucleus::{Constant, Nuclear};
 use super::placed::Placed;
 use super::rich::Rich;
 use super::solved::{Solved, solved};
 use super::splitting_joins::{Join, joins};
-use super::splitting_manifolds::{manifold, parities, set_level, small_enough};
+use super::splitting_manifolds::{manifold, no_estimate, parities, set_level, small_enough, units};
 use super::splitting_searched::{Range, Searched};
 use super::watch::Watch;
 
@@ -46,6 +47,8 @@ pub struct SetLevel {
     /// Whether it belongs to the ends of the line.
     pub is_upper: bool,
     pub is_lower: bool,
+    /// Where A and B are to be estimated.
+    pub unit: Option<Unit>,
 }
 
 impl SetLevel {
@@ -57,6 +60,40 @@ impl SetLevel {
             _ => None,
         }
     }
+
+    /// A and B in MHz: estimated where they are not entered; nothing where neither is known.
+    pub fn constants(&self, nuclear: &Nuclear) -> [Option<Found>; 2] {
+        let least = nuclear.two_i().min(self.j.doubled());
+        let find = |rank: i32, constants: &[Constant], moment: Option<f64>, unit: Option<f64>| {
+            if let Some(known) = Nuclear::constant(constants, self.of.as_ref()?) {
+                return Some(Found {
+                    value: known.value,
+                    scaled: known.scaled,
+                    estimated: false,
+                });
+            }
+            (least >= rank).then_some(Found {
+                value: moment? * unit?,
+                scaled: false,
+                estimated: true,
+            })
+        };
+        let (a, b) = self.unit.map(|unit| (unit.a, unit.b)).unzip();
+        let q = nuclear.isotope.and_then(|i| i.quadrupole);
+        [
+            find(1, &nuclear.dipole, nuclear.g, a),
+            find(2, &nuclear.quadrupole, q, b),
+        ]
+    }
+}
+
+/// A constant of a level, MHz.
+#[derive(Clone, Copy, Debug)]
+pub struct Found {
+    pub value: f64,
+    /// Whether it is another isotope's, scaled.
+    pub scaled: bool,
+    pub estimated: bool,
 }
 
 /// Levels of one parity, or a level alone.
@@ -119,6 +156,7 @@ struct Key {
     nuclei: Vec<Nuclear>,
     alone: Option<LevelAlone>,
     diamagnetic: bool,
+    estimate: bool,
 }
 
 thread_local! {
@@ -141,6 +179,7 @@ fn key(document: &Document) -> Result<Key, Problem> {
         nuclei: document.nuclei.clone(),
         alone,
         diamagnetic: diamagnetic_wanted(document),
+        estimate: document.estimate,
     })
 }
 
@@ -186,6 +225,9 @@ pub fn prepared(document: &Document, watch: &mut Watch) -> Result<Rc<Prepared>, 
 }
 
 fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, Problem> {
+    if document.estimate {
+        return Err(no_estimate(hyperfine::without_functions()));
+    }
     let j = level.j.unwrap_or_default();
     let manifold =
         Manifold::alone(j.doubled(), 0.0, level.g.unwrap_or(0.0)).map_err(|p| p.at("/level/J"))?;
@@ -202,6 +244,7 @@ fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, 
             energy: None,
             is_upper: false,
             is_lower: false,
+            unit: None,
         }],
         reduced: false,
         diamagnetic_at_one: None,
@@ -246,13 +289,16 @@ fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepare
     // By set the parity in the spectrum, and the places of its levels there.
     let mut origins: Vec<(usize, Vec<usize>)> = Vec::new();
     for (parity, all) in parities(&solved).into_iter().enumerate() {
-        let levels: Vec<SetLevel> = all
+        let mut levels: Vec<SetLevel> = all
             .iter()
             .filter_map(|place| set_level(document, &solved, &placed, *place))
             .collect();
         let wanted = |level: &SetLevel| level.is_upper || level.is_lower;
         if document.line.is_some() && !levels.iter().any(wanted) {
             continue;
+        }
+        if document.estimate {
+            units(&solved, parity, &mut levels)?;
         }
         let (manifold, diamagnetic_at_one, term) =
             manifold(&solved, parity, &levels, key.diamagnetic)?;
@@ -399,21 +445,18 @@ fn pass(
 
 /// A nucleus with the constants of a set's levels.
 fn nucleus(nuclear: &Nuclear, set: &Set) -> Nucleus {
-    let of = |constants: &[super::nucleus::Constant]| {
-        let value = |level: &SetLevel| {
-            let constant = level
-                .of
-                .as_ref()
-                .and_then(|of| Nuclear::constant(constants, of));
-            constant.map_or(0.0, |c| c.value / MHZ_PER_WAVENUMBER)
-        };
-        set.levels.iter().map(value).collect()
-    };
+    let mut found = [Vec::new(), Vec::new()];
+    for level in &set.levels {
+        for (list, constant) in found.iter_mut().zip(level.constants(nuclear)) {
+            list.push(constant.map_or(0.0, |c| c.value / MHZ_PER_WAVENUMBER));
+        }
+    }
+    let [magnetic_dipole, electric_quadrupole] = found;
     Nucleus {
         two_i: nuclear.two_i(),
         g_i: nuclear.g.unwrap_or(0.0),
-        magnetic_dipole: of(&nuclear.dipole),
-        electric_quadrupole: of(&nuclear.quadrupole),
+        magnetic_dipole,
+        electric_quadrupole,
     }
 }
 

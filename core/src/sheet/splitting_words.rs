@@ -6,7 +6,9 @@ use super::document::Document;
 use super::nucleus::{Nuclear, isotope_name};
 use super::rich::{Kind, Rich};
 use super::splitting_pattern::{Pattern, bright, widest};
-use super::splitting_rows::{ComponentRow, DiamagneticRow, LineOf, LinearRow, StateRow};
+use super::splitting_rows::{
+    ComponentRow, DiamagneticRow, EstimateRow, LineOf, LinearRow, StateRow,
+};
 use super::splitting_searched::Searched;
 use super::splitting_sets::Prepared;
 
@@ -22,6 +24,7 @@ pub struct Told<'a> {
     pub linear: Option<&'a LinearRow>,
     pub searched: &'a Searched,
     pub diamagnetic: Option<&'a DiamagneticRow>,
+    pub estimate: Option<&'a EstimateRow>,
 }
 
 impl Told<'_> {
@@ -144,10 +147,14 @@ fn started(told: &Told) -> Rich {
 }
 
 fn with_nuclei(told: &Told) -> String {
-    match told.document.nuclei.len() {
+    let with = match told.document.nuclei.len() {
         _ if !told.has_spin() => String::new(),
         0 | 1 => " with its nucleus".to_owned(),
         many => format!(" of {many} isotopes"),
+    };
+    match told.estimate {
+        Some(row) if row.included => format!("{with} (A and B estimated)"),
+        _ => with,
     }
 }
 

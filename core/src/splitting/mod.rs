@@ -1,5 +1,7 @@
 //! Splitting of levels and lines in a magnetic field.
 
+pub mod hyperfine;
+pub mod hyperfine_radial;
 pub mod seen;
 pub mod weak_field;
 mod wigner_eckart;

@@ -24,11 +24,16 @@ export function levelParts(whole, levels, endsOf, context) {
 
 /** How much correlation would help here, with the button that puts it in; nothing where the sheet does not refuse it, or no level is computed. */
 export function correlationNode({ correlation, levels }, { setField }) {
-  if (!correlation?.way || !levels.some(({ energy_kind: kind }) => kind === "computed")) return null;
-  const { label, path, value } = correlation.way;
+  return levels.some(({ energy_kind: kind }) => kind === "computed") ? offerNode(correlation, setField) : null;
+}
+
+/** What the sheet could have computed besides, with the button that puts it in; nothing where it is in. */
+export function offerNode(offer, setField) {
+  if (!offer?.way) return null;
+  const { label, path, value } = offer.way;
   return element("div", { class: "ways offer" },
     wayButton({ label }, () => setField(path, value ?? undefined, label)),
-    element("span", { class: "note", text: correlation.say }));
+    element("span", { class: "note", text: offer.say }));
 }
 
 function levelsPart(whole, levels, endsOf, context) {

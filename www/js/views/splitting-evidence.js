@@ -12,6 +12,7 @@ import { facts } from "./chosen.js";
 import { FieldMapView } from "./field-map.js";
 import { crossingId, kindWords, mapChoices } from "./field-panels.js";
 import { fold, pointerWords, select } from "./fold.js";
+import { offerNode } from "./levels.js";
 import { componentId, idsOfComponent, stateId, stateRich } from "./splitting-names.js";
 import {
   componentCrossingsTable, componentsTable, constantsTable, crossingsTable, fieldWords, isotopesTable, lineName, resonancesTable, richOfLevels, seenWords, stateNames, statesTable,
@@ -227,9 +228,9 @@ export class SplittingEvidence {
   }
 
   #fillFacts() {
-    const { line = null, linear = null, diamagnetic = null } = this.#answer;
+    const { line = null, linear = null, diamagnetic = null, estimate = null } = this.#answer;
     const kind = (key) => kindOf(this.#answer, key);
-    this.#facts.replaceChildren(facts({ settings: this.#settings }, [
+    this.#facts.replaceChildren(...[offerNode(estimate, this.#context.setField)].filter(Boolean), facts({ settings: this.#settings }, [
       ["line without field, in vacuum", line?.wavelength_nm, "nm", kind("line.wavelength_nm")],
       ["g, upper", line?.g_upper, null, kind("line.g_upper")], ["g, lower", line?.g_lower, null, kind("line.g_lower")],
       ["g of the line", line?.g_effective, null, kind("line.g_effective") ?? "computed"],

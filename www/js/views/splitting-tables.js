@@ -177,14 +177,14 @@ export function resonancesTable(answer, context) {
 export function constantsTable(answer, context) {
   const { nucleus } = answer;
   const rows = nucleus ? nucleus.levels : answer.isotopes.flatMap(({ isotope, levels }) => levels.map((level) => ({ ...level, isotope })));
-  const constant = (key) => ({ name: key, unit: "MHz", type: "number", kind: (row) => (row.kind === "zero" ? null : row.kind), value: (row) => row[`${key}_MHz`], reason: "not entered" });
+  const constant = (key) => ({ name: key, unit: "MHz", type: "number", kind: (row) => (row.kind === "zero" ? null : row.estimated?.includes(key) ? "computed" : row.kind), value: (row) => row[`${key}_MHz`], reason: "not entered" });
   return dataTable({
     caption: ["Hyperfine constants", ...(nucleus?.isotope ? [` of ${nucleus.isotope}`] : []), nucleus?.spin ? `, I ${nucleus.spin}` : ""], rows, context, file: "hyperfine constants",
     columns: [
       has(rows, "isotope") && { name: "isotope", type: "text", value: (row) => row.isotope },
       { name: "level", type: "text", value: (row) => row.label, rich: (row) => row.rich ?? [row.label] },
       constant("A"), constant("B"),
-      rows.some(({ scaled }) => scaled) && { name: "from", type: "text", value: (row) => (row.scaled ? "another isotope’s" : "the sheet") },
+      rows.some(({ scaled, estimated }) => scaled || estimated) && { name: "from", type: "text", value: (row) => (row.estimated ? `estimated: ${row.estimated}` : row.scaled ? "another isotope’s" : "the sheet") },
     ].filter(Boolean),
     identify: (row) => `level:${row.label}`,
   });

@@ -41,4 +41,4 @@ pub use parameters::{Effective, Integral, Parameter};
 pub use schemes::{JjCoupled, JjTransformation, JkCoupled, Scheme, jk_scheme};
 pub use spin_orbit::Joint;
 pub use subshell_jj::JjState;
-pub use transitions::{Amplitude, amplitudes};
+pub use transitions::{Amplitude, amplitudes, diagonal};

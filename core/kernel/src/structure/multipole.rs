@@ -7,7 +7,11 @@
 //! Magnetic: L + g_s S = J + (g_s−1) S in units of the Bohr magneton, which connects only states of
 //! one term; ⟨SLJ‖S‖SLJ′⟩ = (−1)^(S+L+J′+1) √[(2J+1)(2J′+1)] {S J L; J′ S 1} √[S(S+1)(2S+1)].
 //!
-//! Source: Edmonds, *Angular Momentum in Quantum Mechanics* (1957), eqs. 7.1.7 and 7.1.8; Condon &
+//! Any one-electron operator Σ [u^κ v^k]^K, of ranks κ in spin and k in orbital space, is had from the same
+//! chains: Σ w_{ac} (−1) [(2κ+1)(2k+1)]^(−½) [a†c̃]^(κk), where ⟨½‖u‖½⟩⟨a‖v‖c⟩ = w_{ac}, and then
+//! ⟨SLJ‖T^K‖S′L′J′⟩ = √[(2J+1)(2K+1)(2J′+1)] {S S′ κ; L L′ k; J J′ K} ⟨SL‖T^(κk)‖S′L′⟩.
+//!
+//! Source: Edmonds, *Angular Momentum in Quantum Mechanics* (1957), eqs. 7.1.5 to 7.1.8; Condon &
 //! Shortley, *The Theory of Atomic Spectra* (1935), chapters 4 and 11.
 
 use super::basis::{Basis, Coupled};
@@ -43,6 +47,7 @@ pub type Elements = Vec<(usize, usize, f64)>;
 #[derive(Clone, Debug)]
 pub struct Multipole {
     rank: u8,
+    ranks: Ranks,
     transfers: Vec<Transfer>,
     joints: Vec<Joint>,
     /// S and L of the blocks on either side.
@@ -58,6 +63,39 @@ impl Multipole {
     /// `subshells-differ`, `angular-momentum-too-large`; those of
     /// [`crate::angular::parentage::parents`].
     pub fn new(left: &Basis, right: &Basis, rank: u8) -> Result<Self, Problem> {
+        let k = i32::from(rank);
+        let ranks = Ranks {
+            spin: 0,
+            orbital: 2 * k,
+        };
+        Self::of(left, right, (ranks, rank), &|a, c| {
+            -multipole(a, k, c) * (2.0 / f64::from(2 * k + 1)).sqrt()
+        })
+    }
+
+    /// The coefficients of every w_{ac} of Σ [u^κ v^k]^K, the ranks being κ, k and K; w stands for
+    /// ⟨½‖u‖½⟩⟨a‖v‖c⟩ with its radial integral.
+    ///
+    /// # Errors
+    /// Those of [`Multipole::new`].
+    pub fn unit(left: &Basis, right: &Basis, [spin, k, rank]: [u8; 3]) -> Result<Self, Problem> {
+        let ranks = Ranks {
+            spin: 2 * i32::from(spin),
+            orbital: 2 * i32::from(k),
+        };
+        let weight = f64::from(2 * spin + 1) * f64::from(2 * k + 1);
+        Self::of(left, right, (ranks, rank), &|a, c| {
+            let meets = (a.abs_diff(c)..=a.saturating_add(c)).contains(&k);
+            if meets { -1.0 / weight.sqrt() } else { 0.0 }
+        })
+    }
+
+    fn of(
+        left: &Basis,
+        right: &Basis,
+        (ranks, rank): (Ranks, u8),
+        factor: &dyn Fn(u8, u8) -> f64,
+    ) -> Result<Self, Problem> {
         if left.subshells() != right.subshells() {
             return Err(Problem::new(
                 "subshells-differ",
@@ -75,18 +113,12 @@ impl Multipole {
             for second in 0..width {
                 let mut own = Vec::new();
                 for (a, c) in moves(left, first, right, second) {
-                    let k = i32::from(rank);
-                    let reduced = multipole(a.l, k, c.l);
-                    if reduced.abs() < ZERO {
+                    let factor = factor(a.l, c.l);
+                    if factor.abs() < ZERO {
                         continue;
                     }
-                    let ranks = Ranks {
-                        spin: 0,
-                        orbital: 2 * k,
-                    };
                     let chain = workshop.one_electron(right, second, a, c, ranks)?;
                     if let Some(chain) = chain {
-                        let factor = -reduced * (2.0 / f64::from(2 * k + 1)).sqrt();
                         own.push((transfers.len(), chain, factor));
                         transfers.push(Transfer {
                             first,
@@ -103,8 +135,8 @@ impl Multipole {
         for (rows, upper) in left.blocks().iter().enumerate() {
             for (columns, lower) in right.blocks().iter().enumerate() {
                 let (bra, ket) = (upper.total, lower.total);
-                let within = (bra.l - ket.l).abs() <= i32::from(rank);
-                if bra.two_s != ket.two_s || !within {
+                let within = 2 * (bra.l - ket.l).abs() <= ranks.orbital;
+                if (bra.two_s - ket.two_s).abs() > ranks.spin || !within {
                     continue;
                 }
                 let mut entries = Vec::new();
@@ -140,6 +172,7 @@ impl Multipole {
         let totals = |basis: &Basis| basis.blocks().iter().map(|b| b.total).collect();
         Ok(Multipole {
             rank,
+            ranks,
             transfers,
             joints,
             totals: [totals(left), totals(right)],
@@ -156,7 +189,7 @@ impl Multipole {
         &self.transfers
     }
 
-    /// ⟨SLJ‖Σ r^k C^k‖S′L′J′⟩ with these values of ⟨a|r^k|c⟩.
+    /// ⟨SLJ‖T‖S′L′J′⟩ with these values of ⟨a|r^k|c⟩ or w.
     pub fn elements(&self, values: &[f64], rows: &Rows, columns: &Rows) -> Elements {
         let mut symbols = Symbols::default();
         let [left, right] = &self.totals;
@@ -172,9 +205,17 @@ impl Multipole {
             let bra = left.get(joint.rows).copied().unwrap_or_default();
             let ket = right.get(joint.columns).copied().unwrap_or_default();
             let (two_s, two_l, two_lp) = (bra.two_s, 2 * bra.l, 2 * ket.l);
-            let six = symbols.six([two_l, two_j, two_s, two_jp, two_lp, two_k]);
-            let factor = root / f64::from(two_s + 1).sqrt() * six;
-            let factor = signed((two_s + two_lp + two_j + two_k) / 2, factor);
+            let factor = if self.ranks.spin == 0 {
+                let six = symbols.six([two_l, two_j, two_s, two_jp, two_lp, two_k]);
+                let factor = root / f64::from(two_s + 1).sqrt() * six;
+                signed((two_s + two_lp + two_j + two_k) / 2, factor)
+            } else {
+                let Ranks { spin, orbital } = self.ranks;
+                let two_sp = ket.two_s;
+                symbols.step([
+                    two_s, two_sp, spin, two_l, two_lp, orbital, two_j, two_jp, two_k,
+                ])
+            };
             if factor == 0.0 {
                 continue;
             }

@@ -1,4 +1,4 @@
-//! Reduced matrix elements between levels: amplitudes of lines.
+//! Reduced matrix elements between levels: amplitudes of lines, and means.
 
 use super::hamiltonian::Rows;
 use super::levels::{Level, Levels};
@@ -54,6 +54,24 @@ pub fn amplitudes(
         }
     }
     crate::numerics::order::sort_by_key(&mut found, |line: &Amplitude| (line.left, line.right));
+    found
+}
+
+/// ⟨a‖T‖a⟩ of every level, by its place; `elements` as for [`amplitudes`].
+pub fn diagonal(levels: &Levels, mut elements: impl FnMut(&Rows) -> Elements) -> Vec<f64> {
+    let mut found = vec![0.0; levels.levels.len()];
+    for rows in &levels.rows {
+        let operator = elements(rows);
+        for (level, sum) in levels.levels.iter().zip(&mut found) {
+            if level.two_j != rows.two_j {
+                continue;
+            }
+            let of = |place: usize| level.vector.get(place).copied().unwrap_or(0.0);
+            *sum = (operator.iter())
+                .map(|&(row, column, element)| of(row) * element * of(column))
+                .sum();
+        }
+    }
     found
 }
 

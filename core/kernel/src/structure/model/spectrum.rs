@@ -247,6 +247,11 @@ impl Spectrum {
             .collect();
     }
 
+    /// The radial functions of a configuration, by its place in the case; nothing where none were computed.
+    pub fn run(&self, configuration: usize) -> Option<&Solution> {
+        self.runs.get(configuration)?.as_deref()
+    }
+
     /// The parity and the level at a place.
     pub fn level(&self, place: Place) -> Option<(&Parity, &Level)> {
         let parity = self.parities.get(place.parity)?;
