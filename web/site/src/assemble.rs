@@ -167,6 +167,14 @@ impl Bundler<'_> {
             esbuild.arg(format!("--inject:{}", file.display()));
         }
         capture(&mut esbuild, Duration::from_secs(60))?;
+        if self.profile == Profile::Full {
+            // Another twentieth off what esbuild has made, in seconds that only a full build has.
+            let mut terser = self.node.tool(self.paths, "terser/bin/terser");
+            terser
+                .arg(&output)
+                .args(["--mangle", "--compress", "passes=2,ecma=2020", "--output"]);
+            capture(terser.arg(&output), Duration::from_secs(120))?;
+        }
         read(&output)
     }
 

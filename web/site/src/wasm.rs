@@ -145,6 +145,10 @@ pub fn optimise(paths: &Paths, node: &Node, from: &Path, to: &Path) -> Outcome<(
                 "-Os",
                 // What is called from one place alone stands there, however long.
                 "--one-caller-inline-max-function-size=1000",
+                // The first kilobyte is the far end of the stack, where no address is computed from.
+                "--low-memory-unused",
+                // Once more over what the first round has left.
+                "-Os",
                 // Functions of one room side by side: they are alike, and gzip sees that.
                 "--reorder-functions-by-name",
                 "--strip-debug",
