@@ -72,9 +72,7 @@ pub(super) fn narrow_six_j(two_j: [i32; 6], triangle: &Triangle) -> Option<f64> 
     for c0 in c0 {
         // Leaving from within keeps the compiler from multiplying in pairs, which a browser's 64 bits
         // pay with twice the time.
-        let Some(((c1, c2), c3)) = rows.next() else {
-            return None;
-        };
+        let ((c1, c2), c3) = rows.next()?;
         // S = t₀ − (t₁ − (t₂ − …)) read from the other end: change the sign, then add.
         let term = c0.wrapping_mul(*c1).wrapping_mul(c2.wrapping_mul(*c3));
         sum = term.wrapping_sub(sum);
