@@ -444,8 +444,8 @@ function measureHead() {
   };
   const observer = new ResizeObserver(measure);
   observer.observe(line);
+  // It measures both at once, after the first layout: asked here, the layout would be done twice.
   observer.observe(words);
-  measure();
 }
 
 start().catch(showCannotStart);

@@ -101,8 +101,9 @@ everyDoor("every bad input is a plain fault, nothing is lost, nothing hangs", as
 });
 
 everyDoor("what is lacking is named, with a button that puts a usable value there", async (door) => {
-  await door.evaluate(() => document.querySelector("#splitting .rung-button").click());
   assert.equal(await door.state("splitting"), "lacks");
+  // A sheet that names a line opens on its splitting.
+  assert.equal(await door.evaluate(() => document.querySelector("#splitting .rung-button").getAttribute("aria-expanded")), "true");
   assert.match(await door.text("#splitting .words"), /^needs a field/);
   await door.click("Put in 0.5 T");
   await door.sentence("splitting");

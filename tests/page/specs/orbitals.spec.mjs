@@ -246,6 +246,8 @@ everyDoor("another ion stands beside, read by the core alone", async (door) => {
   await openOrbitals(door);
   await door.type("Beside it: atom or ion", "Mg+");
   await door.until(() => /Mg\sII/.test(document.querySelector(".orbitals .set-list").textContent));
+  // A picture is drawn once its width is known, after the words.
+  await door.until(() => document.querySelector(".orbitals .stage svg polyline"));
   assert.equal(await polylines(door), 2);
   assert.ok((await table(door, "Subshells")).some((row) => row.subshell === "3s" && /Mg\sII/.test(row.of)));
   // The ion's 3s lies further in.
