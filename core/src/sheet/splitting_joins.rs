@@ -139,7 +139,7 @@ fn one_electron_dipole(solved: &Solved, upper: Option<&Set>, lower: Option<&Set>
             if let Ok(s) = strength
                 && s > 0.0
             {
-                let value = libm::sqrt(s).copysign(angular);
+                let value = s.sqrt().copysign(angular);
                 elements.push(Reduced { left, right, value });
             }
         }

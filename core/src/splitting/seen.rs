@@ -41,7 +41,7 @@ pub fn weight(multipole: Multipole, q: i32, angle_degrees: f64, polariser: Polar
         (1, 1) => (0.5 * (1.0 + c), 0.5 * (1.0 - c)),
         (1, -1) => (0.5 * (1.0 - c), 0.5 * (1.0 + c)),
         (2, 0) => {
-            let d = libm::sqrt(1.5) * s * c;
+            let d = 1.5_f64.sqrt() * s * c;
             (d, -d)
         }
         (2, 1) => (

@@ -63,7 +63,7 @@ pub fn pair(g_parent: Option<f64>, j_parent: TwiceJ, l: u32, k: TwiceJ, j: Twice
 
 /// The effective moment μ_eff = |g| √(J(J + 1)), in μ_B.
 pub fn effective_moment(g: f64, j: TwiceJ) -> f64 {
-    g.abs() * libm::sqrt(four_square(j).max(0.0)) / 2.0
+    g.abs() * four_square(j).max(0.0).sqrt() / 2.0
 }
 
 /// The spin-only moment g_s √(S(S + 1)), in μ_B; with n unpaired electrons and g_s taken as 2 this is
