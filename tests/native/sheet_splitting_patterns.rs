@@ -351,6 +351,11 @@ fn a_nucleus_without_constants_is_said_to_be_left_out() {
         !with.contains("left out") && with.contains("with its nucleus"),
         "{with}"
     );
+    let estimated = told(json!({"nucleus": {"estimate": true}}));
+    assert!(
+        !estimated.contains("left out") && estimated.contains("(A and B estimated)"),
+        "{estimated}"
+    );
     // Without a spin there is nothing to leave out.
     let even = told(
         json!({"species": "4He I", "configurations": ["1s 2s", "1s 2p"], "line": {"upper": "1s 2p 1P1", "lower": "1s 2s 1S0"}}),

@@ -83,7 +83,7 @@ pub fn answer(document: &Document) -> Result<Splitting, Problem> {
     let counted = pattern_of(&components, Some(&line), field.tesla);
     let mut around = Around::saying(
         sentence(&line, document, &components, counted)
-            .say(left_out_words(document))
+            .say(left_out_words(document, None))
             .say("."),
     );
     around.working = working(&line, &ends, field, &components);

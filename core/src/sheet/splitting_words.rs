@@ -5,6 +5,7 @@ use crate::numerics::sorted_map::SortedMap;
 use super::document::Document;
 use super::nucleus::{Nuclear, isotope_name};
 use super::rich::{Kind, Rich};
+use super::splitting_estimated::is_estimated;
 use super::splitting_pattern::{Pattern, bright, widest};
 use super::splitting_rows::{
     ComponentRow, DiamagneticRow, EstimateRow, LineOf, LinearRow, StateRow,
@@ -81,12 +82,16 @@ pub fn sentence(told: &Told) -> Rich {
         Some(line) => of_line(told, line),
         None => of_levels(told),
     };
-    said.say(left_out_words(told.document)).say(".")
+    let end = left_out_words(told.document, Some(told.ready));
+    said.say(end).say(".")
 }
 
 /// The nuclei with a spin that split nothing, because no constant is known.
-fn left_out(document: &Document) -> Vec<String> {
-    let lacks = |n: &&Nuclear| n.two_i() > 0 && n.dipole.is_empty() && n.quadrupole.is_empty();
+fn left_out(document: &Document, ready: Option<&Prepared>) -> Vec<String> {
+    let is_estimated = |n: &Nuclear| ready.is_some_and(|ready| is_estimated(ready, n));
+    let lacks = |n: &&Nuclear| {
+        n.two_i() > 0 && n.dipole.is_empty() && n.quadrupole.is_empty() && !is_estimated(n)
+    };
     let name = |n: &Nuclear| n.name.clone().unwrap_or_else(|| "this spin".to_owned());
     if document.level_alone.is_some() {
         return Vec::new();
@@ -103,8 +108,8 @@ fn left_out(document: &Document) -> Vec<String> {
 }
 
 /// The same as the end of the sentence.
-pub fn left_out_words(document: &Document) -> String {
-    let names = left_out(document);
+pub fn left_out_words(document: &Document, ready: Option<&Prepared>) -> String {
+    let names = left_out(document, ready);
     match names.is_empty() {
         true => String::new(),
         false => format!(
