@@ -295,9 +295,8 @@ fn count_problem(written: &Written, parts: &Parts, species: &Species) -> Problem
         (
             "core-not-closed-shells",
             format!(
-                "{species} has {}: the {} besides {text} do not fill whole subshells.",
-                electrons_word(wanted),
-                wanted - have
+                "The {} of {species} besides {text} cannot fill whole subshells.",
+                electrons_word(wanted - have)
             ),
         )
     };

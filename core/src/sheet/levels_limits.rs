@@ -9,6 +9,7 @@ use super::given::Given;
 use super::json::Json;
 use super::lack::Way;
 use super::levels::parity;
+use super::levels_between::between_configurations;
 use super::levels_rows::{CorrelatedRow, CorrelationRow, LeftOutRow};
 use super::levels_words::Told;
 use super::rich::Kind;
@@ -112,6 +113,7 @@ pub fn computed(document: &Document, case: &Case, entries: &[usize]) -> Vec<Stri
     let mut limits = vec![
         "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; fine-structure intervals of ground terms 5 %, nine of ten within 13 %, but of the outer p electron of an excited alkali up to 44 % too small. Pin measured energies for wavelengths to be compared with a spectrometer.".to_owned(),
     ];
+    limits.extend(between_configurations(case));
     limits.extend(correlation(document, case, entries).map(|row| row.say));
     limits
 }

@@ -25,6 +25,7 @@ mod lack;
 mod level_alone;
 mod level_names;
 mod levels;
+mod levels_between;
 mod levels_facts;
 mod levels_file;
 mod levels_limits;
