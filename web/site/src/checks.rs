@@ -30,10 +30,14 @@ const EVERY_DAY: &[&str] = &[
     "tokens",
 ];
 
-/// Native tests that `--quick` leaves out, by a part of their names: sweeps over all atoms, and
-/// comparisons with brute force or with a definition term by term.
+/// Native tests that `--quick` leaves out, by a part of their names: sweeps over all atoms, tables
+/// of measured values that need a model of each atom, and comparisons with brute force or with a
+/// definition term by term.
 const LONG: &[&str] = &[
     "sweep",
+    "observed_j",
+    "as_far_off",
+    "acts_as_zeta",
     "converge",
     "determinant",
     "brute_force",
