@@ -1,9 +1,8 @@
 //! Distances between configurations, nothing fitted, against measured ones: tests/vectors/configuration_distances.csv, whose head
 //! names the sources. The limits of the answers on levels and lines say these numbers.
 
-use rungline_core::numerics::order::sort_by;
 use rungline_tests::sheets::{answer, number, rows};
-use rungline_tests::{Listing, Row, list, report, vector_rows};
+use rungline_tests::{Listing, Row, list, median_and_largest, report, vector_rows};
 use serde_json::{Value, json};
 
 const SOURCE: &str = "Sugar and Corliss, J. Phys. Chem. Ref. Data 14, Suppl. 2 (1985); Moore, NBS Circ. 467 (1949–1958); Martin, Zalubas and Hagan, NSRDS-NBS 60 (1978), from memory";
@@ -47,19 +46,6 @@ fn departures(kind: &str, table: &mut Listing) -> Vec<f64> {
     found
 }
 
-/// Median and largest of the sizes.
-fn spread(departures: &[f64]) -> (f64, f64) {
-    let mut sizes: Vec<f64> = departures.iter().map(|d| d.abs()).collect();
-    sort_by(&mut sizes, f64::total_cmp);
-    let middle = sizes.len() / 2;
-    let median = if sizes.len() % 2 == 1 {
-        sizes[middle]
-    } else {
-        (sizes[middle - 1] + sizes[middle]) / 2.0
-    };
-    (median, sizes[sizes.len() - 1])
-}
-
 #[test]
 fn distances_are_as_far_off_as_the_answer_says() {
     let mut table = Listing::new(
@@ -85,7 +71,7 @@ fn distances_are_as_far_off_as_the_answer_says() {
         ),
     ] {
         let found = departures(kind, &mut table);
-        let (median, largest) = spread(&found);
+        let (median, largest) = median_and_largest(&found);
         // All but what is next to nothing lie on the side that the words name.
         assert!(found.iter().all(|d| d * sign > -200.0), "{kind}: {found:?}");
         let hundreds = |value: f64| (value / 100.0).round() * 100.0;

@@ -10,6 +10,7 @@ use std::fs;
 use std::path::{Path, PathBuf};
 use std::sync::Mutex;
 
+use rungline_core::numerics::order::sort_by;
 use serde::{Deserialize, Serialize};
 
 /// The folder `tests/` of the repository.
@@ -38,6 +39,19 @@ pub fn vector_rows(name: &str) -> Vec<BTreeMap<String, String>> {
         .deserialize()
         .map(|row| row.unwrap_or_else(|error| panic!("{name}: {error}")))
         .collect()
+}
+
+/// Median and largest of the sizes |x|; of an even number, the median is the mean of the middle two.
+pub fn median_and_largest(values: &[f64]) -> (f64, f64) {
+    let mut sizes: Vec<f64> = values.iter().map(|value| value.abs()).collect();
+    sort_by(&mut sizes, f64::total_cmp);
+    let middle = sizes.len() / 2;
+    let median = if sizes.len() % 2 == 1 {
+        sizes[middle]
+    } else {
+        f64::midpoint(sizes[middle - 1], sizes[middle])
+    };
+    (median, sizes[sizes.len() - 1])
 }
 
 /// |a − b| / |b|, or |a − b| where b is zero.
