@@ -146,10 +146,12 @@ export class Door {
 
   /** Resolves to what the function gives in the page once that is truthy. */
   async until(work, ...parameters) {
+    // A tab that loads has a document of no element for a moment: there is nothing to look at in it yet.
+    const whenThere = `document.body && document.readyState !== "loading" && (${work})(...${JSON.stringify(parameters)})`;
     const begun = performance.now();
     for (;;) {
       // A node does not travel from every browser: that it is there is what counts.
-      const value = await this.page.evaluateHandle(work, ...parameters)
+      const value = await this.page.evaluateHandle(whenThere)
         .then((handle) => handle.evaluate((found) => (found instanceof Node ? true : found)))
         .catch((error) => {
           // While the page loads again there is nowhere to run it: the next turn finds the new page.

@@ -33,6 +33,37 @@ async function hold(door) {
   return { to: (part) => door.page.mouse.move(stage.x + 72 + (stage.width - 72 - 60) * part, y), release: () => door.page.mouse.up() };
 }
 
+/**
+ * Makes the page write down that label and pattern stood between computed fields, and what the pattern's bars then
+ * read: the exact answer comes a moment after, and looking from here could miss it.
+ */
+function watchBetween(door) {
+  return door.evaluate(() => {
+    globalThis.between = { label: false, readings: null };
+    const look = () => {
+      const part = document.querySelector("#splitting .pattern-part");
+      between.label ||= document.querySelector("#splitting .rule-label").textContent.startsWith("~");
+      if (between.readings || !part.querySelector("svg[role=img]")?.textContent.includes("between computed fields")) return;
+      between.readings = [];
+      const stage = part.querySelector(".stage");
+      const key = (name) => stage.dispatchEvent(new KeyboardEvent("keydown", { key: name, bubbles: true, cancelable: true }));
+      stage.focus();
+      key("Home");
+      for (let turn = 0; turn < 10; turn += 1) {
+        between.readings.push(part.querySelector(".reading").textContent);
+        key("ArrowRight");
+      }
+    };
+    new MutationObserver(look).observe(document.querySelector("#splitting"), { subtree: true, childList: true, characterData: true });
+  });
+}
+
+/** What the pattern's bars read between computed fields, once the page has written it down. */
+async function readingsBetween(door) {
+  await door.until(() => globalThis.between.label && globalThis.between.readings);
+  return door.evaluate(() => globalThis.between.readings);
+}
+
 /** Offsets of the pattern's bars, by their reading. */
 async function readings(door) {
   await door.page.focus("#splitting .pattern-part .stage");
@@ -50,11 +81,11 @@ const offsetIn = (reading) => Number(/offset\s~?([−\d.]+)/.exec(reading)[1].re
 everyDoor("the rule is dragged: values between fields are marked and agree with the exact answer at rest, which undo takes back", async (door) => {
   await opened(door);
   assert.equal(await label(door), "5\u00a0T");
+  await watchBetween(door);
   const rule = await hold(door);
   await rule.to(0.8);
   await rule.to(0.77);
-  await door.until(() => document.querySelector("#splitting .rule-label").textContent.startsWith("~"));
-  await door.until(() => document.querySelector("#splitting .pattern-part svg[role=img]").textContent.includes("between computed fields"));
+  await readingsBetween(door);
   await rule.release();
   await rested(door);
   assert.equal(await label(door), (await flux(door)).replace(" ", "\u00a0"));
@@ -71,25 +102,10 @@ everyDoor("the rule is dragged: values between fields are marked and agree with 
 
 everyDoor("between computed fields the pattern agrees with the exact one to a part in 10⁴ of its largest offset", async (door) => {
   await opened(door);
+  await watchBetween(door);
   await door.page.focus("#splitting .map-part .stage");
   await door.press("ArrowRight");
-  await door.until(() => document.querySelector("#splitting .pattern-part svg[role=img]").textContent.includes("between computed fields"));
-  // Keys keep the rule moving; without a rest no exact answer comes between.
-  const rough = door.evaluate(() => new Promise((done) => {
-    requestAnimationFrame(() => {
-      const stage = document.querySelector("#splitting .pattern-part .stage");
-      stage.focus();
-      const found = [];
-      const key = (name) => stage.dispatchEvent(new KeyboardEvent("keydown", { key: name, bubbles: true, cancelable: true }));
-      key("Home");
-      for (let turn = 0; turn < 10; turn += 1) {
-        found.push(document.querySelector("#splitting .pattern-part .reading").textContent);
-        key("ArrowRight");
-      }
-      done(found);
-    });
-  }));
-  const before = await rough;
+  const before = await readingsBetween(door);
   assert.ok(before.every((reading) => /offset\s~/.test(reading)), before[0]);
   await rested(door);
   const after = await readings(door);
