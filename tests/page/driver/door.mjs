@@ -257,6 +257,15 @@ export class Door {
     await this.until((name) => document.querySelector(`#${name} .evidence-body`)?.childElementCount > 0, question);
   }
 
+  /** Unfolds the part of a rung's evidence whose title begins so, once it is drawn. */
+  unfoldPart(question, beginning) {
+    return this.until((name, words) => {
+      const title = [...document.querySelectorAll(`#${name} .part > summary`)].find((each) => each.textContent.startsWith(words));
+      if (title && !title.parentElement.open) title.click();
+      return title;
+    }, question, beginning);
+  }
+
   /** What axe finds: an array of "rule: selector: why". */
   async axe({ exclude = [] } = {}) {
     if (!(await this.page.evaluate(() => typeof globalThis.axe === "object"))) await this.page.evaluate(AXE);

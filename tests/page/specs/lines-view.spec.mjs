@@ -33,7 +33,7 @@ everyDoor("a refused pair says its rule in the picture and in the table", async 
   await door.press("End");
   assert.match(await door.text("#lines .reading"), /refused: .+/);
   await door.press("Enter");
-  await door.evaluate(() => [...document.querySelectorAll("#lines .part > summary")].find((each) => /^Refused/.test(each.textContent)).click());
+  await door.unfoldPart("lines", "Refused");
   await door.until(() => document.querySelector('#lines .part tr[aria-current="true"]'));
 }, { fragment: CARBON });
 

@@ -146,7 +146,7 @@ everyDoor("keys and typing move the rule, and the slider does", async (door) => 
 // and M −1/2 (the rule of crossing levels, Condon & Shortley 1935, ch. XVI); their fields follow from the computed interval.
 everyDoor("crossings stand as signs in the map and in their table, and the rule can be put there", async (door) => {
   await opened(door);
-  await door.evaluate(() => [...document.querySelectorAll("#splitting .part > summary")].find((each) => each.textContent.startsWith("Crossings of levels")).click());
+  await door.unfoldPart("splitting", "Crossings of levels");
   const rows = await door.evaluate(() => [...document.querySelectorAll('#splitting tr[data-id^="crossing:"]')].map((row) => [row.cells[0].textContent, Number(row.cells[3].textContent)]));
   assert.ok(rows.filter(([what]) => what === "Crossing").length === 2, JSON.stringify(rows));
   await door.evaluate(() => [...document.querySelectorAll('#splitting tr[data-id^="crossing:"]')].find((row) => row.cells[0].textContent === "Crossing").click());
@@ -162,7 +162,7 @@ everyDoor("what is chosen in a table is marked in map and pattern too", async (d
   await door.evaluate(() => document.querySelector("#splitting .components-table tbody tr").click());
   await door.until(() => document.querySelector("#splitting .map-part .ring-chosen") === null && document.querySelector("#splitting .pattern-part .ring-chosen"));
   assert.match(await door.text("#splitting .chosen-one"), /offset/);
-  await door.evaluate(() => [...document.querySelectorAll("#splitting .part > summary")].find((each) => each.textContent.startsWith("States")).click());
+  await door.unfoldPart("splitting", "States");
   await door.until(() => document.querySelector('#splitting tr[data-id^="state:"]'));
   await door.evaluate(() => document.querySelector('#splitting tr[data-id^="state:"]').click());
   await door.until(() => document.querySelector("#splitting .map-part .ring-chosen") && document.querySelector('#splitting .map-part polyline[stroke-width="4"]'));

@@ -7,12 +7,7 @@ const CAESIUM = "v=1&species=133Cs&configurations.0=6s&nucleus.magnetic_dipole.6
 const RUBIDIUM = "v=1&species=Rb&configurations.0=5s&field.flux_density=0.01+T";
 const ALONE = "v=1&level.J=1/2&level.g=2.0025&level.I=7/2&level.A=2298.1579425+MHz&field.flux_density=0.1+T&field.up_to=0.5+T";
 
-const open = async (door, beginning) => {
-  await door.evaluate((words) => {
-    const summary = [...document.querySelectorAll("#splitting .part > summary")].find((each) => each.textContent.startsWith(words));
-    if (!summary.parentElement.open) summary.click();
-  }, beginning);
-};
+const open = (door, beginning) => door.unfoldPart("splitting", beginning);
 const rows = (door, caption) => door.until((words) => {
   const table = [...document.querySelectorAll("#splitting table")].find((each) => each.caption.textContent.startsWith(words));
   return table && [...table.tBodies[0].rows].map((row) => [...row.cells].map((cell) => cell.textContent));
