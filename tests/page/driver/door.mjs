@@ -257,12 +257,13 @@ export class Door {
     await this.until((name) => document.querySelector(`#${name} .evidence-body`)?.childElementCount > 0, question);
   }
 
-  /** Unfolds the part of a rung's evidence whose title begins so, once it is drawn. */
+  /** Unfolds the part of a rung's evidence whose title begins so, and waits until both are drawn. */
   unfoldPart(question, beginning) {
     return this.until((name, words) => {
       const title = [...document.querySelectorAll(`#${name} .part > summary`)].find((each) => each.textContent.startsWith(words));
-      if (title && !title.parentElement.open) title.click();
-      return title;
+      if (!title) return false;
+      if (!title.parentElement.open) title.click();
+      return title.parentElement.querySelector(".fold-body")?.childElementCount > 0;
     }, question, beginning);
   }
 

@@ -204,7 +204,7 @@ everyDoor("a value of one’s own replaces a computed parameter, and the table s
   await door.type("Value", "100 cm-1");
   await door.click("Give a value");
   await door.sentence("lines");
-  await door.evaluate(() => [...document.querySelectorAll("#lines .evidence summary")].find((each) => each.textContent.startsWith("Parameters")).click());
+  await door.unfoldPart("lines", "Parameters");
   const row = await door.until(() => {
     const found = [...document.querySelectorAll("#lines .evidence tbody tr")].find((each) => /^zeta\(2p\)/.test(each.textContent) && /2p2/.test(each.textContent));
     return found && { text: found.textContent, entered: found.querySelector(".kind-entered") !== null };

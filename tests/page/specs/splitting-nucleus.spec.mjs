@@ -7,7 +7,6 @@ const CAESIUM = "v=1&species=133Cs&configurations.0=6s&nucleus.magnetic_dipole.6
 const RUBIDIUM = "v=1&species=Rb&configurations.0=5s&field.flux_density=0.01+T";
 const ALONE = "v=1&level.J=1/2&level.g=2.0025&level.I=7/2&level.A=2298.1579425+MHz&field.flux_density=0.1+T&field.up_to=0.5+T";
 
-const open = (door, beginning) => door.unfoldPart("splitting", beginning);
 const rows = (door, caption) => door.until((words) => {
   const table = [...document.querySelectorAll("#splitting table")].find((each) => each.caption.textContent.startsWith(words));
   return table && [...table.tBodies[0].rows].map((row) => [...row.cells].map((cell) => cell.textContent));
@@ -15,12 +14,12 @@ const rows = (door, caption) => door.until((words) => {
 
 everyDoor("a level with its nucleus has states by F and M, in the table and in the map", async (door) => {
   await door.unfold("splitting");
-  await open(door, "States");
+  await door.unfoldPart("splitting", "States");
   const states = await rows(door, "States");
   assert.equal(states.length, 16);
   const head = await door.evaluate(() => [...document.querySelectorAll("#splitting .parts table th")].map((each) => each.textContent));
   assert.ok(head.some((text) => text.startsWith("F")) && head.some((text) => text.startsWith("M")));
-  await open(door, "Hyperfine constants");
+  await door.unfoldPart("splitting", "Hyperfine constants");
   const [[, value]] = await rows(door, "Hyperfine constants");
   assert.match(value, /^2298\.1/);
   await door.until(() => document.querySelectorAll("#splitting .map-part svg[role=img] polyline").length >= 16);
@@ -30,7 +29,7 @@ everyDoor("a level with its nucleus has states by F and M, in the table and in t
 
 everyDoor("the natural isotopes are put in with their shares, and taken out again", async (door) => {
   await door.unfold("splitting");
-  await open(door, "Nucleus and isotopes");
+  await door.unfoldPart("splitting", "Nucleus and isotopes");
   await door.until(() => [...document.querySelectorAll("#splitting button")].some((each) => each.textContent === "Put in the natural isotopes" && !each.hidden));
   await door.click("Put in the natural isotopes");
   // 85Rb 72.17 %, 87Rb 27.83 % (IUPAC, isotopic compositions of the elements 2009, from memory).
@@ -39,7 +38,7 @@ everyDoor("the natural isotopes are put in with their shares, and taken out agai
   assert.deepEqual([await value("/isotopes/0/isotope"), await value("/isotopes/1/isotope")], ["85Rb", "87Rb"]);
   assert.match(await value("/isotopes/0/share"), /^72\.1[67]/);
   assert.match(await door.sentence("splitting"), /isotopes/);
-  await open(door, "Isotopes");
+  await door.unfoldPart("splitting", "Isotopes");
   assert.deepEqual((await rows(door, "Isotopes")).map(([name, , spin]) => [name, spin]), [["85Rb", "5/2"], ["87Rb", "3/2"]]);
   const add = await door.page.$('[aria-label="Take it out: isotope 1"]');
   await add.evaluate((node) => node.click());
@@ -49,7 +48,7 @@ everyDoor("the natural isotopes are put in with their shares, and taken out agai
 
 everyDoor("a spin that is no half-integer, an isotope that is not there and a B where there can be none are refused at their fields", async (door) => {
   await door.unfold("splitting");
-  await open(door, "Nucleus and isotopes");
+  await door.unfoldPart("splitting", "Nucleus and isotopes");
   await door.type("Nuclear spin I", "1/3");
   await door.until(() => document.querySelector('[data-path="/nucleus/spin"]').getAttribute("aria-invalid") === "true");
   await door.type("Nuclear spin I", "5/2");
@@ -65,12 +64,12 @@ everyDoor("a spin that is no half-integer, an isotope that is not there and a B 
 // defines the second (SI Brochure, 9th edition, 2.3.1); A = 2298.1579425 MHz is a quarter of it.
 everyDoor("a level alone is enough: the clock point of caesium without field", async (door) => {
   await door.unfold("splitting");
-  await open(door, "Crossings of levels");
+  await door.unfoldPart("splitting", "Crossings of levels");
   const [first] = await rows(door, "Crossings of levels");
   assert.match(first[0], /^Clock point/);
   assert.match(first[1], /F = 3, M = 0$/);
   assert.match(first[6], /^9192\.63/);
-  await open(door, "Resonance frequencies");
+  await door.unfoldPart("splitting", "Resonance frequencies");
   assert.ok((await rows(door, "Resonance frequencies")).length > 20);
   // There is no line that could be chosen for it.
   assert.equal(await door.evaluate(() => [...document.querySelectorAll("#splitting button")].some((each) => each.textContent === "Choose a line")), false);
@@ -84,12 +83,12 @@ everyDoor("A and B are estimated at one press where none is entered, say that th
   assert.doesNotMatch(await door.sentence("splitting"), /estimated/);
   await door.click("Estimate A and B");
   await door.until(() => /A and B estimated/.test(document.querySelector("#splitting").textContent));
-  await open(door, "Hyperfine constants");
+  await door.unfoldPart("splitting", "Hyperfine constants");
   const [[, value, , from]] = await rows(door, "Hyperfine constants");
   // Published: 3417.34 MHz (Arimondo, Inguscio and Violino 1977, from memory); the estimate is a third too small.
   assert.match(value, /^22\d\d/);
   assert.equal(from, "estimated: A");
-  await open(door, "Nucleus and isotopes");
+  await door.unfoldPart("splitting", "Nucleus and isotopes");
   const box = await door.page.$('#splitting [data-path="/nucleus/estimate"]');
   assert.equal(await box.evaluate((node) => node.checked), true);
   await box.evaluate((node) => node.click());

@@ -20,16 +20,6 @@ function refuseClipboard() {
   document.addEventListener("copy", () => window.clips.push(document.activeElement.value), true);
 }
 
-/** Opens the fold with this text. */
-async function unfoldPart(door, start) {
-  await door.until((wanted) => {
-    const summary = [...document.querySelectorAll(".part > summary")].find((each) => each.textContent.startsWith(wanted));
-    if (!summary) return false;
-    if (!summary.parentElement.open) summary.click();
-    return summary.parentElement.querySelector(".fold-body")?.childElementCount > 0;
-  }, start);
-}
-
 /** Presses a button of the copy menu of the table whose caption has this text. */
 async function copy(door, caption, label) {
   await door.evaluate((words, wanted) => {
@@ -47,7 +37,7 @@ everyDoor("iron: 16 terms, 34 levels, 210 states and the ground level ⁵D₄ ar
   await door.unfold("states");
   assert.match((await captions(door))[0], /16 terms, 34 levels, 210 states/);
   assert.ok(await door.evaluate(() => document.querySelector('#states .say [aria-label="quintet D 4"]') !== null), await door.text("#states .say"));
-  await unfoldPart(door, "Levels counted by J");
+  await door.unfoldPart("states", "Levels counted by J");
   const rows = await door.evaluate(() => {
     const table = [...document.querySelectorAll("#states table")].find((each) => each.caption.textContent.includes("by J"));
     return [...table.tBodies[0].rows].map((row) => [...row.cells].map((cell) => cell.textContent));
@@ -59,7 +49,7 @@ everyDoor("iron: 16 terms, 34 levels, 210 states and the ground level ⁵D₄ ar
 
 everyDoor("the accessible name of ³P₂ is “triplet P 2”", async (door) => {
   await door.unfold("states");
-  await unfoldPart(door, "Levels and their g factors");
+  await door.unfoldPart("states", "Levels and their g factors");
   const found = await door.evaluate(() => [...document.querySelectorAll("#states td [role=img], #states tbody th [role=img]")]
     .filter((each) => each.getAttribute("aria-label") === "triplet P 2").map((each) => each.textContent));
   assert.ok(found.includes("3P2"), String(found));
@@ -67,7 +57,7 @@ everyDoor("the accessible name of ³P₂ is “triplet P 2”", async (door) => 
 
 everyDoor("a table is copied with all rows, full digits and kinds", async (door) => {
   await door.unfold("states");
-  await unfoldPart(door, "Levels and their g factors");
+  await door.unfoldPart("states", "Levels and their g factors");
   const csv = await copy(door, "Levels of", "Copy as CSV");
   const lines = csv.trim().split("\r\n");
   assert.equal(lines.length, 35);
