@@ -24,18 +24,38 @@ const MAX_SCHEME_ROWS: usize = 2000;
 /// The most cells of a grid.
 const MAX_GRID: usize = 20_000;
 
-/// The answer: the first configuration's own keys, then one entry for every configuration.
-#[derive(Debug, Serialize)]
+/// The answer: what each configuration allows, the sheet's first one first.
+#[derive(Debug)]
 pub struct States {
-    #[serde(flatten)]
     around: Around,
-    #[serde(flatten)]
     first: Allowed,
-    by_configuration: Vec<Allowed>,
+    others: Vec<Allowed>,
+}
+
+impl Serialize for States {
+    /// The first configuration's own keys, then an entry for every configuration if there are several: a lone
+    /// one is not told twice, for a half-full f shell alone has thousands of parents.
+    fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        #[derive(Serialize)]
+        struct Told<'a> {
+            #[serde(flatten)]
+            around: &'a Around,
+            #[serde(flatten)]
+            first: &'a Allowed,
+            by_configuration: Vec<&'a Allowed>,
+        }
+        let every = std::iter::once(&self.first).chain(&self.others);
+        Told {
+            around: &self.around,
+            first: &self.first,
+            by_configuration: every.filter(|_| !self.others.is_empty()).collect(),
+        }
+        .serialize(serializer)
+    }
 }
 
 /// What one configuration allows.
-#[derive(Clone, Debug, Default, Serialize)]
+#[derive(Debug, Default, Serialize)]
 pub struct Allowed {
     pub(super) configuration: Option<ConfigurationText>,
     pub(super) species: Rich,
@@ -74,7 +94,7 @@ pub struct ConfigurationText {
 }
 
 /// Numbers of levels by J, as an object whose keys are J in rising order.
-#[derive(Clone, Debug, Default)]
+#[derive(Debug, Default)]
 pub struct ByJ(pub Vec<(TwiceJ, u128)>);
 
 impl Serialize for ByJ {
@@ -87,14 +107,14 @@ impl Serialize for ByJ {
     }
 }
 
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 struct SpinOnly {
     mu: f64,
     #[serde(rename = "S")]
     s: TwiceJ,
 }
 
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 struct GridTable {
     #[serde(rename = "M_L")]
     m_l: Vec<i32>,
@@ -119,18 +139,21 @@ pub fn answer(document: &Document) -> Result<States, Problem> {
     if let Some(lack) = document.lacks(super::Question::States) {
         return Err(lack.problem());
     }
-    let mut by_configuration = Vec::new();
+    let mut first = None;
+    let mut others = Vec::new();
     for entry in &document.entries {
-        by_configuration.push(match &entry.content {
+        let allowed = match &entry.content {
             Content::Configuration(named) => allowed(document, entry, named)?,
             Content::BareShell(n) => bare(document, *n),
-        });
+        };
+        if first.is_none() {
+            first = Some(allowed);
+        } else {
+            others.push(allowed);
+        }
     }
-    let first = by_configuration.first().cloned().unwrap_or_default();
-    let mut around = Around::saying(sentence(
-        &first,
-        by_configuration.get(1..).unwrap_or_default(),
-    ));
+    let first = first.unwrap_or_default();
+    let mut around = Around::saying(sentence(&first, &others));
     around.working = working(&first, document);
     around.limits = limits(&first, document);
     around.kinds = [
@@ -171,7 +194,7 @@ pub fn answer(document: &Document) -> Result<States, Problem> {
     Ok(States {
         around,
         first,
-        by_configuration,
+        others,
     })
 }
 

@@ -10,7 +10,7 @@ use super::rich::{Count, Piece, Rich, TermName};
 use super::states::ByJ;
 
 /// A jj configuration with the levels it allows.
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 pub(super) struct JjRow {
     /// g of each j subshell, the same for every level of j^n.
     factors: Vec<JjFactor>,
@@ -20,7 +20,7 @@ pub(super) struct JjRow {
     n_levels: Count,
 }
 
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 struct JjFactor {
     label: String,
     j: TwiceJ,
@@ -28,7 +28,7 @@ struct JjFactor {
 }
 
 /// A pair of a parent level and an outer electron.
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 pub(super) struct PairRow {
     name: Rich,
     text: String,

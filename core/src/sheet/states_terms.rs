@@ -15,7 +15,7 @@ use super::rich::{Count, Piece, Rich, TermName};
 const MAX_CHAINS: usize = 1000;
 
 /// All equal terms of a configuration.
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 pub(super) struct TermRow {
     term: String,
     rich: Rich,
@@ -31,7 +31,7 @@ pub(super) struct TermRow {
 }
 
 /// One of several equal terms of a single open shell.
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 struct KindOfTerm {
     index: Option<u32>,
     seniority: u32,
@@ -47,15 +47,17 @@ struct KindOfTerm {
 }
 
 /// A term of the shell with one electron less, and the squared coefficient of fractional parentage.
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 struct ParentRow {
-    text: String,
-    rich: Rich,
+    term: String,
+    multiplicity: u32,
+    odd: bool,
+    index: Option<u32>,
     weight: f64,
 }
 
 /// A level with its Landé factor.
-#[derive(Clone, Debug, Serialize)]
+#[derive(Debug, Serialize)]
 pub(super) struct LevelRow {
     label: String,
     rich: Rich,
@@ -174,11 +176,11 @@ fn parent_rows(table: &Parentage, child: usize, odd: bool) -> Vec<ParentRow> {
                 two_s: u32::try_from(parent.two_s).unwrap_or(0),
                 l: parent.l_total,
             };
-            let name = TermName::new(term, odd)
-                .number((parent.times > 1).then_some(u128::from(parent.index)));
             ParentRow {
-                text: name.plain(),
-                rich: Rich::new().with(Piece::Term(name)),
+                term: term.to_string(),
+                multiplicity: term.multiplicity(),
+                odd,
+                index: (parent.times > 1).then_some(parent.index),
                 weight,
             }
         })

@@ -142,6 +142,28 @@ everyDoor("the group label W is named aloud and explained under the table", asyn
   assert.match((await captions(door))[0], /\(exact, by counting\)$/);
 }, { fragment: "v=1&species=*&configurations.0=4f3" });
 
+// Squared coefficients of fractional parentage of p³, from memory of Racah, Phys. Rev. 63, 367 (1943); five digits are shown.
+everyDoor("the parents of p³ stand beside their terms, with weights of one kind", async (door) => {
+  await door.unfold("states");
+  await door.unfoldPart("states", "Parents of each term");
+  const { head, rows } = await door.evaluate(() => {
+    const table = [...document.querySelectorAll("#states table")].find((each) => each.caption.textContent.startsWith("Parents"));
+    const term = (cell) => cell.querySelector("[role=img]").getAttribute("aria-label");
+    return {
+      head: table.tHead.rows[0].cells[2].textContent,
+      rows: [...table.tBodies[0].rows].map(({ cells: [of, parent, weight] }) => [term(of), term(parent), Number(weight.textContent)]),
+    };
+  });
+  assert.match(head, /computed/);
+  const expected = [["quartet S, odd", "triplet P", 1], ["doublet D, odd", "triplet P", 1 / 2], ["doublet D, odd", "singlet D", 1 / 2],
+    ["doublet P, odd", "triplet P", 1 / 2], ["doublet P, odd", "singlet D", 5 / 18], ["doublet P, odd", "singlet S", 2 / 9]];
+  assert.equal(rows.length, expected.length, JSON.stringify(rows));
+  for (const [term, parent, weight] of expected) {
+    const found = rows.find(([of, from]) => of === term && from === parent);
+    assert.ok(found && Math.abs(found[2] - weight) < 1e-5, `${term} from ${parent}: ${JSON.stringify(rows)}`);
+  }
+}, { fragment: "v=1&species=N&configurations.0=2p3" });
+
 everyDoor("a bare shell is counted: n = 5 has 25 pairs and 50 states", async (door) => {
   await door.unfold("states");
   assert.match((await captions(door))[0], /n = 5 \(O\): 5 values of ℓ, 25 pairs \(ℓ, mℓ\), 50 states/);

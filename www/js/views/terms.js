@@ -91,8 +91,8 @@ export function parentageTable(entry, context, answer) {
     caption: captionOf(entry, "Parents, with one electron less, of the terms of "), rows, context, file: `parents ${entry.configuration.text}`,
     columns: [
       { name: "term", type: "text", value: (row) => richPlain(termRich(row)), rich: termRich },
-      { name: "parent", type: "text", value: (row) => row.parent.text, rich: (row) => row.parent.rich },
-      { name: "weight", type: "number", kind: kindOf(answer, "terms.kinds.weight"), value: (row) => row.parent.weight },
+      { name: "parent", type: "text", value: (row) => richPlain(termRich(row.parent)), rich: (row) => termRich(row.parent) },
+      { name: "weight", type: "number", kind: kindOf(answer, "terms.kinds.parents.weight"), value: (row) => row.parent.weight },
     ],
     identify: (row) => termId(entry, row.term, row.index),
   });
