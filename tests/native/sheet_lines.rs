@@ -92,7 +92,7 @@ fn pins_give_the_wavelengths_and_say_so() {
     assert_eq!(answer["window"]["lines"], 2);
     assert_eq!(answer["window"]["medium"], "air");
     assert!(answer["say_plain"].as_str().unwrap().starts_with(
-        "Between 588 and 590 nm in air lie 2 lines; the strongest is 588.995 nm in air"
+        "Between 588 and 590 nm in air lie 2 lines; the strongest by gf is 588.995 nm in air"
     ));
     // One pin counts from the lowest level, which needs none.
     let one = lines(&sheet(
@@ -168,7 +168,7 @@ fn a_window_may_be_open_and_in_other_units() {
     let (none, said) = seen(json!(["", "50 nm"]));
     assert_eq!(count(&none), 0);
     assert!(
-        said.starts_with("No line lies below 50 nm in air; the nearest is "),
+        said.starts_with("No line lies below 50 nm in vacuum; the nearest is "),
         "{said}"
     );
 }

@@ -216,6 +216,7 @@ class Page {
   }
 
   changed(change) {
+    if (change.kind === "load" && this.keeper.isNew) this.rungOf(questionOf(this.store.sheet)).unfold(true);
     if (change.kind === "typing") this.announcer.hold();
     else {
       this.timing.rest();

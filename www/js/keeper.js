@@ -23,11 +23,14 @@ export class Keeper {
     this.#storage = storage;
     this.#notes = notes;
     this.#first = first;
+    /** Whether the sheet on the page came with an address and had not been here before. */
+    this.isNew = false;
   }
 
   /** Takes up the sheet that the address or the storage holds, and keeps it from then on. */
   begin() {
     this.#take(fromAddress(location.hash));
+    if (performance.getEntriesByType("navigation")[0]?.type === "reload") this.isNew = false;
     this.#store.subscribe((change) => {
       if (change.kind !== "load") this.#later();
     });
@@ -89,6 +92,7 @@ export class Keeper {
     if (address.fault) {
       this.#notes.put("address", { kind: "fault", text: `${address.fault.message} ${address.fault.bound}` });
     } else this.#notes.remove("address");
+    this.isNew = Boolean(address.sheet) && ![own, visit].some((state) => state !== null && sameSheet(state.sheet, address.sheet));
     if (address.sheet) {
       if (own === null || sameSheet(own.sheet, address.sheet)) this.#showOwn(own ?? { sheet: address.sheet });
       else if (visit !== null && sameSheet(visit.sheet, address.sheet)) this.#showSeparate(visit);

@@ -165,8 +165,14 @@ const FREQUENCY: &[Unit] = &[
 const FLUX_DENSITY: &[Unit] = &[
     unit("T", &["tesla", "Tesla"], 1.0, 1.0),
     unit("mT", &["millitesla"], 1.0, 1e3),
-    unit("G", &["gauss", "Gauss"], 1.0, 1e4),
-    unit("kG", &["kilogauss"], 1.0, 10.0),
+    // Of a field strength in oersted the flux density in air, which meters show.
+    unit(
+        "G",
+        &["gauss", "Gauss", "Oe", "oersted", "Oersted"],
+        1.0,
+        1e4,
+    ),
+    unit("kG", &["kilogauss", "kOe"], 1.0, 10.0),
     unit("µT", &["uT", "microtesla"], 1.0, 1e6),
     unit("MG", &["megagauss"], 100.0, 1.0),
 ];

@@ -89,7 +89,10 @@ pub fn compositions(solved: &Solved) -> Compositions {
     let jj: Option<Vec<Vec<Scheme<JjCoupled>>>> = small
         .then(|| spectrum.parities.iter().map(|p| p.jj().ok()).collect())
         .flatten();
-    let jk: Option<Vec<Vec<Scheme<JkCoupled>>>> = small
+    // Full shells alone are the same in any scheme.
+    let mut subshells = spectrum.case.configurations.iter().flatten();
+    let has_open = subshells.any(|s| s.is_open());
+    let jk: Option<Vec<Vec<Scheme<JkCoupled>>>> = (small && has_open)
         .then(|| spectrum.parities.iter().map(Parity::jk).collect())
         .flatten();
     let mut found = Compositions::default();
@@ -233,6 +236,9 @@ impl Namer<'_> {
                 index: None,
                 j: TwiceJ::from_doubled(state.two_j_core),
             };
+            let Some(two_k) = state.two_k else {
+                return Rich::new().with(Piece::Term(TermName::of_level(&parent, false)));
+            };
             let outer = self.open(state.configuration).last();
             let parent_odd =
                 self.parity.odd != outer.is_some_and(|(_, orbital, _)| orbital.l() % 2 == 1);
@@ -248,7 +254,7 @@ impl Namer<'_> {
                 .with(Piece::Pair {
                     parent: Rich::new(),
                     multiplicity: 2,
-                    k: TwiceJ::from_doubled(state.two_k),
+                    k: TwiceJ::from_doubled(two_k),
                     odd: self.parity.odd,
                     j: None,
                 })

@@ -8,7 +8,7 @@ use crate::terms::{self, Level, label, ls};
 
 use super::Question;
 use super::conditions::Conditions;
-use super::entry::{Content, Entry, Named, content};
+use super::entry::{Content, Entry, Named, content_of, keep_fitting_ways};
 use super::field::Field;
 use super::given::Given;
 use super::json::Json;
@@ -129,29 +129,31 @@ impl Document {
             if text.trim().is_empty() || self.has_fault_at(&path) {
                 continue;
             }
-            match configuration::parse(text) {
-                Err(problems) => self.add(problems, text, &path),
-                Ok(written) => {
-                    let complete = if species_failed {
-                        Species::ANY
-                    } else {
-                        species
-                    };
-                    match content(&written, &complete) {
-                        Err(problems) => self.add(problems, text, &path),
-                        Ok(content) => {
-                            let label = match &content {
-                                Content::BareShell(n) => format!("n={n}"),
-                                Content::Configuration(named) => named.label(),
-                            };
-                            self.entries.push(Entry {
-                                path,
-                                label,
-                                source: "typed",
-                                content,
-                            });
-                        }
+            let complete = if species_failed {
+                Species::ANY
+            } else {
+                species
+            };
+            match content_of(text, &complete) {
+                Err(mut problems) => {
+                    if let [problem] = problems.as_mut_slice() {
+                        let others = typed.iter().enumerate().filter(|(at, _)| *at != index);
+                        let others: Vec<&str> = others.map(|(_, other)| *other).collect();
+                        keep_fitting_ways(problem, &complete, &others);
                     }
+                    self.add(problems, text, &path);
+                }
+                Ok(content) => {
+                    let label = match &content {
+                        Content::BareShell(n) => format!("n={n}"),
+                        Content::Configuration(named) => named.label(),
+                    };
+                    self.entries.push(Entry {
+                        path,
+                        label,
+                        source: "typed",
+                        content,
+                    });
                 }
             }
         }
@@ -228,14 +230,17 @@ impl Document {
         }
     }
 
+    /// Whether it is about an atom or ion, and not about any (`*`).
+    pub fn is_of_an_element(&self) -> bool {
+        self.species
+            .is_some_and(|species| species.element.is_some())
+    }
+
     /// Whether the energies of levels come from radial functions or only from what is given.
     pub fn energies(&self) -> Energies {
-        let nucleus = self
-            .species
-            .is_some_and(|species| species.element.is_some());
         match self.structure.energies {
             Some(said) => said,
-            None if nucleus => Energies::Computed,
+            None if self.is_of_an_element() => Energies::Computed,
             None => Energies::Given,
         }
     }

@@ -63,7 +63,10 @@ pub fn need(document: &Document) -> Option<Need> {
     if !wanted(document) {
         return needs(
             "needs-parameters",
-            "an atom or ion, or given parameters such as F2(3p,3p) and zeta(3p)",
+            match document.is_of_an_element() {
+                true => "given parameters such as F2(3p,3p) and zeta(3p), or computed energies",
+                false => "an atom or ion, or given parameters such as F2(3p,3p) and zeta(3p)",
+            },
         );
     }
     let element = document.species.and_then(|species| species.element);

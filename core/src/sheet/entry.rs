@@ -1,11 +1,11 @@
 //! A configuration of the sheet, and how it is named.
 
 use crate::configuration::{
-    self, CompletedCore, Configuration, Reading, Species, Subshell, Written, join,
+    self, CompletedCore, Configuration, Reading, Species, Subshell, Written, filling, join,
 };
 use crate::elements;
 use crate::numerics::order::sort;
-use crate::problem::Problem;
+use crate::problem::{Problem, WayOut};
 
 use super::rich::{Piece, Rich, SubshellName};
 
@@ -148,13 +148,44 @@ impl Entry {
     }
 }
 
-/// What a configuration field holds, complete.
-pub fn content(written: &Written, species: &Species) -> Result<Content, Vec<Problem>> {
+/// What a configuration field with this text holds, complete.
+#[inline(never)]
+pub fn content_of(text: &str, species: &Species) -> Result<Content, Vec<Problem>> {
+    let written = configuration::parse(text)?;
     if let Some(n) = written.bare_shell {
         return Ok(Content::BareShell(n));
     }
-    configuration::complete(written, species)
-        .map(|reading| Content::Configuration(Named::typed(written, reading)))
+    configuration::complete(&written, species)
+        .map(|reading| Content::Configuration(Named::typed(&written, reading)))
+}
+
+/// Takes back the ways out of a field's only fault that lead to another one: electrons that do not fit the species, a
+/// configuration that stands in another field. The ground configuration is left where nothing else would be.
+pub fn keep_fitting_ways(problem: &mut Problem, species: &Species, others: &[&str]) {
+    let whole = |text: &str| match content_of(text, species) {
+        Ok(Content::Configuration(named)) => Some(named.configuration),
+        _ => None,
+    };
+    let others: Vec<Configuration> = others.iter().filter_map(|other| whole(other)).collect();
+    let fits = |text: &str| match content_of(text, species) {
+        Ok(Content::Configuration(named)) => !others.contains(&named.configuration),
+        Ok(Content::BareShell(_)) => true,
+        Err(_) => text.trim().is_empty(),
+    };
+    problem.ways.retain(|way| fits(&way.replacement));
+    if !problem.ways.is_empty() {
+        return;
+    }
+    let ground = species
+        .element
+        .and_then(|z| filling::ground(z, species.charge))
+        .map(|ground| ground.configuration().valence_text());
+    if let Some(text) = ground.filter(|text| fits(text)) {
+        problem.ways.push(WayOut {
+            label: format!("Use {text}"),
+            replacement: text,
+        });
+    }
 }
 
 fn piece(core: Option<String>, subshells: &[Subshell]) -> Rich {

@@ -93,10 +93,15 @@ pub fn lack(document: &Document, question: Question) -> Option<Lack> {
                     ..second_configuration(document, first, &needs)
                 };
             }
+            let is_given = code == "needs-parameters" && document.is_of_an_element();
             Lack {
                 code,
                 needs,
-                way: None,
+                way: is_given.then(|| Way {
+                    label: "Compute the energies".to_owned(),
+                    path: "/structure/energies".to_owned(),
+                    value: text("computed"),
+                }),
             }
         }),
         Question::Lines => lines(document, first),

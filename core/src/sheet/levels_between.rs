@@ -13,8 +13,8 @@ pub fn between_configurations(case: &Case) -> Option<String> {
     for one in &case.configurations {
         for other in &case.configurations {
             let ([_, p, d, f], [_, other_p, other_d, other_f]) = (by_l(one), by_l(other));
-            more_d |= d != other_d;
-            more_f |= f != other_f;
+            more_d |= d != other_d && (has_inner(one, 2) || has_inner(other, 2));
+            more_f |= f != other_f && (has_inner(one, 3) || has_inner(other, 3));
             let is_open = d % 10 != 0 || f % 14 != 0;
             moved |= is_open && p != other_p && (d, f) == (other_d, other_f);
         }
@@ -30,6 +30,17 @@ pub fn between_configurations(case: &Case) -> Option<String> {
     }
     say.push_str("a pinned level of each takes the rest of its configuration along.");
     Some(say)
+}
+
+/// Whether an open subshell of this ℓ lies in the same shell as the core: the subshell n (ℓ − 1) below it is full, as
+/// 3p below the 3d of iron and not below that of helium.
+fn has_inner(configuration: &[Subshell], l: u8) -> bool {
+    let is_full = |n: u8| {
+        let mut all = configuration.iter().map(|s| (s.orbital(), s));
+        all.any(|(of, s)| (of.n(), of.l().saturating_add(1)) == (n, l) && !s.is_open())
+    };
+    let mut all = configuration.iter().map(|s| s.orbital());
+    all.any(|of| of.l() == l && is_full(of.n()))
 }
 
 /// Electrons by ℓ = 0 to 3.

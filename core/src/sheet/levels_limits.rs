@@ -1,5 +1,6 @@
 //! What the answers on levels and lines leave out, and how far off that puts them.
 
+use crate::configuration::Subshell;
 use crate::quantity::TwiceJ;
 use crate::structure::model::{Case, Scale, Uncorrelated, UsualDeviation};
 
@@ -37,6 +38,9 @@ pub fn limits(told: &Told) -> Vec<String> {
                 limits.push("Configurations do not mix, as the sheet asks.".to_owned());
             }
         }
+    }
+    if told.levels.iter().any(|level| level.lifetime.is_some()) {
+        limits.push("Lifetimes count E1, M1 and E2 to the levels here. M2, two photons and the nucleus are left out: they decide for levels such as 3P2, 3P0 and 1S0 of s p and s s that no strong line leaves.".to_owned());
     }
     limits.extend(without_effect(document, told.solved));
     if told.placed.pinned {
@@ -110,9 +114,18 @@ pub fn without_effect(document: &Document, solved: &Solved) -> Option<String> {
 
 /// How far computed energies usually are from measured ones, by the validation report.
 pub fn computed(document: &Document, case: &Case, entries: &[usize]) -> Vec<String> {
-    let mut limits = vec![
-        "Computed, nothing fitted. How far off that usually is, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; fine-structure intervals of ground terms 5 %, nine of ten within 13 %, but of the outer p electron of an excited alkali up to 44 % too small. Pin measured energies for wavelengths to be compared with a spectrometer.".to_owned(),
-    ];
+    let how = match case.given.is_empty() {
+        true => "Computed, nothing fitted.",
+        false => "Computed, but for the given parameters, which count as given.",
+    };
+    let mut limits = vec![format!(
+        "{how} How far off computed energies usually are, by the validation report: wavenumbers of resonance lines 0.7 % (worst 10 %) in alkali-like ions and 2 % (worst 14 %) in alkaline-earth-like ones, with core polarisation and in the latter with np², np nd and ns (n+1)p mixed in; without these up to 18 %; fine-structure intervals of ground terms 5 %, nine of ten within 13 %, but of the outer p electron of an excited alkali up to 44 % too small. Pin measured energies for wavelengths to be compared with a spectrometer."
+    )];
+    let light = case.nucleus.is_some_and(|(z, _)| z <= LIGHT);
+    let pairs = |all: &Vec<Subshell>| all.iter().filter(|s| s.is_open()).count() > 1;
+    if light && case.configurations.iter().any(pairs) {
+        limits.push("Left out is what the spin of one electron does to the orbit and the spin of another, beyond its share in ζ: in light atoms it can turn the levels of a triplet round (1s 2p 3P of helium is inverted).".to_owned());
+    }
     limits.extend(between_configurations(case));
     limits.extend(correlation(document, case, entries).map(|row| row.say));
     limits
@@ -227,6 +240,9 @@ pub fn correlation(document: &Document, case: &Case, entries: &[usize]) -> Optio
         }),
     })
 }
+
+/// Up to this nuclear charge interactions between spins and orbits of different electrons are told as left out.
+const LIGHT: u8 = 10;
 
 /// The smallest fault of overlapping functions that is told, cm⁻¹.
 const LEAST_TOO_LOW: f64 = 100.0;

@@ -44,7 +44,10 @@ fn read_aloud(value: f64) -> f64 {
 pub fn sentence(told: &Told) -> Rich {
     let species = told.document.species_rich();
     let say = if species.0.is_empty() {
-        Rich::words("These configurations have ")
+        Rich::words(match told.document.entries.len() {
+            1 => "This configuration has ",
+            _ => "These configurations have ",
+        })
     } else {
         species.say(" has ")
     };

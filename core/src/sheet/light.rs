@@ -122,10 +122,10 @@ impl Surroundings {
         })
     }
 
-    /// What the medium is, in words.
-    pub fn words(&self) -> &'static str {
+    /// In what this wavelength is meant: in vacuum where the formula of air ends.
+    pub fn words(&self, vacuum_nm: f64) -> &'static str {
         match self.name {
-            "air" => " in air",
+            "air" if self.air_nm(vacuum_nm).is_some() => " in air",
             "index" => " in the medium",
             _ => " in vacuum",
         }

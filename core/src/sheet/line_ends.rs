@@ -140,6 +140,16 @@ impl Document {
         self.add(vec![problem], text, "/line/upper");
     }
 
+    /// The upper and the lower end of the line, turned if the sheet has them the other way round.
+    pub fn ends(&self, turned: bool) -> Option<(&End, &End)> {
+        let (upper, lower) = self.line.as_ref()?;
+        Some(if turned {
+            (lower, upper)
+        } else {
+            (upper, lower)
+        })
+    }
+
     /// What a text names. Nothing while some configuration is faulted.
     fn end(&self, text: &str) -> Result<Option<End>, Vec<Problem>> {
         let with_j = match label::parse(text) {

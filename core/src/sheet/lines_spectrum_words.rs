@@ -69,6 +69,14 @@ fn strongest<'a>(lines: impl Iterator<Item = &'a LineRow>) -> Option<&'a LineRow
     best
 }
 
+/// By what it is the strongest.
+fn strongest_is(told: &Told) -> &'static str {
+    match told.lines.iter().any(|line| line.intensity.is_some()) {
+        true => "; the strongest in emission is ",
+        false => "; the strongest by gf is ",
+    }
+}
+
 pub fn sentence(told: &Told) -> Rich {
     if let Some(window) = told.window {
         return in_window(told, window);
@@ -107,7 +115,7 @@ pub fn sentence(told: &Told) -> Rich {
         counted(say, others, one, "forbidden lines here")
     };
     match strongest(told.lines.iter()) {
-        Some(line) => named(told, say.say("; the strongest is "), line).say("."),
+        Some(line) => named(told, say.say(strongest_is(told)), line).say("."),
         None => say.say("."),
     }
 }
@@ -128,6 +136,10 @@ fn in_window(told: &Told, window: &WindowRow) -> Rich {
     let by_energy = (told.document.conditions.window)
         .is_some_and(|window| window.ends.iter().flatten().any(|end| end.by_energy));
     let end = |say: Rich, value: f64, unit| say.number(nm(value, !by_energy), unit, Kind::Entered);
+    // In air if one of its ends is.
+    let ends_nm = [window.from_nm, window.to_nm].into_iter().flatten();
+    let media = ends_nm.map(|nm| told.surroundings.words(nm));
+    let medium = media.max_by_key(|words| *words == " in air").unwrap_or("");
     let between = |say: Rich, words: [&str; 3]| {
         let [between, above, below] = words;
         let say = match (window.from, window.to) {
@@ -139,7 +151,7 @@ fn in_window(told: &Told, window: &WindowRow) -> Rich {
             (None, Some(to)) => end(say.say(below), to, Some("nm")),
             (None, None) => say,
         };
-        say.say(told.surroundings.words())
+        say.say(medium)
     };
     if window.lines == 0 {
         let words = ["between ", "above ", "below "];
@@ -148,6 +160,10 @@ fn in_window(told: &Told, window: &WindowRow) -> Rich {
             Some(nearest) => {
                 let say = say.say("; the nearest is ");
                 let say = say.number(six_digits(nearest.nm), Some("nm"), Kind::Computed);
+                let say = match told.surroundings.words(nearest.nm) {
+                    same if same == medium => say,
+                    other => say.say(other),
+                };
                 let (upper, lower) = (&nearest.upper, &nearest.lower);
                 ends(told, say, nearest.multipole, upper, lower).say(".")
             }
@@ -164,9 +180,7 @@ fn in_window(told: &Told, window: &WindowRow) -> Rich {
     });
     let say = say.count(window.lines, "line", "lines");
     match strongest(told.lines.iter().filter(inside)) {
-        Some(line) if window.lines > 1 => {
-            named(told, say.say("; the strongest is "), line).say(".")
-        }
+        Some(line) if window.lines > 1 => named(told, say.say(strongest_is(told)), line).say("."),
         Some(line) => named(told, say.say(": "), line).say("."),
         None => say.say("."),
     }
@@ -180,7 +194,7 @@ fn named(told: &Told, say: Rich, line: &LineRow) -> Rich {
         "vacuum" => (vacuum, " in vacuum"),
         _ => (
             told.surroundings.medium_nm(vacuum),
-            told.surroundings.words(),
+            told.surroundings.words(vacuum),
         ),
     };
     let kind = line.energy_kind.unwrap_or(Kind::Computed);
@@ -205,19 +219,33 @@ pub fn working(told: &Told) -> Vec<Working> {
         fraction(name("S"), row([weight("u"), sup(name("λ"), number(3))])),
     ]);
     let step = Working::new(
-        "Transition probability of an electric dipole line, λ in Å in vacuum",
+        match told.solved.case() {
+            EnergyCase::OneElectron { .. } => {
+                "Transition probability of an electric dipole line, λ in Å as S without relativity"
+            }
+            EnergyCase::Model { .. } => {
+                "Transition probability of an electric dipole line, λ in Å in vacuum"
+            }
+        },
         formula,
         "G. W. F. Drake (ed.), Springer Handbook of Atomic, Molecular, and Optical Physics, ch. 10 (Martin & Wiese, Atomic spectroscopy); C from CODATA 2022",
     );
     steps.push(match case {
         Some(line) => {
-            let angstrom = line.vacuum_nm.unwrap_or(0.0) * 10.0;
             let factor = wavelength_factor(Multipole::E1);
+            let (s, a) = (line.s.unwrap_or(0.0), line.a.unwrap_or(0.0));
+            // One electron's A without relativity goes with a wavelength without it.
+            let angstrom = match told.solved.case() {
+                EnergyCase::OneElectron { .. } if a > 0.0 => {
+                    libm::cbrt(factor * s / (line.upper_j.degeneracy() as f64 * a))
+                }
+                _ => line.vacuum_nm.unwrap_or(0.0) * 10.0,
+            };
             let numbers = row([
                 number(format!("{factor:.5e}")),
                 operator("×"),
                 fraction(
-                    number(six_digits(line.s.unwrap_or(0.0))),
+                    number(six_digits(s)),
                     row([
                         number(line.upper_j.degeneracy()),
                         operator("×"),
@@ -226,11 +254,7 @@ pub fn working(told: &Told) -> Vec<Working> {
                 ),
             ]);
             let result = Rich::words("A = ")
-                .number(
-                    three_digits(line.a.unwrap_or(0.0)),
-                    Some("s-1"),
-                    Kind::Computed,
-                )
+                .number(three_digits(a), Some("s-1"), Kind::Computed)
                 .say(" for ")
                 .then(&level(told, &line.upper))
                 .say(" to ")
@@ -289,13 +313,16 @@ fn air(told: &Told, case: Option<&LineRow>) -> Option<Working> {
 
 pub fn limits(told: &Told) -> Vec<String> {
     let mut limits = Vec::new();
+    if told.document.conditions.air_wanted && told.surroundings.name == "index" {
+        limits.push("The refractive index entered counts, and air does not.".to_owned());
+    }
     let any_computed = told
         .lines
         .iter()
         .any(|line| line.energy_kind == Some(Kind::Computed));
     match told.solved.case() {
         EnergyCase::OneElectron { .. } => limits.push(
-            "Electric dipole lines of one electron between Dirac’s levels, strengths without relativity; the Lamb shift and the spin of the nucleus are left out."
+            "Electric dipole lines of one electron between Dirac’s levels, strengths, f and A without relativity and at the wavelengths without it (between levels of one n at those listed); the Lamb shift and the spin of the nucleus are left out."
                 .to_owned(),
         ),
         EnergyCase::Model { case, entries } if any_computed => {

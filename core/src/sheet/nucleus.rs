@@ -134,6 +134,10 @@ impl Document {
 
     fn isotopes(&mut self, items: &[Json]) -> Vec<Nuclear> {
         let mut nuclei: Vec<Nuclear> = Vec::new();
+        let texts = items
+            .iter()
+            .filter_map(|item| item.get("isotope")?.as_text());
+        let listed: Vec<&str> = texts.map(str::trim).collect();
         for (index, item) in items.iter().enumerate() {
             let path = format!("/isotopes/{index}");
             let Some(text) = item.get("isotope").and_then(Json::as_text) else {
@@ -151,19 +155,33 @@ impl Document {
             }
             let isotope = match self.isotope_named(text) {
                 Ok(isotope) => isotope,
-                Err(problems) => {
+                Err(mut problems) => {
+                    // What stands in another entry would stand twice.
+                    for problem in &mut problems {
+                        let ways = &mut problem.ways;
+                        ways.retain(|way| !listed.contains(&way.replacement.as_str()));
+                    }
                     self.add(problems, text, &format!("{path}/isotope"));
                     continue;
                 }
             };
             if nuclei.iter().any(|known| known.isotope == Some(isotope)) {
-                let problem = Problem::new(
+                let mut problem = Problem::new(
                     "isotope-repeated",
                     format!("{} stands twice in this sheet.", isotope_name(&isotope)),
                     0,
                     text.len(),
                 )
                 .bound("Each isotope stands once.");
+                let z = self.species.and_then(|species| species.element);
+                let names = z.map(natural).unwrap_or_default();
+                let names = names.iter().map(isotope_name);
+                for name in names
+                    .filter(|name| !listed.contains(&name.as_str()))
+                    .take(4)
+                {
+                    problem = problem.way(format!("Use {name}"), name);
+                }
                 self.add(vec![problem], text, &format!("{path}/isotope"));
                 continue;
             }
@@ -205,7 +223,6 @@ impl Document {
 
     /// The isotope that a text names: `85Rb`, of the sheet's element.
     fn isotope_named(&self, text: &str) -> Result<Isotope, Vec<Problem>> {
-        let species = configuration::species::parse(text)?;
         let fault = |code, message: String| Problem::new(code, message, 0, text.len());
         let own = self.species.and_then(|species| species.element);
         let offered = |problem: Problem, z: u8| {
@@ -219,6 +236,22 @@ impl Document {
                 let name = isotope_name(isotope);
                 problem.way(format!("Use {name}"), name)
             })
+        };
+        let species = match configuration::species::parse(text) {
+            Ok(species) => species,
+            Err(problems) => {
+                // A mass number that the element cannot have.
+                let without = text.trim().trim_start_matches(|c: char| c.is_ascii_digit());
+                let element = configuration::species::parse(without).ok();
+                return Err(match element.and_then(|species| species.element) {
+                    Some(z) if own.is_none_or(|own| own == z) => {
+                        let message =
+                            format!("There is no {} in the table of isotopes.", text.trim());
+                        vec![offered(fault("isotope-unknown", message), z)]
+                    }
+                    _ => problems,
+                });
+            }
         };
         let Some(z) = species.element else {
             let problem = fault(

@@ -8,6 +8,7 @@ use super::answer::Working;
 use super::document::Document;
 use super::entry::{Content, Entry};
 use super::formula::{Formula, fraction, name, number, operator, root, row, sub, sup};
+use super::lines_spectrum_words::six_digits;
 use super::orbitals_case::asked;
 use super::orbitals_rows::{Block, OrbitalRow};
 use super::rich::{Kind, Rich};
@@ -49,7 +50,7 @@ pub fn sentence(document: &Document, first: &Block, others: &[Block]) -> Rich {
             } else {
                 " at "
             })
-            .number(orbital.r_most_probable, Some("a0"), kind);
+            .number(six_digits(orbital.r_most_probable), Some("a0"), kind);
     }
     let say = say.say(".");
     match others.len() {

@@ -18,6 +18,7 @@ use super::splitting_joins::Join;
 use super::splitting_keeps::{Shown, keeps};
 use super::splitting_limits::limits;
 use super::splitting_line::line_of;
+use super::splitting_linear::refused;
 use super::splitting_names::{state_name, state_rich};
 use super::splitting_nuclei::{isotope_rows, nucleus_row};
 use super::splitting_pattern::{groups, pattern};
@@ -68,6 +69,13 @@ pub fn answer(document: &Document, watch: &mut Watch) -> Result<Splitting, Probl
             };
             components.extend(rows.rows(field));
         }
+    }
+    if let (Some((upper, lower)), true, None) = (
+        document.ends(ready.turned),
+        components.is_empty(),
+        &ready.no_components,
+    ) {
+        return Err(refused(document, upper, lower));
     }
     resonances_left_out += splitting_resonances::first(&mut resonances);
     // With a line the upper end first, as one reads it.

@@ -1,8 +1,10 @@
 //! What the answer on splitting by diagonalisation leaves out, and how large that is.
 
+use crate::radial::hartree_fock::Solution;
 use crate::radiation::Multipole;
 
 use super::energy_case::EnergyCase;
+use super::nucleus::Nuclear;
 use super::rich::Kind;
 use super::splitting_estimated::{self, is_estimated};
 use super::splitting_pattern::bright;
@@ -84,6 +86,9 @@ pub fn limits(told: &Told) -> Vec<String> {
     if ready.joins.iter().any(|join| join.unit_integrals) {
         limits.push("No radial integral of the radiation is given; each is taken as 1, which relative strengths between two subshells do not depend on.".to_owned());
     }
+    if ready.turned {
+        limits.push("The sheet has the ends of the line the other way round: the higher one is taken as the upper.".to_owned());
+    }
     if told.line.is_none() && !told.components.is_empty() {
         limits.push("Without a line the strengths of all components together are 1, and offsets count from each line's own centre.".to_owned());
     }
@@ -113,6 +118,13 @@ pub fn limits(told: &Told) -> Vec<String> {
     limits
 }
 
+/// g_I if it is the table's.
+fn bare_g(nuclear: &Nuclear) -> Option<f64> {
+    nuclear
+        .g
+        .filter(|_| nuclear.isotope.and_then(|i| i.g) == nuclear.g)
+}
+
 fn of_nuclei(told: &Told) -> Vec<String> {
     let document = told.document;
     let mut limits = Vec::new();
@@ -124,6 +136,21 @@ fn of_nuclei(told: &Told) -> Vec<String> {
             ));
         } else if nuclear.two_i() > 0 && nuclear.g.is_none() {
             limits.push(format!("g_I of {name} is not known: its own moment in the field is left out, about a thousandth of the electrons'."));
+        }
+        let table = document.isotope().and_then(|isotope| isotope.spin);
+        if let (true, Some(entered), Some(known)) = (nuclear.typed, nuclear.spin, table)
+            && entered != known
+            && document.species.is_some_and(|s| s.mass_number.is_some())
+        {
+            limits.push(format!("The entered spin {entered} counts; the isotope that the sheet names has {known} in the table."));
+        }
+        if let (true, Some(g)) = (told.tesla() > 0.0 && nuclear.two_i() > 0, bare_g(nuclear)) {
+            let run = told.ready.solved.as_ref();
+            let run = run.and_then(|solved| solved.spectrum.as_ref()?.run(0));
+            limits.push(match run.map(Solution::shielding) {
+                Some(part) => format!("g_I of {name} is that of the bare nucleus: left out is that the atom's electrons shield it by about {:.2} % (computed, from ⟨1/r⟩). The value {:.5} entered as g_I holds it.", 100.0 * part, g * (1.0 - part)),
+                None => format!("g_I of {name} is that of the bare nucleus: left out is that the atom's electrons shield it, by 0.01 % in lithium and 0.6 % in caesium."),
+            });
         }
         let entered = !nuclear.dipole.is_empty() || !nuclear.quadrupole.is_empty();
         if nuclear.two_i() > 0 && !entered && !is_estimated(told.ready, nuclear) {

@@ -13,7 +13,7 @@ use super::splitting_sets::{Prepared, Set};
 
 /// The line with its g, its centre and its wavelength.
 pub fn line_of(document: &Document, ready: &Prepared) -> Option<LineOf> {
-    let (upper, lower) = document.line.as_ref()?;
+    let (upper, lower) = document.ends(ready.turned)?;
     let join = ready.joins.first()?;
     let (above, below) = (ready.sets.get(join.upper)?, ready.sets.get(join.lower)?);
     let centre = centre_of(document, ready);

@@ -12,7 +12,9 @@ use super::document::{Document, LevelOf};
 use super::field::Field;
 use super::formula::{Formula, fraction, name, number, operator, row, sub, sup};
 use super::levels_rows::Shared;
+use super::line_ends::End;
 use super::line_wavelength::line_wavelength;
+use super::lines_spectrum_words::six_digits;
 use super::pairs;
 use super::rich::{Kind, Rich};
 use super::splitting::{cautions, field_of};
@@ -278,22 +280,36 @@ fn multipole(document: &Document, upper: &LevelOf, lower: &LevelOf) -> Result<Mu
             return Ok(wanted);
         }
     }
-    let reason: Vec<String> = verdicts
-        .iter()
+    let (upper, lower) = (End::level(upper.clone()), End::level(lower.clone()));
+    Err(refused(document, &upper, &lower))
+}
+
+/// The fault of a line that there is not, with the rules against it where its ends are levels.
+pub fn refused(document: &Document, upper: &End, lower: &End) -> Problem {
+    let levels = upper.as_level().zip(lower.as_level());
+    let verdicts = levels.and_then(|(above, below)| pairs::judge(document, &above, &below).ok());
+    let reasons = verdicts.into_iter().flatten();
+    let reasons: Vec<String> = reasons
         .filter_map(|(m, rule)| rule.map(|rule| format!("{m}: {rule}")))
         .collect();
-    Err(Problem::new(
+    let bound = match reasons.is_empty() {
+        true => {
+            "Neither E1 nor M1 nor E2 joins a level of one end with one of the other".to_owned()
+        }
+        false => reasons.join("; "),
+    };
+    Problem::new(
         "line-refused",
         format!(
             "There is no line between {} and {}.",
-            document.level_label(lower),
-            document.level_label(upper)
+            document.end_label(lower),
+            document.end_label(upper)
         ),
         0,
         0,
     )
-    .bound(format!("{}.", reason.join("; ")))
-    .at("/line"))
+    .bound(format!("{bound}."))
+    .at("/line")
 }
 
 fn sentence(line: &LineOf, document: &Document, rows: &[ComponentRow], pattern: Pattern) -> Rich {
@@ -314,9 +330,10 @@ fn sentence(line: &LineOf, document: &Document, rows: &[ComponentRow], pattern: 
     match widest(&bright(rows)) {
         0.0 if pattern.seen == 0 => say,
         0.0 => say.say(", which stays where the line is"),
-        widest => say
-            .say(offset_words(pattern))
-            .number(widest, Some("cm-1"), Kind::Computed),
+        widest => {
+            say.say(offset_words(pattern))
+                .number(six_digits(widest), Some("cm-1"), Kind::Computed)
+        }
     }
 }
 

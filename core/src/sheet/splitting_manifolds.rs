@@ -40,9 +40,10 @@ pub fn parities(solved: &Solved) -> Vec<Vec<usize>> {
     found
 }
 
-/// A solved level with its end of the line.
+/// A solved level with its end of the line, whose ends may be turned.
 pub fn set_level(
     document: &Document,
+    turned: bool,
     solved: &Solved,
     placed: &Placed,
     place: usize,
@@ -50,7 +51,7 @@ pub fn set_level(
     let level: &SolvedLevel = solved.levels.get(place)?;
     let of = level.of();
     let holds = |end: Option<&End>| end.is_some_and(|end| end.holds(&of));
-    let (upper, lower) = document.line.as_ref().map(|(u, l)| (u, l)).unzip();
+    let (upper, lower) = document.ends(turned).unzip();
     Some(SetLevel {
         place: Some(place),
         label: Shared(level.label.clone()),

@@ -22,6 +22,7 @@ use super::placed::Placed;
 use super::rich::Rich;
 use super::solved::{Solved, solved};
 use super::splitting_joins::{Join, joins};
+use super::splitting_line::centre_of;
 use super::splitting_manifolds::{manifold, no_estimate, parities, set_level, small_enough, units};
 use super::splitting_searched::{Range, Searched};
 use super::watch::Watch;
@@ -132,6 +133,8 @@ pub struct Pass {
 #[derive(Debug)]
 pub struct Prepared {
     key: Key,
+    /// Whether the sheet has the ends of the line the other way round.
+    pub turned: bool,
     pub solved: Option<Rc<Solved>>,
     pub sets: Vec<Set>,
     pub joins: Vec<Join>,
@@ -212,7 +215,13 @@ pub fn prepared(document: &Document, watch: &mut Watch) -> Result<Rc<Prepared>, 
     let key = key(document)?;
     let prepared = match &document.level_alone {
         Some(level) => alone(document, level, key)?,
-        None => of_levels(document, key, watch)?,
+        None => {
+            let found = of_levels(document, (key, false), watch)?;
+            match centre_of(document, &found) {
+                Some(centre) if centre < 0.0 => of_levels(document, (found.key, true), watch)?,
+                _ => found,
+            }
+        }
     };
     let prepared = Rc::new(prepared);
     KEPT.with_borrow_mut(|kept| {
@@ -259,6 +268,7 @@ fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, 
     let multiplications = Split::size(&set.manifold, nucleus.as_ref()).multiplications;
     Ok(Prepared {
         key,
+        turned: false,
         solved: None,
         sets: vec![set],
         joins: Vec::new(),
@@ -281,7 +291,12 @@ fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, 
     })
 }
 
-fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepared, Problem> {
+#[inline(never)]
+fn of_levels(
+    document: &Document,
+    (key, turned): (Key, bool),
+    watch: &mut Watch,
+) -> Result<Prepared, Problem> {
     let solved = solved(document, watch)?;
     let placed = Placed::new(document, &solved);
     let mut diamagnetic = Ok(());
@@ -291,7 +306,7 @@ fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepare
     for (parity, all) in parities(&solved).into_iter().enumerate() {
         let mut levels: Vec<SetLevel> = all
             .iter()
-            .filter_map(|place| set_level(document, &solved, &placed, *place))
+            .filter_map(|place| set_level(document, turned, &solved, &placed, *place))
             .collect();
         let wanted = |level: &SetLevel| level.is_upper || level.is_lower;
         if document.line.is_some() && !levels.iter().any(wanted) {
@@ -351,6 +366,7 @@ fn of_levels(document: &Document, key: Key, watch: &mut Watch) -> Result<Prepare
     }
     Ok(Prepared {
         key,
+        turned,
         solved: Some(solved),
         sets,
         joins,

@@ -3,6 +3,7 @@
 use crate::numerics::sorted_map::SortedMap;
 
 use super::document::Document;
+use super::lines_spectrum_words::six_digits;
 use super::nucleus::{Nuclear, isotope_name};
 use super::rich::{Kind, Rich};
 use super::splitting_estimated::is_estimated;
@@ -136,12 +137,15 @@ fn of_levels(told: &Told) -> Rich {
         })
         .count(told.states.len(), "state", "states");
     if low == 0.0 && high == 0.0 {
-        return say.say(", which all keep their energy");
+        return say.say(match told.states.len() {
+            1 => ", which keeps its energy",
+            _ => ", which all keep their energy",
+        });
     }
     say.say("; shifts reach from ")
-        .number(low, Some("cm-1"), Kind::Computed)
+        .number(six_digits(low), Some("cm-1"), Kind::Computed)
         .say(" to ")
-        .number(high, Some("cm-1"), Kind::Computed)
+        .number(six_digits(high), Some("cm-1"), Kind::Computed)
 }
 
 fn started(told: &Told) -> Rich {
@@ -206,16 +210,18 @@ fn of_line(told: &Told, line: &LineOf) -> Rich {
             _ => ", which stays where the line is",
         });
     }
-    let say = say
-        .say(offset_words(told.pattern))
-        .number(widest, Some("cm-1"), Kind::Computed);
+    let say = say.say(offset_words(told.pattern)).number(
+        six_digits(widest),
+        Some("cm-1"),
+        Kind::Computed,
+    );
     let away = |c: &&ComponentRow| (c.offset - c.linear.unwrap_or(c.offset)).abs();
     let largest = bright.iter().map(away).fold(0.0_f64, f64::max);
     if told.linear.is_none() || largest <= 1e-3 * widest {
         return say;
     }
     say.say(", and a pattern in proportion to the field would be off by up to ")
-        .number(largest, Some("cm-1"), Kind::Computed)
+        .number(six_digits(largest), Some("cm-1"), Kind::Computed)
 }
 
 /// The kinds of the columns.

@@ -66,6 +66,26 @@ everyDoor("the address holds the sheet, readable", async (door) => {
   assert.match(await door.evaluate(() => location.hash), /^#v=1&.*species=Na\+I&configurations\.0=3s/);
 });
 
+everyDoor("a sheet that comes with an address opens at its question, whatever was folded before, and stays folded after", async (door) => {
+  const isOpen = (name) => door.evaluate((id) => document.querySelector(`#${id} .rung-button`).getAttribute("aria-expanded") === "true", name);
+  const fold = (name) => door.evaluate((id) => document.querySelector(`#${id} .rung-button`).click(), name);
+  assert.ok(await isOpen("states"));
+  await fold("states");
+  await fold("splitting");
+  await fold("splitting");
+  assert.ok(!(await isOpen("splitting")));
+  await kept();
+  await door.evaluate(() => { location.hash = "#v=1&species=Na+I&configurations.0=3s&configurations.1=3p&field.flux_density=0.2+T"; });
+  await door.until(() => document.querySelector('[data-path="/species"]').value === "Na I");
+  assert.ok(await isOpen("splitting"));
+  assert.ok(!(await isOpen("states")));
+  await fold("splitting");
+  await kept();
+  await reload(door);
+  assert.equal(await value(door, "/species"), "Na I");
+  assert.ok(!(await isOpen("splitting")));
+});
+
 everyDoor("an address never overwrites the stored sheet", async (door) => {
   await door.type(ATOM, "Ne");
   await kept();

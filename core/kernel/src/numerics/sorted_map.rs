@@ -40,6 +40,29 @@ impl<K: Ord, V> SortedMap<K, V> {
         }
     }
 
+    /// Changes the value of a key, first the type's default.
+    pub fn change(&mut self, key: K, change: impl FnOnce(&mut V))
+    where
+        V: Default,
+    {
+        let found = self.entries.binary_search_by(|entry| entry.0.cmp(&key));
+        let place = match found {
+            Ok(place) => place,
+            Err(place) => {
+                self.entries.insert(place, (key, V::default()));
+                place
+            }
+        };
+        if let Some(entry) = self.entries.get_mut(place) {
+            change(&mut entry.1);
+        }
+    }
+
+    /// The entries themselves, by rising key.
+    pub fn into_entries(self) -> Vec<(K, V)> {
+        self.entries
+    }
+
     /// The entries by rising key.
     pub fn entries(&self) -> &[(K, V)] {
         &self.entries

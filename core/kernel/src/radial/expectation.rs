@@ -2,6 +2,7 @@
 
 use super::hartree_fock::{RadialOrbital, Solution};
 use crate::configuration::Orbital;
+use crate::constants::FINE_STRUCTURE;
 
 /// The powers of r whose expectation values are computed.
 pub const POWERS: core::ops::RangeInclusive<i32> = -3..=2;
@@ -23,6 +24,14 @@ impl Solution {
         };
         let parts = orbital.p.iter().zip(self.mesh.radii());
         Some(self.mesh.integral(parts.map(|(p, &r)| p * p * power(r))))
+    }
+
+    /// By which part the electrons weaken a magnetic field at the nucleus: σ = α²/3 Σ N⟨1/r⟩ with r in a₀, over all
+    /// electrons (Lamb, Phys. Rev. 60, 817 (1941)).
+    pub fn shielding(&self) -> f64 {
+        let of = |orbital| self.expectation(orbital, -1).unwrap_or(0.0);
+        let parts = self.orbitals.iter().map(|o| f64::from(o.electrons) * of(o));
+        FINE_STRUCTURE.value * FINE_STRUCTURE.value / 3.0 * parts.sum::<f64>()
     }
 
     /// The largest ⟨r⟩ of these orbitals, a₀: the usual cut-off of core polarisation, the orbitals being

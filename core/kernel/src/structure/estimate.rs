@@ -4,8 +4,8 @@ use super::basis::{Coupled, check, too_large};
 use super::bounds::{MOST_COUNTED, MOST_ROWS};
 use super::lowest;
 use crate::angular::equivalent::classify;
+use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
-use std::collections::BTreeMap;
 
 /// Sizes of a set of configurations of one parity.
 #[derive(Clone, Debug, Default, PartialEq)]
@@ -38,7 +38,7 @@ pub struct Estimate {
 const LEVELS: u64 = lowest::LOWEST_LEVELS as u64;
 
 /// How often each S L occurs.
-type Counts = BTreeMap<Coupled, u64>;
+type Counts = SortedMap<Coupled, u64>;
 
 /// Sizes of these configurations (see [`super::Basis::new`]).
 ///
@@ -46,31 +46,33 @@ type Counts = BTreeMap<Coupled, u64>;
 /// Those of [`super::Basis::new`], for the size only above 10⁸ LS-coupled states.
 pub fn estimate(subshells: &[u8], configurations: &[Vec<u32>]) -> Result<Estimate, Problem> {
     check(subshells, configurations)?;
-    let mut totals = Counts::new();
+    let mut totals = Counts::default();
     for occupations in configurations {
-        let mut counts = Counts::from([(Coupled::default(), 1)]);
+        let mut counts = Counts::default();
+        add(&mut counts, Coupled::default(), 1);
         for (&l, &electrons) in subshells.iter().zip(occupations) {
-            let mut shell = Counts::new();
+            let mut shell = Counts::default();
             for term in classify(l, electrons)? {
                 add(&mut shell, Coupled::of(&term), 1);
             }
-            let mut coupled = Counts::new();
-            for (&before, &many) in &counts {
-                for (&part, &times) in &shell {
+            let mut coupled = Counts::default();
+            for &(before, many) in counts.entries() {
+                for &(part, times) in shell.entries() {
                     for after in before.couplings(part) {
                         add(&mut coupled, after, many.saturating_mul(times));
                     }
                 }
             }
             counts = coupled;
-            let so_far = counts.values().fold(0_u64, |sum, &n| sum.saturating_add(n));
+            let so_far = counts.entries().iter();
+            let so_far = so_far.fold(0_u64, |sum, (_, n)| sum.saturating_add(*n));
             if so_far > MOST_COUNTED {
                 return Err(too_large(&format!(
                     "One configuration has more than {MOST_COUNTED} LS-coupled states."
                 )));
             }
         }
-        for (total, many) in counts {
+        for &(total, many) in counts.entries() {
             add(&mut totals, total, many);
         }
     }
@@ -98,14 +100,13 @@ fn products(subshells: &[u8], occupations: &[u32]) -> u64 {
 }
 
 fn add(counts: &mut Counts, key: Coupled, many: u64) {
-    let count = counts.entry(key).or_insert(0);
-    *count = count.saturating_add(many);
+    counts.change(key, |count| *count = count.saturating_add(many));
 }
 
 fn sizes(totals: &Counts) -> Estimate {
     let mut found = Estimate::default();
-    let mut by_two_j = BTreeMap::new();
-    for (total, &many) in totals {
+    let mut by_two_j: SortedMap<i32, u64> = SortedMap::default();
+    for &(total, many) in totals.entries() {
         let degeneracy = u64::try_from((total.two_s + 1) * (2 * total.l + 1)).unwrap_or(0);
         found.states = found.states.saturating_add(degeneracy.saturating_mul(many));
         found.ls_states = found.ls_states.saturating_add(many);
@@ -113,11 +114,10 @@ fn sizes(totals: &Counts) -> Estimate {
         found.electrostatic_places = found.electrostatic_places.saturating_add(square);
         let lowest = (total.two_s - 2 * total.l).abs();
         for two_j in (lowest..=total.two_s + 2 * total.l).step_by(2) {
-            let rows = by_two_j.entry(two_j).or_insert(0_u64);
-            *rows = rows.saturating_add(many);
+            by_two_j.change(two_j, |rows| *rows = rows.saturating_add(many));
         }
     }
-    found.rows_by_two_j = by_two_j.into_iter().collect();
+    found.rows_by_two_j = by_two_j.into_entries();
     // Bytes of all levels, and at most for one matrix.
     let (mut kept, mut work) = (0_u64, 0_u64);
     for &(_, rows) in &found.rows_by_two_j {

@@ -18,8 +18,8 @@ use super::multipole::Elements;
 use super::subshell_jj::{JjBlock, JjState, jj_states};
 use super::symbols::{Symbols, signed};
 use crate::numerics::order::sort_by;
+use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
-use std::collections::BTreeMap;
 
 /// Below this a coefficient is zero.
 const ZERO: f64 = 1e-12;
@@ -46,8 +46,8 @@ pub struct JkCoupled {
     pub running: Vec<Coupled>,
     /// 2J of the core.
     pub two_j_core: i32,
-    /// 2K.
-    pub two_k: i32,
+    /// 2K; nothing for full shells alone, whose one state stands for itself.
+    pub two_k: Option<i32>,
 }
 
 /// The states of a scheme for one J, and what they are of LS states.
@@ -83,28 +83,29 @@ impl<T> Scheme<T> {
 
 /// Collects states as they are met, then sorts them.
 struct Collector<T> {
-    places: BTreeMap<T, Vec<(usize, f64)>>,
+    places: SortedMap<T, Vec<(usize, f64)>>,
 }
 
 impl<T: Ord> Collector<T> {
     fn new() -> Self {
         Collector {
-            places: BTreeMap::new(),
+            places: SortedMap::default(),
         }
     }
 
     fn add(&mut self, row: usize, state: T, overlap: f64) {
         if overlap.abs() > ZERO {
-            self.places.entry(state).or_default().push((row, overlap));
+            self.places.change(state, |of| of.push((row, overlap)));
         }
     }
 
     fn finish(self) -> Scheme<T> {
+        let places = self.places.into_entries();
         let mut scheme = Scheme {
-            states: Vec::with_capacity(self.places.len()),
+            states: Vec::with_capacity(places.len()),
             elements: Elements::new(),
         };
-        for (place, (state, overlaps)) in self.places.into_iter().enumerate() {
+        for (place, (state, overlaps)) in places.into_iter().enumerate() {
             scheme.states.push(state);
             let found = overlaps
                 .into_iter()
@@ -242,7 +243,7 @@ impl Path<'_> {
 }
 
 /// The states of one J in jK coupling; nothing where a configuration has not exactly one electron in
-/// the last of its open subshells and another open one before it.
+/// the last of its open subshells and another open one before it, unless it has full shells alone.
 pub fn jk_scheme(basis: &Basis, rows: &Rows) -> Option<Scheme<JkCoupled>> {
     let mut outer = Vec::new();
     for occupations in basis.configurations() {
@@ -252,7 +253,8 @@ pub fn jk_scheme(basis: &Basis, rows: &Rows) -> Option<Scheme<JkCoupled>> {
             .map(|(place, (&l, &n))| (place, l, n))
             .collect();
         match open.as_slice() {
-            &[_, .., (place, l, 1)] => outer.push((place, i32::from(l))),
+            &[_, .., (place, l, 1)] => outer.push(Some((place, i32::from(l)))),
+            [] => outer.push(None),
             _ => return None,
         }
     }
@@ -260,7 +262,17 @@ pub fn jk_scheme(basis: &Basis, rows: &Rows) -> Option<Scheme<JkCoupled>> {
     let mut collector = Collector::new();
     for (row, &place) in rows.states.iter().enumerate() {
         let state = basis.states().get(place)?;
-        let &(last, l) = outer.get(state.configuration)?;
+        let Some((last, l)) = *outer.get(state.configuration)? else {
+            let found = JkCoupled {
+                configuration: state.configuration,
+                terms: state.terms.clone(),
+                running: state.running.clone(),
+                two_j_core: 0,
+                two_k: None,
+            };
+            collector.add(row, found, 1.0);
+            continue;
+        };
         let core = last
             .checked_sub(1)
             .and_then(|before| state.running.get(before));
@@ -287,7 +299,7 @@ pub fn jk_scheme(basis: &Basis, rows: &Rows) -> Option<Scheme<JkCoupled>> {
                     terms: state.terms.iter().take(last).copied().collect(),
                     running: state.running.iter().take(last).copied().collect(),
                     two_j_core,
-                    two_k,
+                    two_k: Some(two_k),
                 };
                 collector.add(row, found, overlap);
             }

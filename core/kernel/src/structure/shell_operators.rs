@@ -17,9 +17,9 @@ use super::symbols::{Symbols, signed};
 use crate::angular::equivalent::classify;
 use crate::angular::parentage::parents;
 use crate::angular::wigner_3j;
+use crate::numerics::sorted_map::SortedMap;
 use crate::problem::Problem;
 use crate::radial::average::within;
-use std::collections::BTreeMap;
 use std::rc::Rc;
 
 /// Below this a reduced matrix element is zero: products that vanish leave rounding behind.
@@ -86,9 +86,9 @@ impl Product {
 /// Products computed before, by ℓ, the electrons on the right and the product.
 #[derive(Default)]
 pub struct ShellOperators {
-    products: BTreeMap<(u8, u32, Product), Rc<Table>>,
-    repulsions: BTreeMap<(u8, u32), Rc<Vec<Table>>>,
-    terms: BTreeMap<(u8, u32), Rc<Vec<Coupled>>>,
+    products: SortedMap<(u8, u32, Product), Rc<Table>>,
+    repulsions: SortedMap<(u8, u32), Rc<Vec<Table>>>,
+    terms: SortedMap<(u8, u32), Rc<Vec<Coupled>>>,
 }
 
 impl ShellOperators {
