@@ -4,6 +4,7 @@
 use std::collections::BTreeSet;
 
 use rungline_core::sheet::{Document, Question, answer_text};
+use rungline_tests::sheets::sheet;
 use serde_json::{Value, json};
 
 fn asked(sheet: &Value, question: Question) -> Result<Value, Vec<String>> {
@@ -24,14 +25,6 @@ fn asked(sheet: &Value, question: Question) -> Result<Value, Vec<String>> {
 
 fn levels(sheet: &Value) -> Value {
     asked(sheet, Question::Levels).expect("levels")
-}
-
-fn sheet(species: &str, configurations: &[&str], extra: Value) -> Value {
-    let mut sheet = json!({"rungline": 1, "species": species, "configurations": configurations});
-    for (key, value) in extra.as_object().expect("a group") {
-        sheet[key] = value.clone();
-    }
-    sheet
 }
 
 fn number(value: &Value) -> f64 {

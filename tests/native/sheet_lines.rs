@@ -2,6 +2,7 @@
 //! is left when no energies are to be had.
 
 use rungline_core::sheet::{Question, answer_text};
+use rungline_tests::sheets::sheet;
 use serde_json::{Value, json};
 
 fn asked(sheet: &Value, question: Question) -> Value {
@@ -12,14 +13,6 @@ fn asked(sheet: &Value, question: Question) -> Value {
 
 fn lines(sheet: &Value) -> Value {
     asked(sheet, Question::Lines)
-}
-
-fn sheet(species: &str, configurations: &[&str], extra: Value) -> Value {
-    let mut sheet = json!({"rungline": 1, "species": species, "configurations": configurations});
-    for (key, value) in extra.as_object().expect("a group") {
-        sheet[key] = value.clone();
-    }
-    sheet
 }
 
 fn rows(answer: &Value) -> &Vec<Value> {

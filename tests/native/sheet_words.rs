@@ -1,16 +1,8 @@
 //! What answers and faults say is true of the case at hand: media, ends of a line, limits, ways out.
 
-use rungline_core::sheet;
-use rungline_tests::sheets::{answer, faults, number, rows};
+use rungline_core::sheet::answer_message;
+use rungline_tests::sheets::{answer, faults, number, rows, sheet};
 use serde_json::{Value, json};
-
-fn sheet(species: &str, configurations: &[&str], extra: Value) -> Value {
-    let mut sheet = json!({"rungline": 1, "species": species, "configurations": configurations});
-    for (key, value) in extra.as_object().expect("keys") {
-        sheet[key] = value.clone();
-    }
-    sheet
-}
 
 fn said(answer: &Value) -> String {
     answer["say_plain"].as_str().expect("a sentence").to_owned()
@@ -23,13 +15,14 @@ fn limits(answer: &Value) -> String {
 /// The first fault of an answer that there is not.
 fn refused(sheet: &Value, question: &str) -> Value {
     let json = serde_json::from_value(sheet.clone()).expect("a sheet");
-    let text = sheet::answer_message(&json, question);
+    let text = answer_message(&json, question);
     let message: Value = serde_json::from_str(&text).expect("JSON");
     assert!(message["answer"].is_null(), "{text}");
     message["faults"][0].clone()
 }
 
-/// Ciddor's formula ends at 185 nm and 1700 nm: what lies beyond is in vacuum, whatever the medium.
+/// Ciddor's formula (Appl. Opt. 35, 1566 (1996)) is used from 200 to 1700 nm: what lies beyond is in vacuum,
+/// whatever the medium. Lyman α without the Lamb shift, from memory (121.567 nm with it).
 #[test]
 fn a_wavelength_beyond_the_formula_of_air_is_one_in_vacuum() {
     let hydrogen = answer(
@@ -94,7 +87,7 @@ fn the_higher_end_of_a_line_is_the_upper_one() {
     }
     assert!(!limits(&right).contains("the other way round"));
     assert!(limits(&turned).contains("the other way round"));
-    // Zeeman's σ± of the strongest component: Δσ = ±μ_B B to a tenth, 4.67 cm⁻¹ at 10 T.
+    // σ+ goes up; the shifts are of the size of μ_B B, 4.67 cm⁻¹ at 10 T (CODATA).
     assert!(
         rows(&turned, "components")
             .iter()
@@ -119,6 +112,7 @@ fn a_line_that_there_is_not_is_refused_with_the_rules() {
     );
 }
 
+/// That 1s 2p 3P of helium is inverted: from memory.
 #[test]
 fn limits_are_those_of_the_case() {
     let of = |species: &str, configurations: &[&str], extra: Value| {

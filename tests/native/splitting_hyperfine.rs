@@ -94,6 +94,7 @@ fn energies_of_the_reference_cases() {
 /// Without relativity in σ beyond the radial functions' own, heavy atoms shield more than is computed.
 #[test]
 fn moments_in_atoms_are_shielded_as_the_answer_says() {
+    /// m_p/m_e, CODATA 2022.
     const PROTON_PER_ELECTRON: f64 = 1_836.152_673_426;
     let atoms = [
         ("7Li I", "2s", 3, 7, 1.182_213_0e-3),

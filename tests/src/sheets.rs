@@ -2,7 +2,19 @@
 
 use rungline_core::problem::Problem;
 use rungline_core::sheet::{self, Document};
-use serde_json::Value;
+use serde_json::{Value, json};
+
+/// A sheet on these configurations, with more keys.
+///
+/// # Panics
+/// When what is added is no group.
+pub fn sheet(species: &str, configurations: &[&str], extra: Value) -> Value {
+    let mut sheet = json!({"rungline": 1, "species": species, "configurations": configurations});
+    for (key, value) in extra.as_object().expect("a group") {
+        sheet[key] = value.clone();
+    }
+    sheet
+}
 
 /// Every fault of a sheet, with the characters that it points at.
 pub fn faults(sheet: &Value) -> Vec<(Problem, String)> {

@@ -149,7 +149,6 @@ impl Entry {
 }
 
 /// What a configuration field with this text holds, complete.
-#[inline(never)]
 pub fn content_of(text: &str, species: &Species) -> Result<Content, Vec<Problem>> {
     let written = configuration::parse(text)?;
     if let Some(n) = written.bare_shell {

@@ -40,7 +40,7 @@ pub fn limits(told: &Told) -> Vec<String> {
         }
     }
     if told.levels.iter().any(|level| level.lifetime.is_some()) {
-        limits.push("Lifetimes count E1, M1 and E2 to the levels here. M2, two photons and the nucleus are left out: they decide for levels such as 3P2, 3P0 and 1S0 of s p and s s that no strong line leaves.".to_owned());
+        limits.push("Lifetimes count E1, M1 and E2 to the levels here. M2, two photons and the nucleus are left out: they decide for levels that no strong line leaves, such as 3P2 and 3P0 of an s and a p electron.".to_owned());
     }
     limits.extend(without_effect(document, told.solved));
     if told.placed.pinned {
@@ -241,7 +241,8 @@ pub fn correlation(document: &Document, case: &Case, entries: &[usize]) -> Optio
     })
 }
 
-/// Up to this nuclear charge interactions between spins and orbits of different electrons are told as left out.
+/// Up to this nuclear charge interactions between spins and orbits of different electrons are told as left out:
+/// beyond, ζ is the larger part (common practice, no source).
 const LIGHT: u8 = 10;
 
 /// The smallest fault of overlapping functions that is told, cm⁻¹.

@@ -153,20 +153,15 @@ impl Document {
             if self.has_fault_at(&format!("{path}/isotope")) {
                 continue;
             }
-            let isotope = match self.isotope_named(text) {
+            let isotope = match self.isotope_named(text, &listed) {
                 Ok(isotope) => isotope,
-                Err(mut problems) => {
-                    // What stands in another entry would stand twice.
-                    for problem in &mut problems {
-                        let ways = &mut problem.ways;
-                        ways.retain(|way| !listed.contains(&way.replacement.as_str()));
-                    }
+                Err(problems) => {
                     self.add(problems, text, &format!("{path}/isotope"));
                     continue;
                 }
             };
             if nuclei.iter().any(|known| known.isotope == Some(isotope)) {
-                let mut problem = Problem::new(
+                let problem = Problem::new(
                     "isotope-repeated",
                     format!("{} stands twice in this sheet.", isotope_name(&isotope)),
                     0,
@@ -174,14 +169,7 @@ impl Document {
                 )
                 .bound("Each isotope stands once.");
                 let z = self.species.and_then(|species| species.element);
-                let names = z.map(natural).unwrap_or_default();
-                let names = names.iter().map(isotope_name);
-                for name in names
-                    .filter(|name| !listed.contains(&name.as_str()))
-                    .take(4)
-                {
-                    problem = problem.way(format!("Use {name}"), name);
-                }
+                let problem = with_natural(problem, z.unwrap_or(0), &listed);
                 self.add(vec![problem], text, &format!("{path}/isotope"));
                 continue;
             }
@@ -221,8 +209,8 @@ impl Document {
         nuclei
     }
 
-    /// The isotope that a text names: `85Rb`, of the sheet's element.
-    fn isotope_named(&self, text: &str) -> Result<Isotope, Vec<Problem>> {
+    /// The isotope that a text names: `85Rb`, of the sheet's element; `listed` are those of all entries.
+    fn isotope_named(&self, text: &str, listed: &[&str]) -> Result<Isotope, Vec<Problem>> {
         let fault = |code, message: String| Problem::new(code, message, 0, text.len());
         let own = self.species.and_then(|species| species.element);
         let offered = |problem: Problem, z: u8| {
@@ -231,11 +219,7 @@ impl Document {
                 true => problem.bound("The table has no isotope of this element."),
                 false => problem.bound(format!("The table has {}.", names.join(", "))),
             };
-            let natural = natural(z);
-            natural.iter().take(4).fold(problem, |problem, isotope| {
-                let name = isotope_name(isotope);
-                problem.way(format!("Use {name}"), name)
-            })
+            with_natural(problem, z, listed)
         };
         let species = match configuration::species::parse(text) {
             Ok(species) => species,
@@ -429,6 +413,15 @@ pub fn isotope_name(isotope: &Isotope) -> String {
 pub fn natural(z: u8) -> Vec<Isotope> {
     let all = elements::isotopes(z).into_iter();
     all.filter(|isotope| isotope.abundance.is_some()).collect()
+}
+
+/// A fault with some natural isotopes as ways out, none of those that are listed already.
+fn with_natural(problem: Problem, z: u8, listed: &[&str]) -> Problem {
+    let names = natural(z).into_iter().map(|isotope| isotope_name(&isotope));
+    let names = names.filter(|name| !listed.contains(&name.as_str()));
+    names.take(4).fold(problem, |problem, name| {
+        problem.way(format!("Use {name}"), name)
+    })
 }
 
 /// Constants that an isotope lacks from the nucleus of the sheet, or from the first isotope that has

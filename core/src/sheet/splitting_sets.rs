@@ -291,7 +291,6 @@ fn alone(document: &Document, level: &LevelAlone, key: Key) -> Result<Prepared, 
     })
 }
 
-#[inline(never)]
 fn of_levels(
     document: &Document,
     (key, turned): (Key, bool),
