@@ -16,7 +16,7 @@ use super::line_rows::{LineRow, WindowRow};
 use super::lines_energies::WEAK;
 use super::parameter_name::Parameter;
 use super::placed::Placed;
-use super::rich::{Kind, Rich};
+use super::rich::{Kind, Rich, six_digits};
 use super::solved::{Solved, SolvedLevel};
 use super::structure::Energies;
 
@@ -29,11 +29,6 @@ pub struct Told<'a> {
     pub surroundings: &'a Surroundings,
     pub window: Option<&'a WindowRow>,
     pub refused_listed: bool,
-}
-
-/// Six digits, as a wavelength is read aloud.
-pub fn six_digits(value: f64) -> f64 {
-    format!("{value:.5e}").parse().unwrap_or(value)
 }
 
 fn three_digits(value: f64) -> f64 {

@@ -8,10 +8,9 @@ use super::answer::Working;
 use super::document::Document;
 use super::entry::{Content, Entry};
 use super::formula::{Formula, fraction, name, number, operator, root, row, sub, sup};
-use super::lines_spectrum_words::six_digits;
 use super::orbitals_case::asked;
 use super::orbitals_rows::{Block, OrbitalRow};
-use super::rich::{Kind, Rich};
+use super::rich::{Kind, Rich, six_digits};
 
 /// The most subshells that the sentence names.
 const MOST_NAMED: usize = 3;

@@ -10,9 +10,8 @@ use super::document::Document;
 use super::entry::{Content, Entry};
 use super::json::Json;
 use super::lack::Way;
-use super::lines_spectrum_words::six_digits;
 use super::nucleus::{isotope_name, natural};
-use super::rich::{Kind, Rich};
+use super::rich::{Kind, Rich, six_digits};
 use super::{Question, to_json};
 
 #[derive(Serialize)]

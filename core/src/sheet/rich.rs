@@ -41,6 +41,11 @@ impl Serialize for Count {
     }
 }
 
+/// Six digits, as a number is read aloud.
+pub fn six_digits(value: f64) -> f64 {
+    format!("{value:.5e}").parse().unwrap_or(value)
+}
+
 /// An LS term or level as it is typeset.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub struct TermName {

@@ -3,9 +3,8 @@
 use crate::numerics::sorted_map::SortedMap;
 
 use super::document::Document;
-use super::lines_spectrum_words::six_digits;
 use super::nucleus::{Nuclear, isotope_name};
-use super::rich::{Kind, Rich};
+use super::rich::{Kind, Rich, six_digits};
 use super::splitting_estimated::is_estimated;
 use super::splitting_pattern::{Pattern, bright, widest};
 use super::splitting_rows::{
